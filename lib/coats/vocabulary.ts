@@ -1,0 +1,23 @@
+/** Kinds of coat, in the order in which a shell is built. */
+export const COAT_KINDS = ['face', 'backup', 'core fill', 'seal'] as const
+export type CoatKind = (typeof COAT_KINDS)[number]
+
+/** Stucco grades, finest first. 'none' is for a seal coat: slurry alone. */
+export const STUCCOS = ['fine', 'medium', 'coarse', 'none'] as const
+export type Stucco = (typeof STUCCOS)[number]
+
+/** Ways of putting a coat on. The drying clock of 'two halves' starts at the last half's stucco. */
+export const COATING_WAYS = ['dip', 'two halves', 'poured', 'brushed'] as const
+export type CoatingWay = (typeof COATING_WAYS)[number]
+
+/** How hard the deepest part of a tree is to dry. */
+export const RECESS_CLASSES = ['none', 'deep recess', 'closed core', 'closed core, no duct'] as const
+export type RecessClass = (typeof RECESS_CLASSES)[number]
+
+/** Smallest wall-to-wall gap on a tree: 'crowded' is under 40 mm. */
+export const SPACINGS = ['open', 'crowded'] as const
+export type Spacing = (typeof SPACINGS)[number]
+
+/** Which of the two promised times lets a coat be dipped over: half of such coats dry, or nine of ten. */
+export const GUARDS = ['likely', 'safe'] as const
+export type Guard = (typeof GUARDS)[number]

@@ -1,0 +1,89 @@
+import type { CoatKind, Guard, RecessClass, Spacing, Stucco } from '@/lib/coats/vocabulary'
+
+/** Instants are epoch milliseconds (UTC) everywhere in lib/drying; durations say their unit in the name. */
+export type Instant = number
+
+export type Air = { airTempC: number; relHumidityPct: number }
+
+/** 'typed': a person read the wall hygrometer; it holds until the next reading, 12 h at most. */
+export type ReadingSource = 'sensor' | 'typed'
+
+/** One accepted reading with its room factor B (reference hours per hour in 1.0 m/s air). */
+export type RoomReading = Air & { measuredAt: Instant; roomFactor: number; source: ReadingSource }
+
+/** A drying rate that runs linearly from the start of a stretch to its end, reference hours per hour. */
+export type Rate = { start: number; end: number }
+
+export type SegmentKind =
+  | 'measured' // between two sensor readings at most 60 min apart
+  | 'typed' // a typed reading that still holds
+  | 'gap' // more than 60 min without a reading: credited low, bounded both ways
+  | 'hour' // a whole hour from the hourly table
+  | 'held' // at most 30 min after the newest sensor reading
+  | 'forecast'
+
+/** A stretch of one room's drying at a place factor of 1. Low and high differ from likely only in gaps (and hours that hold one). */
+export type RoomSegment = { from: Instant; to: Instant; kind: SegmentKind; likely: Rate; low: Rate; high: Rate }
+
+/** Segments in order of time, not overlapping; a hole between two of them credits nothing. */
+export type RoomCurve = readonly RoomSegment[]
+
+/** Part of a tree's stay: one room curve, one place factor. `to` may be Infinity. Spans are in order and do not overlap. */
+export type DryingSpan = { from: Instant; to: Instant; placeFactor: number; curve: RoomCurve }
+
+/** Dose in reference hours. `low` serves the safe time, `high` the earliest one. */
+export type Dose = { likely: number; low: number; high: number }
+
+/** One local weekday's hours with the fans on. Minutes after local midnight; weekday 1 is Monday, 7 Sunday. */
+export type FanHours = { weekday: number; onMinute: number; offMinute: number }
+
+export type PlaceAir = { airSpeedFansOnMps: number; airSpeedFansOffMps: number; fanHours: readonly FanHours[] }
+
+export type NeedInput = {
+  /** Reference hours of the recipe's coat to its target, its own stucco included. */
+  recipeReferenceHours: number
+  recipeStucco: Stucco
+  usedStucco: Stucco
+  spacing: Spacing
+  recessClass: RecessClass
+  /** Moisture ratio of the coat below at the moment of this dip; 0 where it was dry or there is none. */
+  moistureRatioBelow: number
+  /** The tree's own factor, ln scale; 0 until evidence moves it. */
+  treeTheta: number
+}
+
+export type CoatForClock = {
+  number: number
+  kind: CoatKind
+  /** Dip time plus drain: the moment of the stucco. */
+  clockStartsAt: Instant
+  /** Half width of a rough 'about 20 min ago', minutes; 0 when the time is sharp. */
+  roughMinutes: number
+  needReferenceHours: number
+  moistureTarget: number
+  guard: Guard
+  recessClass: RecessClass
+  /** Air temperature at the dip, where it is known. */
+  airTempAtDipC: number | null
+}
+
+/** What the clock says of the newest coat of a tree. */
+export type CoatCall = {
+  dose: Dose
+  need: Dose
+  /** 1 just dipped, moistureTarget at the need. */
+  moistureRatio: number
+  /** P10, P50 and P90 instants at which the coat is dry; null beyond the horizon of the curve. */
+  earliestAt: Instant | null
+  likelyAt: Instant | null
+  safeAt: Instant | null
+  /** The time named by the guard, when it lies in the past and rests on readings; else null. */
+  guardReachedAt: Instant | null
+  isLikelyDry: boolean
+  isSafeDry: boolean
+  /** Not dry and no usable reading in the window, or the newest one is too old. Never shown as dry. */
+  isUnknown: boolean
+  /** Only one typed reading stands behind the call: it stops at 'likely, confirm'. */
+  needsConfirmation: boolean
+  sigma: number
+}

@@ -1,0 +1,26 @@
+import { defineConfig } from 'vitest/config'
+
+const resolve = { alias: { '@': import.meta.dirname } }
+
+// Three floors of tests. 'server' starts the production build, so `npm test` builds first.
+export default defineConfig({
+  test: {
+    projects: [
+      { resolve, test: { name: 'pure', include: ['tests/{unit,reference,architecture}/**/*.test.ts'] } },
+      {
+        resolve,
+        test: { name: 'database', include: ['tests/{integration,jobs}/**/*.test.ts'], setupFiles: ['tests/setup/database.ts'], testTimeout: 30_000 },
+      },
+      {
+        resolve,
+        test: {
+          name: 'server',
+          include: ['tests/{api,browser}/**/*.test.ts'],
+          testTimeout: 120_000,
+          hookTimeout: 120_000,
+          fileParallelism: false,
+        },
+      },
+    ],
+  },
+})
