@@ -1,0 +1,34 @@
+import { z } from 'zod'
+
+/** What a shell room's air can be; anything else is a fault of the sensor or a slip of the finger. */
+export const airTempC = z
+  .number('Temperature is a number in °C.')
+  .min(-10, 'A shell room is not colder than -10 °C.')
+  .max(60, 'A shell room is not hotter than 60 °C.')
+
+/** Sensors report a little over 100 % in saturated air, so 105 is the limit; the clock itself clamps to 0.5-100. */
+export const relHumidityPct = z
+  .number('Humidity is a number in %.')
+  .min(0, 'Humidity cannot be under 0 %.')
+  .max(105, 'Humidity cannot be over 105 %.')
+
+/** An instant as ISO 8601 with a zone, or epoch milliseconds. */
+const measuredAt = z.union([z.int().min(0), z.iso.datetime({ offset: true })]).transform((value) => (typeof value === 'number' ? value : Date.parse(value)))
+
+/** One row of `POST /api/v1/readings`; rows are checked one by one so that good ones are kept. */
+export const readingRow = z.strictObject({ measuredAt, airTempC, relHumidityPct })
+export type ReadingRow = z.infer<typeof readingRow>
+
+/** Body of `POST /api/v1/readings`: at most 10,000 rows. */
+export const readingBatch = z.strictObject({ readings: z.array(z.unknown()).min(1).max(10_000) })
+
+/** Answer: how many rows were new, already known, and which were refused. */
+export const readingBatchAnswer = z.object({
+  accepted: z.int(),
+  repeated: z.int(),
+  rejected: z.array(z.object({ index: z.int(), reason: z.string() })),
+})
+export type ReadingBatchAnswer = z.infer<typeof readingBatchAnswer>
+
+/** A person reads the wall hygrometer. */
+export const typedReading = z.strictObject({ operationId: z.uuid(), sensorId: z.int(), airTempC, relHumidityPct })
