@@ -71,8 +71,9 @@ export async function migrate(file: string): Promise<string[]> {
         }),
       },
     })
-    const known = new Set((await umzug.migrations()).map((migration) => migration.name))
-    const newer = (await umzug.executed()).map((migration) => migration.name).filter((name) => !known.has(name))
+    const known = new Set([...(await umzug.executed()), ...(await umzug.pending())].map((migration) => migration.name))
+    const applied = await appliedTable.executed({ context: handle })
+    const newer = applied.filter((name) => !known.has(name))
     if (newer.length > 0) throw new Error(`This database was written by a newer Kilnward (${newer.join(', ')}). Start that version.`)
     return (await umzug.up()).map((migration) => migration.name)
   } finally {
