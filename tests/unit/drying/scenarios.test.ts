@@ -18,7 +18,7 @@ const expectMoisture = (actual: number, expected: number) => expect(Math.abs(act
 const expectHours = (actual: number, expected: number) => expect(Math.abs(actual - expected)).toBeLessThan(ONE_MINUTE_H)
 
 /** A time of day, on the evening of the dip or the morning after, in hours after 18:00. */
-const clock = (hours: number, minutes: number) => (hours + 6) % 24 + minutes / 60
+const clock = (hours: number, minutes: number) => ((hours + 6) % 24) + minutes / 60
 
 function callAt(hours: number, readings: readonly RoomReading[], speedMps: number, coat: CoatForClock) {
   const now = hour(hours)
