@@ -42,15 +42,14 @@ export type NoticeRulesInput = {
  * Level-triggered: it looks at the truth of this moment and at what is open, never at what happened between two passes,
  * so a missed hour, a restart or a second worker comes to the same result. Missing data ends nothing.
  */
-export function noticeChanges(input: NoticeRulesInput): { open: NoticeDraft[]; close: NoticeClose[] } {
-  const { queue, open, closed, now } = input
+export function noticeChanges({ queue, open, closed, now }: NoticeRulesInput): { open: NoticeDraft[]; close: NoticeClose[] } {
   const context: TextContext = { now, timeZone: queue.foundry.timeZone }
   const trees = new Map(queue.trees.map((tree) => [tree.id, tree]))
   const close: NoticeClose[] = []
   const withdrawn: NoticeDraft[] = []
   for (const notice of open) {
     const tree = notice.treeId === null ? undefined : trees.get(notice.treeId)
-    const reason = endOf(notice, tree, input)
+    const reason = endOf(notice, tree, queue)
     if (reason === null) continue
     close.push({ id: notice.id, reason })
     if (reason === WITHDRAWN && tree) {
@@ -65,7 +64,9 @@ export function noticeChanges(input: NoticeRulesInput): { open: NoticeDraft[]; c
   const ending = new Set(close.map(({ id }) => id))
   const taken = new Set(open.filter(({ id }) => !ending.has(id)).map(keyOf))
   const closing = open.filter(({ id }) => ending.has(id)).map(keyOf)
-  const resting = new Set([...closed.filter(({ closedAt }) => now - closedAt < REOPEN_DWELL_MS).map(keyOf), ...closing])
+  // A close in the future is one from before the clock was set back.
+  const isResting = ({ closedAt }: { closedAt: number }) => closedAt <= now && now - closedAt < REOPEN_DWELL_MS
+  const resting = new Set([...closed.filter(isResting).map(keyOf), ...closing])
   const fresh = [...treeCandidates(queue.trees, context), ...roomCandidates(queue, context)]
     .filter((notice) => !taken.has(keyOf(notice)) && !resting.has(keyOf(notice)))
     .map(toDraft)
@@ -81,7 +82,7 @@ export function isLate(notice: Pick<NoticeDraft, 'trueSince' | 'ttlSeconds'>, no
 const WITHDRAWN = 'withdrawn by late data'
 
 /** Why an open notice has ended, or null while it stands. */
-function endOf(notice: OpenNotice, tree: QueueTree | undefined, { queue, now }: NoticeRulesInput): string | null {
+function endOf(notice: OpenNotice, tree: QueueTree | undefined, queue: NoticeRulesInput['queue']): string | null {
   switch (notice.kind) {
     case 'room data stale':
       return endOfRoom(Number(notice.subjectId), queue)
@@ -90,18 +91,18 @@ function endOf(notice: OpenNotice, tree: QueueTree | undefined, { queue, now }: 
       // Told once; nothing to wait for.
       return null
     default:
-      return endOfTree(notice, tree, now)
+      return endOfTree(notice, tree)
   }
 }
 
-function endOfTree(notice: OpenNotice, tree: QueueTree | undefined, now: number): string | null {
+function endOfTree(notice: OpenNotice, tree: QueueTree | undefined): string | null {
   if (!tree || OFF_THE_FLOOR.has(tree.state)) return 'the tree left the floor'
   if (notice.subjectType === 'coat' && tree.newestCoat?.id !== notice.subjectId) return 'another coat is the newest'
   if (isUnknown(tree)) return null
   switch (notice.kind) {
     case 'coat dry':
       if (tree.state === 'held') return 'held'
-      return isWetAgain(tree, now) ? WITHDRAWN : null
+      return WET_STATES.has(tree.state) ? WITHDRAWN : null
     case 'overdue':
       if (tree.state === 'held') return 'held'
       return tree.state === 'overdue' ? null : 'not overdue any more'
@@ -110,7 +111,7 @@ function endOfTree(notice: OpenNotice, tree: QueueTree | undefined, now: number)
     case 'ready for burnout':
       return tree.state === 'ready for burnout' ? null : 'not ready any more'
     case 'call withdrawn':
-      return isWetAgain(tree, now) ? null : 'the coat is not drying any more'
+      return WET_STATES.has(tree.state) ? null : 'the coat is not drying any more'
     case 'room data stale':
     case 'deviation':
     case 'summary':
@@ -125,7 +126,7 @@ function endOfRoom(sensorId: number, queue: NoticeRulesInput['queue']): string |
   return treesOfSensor(sensorId, queue).length === 0 ? 'no tree waits for it' : null
 }
 
-/** No usable reading: the state may read otherwise, as 'overdue' is counted by the wall clock. */
+/** No usable reading: a shell with its last coat on keeps its state and only warns. */
 function isUnknown(tree: QueueTree): boolean {
   return tree.state === 'unknown' || tree.warnings.some(({ code }) => code === 'unknown')
 }
@@ -144,10 +145,12 @@ function treeCandidates(trees: readonly QueueTree[], context: TextContext): Cand
     if (!newestCoat || OFF_THE_FLOOR.has(state)) return []
     const found: Candidate[] = []
     if (DRY_STATES.has(state)) {
-      found.push(ofTree('coat dry', 'coat', newestCoat.id, tree, guardAt(tree) ?? stateSince ?? now, () => coatDryText(tree, context)))
+      found.push(ofTree('coat dry', 'coat', newestCoat.id, tree, stateSince ?? now, () => coatDryText(tree, context)))
     }
     if (state === 'overdue') {
-      found.push(ofTree('overdue', 'coat', newestCoat.id, tree, stateSince ?? now, () => overdueText(tree, stateSince, context)))
+      // A pour date is lost at this moment, whenever the coat was dry.
+      const since = tree.willMissPour ? now : (stateSince ?? now)
+      found.push(ofTree('overdue', 'coat', newestCoat.id, tree, since, () => overdueText(tree, stateSince, context)))
     }
     if (tree.next === null) {
       found.push(ofTree('last coat on', 'coat', newestCoat.id, tree, newestCoat.dippedAt, () => lastCoatOnText(tree, context)))
@@ -185,16 +188,6 @@ function roomCandidates(queue: NoticeRulesInput['queue'], context: TextContext):
 function treesOfSensor(sensorId: number, queue: NoticeRulesInput['queue']): QueueTree[] {
   const places = new Set(queue.places.filter((place) => place.sensorId === sensorId).map(({ id }) => id))
   return queue.trees.filter((tree) => tree.newestCoat && !OFF_THE_FLOOR.has(tree.state) && places.has(tree.place.id))
-}
-
-function guardAt(tree: QueueTree): number | null {
-  return (tree.guard === 'likely' ? tree.dry?.likelyAt : tree.dry?.safeAt) ?? null
-}
-
-/** 'overdue' is counted by the wall clock and covers the coat's own state. */
-function isWetAgain(tree: QueueTree, now: number): boolean {
-  if (tree.state !== 'overdue') return WET_STATES.has(tree.state)
-  return (guardAt(tree) ?? now) > now
 }
 
 function ofTree(

@@ -13,7 +13,10 @@ export function coatDryText(tree: NoticeTree, context: TextContext): NoticeText 
   if (tree.next === null) {
     return { title: `${tree.tag} dried out: look over`, body: sentences('All coats on', tree.place.name, tree.title, times) }
   }
-  const dry = tree.guard === 'likely' ? 'likely dry' : 'dry'
+  const guardAt = tree.guard === 'likely' ? tree.dry?.likelyAt : tree.dry?.safeAt
+  // A person's word can be ahead of the clock.
+  const isByEye = typeof guardAt === 'number' && guardAt > context.now
+  const dry = isByEye ? 'looks dry' : tree.guard === 'likely' ? 'likely dry' : 'dry'
   return { title: `${tree.tag} ${dry}: dip ${tree.next.number}`, body: sentences(slurry(tree.next), tree.place.name, tree.title, times) }
 }
 
@@ -26,7 +29,8 @@ export function overdueText(tree: NoticeTree, since: number | null, context: Tex
       tree.next && slurry(tree.next),
       tree.place.name,
       tree.title,
-      since !== null && `Overdue since ${formatMoment(since, context.now, context.timeZone)}`,
+      tree.willMissPour && 'Its pour date is lost',
+      since !== null && !tree.willMissPour && `Overdue since ${formatMoment(since, context.now, context.timeZone)}`,
     ),
   }
 }
@@ -84,6 +88,8 @@ export function deviationText(
 
 /** One word for everything that was missed while nobody watched, instead of a burst. */
 export function summaryText(late: readonly NoticeText[]): NoticeText {
+  const [only] = late
+  if (only && late.length === 1) return only
   const shown = late.slice(0, 8).map((notice) => notice.title)
   const rest = late.length - shown.length
   return {

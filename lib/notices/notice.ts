@@ -60,7 +60,10 @@ export type OpenNotice = NoticeKey & { id: string; treeId: string | null }
 export type NoticeClose = { id: string; reason: string }
 
 /** The parts of a tree that a notice speaks of. */
-export type NoticeTree = Pick<QueueTree, 'id' | 'tag' | 'title' | 'place' | 'next' | 'guard' | 'dry' | 'newestCoat' | 'coatsOn'>
+export type NoticeTree = Pick<
+  QueueTree,
+  'id' | 'tag' | 'title' | 'place' | 'next' | 'guard' | 'dry' | 'newestCoat' | 'coatsOn' | 'willMissPour'
+>
 
 /**
  * Push topic and device tag: one card per tree, so a newer word about it replaces the older one undelivered or on the phone.

@@ -65,9 +65,6 @@ describe('late data', () => {
     expect(close).toEqual([{ id: 'open', reason: 'withdrawn by late data' }])
     expect(open).toMatchObject([{ kind: 'call withdrawn', subjectId: COAT, urgency: 'high', audience: { to: 'told by', noticeId: 'open' } }])
   })
-  it('takes a call back under an overdue tree', () => {
-    expect(kinds(pass([buildQueueTree({ state: 'overdue' })], { open: [opened()] }))).toContain('call withdrawn')
-  })
   it('takes nothing back while the room is unknown', () => {
     expect(kinds(pass([unknownTree()], { open: [opened()] }))).toEqual([])
   })

@@ -37,6 +37,15 @@ describe('the words of a push', () => {
     const dry = { earliestAt: null, likelyAt: NOW, safeAt: null }
     expect(coatDryText(buildDryTree(1, { guard: 'likely', dry }), context).body).toMatch(/Otter Gate, panel 2\. Likely since 14:00\.$/)
   })
+  it('says looks dry where a person was ahead of the clock', () => {
+    expect(coatDryText(buildQueueTree({ state: 'dip now' }), context)).toMatchObject({
+      title: 'T-122 looks dry: dip 6',
+      body: expect.stringContaining('Safe from 15:50, likely from 15:00.'),
+    })
+  })
+  it('says that the pour date is lost', () => {
+    expect(overdueText(buildDryTree(60, { willMissPour: true }), NOW, context).body).toMatch(/Its pour date is lost\.$/)
+  })
   it('asks for a look-over when every coat is on', () => {
     expect(coatDryText(buildDryTree(10, { next: null, state: 'dried out' }), context).title).toBe('T-122 dried out: look over')
   })
