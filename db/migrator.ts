@@ -6,7 +6,7 @@ import { z } from 'zod'
 
 type Handle = {
   exec: (sql: string) => Promise<void>
-  all: <Row>(sql: string, values?: unknown[]) => Promise<Row[]>
+  all: (sql: string, values?: unknown[]) => Promise<unknown[]>
   close: () => Promise<void>
 }
 
