@@ -2,7 +2,6 @@ import { millisecondsInMinute } from 'date-fns/constants'
 import type { DipRefusal, DipRun, DipRunAnswer } from '@/lib/coats/dip-contract'
 import { addTreeEvent } from '@/lib/commands/tree-event'
 import { closeCoat } from '@/lib/commands/close-coat'
-import { tellOfDeviation } from '@/lib/commands/tell-of-deviation'
 import { recordReadings } from '@/lib/commands/record-readings'
 import { runOperation } from '@/lib/commands/run-operation'
 import type { Clock } from '@/lib/core/clock'
@@ -154,9 +153,6 @@ async function putCoatsOn(run: DipRun, member: Actor, now: number): Promise<DipR
       coatId: coat.id,
       dippedAt: run.dippedAt,
     })
-    if (deviations.includes('held') || deviations.includes('still wet') || deviations.includes('unknown')) {
-      await tellOfDeviation({ tree, coat, deviations, reason: reason ?? null, now, timeZone: foundry.timeZone })
-    }
     answers.push({
       coatId: coat.id,
       treeId: tree.id,
