@@ -1,5 +1,5 @@
 import { millisecondsInMinute } from 'date-fns/constants'
-import type { DipRefusal, DipRun, DipRunAnswer } from '@/lib/coats/dip-contract'
+import { dipRunAnswer, type DipRefusal, type DipRun, type DipRunAnswer } from '@/lib/coats/dip-contract'
 import { addTreeEvent } from '@/lib/commands/tree-event'
 import { closeCoat } from '@/lib/commands/close-coat'
 import { recordReadings } from '@/lib/commands/record-readings'
@@ -43,15 +43,16 @@ export async function logDips(run: DipRun, { member, clock }: { member: Actor; c
 async function markWithdrawn(response: Record<string, unknown>): Promise<Record<string, unknown>> {
   const coats = await Coat.findAll({ where: { operationId: String(response['operationId']) } })
   const withdrawn = new Set(coats.filter((coat) => coat.withdrawnAt !== null).map((coat) => coat.id))
-  const answered = response['coats'] as DipRunAnswer['coats']
-  return { ...response, coats: answered.map((coat) => (withdrawn.has(coat.coatId) ? { ...coat, withdrawn: true } : coat)) }
+  const answered = dipRunAnswer.parse(response)
+  return { ...answered, coats: answered.coats.map((coat) => (withdrawn.has(coat.coatId) ? { ...coat, withdrawn: true } : coat)) }
 }
 
 async function putCoatsOn(run: DipRun, member: Actor, now: number): Promise<DipRunAnswer['coats']> {
   const bath = await Bath.findByPk(run.bathId)
   if (!bath) throw new AppError('not_found', 'There is no such bath.')
-  if (run.dippedAt > now + FUTURE_LIMIT_MS)
+  if (run.dippedAt > now + FUTURE_LIMIT_MS) {
     throw new AppError('unprocessable', 'The dip lies in the future: check the clock of this tablet.')
+  }
   const treeIds = run.trees.map((tree) => tree.treeId)
   if (new Set(treeIds).size !== treeIds.length) throw new AppError('unprocessable', 'A tree can be in a run only once.')
 
@@ -194,8 +195,9 @@ async function refuseImpossible(chosen: readonly Chosen[], run: DipRun): Promise
       })
     }
   }
-  if (refusals.length > 0)
+  if (refusals.length > 0) {
     throw new AppError('conflict', 'Nothing was logged: some trees of this run do not take this coat.', { trees: refusals })
+  }
   const early = chosen.filter(({ facts }) => run.dippedAt < (facts.coats.at(-1)?.dippedAt ?? 0))
   if (early.length > 0) {
     throw new AppError('unprocessable', `The dip of ${early.map(({ facts }) => facts.tag).join(', ')} would lie before the coat below.`)

@@ -90,6 +90,8 @@ async function rewriteHours(sensorId: number, first: number, last: number): Prom
   })
 }
 
+const mean = (values: readonly number[]) => values.reduce((sum, value) => sum + value, 0) / values.length
+
 function figures(readings: readonly RoomReading[]) {
   const typedCount = readings.filter((reading) => reading.source === 'typed').length
   if (readings.length === 0) {
@@ -105,7 +107,6 @@ function figures(readings: readonly RoomReading[]) {
   }
   const temperatures = readings.map((reading) => reading.airTempC)
   const humidities = readings.map((reading) => reading.relHumidityPct)
-  const mean = (values: readonly number[]) => values.reduce((sum, value) => sum + value, 0) / values.length
   return {
     readingCount: readings.length,
     typedCount,

@@ -37,17 +37,19 @@ async function takeBack(coatId: string, reason: string | undefined, member: Acto
     throw new AppError('conflict', `${tree.tag} has left the floor: its coats stand.`)
   }
   const newest = await Coat.findOne({ where: { treeId: coat.treeId, withdrawnAt: null }, order: [['number', 'DESC']] })
-  if (newest?.id !== coat.id)
+  if (newest?.id !== coat.id) {
     throw new AppError('conflict', `Coat ${coat.number} of ${tree.tag} is not the newest: take back coat ${newest?.number} first.`)
+  }
   const isOwnAndFresh = coat.loggedBy === member.id && now - coat.loggedAt <= UNDO_MS
   if (!isOwnAndFresh) {
     if (!may(member.role, 'correct')) {
       throw new AppError('forbidden', 'Ten minutes are over, or somebody else logged it: ask a supervisor to take it back.')
     }
-    if (!reason)
+    if (!reason) {
       throw new AppError('unprocessable', 'Say why this coat is taken back.', {
         fields: [{ field: 'reason', reason: 'Say why in a few words.' }],
       })
+    }
   }
   await coat.update({ withdrawnAt: now, withdrawnBy: member.id, withdrawnReason: reason ?? null })
   await TreePlace.update(
