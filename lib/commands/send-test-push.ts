@@ -4,7 +4,7 @@ import { AppError } from '@/lib/core/errors'
 import { log } from '@/lib/core/log'
 import { testText } from '@/lib/notices/notice-text'
 import type { DeviceInput, PushMessage, PushTestAnswer } from '@/lib/notices/push-contract'
-import type { PushSender } from '@/lib/server/push-sender'
+import type { PushOutcome, PushSender } from '@/lib/server/push-sender'
 import { inTransaction, PushSubscription } from '@/models'
 
 const TEST_TTL_SECONDS = 300
@@ -23,20 +23,21 @@ export async function sendTestPush(
   const sentAt = clock.now()
   const message: PushMessage = { ...testText(), tag: 'test', path: '/me', at: sentAt }
   const outcome = await sender.send(known, JSON.stringify(message), { ttlSeconds: TEST_TTL_SECONDS, urgency: 'high', topic: 'test' })
+  if (outcome.kind === 'our fault' || outcome.kind === 'retry') {
+    log('push.test-failed', { subscriptionId: known.id, outcome: outcome.kind, detail: outcome.detail })
+  }
   // The send stands outside: a slow push service must not hold the write lock.
-  return inTransaction(async () => {
-    switch (outcome.kind) {
-      case 'sent':
-        await deviceAnswered(known.id, clock.now())
-        return { isSent: true, words: 'The push service took it. It should show within a minute.' }
-      case 'gone':
-        await forgetEndpoint(known.endpoint, sentAt)
-        return { isSent: false, words: 'The push service does not know this device any more. Turn notices on again.' }
-      case 'our fault':
-      case 'retry':
-        log('push.test-failed', { subscriptionId: known.id, outcome: outcome.kind, detail: outcome.detail })
-        await deviceFailed(known.id, outcome.words, clock.now())
-        return { isSent: false, words: outcome.words }
-    }
+  await inTransaction(async () => {
+    const now = clock.now()
+    if (outcome.kind === 'sent') await deviceAnswered(known.id, now)
+    else if (outcome.kind === 'gone') await forgetEndpoint(known.endpoint, sentAt)
+    else await deviceFailed(known.id, outcome.words, now)
   })
+  return { isSent: outcome.kind === 'sent', words: wordsOf(outcome) }
+}
+
+function wordsOf(outcome: PushOutcome): string {
+  if (outcome.kind === 'sent') return 'The push service took it. It should show within a minute.'
+  if (outcome.kind === 'gone') return 'The push service does not know this device any more. Turn notices on again.'
+  return outcome.words
 }

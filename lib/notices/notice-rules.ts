@@ -83,38 +83,30 @@ const WITHDRAWN = 'withdrawn by late data'
 
 /** Why an open notice has ended, or null while it stands. */
 function endOf(notice: OpenNotice, tree: QueueTree | undefined, queue: NoticeRulesInput['queue']): string | null {
-  switch (notice.kind) {
-    case 'room data stale':
-      return endOfRoom(Number(notice.subjectId), queue)
-    case 'deviation':
-    case 'summary':
-      // Told once; nothing to wait for.
-      return null
-    default:
-      return endOfTree(notice, tree)
-  }
-}
-
-function endOfTree(notice: OpenNotice, tree: QueueTree | undefined): string | null {
+  if (notice.kind === 'room data stale') return endOfRoom(Number(notice.subjectId), queue)
   if (!tree || OFF_THE_FLOOR.has(tree.state)) return 'the tree left the floor'
   if (notice.subjectType === 'coat' && tree.newestCoat?.id !== notice.subjectId) return 'another coat is the newest'
-  if (isUnknown(tree)) return null
-  switch (notice.kind) {
+  return isUnknown(tree) ? null : endOfKind(notice.kind, tree)
+}
+
+function endOfKind(kind: NoticeKind, { state, next }: QueueTree): string | null {
+  switch (kind) {
     case 'coat dry':
-      if (tree.state === 'held') return 'held'
-      return WET_STATES.has(tree.state) ? WITHDRAWN : null
+      if (state === 'held') return 'held'
+      return WET_STATES.has(state) ? WITHDRAWN : null
     case 'overdue':
-      if (tree.state === 'held') return 'held'
-      return tree.state === 'overdue' ? null : 'not overdue any more'
+      if (state === 'held') return 'held'
+      return state === 'overdue' ? null : 'not overdue any more'
     case 'last coat on':
-      return tree.next === null ? null : 'another coat is to come'
+      return next === null ? null : 'another coat is to come'
     case 'ready for burnout':
-      return tree.state === 'ready for burnout' ? null : 'not ready any more'
+      return state === 'ready for burnout' ? null : 'not ready any more'
     case 'call withdrawn':
-      return WET_STATES.has(tree.state) ? null : 'the coat is not drying any more'
+      return WET_STATES.has(state) ? null : 'the coat is not drying any more'
     case 'room data stale':
     case 'deviation':
     case 'summary':
+      // The first ends with its sensor; the others are told and closed at once.
       return null
   }
 }

@@ -32,7 +32,7 @@ export function nextAttemptAt({
 /**
  * `Retry-After` in milliseconds from now: seconds, or an HTTP date. Null where it is missing or makes no sense.
  */
-export function retryAfterMs(header: string | undefined, now: number): number | null {
+export function readRetryAfter(header: string | undefined, now: number): number | null {
   if (header === undefined) return null
   if (/^\d{1,9}$/.test(header.trim())) return Number(header) * 1000
   const at = Date.parse(header)

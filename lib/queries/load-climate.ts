@@ -65,6 +65,18 @@ export async function loadReadingsInHours(sensorId: number, hours: readonly numb
   )
 }
 
+/** Readings of a sensor in [from, to), with the nearest one before and after, in order. */
+export async function loadReadingsInRange(sensorId: number, from: number, to: number): Promise<RoomReading[]> {
+  return database.query<RoomReading>(
+    `SELECT ${READING_COLUMNS} FROM readings r
+      WHERE r.sensor_id = :sensorId
+        AND r.measured_at >= coalesce((SELECT max(measured_at) FROM readings WHERE sensor_id = :sensorId AND measured_at < :from), :from)
+        AND r.measured_at <= coalesce((SELECT min(measured_at) FROM readings WHERE sensor_id = :sensorId AND measured_at >= :to), :to)
+      ORDER BY r.measured_at`,
+    { type: QueryTypes.SELECT, replacements: { sensorId, from, to } },
+  )
+}
+
 /** What the drying clock needs of one sensor: its hours since `from`, its newest reading, and the exact readings of the hours that matter. */
 export async function loadClimateRows(sensorId: number, from: number, now: number, refinedHours: readonly number[]): Promise<ClimateRows> {
   const newest = await loadNewestReading(sensorId, now)

@@ -7,7 +7,7 @@ import { sendNotification, WebPushError } from 'web-push'
 import type { Clock } from '@/lib/core/clock'
 import { env } from '@/lib/core/env'
 import { endpointProblem, isExtraHost, keysProblem } from '@/lib/notices/push-endpoint'
-import { retryAfterMs } from '@/lib/notices/retry-plan'
+import { readRetryAfter } from '@/lib/notices/retry-plan'
 
 export type PushTarget = { endpoint: string; p256dh: string; auth: string }
 
@@ -87,7 +87,7 @@ function outcomeOf(error: unknown, now: number): PushOutcome {
   if (statusCode === 404 || statusCode === 410) return { kind: 'gone' }
   if (statusCode === 429 || statusCode >= 500) {
     const words = statusCode === 429 ? 'The push service asks for a pause.' : 'The push service is out of order.'
-    return { kind: 'retry', words, detail, retryAfterMs: retryAfterMs(headerOf(headers, 'retry-after'), now) }
+    return { kind: 'retry', words, detail, retryAfterMs: readRetryAfter(headerOf(headers, 'retry-after'), now) }
   }
   const words =
     statusCode === 401 || statusCode === 403

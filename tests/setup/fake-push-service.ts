@@ -99,10 +99,10 @@ export async function startFakePushService(): Promise<FakePushService> {
     if (body.length > 4096) return [413, 'too large']
     if (!/^\d+$/.test(String(headers['ttl'] ?? ''))) return [400, 'no TTL']
     if (headers['content-encoding'] !== 'aes128gcm') return [415, 'not aes128gcm']
-    const topic = headers['topic'] === undefined ? null : String(headers['topic'])
+    const topic = typeof headers['topic'] === 'string' ? headers['topic'] : null
     if (topic !== null && !/^[A-Za-z0-9_-]{1,32}$/.test(topic)) return [400, 'bad topic']
     if (!['very-low', 'low', 'normal', 'high'].includes(String(headers['urgency'] ?? 'normal'))) return [400, 'bad urgency']
-    const refused = vapidRefusal(String(headers['authorization'] ?? ''), device.applicationServerKey, origin)
+    const refused = vapidRefusal(headers['authorization'] ?? '', device.applicationServerKey, origin)
     if (refused) return refused
     const text = ece.decrypt(body, { version: 'aes128gcm', privateKey: device.privateKey, authSecret: device.authSecret }).toString('utf8')
     device.received.push({ text, headers, topic, ttlSeconds: Number(headers['ttl']), at: Date.now() })

@@ -141,10 +141,12 @@ describe('room data stale', () => {
     expect(noticeChanges({ queue: silent([unknownTree()], { rooms }), open: [], closed: [], now: NOW }).open).toHaveLength(1)
   })
   it('closes when readings are back, the trees are gone or the sensor is', () => {
-    const reasonOf = (queue: ReturnType<typeof buildQueue>) => noticeChanges({ queue, open, closed: [], now: NOW }).close[0]?.reason
-    expect(reasonOf(buildQueue({ trees: [unknownTree()] }))).toBe('readings are back')
-    expect(reasonOf(silent([]))).toBe('no tree waits for it')
-    expect(reasonOf(buildQueue({ rooms: [] }))).toBe('the sensor was retired')
+    const queues = [buildQueue({ trees: [unknownTree()] }), silent([]), buildQueue({ rooms: [] })]
+    expect(queues.map((queue) => noticeChanges({ queue, open, closed: [], now: NOW }).close[0]?.reason)).toEqual([
+      'readings are back',
+      'no tree waits for it',
+      'the sensor was retired',
+    ])
   })
 })
 

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest'
 import { endpointProblem, keysProblem } from '@/lib/notices/push-endpoint'
-import { nextAttemptAt, retryAfterMs } from '@/lib/notices/retry-plan'
+import { nextAttemptAt, readRetryAfter } from '@/lib/notices/retry-plan'
 
 describe('endpointProblem', () => {
   it.each([
@@ -66,12 +66,12 @@ describe('nextAttemptAt', () => {
   })
 })
 
-describe('retryAfterMs', () => {
+describe('readRetryAfter', () => {
   it('reads seconds and dates', () => {
-    expect(retryAfterMs('120', 0)).toBe(120_000)
-    expect(retryAfterMs('Thu, 01 Jan 1970 00:01:00 GMT', 0)).toBe(60_000)
-    expect(retryAfterMs('Thu, 01 Jan 1970 00:01:00 GMT', 90_000)).toBe(0)
-    expect(retryAfterMs('soon', 0)).toBeNull()
-    expect(retryAfterMs(undefined, 0)).toBeNull()
+    expect(readRetryAfter('120', 0)).toBe(120_000)
+    expect(readRetryAfter('Thu, 01 Jan 1970 00:01:00 GMT', 0)).toBe(60_000)
+    expect(readRetryAfter('Thu, 01 Jan 1970 00:01:00 GMT', 90_000)).toBe(0)
+    expect(readRetryAfter('soon', 0)).toBeNull()
+    expect(readRetryAfter(undefined, 0)).toBeNull()
   })
 })
