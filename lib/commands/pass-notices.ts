@@ -16,10 +16,7 @@ export type NoticePass = { opened: number; closed: number; late: number; deliver
  *
  * What had been true for longer than it is worth hearing (the worker was down, the foundry is new) is told as one summary.
  */
-export function passNotices(
-  queue: Queue,
-  { vapidPublicKey, clock }: { vapidPublicKey: string; clock: Clock },
-): Promise<NoticePass> {
+export function passNotices(queue: Queue, { vapidPublicKey, clock }: { vapidPublicKey: string; clock: Clock }): Promise<NoticePass> {
   return inTransaction(async () => {
     const now = clock.now()
     const changes = noticeChanges({ queue, open: await openNotices(), closed: await restingNotices(now), now })
@@ -79,7 +76,11 @@ async function tellSummaries(
 ): Promise<number> {
   if (late.length === 0) return 0
   const { everyTree, watching } = await pushAudiences(vapidPublicKey)
-  const tell = (subject: Pick<NoticeDraft, 'subjectType' | 'subjectId'>, drafts: readonly NoticeDraft[], recipients: readonly Recipient[]) =>
+  const tell = (
+    subject: Pick<NoticeDraft, 'subjectType' | 'subjectId'>,
+    drafts: readonly NoticeDraft[],
+    recipients: readonly Recipient[],
+  ) =>
     openNotice({
       draft: {
         kind: 'summary',

@@ -77,9 +77,14 @@ export function roomDataStaleText(
 }
 
 /** For the supervisor: a dip that went on early, held or otherwise not as the recipe says. */
-export function deviationText(
-  dip: { tag: string; title: string; placeName: string; coatNumber: number; deviations: readonly string[]; reason: string | null },
-): NoticeText {
+export function deviationText(dip: {
+  tag: string
+  title: string
+  placeName: string
+  coatNumber: number
+  deviations: readonly string[]
+  reason: string | null
+}): NoticeText {
   return {
     title: `${dip.tag}: dip ${dip.coatNumber} not as planned`,
     body: sentences(...dip.deviations.slice(0, 4), dip.reason !== null && `Reason: ${dip.reason}`, dip.placeName, dip.title),
@@ -89,7 +94,7 @@ export function deviationText(
 /** One word for everything that was missed while nobody watched, instead of a burst. */
 export function summaryText(late: readonly NoticeText[]): NoticeText {
   const [only] = late
-  if (only && late.length === 1) return only
+  if (only && late.length === 1) return { title: only.title, body: only.body }
   const shown = late.slice(0, 8).map((notice) => notice.title)
   const rest = late.length - shown.length
   return {
@@ -117,10 +122,7 @@ function guardTimes(tree: NoticeTree, context: TextContext): string | null {
 
 function foreseen(tree: NoticeTree, context: TextContext): string | null {
   return capital(
-    [
-      ['likely', tree.dry?.likelyAt ?? null] as const,
-      ['safe', tree.dry?.safeAt ?? null] as const,
-    ]
+    [['likely', tree.dry?.likelyAt ?? null] as const, ['safe', tree.dry?.safeAt ?? null] as const]
       .filter((time): time is readonly ['likely' | 'safe', number] => time[1] !== null)
       .map(([word, at]) => `${word} ${formatMoment(at, context.now, context.timeZone)}`)
       .join(', '),

@@ -173,10 +173,5 @@ export function isSigned(token: string, publicKey: string): boolean {
     format: 'jwk',
     key: { kty: 'EC', crv: 'P-256', x: point.subarray(1, 33).toString('base64url'), y: point.subarray(33, 65).toString('base64url') },
   })
-  return verify(
-    'sha256',
-    Buffer.from(`${header}.${claims}`),
-    { key, dsaEncoding: 'ieee-p1363' },
-    Buffer.from(signature ?? '', 'base64url'),
-  )
+  return verify('sha256', Buffer.from(`${header}.${claims}`), { key, dsaEncoding: 'ieee-p1363' }, Buffer.from(signature ?? '', 'base64url'))
 }

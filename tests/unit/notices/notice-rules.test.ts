@@ -63,7 +63,9 @@ describe('late data', () => {
   it.each(['wet', 'drying', 'nearly dry', 'last coat on'] as const)('takes a call back that was told, state %s', (state) => {
     const { open, close } = pass([buildQueueTree({ state })], { open: [opened()] })
     expect(close).toEqual([{ id: 'open', reason: 'withdrawn by late data' }])
-    expect(open).toMatchObject([{ kind: 'call withdrawn', subjectId: COAT, urgency: 'high', audience: { to: 'told by', noticeId: 'open' } }])
+    expect(open).toMatchObject([
+      { kind: 'call withdrawn', subjectId: COAT, urgency: 'high', audience: { to: 'told by', noticeId: 'open' } },
+    ])
   })
   it('takes nothing back while the room is unknown', () => {
     expect(kinds(pass([unknownTree()], { open: [opened()] }))).toEqual([])
@@ -108,7 +110,10 @@ describe('last coat on and ready for burnout', () => {
   it('opens ready for burnout per tree and closes it at the release', () => {
     const told = [opened({ kind: 'last coat on' }), opened({ id: 'dry' })]
     const ready = buildDryTree(60, { state: 'ready for burnout', ...allOn })
-    expect(pass([ready], { open: told })).toMatchObject({ open: [{ kind: 'ready for burnout', subjectType: 'tree', subjectId: TREE }], close: [] })
+    expect(pass([ready], { open: told })).toMatchObject({
+      open: [{ kind: 'ready for burnout', subjectType: 'tree', subjectId: TREE }],
+      close: [],
+    })
     const open = [opened({ id: 'ready', kind: 'ready for burnout', subjectType: 'tree', subjectId: TREE })]
     expect(pass([buildDryTree(5, { state: 'released' })], { open }).close).toEqual([{ id: 'ready', reason: 'the tree left the floor' }])
     expect(pass([buildDryTree(5, { state: 'dried out' })], { open }).close).toEqual([{ id: 'ready', reason: 'not ready any more' }])

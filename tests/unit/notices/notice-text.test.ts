@@ -62,7 +62,14 @@ describe('the words of a push', () => {
   })
 
   const tree = buildQueueTree({ title: 'W'.repeat(70) })
-  const dip = { tag: 'T-122', title: 'Otter Gate', placeName: 'Rack B', coatNumber: 6, deviations: ['Held', 'Still wet'], reason: 'r'.repeat(300) }
+  const dip = {
+    tag: 'T-122',
+    title: 'Otter Gate',
+    placeName: 'Rack B',
+    coatNumber: 6,
+    deviations: ['Held', 'Still wet'],
+    reason: 'r'.repeat(300),
+  }
   const texts = [
     coatDryText(tree, context),
     overdueText(tree, NOW - MINUTE_MS, context),
