@@ -11,7 +11,7 @@ type By = { member: Actor; clock: Clock }
 
 /** A refusal that belongs beside one field of the form. */
 function refuseField(field: string, reason: string): never {
-  throw new AppError('conflict', reason, { fields: [{ field, reason }] })
+  throw new AppError('conflict', reason, { fields: [{ path: field, message: reason }] })
 }
 
 /**

@@ -44,7 +44,7 @@ async function takeBack(coatId: string, reason: string | undefined, member: Acto
     }
     if (!reason) {
       throw new AppError('unprocessable', 'Say why this coat is taken back.', {
-        fields: [{ field: 'reason', reason: 'Say why in a few words.' }],
+        fields: [{ path: 'reason', message: 'Say why in a few words.' }],
       })
     }
   }

@@ -10,6 +10,6 @@ const LARGEST_BODY_BYTES = 2 * 1024 * 1024
 export const POST = sensorRoute(async ({ request, sensor, clock }) => {
   const { readings } = await readJson(request, readingBatch, { maxBytes: LARGEST_BODY_BYTES })
   const { rows, rejected } = checkRows(readings, clock.now())
-  const accepted = await recordReadings({ sensorId: sensor.id, source: 'sensor', enteredBy: null, rows }, { clock })
+  const accepted = await recordReadings({ sensorId: sensor.sensorId, source: 'sensor', enteredBy: null, rows }, { clock })
   return Response.json({ accepted, repeated: rows.length - accepted, rejected } satisfies ReadingBatchAnswer)
 })
