@@ -1,4 +1,4 @@
-import { millisecondsInMinute } from 'date-fns/constants'
+import { UNDO_MS } from '@/lib/coats/undo-window'
 import type { UndoDips } from '@/lib/coats/dip-contract'
 import { reopenCoat } from '@/lib/commands/close-coat'
 import { runOperation } from '@/lib/commands/run-operation'
@@ -8,9 +8,6 @@ import { AppError } from '@/lib/core/errors'
 import type { Actor } from '@/lib/members/actor'
 import { may } from '@/lib/members/roles'
 import { Coat, Tree, TreePlace } from '@/models'
-
-/** For this long the person who logged a dip may take it back without giving a reason. */
-export const UNDO_MS = 10 * millisecondsInMinute
 
 /**
  * Takes coats back: they are withdrawn, never deleted, and the coat below dries on from its own dip.
@@ -47,7 +44,7 @@ async function takeBack(coatId: string, reason: string | undefined, member: Acto
     }
     if (!reason) {
       throw new AppError('unprocessable', 'Say why this coat is taken back.', {
-        fields: [{ field: 'reason', reason: 'Say why in a few words.' }],
+        fields: [{ path: 'reason', message: 'Say why in a few words.' }],
       })
     }
   }
