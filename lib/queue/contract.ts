@@ -43,6 +43,7 @@ export const queueTree = z.object({
   /** Short words after the state's own: 'Waiting 35 min' counts from here; 'Overdue 1 h 05 min' too; null where there is no since. */
   stateSince: instant.nullable(),
   coatsOn: z.int(),
+  newestCoat: z.object({ id: z.uuid(), number: z.int(), dippedAt: instant }).nullable(),
   coats: z.array(coatInSection),
   /** Share of the newest coat's water that is gone, 0 to 1; null where no coat is drying. */
   openDry: z.number().nullable(),

@@ -1,0 +1,51 @@
+import { z } from 'zod'
+
+const RESERVED_HOST = /(^|\.)(localhost|local|invalid|test|localdomain)$/i
+
+/** Apple refuses a VAPID subject with a reserved or missing domain, and no library says so; refuse it at the start instead. */
+function isRealContact(subject: string): boolean {
+  const host = subject.startsWith('mailto:')
+    ? subject.split('@')[1]
+    : subject.startsWith('https://')
+      ? new URL(subject).hostname
+      : undefined
+  return host !== undefined && host.includes('.') && !RESERVED_HOST.test(host)
+}
+
+const schema = z.object({
+  /** Folder of the database and of what a new foundry makes for itself. */
+  DATA_DIR: z.string().min(1).default('data'),
+  NEXTAUTH_SECRET: z.string().min(32, 'NEXTAUTH_SECRET must be at least 32 characters.'),
+  NEXTAUTH_URL: z.url('NEXTAUTH_URL must be the address people open, such as http://localhost:3000.'),
+  /** Waiting writers and password hashes hold threads; with Node's four the holder of the write lock can wait for one for ever. */
+  UV_THREADPOOL_SIZE: z
+    .string()
+    .default('')
+    .refine((size) => Number(size) >= 16, 'must be at least 16; npm start sets it.'),
+  VAPID_PUBLIC_KEY: z.string().min(80),
+  VAPID_PRIVATE_KEY: z.string().min(40),
+  VAPID_SUBJECT: z.string().refine(isRealContact, 'VAPID_SUBJECT must be mailto: or https: with a real domain.'),
+  /** Extra hosts that a push subscription may name, host:port, comma separated: for the push service of the tests. */
+  PUSH_EXTRA_HOSTS: z.string().default(''),
+  /** PEM file of a certificate authority to trust for pushes, beside the system's. */
+  PUSH_CA_FILE: z.string().optional(),
+  /** 'off' stops the demo foundry's own sensors. */
+  DEMO_FEED: z.enum(['on', 'off']).default('on'),
+})
+export type Env = z.infer<typeof schema>
+
+let parsed: Env | undefined
+
+/**
+ * The process environment, checked once.
+ *
+ * @throws {Error} with one line a setting that is missing or wrong; the program must not start then.
+ */
+export function env(): Env {
+  if (parsed) return parsed
+  const result = schema.safeParse(process.env)
+  if (!result.success) {
+    throw new Error(`Settings: ${result.error.issues.map((issue) => `${issue.path.join('.')}: ${issue.message}`).join(' ')}`)
+  }
+  return (parsed = result.data)
+}

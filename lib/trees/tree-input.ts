@@ -1,0 +1,69 @@
+import { z } from 'zod'
+import { RECESS_CLASSES, SPACINGS } from '@/lib/coats/vocabulary'
+
+export const CUP_KINDS = ['wax', 'paper', 'ceramic'] as const
+export type CupKind = (typeof CUP_KINDS)[number]
+
+export const WAX_SURFACES = ['washed', 'etched'] as const
+export type WaxSurface = (typeof WAX_SURFACES)[number]
+
+export const treeTag = z
+  .string()
+  .regex(/^[A-Z]{1,3}-\d{1,5}$/, 'A tag is one to three capital letters, a dash and a number, such as T-128.')
+
+/** Form fields arrive as text; a decimal comma is as good as a point. An empty field is 'not given'. */
+const typedNumber = (field: string) =>
+  z.preprocess(
+    (value) => {
+      if (typeof value !== 'string') return value
+      const text = value.trim().replace(',', '.')
+      return text === '' ? undefined : Number(text)
+    },
+    z.number(`${field} is a number.`),
+  )
+
+const optionalText = (schema: z.ZodType<string>) =>
+  z.preprocess((value) => (value === '' || value === undefined ? null : value), schema.nullable())
+
+const pieceInput = z.strictObject({
+  workTitle: z.string().trim().min(1, 'Name the work.').max(80, 'A title has at most 80 letters.'),
+  sectionName: z.string().trim().max(60, 'A section has at most 60 letters.'),
+  editionNumber: typedNumber('The edition number').pipe(
+    z.int('An edition number is whole.').min(1, 'Editions start at 1.').max(9999, 'Editions end at 9999.'),
+  ),
+  isRecast: z.boolean(),
+})
+
+/** What a supervisor enters for a tree. */
+export const treeInput = z.strictObject({
+  tag: treeTag,
+  recipeVersionId: z.uuid('Choose a recipe.'),
+  placeId: z.uuid('Choose where it hangs.'),
+  pieces: z.array(pieceInput).min(1, 'A tree carries at least one piece.').max(40, 'A tree carries at most 40 pieces.'),
+  waxMassKg: typedNumber('Wax mass').pipe(z.number().gt(0, 'Wax mass is more than 0 kg.').max(500, 'Wax mass is at most 500 kg.')),
+  cupKind: z.enum(CUP_KINDS, 'Choose the kind of cup.'),
+  cupVolumeL: typedNumber('Cup volume').pipe(z.number().min(0, 'Cup volume is not under 0 L.').max(50, 'Cup volume is at most 50 L.')),
+  recessClass: z.enum(RECESS_CLASSES, 'Choose the deepest recess.'),
+  spacing: z.enum(SPACINGS, 'Choose the spacing.'),
+  hungMassKg: z.preprocess(
+    (value) => (value === '' || value === undefined ? null : value),
+    typedNumber('Weight').pipe(z.number().gt(0, 'Weight is more than 0 kg.').max(2000, 'Weight is at most 2,000 kg.')).nullable(),
+  ),
+  pourDate: optionalText(z.iso.date('A pour date is a day, such as 2026-12-18.')),
+})
+export type TreeInput = z.infer<typeof treeInput>
+
+/** Intake: passed only as a whole; what is not ticked stays open. */
+export const intakeInput = z.strictObject({
+  waxSurface: z.enum(WAX_SURFACES).nullable(),
+  isWaxAtRoomTemp: z.boolean(),
+  isCupFirm: z.boolean(),
+  areVentsAndCorePinsIn: z.boolean(),
+})
+export type IntakeInput = z.infer<typeof intakeInput>
+
+export const reasonInput = z.string().trim().min(1, 'Say why in a few words.').max(300, 'A reason has at most 300 letters.')
+
+/** How dryness was confirmed where the clock alone is not enough. */
+export const CONFIRMATIONS = ['touch', 'weight', 'temperature'] as const
+export type Confirmation = (typeof CONFIRMATIONS)[number]
