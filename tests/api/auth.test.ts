@@ -79,7 +79,7 @@ describe('signing in', () => {
       const response = await client.fetch(`/api/auth/signin?callbackUrl=${encodeURIComponent(callbackUrl)}`)
       const target = new URL(response.headers.get('location') ?? '', server.baseUrl)
       expect(target.pathname).toBe('/sign-in')
-      expect(new URL(target.searchParams.get('callbackUrl') ?? '').origin).toBe(server.baseUrl)
+      expect(new URL(target.searchParams.get('callbackUrl') ?? '/', server.baseUrl).origin).toBe(server.baseUrl)
     },
   )
 
