@@ -11,6 +11,7 @@ export class DoseHour extends Model<InferAttributes<DoseHour>, InferCreationAttr
   declare coveredMinutes: number
   declare gapMinutes: number
   declare hasTyped: boolean
+  declare typedCount: number
   declare readingCount: number
   declare meanAirTempC: CreationOptional<number | null>
   declare minAirTempC: CreationOptional<number | null>
@@ -29,6 +30,7 @@ export class DoseHour extends Model<InferAttributes<DoseHour>, InferCreationAttr
         coveredMinutes: { type: DataTypes.DOUBLE, allowNull: false },
         gapMinutes: { type: DataTypes.DOUBLE, allowNull: false },
         hasTyped: flag('hasTyped'),
+        typedCount: { type: DataTypes.INTEGER, allowNull: false },
         readingCount: { type: DataTypes.INTEGER, allowNull: false },
         meanAirTempC: { type: DataTypes.DOUBLE },
         minAirTempC: { type: DataTypes.DOUBLE },

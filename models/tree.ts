@@ -8,6 +8,7 @@ import {
   type Sequelize,
 } from 'sequelize'
 import type { RecessClass, Spacing } from '@/lib/coats/vocabulary'
+import type { CupKind, WaxSurface } from '@/lib/trees/tree-input'
 import { flag } from '@/models/columns'
 import type { Coat } from '@/models/coat'
 import type { Hold } from '@/models/hold'
@@ -24,19 +25,20 @@ export class Tree extends Model<InferAttributes<Tree>, InferCreationAttributes<T
   declare tag: string
   declare recipeVersionId: string
   declare waxMassKg: number
-  declare cupKind: 'wax' | 'paper' | 'ceramic'
+  declare cupKind: CupKind
   declare cupVolumeL: number
   declare recessClass: RecessClass
   declare spacing: Spacing
   declare hungMassKg: CreationOptional<number | null>
   /** 'YYYY-MM-DD'. */
   declare pourDate: CreationOptional<string | null>
-  declare waxSurface: CreationOptional<'washed' | 'etched' | null>
+  declare waxSurface: CreationOptional<WaxSurface | null>
   declare isWaxAtRoomTemp: CreationOptional<boolean>
   declare isCupFirm: CreationOptional<boolean>
   declare areVentsAndCorePinsIn: CreationOptional<boolean>
   declare intakePassedAt: CreationOptional<number | null>
   declare intakePassedBy: CreationOptional<string | null>
+  declare releasedAt: CreationOptional<number | null>
   declare scrappedAt: CreationOptional<number | null>
   declare createdBy: CreationOptional<string | null>
   declare createdAt: number
@@ -71,6 +73,7 @@ export class Tree extends Model<InferAttributes<Tree>, InferCreationAttributes<T
         areVentsAndCorePinsIn: { ...flag('areVentsAndCorePinsIn'), defaultValue: false },
         intakePassedAt: { type: DataTypes.INTEGER },
         intakePassedBy: { type: DataTypes.TEXT },
+        releasedAt: { type: DataTypes.INTEGER },
         scrappedAt: { type: DataTypes.INTEGER },
         createdBy: { type: DataTypes.TEXT },
         createdAt: { type: DataTypes.INTEGER, allowNull: false },

@@ -202,10 +202,13 @@ describe('values', () => {
       coveredMinutes: 60,
       gapMinutes: 0,
       hasTyped: true,
+      typedCount: 1,
       readingCount: 4,
     }
     await models.DoseHour.bulkCreate([hour], { updateOnDuplicate: ['doseLikely', 'hasTyped'] })
-    await models.DoseHour.bulkCreate([{ ...hour, doseLikely: 3, hasTyped: false }], { updateOnDuplicate: ['doseLikely', 'hasTyped'] })
+    await models.DoseHour.bulkCreate([{ ...hour, doseLikely: 3, hasTyped: false, typedCount: 0 }], {
+      updateOnDuplicate: ['doseLikely', 'hasTyped'],
+    })
     const [stored, ...others] = await models.DoseHour.findAll()
     expect(others).toEqual([])
     expect(stored).toMatchObject({ doseLikely: 3, hasTyped: false, hourStart: 3_600_000 })
