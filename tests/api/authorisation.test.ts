@@ -77,6 +77,8 @@ describe('each door, for each visitor', () => {
   let clients: Record<(typeof VISITORS)[number], Client>
   beforeAll(async () => {
     server = await startServer()
+    const { buildFoundry } = await import('@/tests/factories/shell-room')
+    await buildFoundry()
     clients = await signInAll(server.baseUrl, await seedMembers())
   })
   afterAll(() => server.stop())
