@@ -21,15 +21,22 @@ export const DOORS: readonly Door[] = [
   // Its own tests are in auth.test.ts.
   door('GET', '/api/auth/[...nextauth]', 'anybody', '/api/auth/providers'),
   door('POST', '/api/auth/[...nextauth]', 'anybody', '/api/auth/signout'),
+
+  door('GET', '/api/v1/queue', 'crew'),
+  door('POST', '/api/v1/dips', 'operator'),
+  door('POST', '/api/v1/dips/undo', 'operator'),
+  door('POST', '/api/v1/trees/[treeId]/holds', 'operator'),
+  door('POST', '/api/v1/trees/[treeId]/looks', 'operator'),
+  door('POST', '/api/v1/trees/[treeId]/place', 'operator'),
+  door('POST', '/api/v1/baths/[bathId]/stirs', 'operator'),
+  door('POST', '/api/v1/readings', 'sensor'),
+  door('POST', '/api/v1/readings/typed', 'operator'),
 ]
 
 /** One server action: file and exported name, the act that its first line requires, and from which role upwards that is. */
 export type ActionRow = { file: string; name: string; act: Act; who: Role }
 
-const action = (file: string, name: string, act: Act, who: Role): ActionRow => ({ file, name, act, who })
-
-/** Every server action. */
+/** Every server action; its first line is `await requireMember('act')`, or `const member = await …`. */
 export const ACTIONS: readonly ActionRow[] = [
-  // action('app/(office)/trees/new/actions.ts', 'createTree', 'trees', 'supervisor'),
+  // { file: 'app/(office)/trees/new/actions.ts', name: 'createTree', act: 'trees', who: 'supervisor' },
 ]
-void action
