@@ -25,14 +25,21 @@ class PatientDatabase extends sqlite3.Database {
   }
 }
 
+declare global {
+  var kilnwardDatabase: Sequelize | undefined
+  var kilnwardWriteMutex: Mutex | undefined
+  var kilnwardTransactionContext: AsyncLocalStorage<Map<string, unknown>> | undefined
+}
+
 // Queries inside a transaction find it here, so that one which forgets to name it cannot wait for itself.
-const storage = new AsyncLocalStorage<Map<string, unknown>>()
+// Global like the mutex: a second copy of this module (another server bundle) must see the same transaction.
+const storage = (globalThis.kilnwardTransactionContext ??= new AsyncLocalStorage<Map<string, unknown>>())
 Sequelize.useCLS({
   get: (key: string) => storage.getStore()?.get(key),
   set: (key: string, value: unknown) => storage.getStore()?.set(key, value),
   run: (callback: (context: unknown) => unknown) => storage.run(new Map(storage.getStore()), () => callback(undefined)),
   bind: (callback: unknown) => callback,
-} as object)
+})
 
 export function openDatabase(file: string): Sequelize {
   mkdirSync(dirname(file), { recursive: true })
@@ -46,11 +53,6 @@ export function openDatabase(file: string): Sequelize {
     // The busy timeout alone decides how long to wait.
     retry: { max: 1 },
   })
-}
-
-declare global {
-  var kilnwardDatabase: Sequelize | undefined
-  var kilnwardWriteMutex: Mutex | undefined
 }
 
 export const databaseFile = (): string => join(process.env['DATA_DIR'] ?? 'data', 'kilnward.sqlite')

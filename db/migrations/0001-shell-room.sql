@@ -90,6 +90,7 @@ CREATE TABLE dose_hours (
   covered_minutes REAL NOT NULL CHECK (covered_minutes BETWEEN 0 AND 60),
   gap_minutes REAL NOT NULL CHECK (gap_minutes BETWEEN 0 AND 60),
   has_typed INTEGER NOT NULL CHECK (has_typed IN (0, 1)),
+  typed_count INTEGER NOT NULL CHECK (typed_count >= 0),
   -- Plain figures of the hour's own readings for the coat log and the charts; null in an hour without one.
   reading_count INTEGER NOT NULL CHECK (reading_count >= 0),
   mean_air_temp_c REAL,
@@ -213,6 +214,8 @@ CREATE TABLE trees (
   are_vents_and_core_pins_in INTEGER NOT NULL DEFAULT 0 CHECK (are_vents_and_core_pins_in IN (0, 1)),
   intake_passed_at INTEGER CHECK (intake_passed_at > 0),
   intake_passed_by TEXT REFERENCES members (id) ON DELETE RESTRICT,
+  -- Beside the release's own record: what is on the floor is found by one small index, however many trees there have been.
+  released_at INTEGER CHECK (released_at > 0),
   scrapped_at INTEGER CHECK (scrapped_at > 0),
   created_by TEXT REFERENCES members (id) ON DELETE RESTRICT,
   created_at INTEGER NOT NULL CHECK (created_at > 0),
@@ -220,6 +223,9 @@ CREATE TABLE trees (
   -- Intake is passed only as a whole.
   CHECK (intake_passed_at IS NULL OR (wax_surface IS NOT NULL AND is_wax_at_room_temp = 1 AND is_cup_firm = 1 AND are_vents_and_core_pins_in = 1))
 ) STRICT;
+
+CREATE INDEX trees_on_floor ON trees (tag) WHERE released_at IS NULL AND scrapped_at IS NULL;
+CREATE INDEX trees_left ON trees (released_at) WHERE released_at IS NOT NULL;
 
 CREATE TABLE tree_pieces (
   tree_id TEXT NOT NULL REFERENCES trees (id) ON DELETE RESTRICT,

@@ -16,7 +16,7 @@ export type Rate = { start: number; end: number }
 
 export type SegmentKind =
   | 'measured' // between two sensor readings at most 60 min apart
-  | 'typed' // a typed reading that still holds
+  | 'typed' // rests on a typed reading that still holds, or runs towards one
   | 'gap' // more than 60 min without a reading: credited low, bounded both ways
   | 'hour' // a whole hour from the hourly table
   | 'held' // at most 30 min after the newest sensor reading
@@ -24,6 +24,19 @@ export type SegmentKind =
 
 /** A stretch of one room's drying at a place factor of 1. Low and high differ from likely only in gaps (and hours that hold one). */
 export type RoomSegment = { from: Instant; to: Instant; kind: SegmentKind; likely: Rate; low: Rate; high: Rate }
+
+/** One whole UTC hour of one room: a row of the hourly table. Dose in reference hours at a place factor of 1. */
+export type DoseHour = {
+  /** A whole multiple of 3,600,000. */
+  hourStart: Instant
+  dose: Dose
+  /** Minutes of the hour that are credited at all, gaps included. 60 when the hour has no hole. */
+  coveredMinutes: number
+  /** Minutes of the hour that lie in a gap: credited low, bounded both ways. */
+  gapMinutes: number
+  /** Whether a typed reading stands behind any part of the hour. */
+  hasTyped: boolean
+}
 
 /** Segments in order of time, not overlapping; a hole between two of them credits nothing. */
 export type RoomCurve = readonly RoomSegment[]
@@ -65,6 +78,26 @@ export type CoatForClock = {
   recessClass: RecessClass
   /** Air temperature at the dip, where it is known. */
   airTempAtDipC: number | null
+  /** Spread of ln(need) before recess and typed readings are added; 0.25 (DEFAULT_SIGMA) until evidence narrows it. */
+  baseSigma?: number
+}
+
+/** A reading's time and source, without its air. */
+export type ReadingMark = { measuredAt: Instant; source: ReadingSource }
+
+/**
+ * The readings behind a coat's dose, from its clock's start to now, of the sensors of the places where it hung in their turn.
+ * Build it with `windowReadings`, or by three small queries.
+ */
+export type WindowReadings = {
+  sensorCount: number
+  typedCount: number
+  /** Newest reading at or before the clock's start, of the place where the coat hung then. */
+  lastBeforeStart: ReadingMark | null
+  /** Oldest reading after the clock's start. */
+  firstInWindowAt: Instant | null
+  /** Newest reading of the place where the tree hangs now, in the window or before it. */
+  newest: ReadingMark | null
 }
 
 /** What the clock says of the newest coat of a tree. */

@@ -1,0 +1,24 @@
+import { assertPressurePa } from '@/lib/drying/air'
+import { assertWithin } from '@/lib/drying/guards'
+
+const STANDARD_PRESSURE_PA = 101_325
+
+/** Starting air speeds by place, m/s; measure with a vane or hot-wire meter at the tree. Our own starting values, to be calibrated. */
+export const DEFAULT_AIR_SPEED_MPS = { corner: 0.1, rack: 0.5, 'fan path': 1.5 } as const
+
+/**
+ * Place factor phi: how fast water leaves where the tree hangs, compared with air of 1.0 m/s at sea level.
+ *
+ *   phi = 0.30 + 0.70 sqrt( max(v, 0.1 m/s) / 1.0 m/s  x  P / 101325 Pa )
+ *
+ * 0.30 is the share of radiation from walls and lamps; the root follows Nu ~ Re^0.5; pressure stands for the density of the air.
+ *
+ * @throws {RangeError} outside 0 to 20 m/s or 50 to 110 kPa.
+ * @source exponent: Churchill and Bernstein 1977 for slow air; the shares 0.30 and 0.70 are our own starting values, to be calibrated.
+ * @example placeFactor(0.5, 101325) // 0.795
+ */
+export function placeFactor(airSpeedMps: number, pressurePa: number): number {
+  assertWithin('Air speed in m/s', airSpeedMps, 0, 20)
+  assertPressurePa(pressurePa)
+  return 0.3 + 0.7 * Math.sqrt(Math.max(airSpeedMps, 0.1) * (pressurePa / STANDARD_PRESSURE_PA))
+}

@@ -1,0 +1,115 @@
+import { TZDate } from '@date-fns/tz'
+import { wetBulbDepressionK } from '@/lib/drying/room-factor'
+import { DEFAULT_FLAG_LIMITS } from '@/lib/drying/flags'
+import type { Queue, QueueBath, QueueRoom, QueueTree } from '@/lib/queue/contract'
+import type { RoomClimate } from '@/lib/room/climate'
+import { localDay, nextOpenInstant, type Shift } from '@/lib/schedule/shifts'
+import { recipeCoatOf } from '@/lib/trees/assess'
+import type { DerivedTree } from '@/lib/trees/derive'
+import type { PlaceFacts } from '@/lib/trees/facts'
+
+/** Under this share of the reference speed drying is called slow. Our own choice. */
+const SLOW_SPEED = 0.85
+
+/** One tree as the floor shows it. */
+export function queueTree(tree: DerivedTree, places: ReadonlyMap<string, PlaceFacts>): QueueTree {
+  const { facts, call, newest, next } = tree
+  const place = places.get(facts.stays.at(-1)?.placeId ?? '')
+  const isDry = call !== null && (tree.isLastOn ? call.isSafeDry : call.guardReachedAt !== null)
+  return {
+    id: facts.id,
+    tag: facts.tag,
+    title: facts.title,
+    place: { id: place?.id ?? '', name: place?.name ?? '' },
+    state: tree.state,
+    stateSince: tree.stateSince,
+    coatsOn: facts.coats.length,
+    newestCoat: newest ? { id: newest.id, number: newest.number, dippedAt: newest.dippedAt } : null,
+    coats: sectionCoats(tree),
+    openDry: call && !isDry ? 1 - call.moistureRatio : null,
+    openTarget: 1 - ((newest ? recipeCoatOf(facts, newest.number)?.moistureTarget : undefined) ?? 0.1),
+    moistureRatio: call?.moistureRatio ?? null,
+    next: next
+      ? {
+          number: next.number,
+          kind: next.kind,
+          bathId: next.bathId,
+          bathName: next.bathName,
+          stucco: next.stucco,
+          drainSeconds: next.drainSeconds,
+          isPrewet: next.isPrewet,
+          readAloud: next.readAloud,
+        }
+      : null,
+    guard: tree.guard,
+    dry: call && !call.isUnknown ? { earliestAt: call.earliestAt, likelyAt: call.likelyAt, safeAt: call.safeAt } : null,
+    driedOut: tree.driedOut,
+    isUncalibrated: !facts.recipe.isCalibrated,
+    pourDate: facts.pourDate,
+    willMissPour: tree.willMissPour,
+    hold: facts.hold,
+    look: facts.look,
+    warnings: tree.warnings,
+  }
+}
+
+/** The recipe's coats, those that are on as they were really put on. */
+function sectionCoats({ facts }: DerivedTree): QueueTree['coats'] {
+  const on = facts.coats.map(({ kind, stucco }) => ({ kind, stucco }))
+  const toCome = facts.recipe.coats.filter((coat) => coat.number > on.length).map(({ kind, stucco }) => ({ kind, stucco }))
+  return [...on, ...toCome]
+}
+
+/** One sensor's air, in numbers and in a word. */
+export function queueRoom(
+  climate: RoomClimate,
+  { name, kind }: { name: string; kind: 'logger' | 'wall hygrometer' },
+  pressurePa: number,
+): QueueRoom {
+  const { newest } = climate
+  const gapK = newest ? wetBulbDepressionK(newest, pressurePa) : null
+  const pull =
+    newest === null || gapK === null || climate.isStale
+      ? 'not known'
+      : gapK > DEFAULT_FLAG_LIMITS.chillWarnK || newest.roomFactor > DEFAULT_FLAG_LIMITS.chillSpeed
+        ? 'too dry for face coats'
+        : newest.roomFactor < SLOW_SPEED
+          ? 'slow'
+          : 'good'
+  return {
+    sensorId: climate.sensorId,
+    sensorName: name,
+    airTempC: newest?.airTempC ?? null,
+    relHumidityPct: newest?.relHumidityPct ?? null,
+    wetBulbGapK: gapK,
+    speedPct: newest ? newest.roomFactor * 100 : null,
+    pull,
+    measuredAt: newest?.measuredAt ?? null,
+    source: newest?.source ?? null,
+    isStale: climate.isStale,
+    isTypedOnly: kind === 'wall hygrometer',
+  }
+}
+
+/** A bath and whether somebody stirred it on this local day. */
+export function queueBath(
+  bath: { id: string; name: string; kind: 'face' | 'backup' },
+  stir: { at: number; by: string } | null,
+  { now, timeZone }: { now: number; timeZone: string },
+): QueueBath {
+  return {
+    ...bath,
+    stirredAt: stir?.at ?? null,
+    stirredBy: stir?.by ?? null,
+    isStirredToday: stir !== null && localDay(stir.at, timeZone) === localDay(now, timeZone),
+  }
+}
+
+/** The tide axis: what is left of this shift, and the next one. Outside the hours the axis begins with a night. */
+export function queueShift(now: number, shifts: readonly Shift[], timeZone: string): Queue['shift'] {
+  const current = shifts[0]
+  const isOpen = current !== undefined && current.opensAt <= now
+  const next = isOpen ? shifts[1] : current
+  const nextStartsAt = next?.opensAt ?? nextOpenInstant(now, shifts) ?? new TZDate(now, timeZone).getTime()
+  return { isOpen, endsAt: isOpen ? current.closesAt : now, nextStartsAt, nextEndsAt: next?.closesAt ?? nextStartsAt }
+}

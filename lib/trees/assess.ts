@@ -1,0 +1,149 @@
+import { millisecondsInHour, millisecondsInMinute } from 'date-fns/constants'
+import type { Guard } from '@/lib/coats/vocabulary'
+import { callCoat } from '@/lib/drying/coat-call'
+import { coatPhase } from '@/lib/drying/coat-phase'
+import { dampInStoreFlag, isOverdue } from '@/lib/drying/flags'
+import { guardFor } from '@/lib/drying/need'
+import type { CoatCall } from '@/lib/drying/types'
+import { readingsForFlags } from '@/lib/room/climate'
+import { clockStart, type CoatFacts, type RecipeCoatFacts, type TreeFacts } from '@/lib/trees/facts'
+import { dryingSpans, readingsBehind, type FloorContext } from '@/lib/trees/spans'
+import type { TreeState } from '@/lib/trees/states'
+
+/** For this long after its guard a coat is 'dip now'; then it is 'waiting'. Our own choice. */
+const FRESH_MS = 15 * millisecondsInMinute
+
+/** A coat hung longer than this adds nothing that anybody can use; it also bounds what a page has to read. */
+export const LONGEST_WINDOW_MS = 60 * 24 * millisecondsInHour
+
+/** What is derived of a tree at one moment. */
+export type Assessment = {
+  facts: TreeFacts
+  state: TreeState
+  stateSince: number | null
+  newest: CoatFacts | null
+  /** The clock's call on the newest coat; null on bare wax and on trees that left the floor. */
+  call: CoatCall | null
+  guard: Guard | null
+  /** The coat to dip next; null when every coat is on. */
+  next: RecipeCoatFacts | null
+  /** Every coat of the recipe is on. */
+  isLastOn: boolean
+  /** The newest coat may be dipped over, or the wax may take coat 1. */
+  mayDip: boolean
+  /** Since when, by the clock or by a person's word. */
+  dippableSince: number | null
+}
+
+/** The recipe's coat of a number. A tree that carries more coats than its recipe keeps the last one's figures. */
+export function recipeCoatOf(facts: TreeFacts, number: number): RecipeCoatFacts | null {
+  return facts.recipe.coats.find((coat) => coat.number === number) ?? null
+}
+
+/** The guard of a coat on this tree. */
+export function guardOf(facts: TreeFacts, number: number): Guard {
+  const recipeCoat = recipeCoatOf(facts, number) ?? facts.recipe.coats.at(-1)
+  return guardFor({
+    kind: recipeCoat?.kind ?? 'backup',
+    isLast: number >= facts.recipe.coats.length,
+    recessClass: facts.recessClass,
+    recipeGuard: recipeCoat?.guard ?? 'safe',
+  })
+}
+
+/** The drying clock's call on one coat of a tree, as it stands at `at`. */
+export function callOf(facts: TreeFacts, coat: CoatFacts, context: FloorContext, at: number = context.now): CoatCall {
+  const start = Math.max(clockStart(coat), context.now - LONGEST_WINDOW_MS)
+  const recipeCoat = recipeCoatOf(facts, coat.number) ?? facts.recipe.coats.at(-1)
+  return callCoat({
+    coat: {
+      number: coat.number,
+      kind: coat.kind,
+      clockStartsAt: start,
+      roughMinutes: coat.roughMinutes,
+      needReferenceHours: coat.needReferenceHours,
+      moistureTarget: recipeCoat?.moistureTarget ?? 0.1,
+      guard: guardOf(facts, coat.number),
+      recessClass: facts.recessClass,
+      airTempAtDipC: coat.airTempC,
+    },
+    spans: dryingSpans(context, facts.stays, start),
+    now: at,
+    readings: readingsBehind(context, facts.stays, start, at),
+  })
+}
+
+/** Derives everything of one tree at the context's moment. First match wins, in the order of TREE_STATES. */
+export function assessTree(facts: TreeFacts, context: FloorContext): Assessment {
+  const newest = facts.coats.at(-1) ?? null
+  const coatCount = facts.recipe.coats.length
+  const isLastOn = facts.coats.length >= coatCount
+  const hasLeft = facts.scrappedAt !== null || facts.releasedAt !== null
+  const call = newest && !hasLeft ? callOf(facts, newest, context) : null
+  const dippableSince = hasLeft ? null : dippableFrom(facts, call)
+  const base = {
+    facts,
+    newest,
+    call,
+    guard: newest ? guardOf(facts, newest.number) : null,
+    next: isLastOn || hasLeft ? null : recipeCoatOf(facts, facts.coats.length + 1),
+    isLastOn,
+    mayDip: !isLastOn && facts.hold === null && dippableSince !== null,
+    dippableSince,
+  }
+  return { ...base, ...stateOf(base, context) }
+}
+
+type Base = Omit<Assessment, 'state' | 'stateSince'>
+
+function dippableFrom(facts: TreeFacts, call: CoatCall | null): number | null {
+  if (call === null) return facts.intakePassedAt
+  const byEye = facts.look?.verdict === 'looks dry' ? facts.look.at : null
+  if (call.guardReachedAt === null) return byEye
+  return byEye === null ? call.guardReachedAt : Math.min(byEye, call.guardReachedAt)
+}
+
+function stateOf(base: Base, context: FloorContext): { state: TreeState; stateSince: number | null } {
+  const { facts, call, newest, dippableSince } = base
+  if (facts.scrappedAt !== null) return { state: 'scrapped', stateSince: facts.scrappedAt }
+  if (facts.releasedAt !== null) return { state: 'released', stateSince: facts.releasedAt }
+  if (facts.hold !== null) return { state: 'held', stateSince: facts.hold.at }
+  if (newest === null || call === null) {
+    return facts.intakePassedAt === null
+      ? { state: 'bare wax', stateSince: null }
+      : { state: 'wax ready', stateSince: facts.intakePassedAt }
+  }
+  if (base.isLastOn) return finishedState(base, call, context)
+  if (dippableSince !== null) {
+    const overdueSince = overdueFrom(base, newest, context)
+    if (overdueSince !== null) return { state: 'overdue', stateSince: overdueSince }
+    return { state: context.now - dippableSince < FRESH_MS ? 'dip now' : 'waiting', stateSince: dippableSince }
+  }
+  const phase = coatPhase(call, context.now)
+  return { state: phase === 'dry' ? 'dip now' : phase, stateSince: null }
+}
+
+/** Past the wet coat's longest wait, or the pour date can no longer be kept. Only a coat that may be dipped over is overdue. */
+function overdueFrom(base: Base, newest: CoatFacts, context: FloorContext): number | null {
+  const longestWaitHours = recipeCoatOf(base.facts, newest.number)?.longestWaitHours ?? 72
+  const hours = (context.now - newest.dippedAt) / millisecondsInHour
+  return isOverdue(hours, longestWaitHours) ? newest.dippedAt + longestWaitHours * millisecondsInHour : null
+}
+
+function finishedState(base: Base, call: CoatCall, context: FloorContext): { state: TreeState; stateSince: number | null } {
+  const { facts } = base
+  const byTouch = call.isLikelyDry && facts.look?.verdict === 'looks dry'
+  if (!call.isSafeDry && !byTouch) return { state: 'last coat on', stateSince: null }
+  const dryAt = call.isSafeDry ? call.safeAt : (facts.look?.at ?? null)
+  const isLookedOver = facts.lookedOverAt !== null
+  if (!isLookedOver || dampInStore(base.facts, call, context) !== null) return { state: 'dried out', stateSince: dryAt }
+  return { state: 'ready for burnout', stateSince: Math.max(facts.lookedOverAt ?? 0, dryAt ?? 0) }
+}
+
+/** Whether a finished shell hung in damp air since it was dry, or since somebody last looked it over. */
+export function dampInStore(facts: TreeFacts, call: CoatCall, context: FloorContext) {
+  const since = Math.max(call.safeAt ?? call.likelyAt ?? context.now, facts.lookedOverAt ?? 0)
+  const place = context.places.get(facts.stays.at(-1)?.placeId ?? '')
+  const climate = place && context.climates.get(place.sensorId)
+  return climate ? dampInStoreFlag(readingsForFlags(climate, since, context.now), since, context.now) : null
+}

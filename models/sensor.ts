@@ -1,0 +1,35 @@
+import {
+  DataTypes,
+  Model,
+  type CreationOptional,
+  type InferAttributes,
+  type InferCreationAttributes,
+  type NonAttribute,
+  type Sequelize,
+} from 'sequelize'
+import type { Place } from '@/models/place'
+import type { SensorToken } from '@/models/sensor-token'
+
+export class Sensor extends Model<InferAttributes<Sensor>, InferCreationAttributes<Sensor>> {
+  declare id: CreationOptional<number>
+  declare name: string
+  declare kind: 'logger' | 'wall hygrometer'
+  declare retiredAt: CreationOptional<number | null>
+  declare createdAt: number
+
+  declare tokens?: NonAttribute<SensorToken[]>
+  declare places?: NonAttribute<Place[]>
+
+  static initialize(sequelize: Sequelize): typeof Sensor {
+    return Sensor.init(
+      {
+        id: { type: DataTypes.INTEGER, primaryKey: true, autoIncrement: true },
+        name: { type: DataTypes.TEXT, allowNull: false },
+        kind: { type: DataTypes.TEXT, allowNull: false },
+        retiredAt: { type: DataTypes.INTEGER },
+        createdAt: { type: DataTypes.INTEGER, allowNull: false },
+      },
+      { sequelize, tableName: 'sensors', underscored: true, timestamps: false },
+    )
+  }
+}

@@ -1,0 +1,21 @@
+import { DataTypes, Model, type InferAttributes, type InferCreationAttributes, type NonAttribute, type Sequelize } from 'sequelize'
+import type { Section } from '@/models/section'
+
+export class Work extends Model<InferAttributes<Work>, InferCreationAttributes<Work>> {
+  declare id: string
+  declare title: string
+  declare createdAt: number
+
+  declare sections?: NonAttribute<Section[]>
+
+  static initialize(sequelize: Sequelize): typeof Work {
+    return Work.init(
+      {
+        id: { type: DataTypes.TEXT, primaryKey: true, allowNull: false },
+        title: { type: DataTypes.TEXT, allowNull: false },
+        createdAt: { type: DataTypes.INTEGER, allowNull: false },
+      },
+      { sequelize, tableName: 'works', underscored: true, timestamps: false },
+    )
+  }
+}

@@ -1,0 +1,218 @@
+import { describe, expect, it } from 'vitest'
+import { callCoat, windowReadings } from '@/lib/drying/coat-call'
+import { dampFlag } from '@/lib/drying/flags'
+import { moistureRatio } from '@/lib/drying/moisture'
+import { placeFactor } from '@/lib/drying/place-factor'
+import { placeSpans } from '@/lib/drying/place-spans'
+import { roomSegments } from '@/lib/drying/room-segments'
+import { doseOverSpans, instantWhenDose } from '@/lib/drying/tree-dose'
+import type { CoatForClock, DryingSpan, FanHours, RoomReading } from '@/lib/drying/types'
+import { buildCoat, buildCurve, buildReading, buildSpan, hour, hoursAfterStart, SEA_LEVEL_PA, START } from './build-readings'
+
+// Worked days of our own, at sea level. The expected numbers were computed twice, by prefix sums and by a fine quadrature
+// in another language. Tolerances: dose 0.2 %, moisture ratio 0.002, time 1 min.
+const ONE_MINUTE_H = 1 / 60
+
+const expectDose = (actual: number, expected: number) => expect(Math.abs(actual / expected - 1)).toBeLessThan(0.002)
+const expectMoisture = (actual: number, expected: number) => expect(Math.abs(actual - expected)).toBeLessThan(0.002)
+const expectHours = (actual: number, expected: number) => expect(Math.abs(actual - expected)).toBeLessThan(ONE_MINUTE_H)
+
+/** A time of day, on the evening of the dip or the morning after, in hours after 18:00. */
+const clock = (hours: number, minutes: number) => ((hours + 6) % 24) + minutes / 60
+
+function callAt(hours: number, readings: readonly RoomReading[], speedMps: number, coat: CoatForClock) {
+  const now = hour(hours)
+  const spans: DryingSpan[] = [buildSpan(roomSegments(readings, { now }), placeFactor(speedMps, SEA_LEVEL_PA))]
+  return callCoat({ coat, spans, now, readings: windowReadings(readings, coat.clockStartsAt, now) })
+}
+
+describe('a steady room, 24 degC and 40 %, in the fan path', () => {
+  const readings = Array.from({ length: 11 }, (_, index) => buildReading(index / 2, 24, 40))
+
+  it('is dry at 1.873 h, 2.580 h and 3.555 h', () => {
+    const call = callAt(5, readings, 1.5, buildCoat())
+    expectHours(hoursAfterStart(call.earliestAt), 1.873)
+    expectHours(hoursAfterStart(call.likelyAt), 2.58)
+    expectHours(hoursAfterStart(call.safeAt), 3.555)
+    expect(call).toMatchObject({ isLikelyDry: true, isSafeDry: true, isUnknown: false, guardReachedAt: call.likelyAt })
+  })
+
+  it.each([
+    { hours: 1, dose: 1.55, moisture: 0.4441 },
+    { hours: 2, dose: 3.1005, moisture: 0.1755 },
+  ])('has taken $dose reference hours after $hours h', ({ hours, dose, moisture }) => {
+    const call = callAt(hours, readings, 1.5, buildCoat())
+    expectDose(call.dose.likely, dose)
+    expectMoisture(call.moistureRatio, moisture)
+    expect(call.isLikelyDry).toBe(false)
+  })
+})
+
+describe('a dehumidifier that trips after an hour and a half', () => {
+  const dry = [0, 0.5, 1, 1.5].map((hours) => buildReading(hours, 21, 50))
+  const damp = [1.6, ...Array.from({ length: 25 }, (_, index) => 2 + index / 2)].map((hours) => buildReading(hours, 20, 70))
+  const readings = [...dry, ...damp]
+  const coat = buildCoat({ needReferenceHours: 2.5 })
+
+  it.each([
+    { hours: 1.5, dose: 1.1925 },
+    { hours: 3, dose: 1.8749 },
+    { hours: 6, dose: 3.2046 },
+  ])('has given $dose reference hours after $hours h', ({ hours, dose }) => {
+    expectDose(doseOverSpans([buildSpan(buildCurve(readings), placeFactor(0.5, SEA_LEVEL_PA))], START, hour(hours)).likely, dose)
+  })
+
+  it('is likely dry at 4.410 h and safe at 6.541 h', () => {
+    const call = callAt(14, readings, 0.5, coat)
+    expectHours(hoursAfterStart(call.likelyAt), 4.41)
+    expectHours(hoursAfterStart(call.safeAt), 6.541)
+  })
+
+  it('is not dry where a fixed three-hour timer would have called it', () => {
+    const call = callAt(3, readings, 0.5, coat)
+    expectMoisture(call.moistureRatio, 0.1868)
+    expect(call.isLikelyDry).toBe(false)
+  })
+})
+
+describe('a humid night on the rack, 18:00 to noon', () => {
+  const airs: [number, number][] = [
+    [22, 50],
+    [21.5, 53],
+    [21, 57],
+    [20, 62],
+    [19, 67],
+    [18.5, 71],
+    [18, 75],
+    [17.5, 78],
+    [17, 81],
+    [16.5, 83],
+    [16, 85],
+    [16, 86],
+    [16.5, 84],
+    [18, 76],
+    [20, 64],
+    [22, 54],
+    [23, 48],
+    [23.5, 46],
+    [24, 44],
+  ]
+  const readings = airs.map(([airTempC, relHumidityPct], index) => buildReading(index, airTempC, relHumidityPct))
+  const span = buildSpan(buildCurve(readings), placeFactor(0.5, SEA_LEVEL_PA))
+
+  it('has the room factors of the table', () => {
+    const expected = [
+      1.0288, 0.9467, 0.846, 0.7186, 0.6, 0.5155, 0.4345, 0.3746, 0.3171, 0.2785, 0.2412, 0.2247, 0.2617, 0.4163, 0.6778, 0.9373, 1.1056,
+      1.17, 1.2366,
+    ]
+    for (const [index, factor] of expected.entries()) expect(Math.abs(readings[index]!.roomFactor - factor)).toBeLessThan(3e-4)
+  })
+
+  it.each([
+    { name: '24:00', hours: 6, dose: 3.4647 },
+    { name: '08:00', hours: 14, dose: 5.5875 },
+    { name: '12:00', hours: 18, dose: 8.9026 },
+  ])('has given $dose reference hours by $name', ({ hours, dose }) => {
+    expectDose(doseOverSpans([span], START, hour(hours)).likely, dose)
+  })
+
+  it('has a coat of need 4 dry at 22:34, 01:46 and 07:51', () => {
+    const call = callAt(18, readings, 0.5, buildCoat())
+    expectHours(hoursAfterStart(call.earliestAt), clock(22, 34))
+    expectHours(hoursAfterStart(call.likelyAt), clock(1, 46))
+    expectHours(hoursAfterStart(call.safeAt), clock(7, 51))
+  })
+
+  it('is damp at 01:46, so touch or weight must confirm', () => {
+    expect(dampFlag(readings, hour(clock(1, 46)))).toMatchObject({ code: 'damp', relHumidityPct: 78 })
+    expect(dampFlag(readings, hour(clock(22, 34)))).toBeNull()
+  })
+
+  it('has a recess that needs 6 dry at 08:41 and safe at 11:33', () => {
+    const coat = buildCoat({ needReferenceHours: 6, recessClass: 'deep recess', guard: 'safe' })
+    const morning = callAt(14, readings, 0.5, coat)
+    expectMoisture(morning.moistureRatio, 0.1189)
+    expect(morning).toMatchObject({ isLikelyDry: false, guardReachedAt: null })
+    const noon = callAt(18, readings, 0.5, coat)
+    expectHours(hoursAfterStart(noon.likelyAt), clock(8, 41))
+    expectHours(hoursAfterStart(noon.safeAt), clock(11, 33))
+    expect(noon.guardReachedAt).toBe(noon.safeAt)
+  })
+
+  it('has a coat dipped at 20:30 dry at 08:24', () => {
+    const dippedAt = hour(clock(20, 30))
+    expectDose(doseOverSpans([span], dippedAt, hour(14)).likely, 3.7661)
+    expectHours(hoursAfterStart(instantWhenDose([span], dippedAt, 4, 'likely')), clock(8, 24))
+  })
+})
+
+describe('readings that are missing, then come late', () => {
+  const early = [
+    buildReading(0, 21, 50),
+    buildReading(0.5, 21.2, 49),
+    buildReading(4, 20, 62),
+    buildReading(4.5, 20, 61),
+    buildReading(5, 20.2, 60),
+  ]
+  const late = [
+    buildReading(1, 21.2, 49),
+    buildReading(1.5, 21, 51),
+    buildReading(2, 20.8, 54),
+    buildReading(2.5, 20.6, 56),
+    buildReading(3, 20.4, 58),
+    buildReading(3.5, 20.2, 60),
+  ]
+  const coat = buildCoat({ needReferenceHours: 3.5 })
+
+  it('credits a gap low, bounds it both ways and is likely dry at 4.65 h', () => {
+    const call = callAt(5, early, 1, coat)
+    expectDose(call.dose.likely, 3.762)
+    expectDose(call.dose.low, 2.505)
+    expectDose(call.dose.high, 4.846)
+    expectMoisture(call.moistureRatio, 0.0827)
+    expectHours(hoursAfterStart(call.likelyAt), 4.65)
+  })
+
+  it('credits the late batch in full and is likely dry at 3.840 h', () => {
+    const call = callAt(5, [...early, ...late], 1, coat)
+    expectDose(call.dose.likely, 4.3563)
+    expect(call.dose.low).toBe(call.dose.likely)
+    expect(call.dose.high).toBe(call.dose.likely)
+    expectMoisture(call.moistureRatio, 0.0534)
+    expectHours(hoursAfterStart(call.likelyAt), 3.84)
+  })
+
+  it('has two gaps where only one row of the batch arrives', () => {
+    expectDose(callAt(5, [...early, late[2]!], 1, coat).dose.likely, 4.0436)
+  })
+})
+
+describe('fans that go off for the night, 18 degC and 75 %, need 4.0, dipped 17:30', () => {
+  const dippedAt = hour(-0.5)
+  const readings = Array.from({ length: 40 }, (_, index) => buildReading(-0.5 + index / 2, 18, 75))
+  const curve = buildCurve(readings)
+  const everyDay = (onMinute: number, offMinute: number): FanHours[] =>
+    [1, 2, 3, 4, 5, 6, 7].map((weekday) => ({ weekday, onMinute, offMinute }))
+  const spansWith = (fanHours: FanHours[]): DryingSpan[] =>
+    placeSpans({
+      from: dippedAt,
+      to: hour(18),
+      place: { airSpeedFansOnMps: 1.5, airSpeedFansOffMps: 0.1, fanHours },
+      pressurePa: SEA_LEVEL_PA,
+      timeZone: 'UTC',
+    }).map((span) => Object.assign(span, { curve }))
+
+  it('is dry at 01:27 with the fans left on', () => {
+    expectHours(hoursAfterStart(instantWhenDose(spansWith(everyDay(0, 1440)), dippedAt, 4, 'likely')), clock(1, 27))
+  })
+
+  it('has 3.17 reference hours at 07:30 and is dry at 09:09 with the fans off from 17:30 to 07:30', () => {
+    const spans = spansWith(everyDay(7 * 60 + 30, 17 * 60 + 30))
+    expectDose(doseOverSpans(spans, dippedAt, hour(clock(7, 30))).likely, 3.17)
+    expectHours(hoursAfterStart(instantWhenDose(spans, dippedAt, 4, 'likely')), clock(9, 9))
+  })
+
+  it('is the moisture target exactly at the need', () => {
+    expect(moistureRatio(4, 4, 0.1)).toBeCloseTo(0.1, 12)
+  })
+})
