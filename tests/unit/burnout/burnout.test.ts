@@ -1,10 +1,16 @@
 import { describe, expect, it } from 'vitest'
 import { burnoutHeadline, groupForBurnout, inTheWay } from '@/lib/burnout/burnout-groups'
-import { pourDeadlineAt, pourSentence, pourVerdict } from '@/lib/burnout/pour-verdict'
+import { pourSentence, pourVerdict, type PourContext } from '@/lib/burnout/pour-verdict'
 import { blockingChecks, needsConfirmation, releaseKey } from '@/lib/burnout/release-key'
 import type { ReleaseCheck } from '@/lib/trees/detail-contract'
 import { NOW, queueTree, ZONE } from '../../fixtures/queue-tree'
 
+/** Open at seven on weekdays: a pour on Friday 16 needs its shell by 07:00 local, 06:00 UTC. */
+const CONTEXT: PourContext = {
+  now: NOW,
+  timeZone: ZONE,
+  shiftHours: [1, 2, 3, 4, 5].map((weekday) => ({ weekday, opensMinute: 420, closesMinute: 1020 })),
+}
 const at = (text: string) => Date.parse(text)
 const driedOut = (likely: string, safe: string | null) => ({
   earliestAt: null,
@@ -12,39 +18,28 @@ const driedOut = (likely: string, safe: string | null) => ({
   safeAt: safe === null ? null : at(safe),
 })
 
-describe('pourDeadlineAt', () => {
-  it('is the local midnight that begins the pour day, on either side of a clock change', () => {
-    expect(pourDeadlineAt('2026-10-20', ZONE)).toBe(at('2026-10-19T23:00:00Z'))
-    expect(pourDeadlineAt('2026-10-26', ZONE)).toBe(at('2026-10-26T00:00:00Z'))
-    expect(pourDeadlineAt('2026-10-20', 'America/Los_Angeles')).toBe(at('2026-10-20T07:00:00Z'))
-  })
-  it('refuses what is no day', () => {
-    expect(() => pourDeadlineAt('soon', ZONE)).toThrow(RangeError)
-  })
-})
-
 describe('pourVerdict', () => {
   const tree = (likely: string, safe: string | null) => queueTree({ pourDate: '2026-10-16', driedOut: driedOut(likely, safe) })
   it.each([
-    ['holds', '2026-10-14T10:00Z', '2026-10-15T22:59Z'],
-    ['tight', '2026-10-15T10:00Z', '2026-10-15T23:01Z'],
+    ['holds', '2026-10-14T10:00Z', '2026-10-16T06:00Z'],
+    ['tight', '2026-10-15T10:00Z', '2026-10-16T06:01Z'],
     ['tight', '2026-10-15T10:00Z', null],
-    ['will miss', '2026-10-15T23:01Z', '2026-10-16T10:00Z'],
+    ['will miss', '2026-10-16T06:01Z', '2026-10-16T10:00Z'],
   ] as const)('%s when likely %s and safe %s', (verdict, likely, safe) => {
-    expect(pourVerdict(tree(likely, safe), NOW, ZONE)).toBe(verdict)
+    expect(pourVerdict(tree(likely, safe), CONTEXT)).toBe(verdict)
   })
   it('follows the server where it says that the pour is lost', () => {
-    expect(pourVerdict({ ...tree('2026-10-14T10:00Z', '2026-10-14T12:00Z'), willMissPour: true }, NOW, ZONE)).toBe('will miss')
+    expect(pourVerdict({ ...tree('2026-10-14T10:00Z', '2026-10-14T12:00Z'), willMissPour: true }, CONTEXT)).toBe('will miss')
   })
   it('holds once the shell is dried out, and says when the day has passed', () => {
     const ready = queueTree({ state: 'ready for burnout', pourDate: '2026-10-13' })
-    expect(pourVerdict(ready, NOW, ZONE)).toBe('holds')
-    expect(pourVerdict(ready, at('2026-10-14T00:00:00Z'), ZONE)).toBe('passed')
+    expect(pourVerdict(ready, CONTEXT)).toBe('holds')
+    expect(pourVerdict(ready, { ...CONTEXT, now: at('2026-10-14T00:00:00Z') })).toBe('passed')
   })
   it('has no verdict without a pour date, after release, or on what is not foreseen', () => {
-    expect(pourVerdict(queueTree(), NOW, ZONE)).toBeNull()
-    expect(pourVerdict(queueTree({ state: 'released', pourDate: '2026-10-16' }), NOW, ZONE)).toBeNull()
-    expect(pourVerdict(queueTree({ pourDate: '2026-10-16' }), NOW, ZONE)).toBe('not in sight')
+    expect(pourVerdict(queueTree(), CONTEXT)).toBeNull()
+    expect(pourVerdict(queueTree({ state: 'released', pourDate: '2026-10-16' }), CONTEXT)).toBeNull()
+    expect(pourVerdict(queueTree({ pourDate: '2026-10-16' }), CONTEXT)).toBe('not in sight')
   })
   it('is said with the day', () => {
     expect(pourSentence('tight', '2026-10-16')).toBe('tight for its pour, Fri 16 Oct: nothing may slip')
@@ -68,11 +63,25 @@ describe('groupForBurnout', () => {
     expect(groups.lastCoatOn.map((tree) => tree.tag)).toEqual(['T-4'])
     expect(groups.stillDipped.map((tree) => tree.tag)).toEqual(['T-7'])
     expect(groups.held.map((tree) => tree.tag)).toEqual(['T-5'])
-    expect(inTheWay(groups, NOW, ZONE).map((line) => line.text)).toEqual(['1 held', '1 to look over', '1 drying out'])
+    expect(inTheWay(groups, CONTEXT).map((line) => line.text)).toEqual(['1 held', '1 to look over', '1 drying out'])
+  })
+
+  it('sets apart a looked-over tree that only a person’s word keeps from its release', () => {
+    const damp = queueTree({ state: 'dried out' })
+    const notLookedOver = queueTree({ state: 'dried out' })
+    const groups = groupForBurnout([damp, notLookedOver], {
+      [damp.id]: [{ code: 'confirmation', isMet: false, text: 'Damp in store.' }],
+      [notLookedOver.id]: [
+        { code: 'look-over', isMet: false, text: 'Not looked over.' },
+        { code: 'confirmation', isMet: false, text: 'Damp in store.' },
+      ],
+    })
+    expect(groups.toConfirm).toEqual([damp])
+    expect(groups.driedOut).toEqual([notLookedOver])
   })
 
   it('says nothing stands in the way of an empty room', () => {
-    expect(inTheWay(groupForBurnout([]), NOW, ZONE)).toEqual([])
+    expect(inTheWay(groupForBurnout([]), CONTEXT)).toEqual([])
     expect([0, 1, 4].map(burnoutHeadline)).toEqual(['No tree ready for burnout', '1 tree ready for burnout', '4 trees ready for burnout'])
   })
 })
