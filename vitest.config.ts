@@ -9,7 +9,12 @@ export default defineConfig({
       { resolve, test: { name: 'pure', include: ['tests/{unit,reference,architecture}/**/*.test.ts'] } },
       {
         resolve,
-        test: { name: 'database', include: ['tests/{integration,jobs}/**/*.test.ts'], setupFiles: ['tests/setup/database.ts'], testTimeout: 30_000 },
+        test: {
+          name: 'database',
+          include: ['tests/{integration,jobs}/**/*.test.ts'],
+          setupFiles: ['tests/setup/database.ts'],
+          testTimeout: 30_000,
+        },
       },
       {
         resolve,

@@ -13,7 +13,9 @@ export const relHumidityPct = z
   .max(105, 'Humidity cannot be over 105 %.')
 
 /** An instant as ISO 8601 with a zone, or epoch milliseconds. */
-const measuredAt = z.union([z.int().min(0), z.iso.datetime({ offset: true })]).transform((value) => (typeof value === 'number' ? value : Date.parse(value)))
+const measuredAt = z
+  .union([z.int().min(0), z.iso.datetime({ offset: true })])
+  .transform((value) => (typeof value === 'number' ? value : Date.parse(value)))
 
 /** One row of `POST /api/v1/readings`; rows are checked one by one so that good ones are kept. */
 export const readingRow = z.strictObject({ measuredAt, airTempC, relHumidityPct })
