@@ -1,3 +1,56 @@
 /** What a member may do, from the floor to the books. */
 export const ROLES = ['operator', 'supervisor', 'crew', 'owner'] as const
 export type Role = (typeof ROLES)[number]
+
+/** Each role may do all that the ones before it may. Crew is the pour crew: it looks and listens. */
+export const ROLE_ORDER = ['crew', 'operator', 'supervisor', 'owner'] as const satisfies readonly Role[]
+
+/** The lowest role that may do each act. The only place where rights are written down. */
+const LOWEST_ROLE = {
+  /** Every screen of the floor, and every chart. */
+  see: 'crew',
+  /** Notices on one's own devices, and watching a tree. */
+  subscribe: 'crew',
+  dip: 'operator',
+  /** Taking back one's own dip within ten minutes. Later, or another's, is `correct`. */
+  undo: 'operator',
+  hold: 'operator',
+  move: 'operator',
+  /** 'Looks dry' and 'not yet': evidence on the newest coat. */
+  look: 'operator',
+  /** A reading typed from the wall hygrometer. */
+  read: 'operator',
+  stir: 'operator',
+  trees: 'supervisor',
+  intake: 'supervisor',
+  'lift hold': 'supervisor',
+  'look over': 'supervisor',
+  release: 'supervisor',
+  correct: 'supervisor',
+  recipes: 'supervisor',
+  places: 'supervisor',
+  sensors: 'supervisor',
+  people: 'owner',
+  settings: 'owner',
+} as const satisfies Record<string, Role>
+
+export type Act = keyof typeof LOWEST_ROLE
+
+/**
+ * Whether a member of this role may do this act.
+ *
+ * @example may('operator', 'dip') // => true
+ * @example may('crew', 'dip') // => false
+ */
+export function may(role: Role, act: Act): boolean {
+  return ROLE_ORDER.indexOf(role) >= ROLE_ORDER.indexOf(LOWEST_ROLE[act])
+}
+
+/**
+ * The roles that may do this act, lowest first; for sentences such as 'This needs a supervisor.'
+ *
+ * @example rolesFor('release') // => ['supervisor', 'owner']
+ */
+export function rolesFor(act: Act): readonly Role[] {
+  return ROLE_ORDER.filter((role) => may(role, act))
+}
