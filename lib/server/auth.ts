@@ -19,3 +19,7 @@ export async function requireMember(act: Act): Promise<Member> {
 export async function requireMemberPage(_act: Act, _path: string): Promise<Member> {
   return stubMember()
 }
+
+export async function currentMember(): Promise<Member | null> {
+  return stubMember()
+}

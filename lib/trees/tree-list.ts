@@ -2,6 +2,9 @@ import type { QueueTree } from '@/lib/queue/contract'
 import type { TreeState } from '@/lib/trees/states'
 import { groupOf, isOpenTree, TREE_GROUPS, type TreeGroup } from '@/lib/trees/tree-groups'
 
+/** A tree as the list shows it. */
+export type TreeListRow = QueueTree & { recipeLabel: string }
+
 /** What asks for a hand comes first, then what dries, by its time; what nobody can act on comes last. */
 const RANK: Record<TreeState, number> = {
   overdue: 0,
@@ -42,7 +45,7 @@ function compare(left: number, right: number): number {
  * A new list, by what is due: overdue, dry ones by how long they have waited, then those that dry by their guard's time.
  * Ties go by tag, numbers as numbers. Released and scrapped trees stand newest first.
  */
-export function sortByDue(trees: readonly QueueTree[]): QueueTree[] {
+export function sortByDue<Row extends QueueTree>(trees: readonly Row[]): Row[] {
   return trees.toSorted((left, right) => {
     const rank = RANK[left.state] - RANK[right.state]
     if (rank !== 0) return rank
@@ -59,7 +62,10 @@ function matchesWords(tree: QueueTree, words: readonly string[]): boolean {
 }
 
 /** Trees of a group (all open ones for null) whose tag, piece or place carries every word typed. */
-export function filterTrees(trees: readonly QueueTree[], { query, group }: { query: string; group: TreeGroup | null }): QueueTree[] {
+export function filterTrees<Row extends QueueTree>(
+  trees: readonly Row[],
+  { query, group }: { query: string; group: TreeGroup | null },
+): Row[] {
   const words = query.toLocaleLowerCase().split(/\s+/).filter(Boolean)
   return trees.filter((tree) => (group === null ? isOpenTree(tree) : groupOf(tree.state) === group) && matchesWords(tree, words))
 }

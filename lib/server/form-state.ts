@@ -1,0 +1,26 @@
+import { AppError } from '@/lib/core/errors'
+import type { FieldErrors } from '@/lib/trees/tree-form-values'
+
+/** Answer of a server action to a form. What was typed stays in the browser, so it does not travel back. */
+export type FormState =
+  | { status: 'idle' }
+  /** `text` says what was done, for the eyes and for a reader. */
+  | { status: 'done'; text: string }
+  | { status: 'invalid'; fields: FieldErrors }
+  | { status: 'refused'; text: string }
+
+export const IDLE: FormState = { status: 'idle' }
+
+/**
+ * Runs what a form asks for. An expected refusal becomes a sentence: beside the field that `extra.field` names, else under
+ * the form. Anything else is a fault and goes on to the error page.
+ */
+export async function answerForm(act: () => Promise<FormState>): Promise<FormState> {
+  try {
+    return await act()
+  } catch (error) {
+    if (!(error instanceof AppError)) throw error
+    const field = error.extra['field']
+    return typeof field === 'string' ? { status: 'invalid', fields: { [field]: error.message } } : { status: 'refused', text: error.message }
+  }
+}
