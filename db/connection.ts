@@ -28,12 +28,12 @@ class PatientDatabase extends sqlite3.Database {
 declare global {
   var kilnwardDatabase: Sequelize | undefined
   var kilnwardWriteMutex: Mutex | undefined
-  var kilnwardTransactionContext: AsyncLocalStorage<Map<string, unknown>> | undefined
+  var kilnwardStorage: AsyncLocalStorage<Map<string, unknown>> | undefined
 }
 
 // Queries inside a transaction find it here, so that one which forgets to name it cannot wait for itself.
-// Global like the mutex: a second copy of this module (another server bundle) must see the same transaction.
-const storage = (globalThis.kilnwardTransactionContext ??= new AsyncLocalStorage<Map<string, unknown>>())
+// On globalThis like the handle: a second copy of this module would not see that a transaction is open and wait for itself.
+const storage = (globalThis.kilnwardStorage ??= new AsyncLocalStorage<Map<string, unknown>>())
 Sequelize.useCLS({
   get: (key: string) => storage.getStore()?.get(key),
   set: (key: string, value: unknown) => storage.getStore()?.set(key, value),

@@ -2,10 +2,11 @@ import { readFile } from 'node:fs/promises'
 import { join } from 'node:path'
 import sqlite3 from 'sqlite3'
 import { Umzug, type UmzugStorage } from 'umzug'
+import { z } from 'zod'
 
 type Handle = {
   exec: (sql: string) => Promise<void>
-  all: <Row>(sql: string, values?: unknown[]) => Promise<Row[]>
+  all: (sql: string, values?: unknown[]) => Promise<unknown[]>
   close: () => Promise<void>
 }
 
@@ -17,8 +18,7 @@ function openHandle(file: string): Promise<Handle> {
       db.configure('busyTimeout', 10_000)
       resolve({
         exec: (sql) => new Promise((ok, no) => db.exec(sql, (error) => (error ? no(error) : ok()))),
-        all: <Row>(sql: string, values: unknown[] = []) =>
-          new Promise<Row[]>((ok, no) => db.all(sql, values, (error, rows) => (error ? no(error) : ok(rows as Row[])))),
+        all: (sql, values = []) => new Promise((ok, no) => db.all(sql, values, (error, rows) => (error ? no(error) : ok(rows)))),
         close: () => new Promise((ok, no) => db.close((error) => (error ? no(error) : ok()))),
       })
     })
@@ -28,7 +28,8 @@ function openHandle(file: string): Promise<Handle> {
 const appliedTable: UmzugStorage<Handle> = {
   executed: async ({ context }) => {
     await context.exec('CREATE TABLE IF NOT EXISTS migrations (name TEXT PRIMARY KEY) STRICT')
-    return (await context.all<{ name: string }>('SELECT name FROM migrations ORDER BY name')).map((row) => row.name)
+    const rows = z.array(z.object({ name: z.string() })).parse(await context.all('SELECT name FROM migrations ORDER BY name'))
+    return rows.map((row) => row.name)
   },
   // Written by the migration itself, inside its transaction.
   logMigration: async () => {},

@@ -1,8 +1,31 @@
+import { openTree } from '@/lib/commands/open-tree'
+import { addTreeEvent } from '@/lib/commands/tree-event'
 import type { Clock } from '@/lib/core/clock'
-import type { Role } from '@/lib/members/roles'
-import { refuseStub } from '@/lib/commands/office-stub'
+import { AppError } from '@/lib/core/errors'
+import { newId } from '@/lib/core/ids'
+import type { Actor } from '@/lib/members/actor'
+import { inTransaction, Place, TreePlace } from '@/models'
 
-export function moveTree(_treeId: string, _placeId: string, _by: { member: { id: string; name: string; role: Role }; clock: Clock }): Promise<void> {
-  refuseStub()
-  return Promise.resolve(undefined)
+/**
+ * Hangs a tree somewhere else, from now on; the newest coat's dose is split at this moment. The same place again changes nothing.
+ *
+ * @throws {AppError} not_found for the tree or the place; conflict when the tree has left the floor.
+ */
+export function moveTree(treeId: string, placeId: string, { member, clock }: { member: Actor; clock: Clock }): Promise<void> {
+  return inTransaction(async () => {
+    await openTree(treeId)
+    const place = await Place.findByPk(placeId)
+    if (!place || place.retiredAt !== null) throw new AppError('not_found', 'There is no such place.')
+    const current = await TreePlace.findOne({
+      where: { treeId, withdrawnAt: null },
+      order: [
+        ['since', 'DESC'],
+        ['id', 'DESC'],
+      ],
+    })
+    if (current?.placeId === placeId) return
+    const now = clock.now()
+    await TreePlace.create({ id: newId(now), treeId, placeId, since: now, memberId: member.id })
+    await addTreeEvent(treeId, 'moved', { memberId: member.id, at: now, text: `Moved to ${place.name}.`, placeId })
+  })
 }

@@ -1,8 +1,15 @@
+import { openTree } from '@/lib/commands/open-tree'
+import { addTreeEvent } from '@/lib/commands/tree-event'
 import type { Clock } from '@/lib/core/clock'
-import type { Role } from '@/lib/members/roles'
-import { refuseStub } from '@/lib/commands/office-stub'
+import type { Actor } from '@/lib/members/actor'
+import { inTransaction } from '@/models'
 
-export function scrapTree(_treeId: string, _reason: string, _by: { member: { id: string; name: string; role: Role }; clock: Clock }): Promise<void> {
-  refuseStub()
-  return Promise.resolve(undefined)
+/** Takes a tree off the floor for good, with a reason. Its history stays. @throws {AppError} not_found, conflict. */
+export function scrapTree(treeId: string, reason: string, { member, clock }: { member: Actor; clock: Clock }): Promise<void> {
+  return inTransaction(async () => {
+    const tree = await openTree(treeId)
+    const now = clock.now()
+    await tree.update({ scrappedAt: now, updatedAt: now })
+    await addTreeEvent(treeId, 'scrapped', { memberId: member.id, at: now, text: `Scrapped: ${reason}` })
+  })
 }

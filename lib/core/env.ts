@@ -17,6 +17,11 @@ const schema = z.object({
   DATA_DIR: z.string().min(1).default('data'),
   NEXTAUTH_SECRET: z.string().min(32, 'NEXTAUTH_SECRET must be at least 32 characters.'),
   NEXTAUTH_URL: z.url('NEXTAUTH_URL must be the address people open, such as http://localhost:3000.'),
+  /** Waiting writers and password hashes hold threads; with Node's four the holder of the write lock can wait for one for ever. */
+  UV_THREADPOOL_SIZE: z
+    .string()
+    .default('')
+    .refine((size) => Number(size) >= 16, 'must be at least 16; npm start sets it.'),
   VAPID_PUBLIC_KEY: z.string().min(80),
   VAPID_PRIVATE_KEY: z.string().min(40),
   VAPID_SUBJECT: z.string().refine(isRealContact, 'VAPID_SUBJECT must be mailto: or https: with a real domain.'),

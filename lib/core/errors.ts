@@ -3,6 +3,8 @@ export type ErrorCode =
   | 'not_found'
   | 'forbidden'
   | 'unauthenticated'
+  /** Not even JSON. */
+  | 'malformed'
   | 'invalid_input'
   | 'conflict'
   | 'unprocessable'

@@ -1,17 +1,99 @@
-import { stubPlaces, stubScene, stubTrees, STUB_NOW } from '@/lib/queries/office-stub'
+import { QueryTypes } from 'sequelize'
 import type { Clock } from '@/lib/core/clock'
+import { env } from '@/lib/core/env'
+import { loadFloor } from '@/lib/queries/floor'
+import { workerPulse } from '@/lib/queries/worker-pulse'
+import { queueBath, queueRoom, queueShift, queueTree } from '@/lib/queue/assemble'
 import type { Queue } from '@/lib/queue/contract'
+import { database } from '@/models'
 
-export function loadQueue(_options: { clock: Clock }): Promise<{ etag: string; queue: Queue }> {
-  const queue: Queue = {
-    now: STUB_NOW,
-    foundry: { name: 'Marram Lane Art Foundry', timeZone: 'Europe/London', isDemo: true, isDemoFeedOn: true },
-    shift: { isOpen: true, endsAt: STUB_NOW + 7_200_000, nextStartsAt: STUB_NOW + 57_600_000, nextEndsAt: STUB_NOW + 90_000_000 },
-    rooms: [],
-    baths: [],
-    places: stubPlaces.map((place) => ({ ...place, sensorId: 1, needsTypedReading: false })),
-    worker: { pulseAt: STUB_NOW, isAlive: true },
-    trees: stubTrees().filter((tree) => tree.state !== 'released' && tree.state !== 'scrapped'),
+export type LoadedQueue = { etag: string; queue: Queue }
+
+declare global {
+  var kilnwardQueueCache: { promise: Promise<LoadedQueue>; etag: string } | undefined
+}
+
+/** Changes with each start of the process: SQLite counts its versions for one open file only. */
+const bootId = Date.now().toString(36)
+
+/**
+ * The ETag of the queue: the database's own version and the minute.
+ *
+ * `data_version` on the handle that is used outside transactions moves whenever another handle or process has committed, and
+ * every write of ours is a transaction, which has a handle of its own.
+ */
+async function queueEtag(now: number): Promise<string> {
+  const [row] = await database.query<{ data_version: number }>('PRAGMA data_version', { type: QueryTypes.SELECT })
+  return `"${bootId}-${row?.data_version ?? 0}-${Math.floor(now / 60_000)}"`
+}
+
+/** The queue for the floor. Worked out once for each change or minute, however many tablets ask. */
+export async function loadQueue({ clock }: { clock: Clock }): Promise<LoadedQueue> {
+  const now = clock.now()
+  const etag = await queueEtag(now)
+  const cached = globalThis.kilnwardQueueCache
+  if (cached?.etag === etag) return cached.promise
+  const promise = makeQueue(now).then((queue) => ({ etag, queue }))
+  globalThis.kilnwardQueueCache = { etag, promise }
+  // A failure must not be remembered.
+  promise.catch(() => {
+    if (globalThis.kilnwardQueueCache?.promise === promise) globalThis.kilnwardQueueCache = undefined
+  })
+  return promise
+}
+
+async function makeQueue(now: number): Promise<Queue> {
+  const [{ foundry, context, trees }, baths, worker] = await Promise.all([
+    loadFloor({ now, trees: { on: 'floor' } }),
+    loadBaths(),
+    workerPulse(now),
+  ])
+  const usedSensors = new Set(foundry.places.map((place) => place.sensorId))
+  return {
+    now,
+    foundry: {
+      name: foundry.name,
+      timeZone: foundry.timeZone,
+      isDemo: foundry.isDemo,
+      isDemoFeedOn: foundry.isDemo && env().DEMO_FEED === 'on',
+    },
+    shift: queueShift(now, context.shifts, foundry.timeZone),
+    rooms: foundry.sensors
+      .filter((sensor) => usedSensors.has(sensor.id))
+      .flatMap((sensor) => {
+        const climate = context.climates.get(sensor.id)
+        return climate ? [queueRoom(climate, sensor, foundry.pressurePa)] : []
+      }),
+    baths: baths.map((bath) =>
+      queueBath(
+        { id: bath.id, name: bath.name, kind: bath.kind },
+        bath.stirredAt === null ? null : { at: bath.stirredAt, by: bath.stirredBy ?? '' },
+        {
+          now,
+          timeZone: foundry.timeZone,
+        },
+      ),
+    ),
+    places: foundry.places.map((place) => ({
+      id: place.id,
+      name: place.name,
+      sensorId: place.sensorId,
+      needsTypedReading: place.isTypedOnly,
+    })),
+    worker,
+    trees: trees.map((tree) => queueTree(tree, context.places)),
   }
-  return Promise.resolve({ etag: stubScene(), queue })
+}
+
+type BathRow = { id: string; name: string; kind: 'face' | 'backup'; stirredAt: number | null; stirredBy: string | null }
+
+function loadBaths(): Promise<BathRow[]> {
+  return database.query<BathRow>(
+    `SELECT b.id, b.name, b.kind, s.stirred_at AS stirredAt, m.name AS stirredBy
+       FROM baths b
+       LEFT JOIN bath_stirs s ON s.id = (SELECT id FROM bath_stirs WHERE bath_id = b.id ORDER BY stirred_at DESC LIMIT 1)
+       LEFT JOIN members m ON m.id = s.member_id
+      WHERE b.retired_at IS NULL ORDER BY b.kind DESC, b.name`,
+    { type: QueryTypes.SELECT },
+  )
 }

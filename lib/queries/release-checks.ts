@@ -1,18 +1,10 @@
-import { stubTrees } from '@/lib/queries/office-stub'
 import type { Clock } from '@/lib/core/clock'
+import { loadFloor } from '@/lib/queries/floor'
 import type { ReleaseCheck } from '@/lib/trees/detail-contract'
+import { releaseChecks } from '@/lib/trees/release-checks'
 
-export function loadReleaseChecks(treeIds: readonly string[], _options: { clock: Clock }): Promise<Record<string, ReleaseCheck[]>> {
-  const checks: Record<string, ReleaseCheck[]> = {}
-  for (const tree of stubTrees().filter((entry) => treeIds.includes(entry.id))) {
-    const isLookedOver = tree.state === 'ready for burnout' || tree.tag === 'T-112'
-    checks[tree.id] = [
-      { code: 'coats', isMet: true, text: `All ${tree.coats.length} coats are on.` },
-      { code: 'dry', isMet: true, text: 'Dried out, safe since Mon 19:10.' },
-      { code: 'look-over', isMet: isLookedOver, text: isLookedOver ? 'Looked over by Ines, Mon 20:10.' : 'Not looked over since the last coat.' },
-      { code: 'hold', isMet: true, text: 'No hold.' },
-      ...(tree.tag === 'T-112' ? [{ code: 'confirmation', isMet: false, text: 'Damp in store: confirm it dry by touch, weight or temperature.' } as const] : []),
-    ]
-  }
-  return Promise.resolve(checks)
+/** What stands between some trees and their release, by tree id. */
+export async function loadReleaseChecks(treeIds: readonly string[], { clock }: { clock: Clock }): Promise<Record<string, ReleaseCheck[]>> {
+  const { trees } = await loadFloor({ now: clock.now(), trees: { ids: treeIds } })
+  return Object.fromEntries(trees.map((tree) => [tree.facts.id, releaseChecks(tree, null)]))
 }

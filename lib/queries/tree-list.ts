@@ -1,8 +1,19 @@
-import { stubTrees } from '@/lib/queries/office-stub'
+import { millisecondsInDay } from 'date-fns/constants'
 import type { Clock } from '@/lib/core/clock'
-import type { TreeListRow } from '@/lib/trees/tree-list'
+import { loadFloor } from '@/lib/queries/floor'
+import { queueTree } from '@/lib/queue/assemble'
+import type { QueueTree } from '@/lib/queue/contract'
 
-/** Every tree on the floor, and those that left it within the last 60 days. */
-export function loadTreeList(_options: { clock: Clock }): Promise<TreeListRow[]> {
-  return Promise.resolve(stubTrees().map((tree) => ({ ...tree, recipeLabel: tree.coats.length > 8 ? 'Bronze 14, large' : 'Bronze 8' })))
+const LEFT_WITHIN_MS = 60 * millisecondsInDay
+
+/** Every tree on the floor, and those that left it within 60 days, by tag. */
+export async function loadTreeList({ clock }: { clock: Clock }): Promise<QueueTree[]> {
+  const now = clock.now()
+  const [floor, left] = await Promise.all([
+    loadFloor({ now, trees: { on: 'floor' } }),
+    loadFloor({ now, trees: { leftSince: now - LEFT_WITHIN_MS } }),
+  ])
+  return [...floor.trees, ...left.trees]
+    .map((tree) => queueTree(tree, floor.context.places))
+    .toSorted((a, b) => a.tag.localeCompare(b.tag, 'en', { numeric: true }))
 }

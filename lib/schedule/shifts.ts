@@ -43,10 +43,11 @@ export function startOfLocalDay(day: string, timeZone: string): number {
   return new TZDate(year, month - 1, date, 0, 0, 0, 0, timeZone).getTime()
 }
 
+const pad = (value: number) => String(value).padStart(2, '0')
+
 /** The local calendar day of an instant, 'YYYY-MM-DD'. */
 export function localDay(at: number, timeZone: string): string {
   const local = new TZDate(at, timeZone)
-  const pad = (value: number) => String(value).padStart(2, '0')
   return `${local.getFullYear()}-${pad(local.getMonth() + 1)}-${pad(local.getDate())}`
 }
 

@@ -1,25 +1,137 @@
+import { cookies } from 'next/headers'
+import { redirect } from 'next/navigation'
+import type { NextAuthOptions } from 'next-auth'
+import { decode } from 'next-auth/jwt'
+import credentialsProvider from 'next-auth/providers/credentials'
+import { RateLimiterMemory, type RateLimiterRes } from 'rate-limiter-flexible'
+import { z } from 'zod'
+import { endSession } from '@/lib/commands/end-session'
+import { SESSION_MS, signIn } from '@/lib/commands/sign-in'
+import { systemClock } from '@/lib/core/clock'
+import { env } from '@/lib/core/env'
 import { AppError } from '@/lib/core/errors'
-import { may, type Act, type Role } from '@/lib/members/roles'
-import { stubRole } from '@/lib/queries/office-stub'
+import { log } from '@/lib/core/log'
+import { ownPath } from '@/lib/members/own-path'
+import { may, rolesFor, type Act, type Role } from '@/lib/members/roles'
+import { sessionMember } from '@/lib/queries/session-member'
+import { processWide } from '@/lib/server/process-wide'
 
-// Stand-in until sign-in lands on this branch's base.
+/** The person behind a request, as the database knows them at this moment. */
 export type Member = { id: string; name: string; email: string; role: Role; sessionId: string }
 
-function stubMember(): Member {
-  const role = stubRole() as Role
-  return { id: '0b7f6a52-3a57-4d0e-9e55-6f0c6d0f0001', name: 'Ines Calloway', email: 'ines@example.org', role, sessionId: '' }
+const credentials = z.object({ email: z.string().min(1).max(254), password: z.string().min(1).max(1000) })
+
+// Behind the waits of each e-mail: nobody tries a thousand e-mails with one password, and hashing stays cheap to offer.
+const signInTries = processWide('sign-in tries', () => new RateLimiterMemory({ points: 60, duration: 60 }))
+
+/** next-auth's own name for it. It holds two ids, so it is never split over several cookies. */
+const SESSION_COOKIE = 'next-auth.session-token'
+
+const lastLogged = processWide('next-auth log', () => new Map<string, number>())
+const LOG_EVERY_MS = 60_000
+
+/** One line per kind of trouble and minute: every stale cookie of a polling tablet would write one otherwise. */
+function logSeldom(level: string, code: string, cause?: unknown): void {
+  const now = systemClock.now()
+  if (now - (lastLogged.get(code) ?? 0) < LOG_EVERY_MS) return
+  lastLogged.set(code, now)
+  log(`next-auth.${level}`, { code, cause: cause instanceof Error ? `${cause.name}: ${cause.message.slice(0, 200)}` : undefined })
 }
 
+export const authOptions: NextAuthOptions = {
+  session: { strategy: 'jwt', maxAge: SESSION_MS / 1000 },
+  pages: { signIn: '/sign-in', signOut: '/sign-in', error: '/sign-in' },
+  providers: [
+    credentialsProvider({
+      name: 'E-mail and password',
+      credentials: { email: { label: 'E-mail', type: 'email' }, password: { label: 'Password', type: 'password' } },
+      authorize: async (input, request) => {
+        const parsed = credentials.safeParse(input)
+        if (!parsed.success) return null
+        await signInTries.consume('all').catch((refusal: RateLimiterRes) => {
+          throw new Error(`WAIT:${Math.ceil(refusal.msBeforeNext / 1000)}`)
+        })
+        const result = await signIn(
+          { ...parsed.data, userAgent: String(request.headers?.['user-agent'] ?? '') },
+          { clock: systemClock },
+        ).catch((error: unknown) => {
+          log('sign-in.failed', { error: error instanceof Error ? error.stack : String(error) })
+          // next-auth hands the message to the browser word for word.
+          throw new Error('UNAVAILABLE')
+        })
+        if (result.outcome === 'wait') throw new Error(`WAIT:${result.waitSeconds}`)
+        if (result.outcome === 'refused') return null
+        log('sign-in.done', { memberId: result.member.id, sessionId: result.sessionId })
+        return { id: result.member.id, sessionId: result.sessionId }
+      },
+    }),
+  ],
+  callbacks: {
+    // Only ids travel in the cookie: name and role are read from the database each time.
+    jwt: ({ token, user }) => (user && 'sessionId' in user ? { sub: user.id, sid: user.sessionId } : token),
+    session: async ({ session, token }) => {
+      const member = await memberOf(token)
+      // next-auth answers a throw here with an empty session and takes the cookie away.
+      if (!member) throw new Error('This session has ended.')
+      return { expires: session.expires, user: { name: member.name, email: member.email, role: member.role } }
+    },
+    redirect: ({ url, baseUrl }) => `${baseUrl}${ownPath(url, baseUrl)}`,
+  },
+  events: {
+    signOut: async ({ token }) => {
+      const sessionId = token?.['sid']
+      if (typeof sessionId === 'string') await endSession(sessionId, { clock: systemClock })
+    },
+  },
+  logger: {
+    error: (code, metadata) => logSeldom('error', code, metadata instanceof Error ? metadata : metadata.error),
+    warn: (code) => logSeldom('warn', code),
+    debug: () => {},
+  },
+}
+
+function memberOf(token: Record<string, unknown> | null): Promise<Member | null> {
+  const sessionId = token?.['sid']
+  return typeof sessionId === 'string' ? sessionMember(sessionId, { clock: systemClock }) : Promise.resolve(null)
+}
+
+/**
+ * The member who sent this request; null when nobody is signed in.
+ *
+ * Reads the cookie itself instead of asking next-auth for a session: that would turn a failing database into 'signed out'.
+ */
+export async function currentMember(): Promise<Member | null> {
+  // First, so that the build sees a page that needs a request before it asks for settings it does not have.
+  const jar = await cookies()
+  const { NEXTAUTH_URL: address, NEXTAUTH_SECRET: secret } = env()
+  const cookie = jar.get(address.startsWith('https:') ? `__Secure-${SESSION_COOKIE}` : SESSION_COOKIE)
+  // A stale or meddled cookie is the same as none.
+  return memberOf(await decode({ token: cookie?.value, secret }).catch(() => null))
+}
+
+/**
+ * The member who sent this request, when their role may do this act. The first call of every handler and server action:
+ * no layout or proxy guards them.
+ *
+ * @throws {AppError} unauthenticated or forbidden.
+ */
 export async function requireMember(act: Act): Promise<Member> {
-  const member = stubMember()
-  if (!may(member.role, act)) throw new AppError('forbidden', 'This needs the role supervisor or one above it.')
+  const member = await currentMember()
+  if (!member) throw new AppError('unauthenticated', 'Sign in first.')
+  if (!may(member.role, act)) {
+    const [lowest] = rolesFor(act)
+    throw new AppError('forbidden', `This needs the role ${lowest}${lowest === 'owner' ? '' : ' or one above it'}.`)
+  }
   return member
 }
 
-export async function requireMemberPage(_act: Act, _path: string): Promise<Member> {
-  return stubMember()
-}
-
-export async function currentMember(): Promise<Member | null> {
-  return stubMember()
+/**
+ * The same for a page: sends a stranger to the sign-in page and back to `path` after it,
+ * and a member without the right to the floor, which everybody may see.
+ */
+export async function requireMemberPage(act: Act, path: string): Promise<Member> {
+  const member = await currentMember()
+  if (!member) redirect(`/sign-in?callbackUrl=${encodeURIComponent(path)}`)
+  if (!may(member.role, act)) redirect('/floor')
+  return member
 }

@@ -1,0 +1,34 @@
+import type { CoatCall } from '@/lib/drying/types'
+import { humidityBetween } from '@/lib/room/climate'
+import type { CoatFacts, TreeFacts } from '@/lib/trees/facts'
+import type { FloorContext } from '@/lib/trees/spans'
+import { Coat } from '@/models'
+
+/** Writes down how a coat dried, at the moment it is dipped over or the tree is released. */
+export async function closeCoat(
+  coat: CoatFacts,
+  tree: TreeFacts,
+  context: FloorContext,
+  { at, call }: { at: number; call: CoatCall },
+): Promise<void> {
+  const place = context.places.get(tree.stays.at(-1)?.placeId ?? '')
+  const climate = place && context.climates.get(place.sensorId)
+  const humidity = climate ? humidityBetween(climate, coat.dippedAt, at) : null
+  await Coat.update(
+    {
+      coveredAt: at,
+      meanRelHumidityPct: humidity?.meanPct ?? null,
+      worstRelHumidityPct: humidity?.worstPct ?? null,
+      moistureRatioAtRedip: call.isUnknown && call.dose.likely === 0 ? null : call.moistureRatio,
+    },
+    { where: { id: coat.id } },
+  )
+}
+
+/** Undoes it: the coat is the newest again and its clock resumes. */
+export async function reopenCoat(coatId: string): Promise<void> {
+  await Coat.update(
+    { coveredAt: null, meanRelHumidityPct: null, worstRelHumidityPct: null, moistureRatioAtRedip: null },
+    { where: { id: coatId } },
+  )
+}

@@ -1,0 +1,228 @@
+import { millisecondsInMinute } from 'date-fns/constants'
+import { dipRunAnswer, type DipRefusal, type DipRun, type DipRunAnswer } from '@/lib/coats/dip-contract'
+import { addTreeEvent } from '@/lib/commands/tree-event'
+import { closeCoat } from '@/lib/commands/close-coat'
+import { recordReadings } from '@/lib/commands/record-readings'
+import { runOperation } from '@/lib/commands/run-operation'
+import type { Clock } from '@/lib/core/clock'
+import { AppError } from '@/lib/core/errors'
+import { newId } from '@/lib/core/ids'
+import { chillFlag } from '@/lib/drying/flags'
+import { needReferenceHours } from '@/lib/drying/need'
+import { wetBulbDepressionK } from '@/lib/drying/room-factor'
+import type { RoomReading } from '@/lib/drying/types'
+import type { Actor } from '@/lib/members/actor'
+import { deriveFloor } from '@/lib/queries/floor'
+import { loadFacts } from '@/lib/queries/load-facts'
+import { loadFoundry } from '@/lib/queries/load-foundry'
+import { callOf, recipeCoatOf } from '@/lib/trees/assess'
+import { clockStart, type CoatFacts, type TreeFacts } from '@/lib/trees/facts'
+import { Bath, Coat, Member, TreePlace } from '@/models'
+import type { FloorContext } from '@/lib/trees/spans'
+
+/** A tablet's clock may run a little ahead of ours. */
+const FUTURE_LIMIT_MS = 2 * millisecondsInMinute
+/** A reading this close to the dip tells the air at the dip. */
+const AIR_AT_DIP_MS = 30 * millisecondsInMinute
+
+/**
+ * Logs a run: every tree gets its coat, or none does. What was made is recorded with its deviations, never refused for them.
+ *
+ * @throws {AppError} not_found for an unknown tree, bath or place; conflict with `trees` when a coat is already on, one is
+ *   skipped or the tree has left the floor; unprocessable for a time ahead of the clock or before the coat below.
+ */
+export async function logDips(run: DipRun, { member, clock }: { member: Actor; clock: Clock }) {
+  const answer = await runOperation({ operationId: run.operationId, kind: 'dips', memberId: member.id, body: run, clock }, async () => {
+    const coats = await putCoatsOn(run, member, clock.now())
+    return { status: 201, response: { operationId: run.operationId, coats } satisfies DipRunAnswer }
+  })
+  return answer.replayed ? { ...answer, response: await markWithdrawn(answer.response) } : answer
+}
+
+/** A replay tells which of its coats were taken back since. */
+async function markWithdrawn(response: Record<string, unknown>): Promise<Record<string, unknown>> {
+  const coats = await Coat.findAll({ where: { operationId: String(response['operationId']) } })
+  const withdrawn = new Set(coats.filter((coat) => coat.withdrawnAt !== null).map((coat) => coat.id))
+  const answered = dipRunAnswer.parse(response)
+  return { ...answered, coats: answered.coats.map((coat) => (withdrawn.has(coat.coatId) ? { ...coat, withdrawn: true } : coat)) }
+}
+
+async function putCoatsOn(run: DipRun, member: Actor, now: number): Promise<DipRunAnswer['coats']> {
+  const bath = await Bath.findByPk(run.bathId)
+  if (!bath) throw new AppError('not_found', 'There is no such bath.')
+  if (run.dippedAt > now + FUTURE_LIMIT_MS) {
+    throw new AppError('unprocessable', 'The dip lies in the future: check the clock of this tablet.')
+  }
+  const treeIds = run.trees.map((tree) => tree.treeId)
+  if (new Set(treeIds).size !== treeIds.length) throw new AppError('unprocessable', 'A tree can be in a run only once.')
+
+  const [foundry, facts] = await Promise.all([loadFoundry(), loadFacts({ ids: treeIds })])
+  const factsOf = new Map(facts.map((tree) => [tree.id, tree]))
+  const placeOf = new Map(foundry.places.map((place) => [place.id, place]))
+  const chosen = run.trees.map((tree) => {
+    const treeFacts = factsOf.get(tree.treeId)
+    if (!treeFacts) throw new AppError('not_found', 'There is no such tree.', { treeId: tree.treeId })
+    const place = placeOf.get(tree.placeId)
+    if (!place) throw new AppError('not_found', 'There is no such place.', { placeId: tree.placeId })
+    return { ...tree, facts: treeFacts, place }
+  })
+  await refuseImpossible(chosen, run)
+
+  if (run.room) {
+    const sensorIds = new Set(chosen.filter(({ place }) => place.isTypedOnly).map(({ place }) => place.sensorId))
+    for (const sensorId of sensorIds) {
+      await recordReadings(
+        { sensorId, source: 'typed', enteredBy: member.id, rows: [{ ...run.room, measuredAt: Math.min(run.dippedAt, now) }] },
+        { clock: { now: () => now } },
+      )
+    }
+  }
+
+  const { context } = await deriveFloor(foundry, facts, now, [run.dippedAt])
+  const answers: DipRunAnswer['coats'] = []
+  for (const { facts: tree, place, coatNumber, placeId, reason } of chosen) {
+    const below = tree.coats.at(-1) ?? null
+    const belowCall = below ? callOf(tree, below, context, run.dippedAt) : null
+    const belowTarget = below ? (recipeCoatOf(tree, below.number)?.moistureTarget ?? 0.1) : 1
+    const isBelowDry = belowCall === null || belowCall.moistureRatio <= belowTarget || tree.look?.verdict === 'looks dry'
+    const moistureRatioBelow = isBelowDry ? 0 : belowCall.moistureRatio
+    const planned = recipeCoatOf(tree, coatNumber)
+    const asPlanned = planned ?? tree.recipe.coats.findLast((coat) => coat.stucco === run.stucco) ?? tree.recipe.coats.at(-1)
+    if (!asPlanned) throw new AppError('unprocessable', `The recipe of ${tree.tag} has no coat.`)
+    const air = airAt(context, place.sensorId, run.dippedAt)
+    const deviations = [
+      ...(tree.hold ? ['held'] : []),
+      ...(tree.intakePassedAt === null ? ['intake open'] : []),
+      ...(belowCall?.isUnknown ? ['unknown'] : !isBelowDry && belowCall?.guardReachedAt === null ? ['still wet'] : []),
+      ...(planned === null ? ['not in the recipe'] : []),
+      ...(planned && planned.bathId !== run.bathId ? ['other bath'] : []),
+      ...(planned && planned.stucco !== run.stucco ? ['other stucco'] : []),
+      ...(asPlanned.kind === 'face' && air && isTooDryForFace(air, context, placeId) ? ['too dry for face'] : []),
+    ]
+    if (below && belowCall) await closeCoat(below, tree, context, { at: run.dippedAt, call: belowCall })
+    const coat: CoatFacts = {
+      id: newId(now),
+      number: coatNumber,
+      kind: asPlanned.kind,
+      stucco: run.stucco,
+      way: run.way,
+      placeId,
+      dippedAt: run.dippedAt,
+      drainSeconds: run.drainSeconds,
+      roughMinutes: run.roughTime ?? 0,
+      needReferenceHours: needReferenceHours({
+        recipeReferenceHours: asPlanned.needReferenceHours,
+        recipeStucco: asPlanned.stucco,
+        usedStucco: run.stucco,
+        spacing: tree.spacing,
+        recessClass: tree.recessClass,
+        moistureRatioBelow,
+        treeTheta: 0,
+      }),
+      airTempC: air?.airTempC ?? null,
+    }
+    const hasMoved = tree.stays.at(-1)?.placeId !== placeId
+    if (hasMoved) await TreePlace.create({ id: newId(now), treeId: tree.id, placeId, since: run.dippedAt, memberId: member.id })
+    const after: TreeFacts = {
+      ...tree,
+      coats: [...tree.coats, coat],
+      stays: hasMoved ? [...tree.stays, { placeId, since: run.dippedAt }] : tree.stays,
+      look: null,
+    }
+    const call = callOf(after, coat, context, Math.max(now, clockStart(coat)))
+    const { needReferenceHours: need, ...stored } = coat
+    await Coat.create({
+      ...stored,
+      treeId: tree.id,
+      operationId: run.operationId,
+      bathId: run.bathId,
+      loggedBy: member.id,
+      loggedAt: now,
+      deviations,
+      reason: reason ?? null,
+      relHumidityPct: air?.relHumidityPct ?? null,
+      needReferenceHours: need,
+      moistureRatioBelow,
+      forecastP10At: call.earliestAt,
+      forecastP50At: call.likelyAt,
+      forecastP90At: call.safeAt,
+    })
+    await addTreeEvent(tree.id, 'coat on', {
+      memberId: member.id,
+      at: now,
+      text: `Coat ${coatNumber} dipped${deviations.length > 0 ? `: ${deviations.join(', ')}${reason ? ` (${reason})` : ''}` : ''}.`,
+      coatId: coat.id,
+      dippedAt: run.dippedAt,
+    })
+    answers.push({
+      coatId: coat.id,
+      treeId: tree.id,
+      tag: tree.tag,
+      number: coatNumber,
+      likelyAt: call.likelyAt,
+      safeAt: call.safeAt,
+      deviations,
+    })
+  }
+  return answers
+}
+
+type Chosen = { facts: TreeFacts; coatNumber: number }
+
+/** What cannot have happened, or has been told already by somebody else. */
+async function refuseImpossible(chosen: readonly Chosen[], run: DipRun): Promise<void> {
+  const refusals: DipRefusal[] = []
+  for (const { facts, coatNumber } of chosen) {
+    const base = { treeId: facts.id, tag: facts.tag, coatNumber, by: null, at: null }
+    if (facts.releasedAt !== null || facts.scrappedAt !== null) {
+      const word = facts.releasedAt === null ? 'scrapped' : 'released'
+      refusals.push({ ...base, reason: 'left the floor', detail: `${facts.tag} was ${word} and takes no more coats.` })
+    } else if (coatNumber <= facts.coats.length) {
+      const standing = await Coat.findOne({ where: { treeId: facts.id, number: coatNumber, withdrawnAt: null } })
+      const author = standing && (await Member.findByPk(standing.loggedBy))
+      refusals.push({
+        ...base,
+        reason: 'coat already on',
+        by: author?.name ?? null,
+        at: standing?.dippedAt ?? null,
+        detail: `Coat ${coatNumber} of ${facts.tag} is already on${author ? `: logged by ${author.name}` : ''}.`,
+      })
+    } else if (coatNumber > facts.coats.length + 1) {
+      refusals.push({
+        ...base,
+        reason: 'coat skipped',
+        detail: `${facts.tag} has ${facts.coats.length} on: coat ${coatNumber} would skip one.`,
+      })
+    }
+  }
+  if (refusals.length > 0) {
+    throw new AppError('conflict', 'Nothing was logged: some trees of this run do not take this coat.', { trees: refusals })
+  }
+  const early = chosen.filter(({ facts }) => run.dippedAt < (facts.coats.at(-1)?.dippedAt ?? 0))
+  if (early.length > 0) {
+    throw new AppError('unprocessable', `The dip of ${early.map(({ facts }) => facts.tag).join(', ')} would lie before the coat below.`)
+  }
+}
+
+/** The reading nearest to an instant in one room, within half an hour; a typed reading counts for as long as it holds. */
+function airAt(context: FloorContext, sensorId: number, at: number): RoomReading | null {
+  const climate = context.climates.get(sensorId)
+  const nearest = climate?.exact.reduce<RoomReading | null>(
+    (best, reading) => (best === null || Math.abs(reading.measuredAt - at) < Math.abs(best.measuredAt - at) ? reading : best),
+    null,
+  )
+  if (!nearest) return null
+  const limit = nearest.source === 'typed' ? 12 * 60 * millisecondsInMinute : AIR_AT_DIP_MS
+  return Math.abs(nearest.measuredAt - at) <= limit ? nearest : null
+}
+
+function isTooDryForFace(air: RoomReading, context: FloorContext, placeId: string): boolean {
+  const span = context.placeSpans.get(placeId)?.find((candidate) => candidate.from <= air.measuredAt && candidate.to > air.measuredAt)
+  const flag = chillFlag({
+    coatNumber: 1,
+    wetBulbDepressionK: wetBulbDepressionK(air, context.pressurePa),
+    roomFactor: air.roomFactor,
+    placeFactor: span?.placeFactor ?? 1,
+  })
+  return flag !== null
+}

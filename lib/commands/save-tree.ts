@@ -1,0 +1,108 @@
+import { openTree } from '@/lib/commands/open-tree'
+import { addTreeEvent } from '@/lib/commands/tree-event'
+import type { Clock } from '@/lib/core/clock'
+import { AppError } from '@/lib/core/errors'
+import { newId } from '@/lib/core/ids'
+import type { Actor } from '@/lib/members/actor'
+import type { TreeInput } from '@/lib/trees/tree-input'
+import { Coat, inTransaction, Piece, Place, RecipeVersion, Section, Tree, TreePiece, TreePlace, Work } from '@/models'
+
+type By = { member: Actor; clock: Clock }
+
+/** A refusal that belongs beside one field of the form. */
+function refuseField(field: string, reason: string): never {
+  throw new AppError('conflict', reason, { fields: [{ path: field, message: reason }] })
+}
+
+/**
+ * Adds a tree with its pieces, hung at its place.
+ *
+ * @throws {AppError} conflict with `fields` when the tag was used before or an edition is taken; not_found for recipe or place.
+ */
+export function createTree(input: TreeInput, { member, clock }: By): Promise<{ treeId: string; tag: string }> {
+  return inTransaction(async () => {
+    const now = clock.now()
+    if (await Tree.findOne({ where: { tag: input.tag } })) {
+      refuseField('tag', `${input.tag} was used before: a tag is for one tree, for ever.`)
+    }
+    await requireRecipeAndPlace(input)
+    const { pieces, placeId, ...columns } = input
+    const treeId = newId(now)
+    await Tree.create({ ...columns, id: treeId, createdBy: member.id, createdAt: now, updatedAt: now })
+    await TreePlace.create({ id: newId(now), treeId, placeId, since: now, memberId: member.id })
+    for (const [index, piece] of pieces.entries()) await TreePiece.create({ treeId, pieceId: await addPiece(piece, index, now) })
+    await addTreeEvent(treeId, 'tree added', { memberId: member.id, at: now, text: 'Tree added.' })
+    return { treeId, tag: input.tag }
+  })
+}
+
+/**
+ * Changes a tree. With a coat on, its recipe, its recesses, its spacing and its pieces stand: the coats were worked out on them.
+ *
+ * @throws {AppError} not_found; conflict with `fields` for what may no longer change.
+ */
+export function editTree(treeId: string, input: TreeInput, { member, clock }: By): Promise<void> {
+  return inTransaction(async () => {
+    const now = clock.now()
+    const tree = await openTree(treeId)
+    await requireRecipeAndPlace(input)
+    if (input.tag !== tree.tag) refuseField('tag', `This tree is ${tree.tag} for ever.`)
+    const coatsOn = await Coat.count({ where: { treeId, withdrawnAt: null } })
+    if (coatsOn > 0) {
+      for (const field of ['recipeVersionId', 'recessClass', 'spacing'] as const) {
+        if (input[field] !== tree[field]) refuseField(field, 'This stands from the first coat on: the coats were worked out on it.')
+      }
+    }
+    const { pieces, placeId, ...columns } = input
+    const before = Object.fromEntries(Object.keys(columns).map((key) => [key, tree.get(key)]))
+    await tree.update({ ...columns, updatedAt: now })
+    const current = await TreePlace.findOne({
+      where: { treeId, withdrawnAt: null },
+      order: [
+        ['since', 'DESC'],
+        ['id', 'DESC'],
+      ],
+    })
+    if (current?.placeId !== placeId) await TreePlace.create({ id: newId(now), treeId, placeId, since: now, memberId: member.id })
+    if (coatsOn === 0) await replacePieces(treeId, pieces, now)
+    await addTreeEvent(treeId, 'tree edited', { memberId: member.id, at: now, text: 'Tree edited.', before, after: columns })
+  })
+}
+
+async function requireRecipeAndPlace(input: TreeInput): Promise<void> {
+  if (!(await RecipeVersion.findByPk(input.recipeVersionId))) refuseField('recipeVersionId', 'There is no such recipe.')
+  const place = await Place.findByPk(input.placeId)
+  if (!place || place.retiredAt !== null) refuseField('placeId', 'There is no such place.')
+}
+
+async function replacePieces(treeId: string, pieces: TreeInput['pieces'], now: number): Promise<void> {
+  const before = await TreePiece.findAll({ where: { treeId } })
+  await TreePiece.destroy({ where: { treeId } })
+  for (const { pieceId } of before) {
+    const recasts = await Piece.count({ where: { recastOf: pieceId } })
+    if (recasts === 0) await Piece.destroy({ where: { id: pieceId } })
+  }
+  for (const [index, piece] of pieces.entries()) await TreePiece.create({ treeId, pieceId: await addPiece(piece, index, now) })
+}
+
+/** One casting of a section; the work and the section are made when they are new. */
+async function addPiece(input: TreeInput['pieces'][number], index: number, now: number): Promise<string> {
+  const [work] = await Work.findOrCreate({
+    where: { title: input.workTitle },
+    defaults: { id: newId(now), title: input.workTitle, createdAt: now },
+  })
+  const [section] = await Section.findOrCreate({
+    where: { workId: work.id, name: input.sectionName },
+    defaults: { id: newId(now), workId: work.id, name: input.sectionName },
+  })
+  const casts = await Piece.findAll({ where: { sectionId: section.id, editionNumber: input.editionNumber }, order: [['createdAt', 'ASC']] })
+  const title = [input.workTitle, input.sectionName].filter(Boolean).join(', ')
+  const field = `pieces.${index}.editionNumber`
+  if (!input.isRecast && casts.length > 0) {
+    refuseField(field, `Edition ${input.editionNumber} of ${title} exists already. Tick 'recast' if this replaces it.`)
+  }
+  if (input.isRecast && casts.length === 0) refuseField(field, `There is no edition ${input.editionNumber} of ${title} to recast.`)
+  const id = newId(now)
+  await Piece.create({ id, sectionId: section.id, editionNumber: input.editionNumber, recastOf: casts.at(-1)?.id ?? null, createdAt: now })
+  return id
+}

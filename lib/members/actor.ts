@@ -1,0 +1,4 @@
+import type { Role } from '@/lib/members/roles'
+
+/** Who does something. Commands check what the act's route cannot know; the right to try was checked at the door. */
+export type Actor = { id: string; name: string; role: Role }

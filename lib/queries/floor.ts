@@ -1,0 +1,77 @@
+import { millisecondsInDay } from 'date-fns/constants'
+import { hourStartOf } from '@/lib/drying/dose-hours'
+import { loadClimateRows } from '@/lib/queries/load-climate'
+import { loadFacts, type TreeSelection } from '@/lib/queries/load-facts'
+import { loadFoundry, type FoundryFacts } from '@/lib/queries/load-foundry'
+import { buildClimate, type RoomClimate } from '@/lib/room/climate'
+import { shiftsFrom } from '@/lib/schedule/shifts'
+import { callOf, LONGEST_WINDOW_MS } from '@/lib/trees/assess'
+import { deriveTree, type DerivedTree } from '@/lib/trees/derive'
+import { clockStart, type TreeFacts } from '@/lib/trees/facts'
+import { floorContext, type FloorContext } from '@/lib/trees/spans'
+
+export type Floor = { foundry: FoundryFacts; context: FloorContext; trees: DerivedTree[] }
+
+/** The forecast looks back a fortnight, so the hours of that time are always at hand. */
+const FORECAST_HISTORY_MS = 14 * millisecondsInDay
+
+/**
+ * The shell room at one moment: the foundry, its air, and the chosen trees derived.
+ *
+ * Costs by the trees on the floor and the hours they have hung, never by the readings or the history behind them.
+ */
+export async function loadFloor({ now, trees: selection }: { now: number; trees: TreeSelection }): Promise<Floor> {
+  const [foundry, facts] = await Promise.all([loadFoundry(), loadFacts(selection)])
+  return deriveFloor(foundry, facts, now)
+}
+
+/** Derives trees whose facts are at hand; commands use it for facts they have just read inside their transaction. */
+export async function deriveFloor(
+  foundry: FoundryFacts,
+  facts: readonly TreeFacts[],
+  now: number,
+  extraInstants: readonly number[] = [],
+): Promise<Floor> {
+  const starts = facts.flatMap((tree) => tree.coats.slice(-1).map(clockStart))
+  const oldest = Math.min(now - FORECAST_HISTORY_MS, ...starts, ...extraInstants)
+  const from = Math.max(oldest, now - LONGEST_WINDOW_MS)
+  const sensorIds = [...new Set([...foundry.places.map((place) => place.sensorId), ...foundry.sensors.map((sensor) => sensor.id)])]
+  // An hour before each instant too: the damp flag and the room at the dip look back from it.
+  const needed = new Set(
+    [...starts, ...extraInstants, now]
+      .flatMap((at) => [hourStartOf(at), hourStartOf(at) - 3_600_000])
+      .filter((at) => at >= from - 2 * 3_600_000),
+  )
+
+  const build = async (): Promise<FloorContext> => {
+    const climates = await Promise.all(
+      sensorIds.map(async (sensorId): Promise<RoomClimate> =>
+        buildClimate(await loadClimateRows(sensorId, from, now, [...needed]), { now, timeZone: foundry.timeZone }),
+      ),
+    )
+    return floorContext({
+      now,
+      timeZone: foundry.timeZone,
+      pressurePa: foundry.pressurePa,
+      climates,
+      places: foundry.places,
+      shifts: shiftsFrom(now, foundry.shiftHours, foundry.timeZone),
+      from: hourStartOf(from),
+    })
+  }
+
+  // Twice: the hourly table finds the hours in which coats came dry, their exact readings then give the minute.
+  const coarse = await build()
+  for (const tree of facts) {
+    const newest = tree.coats.at(-1)
+    if (!newest || tree.releasedAt !== null || tree.scrappedAt !== null) continue
+    const call = callOf(tree, newest, coarse)
+    for (const at of [call.earliestAt, call.likelyAt, call.safeAt]) {
+      if (at === null || at > now) continue
+      needed.add(hourStartOf(at))
+      needed.add(hourStartOf(at) - 3_600_000)
+    }
+  }
+  const context = await build()
+  return { foundry, context, trees: facts.map((tree) => deriveTree(tree, context, foundry.shiftHours)) }
+}

@@ -1,0 +1,139 @@
+import { QueryTypes } from 'sequelize'
+import type { RecessClass, Spacing } from '@/lib/coats/vocabulary'
+import { treeTitle, type PieceName } from '@/lib/trees/title'
+import type { CoatFacts, RecipeCoatFacts, TreeFacts } from '@/lib/trees/facts'
+import { database } from '@/models'
+
+/** Which trees: those on the floor, some by id, or those that left it lately. */
+export type TreeSelection = { on: 'floor' } | { ids: readonly string[] } | { leftSince: number }
+
+type TreeRow = {
+  id: string
+  tag: string
+  recessClass: RecessClass
+  spacing: Spacing
+  pourDate: string | null
+  intakePassedAt: number | null
+  releasedAt: number | null
+  scrappedAt: number | null
+  versionId: string
+  recipeName: string
+  version: number
+  calibratedAt: number | null
+}
+type OfTree<Row> = Row & { treeId: string }
+
+const select = <Row extends object>(sql: string, replacements: Record<string, unknown> = {}) =>
+  database.query<Row>(sql, { type: QueryTypes.SELECT, replacements })
+
+function condition(selection: TreeSelection): { where: string; replacements: Record<string, unknown> } {
+  if ('on' in selection) return { where: 't.released_at IS NULL AND t.scrapped_at IS NULL', replacements: {} }
+  if ('ids' in selection) {
+    return { where: 't.id IN (SELECT value FROM json_each(:ids))', replacements: { ids: JSON.stringify(selection.ids) } }
+  }
+  return { where: 't.released_at >= :since OR t.scrapped_at >= :since', replacements: { since: selection.leftSince } }
+}
+
+/** Stored facts of the chosen trees, by tag; a handful of queries, however many trees there are. */
+export async function loadFacts(selection: TreeSelection): Promise<TreeFacts[]> {
+  const { where, replacements } = condition(selection)
+  const trees = await select<TreeRow>(
+    `SELECT t.id, t.tag, t.recess_class AS recessClass, t.spacing, t.pour_date AS pourDate, t.intake_passed_at AS intakePassedAt,
+            t.released_at AS releasedAt, t.scrapped_at AS scrappedAt, v.id AS versionId, v.version, v.calibrated_at AS calibratedAt, r.name AS recipeName
+       FROM trees t JOIN recipe_versions v ON v.id = t.recipe_version_id JOIN recipes r ON r.id = v.recipe_id
+      WHERE ${where} ORDER BY t.tag`,
+    replacements,
+  )
+  if (trees.length === 0) return []
+  const ids = JSON.stringify(trees.map((tree) => tree.id))
+  const [coats, stays, holds, looks, lookOvers, pieces, recipeCoats] = await Promise.all([
+    select<OfTree<CoatFacts>>(
+      `SELECT tree_id AS treeId, id, number, kind, stucco, way, place_id AS placeId, dipped_at AS dippedAt, drain_seconds AS drainSeconds,
+              rough_minutes AS roughMinutes, need_reference_hours AS needReferenceHours, air_temp_c AS airTempC
+         FROM coats WHERE withdrawn_at IS NULL AND tree_id IN (SELECT value FROM json_each(:ids)) ORDER BY tree_id, number`,
+      { ids },
+    ),
+    select<OfTree<{ placeId: string; since: number }>>(
+      `SELECT tree_id AS treeId, place_id AS placeId, since FROM tree_places
+        WHERE withdrawn_at IS NULL AND tree_id IN (SELECT value FROM json_each(:ids)) ORDER BY tree_id, since, id`,
+      { ids },
+    ),
+    select<OfTree<{ id: string; reason: string; by: string; at: number }>>(
+      `SELECT h.tree_id AS treeId, h.id, h.reason, m.name AS "by", h.held_at AS at FROM holds h JOIN members m ON m.id = h.held_by
+        WHERE h.lifted_at IS NULL AND h.tree_id IN (SELECT value FROM json_each(:ids))`,
+      { ids },
+    ),
+    select<{ coatId: string; verdict: 'looks dry' | 'not yet'; by: string; at: number }>(
+      `SELECT l.coat_id AS coatId, l.verdict, m.name AS "by", l.looked_at AS at FROM coats c
+         JOIN coat_looks l ON l.coat_id = c.id JOIN members m ON m.id = l.member_id
+        WHERE c.withdrawn_at IS NULL AND c.covered_at IS NULL AND c.tree_id IN (SELECT value FROM json_each(:ids)) ORDER BY l.looked_at, l.id`,
+      { ids },
+    ),
+    select<{ coatId: string; at: number }>(
+      `SELECT coat_id AS coatId, max(looked_over_at) AS at FROM look_overs
+        WHERE tree_id IN (SELECT value FROM json_each(:ids)) GROUP BY coat_id`,
+      { ids },
+    ),
+    select<OfTree<PieceName>>(
+      `SELECT tp.tree_id AS treeId, w.title AS workTitle, s.name AS sectionName, p.edition_number AS editionNumber
+         FROM tree_pieces tp JOIN pieces p ON p.id = tp.piece_id JOIN sections s ON s.id = p.section_id JOIN works w ON w.id = s.work_id
+        WHERE tp.tree_id IN (SELECT value FROM json_each(:ids)) ORDER BY w.title, s.name, p.edition_number`,
+      { ids },
+    ),
+    select<RecipeCoatRow>(
+      `SELECT c.recipe_version_id AS versionId, c.number, c.kind, c.bath_id AS bathId, b.name AS bathName, c.stucco,
+              c.need_reference_hours AS needReferenceHours, c.moisture_target AS moistureTarget, c.guard, c.drain_seconds AS drainSeconds,
+              c.longest_wait_hours AS longestWaitHours, c.is_prewet AS isPrewet, c.read_aloud AS readAloud
+         FROM recipe_coats c JOIN baths b ON b.id = c.bath_id
+        WHERE c.recipe_version_id IN (SELECT value FROM json_each(:versions)) ORDER BY c.recipe_version_id, c.number`,
+      { versions: JSON.stringify([...new Set(trees.map((tree) => tree.versionId))]) },
+    ),
+  ])
+  const coatsOf = groupBy(coats, (row) => row.treeId)
+  const staysOf = groupBy(stays, (row) => row.treeId)
+  const piecesOf = groupBy(pieces, (row) => row.treeId)
+  const recipeOf = groupBy(recipeCoats, (row) => row.versionId)
+  const holdOf = new Map(holds.map(({ treeId, ...hold }) => [treeId, hold]))
+  const lookOf = new Map(looks.map(({ coatId, ...look }) => [coatId, look]))
+  const lookedOverOf = new Map(lookOvers.map((row) => [row.coatId, row.at]))
+  return trees.map((tree): TreeFacts => {
+    const own = coatsOf.get(tree.id) ?? []
+    const newestId = own.at(-1)?.id ?? ''
+    return {
+      id: tree.id,
+      tag: tree.tag,
+      title: treeTitle(piecesOf.get(tree.id) ?? []),
+      recessClass: tree.recessClass,
+      spacing: tree.spacing,
+      pourDate: tree.pourDate,
+      intakePassedAt: tree.intakePassedAt,
+      releasedAt: tree.releasedAt,
+      scrappedAt: tree.scrappedAt,
+      recipe: {
+        versionId: tree.versionId,
+        name: tree.recipeName,
+        version: tree.version,
+        isCalibrated: tree.calibratedAt !== null,
+        coats: (recipeOf.get(tree.versionId) ?? []).map((row) => ({ ...row, isPrewet: row.isPrewet === 1 })),
+      },
+      coats: own,
+      stays: staysOf.get(tree.id) ?? [],
+      hold: holdOf.get(tree.id) ?? null,
+      look: lookOf.get(newestId) ?? null,
+      lookedOverAt: lookedOverOf.get(newestId) ?? null,
+    }
+  })
+}
+
+// Map.groupBy came after Node 20.
+function groupBy<Row>(rows: readonly Row[], keyOf: (row: Row) => string): Map<string, Row[]> {
+  const groups = new Map<string, Row[]>()
+  for (const row of rows) {
+    const group = groups.get(keyOf(row))
+    if (group) group.push(row)
+    else groups.set(keyOf(row), [row])
+  }
+  return groups
+}
+
+type RecipeCoatRow = Omit<RecipeCoatFacts, 'isPrewet'> & { versionId: string; isPrewet: number }

@@ -1,0 +1,48 @@
+import { stationPressurePa } from '@/lib/drying/air'
+import type { FanHours } from '@/lib/drying/types'
+import type { ShiftHours as Hours } from '@/lib/schedule/shifts'
+import type { PlaceFacts } from '@/lib/trees/facts'
+import { FanHours as FanHoursRow, Foundry, Place, Sensor, ShiftHours } from '@/models'
+
+/** The foundry's settings and places: a few dozen rows that change once a month. */
+export type FoundryFacts = {
+  name: string
+  timeZone: string
+  pressurePa: number
+  isDemo: boolean
+  shiftHours: Hours[]
+  places: PlaceFacts[]
+  sensors: { id: number; name: string; kind: 'logger' | 'wall hygrometer' }[]
+}
+
+/** @throws {Error} when the database holds no foundry yet. */
+export async function loadFoundry(): Promise<FoundryFacts> {
+  const [foundry, shiftHours, places, fanHours, sensors] = await Promise.all([
+    Foundry.findByPk(1),
+    ShiftHours.findAll({ order: [['weekday', 'ASC']] }),
+    Place.findAll({ order: [['name', 'ASC']] }),
+    FanHoursRow.findAll(),
+    Sensor.findAll({ order: [['id', 'ASC']] }),
+  ])
+  if (!foundry) throw new Error('This database holds no foundry yet.')
+  const kindOf = new Map(sensors.map((sensor) => [sensor.id, sensor.kind]))
+  const fansOf = (placeId: string): FanHours[] =>
+    fanHours.filter((row) => row.placeId === placeId).map(({ weekday, onMinute, offMinute }) => ({ weekday, onMinute, offMinute }))
+  return {
+    name: foundry.name,
+    timeZone: foundry.timeZone,
+    pressurePa: stationPressurePa(foundry.altitudeM),
+    isDemo: foundry.isDemo,
+    shiftHours: shiftHours.map(({ weekday, opensMinute, closesMinute }) => ({ weekday, opensMinute, closesMinute })),
+    places: places.map((place) => ({
+      id: place.id,
+      name: place.name,
+      sensorId: place.sensorId,
+      isTypedOnly: kindOf.get(place.sensorId) === 'wall hygrometer',
+      airSpeedFansOnMps: place.airSpeedFansOnMps,
+      airSpeedFansOffMps: place.airSpeedFansOffMps,
+      fanHours: fansOf(place.id),
+    })),
+    sensors: sensors.filter((sensor) => sensor.retiredAt === null).map(({ id, name, kind }) => ({ id, name, kind })),
+  }
+}
