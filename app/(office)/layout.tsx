@@ -1,7 +1,7 @@
 import type { ReactNode } from 'react'
 import { OfficeBar } from '@/app/_components/office-bar'
 import { systemClock } from '@/lib/core/clock'
-import { loadFoundry } from '@/lib/queries/foundry'
+import { loadFoundry } from '@/lib/queries/load-foundry'
 import { currentMember } from '@/lib/server/auth'
 import './office.css'
 

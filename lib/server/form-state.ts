@@ -1,3 +1,4 @@
+import { z } from 'zod'
 import { AppError } from '@/lib/core/errors'
 import type { FieldErrors } from '@/lib/trees/tree-form-values'
 
@@ -11,16 +12,20 @@ export type FormState =
 
 export const IDLE: FormState = { status: 'idle' }
 
+/** A refusal that names the fields it is about, as the API's problem documents do. */
+const refusedFields = z.array(z.object({ path: z.string(), message: z.string() })).min(1)
+
 /**
- * Runs what a form asks for. An expected refusal becomes a sentence: beside the field that `extra.field` names, else under
- * the form. Anything else is a fault and goes on to the error page.
+ * Runs what a form asks for. An expected refusal becomes a sentence: beside the fields it names, else under the form.
+ * Anything else is a fault and goes on to the error page.
  */
 export async function answerForm(act: () => Promise<FormState>): Promise<FormState> {
   try {
     return await act()
   } catch (error) {
     if (!(error instanceof AppError)) throw error
-    const field = error.extra['field']
-    return typeof field === 'string' ? { status: 'invalid', fields: { [field]: error.message } } : { status: 'refused', text: error.message }
+    const named = refusedFields.safeParse(error.extra['fields'])
+    if (!named.success) return { status: 'refused', text: error.message }
+    return { status: 'invalid', fields: Object.fromEntries(named.data.map(({ path, message }) => [path, message])) }
   }
 }

@@ -62,11 +62,12 @@ describe('fieldErrors', () => {
 })
 
 describe('fixedFields', () => {
-  it('fixes tag and recipe once a coat is on, and the place always', () => {
-    expect(Object.keys(fixedFields(0))).toEqual(['placeId'])
-    expect(Object.keys(fixedFields(3)).toSorted()).toEqual(['placeId', 'recipeVersionId', 'tag'])
+  it('fixes the tag always, and what the coats were worked out on once one is on', () => {
+    expect(Object.keys(fixedFields(0))).toEqual(['tag'])
+    expect(Object.keys(fixedFields(3)).toSorted()).toEqual(['pieces', 'placeId', 'recessClass', 'recipeVersionId', 'spacing', 'tag'])
   })
-  it('leaves the recess open: one found late has to count', () => {
-    expect(fixedFields(5).recessClass).toBeUndefined()
+  it('leaves open what no coat rests on', () => {
+    const fixed = fixedFields(5)
+    for (const field of ['pourDate', 'waxMassKg', 'cupKind', 'hungMassKg'] as const) expect(fixed[field]).toBeUndefined()
   })
 })

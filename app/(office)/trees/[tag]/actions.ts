@@ -2,13 +2,12 @@
 
 import { revalidatePath } from 'next/cache'
 import { z } from 'zod'
-import { holdTree } from '@/lib/commands/hold-tree'
-import { liftHold } from '@/lib/commands/lift-hold'
+import { holdTree, liftHold } from '@/lib/commands/hold-tree'
 import { lookOver } from '@/lib/commands/look-over'
 import { moveTree } from '@/lib/commands/move-tree'
 import { passIntake } from '@/lib/commands/pass-intake'
+import { withdrawRelease } from '@/lib/commands/release-trees'
 import { scrapTree } from '@/lib/commands/scrap-tree'
-import { withdrawRelease } from '@/lib/commands/withdraw-release'
 import { systemClock } from '@/lib/core/clock'
 import { requireMember, type Member } from '@/lib/server/auth'
 import { answerForm, type FormState } from '@/lib/server/form-state'
@@ -95,8 +94,7 @@ export async function intakeAction(treeId: string, _previous: FormState, form: F
     areVentsAndCorePinsIn: isTicked('areVentsAndCorePinsIn'),
   })
   return treeForm(treeId, parsed, async (id, intake) => {
-    await passIntake(id, intake, by(member))
-    const isWhole = intake.waxSurface !== null && intake.isWaxAtRoomTemp && intake.isCupFirm && intake.areVentsAndCorePinsIn
-    return isWhole ? 'Intake passed.' : 'Kept. Intake stays open until every line is ticked.'
+    const isPassed = await passIntake(id, intake, by(member))
+    return isPassed ? 'Intake passed.' : 'Kept. Intake stays open until every line is ticked.'
   })
 }

@@ -31,7 +31,7 @@ import { stateTone } from '@/lib/format/state-words'
 import { formatDate, formatDay, formatMoment } from '@/lib/format/local-time'
 import { formatSeconds, formatShare } from '@/lib/format/units'
 import { may } from '@/lib/members/roles'
-import { loadFoundry } from '@/lib/queries/foundry'
+import { loadFoundry } from '@/lib/queries/load-foundry'
 import { loadTreeDetail } from '@/lib/queries/tree-detail'
 import { loadTreeForm } from '@/lib/queries/tree-form'
 import { requireMemberPage } from '@/lib/server/auth'
@@ -78,7 +78,8 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
   const mayLook = isCoatOpen && canDo('look')
   const newestRow = coats.find((coat) => coat.isNewest)
   const targetPct = Math.round((1 - tree.openTarget) * 100)
-  const isReleasable = tree.state === 'ready for burnout' || (tree.state === 'dried out' && lookOvers.length > 0)
+  const isLookedOver = lookOvers.some((look) => look.coatNumber === tree.newestCoat?.number)
+  const isReleasable = tree.state === 'ready for burnout' || (tree.state === 'dried out' && isLookedOver)
   const said = tree.look === null ? null : `${tree.look.by}, ${formatMoment(tree.look.at, now, timeZone)}: ${tree.look.verdict}.`
   const isDue = ['dip now', 'waiting', 'overdue', 'wax ready'].includes(tree.state)
 
@@ -290,17 +291,16 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
                   ))}
               </ul>
             )}
-            {!hasLeft && tree.newestCoat !== null && canDo('look over') && (
+            {!hasLeft && tree.next !== null && <p className="plate-body text-soot">Looked over when the last coat is on. A fault before that is a reason to hold.</p>}
+            {!hasLeft && tree.next === null && tree.newestCoat !== null && canDo('look over') && (
               <div className="plate-body grid gap-3">
                 <LookOverForm
                   treeId={tree.id}
                   isDue={tree.state === 'dried out'}
                   warning={
-                    tree.state === 'dried out' || tree.state === 'ready for burnout'
+                    tree.state === 'dried out' || tree.state === 'ready for burnout' || tree.state === 'held'
                       ? null
-                      : tree.next === null
-                        ? 'Not dried out yet by the clock. The release asks for a look at the dried-out shell.'
-                        : `${tree.coats.length - tree.coatsOn} ${tree.coats.length - tree.coatsOn === 1 ? 'coat' : 'coats'} still to come. The release asks for a look after the last one.`
+                      : 'Not dried out yet by the clock: what is wet hides cracks. Look again when it is dry.'
                   }
                 />
                 <Caution about="dust" />
