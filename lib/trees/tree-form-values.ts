@@ -1,4 +1,6 @@
-import { z } from 'zod'
+import type { z } from 'zod'
+import type { TreeDetail } from '@/lib/trees/detail-contract'
+import type { FixedFields } from '@/lib/trees/fixed-fields'
 
 /** A piece as typed. */
 export type PieceValues = { workTitle: string; sectionName: string; editionNumber: string; isRecast: boolean }
@@ -63,4 +65,37 @@ export function fieldErrors(error: z.ZodError): FieldErrors {
     errors[path] ??= issue.message
   }
   return errors
+}
+
+type KnownTree = Pick<TreeDetail, 'waxMassKg' | 'cupKind' | 'cupVolumeL' | 'recessClass' | 'spacing' | 'hungMassKg' | 'pieces'> & {
+  recipe: Pick<TreeDetail['recipe'], 'versionId'>
+  tree: Pick<TreeDetail['tree'], 'tag' | 'place' | 'pourDate'>
+}
+
+/** A known tree as its form shows it. */
+export function formValuesOf({ tree, recipe, pieces, ...detail }: KnownTree): TreeFormValues {
+  return {
+    tag: tree.tag,
+    recipeVersionId: recipe.versionId,
+    placeId: tree.place.id,
+    pieces: pieces.map((piece) => ({
+      workTitle: piece.workTitle,
+      sectionName: piece.sectionName,
+      editionNumber: String(piece.editionNumber),
+      isRecast: piece.isRecast,
+    })),
+    waxMassKg: String(detail.waxMassKg),
+    cupKind: detail.cupKind,
+    cupVolumeL: String(detail.cupVolumeL),
+    recessClass: detail.recessClass,
+    spacing: detail.spacing,
+    hungMassKg: detail.hungMassKg === null ? '' : String(detail.hungMassKg),
+    pourDate: tree.pourDate ?? '',
+  }
+}
+
+/** What was typed, with the fields that stand put back as they are: a fixed field is not in the form, or was tampered with. */
+export function keepFixed(typed: TreeFormValues, stored: TreeFormValues, fixed: FixedFields): TreeFormValues {
+  const standing = Object.fromEntries(Object.entries(stored).filter(([field]) => field in fixed))
+  return { ...typed, ...standing }
 }

@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest'
 import { fixedFields } from '@/lib/trees/fixed-fields'
-import { fieldErrors, readTreeForm } from '@/lib/trees/tree-form-values'
+import { fieldErrors, formValuesOf, keepFixed, readTreeForm } from '@/lib/trees/tree-form-values'
+import { readTag } from '@/lib/trees/read-tag'
 import { treeInput } from '@/lib/trees/tree-input'
 
 function form(fields: Record<string, string>): FormData {
@@ -69,5 +70,39 @@ describe('fixedFields', () => {
   it('leaves open what no coat rests on', () => {
     const fixed = fixedFields(5)
     for (const field of ['pourDate', 'waxMassKg', 'cupKind', 'hungMassKg'] as const) expect(fixed[field]).toBeUndefined()
+  })
+})
+
+describe('a known tree in its form', () => {
+  const stored = formValuesOf({
+    tree: { tag: 'T-122', place: { id: whole.placeId, name: 'Rack B 5' }, pourDate: null },
+    recipe: { versionId: whole.recipeVersionId },
+    waxMassKg: 3.2,
+    cupKind: 'paper',
+    cupVolumeL: 0.35,
+    recessClass: 'closed core',
+    spacing: 'open',
+    hungMassKg: null,
+    pieces: [{ id: 'x', workTitle: 'Otter Gate', sectionName: 'panel 2', editionNumber: 1, isRecast: false }],
+  })
+
+  it('goes through the form unchanged', () => {
+    expect(treeInput.parse(stored)).toMatchObject({ tag: 'T-122', waxMassKg: 3.2, hungMassKg: null, pourDate: null })
+  })
+
+  it('keeps what is fixed, whatever the form sends', () => {
+    const typed = readTreeForm(form({ ...whole, tag: 'X-1', recessClass: 'none', waxMassKg: '4' }))
+    const kept = keepFixed(typed, stored, fixedFields(2))
+    expect(kept).toMatchObject({ tag: 'T-122', recessClass: 'closed core', waxMassKg: '4' })
+    expect(kept.pieces).toEqual(stored.pieces)
+    expect(keepFixed(typed, stored, fixedFields(0)).recessClass).toBe('none')
+  })
+})
+
+describe('readTag', () => {
+  it('reads a tag from an address and nothing else', () => {
+    expect(readTag('T-122')).toBe('T-122')
+    expect(readTag('t%2D7')).toBe('T-7')
+    for (const wrong of ['new', '%', '122', 'T-1234567', '../T-1']) expect(readTag(wrong)).toBeNull()
   })
 })

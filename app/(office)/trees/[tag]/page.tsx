@@ -35,29 +35,20 @@ import { loadFoundry } from '@/lib/queries/load-foundry'
 import { loadTreeDetail } from '@/lib/queries/tree-detail'
 import { loadTreeForm } from '@/lib/queries/tree-form'
 import { requireMemberPage } from '@/lib/server/auth'
-import { treeTag } from '@/lib/trees/tree-input'
+import { readTag } from '@/lib/trees/read-tag'
 import { nextDipWords, treeVerdict } from '@/lib/trees/tree-verdict'
 
 /** Said elsewhere on this page: in the verdict, the pour's line, the hold and the intake. */
 const SAID_ELSEWHERE = new Set(['still wet', 'held', 'pour at risk', 'intake open'])
 
-function readTag(value: string): string {
-  try {
-    return decodeURIComponent(value).toUpperCase()
-  } catch {
-    return ''
-  }
-}
-
 export async function generateMetadata({ params }: PageProps<'/trees/[tag]'>): Promise<Metadata> {
-  const tag = readTag((await params).tag)
-  return { title: treeTag.safeParse(tag).success ? tag : 'Tree' }
+  return { title: readTag((await params).tag) ?? 'Tree' }
 }
 
 export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
   const tag = readTag((await params).tag)
+  if (tag === null) notFound()
   const member = await requireMemberPage('see', `/trees/${encodeURIComponent(tag)}`)
-  if (!treeTag.safeParse(tag).success) notFound()
   const now = systemClock.now()
   const [detail, { timeZone, shiftHours }, { places }] = await Promise.all([
     loadTreeDetail({ tag, viewer: { id: member.id, role: member.role }, clock: systemClock }),
