@@ -42,6 +42,13 @@ const DRAWINGS = {
   up: <path d="M4 16l8-8 8 8" fill="none" stroke="currentColor" strokeWidth="3.2" />,
   back: <path d="M15 4l-8 8 8 8" fill="none" stroke="currentColor" strokeWidth="3" />,
   hand: <path d="M6 21v-7l-3-4 2-1.5 3 2.5V4h2.5v6h1V3h2.5v7h1V4.5H17V14l-2 7z" fill="none" stroke="currentColor" strokeWidth="2" />,
+  /** Half a drop: still wet. */
+  drop: (
+    <>
+      <path d="M12 3.3c3.5 4.6 5.8 7.7 5.8 11.2a5.8 5.8 0 0 1-11.6 0c0-3.5 2.3-6.6 5.8-11.2z" fill="none" stroke="currentColor" strokeWidth="2.4" />
+      <path d="M6 13.5h12a6 6 0 0 1-12 1z" fill="currentColor" />
+    </>
+  ),
   bell: (
     <>
       <path d="M5 17h14l-2-3V9.5a5 5 0 0 0-10 0V14z" fill="none" stroke="currentColor" strokeWidth="2.4" />

@@ -1,10 +1,7 @@
 import { memo, useId, type ReactNode } from 'react'
 import { describeSection, type BandGrade, type SectionDrawing } from '@/lib/trees/section'
+import { sectionBands } from '@/lib/trees/section-bands'
 
-/** Width of a band in 1/40 of the height. */
-const BAND_UNITS: Record<BandGrade, number> = { fine: 13, medium: 17, coarse: 22, seal: 9 }
-/** Least width of a band, px, so that small drawings still show every coat. */
-const BAND_LEAST: Record<BandGrade, number> = { fine: 7, medium: 8.5, coarse: 11, seal: 5 }
 /** Stucco: pitch and radius in units, least pitch and least radius in px. */
 const GRAIN: Record<Exclude<BandGrade, 'seal'>, { pitch: number; radius: number; leastPitch: number; leastRadius: number }> = {
   fine: { pitch: 3.9, radius: 0.95, leastPitch: 2.5, leastRadius: 0.62 },
@@ -66,21 +63,8 @@ export const ShellSection = memo(function ShellSection({
   const u = unit || h / 40
   const bulge = h * 0.15
   const top = Math.max(4, h * 0.16)
-  const coreWidth = 20 * u
   const openIndex = open ? done : -1
-  const openLeast = Math.max(34, 44 * u)
-  const naturalWidth = (index: number, grade: BandGrade) =>
-    index === openIndex ? openLeast : Math.max(BAND_UNITS[grade] * u, BAND_LEAST[grade])
-  const total = coreWidth + coats.reduce((sum, coat, index) => sum + naturalWidth(index, coat.grade), 0) + bulge + 3
-  const fit = width || fitWidth
-  // Horizontal squeeze, so that long recipes fit their cell.
-  let squeeze = 1
-  if (fit && (width || total > fit)) {
-    const cap = state === 'ready' || state === 'released' ? 6 * u : 0
-    const outer = state === 'released' ? 9 * u : 0
-    const hanger = state === 'held' ? h * 0.34 : 0
-    squeeze = Math.max(0.05, (fit - coreWidth - bulge - 3 - cap - outer - hanger) / (total - coreWidth - bulge - 3))
-  }
+  const { coreWidth, edges } = sectionBands({ coats, done, open, state, target }, { height: h, width, fit: fitWidth, unit })
   const y0 = top
   const y1 = top + h
   const middle = (y0 + y1) / 2
@@ -154,12 +138,7 @@ export const ShellSection = memo(function ShellSection({
     }
   }
 
-  let x = coreWidth
-  const edges = coats.map((coat, index): [number, number] => {
-    const a = x
-    x = a + naturalWidth(index, coat.grade) * squeeze
-    return [a, x]
-  })
+  let x = edges.at(-1)?.[1] ?? coreWidth
   const edge = (index: number): [number, number] => edges[index] ?? [coreWidth, coreWidth]
 
   coats.forEach((coat, index) => {
