@@ -1,17 +1,13 @@
-import { database, databaseFile } from '@/db/connection'
-import { migrate } from '@/db/migrator'
-import { env } from '@/lib/core/env'
-import { Foundry } from '@/models'
+import { log } from '@/lib/core/log'
+import { bringUpToDate, closeRecords } from '@/lib/server/records'
 
-// Run by the start script before anything serves: checks the settings, brings the records up to date, and says what they are.
+// Run by the start script, which waits for one message.
 try {
-  env()
-  const file = databaseFile()
-  const applied = await migrate(file)
-  const foundry = await Foundry.findOne()
-  await database.close()
-  process.stdout.write(`${JSON.stringify({ file, applied, isNew: foundry === null, isDemo: foundry?.isDemo ?? false })}\n`)
+  const records = await bringUpToDate()
+  await closeRecords()
+  process.send?.(records)
 } catch (error) {
-  process.stderr.write(`${error instanceof Error ? error.message : String(error)}\n`)
+  log('start.refused', { reason: error instanceof Error ? error.message : String(error) })
   process.exitCode = 1
 }
+process.disconnect?.()

@@ -59,7 +59,7 @@ async function main() {
     // Read by Node before any code runs, so it cannot be set later.
     UV_THREADPOOL_SIZE: process.env.UV_THREADPOOL_SIZE || '16',
   }
-  const records = prepareRecords(env)
+  const records = await prepareRecords(env)
   if (!isDev) ensureBuilt()
 
   const children = [
@@ -214,24 +214,26 @@ function publicKeyOf(privateKey) {
 }
 
 /** Migrates, and fills a new database with the demo foundry. */
-function prepareRecords(env) {
-  const records = JSON.parse(runScript('jobs/prepare-records.ts', env))
-  if (!records.isNew) return records
-  if (!existsSync('jobs/seed-demo.ts')) return records
+async function prepareRecords(env) {
+  const records = await runScript('jobs/prepare-records.ts', env)
+  if (!records.isNew || !existsSync('lib/demo/seed.ts')) return records
   say('Kilnward: making the demo foundry.')
-  runScript('jobs/seed-demo.ts', env)
+  await runScript('jobs/seed-demo.ts', env)
   return { ...records, isDemo: true }
 }
 
+/** Runs a script to its end and gives the message that it sent. */
 function runScript(script, env) {
-  const { status, stdout, error } = spawnSync(process.execPath, [...TSX, script], {
-    env,
-    encoding: 'utf8',
-    stdio: ['ignore', 'pipe', 'inherit'],
+  return new Promise((done, fail) => {
+    const child = spawn(process.execPath, [...TSX, script], { env, stdio: ['ignore', 'inherit', 'inherit', 'ipc'] })
+    let message = null
+    child.on('message', (sent) => (message = sent))
+    child.on('error', fail)
+    child.on('exit', (code) => {
+      if (code === 0 && message !== null) done(message)
+      else fail(new Refusal('Kilnward did not start; the reason stands above.'))
+    })
   })
-  if (error) throw error
-  if (status !== 0) throw new Refusal('Kilnward did not start; the reason stands above.')
-  return stdout
 }
 
 /** Starts a child and starts it again when it ends by itself, after 1, 2, 4 and up to 60 seconds. */
@@ -294,9 +296,10 @@ async function announce(env, { file, isDemo }) {
   }
   say()
   say(`Kilnward is open: ${env.NEXTAUTH_URL}`)
-  if (isDemo) {
-    say('Demo foundry. Sign in as:')
-    for (const line of demoSignIns(env)) say(`  ${line}`)
+  if (isDemo && existsSync('lib/demo/people.ts')) {
+    const { signIns } = await runScript('jobs/demo-sign-ins.ts', env)
+    say('This is the demo foundry. Sign in as:')
+    for (const { role, email, password } of signIns) say(`  ${role.padEnd(10)}  ${email.padEnd(28)}  ${password}`)
   }
   say(`Records: ${file}`)
   say('Stop with Ctrl-C.')
@@ -310,9 +313,4 @@ async function isHealthy(address) {
   } catch {
     return false
   }
-}
-
-function demoSignIns(env) {
-  if (!existsSync('jobs/demo-sign-ins.ts')) return []
-  return runScript('jobs/demo-sign-ins.ts', env).trim().split('\n')
 }
