@@ -34,7 +34,9 @@ const textOf = (file: string) => readFileSync(join(root, file), 'utf8')
 const codeOf = (file: string) => textOf(file).replaceAll(/\/\*[\s\S]*?\*\/|(?<!:)\/\/.*$/gm, '')
 
 function* importsOf(file: string): Generator<string> {
-  for (const [, specifier = ''] of codeOf(file).matchAll(/(?:\bfrom|\bimport|\bimport\()\s*['"]([^'"]+)['"]/g)) {
+  for (const [, specifier = ''] of codeOf(file).matchAll(
+    /(?:^(?:import|export|\}) [^'"`]*\bfrom|^import|\bimport\()\s*['"]([^'"]+)['"]/gm,
+  )) {
     if (specifier.startsWith('@/')) yield specifier.slice(2)
     else if (specifier.startsWith('.')) yield relative(root, join(root, dirname(file), specifier))
     else yield `package:${specifier}`
