@@ -5,7 +5,8 @@ import { startSchedule } from '@/jobs/schedule'
 import { systemClock } from '@/lib/core/clock'
 import { env } from '@/lib/core/env'
 import { log } from '@/lib/core/log'
-import { closeRecords, prepareProcessOrExit } from '@/lib/server/startup'
+import { closeRecords } from '@/lib/server/records'
+import { prepareProcessOrExit } from '@/lib/server/startup'
 
 /** Less than the start script waits before it ends this process. */
 const STOP_WITHIN_MS = 4500

@@ -16,6 +16,7 @@ const page = (route: string, who: Who, example?: string): Door => door('PAGE', r
 export const DOORS: readonly Door[] = [
   page('/sign-in', 'anybody'),
   page('/floor', 'crew'),
+  page('/me', 'crew'),
 
   door('GET', '/api/health', 'anybody'),
   // Its own tests are in auth.test.ts.
@@ -29,6 +30,12 @@ export const DOORS: readonly Door[] = [
   door('POST', '/api/v1/trees/[treeId]/looks', 'operator'),
   door('POST', '/api/v1/trees/[treeId]/place', 'operator'),
   door('POST', '/api/v1/baths/[bathId]/stirs', 'operator'),
+  door('GET', '/api/v1/push/subscriptions', 'crew'),
+  door('POST', '/api/v1/push/subscriptions', 'crew'),
+  door('DELETE', '/api/v1/push/subscriptions', 'crew'),
+  door('POST', '/api/v1/push/test', 'crew'),
+  door('POST', '/api/v1/trees/[treeId]/watch', 'crew'),
+  door('DELETE', '/api/v1/trees/[treeId]/watch', 'crew'),
   door('POST', '/api/v1/readings', 'sensor'),
   door('POST', '/api/v1/readings/typed', 'operator'),
 ]
