@@ -34,3 +34,8 @@ export async function prepareProcessOrExit(): Promise<void> {
     process.exit(1)
   }
 }
+
+/** Closes the handle at the end of the process, once nothing writes any more. */
+export async function closeRecords(): Promise<void> {
+  await database.close()
+}
