@@ -19,7 +19,7 @@ const LAYERS: readonly (readonly [prefix: string, mayImport: readonly string[]])
   ['lib/commands/', ['domain', 'lib/core/', 'lib/commands/', 'lib/queries/', 'lib/server/', 'models/']],
   ['lib/queries/', ['domain', 'lib/core/', 'lib/queries/', 'lib/server/', 'models/']],
   ['lib/demo/', ['domain', 'lib/', 'models/']],
-  ['lib/server/', ['domain', 'lib/', 'models/', 'db/connection/']],
+  ['lib/server/', ['domain', 'lib/', 'models/', 'db/']],
   ['lib/', ['domain']],
   ['models/', ['domain', 'models/', 'db/connection/']],
   ['db/', ['db/']],
