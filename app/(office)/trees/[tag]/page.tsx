@@ -83,7 +83,8 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
   const pairLine =
     verdict.pairLead !== null && tree.dry !== null ? (
       <>
-        {verdict.pairLead} <TimePair pair={tree.dry} now={now} timeZone={timeZone} guard={tree.state === 'last coat on' ? 'safe' : tree.guard} />
+        {verdict.pairLead}{' '}
+        <TimePair pair={tree.dry} now={now} timeZone={timeZone} guard={tree.state === 'last coat on' ? 'safe' : tree.guard} />
         {isDryNow ? ', by the clock' : ''}
         {tree.isUncalibrated && <span className="text-soot"> ({NOT_CALIBRATED})</span>}.{' '}
       </>
@@ -179,7 +180,13 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
         )}
         {/* The one large pair of a phone; the sentence above says it on a desk. */}
         {verdict.pairLead !== null && tree.dry !== null && (
-          <PhonePair lead={verdict.pairLead} pair={tree.dry} note={tree.isUncalibrated ? NOT_CALIBRATED : null} now={now} timeZone={timeZone} />
+          <PhonePair
+            lead={verdict.pairLead}
+            pair={tree.dry}
+            note={tree.isUncalibrated ? NOT_CALIBRATED : null}
+            now={now}
+            timeZone={timeZone}
+          />
         )}
         {tree.next !== null && !hasLeft && (
           <div className="phone-next">
@@ -282,7 +289,9 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
                   ))}
               </ul>
             )}
-            {!hasLeft && tree.next !== null && <p className="plate-body text-soot">Looked over when the last coat is on. A fault before that is a reason to hold.</p>}
+            {!hasLeft && tree.next !== null && (
+              <p className="plate-body text-soot">Looked over when the last coat is on. A fault before that is a reason to hold.</p>
+            )}
             {!hasLeft && tree.next === null && tree.newestCoat !== null && canDo('look over') && (
               <div className="plate-body grid gap-3">
                 <LookOverForm
@@ -390,7 +399,10 @@ function About({ detail, now, timeZone }: { detail: Detail; now: number; timeZon
         ? 'open'
         : `passed by ${intake.passedBy ?? 'somebody'}, ${formatMoment(intake.passedAt, now, timeZone)}; wax ${intake.waxSurface ?? 'not said'}`,
     ],
-    ['Water in the newest coat', detail.tree.moistureRatio === null ? 'none' : `${formatShare(detail.tree.moistureRatio)} left by the clock`],
+    [
+      'Water in the newest coat',
+      detail.tree.moistureRatio === null ? 'none' : `${formatShare(detail.tree.moistureRatio)} left by the clock`,
+    ],
   ]
   return (
     <dl className="facts">
