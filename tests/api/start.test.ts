@@ -121,9 +121,9 @@ describe('npm start', () => {
     ['a contact that push services refuse', { VAPID_SUBJECT: 'mailto:x@localhost' }, /VAPID_SUBJECT must be mailto: or https:/],
     ['half a key pair', { VAPID_PUBLIC_KEY: 'B'.repeat(87) }, /Set both VAPID_PUBLIC_KEY and VAPID_PRIVATE_KEY/],
     ['keys of two pairs', { VAPID_PUBLIC_KEY: 'B'.repeat(87), VAPID_PRIVATE_KEY: 'a'.repeat(43) }, /does not belong to VAPID_PRIVATE_KEY/],
-    ['too few threads', { UV_THREADPOOL_SIZE: '4' }, /UV_THREADPOOL_SIZE: must be at least 16/],
+    ['too few threads', { UV_THREADPOOL_SIZE: '4' }, /UV_THREADPOOL_SIZE must be at least 16/],
     ['a port that is none', { PORT: 'http' }, /PORT must be a number/],
-    ['a folder that cannot be', { DATA_DIR: '/proc/kilnward' }, /cannot write to \/proc\/kilnward/],
+    ['a folder that cannot be', { DATA_DIR: '/dev/null/kilnward' }, /cannot write to \/dev\/null\/kilnward/],
   ])('refuses %s in one line', async (_what, settings, line) => {
     const program = start(newFolder(), await freePort(), settings)
     expect(await program.exited).toBe(1)
