@@ -64,6 +64,22 @@ describe('callCoat on a coat that needs four hours', () => {
   })
 })
 
+describe('callCoat over a gap', () => {
+  // From 1.0 to 0.5 in six hours: 0.5 is credited, between 0.25 and 1.0.
+  const readings = [buildFactor(hour(0), 1), buildFactor(hour(6), 0.5)]
+  const call = callAt(hour(6), readings, buildCoat({ needReferenceHours: 3 }))
+
+  it('takes the likely time from the lower end, the earliest from the higher one', () => {
+    expect(call.dose).toEqual({ likely: expect.closeTo(3, 9), low: expect.closeTo(1.5, 9), high: expect.closeTo(6, 9) })
+    expect(call.likelyAt).toBe(hour(6))
+    expect(call.earliestAt).toBe(Math.ceil(START + call.need.low * HOUR_MS))
+  })
+
+  it('takes the safe time from half of the lower end, then from the forecast', () => {
+    expect(call.safeAt).toBe(Math.ceil(hour(6) + (call.need.high - 1.5) * HOUR_MS))
+  })
+})
+
 describe('callCoat without enough readings', () => {
   it('is unknown, never dry, with no reading in its window', () => {
     const call = callAt(hour(40), everyHalfHour(-5, -1))
@@ -182,7 +198,9 @@ describe('callCoat on any readings', () => {
 describe('coatPhase', () => {
   it.each([
     { hours: 0.5, phase: 'wet' },
-    { hours: 2, phase: 'drying' },
+    { hours: 2.02, phase: 'drying' }, // moisture ratio 0.34
+    { hours: 1.3, phase: 'wet' }, // 0.506
+    { hours: 1.4, phase: 'drying' }, // 0.478
     { hours: 3.45, phase: 'drying' },
     { hours: 3.5, phase: 'nearly dry' },
     { hours: 4, phase: 'dry' },

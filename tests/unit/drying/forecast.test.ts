@@ -19,6 +19,9 @@ function buildDays(days: number, doseOf: (utcHour: number, daysAgo: number) => n
   })
 }
 
+/** One row at 11:00 UTC for each of these days back, at a factor of 2. */
+const elevens = (daysAgo: number[]) => daysAgo.map((days) => buildHour(Date.UTC(2026, 8, 15 - days, 11), 2))
+
 const forecast = (hours: DoseHour[], overrides: Partial<Parameters<typeof forecastSegments>[0]> = {}) =>
   forecastSegments({ hours, now: NOW, timeZone: 'UTC', lastRoomFactor: 0.9, horizonHours: 48, ...overrides })
 
@@ -66,6 +69,11 @@ describe('forecastSegments', () => {
     expect(new Set(rates(forecast(old)))).toEqual(new Set([0.9]))
   })
 
+  it('looks back over 14 days and no further', () => {
+    expect(rates(forecast(elevens([2, 7, 13])))[1]).toBe(2)
+    expect(rates(forecast(elevens([2, 7, 15])))[1]).toBe(0.9)
+  })
+
   it('knows nothing where there never was a reading', () => {
     expect(forecast([], { lastRoomFactor: null })).toEqual([])
   })
@@ -73,7 +81,6 @@ describe('forecastSegments', () => {
   it.each([
     { name: 'an hour with a hole', overrides: { coveredMinutes: 59 } },
     { name: 'an hour in a gap', overrides: { gapMinutes: 60 } },
-    { name: 'an hour of three weeks ago', overrides: { hourStart: Date.UTC(2026, 7, 25, 9) } },
     { name: 'an hour not over yet', overrides: { hourStart: Date.UTC(2026, 8, 15, 10) } },
   ])('passes over $name', ({ overrides }) => {
     expect(new Set(rates(forecast([buildHour(Date.UTC(2026, 8, 15, 9), 7, overrides)])))).toEqual(new Set([0.9]))

@@ -1,0 +1,27 @@
+import type { ReactNode } from 'react'
+import { OfficeBar } from '@/app/_components/office-bar'
+import { systemClock } from '@/lib/core/clock'
+import { loadFoundry } from '@/lib/queries/load-foundry'
+import { currentMember } from '@/lib/server/auth'
+import './office.css'
+
+/** Guards nothing: every page asks for its own right. Without a member the page inside is on its way to the sign-in. */
+export default async function OfficeLayout({ children }: { children: ReactNode }) {
+  const member = await currentMember()
+  if (!member) return children
+  const foundry = await loadFoundry()
+  return (
+    <div className="office">
+      <a className="skip-link" href="#page">
+        To the page
+      </a>
+      <OfficeBar
+        foundryName={foundry.name}
+        timeZone={foundry.timeZone}
+        member={{ name: member.name, role: member.role }}
+        serverNow={systemClock.now()}
+      />
+      <main id="page">{children}</main>
+    </div>
+  )
+}

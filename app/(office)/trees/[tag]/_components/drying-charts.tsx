@@ -1,0 +1,239 @@
+'use client'
+
+import { Area, CartesianGrid, ComposedChart, Line, LineChart, ReferenceDot, ReferenceLine, ResponsiveContainer, XAxis, YAxis } from 'recharts'
+import { formatClock, formatDate, formatMoment } from '@/lib/format/local-time'
+import { timePairWords } from '@/lib/format/time-pair'
+import { formatTemperature, wholeNumber } from '@/lib/format/units'
+import { curveRows, evenBounds, hourTicks, thinOut } from '@/lib/trees/curve-series'
+import type { TreeDetail } from '@/lib/trees/detail-contract'
+
+export type DryingChartsProps = {
+  curve: NonNullable<TreeDetail['curve']>
+  climate: TreeDetail['climate']
+  coatNumber: number
+  isLastCoat: boolean
+  now: number
+  timeZone: string
+}
+
+const GRID = { stroke: 'var(--rule)', strokeWidth: 1, vertical: false } as const
+const TICK = { fill: 'var(--soot)', fontSize: 13, fontFamily: 'var(--font-text), sans-serif' } as const
+const MARGIN = { top: 8, right: 12, bottom: 0, left: 0 } as const
+const NOW_LINE = { stroke: 'var(--ink)', strokeWidth: 3 } as const
+const DAY_MS = 86_400_000
+
+type Spot = { cx?: number; cy?: number }
+
+/** A marker on the target line with its words on a leader above: open for likely, solid for safe. */
+function markerShape(words: string, isSafe: boolean, lift: number, anchor: 'start' | 'middle' | 'end') {
+  return function Marker({ cx = 0, cy = 0 }: Spot) {
+    const shift = anchor === 'end' ? 8 : anchor === 'start' ? -8 : 0
+    return (
+      <g>
+        <path d={`M${cx} ${cy - 16}V${cy - lift + 6}`} stroke="var(--ink)" strokeWidth="1.2" />
+        <path
+          d={`M${cx - 8} ${cy - 17}h16l-8 14z`}
+          fill={isSafe ? 'var(--ink)' : 'var(--paper)'}
+          stroke="var(--ink)"
+          strokeWidth="2"
+          strokeLinejoin="round"
+        />
+        <text x={cx + shift} y={cy - lift} textAnchor={anchor} className="chart-words">
+          {words}
+        </text>
+      </g>
+    )
+  }
+}
+
+/** Water left in the newest coat, and the room's air below it on the same hours. */
+export function DryingCharts({ curve, climate, coatNumber, isLastCoat, now, timeZone }: DryingChartsProps) {
+  const rows = curveRows(curve.points)
+  const from = rows[0]?.at ?? now
+  const to = Math.max(rows.at(-1)?.at ?? now, from + 60_000)
+  const domain: [number, number] = [from, to]
+  const span = to - from
+  const ticks = hourTicks(from, to, timeZone, 8)
+  const tickWords = (at: number) => {
+    const clock = formatClock(at, timeZone)
+    // Where midnights are on the axis they say the day; the hours between stay short.
+    return span > DAY_MS && clock === '00:00' ? formatDate(at, timeZone).replace(/ \w+$/, '') : clock
+  }
+  const share = (at: number) => (at - from) / span
+  const current = rows.findLast((row) => row.pastPct !== null)
+  const left = current?.pastPct ?? null
+  const pair = { likelyAt: curve.likelyAt, safeAt: curve.safeAt }
+  const pairWords = timePairWords(pair, now, timeZone)
+  const act = isLastCoat ? 'dried out' : 'dip'
+  const isInside = (at: number | null): at is number => at !== null && at >= from && at <= to
+  const targetWords = `${act} at ${wholeNumber(curve.targetPct)} %`
+  const summary = `Drying curve of coat ${coatNumber}: ${left === null ? 'water left not known' : `${wholeNumber(left)} % of the water left now`}; ${targetWords}, ${pairWords.text}.`
+
+  return (
+    <figure className="charts">
+      <div role="img" aria-label={summary}>
+        <ResponsiveContainer width="100%" height={310}>
+          <ComposedChart data={rows} margin={MARGIN} accessibilityLayer={false}>
+            <CartesianGrid {...GRID} />
+            <XAxis dataKey="at" type="number" domain={domain} ticks={ticks} tickFormatter={tickWords} tick={TICK} tickLine={false} stroke="var(--ink)" strokeWidth={1.5} height={24} />
+            <YAxis domain={[0, 100]} ticks={[0, 25, 50, 75, 100]} tick={TICK} tickLine={false} axisLine={false} width={38} />
+            <Area dataKey="band" stroke="var(--wet)" strokeWidth={1} fill="var(--wet-wash)" fillOpacity={1} isAnimationActive={false} connectNulls={false} />
+            <ReferenceLine
+              y={curve.targetPct}
+              stroke="var(--verdigris)"
+              strokeWidth={2}
+              label={{ value: targetWords, position: 'insideBottomLeft', className: 'chart-target' }}
+            />
+            <Line dataKey="pastPct" stroke="var(--ink)" strokeWidth={2.4} dot={false} isAnimationActive={false} type="monotone" />
+            <Line dataKey="forecastPct" stroke="var(--ink)" strokeWidth={2} strokeDasharray="6 5" dot={false} isAnimationActive={false} type="monotone" />
+            {now >= from && now <= to && (
+              <ReferenceLine
+                x={now}
+                {...NOW_LINE}
+                label={{
+                  value: left === null ? 'now' : `now, ${wholeNumber(left)} % left`,
+                  position: share(now) > 0.35 ? 'insideTopRight' : 'insideTopLeft',
+                  className: 'chart-now',
+                  offset: 10,
+                }}
+              />
+            )}
+            {isInside(curve.likelyAt) && isInside(curve.safeAt) && (
+              <ReferenceLine
+                segment={[
+                  { x: curve.likelyAt, y: curve.targetPct },
+                  { x: curve.safeAt, y: curve.targetPct },
+                ]}
+                stroke="var(--ink)"
+                strokeWidth={5}
+              />
+            )}
+            {isInside(curve.likelyAt) && (
+              <ReferenceDot
+                x={curve.likelyAt}
+                y={curve.targetPct}
+                shape={markerShape(`likely ${formatMoment(curve.likelyAt, now, timeZone)}`, false, 62, share(curve.likelyAt) < 0.3 ? 'start' : share(curve.likelyAt) > 0.6 ? 'end' : 'middle')}
+              />
+            )}
+            {isInside(curve.safeAt) && (
+              <ReferenceDot
+                x={curve.safeAt}
+                y={curve.targetPct}
+                shape={markerShape(`safe ${formatMoment(curve.safeAt, now, timeZone)}`, true, 38, share(curve.safeAt) > 0.7 ? 'end' : 'start')}
+              />
+            )}
+          </ComposedChart>
+        </ResponsiveContainer>
+      </div>
+      <p className="chart-title">Room while it dries</p>
+      {climate.length === 0 ? (
+        <p className="text-15 text-soot">No reading since the dip.</p>
+      ) : (
+        <>
+          <RoomChart
+            rows={climate}
+            dataKey="airTempC"
+            step={2}
+            domain={domain}
+            now={now}
+            color="var(--wax-ink)"
+            format={(value) => formatTemperature(value)}
+            name="Air temperature"
+          />
+          <RoomChart
+            rows={climate}
+            dataKey="relHumidityPct"
+            step={10}
+            domain={domain}
+            now={now}
+            color="var(--wet-ink)"
+            dash="4 3"
+            format={(value) => `${wholeNumber(value)} % RH`}
+            name="Humidity"
+            foot={{ ticks, tickWords }}
+          />
+        </>
+      )}
+      <figcaption>
+        <details>
+          <summary>The same as a table</summary>
+          <table className="table">
+            <thead>
+              <tr>
+                <th scope="col">Time</th>
+                <th scope="col" className="right">
+                  Water left
+                </th>
+                <th scope="col" className="right">
+                  Between
+                </th>
+              </tr>
+            </thead>
+            <tbody>
+              {thinOut(curve.points, 13).map((point) => (
+                <tr key={point.at}>
+                  <th scope="row">
+                    {formatMoment(point.at, now, timeZone)}
+                    {point.isForecast && <span className="text-soot"> forecast</span>}
+                  </th>
+                  <td className="right num">{wholeNumber(point.likelyPct)} %</td>
+                  <td className="right num">
+                    {wholeNumber(Math.min(point.lowPct, point.highPct))} to {wholeNumber(Math.max(point.lowPct, point.highPct))} %
+                  </td>
+                </tr>
+              ))}
+            </tbody>
+          </table>
+        </details>
+      </figcaption>
+    </figure>
+  )
+}
+
+function RoomChart({
+  rows,
+  dataKey,
+  step,
+  domain,
+  now,
+  color,
+  dash,
+  format,
+  name,
+  foot,
+}: {
+  rows: TreeDetail['climate']
+  dataKey: 'airTempC' | 'relHumidityPct'
+  step: number
+  domain: [number, number]
+  now: number
+  color: string
+  dash?: string
+  format: (value: number) => string
+  name: string
+  foot?: { ticks: number[]; tickWords: (at: number) => string }
+}) {
+  const values = rows.map((row) => row[dataKey])
+  const bounds = evenBounds(values, step)
+  const newest = rows.at(-1)!
+  const isLate = (newest.at - domain[0]) / (domain[1] - domain[0]) > 0.8
+  return (
+    <div role="img" aria-label={`${name}: ${format(Math.min(...values))} to ${format(Math.max(...values))}, newest ${format(newest[dataKey])}.`}>
+      <ResponsiveContainer width="100%" height={foot ? 96 : 74}>
+        <LineChart data={rows} margin={MARGIN} accessibilityLayer={false}>
+          <CartesianGrid {...GRID} />
+          <XAxis dataKey="at" type="number" domain={domain} hide={!foot} ticks={foot?.ticks} tickFormatter={foot?.tickWords} tick={TICK} tickLine={false} stroke="var(--ink)" strokeWidth={1.5} height={24} />
+          <YAxis domain={bounds} ticks={bounds} tick={TICK} tickLine={false} axisLine={false} width={38} />
+          <Line dataKey={dataKey} stroke={color} strokeWidth={2.4} strokeDasharray={dash} dot={false} isAnimationActive={false} type="monotone" />
+          {now >= domain[0] && now <= domain[1] && <ReferenceLine x={now} {...NOW_LINE} />}
+          <ReferenceDot
+            x={newest.at}
+            y={newest[dataKey]}
+            r={0}
+            label={{ value: format(newest[dataKey]), position: isLate ? 'left' : 'right', className: 'chart-now', fill: color, offset: 10 }}
+          />
+        </LineChart>
+      </ResponsiveContainer>
+    </div>
+  )
+}

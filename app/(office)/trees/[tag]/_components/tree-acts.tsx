@@ -1,0 +1,177 @@
+'use client'
+
+import { useEffect, useRef, useState } from 'react'
+import { SelectField } from '@/app/_components/field'
+import { Icon } from '@/app/_components/icons'
+import { Key, KeyLink } from '@/app/_components/key'
+import { holdAction, liftHoldAction, moveAction, scrapAction } from '@/app/(office)/trees/[tag]/actions'
+import { ReasonForm } from '@/app/(office)/trees/[tag]/_components/reason-form'
+import { FormMessage } from '@/app/(office)/_components/form-message'
+import { useKeptForm } from '@/app/(office)/_components/use-kept-form'
+
+export type TreeActsProps = {
+  treeId: string
+  tag: string
+  isHeld: boolean
+  /** What this member may do to this tree as it hangs. */
+  may: { hold: boolean; lift: boolean; move: boolean; edit: boolean; scrap: boolean; release: boolean; dip: boolean }
+  nextDip: { number: number; isDue: boolean } | null
+  places: { id: string; name: string }[]
+  placeId: string
+}
+
+type Panel = 'hold' | 'lift' | 'move' | 'scrap'
+
+/** The keys of a tree, and the little form that each of them opens under the head. */
+export function TreeActs({ treeId, tag, isHeld, may, nextDip, places, placeId }: TreeActsProps) {
+  const [panel, setPanel] = useState<Panel | null>(null)
+  const [said, setSaid] = useState<string | null>(null)
+  const path = `/trees/${encodeURIComponent(tag)}`
+  const toggle = (next: Panel) => () => {
+    setSaid(null)
+    setPanel(panel === next ? null : next)
+  }
+  const done = (words: string) => () => {
+    setPanel(null)
+    setSaid(words)
+  }
+  return (
+    <>
+      <div className="tree-acts">
+        {may.hold && !isHeld && (
+          <Key icon="hold" aria-expanded={panel === 'hold'} onPress={toggle('hold')}>
+            Hold
+          </Key>
+        )}
+        {may.lift && isHeld && (
+          <Key icon="hold" aria-expanded={panel === 'lift'} onPress={toggle('lift')}>
+            Lift hold
+          </Key>
+        )}
+        {may.release && (
+          <KeyLink href={`/burnout#${tag}`} tone="go">
+            Release
+          </KeyLink>
+        )}
+        {may.dip && nextDip !== null && (
+          <KeyLink href={`/floor?tree=${treeId}`} tone={nextDip.isDue ? 'go' : 'plain'} className="grow-phone">
+            Log dip {nextDip.number}
+          </KeyLink>
+        )}
+      </div>
+      {(may.move || may.edit || may.scrap) && (
+        <div className="tree-acts-more">
+          {may.move && (
+            <Key tone="quiet" aria-expanded={panel === 'move'} onPress={toggle('move')}>
+              Move
+            </Key>
+          )}
+          {may.edit && (
+            <KeyLink tone="quiet" href={`${path}/edit`}>
+              Edit
+            </KeyLink>
+          )}
+          {may.scrap && (
+            <Key tone="quiet" aria-expanded={panel === 'scrap'} onPress={toggle('scrap')}>
+              Scrap
+            </Key>
+          )}
+        </div>
+      )}
+      <p role="status" className="tree-acts-said">
+        {said !== null && (
+          <span className="form-done">
+            <Icon name="check" />
+            <span>{said}</span>
+          </span>
+        )}
+      </p>
+      {panel !== null && (
+        <section className="plate tree-panel" aria-label={PANEL_TITLES[panel]}>
+          <div className="plate-body">
+            {panel === 'hold' && (
+              <ReasonForm
+                isOpenedByKey
+                action={holdAction.bind(null, treeId)}
+                label={`Why ${tag} is held, and what to do`}
+                hint="Everybody sees it on the floor: ‘Crack at the cup. Patch, then ask Ines.’"
+                confirm={`Hold ${tag}`}
+                onDone={done(`${tag} is held.`)}
+              />
+            )}
+            {panel === 'lift' && (
+              <ReasonForm
+                isOpenedByKey
+                action={liftHoldAction.bind(null, treeId)}
+                label="Why the hold is lifted"
+                confirm="Lift the hold"
+                onDone={done('The hold is lifted.')}
+              />
+            )}
+            {panel === 'move' && <MoveForm treeId={treeId} places={places} placeId={placeId} onDone={done('Moved.')} />}
+            {panel === 'scrap' && (
+              <ReasonForm
+                isOpenedByKey
+                isHeldKey
+                action={scrapAction.bind(null, treeId)}
+                label={`Why ${tag} is scrapped`}
+                hint="It leaves the floor for good. Its log stays to be read; its tag is not used again."
+                confirm={`Hold to scrap ${tag}`}
+                onDone={done(`${tag} is scrapped.`)}
+              />
+            )}
+          </div>
+        </section>
+      )}
+    </>
+  )
+}
+
+const PANEL_TITLES: Record<Panel, string> = { hold: 'Hold', lift: 'Lift the hold', move: 'Move', scrap: 'Scrap' }
+
+function MoveForm({
+  treeId,
+  places,
+  placeId,
+  onDone,
+}: {
+  treeId: string
+  places: { id: string; name: string }[]
+  placeId: string
+  onDone: () => void
+}) {
+  const form = useKeptForm(moveAction.bind(null, treeId), onDone)
+  const box = useRef<HTMLDivElement>(null)
+  useEffect(() => {
+    box.current?.scrollIntoView({ block: 'center' })
+    box.current?.querySelector('select')?.focus({ preventScroll: true })
+  }, [])
+  return (
+    <div ref={box}>
+      <form {...form.formProps} className="reason-form">
+        <SelectField
+          name="placeId"
+          label="Where it hangs from now on"
+          defaultValue=""
+          error={form.errorOf('placeId')}
+          hint="The drying clock counts the air of the new place from now."
+        >
+          <option value="" disabled>
+            Choose a place
+          </option>
+          {places
+            .filter((place) => place.id !== placeId)
+            .map((place) => (
+              <option key={place.id} value={place.id}>
+                {place.name}
+              </option>
+            ))}
+        </SelectField>
+        <Key type="submit" tone="ink" isOff={form.isPending}>
+          Move it
+        </Key>
+      </form>
+      <FormMessage state={form.state} />
+    </div>
+  )
+}

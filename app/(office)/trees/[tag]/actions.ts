@@ -1,0 +1,100 @@
+'use server'
+
+import { revalidatePath } from 'next/cache'
+import { z } from 'zod'
+import { holdTree, liftHold } from '@/lib/commands/hold-tree'
+import { lookOver } from '@/lib/commands/look-over'
+import { moveTree } from '@/lib/commands/move-tree'
+import { passIntake } from '@/lib/commands/pass-intake'
+import { withdrawRelease } from '@/lib/commands/release-trees'
+import { scrapTree } from '@/lib/commands/scrap-tree'
+import { systemClock } from '@/lib/core/clock'
+import { requireMember, type Member } from '@/lib/server/auth'
+import { answerForm, type FormState } from '@/lib/server/form-state'
+import { fieldErrors } from '@/lib/trees/tree-form-values'
+import { intakeInput, reasonInput } from '@/lib/trees/tree-input'
+
+const treeIdInput = z.uuid()
+
+/** Parses, runs one command, and reads every office page anew: a hold shows on the tree, in the list and on Burnout. */
+async function treeForm<Input>(
+  treeId: string,
+  parsed: z.ZodSafeParseResult<Input>,
+  run: (treeId: string, input: Input) => Promise<string>,
+): Promise<FormState> {
+  if (!parsed.success) return { status: 'invalid', fields: fieldErrors(parsed.error) }
+  return answerForm(async () => {
+    const text = await run(treeIdInput.parse(treeId), parsed.data)
+    revalidatePath('/', 'layout')
+    return { status: 'done', text }
+  })
+}
+
+const by = (member: Member) => ({ member, clock: systemClock })
+const reasonForm = z.object({ reason: reasonInput })
+const readReason = (form: FormData) => reasonForm.safeParse({ reason: form.get('reason') ?? '' })
+
+export async function holdAction(treeId: string, _previous: FormState, form: FormData): Promise<FormState> {
+  const member = await requireMember('hold')
+  return treeForm(treeId, readReason(form), async (id, { reason }) => {
+    await holdTree(id, reason, by(member))
+    return 'Held.'
+  })
+}
+
+export async function liftHoldAction(treeId: string, _previous: FormState, form: FormData): Promise<FormState> {
+  const member = await requireMember('lift hold')
+  return treeForm(treeId, readReason(form), async (id, { reason }) => {
+    await liftHold(id, reason, by(member))
+    return 'Hold lifted.'
+  })
+}
+
+export async function scrapAction(treeId: string, _previous: FormState, form: FormData): Promise<FormState> {
+  const member = await requireMember('trees')
+  return treeForm(treeId, readReason(form), async (id, { reason }) => {
+    await scrapTree(id, reason, by(member))
+    return 'Scrapped.'
+  })
+}
+
+export async function withdrawReleaseAction(treeId: string, _previous: FormState, form: FormData): Promise<FormState> {
+  const member = await requireMember('release')
+  return treeForm(treeId, readReason(form), async (id, { reason }) => {
+    await withdrawRelease(id, reason, by(member))
+    return 'Release taken back.'
+  })
+}
+
+export async function moveAction(treeId: string, _previous: FormState, form: FormData): Promise<FormState> {
+  const member = await requireMember('move')
+  const parsed = z.object({ placeId: z.uuid('Choose where it hangs now.') }).safeParse({ placeId: form.get('placeId') })
+  return treeForm(treeId, parsed, async (id, { placeId }) => {
+    await moveTree(id, placeId, by(member))
+    return 'Moved.'
+  })
+}
+
+export async function lookOverAction(treeId: string, _previous: FormState, form: FormData): Promise<FormState> {
+  const member = await requireMember('look over')
+  const parsed = z.object({ note: z.string().trim().max(300, 'A note has at most 300 letters.') }).safeParse({ note: form.get('note') ?? '' })
+  return treeForm(treeId, parsed, async (id, { note }) => {
+    await lookOver(id, note, by(member))
+    return 'Looked over.'
+  })
+}
+
+export async function intakeAction(treeId: string, _previous: FormState, form: FormData): Promise<FormState> {
+  const member = await requireMember('intake')
+  const isTicked = (name: string) => form.get(name) === 'on'
+  const parsed = intakeInput.safeParse({
+    waxSurface: form.get('waxSurface'),
+    isWaxAtRoomTemp: isTicked('isWaxAtRoomTemp'),
+    isCupFirm: isTicked('isCupFirm'),
+    areVentsAndCorePinsIn: isTicked('areVentsAndCorePinsIn'),
+  })
+  return treeForm(treeId, parsed, async (id, intake) => {
+    const isPassed = await passIntake(id, intake, by(member))
+    return isPassed ? 'Intake passed.' : 'Kept. Intake stays open until every line is ticked.'
+  })
+}

@@ -1,0 +1,28 @@
+'use server'
+
+import { revalidatePath } from 'next/cache'
+import { redirect } from 'next/navigation'
+import { editTree } from '@/lib/commands/save-tree'
+import { systemClock } from '@/lib/core/clock'
+import { AppError } from '@/lib/core/errors'
+import { loadTreeDetail } from '@/lib/queries/tree-detail'
+import { requireMember } from '@/lib/server/auth'
+import { answerForm, type FormState } from '@/lib/server/form-state'
+import { fixedFields } from '@/lib/trees/fixed-fields'
+import { fieldErrors, formValuesOf, keepFixed, readTreeForm } from '@/lib/trees/tree-form-values'
+import { treeInput } from '@/lib/trees/tree-input'
+
+/** Saves a tree and goes back to its page. */
+export async function editTreeAction(tag: string, _previous: FormState, form: FormData): Promise<FormState> {
+  const member = await requireMember('trees')
+  return answerForm(async () => {
+    const detail = await loadTreeDetail({ tag: String(tag), viewer: member, clock: systemClock })
+    if (detail === null) throw new AppError('not_found', 'There is no such tree.')
+    const values = keepFixed(readTreeForm(form), formValuesOf(detail), fixedFields(detail.tree.coatsOn))
+    const parsed = treeInput.safeParse(values)
+    if (!parsed.success) return { status: 'invalid', fields: fieldErrors(parsed.error) }
+    await editTree(detail.tree.id, parsed.data, { member, clock: systemClock })
+    revalidatePath('/', 'layout')
+    redirect(`/trees/${encodeURIComponent(detail.tree.tag)}`)
+  })
+}

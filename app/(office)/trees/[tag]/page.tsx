@@ -1,0 +1,405 @@
+import type { Metadata } from 'next'
+import Link from 'next/link'
+import { notFound } from 'next/navigation'
+import type { ReactNode } from 'react'
+import { Icon } from '@/app/_components/icons'
+import { LiveClock } from '@/app/_components/live-clock'
+import { Plate } from '@/app/_components/plate'
+import { StateGlyph } from '@/app/_components/state-mark'
+import { Tag } from '@/app/_components/tag'
+import { TimePair } from '@/app/_components/time-pair'
+import { Caution } from '@/app/(office)/_components/caution'
+import { NOT_CALIBRATED } from '@/app/(office)/_components/due-words'
+import { KeepFresh } from '@/app/(office)/_components/keep-fresh'
+import { TreeSection } from '@/app/(office)/_components/tree-section'
+import { WarningList } from '@/app/(office)/_components/warning-list'
+import { liftHoldAction, withdrawReleaseAction } from '@/app/(office)/trees/[tag]/actions'
+import { BigSection } from '@/app/(office)/trees/[tag]/_components/big-section'
+import { CoatLog } from '@/app/(office)/trees/[tag]/_components/coat-log'
+import { DryingCharts } from '@/app/(office)/trees/[tag]/_components/drying-charts'
+import { History } from '@/app/(office)/trees/[tag]/_components/history'
+import { IntakeForm } from '@/app/(office)/trees/[tag]/_components/intake-form'
+import { LookKeys } from '@/app/(office)/trees/[tag]/_components/look-keys'
+import { LookOverForm } from '@/app/(office)/trees/[tag]/_components/look-over-form'
+import { PhonePair } from '@/app/(office)/trees/[tag]/_components/phone-pair'
+import { ReasonForm } from '@/app/(office)/trees/[tag]/_components/reason-form'
+import { TakeBack } from '@/app/(office)/trees/[tag]/_components/take-back'
+import { TreeActs } from '@/app/(office)/trees/[tag]/_components/tree-acts'
+import { pourSentence, pourVerdict } from '@/lib/burnout/pour-verdict'
+import { systemClock } from '@/lib/core/clock'
+import { stateTone } from '@/lib/format/state-words'
+import { formatDate, formatDay, formatMoment } from '@/lib/format/local-time'
+import { formatSeconds, formatShare } from '@/lib/format/units'
+import { may } from '@/lib/members/roles'
+import { loadFoundry } from '@/lib/queries/load-foundry'
+import { loadTreeDetail } from '@/lib/queries/tree-detail'
+import { loadTreeForm } from '@/lib/queries/tree-form'
+import { requireMemberPage } from '@/lib/server/auth'
+import { readTag } from '@/lib/trees/read-tag'
+import { nextDipWords, treeVerdict } from '@/lib/trees/tree-verdict'
+
+/** Said elsewhere on this page: in the verdict, the pour's line, the hold and the intake. */
+const SAID_ELSEWHERE = new Set(['still wet', 'held', 'pour at risk', 'intake open'])
+
+export async function generateMetadata({ params }: PageProps<'/trees/[tag]'>): Promise<Metadata> {
+  return { title: readTag((await params).tag) ?? 'Tree' }
+}
+
+export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
+  const tag = readTag((await params).tag)
+  if (tag === null) notFound()
+  const member = await requireMemberPage('see', `/trees/${encodeURIComponent(tag)}`)
+  const now = systemClock.now()
+  const [detail, { timeZone, shiftHours }, { places }] = await Promise.all([
+    loadTreeDetail({ tag, viewer: { id: member.id, role: member.role }, clock: systemClock }),
+    loadFoundry(),
+    loadTreeForm(),
+  ])
+  if (detail === null) notFound()
+
+  const { tree, recipe, coats, curve, intake, holds, lookOvers, release } = detail
+  const moment = { now, timeZone }
+  const verdict = treeVerdict(tree, now)
+  const pour = pourVerdict(tree, { now, timeZone, shiftHours })
+  const hasLeft = tree.state === 'released' || tree.state === 'scrapped'
+  const isDryNow = tree.dry?.safeAt != null && tree.dry.safeAt <= now
+  const isCoatOpen = tree.newestCoat !== null && !hasLeft && tree.state !== 'ready for burnout'
+  const openHold = holds.find((hold) => hold.liftedAt === null) ?? null
+  const canDo = (act: Parameters<typeof may>[1]) => may(member.role, act)
+  const mayLook = isCoatOpen && canDo('look')
+  const newestRow = coats.find((coat) => coat.isNewest)
+  const targetPct = Math.round((1 - tree.openTarget) * 100)
+  const isLookedOver = lookOvers.some((look) => look.coatNumber === tree.newestCoat?.number)
+  const isReleasable = tree.state === 'ready for burnout' || (tree.state === 'dried out' && isLookedOver)
+  const said = tree.look === null ? null : `${tree.look.by}, ${formatMoment(tree.look.at, now, timeZone)}: ${tree.look.verdict}.`
+  const isDue = ['dip now', 'waiting', 'overdue', 'wax ready'].includes(tree.state)
+
+  const stateWords = (
+    <b className={`state state-${stateTone(tree.state)}`}>
+      <StateGlyph state={tree.state} />
+      <span>{verdict.headline}</span>
+    </b>
+  )
+  const pairLine =
+    verdict.pairLead !== null && tree.dry !== null ? (
+      <>
+        {verdict.pairLead} <TimePair pair={tree.dry} now={now} timeZone={timeZone} guard={tree.state === 'last coat on' ? 'safe' : tree.guard} />
+        {isDryNow ? ', by the clock' : ''}
+        {tree.isUncalibrated && <span className="text-soot"> ({NOT_CALIBRATED})</span>}.{' '}
+      </>
+    ) : null
+  const outlook =
+    tree.driedOut !== null || pour !== null ? (
+      <p className="outlook">
+        {tree.driedOut !== null && tree.next !== null && (
+          <>
+            Dried out <TimePair pair={tree.driedOut} now={now} timeZone={timeZone} />
+            {tree.isUncalibrated && <span> ({NOT_CALIBRATED})</span>}
+            {pour === null || tree.pourDate === null ? '.' : ': '}
+          </>
+        )}
+        {pour !== null && tree.pourDate !== null && (
+          <span className={pour === 'will miss' || pour === 'passed' ? 'text-furnace-ink' : pour === 'tight' ? 'text-ochre-ink' : ''}>
+            {pour !== 'holds' && pour !== 'not in sight' && <Icon name="warning" />} {sentence(pourSentence(pour, tree.pourDate), tree)}.
+          </span>
+        )}
+      </p>
+    ) : null
+  const takeBack = detail.takeBack !== null && newestRow !== undefined && (
+    <TakeBack takeBack={detail.takeBack} coatNumber={newestRow.number} now={now} />
+  )
+
+  return (
+    <article className="tree-page">
+      <KeepFresh />
+      <div className="phone-head">
+        <Link href="/trees" aria-label="Back to the trees">
+          <Icon name="back" />
+        </Link>
+        <Tag tag={tag} size="l" isHeld={tree.state === 'held'} ground="bone" />
+        <LiveClock className="ml-auto text-18" serverNow={now} timeZone={timeZone} />
+      </div>
+      <div className="phone-section">
+        <TreeSection tree={tree} height={80} width={358} />
+      </div>
+      <header className="tree-head">
+        <span className="tree-head-tag">
+          <Tag tag={tag} size="xl" isHeld={tree.state === 'held'} ground="bone" />
+        </span>
+        <div className="min-w-0 grow">
+          <h1>{tree.title}</h1>
+          <p>
+            {[
+              `Recipe ${recipe.name}`,
+              `treed ${formatDate(detail.createdAt, timeZone)}${detail.createdBy === null ? '' : ` by ${detail.createdBy}`}`,
+              `${detail.waxMassKg}\u00A0kg wax`,
+              tree.place.name,
+              tree.pourDate === null ? 'no pour date' : `pour ${formatDay(tree.pourDate)}`,
+            ].join(' · ')}
+          </p>
+        </div>
+        <TreeActs
+          treeId={tree.id}
+          tag={tag}
+          isHeld={openHold !== null}
+          may={{
+            hold: canDo('hold') && !hasLeft,
+            lift: canDo('lift hold'),
+            move: canDo('move') && !hasLeft,
+            edit: canDo('trees') && !hasLeft,
+            scrap: canDo('trees') && !hasLeft,
+            release: canDo('release') && isReleasable && openHold === null,
+            dip: canDo('dip') && !hasLeft,
+          }}
+          nextDip={tree.next === null ? null : { number: tree.next.number, isDue }}
+          places={places}
+          placeId={tree.place.id}
+        />
+      </header>
+
+      <section className="plate verdict" aria-label="How it stands">
+        <div className="verdict-say">
+          <p className="verdict-line">
+            {stateWords}
+            <span className="verdict-words">
+              {pairLine}
+              {verdict.next}
+            </span>
+          </p>
+          {mayLook && (
+            <div className="only-desk">
+              <LookKeys treeId={tree.id} said={said} />
+            </div>
+          )}
+        </div>
+        {openHold !== null && (
+          <p className="held-line">
+            <b>{openHold.reason}</b> Held by {openHold.by}, {formatMoment(openHold.at, now, timeZone)}.
+          </p>
+        )}
+        {/* The one large pair of a phone; the sentence above says it on a desk. */}
+        {verdict.pairLead !== null && tree.dry !== null && (
+          <PhonePair lead={verdict.pairLead} pair={tree.dry} note={tree.isUncalibrated ? NOT_CALIBRATED : null} now={now} timeZone={timeZone} />
+        )}
+        {tree.next !== null && !hasLeft && (
+          <div className="phone-next">
+            <p className="label">{isDue ? 'Now' : 'Then'}</p>
+            <p className="phone-next-dip">{nextDipWords(tree.next)}</p>
+            <p>
+              Drain {formatSeconds(tree.next.drainSeconds)}. Back to {tree.place.name}.
+            </p>
+          </div>
+        )}
+        {mayLook && (
+          <div className="only-phone-block">
+            <LookKeys treeId={tree.id} said={said} size={56} />
+          </div>
+        )}
+        <WarningList warnings={tree.warnings.filter((warning) => !SAID_ELSEWHERE.has(warning.code))} />
+        <BigSection detail={detail} {...moment} />
+        <div className="verdict-foot">
+          {outlook}
+          {takeBack}
+        </div>
+      </section>
+
+      {!hasLeft && intake.passedAt === null && (
+        <Plate title="Intake" line="before coat 1, passed as a whole" className="mt-5">
+          {canDo('intake') ? <IntakeForm treeId={tree.id} intake={intake} /> : <IntakeLines intake={intake} />}
+        </Plate>
+      )}
+
+      {release !== null && (
+        <Plate title="Released" className="mt-5">
+          <p>
+            Released by {release.by}, {formatMoment(release.at, now, timeZone)}
+            {release.confirmedBy === null ? '' : `, confirmed dry by ${release.confirmedBy}`}.
+          </p>
+          {canDo('release') && tree.state === 'released' && (
+            <details className="fold-inside">
+              <summary>Take the release back</summary>
+              <ReasonForm action={withdrawReleaseAction.bind(null, tree.id)} label="Why it comes back" confirm="Take it back" />
+            </details>
+          )}
+        </Plate>
+      )}
+
+      <section className="plate mt-5">
+        <header>
+          <h2>Coat log</h2>
+          <p>
+            newest first; dip at {tree.openTarget >= 0.95 ? 10 : targetPct} % of the coat’s water or less, the last coat dries out to 5 %
+          </p>
+        </header>
+        {coats.length === 0 ? <p className="px-4 py-3 text-soot">The recipe has no coat.</p> : <CoatLog coats={coats} {...moment} />}
+      </section>
+
+      <div className="tree-columns">
+        <div className="tree-column">
+          {newestRow !== undefined && !hasLeft && (
+            <Plate
+              title={isCoatOpen ? `Coat ${newestRow.number} drying` : `Coat ${newestRow.number}`}
+              line={recipe.isCalibrated ? 'water left in the coat, %' : `water left in the coat, %; ${NOT_CALIBRATED}`}
+            >
+              {curve === null || curve.points.length === 0 ? (
+                <p className="text-soot">No curve: no reading of the air reaches this coat.</p>
+              ) : (
+                <DryingCharts
+                  curve={curve}
+                  climate={detail.climate}
+                  coatNumber={newestRow.number}
+                  isLastCoat={tree.next === null}
+                  now={now}
+                  timeZone={timeZone}
+                />
+              )}
+            </Plate>
+          )}
+          <Plate title="About the tree">
+            <About detail={detail} timeZone={timeZone} now={now} />
+          </Plate>
+        </div>
+        <div className="tree-column">
+          <section className="plate" id="look-over">
+            <header>
+              <h2>Look-overs</h2>
+              <p>{lookOvers.length === 0 ? 'none yet' : lookOvers.length}</p>
+            </header>
+            {lookOvers.length > 0 && (
+              <ul className="notes">
+                {lookOvers
+                  .toSorted((left, right) => right.at - left.at)
+                  .map((look) => (
+                    <li key={look.id}>
+                      <Icon name="check" className="text-verdigris-ink" />
+                      <div>
+                        <b>{look.note === '' ? 'Nothing to note' : look.note}</b>
+                        <span>
+                          Looked over at coat {look.coatNumber}. {look.by}, {formatMoment(look.at, now, timeZone)}.
+                        </span>
+                      </div>
+                    </li>
+                  ))}
+              </ul>
+            )}
+            {!hasLeft && tree.next !== null && <p className="plate-body text-soot">Looked over when the last coat is on. A fault before that is a reason to hold.</p>}
+            {!hasLeft && tree.next === null && tree.newestCoat !== null && canDo('look over') && (
+              <div className="plate-body grid gap-3">
+                <LookOverForm
+                  treeId={tree.id}
+                  isDue={tree.state === 'dried out'}
+                  warning={
+                    tree.state === 'dried out' || tree.state === 'ready for burnout' || tree.state === 'held'
+                      ? null
+                      : 'Not dried out yet by the clock: what is wet hides cracks. Look again when it is dry.'
+                  }
+                />
+                <Caution about="dust" />
+              </div>
+            )}
+          </section>
+          <section className="plate">
+            <header>
+              <h2>Holds</h2>
+              <p>{holds.length === 0 ? 'none' : openHold === null ? `${holds.length}, lifted` : 'held now'}</p>
+            </header>
+            {holds.length > 0 && (
+              <ul className="notes">
+                {holds
+                  .toSorted((left, right) => right.at - left.at)
+                  .map((hold) => (
+                    <li key={hold.id}>
+                      <Icon name="hold" className={hold.liftedAt === null ? 'text-furnace-ink' : 'text-soot'} />
+                      <div>
+                        <b>{hold.reason}</b>
+                        <span>
+                          Held by {hold.by}, {formatMoment(hold.at, now, timeZone)}.
+                          {hold.liftedAt !== null &&
+                            ` Lifted by ${hold.liftedBy ?? 'somebody'}, ${formatMoment(hold.liftedAt, now, timeZone)}: ${hold.liftReason ?? ''}`}
+                        </span>
+                      </div>
+                    </li>
+                  ))}
+              </ul>
+            )}
+            {openHold !== null && (
+              <div className="plate-body">
+                {canDo('lift hold') ? (
+                  <ReasonForm action={liftHoldAction.bind(null, tree.id)} label="Why the hold is lifted" confirm="Lift the hold" />
+                ) : (
+                  <p className="text-soot">A supervisor lifts holds.</p>
+                )}
+              </div>
+            )}
+          </section>
+          <section className="plate">
+            <header>
+              <h2>History</h2>
+            </header>
+            <History history={detail.history} {...moment} />
+          </section>
+        </div>
+      </div>
+    </article>
+  )
+}
+
+function sentence(words: string, tree: { driedOut: unknown; next: unknown }): string {
+  // After the pair the verdict is the second half of a sentence; alone it begins one.
+  return tree.driedOut !== null && tree.next !== null ? words : words.charAt(0).toUpperCase() + words.slice(1)
+}
+
+type Detail = NonNullable<Awaited<ReturnType<typeof loadTreeDetail>>>
+
+function IntakeLines({ intake }: { intake: Detail['intake'] }) {
+  const lines = [
+    [intake.waxSurface !== null, intake.waxSurface === 'etched' ? 'Wax etched' : 'Wax washed'],
+    [intake.isWaxAtRoomTemp, 'At room temperature'],
+    [intake.isCupFirm, 'Cup and handle firm'],
+    [intake.areVentsAndCorePinsIn, 'Vents and core pins in'],
+  ] as const
+  return (
+    <ul className="grid gap-2">
+      {lines.map(([isDone, word]) => (
+        <li key={word} className="flex gap-2">
+          <Icon name={isDone ? 'check' : 'minus'} className={isDone ? 'text-verdigris-ink' : 'text-soot'} />
+          {word}: {isDone ? 'yes' : 'open'}
+        </li>
+      ))}
+      <li className="text-soot">A supervisor passes the intake.</li>
+    </ul>
+  )
+}
+
+function About({ detail, now, timeZone }: { detail: Detail; now: number; timeZone: string }) {
+  const { intake } = detail
+  const facts: [string, ReactNode][] = [
+    ...detail.pieces.map((piece, index): [string, ReactNode] => [
+      detail.pieces.length === 1 ? 'Piece' : `Piece ${index + 1}`,
+      `${piece.workTitle}${piece.sectionName === '' ? '' : `, ${piece.sectionName}`}, edition ${piece.editionNumber}${piece.isRecast ? ', recast' : ''}`,
+    ]),
+    ['Recipe', `${detail.recipe.name}, version ${detail.recipe.version}${detail.recipe.isCalibrated ? '' : `, ${NOT_CALIBRATED}`}`],
+    ['Wax', `${detail.waxMassKg} kg`],
+    ['Cup', `${detail.cupKind}, ${detail.cupVolumeL} L`],
+    ['Deepest recess', detail.recessClass],
+    ['Spacing', detail.spacing],
+    ...(detail.hungMassKg === null ? [] : [['Weight as hung', `${detail.hungMassKg} kg`] as [string, ReactNode]]),
+    [
+      'Intake',
+      intake.passedAt === null
+        ? 'open'
+        : `passed by ${intake.passedBy ?? 'somebody'}, ${formatMoment(intake.passedAt, now, timeZone)}; wax ${intake.waxSurface ?? 'not said'}`,
+    ],
+    ['Water in the newest coat', detail.tree.moistureRatio === null ? 'none' : `${formatShare(detail.tree.moistureRatio)} left by the clock`],
+  ]
+  return (
+    <dl className="facts">
+      {facts.map(([term, words]) => (
+        <div key={term}>
+          <dt>{term}</dt>
+          <dd>{words}</dd>
+        </div>
+      ))}
+    </dl>
+  )
+}

@@ -1,0 +1,53 @@
+'use client'
+
+import Link from 'next/link'
+import { usePathname } from 'next/navigation'
+import { signOut } from 'next-auth/react'
+import { Key } from '@/app/_components/key'
+import { LiveClock } from '@/app/_components/live-clock'
+import { ThemeKey } from '@/app/_components/theme-switch'
+import { Wordmark } from '@/app/_components/wordmark'
+
+const TABS = [
+  { href: '/floor', word: 'Floor' },
+  { href: '/trees', word: 'Trees' },
+  { href: '/burnout', word: 'Burnout' },
+] as const
+
+export type OfficeBarProps = {
+  foundryName: string
+  timeZone: string
+  member: { name: string; role: string }
+  /** Server time at which the page was made, epoch ms. */
+  serverNow: number
+}
+
+/** Frame of the office pages: the tabs, whose page it is, the time, and the way out. */
+export function OfficeBar({ foundryName, timeZone, member, serverNow }: OfficeBarProps) {
+  const path = usePathname()
+  return (
+    <div className="office-bar">
+      <Link className="flex items-center" href="/floor" aria-label="Kilnward, to the floor">
+        <Wordmark height={36} />
+      </Link>
+      <nav aria-label="Pages">
+        {TABS.map(({ href, word }) => (
+          <Link key={href} href={href} prefetch={false} aria-current={path === href || path.startsWith(`${href}/`) ? 'page' : undefined}>
+            {word}
+          </Link>
+        ))}
+      </nav>
+      <div className="who">
+        <span>{foundryName}</span>
+        <Link className="underline underline-offset-4" href="/me" prefetch={false}>
+          <b className="text-ink">{member.name}</b>, {member.role}
+        </Link>
+        <LiveClock className="text-20 text-ink" serverNow={serverNow} timeZone={timeZone} />
+        <ThemeKey />
+        <Key tone="quiet" className="px-3" onPress={() => void signOut({ callbackUrl: '/sign-in' })}>
+          Sign out
+        </Key>
+      </div>
+    </div>
+  )
+}

@@ -1,0 +1,158 @@
+import type { Config } from 'tailwindcss'
+import plugin from 'tailwindcss/plugin'
+
+/** Colours by role. `-ink` is for words of a role, `-wash` for grounds, the bare name for shapes and keys. */
+const light = {
+  bone: '#F4EFE6',
+  paper: '#FFFDF8',
+  sunk: '#E9E1D2',
+  ink: '#1F1B16',
+  soot: '#4F4840',
+  rule: '#D3C7B3',
+  edge: '#8A7E6C',
+  'on-ink': '#FFFDF8',
+  wax: '#8E2F22',
+  'wax-ink': '#8E2F22',
+  wet: '#2F5D73',
+  'wet-ink': '#274F63',
+  'wet-wash': '#D5DFE1',
+  'wet-line': '#B9CACF',
+  ochre: '#B7791F',
+  'ochre-ink': '#6F460A',
+  'ochre-wash': '#F1E2C4',
+  verdigris: '#1B5C4E',
+  'verdigris-ink': '#1B5C4E',
+  'verdigris-wash': '#D9E7E0',
+  furnace: '#B83510',
+  'furnace-ink': '#942708',
+  'furnace-wash': '#F6DDD2',
+  graphite: '#3D3A37',
+  'graphite-wash': '#DAD5CC',
+  // The drawn shell.
+  shell: '#DCCDB2',
+  grain: '#5F5343',
+  slurry: '#1F1B16',
+  ghost: '#8A7E6C',
+  'ss-wet': '#2F5D73',
+  'ss-near': '#B7791F',
+  'ss-hatch': '#FFFDF8',
+  'ss-hatch-near': '#FFFDF8',
+  // The strip across the top of the wall tablet is dark in both schemes.
+  strip: '#1F1B16',
+  'strip-text': '#F4EFE6',
+  'strip-rule': '#4F4840',
+  'strip-ochre': '#F0C06A',
+  'strip-verdigris': '#86D6BE',
+  'strip-furnace': '#FF9C77',
+} as const
+
+type Role = keyof typeof light
+
+const dark: Record<Role, string> = {
+  bone: '#1A1714',
+  paper: '#25201B',
+  sunk: '#12100E',
+  ink: '#F1E9DB',
+  soot: '#C4B8A7',
+  rule: '#463E35',
+  edge: '#857867',
+  'on-ink': '#1A1714',
+  wax: '#B5503F',
+  'wax-ink': '#E8A093',
+  wet: '#6FA9C4',
+  'wet-ink': '#92C4DA',
+  'wet-wash': '#233740',
+  'wet-line': '#34505C',
+  ochre: '#E3AE52',
+  'ochre-ink': '#EBBB69',
+  'ochre-wash': '#3D301A',
+  verdigris: '#74CBB1',
+  'verdigris-ink': '#86D6BE',
+  'verdigris-wash': '#1E3A33',
+  furnace: '#FF8A5F',
+  'furnace-ink': '#FF9C77',
+  'furnace-wash': '#47241A',
+  graphite: '#B3ADA5',
+  'graphite-wash': '#36322E',
+  shell: '#C2B191',
+  grain: '#4A4034',
+  slurry: '#0E0C0A',
+  ghost: '#8E8272',
+  'ss-wet': '#2B5F7A',
+  'ss-near': '#8A5A10',
+  'ss-hatch': '#CFE3EC',
+  'ss-hatch-near': '#F6D9A0',
+  strip: '#0E0C0A',
+  'strip-text': '#F1E9DB',
+  'strip-rule': '#463E35',
+  'strip-ochre': '#F0C06A',
+  'strip-verdigris': '#86D6BE',
+  'strip-furnace': '#FF9C77',
+}
+
+const asVariables = (scheme: Record<Role, string>): Record<string, string> =>
+  Object.fromEntries(Object.entries(scheme).map(([role, colour]) => [`--${role}`, colour]))
+
+export default {
+  content: ['./app/**/*.{ts,tsx}'],
+  theme: {
+    colors: {
+      transparent: 'transparent',
+      current: 'currentColor',
+      ...Object.fromEntries(Object.keys(light).map((role) => [role, `var(--${role})`])),
+    },
+    fontFamily: {
+      text: ['var(--font-text)', 'system-ui', 'sans-serif'],
+      tag: ['var(--font-tag)', '"Arial Narrow"', 'sans-serif'],
+    },
+    fontSize: {
+      13: ['13px', '1.35'],
+      14: ['14px', '1.4'],
+      15: ['15px', '1.4'],
+      16: ['16px', '1.4'],
+      17: ['17px', '1.4'],
+      18: ['18px', '1.35'],
+      20: ['20px', '1.25'],
+      22: ['22px', '1.2'],
+      24: ['24px', '1.15'],
+      26: ['26px', '1.1'],
+      28: ['28px', '1.1'],
+      32: ['32px', '1.05'],
+      36: ['36px', '1.05'],
+      44: ['44px', '1.05'],
+      64: ['64px', '1'],
+    },
+    spacing: {
+      0: '0px',
+      px: '1px',
+      1: '4px',
+      2: '8px',
+      3: '12px',
+      4: '16px',
+      5: '20px',
+      6: '24px',
+      8: '32px',
+      10: '40px',
+      12: '48px',
+      full: '100%',
+    },
+    borderRadius: { none: '0px', DEFAULT: '3px', lg: '6px', full: '9999px' },
+    borderWidth: { 0: '0px', DEFAULT: '1.5px', plate: '3px', now: '6px' },
+    screens: { tablet: '700px', desk: '1101px', wide: '1400px' },
+    extend: {
+      transitionTimingFunction: { sheet: 'cubic-bezier(.2,.7,.2,1)' },
+      transitionDuration: { press: '70ms', sheet: '160ms', settle: '320ms', hold: '900ms' },
+    },
+  },
+  plugins: [
+    plugin((api) => {
+      api.addBase({
+        ':root': { colorScheme: 'light', ...asVariables(light) },
+        '[data-theme="dark"]': { colorScheme: 'dark', ...asVariables(dark) },
+        '@media (prefers-color-scheme: dark)': { '[data-theme="auto"]': { colorScheme: 'dark', ...asVariables(dark) } },
+        // Paper is white and toner is black, whatever the screen shows.
+        '@media print': { '[data-theme]': { colorScheme: 'light', ...asVariables(light), '--bone': '#FFFFFF', '--paper': '#FFFFFF' } },
+      })
+    }),
+  ],
+} satisfies Config
