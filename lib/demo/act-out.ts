@@ -11,7 +11,7 @@ import { scrapTree } from '@/lib/commands/scrap-tree'
 import { newId } from '@/lib/core/ids'
 import type { Happening } from '@/lib/demo/happenings'
 import type { TaggedTree } from '@/lib/demo/plan'
-import type { DemoShop } from '@/lib/demo/shop'
+import type { DemoShop } from '@/lib/demo/open-shop'
 
 /** Has people do what happened, through the same commands as on a real floor, each at its own moment. */
 export async function actOut(list: readonly Happening[], shop: DemoShop): Promise<void> {

@@ -56,7 +56,9 @@ const shapesOf = (tree: CastTree): Shape[] =>
 /** An instant with people at work, some time before another one. */
 function workBefore(at: number, [fewest, most]: readonly [number, number], { hours, random, startsAt }: PlanParts): number {
   const wanted = at - fewest - random() * (most - fewest)
-  const found = lastAtWork(hours, wanted, 10 * MINUTE) ?? startsAt
+  const atWork = lastAtWork(hours, wanted, 10 * MINUTE) ?? startsAt
+  // Not all at closing time.
+  const found = atWork < wanted ? atWork - random() * 100 * MINUTE : atWork
   return Math.floor(Math.max(startsAt, found) / 1000) * 1000
 }
 

@@ -44,7 +44,7 @@ function pourDateOf(planned: PlannedTree, now: number): string | null {
   if (tree.pour === undefined) return null
   if (tree.pour === 'will miss') return firstPourDay(now + 20 * millisecondsInHour)
   if (leftAt !== null) return firstPourDay(leftAt + 12 * millisecondsInHour)
-  const slow = planned.recessClass === 'none' ? 1 : planned.recessClass === 'deep recess' ? 1.7 : 3.2
+  const slow = planned.recessClass === 'none' ? 1 : planned.recessClass === 'deep recess' ? 1.4 : 2
   const days = 5 + slow * 1.3 * (recipeOf(tree).length - coats.length)
   return firstPourDay(now + days * millisecondsInDay)
 }

@@ -9,7 +9,7 @@ import { demoReadings } from '@/lib/demo/drying-room'
 import { happenings } from '@/lib/demo/happenings'
 import { DEMO_PEOPLE, DEMO_SIGN_INS, type DemoPersonKey, type DemoSignIn } from '@/lib/demo/people'
 import { planDemo, type DemoPlan } from '@/lib/demo/plan'
-import { openShop, type DemoShop } from '@/lib/demo/shop'
+import { openShop, type DemoShop } from '@/lib/demo/open-shop'
 import { hashPassword } from '@/lib/server/password'
 import { Foundry, inTransaction } from '@/models'
 
