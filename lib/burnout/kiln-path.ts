@@ -9,21 +9,32 @@ const DAY_MS = 86_400_000
 /** Beyond this the paving says nothing that the tables do not say better. */
 const MOST_DAYS = 9
 const MOST_SHELLS = 14
-const LABEL_WIDTH = 196
+/** Room for a tag and a pair of times, and for the verdict behind them. */
+const LABEL_WIDTH = 226
+const VERDICT_WIDTH = 76
 const LEVELS = 4
+/** Shells nearer than this stand as one: a run that was dipped together dries together. */
+const SHOULDER = 16
 
 export type PathDay = { day: string; x: number; width: number; isOpen: boolean }
-export type PathShell = {
-  tree: QueueTree
+/** One or more shells at one spot of the way. The times are the latest of them, the verdict the gravest. */
+export type PathStand = {
+  trees: QueueTree[]
   likelyX: number
   safeX: number
   likelyAt: number
   safeAt: number
   verdict: PourVerdict | null
-  /** Height of the label, 0 lowest. */
-  level: number
+  /** The label's left edge, and its height, 0 lowest; null where no room is left for one. */
+  label: { x: number; width: number; level: number } | null
 }
-export type KilnPath = { days: PathDay[]; shells: PathShell[]; width: number; isMoreLater: number }
+export type KilnPath = { days: PathDay[]; stands: PathStand[]; width: number; moreCount: number }
+
+const GRAVITY: readonly (PourVerdict | null)[] = ['passed', 'will miss', 'tight', 'not in sight', 'holds', null]
+
+function graver(left: PourVerdict | null, right: PourVerdict | null): PourVerdict | null {
+  return GRAVITY.indexOf(left) <= GRAVITY.indexOf(right) ? left : right
+}
 
 /**
  * The way of drying trees to the kiln door: paving by day, each shell at the moment it is safe.
@@ -68,18 +79,38 @@ export function kilnPath(trees: readonly QueueTree[], context: PourContext, widt
     return span.x + (span.width * (Math.min(at, span.to) - span.from)) / (span.to - span.from)
   }
 
-  const busyUntil = Array.from({ length: LEVELS }, () => Number.NEGATIVE_INFINITY)
-  const shells = drawn.map((shell): PathShell => {
-    const safeX = xAt(shell.safeAt)
-    const free = busyUntil.findIndex((until) => until <= safeX)
-    const level = free === -1 ? busyUntil.indexOf(Math.min(...busyUntil)) : free
-    busyUntil[level] = safeX + LABEL_WIDTH
-    return { ...shell, safeX, likelyX: xAt(shell.likelyAt), verdict: pourVerdict(shell.tree, context), level }
-  })
+  const stands: Omit<PathStand, 'label'>[] = []
+  for (const { tree, likelyAt, safeAt } of drawn) {
+    const [safeX, likelyX] = [xAt(safeAt), xAt(likelyAt)]
+    const verdict = pourVerdict(tree, context)
+    const near = stands.at(-1)
+    if (near && safeX - near.safeX < SHOULDER) {
+      near.trees.push(tree)
+      if (likelyAt > near.likelyAt) Object.assign(near, { likelyAt, likelyX })
+      near.safeAt = safeAt
+      near.verdict = graver(near.verdict, verdict)
+    } else {
+      stands.push({ trees: [tree], likelyX, safeX, likelyAt, safeAt, verdict })
+    }
+  }
   return {
     days: spans.map(({ day, x: left, width: wide, isOpen }) => ({ day, x: left, width: wide, isOpen })),
-    shells,
+    stands: labelled(stands, x),
     width: x,
-    isMoreLater: all.length - drawn.length,
+    moreCount: all.length - drawn.length,
   }
+}
+
+/** Gives each stand the lowest label that covers no other; those at the door hang theirs to the left. */
+function labelled(stands: readonly Omit<PathStand, 'label'>[], width: number): PathStand[] {
+  const taken: { from: number; to: number }[][] = Array.from({ length: LEVELS }, () => [])
+  return stands.map((stand) => {
+    const wide = LABEL_WIDTH + (stand.verdict === null || stand.verdict === 'holds' ? 0 : VERDICT_WIDTH)
+    const from = Math.max(0, stand.safeX + wide > width ? stand.safeX - wide + 24 : stand.safeX - 6)
+    const to = from + wide
+    const level = taken.findIndex((labels) => labels.every((label) => to <= label.from || from >= label.to))
+    if (level === -1) return { ...stand, label: null }
+    taken[level]?.push({ from, to })
+    return { ...stand, label: { x: from, width: wide, level } }
+  })
 }

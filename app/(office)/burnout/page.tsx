@@ -100,14 +100,14 @@ export default async function BurnoutPage() {
             <GroupPlate title="Dried out, look over" line="what stands between each and its release" heads={['Dry since', 'Missing', 'Pour', '']}>
               {groups.driedOut.map((tree) => (
                 <GroupRow key={tree.id} tree={tree}>
-                  <td>{tree.stateSince === null ? '' : formatMoment(tree.stateSince, now, timeZone)}</td>
-                  <td className="min-w-[180px]">{missingWords(blockingChecks(checks[tree.id] ?? []).map((check) => check.text))}</td>
-                  <td>
+                  <Cell label="Dry since">{tree.stateSince === null ? '' : formatMoment(tree.stateSince, now, timeZone)}</Cell>
+                  <Cell label="Missing">{missingWords(blockingChecks(checks[tree.id] ?? []).map((check) => check.text))}</Cell>
+                  <Cell label="Pour">
                     <PourWords pourDate={tree.pourDate} verdict={pourVerdict(tree, context)} />
-                  </td>
-                  <td className="right">
+                  </Cell>
+                  <Cell label="">
                     <KeyLink href={`/trees/${encodeURIComponent(tree.tag)}#look-over`}>{may(member.role, 'look over') ? 'Look over' : 'See it'}</KeyLink>
-                  </td>
+                  </Cell>
                 </GroupRow>
               ))}
             </GroupPlate>
@@ -117,12 +117,12 @@ export default async function BurnoutPage() {
             <GroupPlate title="Last coat on" line="drying out, against the pour" heads={['Dried out', 'Pour']}>
               {groups.lastCoatOn.map((tree) => (
                 <GroupRow key={tree.id} tree={tree}>
-                  <td>
+                  <Cell label="Dried out">
                     <DriedOut tree={tree} pair={tree.dry} context={context} />
-                  </td>
-                  <td>
+                  </Cell>
+                  <Cell label="Pour">
                     <PourWords pourDate={tree.pourDate} verdict={pourVerdict(tree, context)} />
-                  </td>
+                  </Cell>
                 </GroupRow>
               ))}
             </GroupPlate>
@@ -132,15 +132,15 @@ export default async function BurnoutPage() {
             <GroupPlate title="Still being dipped" line="with a pour date; played forward coat by coat" heads={['Now', 'Dried out', 'Pour']}>
               {groups.stillDipped.map((tree) => (
                 <GroupRow key={tree.id} tree={tree}>
-                  <td>
+                  <Cell label="">
                     <StateMark state={tree.state} since={tree.stateSince} now={now} />
-                  </td>
-                  <td>
+                  </Cell>
+                  <Cell label="Dried out">
                     <DriedOut tree={tree} pair={tree.driedOut} context={context} />
-                  </td>
-                  <td>
+                  </Cell>
+                  <Cell label="Pour">
                     <PourWords pourDate={tree.pourDate} verdict={pourVerdict(tree, context)} />
-                  </td>
+                  </Cell>
                 </GroupRow>
               ))}
             </GroupPlate>
@@ -266,35 +266,49 @@ function GroupPlate({ title, line, heads, children }: { title: string; line: str
         <p>{line}</p>
       </header>
       <div className="scroll-x">
-        <table className="table burnout-table">
-          <thead>
-            <tr>
+        <table className="table burnout-table" role="table">
+          <thead role="rowgroup">
+            <tr role="row">
               {['Tree', 'Piece', 'Shell', ...heads].map((head) => (
-                <th key={head} scope="col">
+                <th key={head} role="columnheader" scope="col">
                   {head === '' ? <span className="vh">Keys</span> : head}
                 </th>
               ))}
             </tr>
           </thead>
-          <tbody>{children}</tbody>
+          <tbody role="rowgroup">{children}</tbody>
         </table>
       </div>
     </section>
   )
 }
 
+/** A cell that on a phone, without the table's head, says itself what it is. */
+function Cell({ label, children }: { label: string; children: ReactNode }) {
+  return (
+    <td role="cell">
+      {label !== '' && (
+        <span className="cell-label" aria-hidden="true">
+          {label}:{' '}
+        </span>
+      )}
+      {children}
+    </td>
+  )
+}
+
 function GroupRow({ tree, children }: { tree: QueueTree; children: ReactNode }) {
   return (
-    <tr id={tree.tag}>
-      <td>
+    <tr id={tree.tag} role="row">
+      <td role="cell" className="c-tag">
         <Tag tag={tree.tag} height={fittedTagHeight(tree.tag, 32)} isLink />
       </td>
-      <th scope="row">
+      <th role="rowheader" scope="row" className="c-piece">
         <Link href={`/trees/${encodeURIComponent(tree.tag)}`} prefetch={false}>
           {tree.title}
         </Link>
       </th>
-      <td>
+      <td role="cell" className="c-shell">
         <TreeSection tree={tree} height={20} fit={110} isDecoration />
         <span className="block whitespace-nowrap text-14 text-soot">{coatsOnWords(tree)}</span>
       </td>

@@ -45,33 +45,33 @@ export function ReleasePlate({ rows, mayRelease, now }: { rows: ReleaseRow[]; ma
   return (
     <form {...form.formProps}>
       <div className="scroll-x">
-        <table className="table burnout-table">
-          <thead>
-            <tr>
+        <table className="table burnout-table" role="table">
+          <thead role="rowgroup">
+            <tr role="row">
               {mayRelease && (
-                <th scope="col">
+                <th role="columnheader" scope="col">
                   <span className="vh">Release</span>
                 </th>
               )}
-              <th scope="col">Tree</th>
-              <th scope="col">Piece</th>
-              <th scope="col">Shell</th>
+              <th role="columnheader" scope="col">Tree</th>
+              <th role="columnheader" scope="col">Piece</th>
+              <th role="columnheader" scope="col">Shell</th>
               {CHECK_HEADS.map(({ code, head }) => (
-                <th key={code} scope="col" className="narrow">
+                <th key={code} role="columnheader" scope="col" className="narrow">
                   {head}
                 </th>
               ))}
-              <th scope="col">Pour</th>
+              <th role="columnheader" scope="col">Pour</th>
             </tr>
           </thead>
-          <tbody>
+          <tbody role="rowgroup">
             {rows.map(({ tree, checks, verdict }) => {
               const confirmation = checks.find((check) => check.code === 'confirmation')
               return (
                 <Fragment key={tree.id}>
-                  <tr id={tree.tag}>
+                  <tr id={tree.tag} role="row">
                     {mayRelease && (
-                      <td>
+                      <td role="cell" className="c-tick">
                         <label className="tick">
                           <input
                             type="checkbox"
@@ -84,29 +84,32 @@ export function ReleasePlate({ rows, mayRelease, now }: { rows: ReleaseRow[]; ma
                         </label>
                       </td>
                     )}
-                    <td>
+                    <td role="cell" className="c-tag">
                       <Tag tag={tree.tag} height={fittedTagHeight(tree.tag, 32)} isLink />
                     </td>
-                    <th scope="row">
+                    <th role="rowheader" scope="row" className="c-piece">
                       <Link href={`/trees/${encodeURIComponent(tree.tag)}`} prefetch={false}>
                         {tree.title}
                       </Link>
                     </th>
-                    <td>
+                    <td role="cell" className="c-shell">
                       <TreeSection tree={tree} height={20} fit={110} isDecoration />
                       <StateMark className="text-14" state={tree.state} since={tree.stateSince} now={now} words={confirmation ? 'Confirm it dry' : undefined} />
                     </td>
-                    {CHECK_HEADS.map(({ code }) => (
-                      <CheckCell key={code} check={checks.find((check) => check.code === code)} />
+                    {CHECK_HEADS.map(({ code, head }) => (
+                      <CheckCell key={code} head={head} check={checks.find((check) => check.code === code)} />
                     ))}
-                    <td>
+                    <td role="cell">
+                      <span className="cell-label" aria-hidden="true">
+                        Pour:{' '}
+                      </span>
                       <PourWords pourDate={tree.pourDate} verdict={verdict} />
                     </td>
                   </tr>
                   {confirmation !== undefined && needsConfirmation(checks) && (
-                    <tr className="confirm-row">
-                      {mayRelease && <td />}
-                      <td colSpan={8}>
+                    <tr className="confirm-row" role="row">
+                      {mayRelease && <td role="cell" />}
+                      <td role="cell" colSpan={8}>
                         <span className="flex flex-wrap items-center gap-x-4 gap-y-2">
                           <span className="flex gap-2 font-semibold text-ochre-ink">
                             <Icon name="warning" />
@@ -137,7 +140,7 @@ export function ReleasePlate({ rows, mayRelease, now }: { rows: ReleaseRow[]; ma
         </table>
       </div>
       {mayRelease && (
-        <div className="plate-body grid gap-2">
+        <div className="release-foot">
           <HoldKey size={56} tone="go" className="w-full" isOff={key.isOff || form.isPending} againWords="Press again to release" onConfirm={form.submit}>
             {key.text}
           </HoldKey>
@@ -148,11 +151,15 @@ export function ReleasePlate({ rows, mayRelease, now }: { rows: ReleaseRow[]; ma
   )
 }
 
-function CheckCell({ check }: { check: ReleaseCheck | undefined }) {
-  if (check === undefined) return <td className="narrow">–</td>
+function CheckCell({ head, check }: { head: string; check: ReleaseCheck | undefined }) {
   return (
-    <td className="narrow">
-      {check.isMet ? (
+    <td role="cell" className="narrow">
+      <span className="cell-label" aria-hidden="true">
+        {head}{' '}
+      </span>
+      {check === undefined ? (
+        '–'
+      ) : check.isMet ? (
         <>
           <Icon name="check" className="text-verdigris-ink" />
           <span className="vh">{check.text}</span>

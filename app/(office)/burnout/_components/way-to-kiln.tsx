@@ -1,4 +1,4 @@
-import { kilnPath, type PathShell } from '@/lib/burnout/kiln-path'
+import { kilnPath, type PathStand } from '@/lib/burnout/kiln-path'
 import type { PourContext } from '@/lib/burnout/pour-verdict'
 import { localDay } from '@/lib/schedule/shifts'
 import { formatDay } from '@/lib/format/local-time'
@@ -6,12 +6,14 @@ import { timePairWords } from '@/lib/format/time-pair'
 import type { QueueTree } from '@/lib/queue/contract'
 
 const WIDTH = 1384
-const LEFT = 36
-const DOOR = 150
-const PAVING_TOP = 246
+const LEFT = 28
+const DOOR = 116
+const MORE = 150
+const PAVING_TOP = 268
 const PAVING = 36
-const LEVEL_STEP = 52
-const LOWEST_LABEL = 166
+const DOOR_TOP = PAVING_TOP + PAVING - 182
+const LEVEL_STEP = 54
+const LOWEST_LABEL = 184
 
 const VERDICT_INK = {
   holds: 'var(--verdigris-ink)',
@@ -26,11 +28,15 @@ const VERDICT_INK = {
  * likely. The tables below say the same in rows, so a phone goes without.
  */
 export function WayToKiln({ trees, context }: { trees: readonly QueueTree[]; context: PourContext }) {
-  const path = kilnPath(trees, context, WIDTH - LEFT - DOOR - 170)
-  if (path.shells.length === 0) return null
+  const room = WIDTH - LEFT - DOOR
+  const whole = kilnPath(trees, context, room)
+  const path = whole.moreCount === 0 ? whole : kilnPath(trees, context, room - MORE)
+  if (path.stands.length === 0) return null
   const today = localDay(context.now, context.timeZone)
   const end = LEFT + path.width
-  const height = PAVING_TOP + PAVING + 4
+  const highest = Math.max(...path.stands.map((stand) => stand.label?.level ?? 0))
+  // The door is the least height; labels may stand higher.
+  const top = Math.min(DOOR_TOP, LOWEST_LABEL - highest * LEVEL_STEP - 24)
   return (
     <section className="plate way">
       <header>
@@ -50,7 +56,7 @@ export function WayToKiln({ trees, context }: { trees: readonly QueueTree[]; con
           between the two
         </p>
       </header>
-      <svg className="way-drawing" viewBox={`0 0 ${WIDTH} ${height}`} role="group" aria-label="Trees on the way to the kiln, in the order in which they are safe">
+      <svg className="way-drawing" viewBox={`0 ${top} ${WIDTH} ${PAVING_TOP + PAVING + 4 - top}`} role="group" aria-label="Trees on the way to the kiln, in the order in which they are safe">
         <defs>
           <pattern id="way-closed" width="9" height="9" patternUnits="userSpaceOnUse">
             <path d="M0 9L9 0" stroke="var(--edge)" strokeWidth="1.2" />
@@ -77,13 +83,13 @@ export function WayToKiln({ trees, context }: { trees: readonly QueueTree[]; con
             </text>
           </g>
         </g>
-        {path.shells.map((shell) => (
-          <Shell key={shell.tree.id} shell={shell} context={context} />
+        {path.stands.map((stand) => (
+          <Stand key={stand.trees[0]?.id} stand={stand} context={context} />
         ))}
-        {path.isMoreLater > 0 && (
-          <text x={end + DOOR - 20} y={PAVING_TOP - 20} className="way-more">
-            {path.isMoreLater} more in
-            <tspan x={end + DOOR - 20} dy="20">
+        {path.moreCount > 0 && (
+          <text x={end + DOOR + 12} y={PAVING_TOP - 4} className="way-more">
+            {path.moreCount} more in
+            <tspan x={end + DOOR + 12} dy="20">
               the lists below
             </tspan>
           </text>
@@ -93,19 +99,33 @@ export function WayToKiln({ trees, context }: { trees: readonly QueueTree[]; con
   )
 }
 
-function Shell({ shell, context }: { shell: PathShell; context: PourContext }) {
-  const { tree, verdict } = shell
-  const x = LEFT + shell.safeX
-  const likelyX = LEFT + shell.likelyX
-  const labelY = LOWEST_LABEL - shell.level * LEVEL_STEP
-  const { text } = timePairWords(shell, context.now, context.timeZone)
-  const title = tree.title.length > 22 ? `${tree.title.slice(0, 21)}…` : tree.title
-  const share = tree.coats.length === 0 ? 1 : tree.coatsOn / tree.coats.length
+const TAG_GAP = 6
+const tagWidth = (tag: string) => tag.length * 10.4 + 24
+
+/** Shells at one spot: the drawn shell of the first, and the tags of all as far as they fit. */
+function Stand({ stand, context }: { stand: PathStand; context: PourContext }) {
+  const { trees, verdict, label } = stand
+  const [first] = trees
+  if (first === undefined) return null
+  const x = LEFT + stand.safeX
+  const likelyX = LEFT + stand.likelyX
+  const { text } = timePairWords(stand, context.now, context.timeZone)
+  const share = first.coats.length === 0 ? 1 : first.coatsOn / first.coats.length
   const size = 0.7 + 0.3 * share
-  const tagWidth = tree.tag.length * 10.4 + 24
+  const names = trees.map((tree) => `${tree.tag}, ${tree.title}`).join('; ')
+  const shown = trees.slice(0, 2)
+  const labelY = label === null ? 0 : LOWEST_LABEL - label.level * LEVEL_STEP
+  let tagX = 0
+  const tags = shown.map((tree) => {
+    const left = tagX
+    tagX += tagWidth(tree.tag) + TAG_GAP
+    return { tag: tree.tag, left }
+  })
+  const beside =
+    trees.length === 1 ? (first.title.length > 20 ? `${first.title.slice(0, 19)}…` : first.title) : trees.length > 2 ? `and ${trees.length - 2} more` : ''
   return (
-    <g role="img" aria-label={`${tree.tag}, ${tree.title}: dried out ${text}${verdict === null ? '' : `, pour ${verdict}`}`}>
-      <path d={`M${x} ${labelY + 22}V${PAVING_TOP - 54 * size}`} stroke="var(--ink)" strokeWidth="1.5" />
+    <g role="img" aria-label={`${names}: dried out ${text}${verdict === null ? '' : `, pour ${verdict}`}`}>
+      {label !== null && <path d={`M${x} ${labelY + 30}V${PAVING_TOP - 54 * size}`} stroke="var(--ink)" strokeWidth="1.5" />}
       <path d={`M${likelyX} ${PAVING_TOP}H${x}`} stroke="var(--ink)" strokeWidth="5" />
       <path d={`M${likelyX - 6} ${PAVING_TOP - 12}h12l-6 10z`} fill="var(--paper)" stroke="var(--ink)" strokeWidth="1.8" />
       <g transform={`translate(${x} ${PAVING_TOP - 2})`}>
@@ -116,28 +136,33 @@ function Shell({ shell, context }: { shell: PathShell; context: PourContext }) {
         </g>
       </g>
       <path d={`M${x - 7} ${PAVING_TOP + 13}h14l-7-12z`} fill="var(--ink)" />
-      <g transform={`translate(${x - 6} ${labelY - 14})`}>
-        <rect x="-4" y="-8" width={LABEL_WIDTH} height="44" fill="var(--paper)" />
-        <path d={`M6-6H${tagWidth}V16H6L0 10V0Z`} fill="var(--ink)" />
-        <circle cx="7" cy="5" r="2.4" fill="var(--paper)" />
-        <text x="15" y="12" className="way-tag">
-          {tree.tag}
-        </text>
-        <text x={tagWidth + 8} y="11" className="way-piece">
-          {title}
-        </text>
-        <text x="0" y="32" className="way-time">
-          {text}
-          {verdict !== null && verdict !== 'holds' && (
-            <tspan dx="6" fill={VERDICT_INK[verdict]} fontWeight="600">
-              {verdict}
-            </tspan>
-          )}
-        </text>
-      </g>
+      {label !== null && (
+        <g transform={`translate(${LEFT + label.x} ${labelY - 12})`}>
+          <rect x="-4" y="-6" width={label.width - 6} height="48" fill="var(--paper)" />
+          {tags.map(({ tag, left }) => (
+            <g key={tag} transform={`translate(${left} 0)`}>
+              <path d={`M6-4H${tagWidth(tag)}V18H6L0 12V2Z`} fill="var(--ink)" />
+              <circle cx="7" cy="7" r="2.4" fill="var(--paper)" />
+              <text x="15" y="14" className="way-tag">
+                {tag}
+              </text>
+            </g>
+          ))}
+          <text x={tagX + 2} y="13" className="way-piece">
+            {beside}
+          </text>
+          <text x="0" y="35" className="way-time">
+            {text}
+            {verdict !== null && verdict !== 'holds' && (
+              <tspan dx="10" style={{ fill: VERDICT_INK[verdict], fontWeight: 600 }}>
+                {verdict}
+              </tspan>
+            )}
+          </text>
+        </g>
+      )}
     </g>
   )
 }
 
-const LABEL_WIDTH = 190
 const EGG = 'M-6-11C-21-15-20-51 0-53C20-51 21-15 6-11L10 0H-10Z'

@@ -73,6 +73,7 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
   const isLookedOver = lookOvers.some((look) => look.coatNumber === tree.newestCoat?.number)
   const isReleasable = tree.state === 'ready for burnout' || (tree.state === 'dried out' && isLookedOver)
   const said = tree.look === null ? null : `${tree.look.by}, ${formatMoment(tree.look.at, now, timeZone)}: ${tree.look.verdict}.`
+  const isCoatDrying = tree.moistureRatio !== null && ['wet', 'drying', 'nearly dry', 'last coat on'].includes(tree.state)
   const isDue = ['dip now', 'waiting', 'overdue', 'wax ready'].includes(tree.state)
 
   const stateWords = (
@@ -129,7 +130,7 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
         </span>
         <div className="min-w-0 grow">
           <h1>{tree.title}</h1>
-          <p>
+          <p className="tree-facts">
             {[
               `Recipe ${recipe.name}`,
               `treed ${formatDate(detail.createdAt, timeZone)}${detail.createdBy === null ? '' : ` by ${detail.createdBy}`}`,
@@ -162,6 +163,7 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
         <div className="verdict-say">
           <p className="verdict-line">
             {stateWords}
+            {isCoatDrying && <span className="only-phone">{formatShare(tree.moistureRatio)} of its water left</span>}
             <span className="verdict-words">
               {pairLine}
               {verdict.next}
@@ -250,6 +252,7 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
                   climate={detail.climate}
                   coatNumber={newestRow.number}
                   isLastCoat={tree.next === null}
+                  moistureRatio={tree.moistureRatio}
                   now={now}
                   timeZone={timeZone}
                 />
@@ -380,6 +383,9 @@ function About({ detail, now, timeZone }: { detail: Detail; now: number; timeZon
       `${piece.workTitle}${piece.sectionName === '' ? '' : `, ${piece.sectionName}`}, edition ${piece.editionNumber}${piece.isRecast ? ', recast' : ''}`,
     ]),
     ['Recipe', `${detail.recipe.name}, version ${detail.recipe.version}${detail.recipe.isCalibrated ? '' : `, ${NOT_CALIBRATED}`}`],
+    ['Treed', `${formatDate(detail.createdAt, timeZone)}${detail.createdBy === null ? '' : ` by ${detail.createdBy}`}`],
+    ['Place', detail.tree.place.name],
+    ['Pour date', detail.tree.pourDate === null ? 'none set' : formatDay(detail.tree.pourDate)],
     ['Wax', `${detail.waxMassKg} kg`],
     ['Cup', `${detail.cupKind}, ${detail.cupVolumeL} L`],
     ['Deepest recess', detail.recessClass],
@@ -391,7 +397,6 @@ function About({ detail, now, timeZone }: { detail: Detail; now: number; timeZon
         ? 'open'
         : `passed by ${intake.passedBy ?? 'somebody'}, ${formatMoment(intake.passedAt, now, timeZone)}; wax ${intake.waxSurface ?? 'not said'}`,
     ],
-    ['Water in the newest coat', detail.tree.moistureRatio === null ? 'none' : `${formatShare(detail.tree.moistureRatio)} left by the clock`],
   ]
   return (
     <dl className="facts">

@@ -12,12 +12,15 @@ export type DryingChartsProps = {
   climate: TreeDetail['climate']
   coatNumber: number
   isLastCoat: boolean
+  /** Share of the coat's water left now, as the rest of the page says it. */
+  moistureRatio: number | null
   now: number
   timeZone: string
 }
 
 const GRID = { stroke: 'var(--rule)', strokeWidth: 1, vertical: false } as const
 const TICK = { fill: 'var(--soot)', fontSize: 13, fontFamily: 'var(--font-text), sans-serif' } as const
+const LABEL = { fontSize: 14, fontWeight: 600, fontFamily: 'var(--font-text), sans-serif' } as const
 const MARGIN = { top: 8, right: 12, bottom: 0, left: 0 } as const
 const NOW_LINE = { stroke: 'var(--ink)', strokeWidth: 3 } as const
 const DAY_MS = 86_400_000
@@ -47,7 +50,7 @@ function markerShape(words: string, isSafe: boolean, lift: number, anchor: 'star
 }
 
 /** Water left in the newest coat, and the room's air below it on the same hours. */
-export function DryingCharts({ curve, climate, coatNumber, isLastCoat, now, timeZone }: DryingChartsProps) {
+export function DryingCharts({ curve, climate, coatNumber, isLastCoat, moistureRatio, now, timeZone }: DryingChartsProps) {
   const rows = curveRows(curve.points)
   const from = rows[0]?.at ?? now
   const to = Math.max(rows.at(-1)?.at ?? now, from + 60_000)
@@ -60,11 +63,13 @@ export function DryingCharts({ curve, climate, coatNumber, isLastCoat, now, time
     return span > DAY_MS && clock === '00:00' ? formatDate(at, timeZone).replace(/ \w+$/, '') : clock
   }
   const share = (at: number) => (at - from) / span
-  const current = rows.findLast((row) => row.pastPct !== null)
-  const left = current?.pastPct ?? null
+  const left = moistureRatio === null ? null : moistureRatio * 100
   const pair = { likelyAt: curve.likelyAt, safeAt: curve.safeAt }
   const pairWords = timePairWords(pair, now, timeZone)
   const act = isLastCoat ? 'dried out' : 'dip'
+  const likelyShare = curve.likelyAt === null ? 0 : share(curve.likelyAt)
+  // Clear of the line of now, and inside the frame.
+  const likelyAnchor = likelyShare > 0.82 ? 'end' : likelyShare < 0.3 || Math.abs(likelyShare - share(now)) < 0.16 ? 'start' : 'middle'
   const isInside = (at: number | null): at is number => at !== null && at >= from && at <= to
   const targetWords = `${act} at ${wholeNumber(curve.targetPct)} %`
   const summary = `Drying curve of coat ${coatNumber}: ${left === null ? 'water left not known' : `${wholeNumber(left)} % of the water left now`}; ${targetWords}, ${pairWords.text}.`
@@ -82,7 +87,7 @@ export function DryingCharts({ curve, climate, coatNumber, isLastCoat, now, time
               y={curve.targetPct}
               stroke="var(--verdigris)"
               strokeWidth={2}
-              label={{ value: targetWords, position: 'insideBottomLeft', className: 'chart-target' }}
+              label={{ value: targetWords, position: 'insideBottomLeft', fill: 'var(--verdigris-ink)', ...LABEL }}
             />
             <Line dataKey="pastPct" stroke="var(--ink)" strokeWidth={2.4} dot={false} isAnimationActive={false} type="monotone" />
             <Line dataKey="forecastPct" stroke="var(--ink)" strokeWidth={2} strokeDasharray="6 5" dot={false} isAnimationActive={false} type="monotone" />
@@ -93,8 +98,9 @@ export function DryingCharts({ curve, climate, coatNumber, isLastCoat, now, time
                 label={{
                   value: left === null ? 'now' : `now, ${wholeNumber(left)} % left`,
                   position: share(now) > 0.35 ? 'insideTopRight' : 'insideTopLeft',
-                  className: 'chart-now',
+                  fill: 'var(--ink)',
                   offset: 10,
+                  ...LABEL,
                 }}
               />
             )}
@@ -112,7 +118,7 @@ export function DryingCharts({ curve, climate, coatNumber, isLastCoat, now, time
               <ReferenceDot
                 x={curve.likelyAt}
                 y={curve.targetPct}
-                shape={markerShape(`likely ${formatMoment(curve.likelyAt, now, timeZone)}`, false, 62, share(curve.likelyAt) < 0.3 ? 'start' : share(curve.likelyAt) > 0.6 ? 'end' : 'middle')}
+                shape={markerShape(`likely ${formatMoment(curve.likelyAt, now, timeZone)}`, false, 62, likelyAnchor)}
               />
             )}
             {isInside(curve.safeAt) && (
@@ -230,7 +236,7 @@ function RoomChart({
             x={newest.at}
             y={newest[dataKey]}
             r={0}
-            label={{ value: format(newest[dataKey]), position: isLate ? 'left' : 'right', className: 'chart-now', fill: color, offset: 10 }}
+            label={{ value: format(newest[dataKey]), position: isLate ? 'left' : 'right', fill: color, offset: 10, ...LABEL }}
           />
         </LineChart>
       </ResponsiveContainer>
