@@ -55,7 +55,7 @@ export function kilnPath(trees: readonly QueueTree[], context: PourContext, widt
 
   const openDays = new Set(shiftsFrom(now - DAY_MS, shiftHours, timeZone).map((shift) => localDay(shift.opensAt, timeZone)))
   const plan: { day: string; from: number; to: number; weight: number; isOpen: boolean }[] = []
-  for (let from = now; from <= lastAt && plan.length <= MOST_DAYS; ) {
+  for (let from = now; from <= lastAt && plan.length <= MOST_DAYS;) {
     const day = localDay(from, timeZone)
     const start = startOfLocalDay(day, timeZone)
     // Noon is in every day, also in those of 23 and 25 hours.

@@ -40,10 +40,13 @@ export default async function BurnoutPage() {
   const [trees, { timeZone, shiftHours }] = await Promise.all([loadTreeList({ clock: systemClock }), loadFoundry()])
   const context: PourContext = { now: systemClock.now(), timeZone, shiftHours }
   const finished = trees.filter((tree) => tree.state === 'ready for burnout' || tree.state === 'dried out')
-  const checks = finished.length === 0 ? {} : await loadReleaseChecks(
-    finished.map((tree) => tree.id),
-    { clock: systemClock },
-  )
+  const checks =
+    finished.length === 0
+      ? {}
+      : await loadReleaseChecks(
+          finished.map((tree) => tree.id),
+          { clock: systemClock },
+        )
   const groups = groupForBurnout(trees, checks)
   const stands = inTheWay(groups, context)
   const mayRelease = may(member.role, 'release')
@@ -97,7 +100,11 @@ export default async function BurnoutPage() {
           </section>
 
           {groups.driedOut.length > 0 && (
-            <GroupPlate title="Dried out, look over" line="what stands between each and its release" heads={['Dry since', 'Missing', 'Pour', '']}>
+            <GroupPlate
+              title="Dried out, look over"
+              line="what stands between each and its release"
+              heads={['Dry since', 'Missing', 'Pour', '']}
+            >
               {groups.driedOut.map((tree) => (
                 <GroupRow key={tree.id} tree={tree}>
                   <Cell label="Dry since">{tree.stateSince === null ? '' : formatMoment(tree.stateSince, now, timeZone)}</Cell>
@@ -106,7 +113,9 @@ export default async function BurnoutPage() {
                     <PourWords pourDate={tree.pourDate} verdict={pourVerdict(tree, context)} />
                   </Cell>
                   <Cell label="">
-                    <KeyLink href={`/trees/${encodeURIComponent(tree.tag)}#look-over`}>{may(member.role, 'look over') ? 'Look over' : 'See it'}</KeyLink>
+                    <KeyLink href={`/trees/${encodeURIComponent(tree.tag)}#look-over`}>
+                      {may(member.role, 'look over') ? 'Look over' : 'See it'}
+                    </KeyLink>
                   </Cell>
                 </GroupRow>
               ))}
@@ -129,7 +138,11 @@ export default async function BurnoutPage() {
           )}
 
           {groups.stillDipped.length > 0 && (
-            <GroupPlate title="Still being dipped" line="with a pour date; played forward coat by coat" heads={['Now', 'Dried out', 'Pour']}>
+            <GroupPlate
+              title="Still being dipped"
+              line="with a pour date; played forward coat by coat"
+              heads={['Now', 'Dried out', 'Pour']}
+            >
               {groups.stillDipped.map((tree) => (
                 <GroupRow key={tree.id} tree={tree}>
                   <Cell label="">
@@ -188,7 +201,9 @@ export default async function BurnoutPage() {
                     <Tag tag={tree.tag} height={fittedTagHeight(tree.tag, 32)} isLink />
                     <div className="min-w-0 grow">
                       <b>{tree.title}</b>
-                      <span className="block">{tree.stateSince === null ? '' : `Released ${formatMoment(tree.stateSince, now, timeZone)}.`}</span>
+                      <span className="block">
+                        {tree.stateSince === null ? '' : `Released ${formatMoment(tree.stateSince, now, timeZone)}.`}
+                      </span>
                       {mayRelease && (
                         <details className="fold-inside">
                           <summary>Take it back</summary>
@@ -249,7 +264,8 @@ function DriedOut({
   pair: { likelyAt: number | null; safeAt: number | null } | null
   context: PourContext
 }) {
-  if (pair === null) return <span className="text-soot">not in sight: {tree.state === 'unknown' ? 'no reading of the air' : 'no forecast'}</span>
+  if (pair === null)
+    return <span className="text-soot">not in sight: {tree.state === 'unknown' ? 'no reading of the air' : 'no forecast'}</span>
   return (
     <>
       <TimePair pair={pair} now={context.now} timeZone={context.timeZone} guard="safe" />

@@ -15,7 +15,15 @@ const drying = (tag: string, likelyHours: number, safeHours: number) =>
 describe('kilnPath', () => {
   it('paves whole local days up to the last safe shell, closed ones narrower', () => {
     const { days, width } = kilnPath([drying('T-1', 100, 140)], CONTEXT, 1200)
-    expect(days.map((day) => day.day)).toEqual(['2026-10-13', '2026-10-14', '2026-10-15', '2026-10-16', '2026-10-17', '2026-10-18', '2026-10-19'])
+    expect(days.map((day) => day.day)).toEqual([
+      '2026-10-13',
+      '2026-10-14',
+      '2026-10-15',
+      '2026-10-16',
+      '2026-10-17',
+      '2026-10-18',
+      '2026-10-19',
+    ])
     expect(days.map((day) => day.isOpen)).toEqual([true, true, true, true, false, false, true])
     expect(days[4]!.width).toBeLessThan(days[1]!.width)
     expect(width).toBeLessThanOrEqual(1200.001)

@@ -53,15 +53,23 @@ export function ReleasePlate({ rows, mayRelease, now }: { rows: ReleaseRow[]; ma
                   <span className="vh">Release</span>
                 </th>
               )}
-              <th role="columnheader" scope="col">Tree</th>
-              <th role="columnheader" scope="col">Piece</th>
-              <th role="columnheader" scope="col">Shell</th>
+              <th role="columnheader" scope="col">
+                Tree
+              </th>
+              <th role="columnheader" scope="col">
+                Piece
+              </th>
+              <th role="columnheader" scope="col">
+                Shell
+              </th>
               {CHECK_HEADS.map(({ code, head }) => (
                 <th key={code} role="columnheader" scope="col" className="narrow">
                   {head}
                 </th>
               ))}
-              <th role="columnheader" scope="col">Pour</th>
+              <th role="columnheader" scope="col">
+                Pour
+              </th>
             </tr>
           </thead>
           <tbody role="rowgroup">
@@ -94,7 +102,13 @@ export function ReleasePlate({ rows, mayRelease, now }: { rows: ReleaseRow[]; ma
                     </th>
                     <td role="cell" className="c-shell">
                       <TreeSection tree={tree} height={20} fit={110} isDecoration />
-                      <StateMark className="text-14" state={tree.state} since={tree.stateSince} now={now} words={confirmation ? 'Confirm it dry' : undefined} />
+                      <StateMark
+                        className="text-14"
+                        state={tree.state}
+                        since={tree.stateSince}
+                        now={now}
+                        words={confirmation ? 'Confirm it dry' : undefined}
+                      />
                     </td>
                     {CHECK_HEADS.map(({ code, head }) => (
                       <CheckCell key={code} head={head} check={checks.find((check) => check.code === code)} />
@@ -121,7 +135,9 @@ export function ReleasePlate({ rows, mayRelease, now }: { rows: ReleaseRow[]; ma
                                 <Key
                                   key={by}
                                   isChosen={confirmations[tree.id] === by}
-                                  onPress={() => setConfirmations({ ...confirmations, [tree.id]: confirmations[tree.id] === by ? null : by })}
+                                  onPress={() =>
+                                    setConfirmations({ ...confirmations, [tree.id]: confirmations[tree.id] === by ? null : by })
+                                  }
                                 >
                                   {CONFIRMED_BY[by]}
                                 </Key>
@@ -141,7 +157,14 @@ export function ReleasePlate({ rows, mayRelease, now }: { rows: ReleaseRow[]; ma
       </div>
       {mayRelease && (
         <div className="release-foot">
-          <HoldKey size={56} tone="go" className="w-full" isOff={key.isOff || form.isPending} againWords="Press again to release" onConfirm={form.submit}>
+          <HoldKey
+            size={56}
+            tone="go"
+            className="w-full"
+            isOff={key.isOff || form.isPending}
+            againWords="Press again to release"
+            onConfirm={form.submit}
+          >
             {key.text}
           </HoldKey>
           <FormMessage state={form.state} />

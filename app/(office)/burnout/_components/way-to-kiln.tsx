@@ -56,7 +56,12 @@ export function WayToKiln({ trees, context }: { trees: readonly QueueTree[]; con
           between the two
         </p>
       </header>
-      <svg className="way-drawing" viewBox={`0 ${top} ${WIDTH} ${PAVING_TOP + PAVING + 4 - top}`} role="group" aria-label="Trees on the way to the kiln, in the order in which they are safe">
+      <svg
+        className="way-drawing"
+        viewBox={`0 ${top} ${WIDTH} ${PAVING_TOP + PAVING + 4 - top}`}
+        role="group"
+        aria-label="Trees on the way to the kiln, in the order in which they are safe"
+      >
         <defs>
           <pattern id="way-closed" width="9" height="9" patternUnits="userSpaceOnUse">
             <path d="M0 9L9 0" stroke="var(--edge)" strokeWidth="1.2" />
@@ -69,7 +74,13 @@ export function WayToKiln({ trees, context }: { trees: readonly QueueTree[]; con
               {!day.isOpen && <rect width={day.width} height={PAVING} fill="url(#way-closed)" />}
               {index > 0 && <path d={`M0 0V${PAVING}`} stroke="var(--ink)" strokeWidth="2" />}
               <text x="8" y="25" className="way-day">
-                {day.width < 40 ? '' : day.day === today ? 'today' : day.width < 100 ? formatDay(day.day).slice(0, 3) : formatDay(day.day).replace(/ \w+$/, '')}
+                {day.width < 40
+                  ? ''
+                  : day.day === today
+                    ? 'today'
+                    : day.width < 100
+                      ? formatDay(day.day).slice(0, 3)
+                      : formatDay(day.day).replace(/ \w+$/, '')}
               </text>
             </g>
           ))}
@@ -86,6 +97,10 @@ export function WayToKiln({ trees, context }: { trees: readonly QueueTree[]; con
         {path.stands.map((stand) => (
           <Stand key={stand.trees[0]?.id} stand={stand} context={context} />
         ))}
+        {/* Labels last: a leader on its way up passes behind them. */}
+        {path.stands.map((stand) => (
+          <StandLabel key={stand.trees[0]?.id} stand={stand} context={context} />
+        ))}
         {path.moreCount > 0 && (
           <text x={end + DOOR + 12} y={PAVING_TOP - 4} className="way-more">
             {path.moreCount} more in
@@ -100,9 +115,11 @@ export function WayToKiln({ trees, context }: { trees: readonly QueueTree[]; con
 }
 
 const TAG_GAP = 6
-const tagWidth = (tag: string) => tag.length * 10.4 + 24
+const tagWidth = (tag: string) => tag.length * 9 + 24
 
-/** Shells at one spot: the drawn shell of the first, and the tags of all as far as they fit. */
+const labelTop = (level: number) => LOWEST_LABEL - level * LEVEL_STEP
+
+/** Shells at one spot: the drawn shell of the first stands for all. */
 function Stand({ stand, context }: { stand: PathStand; context: PourContext }) {
   const { trees, verdict, label } = stand
   const [first] = trees
@@ -113,19 +130,9 @@ function Stand({ stand, context }: { stand: PathStand; context: PourContext }) {
   const share = first.coats.length === 0 ? 1 : first.coatsOn / first.coats.length
   const size = 0.7 + 0.3 * share
   const names = trees.map((tree) => `${tree.tag}, ${tree.title}`).join('; ')
-  const shown = trees.slice(0, 2)
-  const labelY = label === null ? 0 : LOWEST_LABEL - label.level * LEVEL_STEP
-  let tagX = 0
-  const tags = shown.map((tree) => {
-    const left = tagX
-    tagX += tagWidth(tree.tag) + TAG_GAP
-    return { tag: tree.tag, left }
-  })
-  const beside =
-    trees.length === 1 ? (first.title.length > 20 ? `${first.title.slice(0, 19)}…` : first.title) : trees.length > 2 ? `and ${trees.length - 2} more` : ''
   return (
     <g role="img" aria-label={`${names}: dried out ${text}${verdict === null ? '' : `, pour ${verdict}`}`}>
-      {label !== null && <path d={`M${x} ${labelY + 30}V${PAVING_TOP - 54 * size}`} stroke="var(--ink)" strokeWidth="1.5" />}
+      {label !== null && <path d={`M${x} ${labelTop(label.level) + 30}V${PAVING_TOP - 54 * size}`} stroke="var(--ink)" strokeWidth="1.5" />}
       <path d={`M${likelyX} ${PAVING_TOP}H${x}`} stroke="var(--ink)" strokeWidth="5" />
       <path d={`M${likelyX - 6} ${PAVING_TOP - 12}h12l-6 10z`} fill="var(--paper)" stroke="var(--ink)" strokeWidth="1.8" />
       <g transform={`translate(${x} ${PAVING_TOP - 2})`}>
@@ -136,31 +143,46 @@ function Stand({ stand, context }: { stand: PathStand; context: PourContext }) {
         </g>
       </g>
       <path d={`M${x - 7} ${PAVING_TOP + 13}h14l-7-12z`} fill="var(--ink)" />
-      {label !== null && (
-        <g transform={`translate(${LEFT + label.x} ${labelY - 12})`}>
-          <rect x="-4" y="-6" width={label.width - 6} height="48" fill="var(--paper)" />
-          {tags.map(({ tag, left }) => (
-            <g key={tag} transform={`translate(${left} 0)`}>
-              <path d={`M6-4H${tagWidth(tag)}V18H6L0 12V2Z`} fill="var(--ink)" />
-              <circle cx="7" cy="7" r="2.4" fill="var(--paper)" />
-              <text x="15" y="14" className="way-tag">
-                {tag}
-              </text>
-            </g>
-          ))}
-          <text x={tagX + 2} y="13" className="way-piece">
-            {beside}
-          </text>
-          <text x="0" y="35" className="way-time">
-            {text}
-            {verdict !== null && verdict !== 'holds' && (
-              <tspan dx="10" style={{ fill: VERDICT_INK[verdict], fontWeight: 600 }}>
-                {verdict}
-              </tspan>
-            )}
+    </g>
+  )
+}
+
+/** The tags of a stand as far as they fit, its pair and its verdict. Said in words by the stand itself. */
+function StandLabel({ stand, context }: { stand: PathStand; context: PourContext }) {
+  const { trees, verdict, label } = stand
+  const [first] = trees
+  if (first === undefined || label === null) return null
+  let tagX = 0
+  const tags = trees.slice(0, 2).map(({ tag }) => {
+    const left = tagX
+    tagX += tagWidth(tag) + TAG_GAP
+    return { tag, left }
+  })
+  const title = first.title.length > 20 ? `${first.title.slice(0, 19)}…` : first.title
+  const beside = trees.length === 1 ? title : trees.length > 2 ? `and ${trees.length - 2} more` : ''
+  return (
+    <g transform={`translate(${LEFT + label.x} ${labelTop(label.level) - 12})`} aria-hidden="true">
+      <rect x="-4" y="-6" width={label.width - 6} height="44" fill="var(--paper)" />
+      {tags.map(({ tag, left }) => (
+        <g key={tag} transform={`translate(${left} 0)`}>
+          <path d={`M6-4H${tagWidth(tag)}V18H6L0 12V2Z`} fill="var(--ink)" />
+          <circle cx="7" cy="7" r="2.4" fill="var(--paper)" />
+          <text x="15" y="14" className="way-tag">
+            {tag}
           </text>
         </g>
-      )}
+      ))}
+      <text x={tagX + 2} y="13" className="way-piece">
+        {beside}
+      </text>
+      <text x="0" y="35" className="way-time">
+        {timePairWords(stand, context.now, context.timeZone).text}
+        {verdict !== null && verdict !== 'holds' && (
+          <tspan dx="10" style={{ fill: VERDICT_INK[verdict], fontWeight: 600 }}>
+            {verdict}
+          </tspan>
+        )}
+      </text>
     </g>
   )
 }

@@ -68,7 +68,9 @@ export async function moveAction(treeId: string, _previous: FormState, form: For
 
 export async function lookOverAction(treeId: string, _previous: FormState, form: FormData): Promise<FormState> {
   const member = await requireMember('look over')
-  const parsed = z.object({ note: z.string().trim().max(300, 'A note has at most 300 letters.') }).safeParse({ note: form.get('note') ?? '' })
+  const parsed = z
+    .object({ note: z.string().trim().max(300, 'A note has at most 300 letters.') })
+    .safeParse({ note: form.get('note') ?? '' })
   return treeForm(treeId, parsed, async (id, { note }) => {
     await lookOver(id, note, by(member))
     return 'Looked over.'

@@ -85,7 +85,8 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
   const pairLine =
     verdict.pairLead !== null && tree.dry !== null ? (
       <>
-        {verdict.pairLead} <TimePair pair={tree.dry} now={now} timeZone={timeZone} guard={tree.state === 'last coat on' ? 'safe' : tree.guard} />
+        {verdict.pairLead}{' '}
+        <TimePair pair={tree.dry} now={now} timeZone={timeZone} guard={tree.state === 'last coat on' ? 'safe' : tree.guard} />
         {isDryNow ? ', by the clock' : ''}
         {tree.isUncalibrated && <span className="text-soot"> ({NOT_CALIBRATED})</span>}.{' '}
       </>
@@ -182,7 +183,13 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
         )}
         {/* The one large pair of a phone; the sentence above says it on a desk. */}
         {verdict.pairLead !== null && tree.dry !== null && (
-          <PhonePair lead={verdict.pairLead} pair={tree.dry} note={tree.isUncalibrated ? NOT_CALIBRATED : null} now={now} timeZone={timeZone} />
+          <PhonePair
+            lead={verdict.pairLead}
+            pair={tree.dry}
+            note={tree.isUncalibrated ? NOT_CALIBRATED : null}
+            now={now}
+            timeZone={timeZone}
+          />
         )}
         {tree.next !== null && !hasLeft && (
           <div className="phone-next">
@@ -231,7 +238,12 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
         <header>
           <h2>Coat log</h2>
           <p>
-            newest first; dip at {tree.openTarget >= 0.95 ? 10 : targetPct} % of the coat’s water or less, the last coat dries out to 5 %
+            newest first
+            {newestRow !== undefined &&
+              !hasLeft &&
+              (tree.next === null
+                ? `; the last coat is dried out at ${targetPct} % of its water`
+                : `; coat ${newestRow.number} may be dipped over at ${targetPct} % of its water or less`)}
           </p>
         </header>
         {coats.length === 0 ? <p className="px-4 py-3 text-soot">The recipe has no coat.</p> : <CoatLog coats={coats} {...moment} />}
@@ -241,7 +253,7 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
         <div className="tree-column">
           {newestRow !== undefined && !hasLeft && (
             <Plate
-              title={isCoatOpen ? `Coat ${newestRow.number} drying` : `Coat ${newestRow.number}`}
+              title={`Drying of coat ${newestRow.number}`}
               line={recipe.isCalibrated ? 'water left in the coat, %' : `water left in the coat, %; ${NOT_CALIBRATED}`}
             >
               {curve === null || curve.points.length === 0 ? (
@@ -286,7 +298,9 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
                   ))}
               </ul>
             )}
-            {!hasLeft && tree.next !== null && <p className="plate-body text-soot">Looked over when the last coat is on. A fault before that is a reason to hold.</p>}
+            {!hasLeft && tree.next !== null && (
+              <p className="plate-body text-soot">Looked over when the last coat is on. A fault before that is a reason to hold.</p>
+            )}
             {!hasLeft && tree.next === null && tree.newestCoat !== null && canDo('look over') && (
               <div className="plate-body grid gap-3">
                 <LookOverForm

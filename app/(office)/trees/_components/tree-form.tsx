@@ -59,7 +59,12 @@ export function TreeForm({ action, values, choices, fixed, submitWords, cancelPa
             <FixedField label="Tag" value={values.tag} why={fixed.tag} />
           )}
           {fixed.recipeVersionId === undefined ? (
-            <SelectField name="recipeVersionId" label="Recipe" defaultValue={values.recipeVersionId} error={form.errorOf('recipeVersionId')}>
+            <SelectField
+              name="recipeVersionId"
+              label="Recipe"
+              defaultValue={values.recipeVersionId}
+              error={form.errorOf('recipeVersionId')}
+            >
               <option value="" disabled>
                 Choose a recipe
               </option>

@@ -1,6 +1,17 @@
 'use client'
 
-import { Area, CartesianGrid, ComposedChart, Line, LineChart, ReferenceDot, ReferenceLine, ResponsiveContainer, XAxis, YAxis } from 'recharts'
+import {
+  Area,
+  CartesianGrid,
+  ComposedChart,
+  Line,
+  LineChart,
+  ReferenceDot,
+  ReferenceLine,
+  ResponsiveContainer,
+  XAxis,
+  YAxis,
+} from 'recharts'
 import { formatClock, formatDate, formatMoment } from '@/lib/format/local-time'
 import { timePairWords } from '@/lib/format/time-pair'
 import { formatTemperature, wholeNumber } from '@/lib/format/units'
@@ -77,12 +88,31 @@ export function DryingCharts({ curve, climate, coatNumber, isLastCoat, moistureR
   return (
     <figure className="charts">
       <div role="img" aria-label={summary}>
-        <ResponsiveContainer width="100%" height={310}>
+        <ResponsiveContainer width="100%" height={310} initialDimension={{ width: 604, height: 310 }}>
           <ComposedChart data={rows} margin={MARGIN} accessibilityLayer={false}>
             <CartesianGrid {...GRID} />
-            <XAxis dataKey="at" type="number" domain={domain} ticks={ticks} tickFormatter={tickWords} tick={TICK} tickLine={false} stroke="var(--ink)" strokeWidth={1.5} height={24} />
+            <XAxis
+              dataKey="at"
+              type="number"
+              domain={domain}
+              ticks={ticks}
+              tickFormatter={tickWords}
+              tick={TICK}
+              tickLine={false}
+              stroke="var(--ink)"
+              strokeWidth={1.5}
+              height={24}
+            />
             <YAxis domain={[0, 100]} ticks={[0, 25, 50, 75, 100]} tick={TICK} tickLine={false} axisLine={false} width={38} />
-            <Area dataKey="band" stroke="var(--wet)" strokeWidth={1} fill="var(--wet-wash)" fillOpacity={1} isAnimationActive={false} connectNulls={false} />
+            <Area
+              dataKey="band"
+              stroke="var(--wet)"
+              strokeWidth={1}
+              fill="var(--wet-wash)"
+              fillOpacity={1}
+              isAnimationActive={false}
+              connectNulls={false}
+            />
             <ReferenceLine
               y={curve.targetPct}
               stroke="var(--verdigris)"
@@ -90,7 +120,15 @@ export function DryingCharts({ curve, climate, coatNumber, isLastCoat, moistureR
               label={{ value: targetWords, position: 'insideBottomLeft', fill: 'var(--verdigris-ink)', ...LABEL }}
             />
             <Line dataKey="pastPct" stroke="var(--ink)" strokeWidth={2.4} dot={false} isAnimationActive={false} type="monotone" />
-            <Line dataKey="forecastPct" stroke="var(--ink)" strokeWidth={2} strokeDasharray="6 5" dot={false} isAnimationActive={false} type="monotone" />
+            <Line
+              dataKey="forecastPct"
+              stroke="var(--ink)"
+              strokeWidth={2}
+              strokeDasharray="6 5"
+              dot={false}
+              isAnimationActive={false}
+              type="monotone"
+            />
             {now >= from && now <= to && (
               <ReferenceLine
                 x={now}
@@ -125,7 +163,12 @@ export function DryingCharts({ curve, climate, coatNumber, isLastCoat, moistureR
               <ReferenceDot
                 x={curve.safeAt}
                 y={curve.targetPct}
-                shape={markerShape(`safe ${formatMoment(curve.safeAt, now, timeZone)}`, true, 38, share(curve.safeAt) > 0.7 ? 'end' : 'start')}
+                shape={markerShape(
+                  `safe ${formatMoment(curve.safeAt, now, timeZone)}`,
+                  true,
+                  38,
+                  share(curve.safeAt) > 0.7 ? 'end' : 'start',
+                )}
               />
             )}
           </ComposedChart>
@@ -222,18 +265,42 @@ function RoomChart({
   const values = rows.map((row) => row[dataKey])
   const bounds = evenBounds(values, step)
   const newest = rows.at(-1)!
-  const isLate = (newest.at - domain[0]) / (domain[1] - domain[0]) > 0.8
+  const height = foot ? 96 : 74
+  const isLate = (Math.max(newest.at, now) - domain[0]) / (domain[1] - domain[0]) > 0.8
   return (
-    <div role="img" aria-label={`${name}: ${format(Math.min(...values))} to ${format(Math.max(...values))}, newest ${format(newest[dataKey])}.`}>
-      <ResponsiveContainer width="100%" height={foot ? 96 : 74}>
+    <div
+      role="img"
+      aria-label={`${name}: ${format(Math.min(...values))} to ${format(Math.max(...values))}, newest ${format(newest[dataKey])}.`}
+    >
+      <ResponsiveContainer width="100%" height={height} initialDimension={{ width: 604, height }}>
         <LineChart data={rows} margin={MARGIN} accessibilityLayer={false}>
           <CartesianGrid {...GRID} />
-          <XAxis dataKey="at" type="number" domain={domain} hide={!foot} ticks={foot?.ticks} tickFormatter={foot?.tickWords} tick={TICK} tickLine={false} stroke="var(--ink)" strokeWidth={1.5} height={24} />
+          <XAxis
+            dataKey="at"
+            type="number"
+            domain={domain}
+            hide={!foot}
+            ticks={foot?.ticks}
+            tickFormatter={foot?.tickWords}
+            tick={TICK}
+            tickLine={false}
+            stroke="var(--ink)"
+            strokeWidth={1.5}
+            height={24}
+          />
           <YAxis domain={bounds} ticks={bounds} tick={TICK} tickLine={false} axisLine={false} width={38} />
-          <Line dataKey={dataKey} stroke={color} strokeWidth={2.4} strokeDasharray={dash} dot={false} isAnimationActive={false} type="monotone" />
+          <Line
+            dataKey={dataKey}
+            stroke={color}
+            strokeWidth={2.4}
+            strokeDasharray={dash}
+            dot={false}
+            isAnimationActive={false}
+            type="monotone"
+          />
           {now >= domain[0] && now <= domain[1] && <ReferenceLine x={now} {...NOW_LINE} />}
           <ReferenceDot
-            x={newest.at}
+            x={Math.min(Math.max(newest.at, now), domain[1])}
             y={newest[dataKey]}
             r={0}
             label={{ value: format(newest[dataKey]), position: isLate ? 'left' : 'right', fill: color, offset: 10, ...LABEL }}

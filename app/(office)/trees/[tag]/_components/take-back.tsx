@@ -43,7 +43,14 @@ export function TakeBack({ takeBack, coatNumber, now: serverNow, size = 44 }: Ta
       </Key>
       {isOpen && (
         <form className="reason-form" noValidate onSubmit={sendReason}>
-          <Field name="reason" label="Why it is taken back" maxLength={300} error={error} autoComplete="off" hint="The coat stays in the log as taken back." />
+          <Field
+            name="reason"
+            label="Why it is taken back"
+            maxLength={300}
+            error={error}
+            autoComplete="off"
+            hint="The coat stays in the log as taken back."
+          />
           <Key type="submit" tone="ink" size={size} isOff={undo.isPending}>
             Take it back
           </Key>
