@@ -19,7 +19,7 @@ export class BathStir extends Model<InferAttributes<BathStir>, InferCreationAttr
         stirredAt: { type: DataTypes.INTEGER, allowNull: false },
         memberId: { type: DataTypes.TEXT, allowNull: false },
       },
-      { sequelize, tableName: 'bath_stirs', underscored: true, timestamps: false },
+      { sequelize, modelName: 'BathStir', tableName: 'bath_stirs', underscored: true, timestamps: false },
     )
   }
 }

@@ -27,7 +27,7 @@ export class Bath extends Model<InferAttributes<Bath>, InferCreationAttributes<B
         retiredAt: { type: DataTypes.INTEGER },
         createdAt: { type: DataTypes.INTEGER, allowNull: false },
       },
-      { sequelize, tableName: 'baths', underscored: true, timestamps: false },
+      { sequelize, modelName: 'Bath', tableName: 'baths', underscored: true, timestamps: false },
     )
   }
 }

@@ -38,7 +38,7 @@ export class CoatLook extends Model<InferAttributes<CoatLook>, InferCreationAttr
         forecastP50At: { type: DataTypes.INTEGER },
         forecastP90At: { type: DataTypes.INTEGER },
       },
-      { sequelize, tableName: 'coat_looks', underscored: true, timestamps: false },
+      { sequelize, modelName: 'CoatLook', tableName: 'coat_looks', underscored: true, timestamps: false },
     )
   }
 }

@@ -90,7 +90,7 @@ export class Coat extends Model<InferAttributes<Coat>, InferCreationAttributes<C
         withdrawnBy: { type: DataTypes.TEXT },
         withdrawnReason: { type: DataTypes.TEXT },
       },
-      { sequelize, tableName: 'coats', underscored: true, timestamps: false },
+      { sequelize, modelName: 'Coat', tableName: 'coats', underscored: true, timestamps: false },
     )
   }
 }

@@ -40,7 +40,7 @@ export class Delivery extends Model<InferAttributes<Delivery>, InferCreationAttr
         sentAt: { type: DataTypes.INTEGER },
         lastError: { type: DataTypes.TEXT },
       },
-      { sequelize, tableName: 'deliveries', underscored: true, timestamps: false },
+      { sequelize, modelName: 'Delivery', tableName: 'deliveries', underscored: true, timestamps: false },
     )
   }
 }

@@ -38,7 +38,7 @@ export class DoseHour extends Model<InferAttributes<DoseHour>, InferCreationAttr
         meanRelHumidityPct: { type: DataTypes.DOUBLE },
         maxRelHumidityPct: { type: DataTypes.DOUBLE },
       },
-      { sequelize, tableName: 'dose_hours', underscored: true, timestamps: false },
+      { sequelize, modelName: 'DoseHour', tableName: 'dose_hours', underscored: true, timestamps: false },
     )
   }
 }

@@ -16,7 +16,7 @@ export class FanHours extends Model<InferAttributes<FanHours>, InferCreationAttr
         onMinute: { type: DataTypes.INTEGER, primaryKey: true, allowNull: false },
         offMinute: { type: DataTypes.INTEGER, allowNull: false },
       },
-      { sequelize, tableName: 'fan_hours', underscored: true, timestamps: false },
+      { sequelize, modelName: 'FanHours', tableName: 'fan_hours', underscored: true, timestamps: false },
     )
   }
 }

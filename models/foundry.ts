@@ -19,7 +19,7 @@ export class Foundry extends Model<InferAttributes<Foundry>, InferCreationAttrib
         isDemo: { ...flag('isDemo'), defaultValue: false },
         createdAt: { type: DataTypes.INTEGER, allowNull: false },
       },
-      { sequelize, tableName: 'foundry', underscored: true, timestamps: false },
+      { sequelize, modelName: 'Foundry', tableName: 'foundry', underscored: true, timestamps: false },
     )
   }
 }

@@ -36,7 +36,7 @@ export class Hold extends Model<InferAttributes<Hold>, InferCreationAttributes<H
         liftedAt: { type: DataTypes.INTEGER },
         liftReason: { type: DataTypes.TEXT },
       },
-      { sequelize, tableName: 'holds', underscored: true, timestamps: false },
+      { sequelize, modelName: 'Hold', tableName: 'holds', underscored: true, timestamps: false },
     )
   }
 }

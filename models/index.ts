@@ -34,6 +34,7 @@ import { TreePlace } from '@/models/tree-place'
 import { TreeWatch } from '@/models/tree-watch'
 import { Work } from '@/models/work'
 
+// Each names itself: a production build shortens class names, and of two models with one name the later replaces the earlier.
 // Defining a model again replaces it in the shared instance, so a reload under `next dev` is harmless.
 const models = [
   Foundry,

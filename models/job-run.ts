@@ -22,7 +22,7 @@ export class JobRun extends Model<InferAttributes<JobRun>, InferCreationAttribut
         outcome: { type: DataTypes.TEXT },
         detail: { ...json('detail'), defaultValue: {} },
       },
-      { sequelize, tableName: 'job_runs', underscored: true, timestamps: false },
+      { sequelize, modelName: 'JobRun', tableName: 'job_runs', underscored: true, timestamps: false },
     )
   }
 }

@@ -34,7 +34,7 @@ export class LookOver extends Model<InferAttributes<LookOver>, InferCreationAttr
         memberId: { type: DataTypes.TEXT, allowNull: false },
         lookedOverAt: { type: DataTypes.INTEGER, allowNull: false },
       },
-      { sequelize, tableName: 'look_overs', underscored: true, timestamps: false },
+      { sequelize, modelName: 'LookOver', tableName: 'look_overs', underscored: true, timestamps: false },
     )
   }
 }

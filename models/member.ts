@@ -32,7 +32,7 @@ export class Member extends Model<InferAttributes<Member>, InferCreationAttribut
         disabledAt: { type: DataTypes.INTEGER },
         createdAt: { type: DataTypes.INTEGER, allowNull: false },
       },
-      { sequelize, tableName: 'members', underscored: true, timestamps: false },
+      { sequelize, modelName: 'Member', tableName: 'members', underscored: true, timestamps: false },
     )
   }
 }

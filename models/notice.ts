@@ -45,7 +45,7 @@ export class Notice extends Model<InferAttributes<Notice>, InferCreationAttribut
         closedAt: { type: DataTypes.INTEGER },
         closeReason: { type: DataTypes.TEXT },
       },
-      { sequelize, tableName: 'notices', underscored: true, timestamps: false },
+      { sequelize, modelName: 'Notice', tableName: 'notices', underscored: true, timestamps: false },
     )
   }
 }

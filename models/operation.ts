@@ -25,7 +25,7 @@ export class Operation extends Model<InferAttributes<Operation>, InferCreationAt
         response: json('response'),
         createdAt: { type: DataTypes.INTEGER, allowNull: false },
       },
-      { sequelize, tableName: 'operations', underscored: true, timestamps: false },
+      { sequelize, modelName: 'Operation', tableName: 'operations', underscored: true, timestamps: false },
     )
   }
 }

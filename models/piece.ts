@@ -29,7 +29,7 @@ export class Piece extends Model<InferAttributes<Piece>, InferCreationAttributes
         recastOf: { type: DataTypes.TEXT },
         createdAt: { type: DataTypes.INTEGER, allowNull: false },
       },
-      { sequelize, tableName: 'pieces', underscored: true, timestamps: false },
+      { sequelize, modelName: 'Piece', tableName: 'pieces', underscored: true, timestamps: false },
     )
   }
 }

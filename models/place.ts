@@ -33,7 +33,7 @@ export class Place extends Model<InferAttributes<Place>, InferCreationAttributes
         retiredAt: { type: DataTypes.INTEGER },
         createdAt: { type: DataTypes.INTEGER, allowNull: false },
       },
-      { sequelize, tableName: 'places', underscored: true, timestamps: false },
+      { sequelize, modelName: 'Place', tableName: 'places', underscored: true, timestamps: false },
     )
   }
 }

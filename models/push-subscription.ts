@@ -41,7 +41,7 @@ export class PushSubscription extends Model<InferAttributes<PushSubscription>, I
         failingSince: { type: DataTypes.INTEGER },
         lastError: { type: DataTypes.TEXT },
       },
-      { sequelize, tableName: 'push_subscriptions', underscored: true, timestamps: false },
+      { sequelize, modelName: 'PushSubscription', tableName: 'push_subscriptions', underscored: true, timestamps: false },
     )
   }
 }

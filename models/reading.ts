@@ -23,7 +23,7 @@ export class Reading extends Model<InferAttributes<Reading>, InferCreationAttrib
         enteredBy: { type: DataTypes.TEXT },
         receivedAt: { type: DataTypes.INTEGER, allowNull: false },
       },
-      { sequelize, tableName: 'readings', underscored: true, timestamps: false },
+      { sequelize, modelName: 'Reading', tableName: 'readings', underscored: true, timestamps: false },
     )
   }
 }

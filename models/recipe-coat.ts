@@ -38,7 +38,7 @@ export class RecipeCoat extends Model<InferAttributes<RecipeCoat>, InferCreation
         isPrewet: flag('isPrewet'),
         readAloud: { type: DataTypes.TEXT, allowNull: false },
       },
-      { sequelize, tableName: 'recipe_coats', underscored: true, timestamps: false },
+      { sequelize, modelName: 'RecipeCoat', tableName: 'recipe_coats', underscored: true, timestamps: false },
     )
   }
 }

@@ -32,7 +32,7 @@ export class RecipeVersion extends Model<InferAttributes<RecipeVersion>, InferCr
         createdBy: { type: DataTypes.TEXT },
         createdAt: { type: DataTypes.INTEGER, allowNull: false },
       },
-      { sequelize, tableName: 'recipe_versions', underscored: true, timestamps: false },
+      { sequelize, modelName: 'RecipeVersion', tableName: 'recipe_versions', underscored: true, timestamps: false },
     )
   }
 }

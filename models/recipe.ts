@@ -15,7 +15,7 @@ export class Recipe extends Model<InferAttributes<Recipe>, InferCreationAttribut
         name: { type: DataTypes.TEXT, allowNull: false },
         createdAt: { type: DataTypes.INTEGER, allowNull: false },
       },
-      { sequelize, tableName: 'recipes', underscored: true, timestamps: false },
+      { sequelize, modelName: 'Recipe', tableName: 'recipes', underscored: true, timestamps: false },
     )
   }
 }

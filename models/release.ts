@@ -35,7 +35,7 @@ export class Release extends Model<InferAttributes<Release>, InferCreationAttrib
         withdrawnBy: { type: DataTypes.TEXT },
         withdrawnReason: { type: DataTypes.TEXT },
       },
-      { sequelize, tableName: 'releases', underscored: true, timestamps: false },
+      { sequelize, modelName: 'Release', tableName: 'releases', underscored: true, timestamps: false },
     )
   }
 }

@@ -18,7 +18,7 @@ export class Section extends Model<InferAttributes<Section>, InferCreationAttrib
         workId: { type: DataTypes.TEXT, allowNull: false },
         name: { type: DataTypes.TEXT, allowNull: false },
       },
-      { sequelize, tableName: 'sections', underscored: true, timestamps: false },
+      { sequelize, modelName: 'Section', tableName: 'sections', underscored: true, timestamps: false },
     )
   }
 }

@@ -31,7 +31,7 @@ export class SensorToken extends Model<InferAttributes<SensorToken>, InferCreati
         lastUsedAt: { type: DataTypes.INTEGER },
         revokedAt: { type: DataTypes.INTEGER },
       },
-      { sequelize, tableName: 'sensor_tokens', underscored: true, timestamps: false },
+      { sequelize, modelName: 'SensorToken', tableName: 'sensor_tokens', underscored: true, timestamps: false },
     )
   }
 }

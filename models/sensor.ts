@@ -29,7 +29,7 @@ export class Sensor extends Model<InferAttributes<Sensor>, InferCreationAttribut
         retiredAt: { type: DataTypes.INTEGER },
         createdAt: { type: DataTypes.INTEGER, allowNull: false },
       },
-      { sequelize, tableName: 'sensors', underscored: true, timestamps: false },
+      { sequelize, modelName: 'Sensor', tableName: 'sensors', underscored: true, timestamps: false },
     )
   }
 }

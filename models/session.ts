@@ -29,7 +29,7 @@ export class Session extends Model<InferAttributes<Session>, InferCreationAttrib
         expiresAt: { type: DataTypes.INTEGER, allowNull: false },
         endedAt: { type: DataTypes.INTEGER },
       },
-      { sequelize, tableName: 'sessions', underscored: true, timestamps: false },
+      { sequelize, modelName: 'Session', tableName: 'sessions', underscored: true, timestamps: false },
     )
   }
 }

@@ -14,7 +14,7 @@ export class ShiftHours extends Model<InferAttributes<ShiftHours>, InferCreation
         opensMinute: { type: DataTypes.INTEGER, allowNull: false },
         closesMinute: { type: DataTypes.INTEGER, allowNull: false },
       },
-      { sequelize, tableName: 'shift_hours', underscored: true, timestamps: false },
+      { sequelize, modelName: 'ShiftHours', tableName: 'shift_hours', underscored: true, timestamps: false },
     )
   }
 }

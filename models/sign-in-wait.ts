@@ -15,7 +15,7 @@ export class SignInWait extends Model<InferAttributes<SignInWait>, InferCreation
         lastFailedAt: { type: DataTypes.INTEGER, allowNull: false },
         waitUntil: { type: DataTypes.INTEGER, allowNull: false },
       },
-      { sequelize, tableName: 'sign_in_waits', underscored: true, timestamps: false },
+      { sequelize, modelName: 'SignInWait', tableName: 'sign_in_waits', underscored: true, timestamps: false },
     )
   }
 }

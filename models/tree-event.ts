@@ -33,7 +33,7 @@ export class TreeEvent extends Model<InferAttributes<TreeEvent>, InferCreationAt
         at: { type: DataTypes.INTEGER, allowNull: false },
         detail: json('detail'),
       },
-      { sequelize, tableName: 'tree_events', underscored: true, timestamps: false },
+      { sequelize, modelName: 'TreeEvent', tableName: 'tree_events', underscored: true, timestamps: false },
     )
   }
 }

@@ -15,7 +15,7 @@ export class TreePiece extends Model<InferAttributes<TreePiece>, InferCreationAt
         treeId: { type: DataTypes.TEXT, primaryKey: true, allowNull: false },
         pieceId: { type: DataTypes.TEXT, primaryKey: true, allowNull: false },
       },
-      { sequelize, tableName: 'tree_pieces', underscored: true, timestamps: false },
+      { sequelize, modelName: 'TreePiece', tableName: 'tree_pieces', underscored: true, timestamps: false },
     )
   }
 }

@@ -32,7 +32,7 @@ export class TreePlace extends Model<InferAttributes<TreePlace>, InferCreationAt
         memberId: { type: DataTypes.TEXT },
         withdrawnAt: { type: DataTypes.INTEGER },
       },
-      { sequelize, tableName: 'tree_places', underscored: true, timestamps: false },
+      { sequelize, modelName: 'TreePlace', tableName: 'tree_places', underscored: true, timestamps: false },
     )
   }
 }

@@ -18,7 +18,7 @@ export class TreeWatch extends Model<InferAttributes<TreeWatch>, InferCreationAt
         memberId: { type: DataTypes.TEXT, primaryKey: true, allowNull: false },
         createdAt: { type: DataTypes.INTEGER, allowNull: false },
       },
-      { sequelize, tableName: 'tree_watches', underscored: true, timestamps: false },
+      { sequelize, modelName: 'TreeWatch', tableName: 'tree_watches', underscored: true, timestamps: false },
     )
   }
 }

@@ -79,7 +79,7 @@ export class Tree extends Model<InferAttributes<Tree>, InferCreationAttributes<T
         createdAt: { type: DataTypes.INTEGER, allowNull: false },
         updatedAt: { type: DataTypes.INTEGER, allowNull: false },
       },
-      { sequelize, tableName: 'trees', underscored: true, timestamps: false },
+      { sequelize, modelName: 'Tree', tableName: 'trees', underscored: true, timestamps: false },
     )
   }
 }

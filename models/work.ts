@@ -15,7 +15,7 @@ export class Work extends Model<InferAttributes<Work>, InferCreationAttributes<W
         title: { type: DataTypes.TEXT, allowNull: false },
         createdAt: { type: DataTypes.INTEGER, allowNull: false },
       },
-      { sequelize, tableName: 'works', underscored: true, timestamps: false },
+      { sequelize, modelName: 'Work', tableName: 'works', underscored: true, timestamps: false },
     )
   }
 }

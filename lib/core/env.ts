@@ -21,7 +21,7 @@ const schema = z.object({
   UV_THREADPOOL_SIZE: z
     .string()
     .default('')
-    .refine((size) => Number(size) >= 16, 'must be at least 16; npm start sets it.'),
+    .refine((size) => Number(size) >= 16, 'UV_THREADPOOL_SIZE must be at least 16; npm start sets it.'),
   VAPID_PUBLIC_KEY: z.string().min(80),
   VAPID_PRIVATE_KEY: z.string().min(40),
   VAPID_SUBJECT: z.string().refine(isRealContact, 'VAPID_SUBJECT must be mailto: or https: with a real domain.'),

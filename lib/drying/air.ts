@@ -51,7 +51,6 @@ export function stationPressurePa(altitudeM: number): number {
 export function wetBulbC(air: Air, pressurePa: number): number {
   const { airTempC, relHum } = checkAir(air)
   assertPressurePa(pressurePa)
-  if (relHum === 1) return airTempC // the bisection would stop 0.0005 K short of it
   return psychrolib.GetTWetBulbFromRelHum(airTempC, relHum, pressurePa)
 }
 

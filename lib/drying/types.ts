@@ -106,9 +106,10 @@ export type CoatCall = {
   need: Dose
   /** 1 just dipped, moistureTarget at the need. */
   moistureRatio: number
-  /** P10, P50 and P90 instants at which the coat is dry; null beyond the horizon of the curve. */
+  /** P10, P50 and P90 instants at which the coat is dry; null beyond the horizon of the curve. At most now only where readings say so. */
   earliestAt: Instant | null
   likelyAt: Instant | null
+  /** Null too once it has passed on one typed reading alone (needsConfirmation). */
   safeAt: Instant | null
   /** The time named by the guard, when it lies in the past and rests on readings; else null. */
   guardReachedAt: Instant | null

@@ -8,5 +8,7 @@
 export function ownPath(address: string | null | undefined, origin: string): string {
   if (!address || !URL.canParse(address, origin)) return '/'
   const url = new URL(address, origin)
-  return url.origin === new URL(origin).origin ? `${url.pathname}${url.search}${url.hash}` : '/'
+  // '//host/path' is a path here and another site in a link.
+  const isOwn = url.origin === new URL(origin).origin && !url.pathname.startsWith('//')
+  return isOwn ? `${url.pathname}${url.search}${url.hash}` : '/'
 }

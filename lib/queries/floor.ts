@@ -62,6 +62,7 @@ export async function deriveFloor(
 
   // Twice: the hourly table finds the hours in which coats came dry, their exact readings then give the minute.
   const coarse = await build()
+  const before = needed.size
   for (const tree of facts) {
     const newest = tree.coats.at(-1)
     if (!newest || tree.releasedAt !== null || tree.scrappedAt !== null) continue
@@ -72,6 +73,6 @@ export async function deriveFloor(
       needed.add(hourStartOf(at) - 3_600_000)
     }
   }
-  const context = await build()
+  const context = needed.size > before ? await build() : coarse
   return { foundry, context, trees: facts.map((tree) => deriveTree(tree, context, foundry.shiftHours)) }
 }

@@ -1,6 +1,7 @@
 import { QueryTypes } from 'sequelize'
 import type { Clock } from '@/lib/core/clock'
 import { env } from '@/lib/core/env'
+import { newId } from '@/lib/core/ids'
 import { loadFloor } from '@/lib/queries/floor'
 import { workerPulse } from '@/lib/queries/worker-pulse'
 import { queueBath, queueRoom, queueShift, queueTree } from '@/lib/queue/assemble'
@@ -14,7 +15,7 @@ declare global {
 }
 
 /** Changes with each start of the process: SQLite counts its versions for one open file only. */
-const bootId = Date.now().toString(36)
+const bootId = newId()
 
 /**
  * The ETag of the queue: the database's own version and the minute.

@@ -75,7 +75,8 @@ const markOf = (reading: ReadingMark | null | undefined): ReadingMark | null =>
  * Whole hours count by their row of the hourly table, the hour of the start by its readings.
  */
 export function readingsBehind(context: FloorContext, stays: readonly Stay[], start: number, at: number): WindowReadings {
-  const relevant = staysFrom(stays, start).filter((stay) => stay.since <= at)
+  // While a coat still drains its clock starts a moment ahead.
+  const relevant = staysFrom(stays, start).filter((stay) => stay.since <= Math.max(at, start))
   const climateOf = (stay: Stay | undefined) => context.climates.get(context.places.get(stay?.placeId ?? '')?.sensorId ?? -1)
   let sensorCount = 0
   let typedCount = 0

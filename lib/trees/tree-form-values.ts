@@ -58,6 +58,7 @@ export function readTreeForm(form: FormData): TreeFormValues {
 /** One sentence a field, by its path: `waxMassKg`, `pieces.0.workTitle`. The first complaint about a field is the one to say. */
 export type FieldErrors = Record<string, string>
 
+/** The first sentence for each field of a form that was not accepted, by its path. */
 export function fieldErrors(error: z.ZodError): FieldErrors {
   const errors: FieldErrors = {}
   for (const issue of error.issues) {

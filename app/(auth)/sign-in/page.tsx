@@ -2,7 +2,7 @@ import type { Metadata } from 'next'
 import { ShellSection } from '@/app/_components/shell-section'
 import { Wordmark } from '@/app/_components/wordmark'
 import { SignInForm } from '@/app/(auth)/sign-in/_components/sign-in-form'
-import { relativePath } from '@/lib/core/relative-path'
+import { ownPath } from '@/lib/members/own-path'
 import { loadSignIn } from '@/lib/queries/sign-in'
 import type { BandGrade } from '@/lib/trees/section'
 import './sign-in.css'
@@ -14,7 +14,8 @@ const RECIPE: BandGrade[] = ['fine', 'fine', 'medium', 'medium', 'coarse', 'coar
 export default async function SignInPage({ searchParams }: PageProps<'/sign-in'>) {
   const { callbackUrl } = await searchParams
   const { foundryName, demoSignIns } = await loadSignIn()
-  const goTo = relativePath(typeof callbackUrl === 'string' ? callbackUrl : null, '/floor')
+  // The origin stands for this site; whatever leads elsewhere becomes '/', which goes to the floor.
+  const goTo = ownPath(typeof callbackUrl === 'string' ? callbackUrl : '/floor', 'http://this.site')
   return (
     <div className="sign-in">
       <div className="sign-in-picture" aria-hidden="true">

@@ -1,4 +1,4 @@
-import fc from 'fast-check'
+import * as fc from 'fast-check'
 import type { Instant, ReadingSource, RoomReading } from '@/lib/drying/types'
 import { buildFactor, MINUTE_MS, START } from './build-readings'
 
@@ -10,7 +10,10 @@ export function arbitraryReadings({ minLength = 1, from = START }: { minLength?:
     { weight: 5, arbitrary: fc.integer({ min: 1, max: 60 }) },
     { weight: 1, arbitrary: fc.integer({ min: 61, max: 900 }) },
   )
-  const factor = fc.oneof({ weight: 9, arbitrary: fc.double({ min: 0, max: 2.5, noNaN: true }) }, { weight: 1, arbitrary: fc.constant(0) })
+  const factor = fc.oneof(
+    { weight: 9, arbitrary: fc.double({ min: 0.001, max: 2.5, noNaN: true }) },
+    { weight: 1, arbitrary: fc.constant(0) },
+  )
   const source = fc.oneof(
     { weight: 6, arbitrary: fc.constant<ReadingSource>('sensor') },
     { weight: 1, arbitrary: fc.constant<ReadingSource>('typed') },

@@ -1,4 +1,4 @@
-import fc from 'fast-check'
+import * as fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
 import { placeFactor } from '@/lib/drying/place-factor'
 import { placeSpans } from '@/lib/drying/place-spans'
@@ -84,10 +84,10 @@ describe('placeSpans', () => {
           const spans = spansOf(from, from + length, timeZone, rows)
           expect(spans[0]?.from).toBe(from)
           expect(spans.at(-1)?.to).toBe(from + length)
-          for (const [index, span] of spans.entries()) {
-            expect(span.to).toBeGreaterThan(span.from)
-            if (index > 0) expect(span.from).toBe(spans[index - 1]?.to)
-            if (index > 0) expect(span.placeFactor).not.toBe(spans[index - 1]?.placeFactor)
+          for (const span of spans) expect(span.to).toBeGreaterThan(span.from)
+          for (const [index, span] of spans.slice(1).entries()) {
+            expect(span.from).toBe(spans[index]?.to)
+            expect(span.placeFactor).not.toBe(spans[index]?.placeFactor)
           }
         },
       ),

@@ -1,0 +1,46 @@
+import { performance } from 'node:perf_hooks'
+import { allJobs } from '@/jobs/registry'
+import { runPass } from '@/jobs/run-pass'
+import { startSchedule } from '@/jobs/schedule'
+import { systemClock } from '@/lib/core/clock'
+import { env } from '@/lib/core/env'
+import { log } from '@/lib/core/log'
+import { closeRecords } from '@/lib/server/records'
+import { prepareProcessOrExit } from '@/lib/server/startup'
+
+/** Less than the start script waits before it ends this process. */
+const STOP_WITHIN_MS = 4500
+
+await prepareProcessOrExit()
+
+let isStopping = false
+const context = { clock: systemClock, isStopping: () => isStopping }
+const jobs = allJobs({
+  clock: systemClock,
+  vapidPublicKey: env().VAPID_PUBLIC_KEY,
+  monotonic: () => performance.now(),
+  random: Math.random,
+})
+const stopSchedule = startSchedule(jobs, context)
+log('worker.started', { jobs: jobs.map(({ name }) => name) })
+
+// At once, and not at the next full minute: the floor may have waited for a while. The tick claimed here is not run again.
+const firstPass = runPass(jobs[0]!, context)
+
+async function stop(reason: string): Promise<void> {
+  if (isStopping) return
+  isStopping = true
+  log('worker.stopping', { reason })
+  // A send that hangs is left to its lease; the next worker takes it up.
+  const patience = setTimeout(() => process.exit(0), STOP_WITHIN_MS)
+  await Promise.all([stopSchedule(), firstPass])
+  await closeRecords()
+  clearTimeout(patience)
+  log('worker.stopped')
+  process.exit(0)
+}
+
+process.on('SIGTERM', () => void stop('SIGTERM'))
+process.on('SIGINT', () => void stop('SIGINT'))
+// The start script is gone: nobody would ever end this process.
+process.on('disconnect', () => void stop('parent gone'))

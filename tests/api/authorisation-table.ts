@@ -1,0 +1,49 @@
+import type { Act, Role } from '@/lib/members/roles'
+
+/** Who may: everybody without signing in, a sensor with its token (and no member), or members from this role upwards. */
+export type Who = 'anybody' | 'sensor' | Role
+
+/** One door of the program. `example` is an address that fits the route; each [parameter] is a UUID where there is none. */
+export type Door = { method: string; route: string; who: Who; example?: string }
+
+const door = (method: string, route: string, who: Who, example?: string): Door => ({ method, route, who, ...(example ? { example } : {}) })
+const page = (route: string, who: Who, example?: string): Door => door('PAGE', route, who, example)
+
+/**
+ * Every page and every method of every route. The tests fail on one that is missing here, and on one that is gone.
+ * Routes are written as in the build: folders without the groups, parameters in brackets.
+ */
+export const DOORS: readonly Door[] = [
+  page('/sign-in', 'anybody'),
+  page('/floor', 'crew'),
+  page('/me', 'crew'),
+
+  door('GET', '/api/health', 'anybody'),
+  // Its own tests are in auth.test.ts.
+  door('GET', '/api/auth/[...nextauth]', 'anybody', '/api/auth/providers'),
+  door('POST', '/api/auth/[...nextauth]', 'anybody', '/api/auth/signout'),
+
+  door('GET', '/api/v1/queue', 'crew'),
+  door('POST', '/api/v1/dips', 'operator'),
+  door('POST', '/api/v1/dips/undo', 'operator'),
+  door('POST', '/api/v1/trees/[treeId]/holds', 'operator'),
+  door('POST', '/api/v1/trees/[treeId]/looks', 'operator'),
+  door('POST', '/api/v1/trees/[treeId]/place', 'operator'),
+  door('POST', '/api/v1/baths/[bathId]/stirs', 'operator'),
+  door('GET', '/api/v1/push/subscriptions', 'crew'),
+  door('POST', '/api/v1/push/subscriptions', 'crew'),
+  door('DELETE', '/api/v1/push/subscriptions', 'crew'),
+  door('POST', '/api/v1/push/test', 'crew'),
+  door('POST', '/api/v1/trees/[treeId]/watch', 'crew'),
+  door('DELETE', '/api/v1/trees/[treeId]/watch', 'crew'),
+  door('POST', '/api/v1/readings', 'sensor'),
+  door('POST', '/api/v1/readings/typed', 'operator'),
+]
+
+/** One server action: file and exported name, the act that its first line requires, and from which role upwards that is. */
+export type ActionRow = { file: string; name: string; act: Act; who: Role }
+
+/** Every server action; its first line is `await requireMember('act')`, or `const member = await …`. */
+export const ACTIONS: readonly ActionRow[] = [
+  // { file: 'app/(office)/trees/new/actions.ts', name: 'createTree', act: 'trees', who: 'supervisor' },
+]
