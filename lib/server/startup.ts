@@ -34,8 +34,3 @@ export async function prepareProcessOrExit(): Promise<void> {
     process.exit(1)
   }
 }
-
-/** Closes the handle; the last thing a process does. */
-export async function closeRecords(): Promise<void> {
-  await database.close()
-}
