@@ -101,12 +101,12 @@ export function kilnPath(trees: readonly QueueTree[], context: PourContext, widt
   }
 }
 
-/** Gives each stand the lowest label that covers no other; those at the door hang theirs to the left. */
+/** Gives each stand the lowest label that covers no other; those at the door move theirs to the left. */
 function labelled(stands: readonly Omit<PathStand, 'label'>[], width: number): PathStand[] {
   const taken: { from: number; to: number }[][] = Array.from({ length: LEVELS }, () => [])
   return stands.map((stand) => {
     const wide = LABEL_WIDTH + (stand.verdict === null || stand.verdict === 'holds' ? 0 : VERDICT_WIDTH)
-    const from = Math.max(0, stand.safeX + wide > width ? stand.safeX - wide + 24 : stand.safeX - 6)
+    const from = Math.max(0, Math.min(stand.safeX - 6, width - wide))
     const to = from + wide
     const level = taken.findIndex((labels) => labels.every((label) => to <= label.from || from >= label.to))
     if (level === -1) return { ...stand, label: null }

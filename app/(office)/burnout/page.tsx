@@ -264,8 +264,9 @@ function DriedOut({
   pair: { likelyAt: number | null; safeAt: number | null } | null
   context: PourContext
 }) {
-  if (pair === null)
+  if (pair === null) {
     return <span className="text-soot">not in sight: {tree.state === 'unknown' ? 'no reading of the air' : 'no forecast'}</span>
+  }
   return (
     <>
       <TimePair pair={pair} now={context.now} timeZone={context.timeZone} guard="safe" />

@@ -122,8 +122,7 @@ export function ReleasePlate({ rows, mayRelease, now }: { rows: ReleaseRow[]; ma
                   </tr>
                   {confirmation !== undefined && needsConfirmation(checks) && (
                     <tr className="confirm-row" role="row">
-                      {mayRelease && <td role="cell" />}
-                      <td role="cell" colSpan={8}>
+                      <td role="cell" colSpan={mayRelease ? 9 : 8}>
                         <span className="flex flex-wrap items-center gap-x-4 gap-y-2">
                           <span className="flex gap-2 font-semibold text-ochre-ink">
                             <Icon name="warning" />

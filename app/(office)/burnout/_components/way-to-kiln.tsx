@@ -152,12 +152,9 @@ function StandLabel({ stand, context }: { stand: PathStand; context: PourContext
   const { trees, verdict, label } = stand
   const [first] = trees
   if (first === undefined || label === null) return null
-  let tagX = 0
-  const tags = trees.slice(0, 2).map(({ tag }) => {
-    const left = tagX
-    tagX += tagWidth(tag) + TAG_GAP
-    return { tag, left }
-  })
+  const tags = trees.slice(0, 2).map(({ tag }, index, shown) => ({ tag, left: index === 0 ? 0 : tagWidth(shown[0]?.tag ?? '') + TAG_GAP }))
+  const last = tags.at(-1)
+  const besideX = last === undefined ? 0 : last.left + tagWidth(last.tag) + TAG_GAP + 2
   const title = first.title.length > 20 ? `${first.title.slice(0, 19)}…` : first.title
   const beside = trees.length === 1 ? title : trees.length > 2 ? `and ${trees.length - 2} more` : ''
   return (
@@ -172,7 +169,7 @@ function StandLabel({ stand, context }: { stand: PathStand; context: PourContext
           </text>
         </g>
       ))}
-      <text x={tagX + 2} y="13" className="way-piece">
+      <text x={besideX} y="13" className="way-piece">
         {beside}
       </text>
       <text x="0" y="35" className="way-time">

@@ -7,6 +7,7 @@ import { LiveClock } from '@/app/_components/live-clock'
 import { Plate } from '@/app/_components/plate'
 import { StateGlyph } from '@/app/_components/state-mark'
 import { Tag } from '@/app/_components/tag'
+import { TellMeKey } from '@/app/_components/tell-me-key'
 import { TimePair } from '@/app/_components/time-pair'
 import { Caution } from '@/app/(office)/_components/caution'
 import { NOT_CALIBRATED } from '@/app/(office)/_components/due-words'
@@ -68,6 +69,8 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
   const openHold = holds.find((hold) => hold.liftedAt === null) ?? null
   const canDo = (act: Parameters<typeof may>[1]) => may(member.role, act)
   const mayLook = isCoatOpen && canDo('look')
+  const mayWatch =
+    canDo('subscribe') && (['wet', 'drying', 'nearly dry', 'unknown', 'last coat on'].includes(tree.state) || detail.isWatched) && !hasLeft
   const newestRow = coats.find((coat) => coat.isNewest)
   const targetPct = Math.round((1 - tree.openTarget) * 100)
   const isLookedOver = lookOvers.some((look) => look.coatNumber === tree.newestCoat?.number)
@@ -170,8 +173,13 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
               {verdict.next}
             </span>
           </p>
+          {mayWatch && (
+            <div className="verdict-watch">
+              <TellMeKey treeId={tree.id} isWatched={detail.isWatched} />
+            </div>
+          )}
           {mayLook && (
-            <div className="only-desk">
+            <div className="verdict-look">
               <LookKeys treeId={tree.id} said={said} />
             </div>
           )}
@@ -198,11 +206,6 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
             <p>
               Drain {formatSeconds(tree.next.drainSeconds)}. Back to {tree.place.name}.
             </p>
-          </div>
-        )}
-        {mayLook && (
-          <div className="only-phone-block">
-            <LookKeys treeId={tree.id} said={said} size={56} />
           </div>
         )}
         <WarningList warnings={tree.warnings.filter((warning) => !SAID_ELSEWHERE.has(warning.code))} />

@@ -257,7 +257,9 @@ function Pieces({ pieces, works, form }: { pieces: PieceValues[]; works: TreeCho
       <div className="plate-body grid gap-4">
         <datalist id={worksId}>
           {works.map((work) => (
-            <option key={work.title} value={work.title} />
+            <option key={work.title} value={work.title}>
+              {work.title}
+            </option>
           ))}
         </datalist>
         {rows.map(({ key, piece }, index) => (
@@ -328,7 +330,9 @@ function PieceRow({
       />
       <datalist id={sectionsId}>
         {sections.filter(Boolean).map((section) => (
-          <option key={section} value={section} />
+          <option key={section} value={section}>
+            {section}
+          </option>
         ))}
       </datalist>
       <Field
