@@ -11,5 +11,9 @@ export default {
   serverExternalPackages: ['sequelize', 'sqlite3'],
   poweredByHeader: false,
   reactStrictMode: true,
-  headers: () => [{ source: '/:path*', headers: SECURITY_HEADERS }],
+  headers: () => [
+    { source: '/:path*', headers: SECURITY_HEADERS },
+    // A browser asks for it at every visit: an old service worker must not outlive the program that it belongs to.
+    { source: '/sw.js', headers: [{ key: 'Cache-Control', value: 'no-cache' }] },
+  ],
 }

@@ -5,8 +5,8 @@ import { startSchedule } from '@/jobs/schedule'
 import { systemClock } from '@/lib/core/clock'
 import { env } from '@/lib/core/env'
 import { log } from '@/lib/core/log'
+import { closeRecords } from '@/lib/server/records'
 import { prepareProcessOrExit } from '@/lib/server/startup'
-import { database } from '@/models'
 
 /** Less than the start script waits before it ends this process. */
 const STOP_WITHIN_MS = 4500
@@ -34,7 +34,7 @@ async function stop(reason: string): Promise<void> {
   // A send that hangs is left to its lease; the next worker takes it up.
   const patience = setTimeout(() => process.exit(0), STOP_WITHIN_MS)
   await Promise.all([stopSchedule(), firstPass])
-  await database.close()
+  await closeRecords()
   clearTimeout(patience)
   log('worker.stopped')
   process.exit(0)

@@ -45,7 +45,12 @@ const DRAWINGS = {
   /** Half a drop: still wet. */
   drop: (
     <>
-      <path d="M12 3.3c3.5 4.6 5.8 7.7 5.8 11.2a5.8 5.8 0 0 1-11.6 0c0-3.5 2.3-6.6 5.8-11.2z" fill="none" stroke="currentColor" strokeWidth="2.4" />
+      <path
+        d="M12 3.3c3.5 4.6 5.8 7.7 5.8 11.2a5.8 5.8 0 0 1-11.6 0c0-3.5 2.3-6.6 5.8-11.2z"
+        fill="none"
+        stroke="currentColor"
+        strokeWidth="2.4"
+      />
       <path d="M6 13.5h12a6 6 0 0 1-12 1z" fill="currentColor" />
     </>
   ),

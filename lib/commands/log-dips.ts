@@ -3,6 +3,7 @@ import { dipRunAnswer, type DipRefusal, type DipRun, type DipRunAnswer } from '@
 import { addTreeEvent } from '@/lib/commands/tree-event'
 import { closeCoat } from '@/lib/commands/close-coat'
 import { recordReadings } from '@/lib/commands/record-readings'
+import { tellSupervisors } from '@/lib/commands/tell-supervisors'
 import { runOperation } from '@/lib/commands/run-operation'
 import type { Clock } from '@/lib/core/clock'
 import { AppError } from '@/lib/core/errors'
@@ -90,14 +91,14 @@ async function putCoatsOn(run: DipRun, member: Actor, now: number): Promise<DipR
     const asPlanned = planned ?? tree.recipe.coats.findLast((coat) => coat.stucco === run.stucco) ?? tree.recipe.coats.at(-1)
     if (!asPlanned) throw new AppError('unprocessable', `The recipe of ${tree.tag} has no coat.`)
     const air = airAt(context, place.sensorId, run.dippedAt)
-    const deviations = [
-      ...(tree.hold ? ['held'] : []),
-      ...(tree.intakePassedAt === null ? ['intake open'] : []),
-      ...(belowCall?.isUnknown ? ['unknown'] : !isBelowDry && belowCall?.guardReachedAt === null ? ['still wet'] : []),
-      ...(planned === null ? ['not in the recipe'] : []),
-      ...(planned && planned.bathId !== run.bathId ? ['other bath'] : []),
-      ...(planned && planned.stucco !== run.stucco ? ['other stucco'] : []),
-      ...(asPlanned.kind === 'face' && air && isTooDryForFace(air, context, placeId) ? ['too dry for face'] : []),
+    const deviations: Deviation[] = [
+      ...asList(tree.hold !== null, 'held'),
+      ...asList(tree.intakePassedAt === null, 'intake open'),
+      ...(belowCall?.isUnknown ? asList(true, 'unknown') : asList(!isBelowDry && belowCall?.guardReachedAt === null, 'still wet')),
+      ...asList(planned === null, 'not in the recipe'),
+      ...asList(planned !== null && planned.bathId !== run.bathId, 'other bath'),
+      ...asList(planned !== null && planned.stucco !== run.stucco, 'other stucco'),
+      ...asList(asPlanned.kind === 'face' && air !== null && isTooDryForFace(air, context, placeId), 'too dry for face'),
     ]
     if (below && belowCall) await closeCoat(below, tree, context, { at: run.dippedAt, call: belowCall })
     const coat: CoatFacts = {
@@ -154,6 +155,21 @@ async function putCoatsOn(run: DipRun, member: Actor, now: number): Promise<DipR
       coatId: coat.id,
       dippedAt: run.dippedAt,
     })
+    if (deviations.some((deviation) => TOLD_TO_SUPERVISORS.has(deviation))) {
+      await tellSupervisors(
+        {
+          coatId: coat.id,
+          treeId: tree.id,
+          tag: tree.tag,
+          title: tree.title,
+          placeName: place.name,
+          coatNumber,
+          deviations: deviations.map((deviation) => DEVIATION_SENTENCE[deviation]),
+          reason: reason ?? null,
+        },
+        { clock: { now: () => now } },
+      )
+    }
     answers.push({
       coatId: coat.id,
       treeId: tree.id,
@@ -166,6 +182,23 @@ async function putCoatsOn(run: DipRun, member: Actor, now: number): Promise<DipR
   }
   return answers
 }
+
+const DEVIATION_SENTENCE = {
+  held: 'The tree was held',
+  'intake open': 'Its intake was open',
+  unknown: 'No reading told whether the coat below was dry',
+  'still wet': 'The coat below was still wet',
+  'not in the recipe': 'The recipe has no such coat',
+  'other bath': 'Another bath than the recipe',
+  'other stucco': 'Another stucco than the recipe',
+  'too dry for face': 'The air was too dry for a face coat',
+} as const
+type Deviation = keyof typeof DEVIATION_SENTENCE
+
+/** A supervisor hears of a dip that can cost the shell. */
+const TOLD_TO_SUPERVISORS: ReadonlySet<Deviation> = new Set(['held', 'still wet', 'unknown', 'intake open'])
+
+const asList = (isSo: boolean, deviation: Deviation): Deviation[] => (isSo ? [deviation] : [])
 
 type Chosen = { facts: TreeFacts; coatNumber: number }
 

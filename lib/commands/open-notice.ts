@@ -40,7 +40,9 @@ export function openNotice({ draft, vapidPublicKey, clock, recipients, isMomenta
       openedAt: now,
       ...(isMomentary && { closedAt: now, closeReason: 'told' }),
     })
-    if (treeId !== null) await TreeEvent.create({ treeId, kind: 'notice', memberId: null, at: now, detail: { kind, title, body } })
+    if (treeId !== null) {
+      await TreeEvent.create({ treeId, kind: 'notice', memberId: null, at: now, detail: { text: `${title}. ${body}`, notice: kind } })
+    }
     const devices = recipients ?? (await pushRecipients(draft.audience, vapidPublicKey))
     await Delivery.bulkCreate(
       devices.map(({ subscriptionId, memberId }) => ({

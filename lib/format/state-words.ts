@@ -22,6 +22,7 @@ const WORDS: Record<TreeState, { word: string; tone: StateTone; counts: boolean 
   'ready for burnout': { word: 'Ready for burnout', tone: 'ink', counts: false },
 }
 
+/** Colour role of a state; mark and word say the same without it. */
 export function stateTone(state: TreeState): StateTone {
   return WORDS[state].tone
 }

@@ -86,29 +86,17 @@ function endOf(notice: OpenNotice, tree: QueueTree | undefined, queue: NoticeRul
   if (notice.kind === 'room data stale') return endOfRoom(Number(notice.subjectId), queue)
   if (!tree || OFF_THE_FLOOR.has(tree.state)) return 'the tree left the floor'
   if (notice.subjectType === 'coat' && tree.newestCoat?.id !== notice.subjectId) return 'another coat is the newest'
-  return isUnknown(tree) ? null : endOfKind(notice.kind, tree)
+  if (tree.state === 'held' && (notice.kind === 'coat dry' || notice.kind === 'overdue')) return 'held'
+  return isUnknown(tree) ? null : (END_OF_KIND[notice.kind]?.(tree) ?? null)
 }
 
-function endOfKind(kind: NoticeKind, { state, next }: QueueTree): string | null {
-  switch (kind) {
-    case 'coat dry':
-      if (state === 'held') return 'held'
-      return WET_STATES.has(state) ? WITHDRAWN : null
-    case 'overdue':
-      if (state === 'held') return 'held'
-      return state === 'overdue' ? null : 'not overdue any more'
-    case 'last coat on':
-      return next === null ? null : 'another coat is to come'
-    case 'ready for burnout':
-      return state === 'ready for burnout' ? null : 'not ready any more'
-    case 'call withdrawn':
-      return WET_STATES.has(state) ? null : 'the coat is not drying any more'
-    case 'room data stale':
-    case 'deviation':
-    case 'summary':
-      // The first ends with its sensor; the others are told and closed at once.
-      return null
-  }
+/** What readings and people can end. A deviation and a summary are told and closed at once. */
+const END_OF_KIND: Partial<Record<NoticeKind, (tree: QueueTree) => string | null>> = {
+  'coat dry': ({ state }) => (WET_STATES.has(state) ? WITHDRAWN : null),
+  overdue: ({ state }) => (state === 'overdue' ? null : 'not overdue any more'),
+  'last coat on': ({ next }) => (next === null ? null : 'another coat is to come'),
+  'ready for burnout': ({ state }) => (state === 'ready for burnout' ? null : 'not ready any more'),
+  'call withdrawn': ({ state }) => (WET_STATES.has(state) ? null : 'the coat is not drying any more'),
 }
 
 function endOfRoom(sensorId: number, queue: NoticeRulesInput['queue']): string | null {

@@ -109,8 +109,7 @@ export function testText(): NoticeText {
 }
 
 function slurry(next: NonNullable<NoticeTree['next']>): string {
-  const kind = next.kind.charAt(0).toUpperCase() + next.kind.slice(1)
-  return `${kind} slurry, ${next.stucco === 'none' ? 'no stucco' : next.stucco}`
+  return `${next.bathName}, ${next.stucco === 'none' ? 'no stucco' : next.stucco}`
 }
 
 /** 'Safe since 17:10, likely since 16:20', or for a likely guard 'Likely since 16:20, safe from 17:10'. */

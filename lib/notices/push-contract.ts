@@ -36,7 +36,12 @@ export const pushDevice = z.object({
 export type PushDevice = z.infer<typeof pushDevice>
 
 /** Answer of `GET /api/v1/push/subscriptions`. */
-export const pushDevices = z.object({ publicKey: z.string(), devices: z.array(pushDevice) })
+export const pushDevices = z.object({
+  publicKey: z.string(),
+  /** Whose list this is: a browser that was another member's does not join it by itself. */
+  memberId: z.uuid(),
+  devices: z.array(pushDevice),
+})
 export type PushDevices = z.infer<typeof pushDevices>
 
 /** Answer of `POST /api/v1/push/test`: what the push service said, in words. */

@@ -9,6 +9,7 @@ export async function pushDevicesOf(memberId: string): Promise<PushDevices> {
   const rows = await PushSubscription.findAll({ where: { memberId }, order: [['id', 'ASC']] })
   return {
     publicKey,
+    memberId,
     devices: rows.map(({ id, label, scope, endpoint, createdAt, lastOkAt, failingSince, lastError, vapidPublicKey }) => ({
       id,
       label,

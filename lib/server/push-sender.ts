@@ -3,7 +3,7 @@ import { lookup } from 'node:dns'
 import { Agent } from 'node:https'
 import { BlockList, isIPv6, type LookupFunction } from 'node:net'
 import { rootCertificates } from 'node:tls'
-import { sendNotification, WebPushError } from 'web-push'
+import webPush from 'web-push'
 import type { Clock } from '@/lib/core/clock'
 import { env } from '@/lib/core/env'
 import { endpointProblem, isExtraHost, keysProblem } from '@/lib/notices/push-endpoint'
@@ -49,7 +49,7 @@ export function webPushSender({ clock }: { clock: Clock }): PushSender {
       const agent = new Agent({ keepAlive: false, ...(ca && { ca }), ...(!isExtra && { lookup: publicLookup }) })
       try {
         const subscription = { endpoint: target.endpoint, keys: { p256dh: target.p256dh, auth: target.auth } }
-        const sending = sendNotification(subscription, payload, {
+        const sending = webPush.sendNotification(subscription, payload, {
           vapidDetails,
           TTL: ttlSeconds,
           urgency,
@@ -78,7 +78,7 @@ function within(milliseconds: number, work: Promise<unknown>): Promise<unknown> 
 }
 
 function outcomeOf(error: unknown, now: number): PushOutcome {
-  if (!(error instanceof WebPushError)) {
+  if (!(error instanceof webPush.WebPushError)) {
     const detail = error instanceof Error ? error.message.slice(0, DETAIL_LIMIT) : 'unknown'
     return { kind: 'retry', words: 'The push service could not be reached.', detail, retryAfterMs: null }
   }

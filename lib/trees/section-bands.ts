@@ -19,7 +19,10 @@ export type BandSize = { height: number; width?: number; fit?: number; unit?: nu
  * `width` stretches the bands to fill it, `fit` only squeezes those that would be wider; the wax core keeps its own width.
  * What hangs at the outer end (cap, outer line, red tag) takes its room from the bands.
  */
-export function sectionBands({ coats, done, open, state }: SectionDrawing, { height, width = 0, fit = 0, unit = 0 }: BandSize): SectionBands {
+export function sectionBands(
+  { coats, done, open, state }: SectionDrawing,
+  { height, width = 0, fit = 0, unit = 0 }: BandSize,
+): SectionBands {
   const u = unit || height / 40
   const bulge = height * 0.15
   const coreWidth = 20 * u

@@ -56,6 +56,7 @@ const DRAWN: Record<TreeState, SectionState> = {
 
 const STILL_OPEN: ReadonlySet<TreeState> = new Set(['wet', 'drying', 'nearly dry', 'unknown', 'last coat on'])
 
+/** How a coat is drawn in the shell section: by its stucco, or as a seal. */
 export function bandGrade(coat: { kind: CoatKind; stucco: Stucco }): BandGrade {
   return coat.kind === 'seal' || coat.stucco === 'none' ? 'seal' : coat.stucco
 }

@@ -31,6 +31,7 @@ const GROUP_OF: Record<TreeState, TreeGroup> = {
   'ready for burnout': 'burnout',
 }
 
+/** The group of the list that a state belongs to. */
 export function groupOf(state: TreeState): TreeGroup {
   return GROUP_OF[state]
 }

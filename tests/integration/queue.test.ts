@@ -21,13 +21,6 @@ let foundry: TestFoundry
 let maud: Actor
 
 beforeAll(async () => {
-  Object.assign(process.env, {
-    NEXTAUTH_SECRET: 'a secret for the tests that is long enough',
-    NEXTAUTH_URL: 'http://localhost:3000',
-    VAPID_PUBLIC_KEY: 'k'.repeat(87),
-    VAPID_PRIVATE_KEY: 'k'.repeat(43),
-    VAPID_SUBJECT: 'mailto:shellroom@marramlane.example',
-  })
   foundry = await buildFoundry()
   maud = await buildMember('operator', 'Maud')
   await buildAir(foundry.sensorId, NOW - 24 * HOUR, NOW)

@@ -33,7 +33,7 @@ describe('passNotices', () => {
       { status: 'waiting', memberId: member.id, nextAttemptAt: NOW, expiresAt: NOW + 7_200_000 },
     ])
     expect(await TreeEvent.findAll({ where: { treeId: tree.id } })).toMatchObject([
-      { kind: 'notice', memberId: null, detail: { kind: 'coat dry', title: `${tree.tag} dry: dip 6` } },
+      { kind: 'notice', memberId: null, detail: { notice: 'coat dry', text: expect.stringContaining(`${tree.tag} dry: dip 6. Backup`) } },
     ])
   })
   it('does the same when two workers look at once', async () => {

@@ -78,8 +78,9 @@ export function simulateDay(seed: number): { faults: string[]; told: number } {
         const before = told.filter((notice) => keyOf(notice) === keyOf(draft))
         if (before.some(({ closedAt }) => closedAt === null)) faults.push(`${seed}: ${keyOf(draft)} opened twice at ${now}`)
         const last = before.at(-1)
-        if (last && draft.kind !== 'call withdrawn' && now - last.closedAt! < REOPEN_DWELL_MS)
+        if (last && draft.kind !== 'call withdrawn' && now - last.closedAt! < REOPEN_DWELL_MS) {
           faults.push(`${seed}: ${keyOf(draft)} flapped`)
+        }
         told.push({ ...draft, id: `${told.length}`, episode: before.length + 1, openedAt: now, closedAt: null })
       }
       if (isStale && changes.close.some(({ id }) => told.find((notice) => notice.id === id)!.kind === 'coat dry')) {

@@ -1,9 +1,9 @@
-import { generateVAPIDKeys } from 'web-push'
+import webPush from 'web-push'
 import type { FakePushService } from '@/tests/setup/fake-push-service'
 
 /** Settings for a process whose pushes go to the fake service. To be set before anything reads them. */
 export function pushSettings(service: FakePushService): { vapidPublicKey: string } {
-  const { publicKey, privateKey } = generateVAPIDKeys()
+  const { publicKey, privateKey } = webPush.generateVAPIDKeys()
   Object.assign(process.env, {
     NEXTAUTH_SECRET: 'a secret of the tests, long enough',
     NEXTAUTH_URL: 'http://localhost:3000',

@@ -40,10 +40,9 @@ export function testEnv(dataDir: string, overrides: Record<string, string> = {})
   }
 }
 
-/** An empty, migrated data folder. Sets DATA_DIR, so that models imported after this line look at the same records. */
+/** An empty, migrated data folder. */
 export async function makeDataDir(): Promise<string> {
   const dataDir = mkdtempSync(join(tmpdir(), 'kilnward-server-'))
-  process.env['DATA_DIR'] = dataDir
   await migrate(join(dataDir, 'kilnward.sqlite'))
   return dataDir
 }
@@ -86,13 +85,15 @@ function freePort(): Promise<number> {
 const nextStart = (port: number) => ['node_modules/next/dist/bin/next', 'start', '-H', '127.0.0.1', '-p', String(port)]
 
 /**
- * Starts the production build and waits until it answers.
+ * Starts the production build and waits until it answers. Sets DATA_DIR of this process to the server's, so that models
+ * imported after it look at the same records: import them inside the tests.
  *
  * @param options.dataDir an existing data folder, as for a restart; a new, migrated one otherwise (removed again by `stop`).
  * @throws {Error} with the output of the server when it ends instead.
  */
 export async function startServer(options: { dataDir?: string; env?: Record<string, string> } = {}): Promise<TestServer> {
   const dataDir = options.dataDir ?? (await makeDataDir())
+  process.env['DATA_DIR'] = dataDir
   const port = await freePort()
   const baseUrl = `http://127.0.0.1:${port}`
   const program = startProgram(nextStart(port), testEnv(dataDir, { NEXTAUTH_URL: baseUrl, ...options.env }))

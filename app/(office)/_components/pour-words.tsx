@@ -28,7 +28,13 @@ export function PourWords({ pourDate, verdict }: { pourDate: string | null; verd
 
 export function PourVerdictMark({ verdict }: { verdict: PourVerdict }) {
   const isMissed = verdict === 'will miss' || verdict === 'passed'
-  const tone = isMissed ? 'text-furnace-ink' : verdict === 'tight' ? 'text-ochre-ink' : verdict === 'holds' ? 'text-verdigris-ink' : 'text-soot'
+  const tone = isMissed
+    ? 'text-furnace-ink'
+    : verdict === 'tight'
+      ? 'text-ochre-ink'
+      : verdict === 'holds'
+        ? 'text-verdigris-ink'
+        : 'text-soot'
   return (
     <b className={`whitespace-nowrap ${tone}`}>
       {isMissed && <MissMark />}

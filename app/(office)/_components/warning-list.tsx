@@ -10,7 +10,10 @@ export function WarningList({ warnings }: { warnings: readonly Warning[] }) {
       {warnings
         .toSorted((left, right) => weight[left.level] - weight[right.level])
         .map((warning) => (
-          <li key={warning.code} className={warning.level === 'stop' ? 'text-furnace-ink' : warning.level === 'warn' ? 'text-ochre-ink' : 'text-soot'}>
+          <li
+            key={warning.code}
+            className={warning.level === 'stop' ? 'text-furnace-ink' : warning.level === 'warn' ? 'text-ochre-ink' : 'text-soot'}
+          >
             <Icon name="warning" />
             <span>{warning.text}</span>
           </li>

@@ -41,7 +41,8 @@ describe('hourTicks', () => {
     for (const hours of [0, 1, 8, 30, 80, 700, 9000]) {
       expect(hourTicks(beforeChange, beforeChange + hours * HOUR, 'Europe/London').length).toBeLessThanOrEqual(9)
     }
-    const clock = (at: number) => new Date(at).toLocaleTimeString('en-GB', { timeZone: 'Europe/London', hour: '2-digit', minute: '2-digit' })
+    const clock = (at: number) =>
+      new Date(at).toLocaleTimeString('en-GB', { timeZone: 'Europe/London', hour: '2-digit', minute: '2-digit' })
     const clocks = hourTicks(beforeChange, beforeChange + 80 * HOUR, 'Europe/London').map(clock)
     expect(clocks).toEqual(['00:00', '12:00', '00:00', '12:00', '00:00', '12:00'])
   })

@@ -6,7 +6,6 @@ import { holdTree, liftHold } from '@/lib/commands/hold-tree'
 import { lookOver } from '@/lib/commands/look-over'
 import { moveTree } from '@/lib/commands/move-tree'
 import { passIntake } from '@/lib/commands/pass-intake'
-import { withdrawRelease } from '@/lib/commands/release-trees'
 import { scrapTree } from '@/lib/commands/scrap-tree'
 import { systemClock } from '@/lib/core/clock'
 import { requireMember, type Member } from '@/lib/server/auth'
@@ -58,14 +57,6 @@ export async function scrapAction(treeId: string, _previous: FormState, form: Fo
   })
 }
 
-export async function withdrawReleaseAction(treeId: string, _previous: FormState, form: FormData): Promise<FormState> {
-  const member = await requireMember('release')
-  return treeForm(treeId, readReason(form), async (id, { reason }) => {
-    await withdrawRelease(id, reason, by(member))
-    return 'Release taken back.'
-  })
-}
-
 export async function moveAction(treeId: string, _previous: FormState, form: FormData): Promise<FormState> {
   const member = await requireMember('move')
   const parsed = z.object({ placeId: z.uuid('Choose where it hangs now.') }).safeParse({ placeId: form.get('placeId') })
@@ -77,7 +68,9 @@ export async function moveAction(treeId: string, _previous: FormState, form: For
 
 export async function lookOverAction(treeId: string, _previous: FormState, form: FormData): Promise<FormState> {
   const member = await requireMember('look over')
-  const parsed = z.object({ note: z.string().trim().max(300, 'A note has at most 300 letters.') }).safeParse({ note: form.get('note') ?? '' })
+  const parsed = z
+    .object({ note: z.string().trim().max(300, 'A note has at most 300 letters.') })
+    .safeParse({ note: form.get('note') ?? '' })
   return treeForm(treeId, parsed, async (id, { note }) => {
     await lookOver(id, note, by(member))
     return 'Looked over.'

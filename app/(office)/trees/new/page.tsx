@@ -12,10 +12,7 @@ const onlyOne = (ids: string[]) => (ids.length === 1 ? (ids[0] ?? '') : '')
 export default async function NewTreePage() {
   await requireMemberPage('trees', '/trees/new')
   const choices = await loadTreeForm()
-  const missing = [
-    ...(choices.recipes.length === 0 ? ['a recipe'] : []),
-    ...(choices.places.length === 0 ? ['a place to hang it'] : []),
-  ]
+  const missing = [...(choices.recipes.length === 0 ? ['a recipe'] : []), ...(choices.places.length === 0 ? ['a place to hang it'] : [])]
   return (
     <>
       <div className="page-head">

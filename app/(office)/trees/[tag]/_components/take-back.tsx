@@ -10,10 +10,10 @@ import { formatDuration } from '@/lib/format/duration'
 import type { TreeDetail } from '@/lib/trees/detail-contract'
 import { reasonInput } from '@/lib/trees/tree-input'
 
-export type TakeBackProps = { takeBack: NonNullable<TreeDetail['takeBack']>; coatNumber: number; now: number; size?: 44 | 56 }
+export type TakeBackProps = { takeBack: NonNullable<TreeDetail['takeBack']>; coatNumber: number; now: number }
 
 /** Takes the newest coat back: at once by whoever logged it within ten minutes, later by a supervisor with a reason. */
-export function TakeBack({ takeBack, coatNumber, now: serverNow, size = 44 }: TakeBackProps) {
+export function TakeBack({ takeBack, coatNumber, now: serverNow }: TakeBackProps) {
   const [isOpen, setIsOpen] = useState(false)
   const [error, setError] = useState<string | undefined>()
   const now = useServerNow(serverNow)
@@ -31,7 +31,6 @@ export function TakeBack({ takeBack, coatNumber, now: serverNow, size = 44 }: Ta
   return (
     <div className="take-back">
       <Key
-        size={size}
         tone="quiet"
         icon="undo"
         isOff={undo.isPending}
@@ -43,8 +42,15 @@ export function TakeBack({ takeBack, coatNumber, now: serverNow, size = 44 }: Ta
       </Key>
       {isOpen && (
         <form className="reason-form" noValidate onSubmit={sendReason}>
-          <Field name="reason" label="Why it is taken back" maxLength={300} error={error} autoComplete="off" hint="The coat stays in the log as taken back." />
-          <Key type="submit" tone="ink" size={size} isOff={undo.isPending}>
+          <Field
+            name="reason"
+            label="Why it is taken back"
+            maxLength={300}
+            error={error}
+            autoComplete="off"
+            hint="The coat stays in the log as taken back."
+          />
+          <Key type="submit" tone="ink" isOff={undo.isPending}>
             Take it back
           </Key>
         </form>
