@@ -181,7 +181,6 @@ export const CAST: readonly CastTree[] = [
     spacings: ['open', 'crowded'],
     waxMassKg: 6.8,
     cup: largeCup,
-    pour: 'planned',
     story: { kind: 'rough time', coat: 3 },
   },
   {

@@ -106,17 +106,20 @@ function planCoatBefore(shape: Shape, number: number, dueAt: number, parts: Plan
   const earliest = startsAt + 3 * millisecondsInHour
   const kind = { bath: coat.bath, stucco, way }
   const bound = latestDipFor(room, place, dueAt - delayMs, demand, earliest)
-  const inTime = bound === null ? null : lastRunSlot(hours, bound, kind)
+  const inShift = bound === null ? null : lastRunSlot(hours, bound, kind)
+  // A face coat does not hang over a Sunday: somebody comes in for it.
+  const isTooLong = inShift !== null && coat.kind === 'face' && dueAt - inShift > coat.longestWaitHours * millisecondsInHour
+  const inTime = bound !== null && isTooLong ? lastRunSlot(hours, bound, kind, 'extra too') : inShift
   const isEarly = tree.story?.kind === 'dipped early' && tree.story.overCoat === number
-  const tooLate = isEarly ? earlyDip(place, dueAt, demand, kind, parts) : null
-  const dippedAt = tooLate ?? inTime
+  const tooLate = isEarly ? earlyDip(dueAt, demand, kind, parts) : null
+  const dippedAt = tooLate?.dippedAt ?? inTime
   if (dippedAt === null || dippedAt < earliest) return null
   return {
     number,
     bath: coat.bath,
     stucco,
     way,
-    place,
+    place: tooLate?.place ?? place,
     dippedAt,
     drainSeconds: coat.drainSeconds,
     roughMinutes: tree.story?.kind === 'rough time' && tree.story.coat === number ? 5 : 0,
@@ -133,18 +136,19 @@ export function reasonFor({ story }: CastTree, number: number): string | null {
 
 /** A dip so late that the next one comes while 10 to 25 % of the water is left; null where no run falls so. */
 function earlyDip(
-  place: DemoPlace,
   dueAt: number,
   { coat, need }: Demand,
   kind: { bath: DemoBath; stucco: Stucco; way: CoatingWay },
   { room, hours }: PlanParts,
-): number | null {
-  let dippedAt = lastRunSlot(hours, dueAt - millisecondsInHour, kind)
-  while (dippedAt !== null && dueAt - dippedAt < 30 * millisecondsInHour) {
-    const share = room.doseBetween(place, dippedAt + coat.drainSeconds * 1000, dueAt).likely / need.likely
-    if (share > 0.95) return null
-    if (share > 0.72) return dippedAt
-    dippedAt = lastRunSlot(hours, dippedAt - 1, kind)
+): { place: DemoPlace; dippedAt: number } | null {
+  for (const place of ['fanRack', 'longRack', 'netLoft', 'stillCorner'] as const) {
+    let dippedAt = lastRunSlot(hours, dueAt - millisecondsInHour, kind)
+    while (dippedAt !== null && dueAt - dippedAt < 40 * millisecondsInHour) {
+      const share = room.doseBetween(place, dippedAt + coat.drainSeconds * 1000, dueAt).likely / need.likely
+      if (share > 0.95) break
+      if (share > 0.72) return { place, dippedAt }
+      dippedAt = lastRunSlot(hours, dippedAt - 1, kind)
+    }
   }
   return null
 }

@@ -49,21 +49,23 @@ const AFTER_OPENING_MS = 12 * millisecondsInMinute
  * The newest moment at or before `at` at which this kind of run goes through a bath: twice an hour, each kind at its own minute,
  * so that trees that are due together share a run.
  *
+ * @param turns 'shifts' only, or an extra turn on a day off too.
  * @returns null before the history.
  */
 export function lastRunSlot(
   hours: WorkHours,
   at: number,
   { bath, stucco, way }: { bath: DemoBath; stucco: Stucco; way: CoatingWay },
+  turns: 'shifts' | 'extra too' = 'shifts',
 ): number | null {
   const kind = 4 * COATING_WAYS.indexOf(way) + 3 * STUCCOS.indexOf(stucco) + (bath === 'face' ? 1 : 0)
-  for (let slot = Math.floor(at / SLOT_MS) * SLOT_MS; ; slot -= SLOT_MS) {
-    const first = hours.shifts[0]
-    if (!first || slot < first.opensAt) return null
-    const shift = shiftAt(hours, slot)
-    if (!shift) continue
+  const opensAt = hours.shifts[0]?.opensAt ?? Infinity
+  for (let slot = Math.floor(at / SLOT_MS) * SLOT_MS; slot >= opensAt; slot -= SLOT_MS) {
     const seconds = Math.floor(unitOf(31, slot, kind) * 200)
     const dippedAt = slot + kind * millisecondsInMinute + seconds * 1000
-    if (dippedAt <= at && dippedAt >= shift.opensAt + AFTER_OPENING_MS && dippedAt <= shift.closesAt) return dippedAt
+    if (dippedAt > at) continue
+    const shift = shiftAt(hours, dippedAt)
+    if (shift ? dippedAt >= shift.opensAt + AFTER_OPENING_MS : turns === 'extra too' && oddness(hours, dippedAt) === 1) return dippedAt
   }
+  return null
 }
