@@ -1,3 +1,4 @@
+import { demoFeed } from '@/jobs/demo-feed'
 import type { Job } from '@/jobs/job'
 import { prune } from '@/jobs/prune'
 import { sendPushes } from '@/jobs/send-pushes'
@@ -27,5 +28,5 @@ export function allJobs({ clock, vapidPublicKey, monotonic, random }: RegistryPa
     },
     followedBy: [send],
   })
-  return [watch, send, prune]
+  return [watch, send, prune, demoFeed({ fetch })]
 }

@@ -32,7 +32,7 @@ export function TellMeKey({ treeId, isWatched, size = 44 }: { treeId: string; is
   const canOffer = isOn && (state === 'off' || state === 'outdated')
   return (
     <div className="flex flex-col gap-2">
-      <Key size={size} isChosen={isOn} isOff={isSending} onPress={() => void toggle()}>
+      <Key size={size} icon="bell" isChosen={isOn} isOff={isSending} onPress={() => void toggle()}>
         Tell me when dry
       </Key>
       {canOffer && (

@@ -22,8 +22,9 @@ export function releaseKey(
   const blocked = chosen.filter((tree) => blockingChecks(tree.checks).length > 0)
   if (blocked.length > 0) return { isOff: true, text: `${tags(blocked)}: see what is missing` }
   const unconfirmed = chosen.filter((tree) => needsConfirmation(tree.checks) && !confirmations[tree.id])
-  if (unconfirmed.length > 0)
+  if (unconfirmed.length > 0) {
     return { isOff: true, text: `Say how ${tags(unconfirmed)} ${unconfirmed.length === 1 ? 'was' : 'were'} confirmed` }
+  }
   return { isOff: false, text: chosen.length === 1 ? `Hold to release ${chosen[0]?.tag}` : `Hold to release ${chosen.length} trees` }
 }
 

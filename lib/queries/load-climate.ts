@@ -56,10 +56,13 @@ export async function loadNewestReading(sensorId: number, at: number): Promise<R
 export async function loadReadingsInHours(sensorId: number, hours: readonly number[]): Promise<RoomReading[]> {
   if (hours.length === 0) return []
   return database.query<RoomReading>(
-    `SELECT DISTINCT ${READING_COLUMNS} FROM json_each(:hours) h JOIN readings r
-         ON r.sensor_id = :sensorId
-        AND r.measured_at >= coalesce((SELECT max(b.measured_at) FROM readings b WHERE b.sensor_id = :sensorId AND b.measured_at < h.value), h.value)
-        AND r.measured_at <= coalesce((SELECT min(a.measured_at) FROM readings a WHERE a.sensor_id = :sensorId AND a.measured_at >= h.value + 3600000), h.value + 3600000)
+    // CROSS JOIN keeps the hours outside: the other way round every reading of the sensor would be looked at.
+    `WITH spans AS MATERIALIZED (
+       SELECT coalesce((SELECT max(b.measured_at) FROM readings b WHERE b.sensor_id = :sensorId AND b.measured_at < h.value), h.value) AS first,
+              coalesce((SELECT min(a.measured_at) FROM readings a WHERE a.sensor_id = :sensorId AND a.measured_at >= h.value + 3600000), h.value + 3600000) AS last
+         FROM json_each(:hours) h)
+     SELECT DISTINCT ${READING_COLUMNS} FROM spans CROSS JOIN readings r
+         ON r.sensor_id = :sensorId AND r.measured_at BETWEEN spans.first AND spans.last
       ORDER BY r.measured_at`,
     { type: QueryTypes.SELECT, replacements: { hours: JSON.stringify([...new Set(hours)]), sensorId } },
   )

@@ -20,19 +20,6 @@ export type TreeFormValues = {
   pourDate: string
 }
 
-const TEXT_FIELDS = [
-  'tag',
-  'recipeVersionId',
-  'placeId',
-  'waxMassKg',
-  'cupKind',
-  'cupVolumeL',
-  'recessClass',
-  'spacing',
-  'hungMassKg',
-  'pourDate',
-] as const
-
 const MOST_PIECES = 41
 
 function text(form: FormData, name: string): string {
@@ -42,7 +29,6 @@ function text(form: FormData, name: string): string {
 
 /** Form fields to the tree form's values. Pieces come as `pieces.0.workTitle`, `pieces.0.isRecast`, and so on, from 0 without a gap. */
 export function readTreeForm(form: FormData): TreeFormValues {
-  const fields = Object.fromEntries(TEXT_FIELDS.map((name) => [name, text(form, name)])) as Record<(typeof TEXT_FIELDS)[number], string>
   const pieces: PieceValues[] = []
   for (let index = 0; index < MOST_PIECES && form.has(`pieces.${index}.workTitle`); index += 1) {
     pieces.push({
@@ -52,7 +38,19 @@ export function readTreeForm(form: FormData): TreeFormValues {
       isRecast: form.get(`pieces.${index}.isRecast`) === 'on',
     })
   }
-  return { ...fields, tag: fields.tag.toUpperCase(), pieces }
+  return {
+    tag: text(form, 'tag').toUpperCase(),
+    recipeVersionId: text(form, 'recipeVersionId'),
+    placeId: text(form, 'placeId'),
+    pieces,
+    waxMassKg: text(form, 'waxMassKg'),
+    cupKind: text(form, 'cupKind'),
+    cupVolumeL: text(form, 'cupVolumeL'),
+    recessClass: text(form, 'recessClass'),
+    spacing: text(form, 'spacing'),
+    hungMassKg: text(form, 'hungMassKg'),
+    pourDate: text(form, 'pourDate'),
+  }
 }
 
 /** One sentence a field, by its path: `waxMassKg`, `pieces.0.workTitle`. The first complaint about a field is the one to say. */

@@ -6,7 +6,6 @@ import { holdTree, liftHold } from '@/lib/commands/hold-tree'
 import { lookOver } from '@/lib/commands/look-over'
 import { moveTree } from '@/lib/commands/move-tree'
 import { passIntake } from '@/lib/commands/pass-intake'
-import { withdrawRelease } from '@/lib/commands/release-trees'
 import { scrapTree } from '@/lib/commands/scrap-tree'
 import { systemClock } from '@/lib/core/clock'
 import { requireMember, type Member } from '@/lib/server/auth'
@@ -55,14 +54,6 @@ export async function scrapAction(treeId: string, _previous: FormState, form: Fo
   return treeForm(treeId, readReason(form), async (id, { reason }) => {
     await scrapTree(id, reason, by(member))
     return 'Scrapped.'
-  })
-}
-
-export async function withdrawReleaseAction(treeId: string, _previous: FormState, form: FormData): Promise<FormState> {
-  const member = await requireMember('release')
-  return treeForm(treeId, readReason(form), async (id, { reason }) => {
-    await withdrawRelease(id, reason, by(member))
-    return 'Release taken back.'
   })
 }
 

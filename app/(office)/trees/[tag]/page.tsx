@@ -7,13 +7,15 @@ import { LiveClock } from '@/app/_components/live-clock'
 import { Plate } from '@/app/_components/plate'
 import { StateGlyph } from '@/app/_components/state-mark'
 import { Tag } from '@/app/_components/tag'
+import { TellMeKey } from '@/app/_components/tell-me-key'
 import { TimePair } from '@/app/_components/time-pair'
 import { Caution } from '@/app/(office)/_components/caution'
 import { NOT_CALIBRATED } from '@/app/(office)/_components/due-words'
 import { KeepFresh } from '@/app/(office)/_components/keep-fresh'
 import { TreeSection } from '@/app/(office)/_components/tree-section'
 import { WarningList } from '@/app/(office)/_components/warning-list'
-import { liftHoldAction, withdrawReleaseAction } from '@/app/(office)/trees/[tag]/actions'
+import { withdrawReleaseAction } from '@/app/(office)/burnout/actions'
+import { liftHoldAction } from '@/app/(office)/trees/[tag]/actions'
 import { BigSection } from '@/app/(office)/trees/[tag]/_components/big-section'
 import { CoatLog } from '@/app/(office)/trees/[tag]/_components/coat-log'
 import { DryingCharts } from '@/app/(office)/trees/[tag]/_components/drying-charts'
@@ -22,7 +24,7 @@ import { IntakeForm } from '@/app/(office)/trees/[tag]/_components/intake-form'
 import { LookKeys } from '@/app/(office)/trees/[tag]/_components/look-keys'
 import { LookOverForm } from '@/app/(office)/trees/[tag]/_components/look-over-form'
 import { PhonePair } from '@/app/(office)/trees/[tag]/_components/phone-pair'
-import { ReasonForm } from '@/app/(office)/trees/[tag]/_components/reason-form'
+import { ReasonForm } from '@/app/(office)/_components/reason-form'
 import { TakeBack } from '@/app/(office)/trees/[tag]/_components/take-back'
 import { TreeActs } from '@/app/(office)/trees/[tag]/_components/tree-acts'
 import { pourSentence, pourVerdict } from '@/lib/burnout/pour-verdict'
@@ -67,11 +69,14 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
   const openHold = holds.find((hold) => hold.liftedAt === null) ?? null
   const canDo = (act: Parameters<typeof may>[1]) => may(member.role, act)
   const mayLook = isCoatOpen && canDo('look')
+  const mayWatch =
+    canDo('subscribe') && (['wet', 'drying', 'nearly dry', 'unknown', 'last coat on'].includes(tree.state) || detail.isWatched) && !hasLeft
   const newestRow = coats.find((coat) => coat.isNewest)
   const targetPct = Math.round((1 - tree.openTarget) * 100)
   const isLookedOver = lookOvers.some((look) => look.coatNumber === tree.newestCoat?.number)
   const isReleasable = tree.state === 'ready for burnout' || (tree.state === 'dried out' && isLookedOver)
   const said = tree.look === null ? null : `${tree.look.by}, ${formatMoment(tree.look.at, now, timeZone)}: ${tree.look.verdict}.`
+  const isCoatDrying = tree.moistureRatio !== null && ['wet', 'drying', 'nearly dry', 'last coat on'].includes(tree.state)
   const isDue = ['dip now', 'waiting', 'overdue', 'wax ready'].includes(tree.state)
 
   const stateWords = (
@@ -129,7 +134,7 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
         </span>
         <div className="min-w-0 grow">
           <h1>{tree.title}</h1>
-          <p>
+          <p className="tree-facts">
             {[
               `Recipe ${recipe.name}`,
               `treed ${formatDate(detail.createdAt, timeZone)}${detail.createdBy === null ? '' : ` by ${detail.createdBy}`}`,
@@ -162,13 +167,19 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
         <div className="verdict-say">
           <p className="verdict-line">
             {stateWords}
+            {isCoatDrying && <span className="only-phone">{formatShare(tree.moistureRatio)} of its water left</span>}
             <span className="verdict-words">
               {pairLine}
               {verdict.next}
             </span>
           </p>
+          {mayWatch && (
+            <div className="verdict-watch">
+              <TellMeKey treeId={tree.id} isWatched={detail.isWatched} />
+            </div>
+          )}
           {mayLook && (
-            <div className="only-desk">
+            <div className="verdict-look">
               <LookKeys treeId={tree.id} said={said} />
             </div>
           )}
@@ -195,11 +206,6 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
             <p>
               Drain {formatSeconds(tree.next.drainSeconds)}. Back to {tree.place.name}.
             </p>
-          </div>
-        )}
-        {mayLook && (
-          <div className="only-phone-block">
-            <LookKeys treeId={tree.id} said={said} size={56} />
           </div>
         )}
         <WarningList warnings={tree.warnings.filter((warning) => !SAID_ELSEWHERE.has(warning.code))} />
@@ -235,7 +241,12 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
         <header>
           <h2>Coat log</h2>
           <p>
-            newest first; dip at {tree.openTarget >= 0.95 ? 10 : targetPct} % of the coat’s water or less, the last coat dries out to 5 %
+            newest first
+            {newestRow !== undefined &&
+              !hasLeft &&
+              (tree.next === null
+                ? `; the last coat is dried out at ${targetPct} % of its water`
+                : `; coat ${newestRow.number} may be dipped over at ${targetPct} % of its water or less`)}
           </p>
         </header>
         {coats.length === 0 ? <p className="px-4 py-3 text-soot">The recipe has no coat.</p> : <CoatLog coats={coats} {...moment} />}
@@ -245,7 +256,7 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
         <div className="tree-column">
           {newestRow !== undefined && !hasLeft && (
             <Plate
-              title={isCoatOpen ? `Coat ${newestRow.number} drying` : `Coat ${newestRow.number}`}
+              title={`Drying of coat ${newestRow.number}`}
               line={recipe.isCalibrated ? 'water left in the coat, %' : `water left in the coat, %; ${NOT_CALIBRATED}`}
             >
               {curve === null || curve.points.length === 0 ? (
@@ -256,6 +267,7 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
                   climate={detail.climate}
                   coatNumber={newestRow.number}
                   isLastCoat={tree.next === null}
+                  moistureRatio={tree.moistureRatio}
                   now={now}
                   timeZone={timeZone}
                 />
@@ -388,6 +400,9 @@ function About({ detail, now, timeZone }: { detail: Detail; now: number; timeZon
       `${piece.workTitle}${piece.sectionName === '' ? '' : `, ${piece.sectionName}`}, edition ${piece.editionNumber}${piece.isRecast ? ', recast' : ''}`,
     ]),
     ['Recipe', `${detail.recipe.name}, version ${detail.recipe.version}${detail.recipe.isCalibrated ? '' : `, ${NOT_CALIBRATED}`}`],
+    ['Treed', `${formatDate(detail.createdAt, timeZone)}${detail.createdBy === null ? '' : ` by ${detail.createdBy}`}`],
+    ['Place', detail.tree.place.name],
+    ['Pour date', detail.tree.pourDate === null ? 'none set' : formatDay(detail.tree.pourDate)],
     ['Wax', `${detail.waxMassKg} kg`],
     ['Cup', `${detail.cupKind}, ${detail.cupVolumeL} L`],
     ['Deepest recess', detail.recessClass],
@@ -398,10 +413,6 @@ function About({ detail, now, timeZone }: { detail: Detail; now: number; timeZon
       intake.passedAt === null
         ? 'open'
         : `passed by ${intake.passedBy ?? 'somebody'}, ${formatMoment(intake.passedAt, now, timeZone)}; wax ${intake.waxSurface ?? 'not said'}`,
-    ],
-    [
-      'Water in the newest coat',
-      detail.tree.moistureRatio === null ? 'none' : `${formatShare(detail.tree.moistureRatio)} left by the clock`,
     ],
   ]
   return (

@@ -68,8 +68,6 @@ export function TreeForm({ action, values, choices, fixed, submitWords, cancelPa
               <option value="" disabled>
                 Choose a recipe
               </option>
-              {/* A tree keeps the version it was treed with, also when a newer one is out. */}
-              {values.recipeVersionId !== '' && recipe === undefined && <option value={values.recipeVersionId}>As it is now</option>}
               {choices.recipes.map((choice) => (
                 <option key={choice.versionId} value={choice.versionId}>
                   {choice.label}, {choice.coatCount} coats{choice.isCalibrated ? '' : ', not calibrated yet'}
@@ -77,7 +75,7 @@ export function TreeForm({ action, values, choices, fixed, submitWords, cancelPa
               ))}
             </SelectField>
           ) : (
-            <FixedField label="Recipe" value={recipe?.label ?? 'As it is now'} why={fixed.recipeVersionId} />
+            <FixedField label="Recipe" value={recipe?.label ?? ''} why={fixed.recipeVersionId} />
           )}
           {fixed.placeId === undefined ? (
             <SelectField name="placeId" label="Where it hangs" defaultValue={values.placeId} error={form.errorOf('placeId')}>
@@ -93,7 +91,7 @@ export function TreeForm({ action, values, choices, fixed, submitWords, cancelPa
           ) : (
             <FixedField
               label="Where it hangs"
-              value={choices.places.find((place) => place.id === values.placeId)?.name ?? 'As it is now'}
+              value={choices.places.find((place) => place.id === values.placeId)?.name ?? 'A place no longer used'}
               why={fixed.placeId}
             />
           )}
@@ -259,7 +257,9 @@ function Pieces({ pieces, works, form }: { pieces: PieceValues[]; works: TreeCho
       <div className="plate-body grid gap-4">
         <datalist id={worksId}>
           {works.map((work) => (
-            <option key={work.title} value={work.title} />
+            <option key={work.title} value={work.title}>
+              {work.title}
+            </option>
           ))}
         </datalist>
         {rows.map(({ key, piece }, index) => (
@@ -330,7 +330,9 @@ function PieceRow({
       />
       <datalist id={sectionsId}>
         {sections.filter(Boolean).map((section) => (
-          <option key={section} value={section} />
+          <option key={section} value={section}>
+            {section}
+          </option>
         ))}
       </datalist>
       <Field

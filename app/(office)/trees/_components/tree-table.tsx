@@ -35,7 +35,7 @@ export function TreeTable({ trees, context }: { trees: readonly TreeListRow[]; c
                 </Link>
               </th>
               <td role="cell" className="c-shell">
-                <TreeSection tree={tree} height={20} fit={132} isDecoration />
+                <TreeSection tree={tree} height={20} fit={112} isDecoration />
                 <span className="block text-14 text-soot">{coatsOnWords(tree)}</span>
               </td>
               <td role="cell" className="c-state">

@@ -151,8 +151,7 @@ export function CoatLog({ coats, now, timeZone }: { coats: readonly CoatRow[] } 
               </tr>
               {row.on !== null && (hasRemarks(row.on) || foreseenWords(row.on) !== null) && (
                 <tr className="remark-row">
-                  <td />
-                  <td colSpan={9}>
+                  <td colSpan={10}>
                     <Remarks coat={row.on} now={now} timeZone={timeZone} />
                   </td>
                   <td colSpan={3} className="right">

@@ -23,12 +23,15 @@ export type DryingChartsProps = {
   climate: TreeDetail['climate']
   coatNumber: number
   isLastCoat: boolean
+  /** Share of the coat's water left now, as the rest of the page says it. */
+  moistureRatio: number | null
   now: number
   timeZone: string
 }
 
 const GRID = { stroke: 'var(--rule)', strokeWidth: 1, vertical: false } as const
 const TICK = { fill: 'var(--soot)', fontSize: 13, fontFamily: 'var(--font-text), sans-serif' } as const
+const LABEL = { fontSize: 14, fontWeight: 600, fontFamily: 'var(--font-text), sans-serif' } as const
 const MARGIN = { top: 8, right: 12, bottom: 0, left: 0 } as const
 const NOW_LINE = { stroke: 'var(--ink)', strokeWidth: 3 } as const
 const DAY_MS = 86_400_000
@@ -58,7 +61,7 @@ function markerShape(words: string, isSafe: boolean, lift: number, anchor: 'star
 }
 
 /** Water left in the newest coat, and the room's air below it on the same hours. */
-export function DryingCharts({ curve, climate, coatNumber, isLastCoat, now, timeZone }: DryingChartsProps) {
+export function DryingCharts({ curve, climate, coatNumber, isLastCoat, moistureRatio, now, timeZone }: DryingChartsProps) {
   const rows = curveRows(curve.points)
   const from = rows[0]?.at ?? now
   const to = Math.max(rows.at(-1)?.at ?? now, from + 60_000)
@@ -71,11 +74,13 @@ export function DryingCharts({ curve, climate, coatNumber, isLastCoat, now, time
     return span > DAY_MS && clock === '00:00' ? formatDate(at, timeZone).replace(/ \w+$/, '') : clock
   }
   const share = (at: number) => (at - from) / span
-  const current = rows.findLast((row) => row.pastPct !== null)
-  const left = current?.pastPct ?? null
+  const left = moistureRatio === null ? null : moistureRatio * 100
   const pair = { likelyAt: curve.likelyAt, safeAt: curve.safeAt }
   const pairWords = timePairWords(pair, now, timeZone)
   const act = isLastCoat ? 'dried out' : 'dip'
+  const likelyShare = curve.likelyAt === null ? 0 : share(curve.likelyAt)
+  // Clear of the line of now, and inside the frame.
+  const likelyAnchor = likelyShare > 0.82 ? 'end' : likelyShare < 0.3 || Math.abs(likelyShare - share(now)) < 0.16 ? 'start' : 'middle'
   const isInside = (at: number | null): at is number => at !== null && at >= from && at <= to
   const targetWords = `${act} at ${wholeNumber(curve.targetPct)} %`
   const summary = `Drying curve of coat ${coatNumber}: ${left === null ? 'water left not known' : `${wholeNumber(left)} % of the water left now`}; ${targetWords}, ${pairWords.text}.`
@@ -83,7 +88,7 @@ export function DryingCharts({ curve, climate, coatNumber, isLastCoat, now, time
   return (
     <figure className="charts">
       <div role="img" aria-label={summary}>
-        <ResponsiveContainer width="100%" height={310}>
+        <ResponsiveContainer width="100%" height={310} initialDimension={{ width: 604, height: 310 }}>
           <ComposedChart data={rows} margin={MARGIN} accessibilityLayer={false}>
             <CartesianGrid {...GRID} />
             <XAxis
@@ -112,7 +117,7 @@ export function DryingCharts({ curve, climate, coatNumber, isLastCoat, now, time
               y={curve.targetPct}
               stroke="var(--verdigris)"
               strokeWidth={2}
-              label={{ value: targetWords, position: 'insideBottomLeft', className: 'chart-target' }}
+              label={{ value: targetWords, position: 'insideBottomLeft', fill: 'var(--verdigris-ink)', ...LABEL }}
             />
             <Line dataKey="pastPct" stroke="var(--ink)" strokeWidth={2.4} dot={false} isAnimationActive={false} type="monotone" />
             <Line
@@ -131,8 +136,9 @@ export function DryingCharts({ curve, climate, coatNumber, isLastCoat, now, time
                 label={{
                   value: left === null ? 'now' : `now, ${wholeNumber(left)} % left`,
                   position: share(now) > 0.35 ? 'insideTopRight' : 'insideTopLeft',
-                  className: 'chart-now',
+                  fill: 'var(--ink)',
                   offset: 10,
+                  ...LABEL,
                 }}
               />
             )}
@@ -150,12 +156,7 @@ export function DryingCharts({ curve, climate, coatNumber, isLastCoat, now, time
               <ReferenceDot
                 x={curve.likelyAt}
                 y={curve.targetPct}
-                shape={markerShape(
-                  `likely ${formatMoment(curve.likelyAt, now, timeZone)}`,
-                  false,
-                  62,
-                  share(curve.likelyAt) < 0.3 ? 'start' : share(curve.likelyAt) > 0.6 ? 'end' : 'middle',
-                )}
+                shape={markerShape(`likely ${formatMoment(curve.likelyAt, now, timeZone)}`, false, 62, likelyAnchor)}
               />
             )}
             {isInside(curve.safeAt) && (
@@ -264,13 +265,14 @@ function RoomChart({
   const values = rows.map((row) => row[dataKey])
   const bounds = evenBounds(values, step)
   const newest = rows.at(-1)!
-  const isLate = (newest.at - domain[0]) / (domain[1] - domain[0]) > 0.8
+  const height = foot ? 96 : 74
+  const isLate = (Math.max(newest.at, now) - domain[0]) / (domain[1] - domain[0]) > 0.8
   return (
     <div
       role="img"
       aria-label={`${name}: ${format(Math.min(...values))} to ${format(Math.max(...values))}, newest ${format(newest[dataKey])}.`}
     >
-      <ResponsiveContainer width="100%" height={foot ? 96 : 74}>
+      <ResponsiveContainer width="100%" height={height} initialDimension={{ width: 604, height }}>
         <LineChart data={rows} margin={MARGIN} accessibilityLayer={false}>
           <CartesianGrid {...GRID} />
           <XAxis
@@ -298,10 +300,10 @@ function RoomChart({
           />
           {now >= domain[0] && now <= domain[1] && <ReferenceLine x={now} {...NOW_LINE} />}
           <ReferenceDot
-            x={newest.at}
+            x={Math.min(Math.max(newest.at, now), domain[1])}
             y={newest[dataKey]}
             r={0}
-            label={{ value: format(newest[dataKey]), position: isLate ? 'left' : 'right', className: 'chart-now', fill: color, offset: 10 }}
+            label={{ value: format(newest[dataKey]), position: isLate ? 'left' : 'right', fill: color, offset: 10, ...LABEL }}
           />
         </LineChart>
       </ResponsiveContainer>

@@ -8,20 +8,19 @@ export type LookKeysProps = {
   treeId: string
   /** Newest word on this coat, already in words: 'Wren, 12:20: not yet'. */
   said: string | null
-  size?: 44 | 56
 }
 
 /** A person's word on the newest coat, in one press. */
-export function LookKeys({ treeId, said, size = 44 }: LookKeysProps) {
+export function LookKeys({ treeId, said }: LookKeysProps) {
   const look = useOperation(`/api/v1/trees/${treeId}/looks`)
   return (
     <div className="look-keys">
-      <p id={`look-${treeId}-${size}`}>How does it look?</p>
-      <div className="look-pair" role="group" aria-labelledby={`look-${treeId}-${size}`}>
-        <Key size={size} icon="check" isOff={look.isPending} onPress={() => look.send({ verdict: 'looks dry' })}>
+      <p id={`look-${treeId}`}>How does it look?</p>
+      <div className="look-pair" role="group" aria-labelledby={`look-${treeId}`}>
+        <Key icon="check" isOff={look.isPending} onPress={() => look.send({ verdict: 'looks dry' })}>
           Looks dry
         </Key>
-        <Key size={size} icon="drop" isOff={look.isPending} onPress={() => look.send({ verdict: 'not yet' })}>
+        <Key icon="drop" isOff={look.isPending} onPress={() => look.send({ verdict: 'not yet' })}>
           Not yet
         </Key>
       </div>

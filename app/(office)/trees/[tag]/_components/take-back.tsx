@@ -10,10 +10,10 @@ import { formatDuration } from '@/lib/format/duration'
 import type { TreeDetail } from '@/lib/trees/detail-contract'
 import { reasonInput } from '@/lib/trees/tree-input'
 
-export type TakeBackProps = { takeBack: NonNullable<TreeDetail['takeBack']>; coatNumber: number; now: number; size?: 44 | 56 }
+export type TakeBackProps = { takeBack: NonNullable<TreeDetail['takeBack']>; coatNumber: number; now: number }
 
 /** Takes the newest coat back: at once by whoever logged it within ten minutes, later by a supervisor with a reason. */
-export function TakeBack({ takeBack, coatNumber, now: serverNow, size = 44 }: TakeBackProps) {
+export function TakeBack({ takeBack, coatNumber, now: serverNow }: TakeBackProps) {
   const [isOpen, setIsOpen] = useState(false)
   const [error, setError] = useState<string | undefined>()
   const now = useServerNow(serverNow)
@@ -31,7 +31,6 @@ export function TakeBack({ takeBack, coatNumber, now: serverNow, size = 44 }: Ta
   return (
     <div className="take-back">
       <Key
-        size={size}
         tone="quiet"
         icon="undo"
         isOff={undo.isPending}
@@ -51,7 +50,7 @@ export function TakeBack({ takeBack, coatNumber, now: serverNow, size = 44 }: Ta
             autoComplete="off"
             hint="The coat stays in the log as taken back."
           />
-          <Key type="submit" tone="ink" size={size} isOff={undo.isPending}>
+          <Key type="submit" tone="ink" isOff={undo.isPending}>
             Take it back
           </Key>
         </form>

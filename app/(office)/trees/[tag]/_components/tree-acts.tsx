@@ -5,7 +5,7 @@ import { SelectField } from '@/app/_components/field'
 import { Icon } from '@/app/_components/icons'
 import { Key, KeyLink } from '@/app/_components/key'
 import { holdAction, liftHoldAction, moveAction, scrapAction } from '@/app/(office)/trees/[tag]/actions'
-import { ReasonForm } from '@/app/(office)/trees/[tag]/_components/reason-form'
+import { ReasonForm } from '@/app/(office)/_components/reason-form'
 import { FormMessage } from '@/app/(office)/_components/form-message'
 import { useKeptForm } from '@/app/(office)/_components/use-kept-form'
 

@@ -9,6 +9,7 @@ import { loadTreeDetail } from '@/lib/queries/tree-detail'
 import { requireMember } from '@/lib/server/auth'
 import { answerForm, type FormState } from '@/lib/server/form-state'
 import { fixedFields } from '@/lib/trees/fixed-fields'
+import { readTag } from '@/lib/trees/read-tag'
 import { fieldErrors, formValuesOf, keepFixed, readTreeForm } from '@/lib/trees/tree-form-values'
 import { treeInput } from '@/lib/trees/tree-input'
 
@@ -16,7 +17,9 @@ import { treeInput } from '@/lib/trees/tree-input'
 export async function editTreeAction(tag: string, _previous: FormState, form: FormData): Promise<FormState> {
   const member = await requireMember('trees')
   return answerForm(async () => {
-    const detail = await loadTreeDetail({ tag: String(tag), viewer: member, clock: systemClock })
+    // Bound to the form, but sent by the browser like any field.
+    const known = readTag(tag)
+    const detail = known === null ? null : await loadTreeDetail({ tag: known, viewer: member, clock: systemClock })
     if (detail === null) throw new AppError('not_found', 'There is no such tree.')
     const values = keepFixed(readTreeForm(form), formValuesOf(detail), fixedFields(detail.tree.coatsOn))
     const parsed = treeInput.safeParse(values)

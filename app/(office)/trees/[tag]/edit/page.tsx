@@ -23,7 +23,12 @@ export default async function EditTreePage({ params }: PageProps<'/trees/[tag]/e
   const member = await requireMemberPage('trees', `${path}/edit`)
   const [detail, choices] = await Promise.all([loadTreeDetail({ tag, viewer: member, clock: systemClock }), loadTreeForm()])
   if (detail === null) notFound()
-  const { state, title, coatsOn } = detail.tree
+  const { state, title, coatsOn, coats } = detail.tree
+  // A tree keeps the version it was treed with, also when a newer one is out.
+  const { versionId, name, version, isCalibrated } = detail.recipe
+  const recipes = choices.recipes.some((recipe) => recipe.versionId === versionId)
+    ? choices.recipes
+    : [{ versionId, label: `${name}, version ${version}`, coatCount: coats.length, isCalibrated }, ...choices.recipes]
   return (
     <>
       <div className="page-head items-center">
@@ -43,7 +48,7 @@ export default async function EditTreePage({ params }: PageProps<'/trees/[tag]/e
       ) : (
         <TreeForm
           action={editTreeAction.bind(null, tag)}
-          choices={choices}
+          choices={{ ...choices, recipes }}
           values={formValuesOf(detail)}
           fixed={fixedFields(coatsOn)}
           submitWords="Save"
