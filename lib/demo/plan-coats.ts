@@ -59,7 +59,8 @@ export function guardAt(room: DryingRoom, place: DemoPlace, dippedAt: number, { 
 
 /** The newest whole second at which a coat can be dipped so that its guard falls at `at` or before. */
 export function latestDipFor(room: DryingRoom, place: DemoPlace, at: number, demand: Demand, from: number): number | null {
-  const isInTime = (dippedAt: number) => room.doseBetween(place, dippedAt + demand.coat.drainSeconds * 1000, at)[demand.bound] >= demand.amount
+  const isInTime = (dippedAt: number) =>
+    room.doseBetween(place, dippedAt + demand.coat.drainSeconds * 1000, at)[demand.bound] >= demand.amount
   if (!isInTime(from)) return null
   let [early, late] = [from, at]
   while (late - early > 500) {

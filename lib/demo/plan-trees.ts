@@ -160,7 +160,10 @@ function newestDips(tree: CastTree, lookOverAt: number | null, parts: Parts): Ca
 }
 
 const scanDips = (newest: number): number[] =>
-  Array.from({ length: Math.floor((SCAN_HOURS * HOUR) / SCAN_EVERY_MS) }, (_, step) => Math.floor((newest - step * SCAN_EVERY_MS) / 1000) * 1000)
+  Array.from(
+    { length: Math.floor((SCAN_HOURS * HOUR) / SCAN_EVERY_MS) },
+    (_, step) => Math.floor((newest - step * SCAN_EVERY_MS) / 1000) * 1000,
+  )
 
 /** Leaves an hour and more before a coat counts as overdue, so that the picture of the first start stands for a while. */
 function isWithinWait(dippedAt: number, { coat }: Demand, now: number): boolean {

@@ -68,8 +68,9 @@ describe('devices of a member', () => {
 
   it('are ten at most', async () => {
     const answers = []
-    for (let n = 0; n < 11; n += 1)
+    for (let n = 0; n < 11; n += 1) {
       answers.push((await clients.owner.send('POST', ADDRESS, bodyOf(service.subscribe(vapidPublicKey)))).status)
+    }
     expect(answers).toEqual([...Array.from({ length: 10 }, () => 201), 409])
   })
 
