@@ -19,7 +19,11 @@ const GAP = { air: 'net loft', startsBeforeNowMs: 103.4 * millisecondsInHour, le
 export type DemoReading = Air & { measuredAt: number }
 
 /** Readings of one air on the five-minute grid in [from, to], but for the one gap before `now`. */
-export function demoReadings(climate: DemoClimate, air: DemoAir, { from, to, now }: { from: number; to: number; now: number }): DemoReading[] {
+export function demoReadings(
+  climate: DemoClimate,
+  air: DemoAir,
+  { from, to, now }: { from: number; to: number; now: number },
+): DemoReading[] {
   const gapFrom = now - GAP.startsBeforeNowMs
   const readings: DemoReading[] = []
   for (let at = Math.ceil(from / READING_EVERY_MS) * READING_EVERY_MS; at <= to; at += READING_EVERY_MS) {

@@ -90,9 +90,7 @@ export async function openShop({
     const recipeVersionId = recipeVersionIds[key]
     const createdBy = people.get('ines')?.id ?? null
     await RecipeVersion.create({ id: recipeVersionId, recipeId: recipe.id, version: 1, createdBy, createdAt })
-    await RecipeCoat.bulkCreate(
-      DEMO_RECIPES[key].coats.map(({ bath, ...coat }) => ({ ...coat, recipeVersionId, bathId: bathIds[bath] })),
-    )
+    await RecipeCoat.bulkCreate(DEMO_RECIPES[key].coats.map(({ bath, ...coat }) => ({ ...coat, recipeVersionId, bathId: bathIds[bath] })))
   }
   return { people, sensorIds, wallSensorId: wall.id, placeIds, bathIds, recipeVersionIds, sensorTokens }
 }

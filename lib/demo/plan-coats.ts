@@ -59,7 +59,8 @@ export function guardAt(room: DryingRoom, place: DemoPlace, dippedAt: number, { 
 
 /** The newest whole second at which a coat can be dipped so that its guard falls at `at` or before. */
 export function latestDipFor(room: DryingRoom, place: DemoPlace, at: number, demand: Demand, from: number): number | null {
-  const isInTime = (dippedAt: number) => room.doseBetween(place, dippedAt + demand.coat.drainSeconds * 1000, at)[demand.bound] >= demand.amount
+  const isInTime = (dippedAt: number) =>
+    room.doseBetween(place, dippedAt + demand.coat.drainSeconds * 1000, at)[demand.bound] >= demand.amount
   if (!isInTime(from)) return null
   let [early, late] = [from, at]
   while (late - early > 500) {
@@ -134,7 +135,7 @@ export function reasonFor({ story }: CastTree, number: number): string | null {
   return null
 }
 
-/** A dip so late that the next one comes while 10 to 25 % of the water is left; null where no run falls so. */
+/** A dip so late that the next one comes while an eighth to a quarter of the water is left; null where no run falls so. */
 function earlyDip(
   dueAt: number,
   { coat, need }: Demand,
@@ -146,7 +147,7 @@ function earlyDip(
     while (dippedAt !== null && dueAt - dippedAt < 40 * millisecondsInHour) {
       const share = room.doseBetween(place, dippedAt + coat.drainSeconds * 1000, dueAt).likely / need.likely
       if (share > 0.95) break
-      if (share > 0.72) return { place, dippedAt }
+      if (share > 0.66) return { place, dippedAt }
       dippedAt = lastRunSlot(hours, dippedAt - 1, kind)
     }
   }

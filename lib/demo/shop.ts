@@ -60,7 +60,11 @@ export type DemoRecipeCoat = {
 
 type Line = [kind: CoatKind, stucco: Stucco, readAloud: string]
 
-const FIRST_FACE: Line = ['face', 'fine', 'Slow into the slurry, turn it, break every bubble with the brush. Even and matte before the sand.']
+const FIRST_FACE: Line = [
+  'face',
+  'fine',
+  'Slow into the slurry, turn it, break every bubble with the brush. Even and matte before the sand.',
+]
 const SECOND_FACE: Line = ['face', 'fine', 'Blow off loose sand first. Prewet, drain to matte, then dip slowly.']
 const MEDIUM: Line = ['backup', 'medium', 'Prewet, dip, drain with the cup down. Look into the undercuts.']
 const COARSE: Line = ['backup', 'coarse', 'Dip and turn once. Coarse sand all round, edges twice.']
