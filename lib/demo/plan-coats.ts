@@ -135,7 +135,7 @@ export function reasonFor({ story }: CastTree, number: number): string | null {
   return null
 }
 
-/** A dip so late that the next one comes while 10 to 25 % of the water is left; null where no run falls so. */
+/** A dip so late that the next one comes while an eighth to a quarter of the water is left; null where no run falls so. */
 function earlyDip(
   dueAt: number,
   { coat, need }: Demand,
@@ -147,7 +147,7 @@ function earlyDip(
     while (dippedAt !== null && dueAt - dippedAt < 40 * millisecondsInHour) {
       const share = room.doseBetween(place, dippedAt + coat.drainSeconds * 1000, dueAt).likely / need.likely
       if (share > 0.95) break
-      if (share > 0.72) return { place, dippedAt }
+      if (share > 0.66) return { place, dippedAt }
       dippedAt = lastRunSlot(hours, dippedAt - 1, kind)
     }
   }

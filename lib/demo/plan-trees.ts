@@ -79,13 +79,35 @@ function planGone(tree: CastTree, aim: Aim & { daysAgo: number }, parts: Parts):
   const isReleased = aim.kind === 'released'
   const lookOverAt = isReleased ? workBefore(leftAt, [15 * MINUTE, 90 * MINUTE], parts) : null
   const newest = isReleased ? recipeOf(tree).length : (tree.coatsOn?.[1] ?? 1)
-  for (const shape of shapesOf(tree)) {
+  let second: WithCoats | null = null
+  for (const shape of shapesOf(tree).flatMap(withEarlyCoats)) {
     for (const pace of ['usual', 'fast'] as const) {
       const coats = planCoatsBefore(shape, newest, lookOverAt ?? leftAt, parts, pace)
-      if (coats) return { ...shape, coats, lookOverAt, leftAt }
+      if (!coats) continue
+      const plan = { ...shape, coats, lookOverAt, leftAt }
+      if (hasItsEarlyDip(plan, parts)) return plan
+      second ??= plan
     }
   }
-  return null
+  return second
+}
+
+/** A tree that is once dipped early may be so over any of its middle coats: not every day has a run at the right hour. */
+function withEarlyCoats(shape: Shape): Shape[] {
+  const { tree } = shape
+  const { story } = tree
+  if (story?.kind !== 'dipped early') return [shape]
+  return [story.overCoat, ...EARLY_COATS].map((overCoat) => ({ ...shape, tree: { ...tree, story: { ...story, overCoat } } }))
+}
+const EARLY_COATS = [3, 5]
+
+function hasItsEarlyDip({ coats, ...shape }: WithCoats, { room }: Parts): boolean {
+  const { story } = shape.tree
+  if (story?.kind !== 'dipped early') return true
+  const [below, above] = [coats[story.overCoat - 1], coats[story.overCoat]]
+  if (!below || !above) return false
+  const dose = room.doseBetween(below.place, below.dippedAt + below.drainSeconds * 1000, above.dippedAt)
+  return dose.likely < 0.96 * demandOf(shape, below.number).need.likely
 }
 
 type Candidate = { shape: Shape; number: number; place: DemoPlace; dippedAt: number; cost: number }
@@ -198,7 +220,11 @@ function costOf(aim: Aim, { demand, place, dippedAt, odd, lookOverAt }: Question
       return hasGuardBy(now - 20 * MINUTE) ? 0.2 * ageHours : null
     case 'looked over':
       return lookOverAt !== null && shiftAt(hours, lookOverAt) && hasGuardBy(lookOverAt - 5 * MINUTE) ? 0.2 * ageHours : null
-    default:
+    case 'bare wax':
+    case 'wax ready':
+    case 'guard':
+    case 'released':
+    case 'scrapped':
       return null
   }
 }

@@ -3,7 +3,7 @@ import { TZDate } from '@date-fns/tz'
 import { CAST } from '@/lib/demo/cast'
 import type { DemoClimate } from '@/lib/demo/climate'
 import { dryingRoom } from '@/lib/demo/drying-room'
-import { recipeOf } from '@/lib/demo/plan-coats'
+import { demandOf, recipeOf } from '@/lib/demo/plan-coats'
 import { planTree, type PlannedTree } from '@/lib/demo/plan-trees'
 import { seededRandom } from '@/lib/demo/random'
 import { DEMO_SHIFTS, DEMO_TIME_ZONE } from '@/lib/demo/shop'
@@ -38,14 +38,19 @@ const FIRST_TAG = 412
 /** Wednesdays and Fridays. */
 const POUR_WEEKDAYS = [3, 5]
 
+/** A cautious day's drying, weekends and nights taken in, and the wait for somebody to dip. */
+const REFERENCE_HOURS_A_DAY = 7
+const WAIT_DAYS = 0.35
+
 /** The first pour day that leaves room for what is still to do. */
 function pourDateOf(planned: PlannedTree, now: number): string | null {
   const { tree, coats, leftAt } = planned
   if (tree.pour === undefined) return null
   if (tree.pour === 'will miss') return firstPourDay(now + 20 * millisecondsInHour)
   if (leftAt !== null) return firstPourDay(leftAt + 12 * millisecondsInHour)
-  const slow = planned.recessClass === 'none' ? 1 : planned.recessClass === 'deep recess' ? 1.4 : 2
-  const days = 5 + slow * 1.3 * (recipeOf(tree).length - coats.length)
+  const toCome = recipeOf(tree).slice(Math.max(0, coats.length - 1))
+  const referenceHours = toCome.reduce((sum, { number }) => sum + demandOf(planned, number).amount, 0)
+  const days = 2 + referenceHours / REFERENCE_HOURS_A_DAY + WAIT_DAYS * toCome.length
   return firstPourDay(now + days * millisecondsInDay)
 }
 
