@@ -38,8 +38,9 @@ function ofTree(tree: TaggedTree, { now, hours }: DemoPlan): Happening[] {
   else list.push({ at: tree.createdAt + 2 * MINUTE, kind: 'intake begun', by: SUPERVISOR, tree })
   if (tree.lookOverAt !== null) list.push({ at: tree.lookOverAt, kind: 'look-over', by: SUPERVISOR, tree })
   if (aim.kind === 'released' && tree.leftAt !== null) list.push({ at: tree.leftAt, kind: 'release', by: SUPERVISOR, tree })
-  if (aim.kind === 'scrapped' && tree.leftAt !== null)
+  if (aim.kind === 'scrapped' && tree.leftAt !== null) {
     list.push({ at: tree.leftAt, kind: 'scrap', by: SUPERVISOR, tree, reason: aim.reason })
+  }
   if (aim.kind === 'held') {
     const dippedAt = tree.coats.at(-1)?.dippedAt ?? now
     const at = Math.max(lastAtWork(hours, now - 25 * MINUTE, MINUTE) ?? 0, Math.min(now - MINUTE, dippedAt + 10 * MINUTE))

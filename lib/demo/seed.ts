@@ -1,8 +1,8 @@
+import { randomBytes } from 'node:crypto'
 import { millisecondsInDay } from 'date-fns/constants'
 import { recordReadings } from '@/lib/commands/record-readings'
 import type { Clock } from '@/lib/core/clock'
 import { AppError } from '@/lib/core/errors'
-import { newId } from '@/lib/core/ids'
 import { actOut } from '@/lib/demo/act-out'
 import { DEMO_AIRS } from '@/lib/demo/climate'
 import { demoReadings } from '@/lib/demo/drying-room'
@@ -12,6 +12,8 @@ import { planDemo, type DemoPlan } from '@/lib/demo/plan'
 import { openShop, type DemoShop } from '@/lib/demo/open-shop'
 import { hashPassword } from '@/lib/server/password'
 import { Foundry, inTransaction } from '@/models'
+
+const LOW_COST = 1024
 
 export type SeededDemo = { signIns: DemoSignIn[]; sensorTokens: DemoShop['sensorTokens'] }
 
@@ -42,8 +44,9 @@ async function refuseSecondFoundry(): Promise<void> {
 async function hashPasswords(cost: number | undefined): Promise<Map<DemoPersonKey, string>> {
   const hashes = await Promise.all(
     DEMO_PEOPLE.map(async ({ key, password }): Promise<[DemoPersonKey, string]> => {
-      // Nobody knows the password of those who are there for company.
-      const hash = await hashPassword(password ?? `${newId()}${newId()}`, cost)
+      // Nobody knows the password of those who are there for company; it is too long to guess, whatever the cost of a guess.
+      const hash =
+        password === null ? await hashPassword(randomBytes(32).toString('base64url'), LOW_COST) : await hashPassword(password, cost)
       return [key, hash]
     }),
   )

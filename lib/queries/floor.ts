@@ -3,7 +3,7 @@ import { hourStartOf } from '@/lib/drying/dose-hours'
 import { loadClimateRows } from '@/lib/queries/load-climate'
 import { loadFacts, type TreeSelection } from '@/lib/queries/load-facts'
 import { loadFoundry, type FoundryFacts } from '@/lib/queries/load-foundry'
-import { buildClimate, type RoomClimate } from '@/lib/room/climate'
+import { buildClimate, type ClimateRows, type RoomClimate } from '@/lib/room/climate'
 import { shiftsFrom } from '@/lib/schedule/shifts'
 import { callOf, LONGEST_WINDOW_MS } from '@/lib/trees/assess'
 import { deriveTree, type DerivedTree } from '@/lib/trees/derive'
@@ -43,11 +43,14 @@ export async function deriveFloor(
       .filter((at) => at >= from - 2 * 3_600_000),
   )
 
+  const rowsOf = new Map<number, ClimateRows>()
   const loadClimates = () =>
     Promise.all(
-      sensorIds.map(async (sensorId): Promise<RoomClimate> =>
-        buildClimate(await loadClimateRows(sensorId, from, now, [...needed]), { now, timeZone: foundry.timeZone }),
-      ),
+      sensorIds.map(async (sensorId): Promise<RoomClimate> => {
+        const rows = await loadClimateRows(sensorId, from, now, [...needed], rowsOf.get(sensorId))
+        rowsOf.set(sensorId, rows)
+        return buildClimate(rows, { now, timeZone: foundry.timeZone })
+      }),
     )
 
   // Twice: the hourly table finds the hours in which coats came dry, their exact readings then give the minute.

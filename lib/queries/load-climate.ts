@@ -80,12 +80,22 @@ export async function loadReadingsInRange(sensorId: number, from: number, to: nu
   )
 }
 
-/** What the drying clock needs of one sensor: its hours since `from`, its newest reading, and the exact readings of the hours that matter. */
-export async function loadClimateRows(sensorId: number, from: number, now: number, refinedHours: readonly number[]): Promise<ClimateRows> {
-  const newest = await loadNewestReading(sensorId, now)
+/**
+ * What the drying clock needs of one sensor: its hours since `from`, its newest reading, and the exact readings of the hours that matter.
+ *
+ * @param known an earlier answer for the same moment: only the readings are asked for again.
+ */
+export async function loadClimateRows(
+  sensorId: number,
+  from: number,
+  now: number,
+  refinedHours: readonly number[],
+  known?: ClimateRows,
+): Promise<ClimateRows> {
+  const newest = known ? known.newest : await loadNewestReading(sensorId, now)
   const refined = [...new Set([...refinedHours, hourStartOf(newest?.measuredAt ?? now)])]
   const [hours, readings] = await Promise.all([
-    loadHours(sensorId, hourStartOf(from), hourStartOf(now) + 3_600_000),
+    known?.hours ?? loadHours(sensorId, hourStartOf(from), hourStartOf(now) + 3_600_000),
     loadReadingsInHours(sensorId, refined),
   ])
   return { sensorId, hours, readings: readings.filter((reading) => reading.measuredAt <= now), refinedHours: refined, newest }

@@ -64,7 +64,7 @@ function isAlive(pid: number): boolean {
   }
 }
 
-const opens = (program: Program) => until(() => /Kilnward is open/.test(program.output()), 'The address')
+const opens = (program: Program) => until(() => /Stop with Ctrl-C/.test(program.output()), 'The address')
 const health = (port: number) => fetch(`http://127.0.0.1:${port}/api/health`).then((response) => response.json())
 
 describe('npm start', () => {
@@ -74,6 +74,7 @@ describe('npm start', () => {
     await opens(first)
     expect(first.output()).toContain(`Kilnward is open: http://localhost:${port}`)
     expect(first.output()).toContain(join(dataDir, 'kilnward.sqlite'))
+    expect(first.output()).toMatch(/Sign in as:\n {2}\w+ +\S+@\S+ +\S+\n/)
     expect(statSync(join(dataDir, 'secrets.json')).mode & 0o777).toBe(0o600)
     // The worker has looked at the floor.
     await until(async () => JSON.stringify(await health(port)) === '{"status":"ok"}', 'A pulse of the worker')
