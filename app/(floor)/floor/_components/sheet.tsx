@@ -48,7 +48,7 @@ export function Sheet({
   }, [])
 
   useEffect(() => {
-    if (isStaying) return
+    if (isStaying) return undefined
     let timer = setTimeout(() => close(), IDLE_MS)
     const wake = () => {
       clearTimeout(timer)
