@@ -81,7 +81,7 @@ function nightLabel(from: number, to: number): string {
   return to - from > 20 * HOUR_MS ? 'Closed' : 'Night'
 }
 
-/** Whole local hours inside a zone, at the finest step at which they stand apart. Over a long night only the days. */
+/** Whole local hours inside a zone, at the finest step at which they stand apart. Over a long closing only the days. */
 function ticksOf(zone: TideZone, timeZone: string): TideTick[] {
   const share = zone.to - zone.from
   const most = Math.max(1, Math.floor(share / TICK_WIDTH))
@@ -95,7 +95,10 @@ function ticksOf(zone: TideZone, timeZone: string): TideTick[] {
     if (position < zone.from + TICK_MARGIN || position > zone.to - TICK_MARGIN) continue
     hours.push({ at, position, hour: Number(clock.slice(0, 2)), label: byDay ? formatWeekday(at, timeZone) : clock.slice(0, 2) })
   }
-  const steps = byDay ? [24] : [1, 2, 3, 4, 6, 12, 24]
-  const fitting = steps.map((step) => hours.filter(({ hour }) => hour % step === 0)).find((ticks) => ticks.length <= most) ?? []
+  const steps = byDay ? [1, 2, 3, 7] : [1, 2, 3, 4, 6, 12, 24]
+  // A day is named at its noon.
+  const marks = byDay ? hours.filter(({ hour }) => hour === 12) : hours
+  const fitting =
+    steps.map((step) => marks.filter(({ hour }, index) => (byDay ? index : hour) % step === 0)).find((ticks) => ticks.length <= most) ?? []
   return fitting.map(({ at, position, label }) => ({ at, position, label }))
 }

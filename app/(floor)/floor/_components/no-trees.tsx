@@ -8,7 +8,7 @@ const RECIPE: BandGrade[] = ['fine', 'fine', 'medium', 'medium', 'coarse', 'coar
 export function NoTrees({ canAdd }: { canAdd: boolean }) {
   return (
     <main className="no-trees">
-      <h1>No trees on the floor yet</h1>
+      <h2>No trees on the floor yet</h2>
       <p>
         {canAdd
           ? 'Add the first tree and it shows here: bare wax on the left, coats to come in dashes.'

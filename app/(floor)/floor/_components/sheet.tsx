@@ -48,7 +48,7 @@ export function Sheet({
   }, [])
 
   useEffect(() => {
-    if (isStaying) return
+    if (isStaying) return undefined
     let timer = setTimeout(() => close(), IDLE_MS)
     const wake = () => {
       clearTimeout(timer)
@@ -74,9 +74,9 @@ export function Sheet({
 
   return (
     <dialog open className={`sheet ${tone === 'plain' ? '' : `sheet-${tone}`}`} aria-label={label}>
-      <header className="sheet-head">
+      <div className="sheet-head">
         {lead}
-        <div>
+        <div className="sheet-title">
           <h2 ref={title} tabIndex={-1} className={typeof heading === 'string' && heading.length > 34 ? 'is-long' : undefined}>
             {heading}
           </h2>
@@ -86,9 +86,9 @@ export function Sheet({
         <Key size={64} icon="cross" className="sheet-close" onPress={onClose} aria-label="Close">
           {null}
         </Key>
-      </header>
+      </div>
       <div className={`sheet-body ${isTop ? 'sheet-body-top' : ''}`}>{children}</div>
-      {foot && <footer className="sheet-foot">{foot}</footer>}
+      {foot && <div className="sheet-foot">{foot}</div>}
     </dialog>
   )
 }

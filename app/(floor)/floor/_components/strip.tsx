@@ -27,6 +27,7 @@ export function Strip({ queue, now, memberName, onRoom, onWho }: StripProps) {
   const name = rooms.length > 1 ? `${room?.sensorName ?? 'Room'}, 1 of ${rooms.length}` : 'Room'
   return (
     <header className="strip">
+      <h1 className="vh">Floor of {queue.foundry.name}</h1>
       <div className="strip-cell strip-clock">
         <b className="num">{formatClock(now, timeZone)}</b>
         <span>{formatDate(now, timeZone)}</span>

@@ -30,7 +30,7 @@ export function UndoBar({ word, now, timeZone, onGone, onTakenBack }: UndoBarPro
   const isRunning = !isSending && trouble === null
 
   useEffect(() => {
-    if (!isRunning) return
+    if (!isRunning) return undefined
     const timer = setInterval(() => setLeft((seconds) => Math.max(0, seconds - 1)), 1000)
     return () => clearInterval(timer)
   }, [isRunning])

@@ -26,7 +26,7 @@ export function useElementSize(fallback: Size): [(element: HTMLElement | null) =
   const [element, setElement] = useState<HTMLElement | null>(null)
   const [size, setSize] = useState(fallback)
   useLayoutEffect(() => {
-    if (!element) return
+    if (!element) return undefined
     const measure = () => {
       const { width, height } = element.getBoundingClientRect()
       if (width > 0) setSize((before) => (before.width === width && before.height === height ? before : { width, height }))
