@@ -1,4 +1,5 @@
 import type { Metadata } from 'next'
+import { PushKeeper } from '@/app/_components/push-keeper'
 import { systemClock } from '@/lib/core/clock'
 import { loadQueue } from '@/lib/queries/queue'
 import { requireMemberPage } from '@/lib/server/auth'
@@ -10,5 +11,10 @@ export const metadata: Metadata = { title: 'Floor' }
 export default async function FloorPage() {
   const { name, role } = await requireMemberPage('see', '/floor')
   const initial = await loadQueue({ clock: systemClock })
-  return <FloorBoard initial={initial} serverNow={systemClock.now()} member={{ name, role }} />
+  return (
+    <>
+      <PushKeeper />
+      <FloorBoard initial={initial} serverNow={systemClock.now()} member={{ name, role }} />
+    </>
+  )
 }

@@ -1,6 +1,5 @@
 'use client'
 
-import { signOut } from 'next-auth/react'
 import { Key, KeyLink } from '@/app/_components/key'
 import { ThemeSwitch } from '@/app/_components/theme-switch'
 import { Sheet } from './sheet'
@@ -29,7 +28,7 @@ export function WhoSheet({ memberName, role, onClose }: { memberName: string; ro
           <ThemeSwitch size={64} />
         </div>
         <div>
-          <Key size={64} onPress={() => void signOut({ callbackUrl: '/sign-in' })}>
+          <Key size={64} onPress={() => void signOutHere()}>
             Sign out
           </Key>
         </div>
