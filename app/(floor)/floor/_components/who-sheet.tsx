@@ -1,5 +1,6 @@
 'use client'
 
+import { signOutHere } from '@/app/_components/sign-out'
 import { Key, KeyLink } from '@/app/_components/key'
 import { ThemeSwitch } from '@/app/_components/theme-switch'
 import { Sheet } from './sheet'
