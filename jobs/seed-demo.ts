@@ -5,13 +5,13 @@ import { seedDemo } from '@/lib/demo/seed'
 import { keepDemoTokens } from '@/lib/demo/token-file'
 import { closeRecords } from '@/lib/server/records'
 
-// Run by the start script, which waits for one message; by hand it prints the sign-ins.
+// Run by the start script, which waits for one message; by hand it logs the sign-ins.
 try {
   const { signIns, sensorTokens } = await seedDemo({ clock: systemClock })
   await keepDemoTokens(sensorTokens)
   await closeRecords()
   if (process.send) process.send({ signIns })
-  else process.stdout.write(`${JSON.stringify(signIns)}\n`)
+  else log('demo.made', { signIns })
 } catch (error) {
   const reason = error instanceof AppError ? error.message : error instanceof Error ? error.stack : String(error)
   log('demo.not-made', { reason })
