@@ -13,7 +13,7 @@ try {
   if (process.send) process.send({ signIns })
   else log('demo.made', { signIns })
 } catch (error) {
-  const reason = error instanceof AppError ? error.message : error instanceof Error ? error.stack : String(error)
+  const reason = error instanceof AppError ? error.message : error instanceof Error ? `${error.name}: ${error.message}` : String(error)
   log('demo.not-made', { reason })
   process.exitCode = 1
 }
