@@ -1,7 +1,7 @@
 // What has to be in place before Kilnward starts or is tested. Plain Node: it runs before anything is installed.
 import { spawnSync } from 'node:child_process'
 import { createHash } from 'node:crypto'
-import { existsSync, readdirSync, readFileSync, writeFileSync } from 'node:fs'
+import { existsSync, readdirSync, readFileSync, rmSync, writeFileSync } from 'node:fs'
 import { dirname, join } from 'node:path'
 
 const root = dirname(import.meta.dirname)
@@ -87,6 +87,8 @@ export function ensureBuilt() {
   const sources = hashSources()
   const stamp = join(root, BUILD_STAMP)
   if (existsSync(stamp) && existsSync(join(root, '.next/BUILD_ID')) && readFileSync(stamp, 'utf8') === sources) return
+  // TypeScript 7 trusts it more than the route types that the build has just written anew, and then knows no new page.
+  rmSync(join(root, '.next/cache/.tsbuildinfo'), { force: true })
   run(process.execPath, ['node_modules/next/dist/bin/next', 'build'], { NODE_ENV: 'production', NEXT_TELEMETRY_DISABLED: '1' })
   writeFileSync(stamp, sources)
 }

@@ -1,5 +1,5 @@
-import { TZDate } from '@date-fns/tz'
-import { millisecondsInDay, millisecondsInHour } from 'date-fns/constants'
+import { tzOffset } from '@date-fns/tz'
+import { millisecondsInDay, millisecondsInHour, millisecondsInMinute } from 'date-fns/constants'
 import { hourStartOf, meanRoomFactor } from '@/lib/drying/dose-hours'
 import { constantSegment } from '@/lib/drying/room-segments'
 import type { DoseHour, Instant, RoomSegment } from '@/lib/drying/types'
@@ -28,7 +28,7 @@ export type ForecastInput = {
  * @source our own rule, to be calibrated.
  */
 export function forecastSegments({ hours, now, timeZone, lastRoomFactor, horizonHours }: ForecastInput): RoomSegment[] {
-  const localHour = (at: Instant) => new TZDate(at, timeZone).getHours()
+  const localHour = localHourIn(timeZone)
   const byLocalHour = new Map<number, number[]>()
   const lastDay: number[] = []
   for (const row of hours) {
@@ -40,16 +40,32 @@ export function forecastSegments({ hours, now, timeZone, lastRoomFactor, horizon
     if (row.hourStart >= now - millisecondsInDay) lastDay.push(factor)
   }
   const fallback = lastDay.length > 0 ? median(lastDay) : lastRoomFactor
+  const medians = new Map([...byLocalHour].map(([hour, known]) => [hour, known.length >= FEWEST_DAYS ? median(known) : fallback]))
   const segments: RoomSegment[] = []
   const end = now + horizonHours * millisecondsInHour
   for (let hour = hourStartOf(now); hour < end; hour += millisecondsInHour) {
-    const known = byLocalHour.get(localHour(hour)) ?? []
-    const factor = known.length >= FEWEST_DAYS ? median(known) : fallback
+    const factor = medians.get(localHour(hour)) ?? fallback
     const from = Math.max(now, hour)
     const to = Math.min(end, hour + millisecondsInHour)
     if (factor !== null && to > from) segments.push(constantSegment(from, to, 'forecast', factor))
   }
   return segments
+}
+
+/** Tells an instant's local hour of the day. Asks for the zone's offset twice a UTC day, and at every instant of a day on which it changes. */
+function localHourIn(timeZone: string): (at: Instant) => number {
+  const offsetMs = (at: Instant) => tzOffset(timeZone, new Date(at)) * millisecondsInMinute
+  const steady = new Map<number, number | null>()
+  return (at) => {
+    const day = Math.floor(at / millisecondsInDay)
+    let offset = steady.get(day)
+    if (offset === undefined) {
+      const atStart = offsetMs(day * millisecondsInDay)
+      offset = offsetMs((day + 1) * millisecondsInDay) === atStart ? atStart : null
+      steady.set(day, offset)
+    }
+    return Math.floor((at + (offset ?? offsetMs(at))) / millisecondsInHour) % 24
+  }
 }
 
 function median(values: readonly number[]): number {

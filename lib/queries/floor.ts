@@ -3,12 +3,12 @@ import { hourStartOf } from '@/lib/drying/dose-hours'
 import { loadClimateRows } from '@/lib/queries/load-climate'
 import { loadFacts, type TreeSelection } from '@/lib/queries/load-facts'
 import { loadFoundry, type FoundryFacts } from '@/lib/queries/load-foundry'
-import { buildClimate, type RoomClimate } from '@/lib/room/climate'
+import { buildClimate, type ClimateRows, type RoomClimate } from '@/lib/room/climate'
 import { shiftsFrom } from '@/lib/schedule/shifts'
 import { callOf, LONGEST_WINDOW_MS } from '@/lib/trees/assess'
 import { deriveTree, type DerivedTree } from '@/lib/trees/derive'
 import { clockStart, type TreeFacts } from '@/lib/trees/facts'
-import { floorContext, type FloorContext } from '@/lib/trees/spans'
+import { floorContext, withClimates, type FloorContext } from '@/lib/trees/spans'
 
 export type Floor = { foundry: FoundryFacts; context: FloorContext; trees: DerivedTree[] }
 
@@ -43,25 +43,26 @@ export async function deriveFloor(
       .filter((at) => at >= from - 2 * 3_600_000),
   )
 
-  const build = async (): Promise<FloorContext> => {
-    const climates = await Promise.all(
-      sensorIds.map(async (sensorId): Promise<RoomClimate> =>
-        buildClimate(await loadClimateRows(sensorId, from, now, [...needed]), { now, timeZone: foundry.timeZone }),
-      ),
+  const rowsOf = new Map<number, ClimateRows>()
+  const loadClimates = () =>
+    Promise.all(
+      sensorIds.map(async (sensorId): Promise<RoomClimate> => {
+        const rows = await loadClimateRows(sensorId, from, now, [...needed], rowsOf.get(sensorId))
+        rowsOf.set(sensorId, rows)
+        return buildClimate(rows, { now, timeZone: foundry.timeZone })
+      }),
     )
-    return floorContext({
-      now,
-      timeZone: foundry.timeZone,
-      pressurePa: foundry.pressurePa,
-      climates,
-      places: foundry.places,
-      shifts: shiftsFrom(now, foundry.shiftHours, foundry.timeZone),
-      from: hourStartOf(from),
-    })
-  }
 
   // Twice: the hourly table finds the hours in which coats came dry, their exact readings then give the minute.
-  const coarse = await build()
+  const coarse = floorContext({
+    now,
+    timeZone: foundry.timeZone,
+    pressurePa: foundry.pressurePa,
+    climates: await loadClimates(),
+    places: foundry.places,
+    shifts: shiftsFrom(now, foundry.shiftHours, foundry.timeZone),
+    from: hourStartOf(from),
+  })
   const before = needed.size
   for (const tree of facts) {
     const newest = tree.coats.at(-1)
@@ -73,6 +74,6 @@ export async function deriveFloor(
       needed.add(hourStartOf(at) - 3_600_000)
     }
   }
-  const context = needed.size > before ? await build() : coarse
+  const context = needed.size > before ? withClimates(coarse, await loadClimates()) : coarse
   return { foundry, context, trees: facts.map((tree) => deriveTree(tree, context, foundry.shiftHours)) }
 }

@@ -56,10 +56,13 @@ export async function loadNewestReading(sensorId: number, at: number): Promise<R
 export async function loadReadingsInHours(sensorId: number, hours: readonly number[]): Promise<RoomReading[]> {
   if (hours.length === 0) return []
   return database.query<RoomReading>(
-    `SELECT DISTINCT ${READING_COLUMNS} FROM json_each(:hours) h JOIN readings r
-         ON r.sensor_id = :sensorId
-        AND r.measured_at >= coalesce((SELECT max(b.measured_at) FROM readings b WHERE b.sensor_id = :sensorId AND b.measured_at < h.value), h.value)
-        AND r.measured_at <= coalesce((SELECT min(a.measured_at) FROM readings a WHERE a.sensor_id = :sensorId AND a.measured_at >= h.value + 3600000), h.value + 3600000)
+    // CROSS JOIN keeps the hours outside: the other way round every reading of the sensor would be looked at.
+    `WITH spans AS MATERIALIZED (
+       SELECT coalesce((SELECT max(b.measured_at) FROM readings b WHERE b.sensor_id = :sensorId AND b.measured_at < h.value), h.value) AS first,
+              coalesce((SELECT min(a.measured_at) FROM readings a WHERE a.sensor_id = :sensorId AND a.measured_at >= h.value + 3600000), h.value + 3600000) AS last
+         FROM json_each(:hours) h)
+     SELECT DISTINCT ${READING_COLUMNS} FROM spans CROSS JOIN readings r
+         ON r.sensor_id = :sensorId AND r.measured_at BETWEEN spans.first AND spans.last
       ORDER BY r.measured_at`,
     { type: QueryTypes.SELECT, replacements: { hours: JSON.stringify([...new Set(hours)]), sensorId } },
   )
@@ -77,12 +80,22 @@ export async function loadReadingsInRange(sensorId: number, from: number, to: nu
   )
 }
 
-/** What the drying clock needs of one sensor: its hours since `from`, its newest reading, and the exact readings of the hours that matter. */
-export async function loadClimateRows(sensorId: number, from: number, now: number, refinedHours: readonly number[]): Promise<ClimateRows> {
-  const newest = await loadNewestReading(sensorId, now)
+/**
+ * What the drying clock needs of one sensor: its hours since `from`, its newest reading, and the exact readings of the hours that matter.
+ *
+ * @param known an earlier answer for the same moment: only the readings are asked for again.
+ */
+export async function loadClimateRows(
+  sensorId: number,
+  from: number,
+  now: number,
+  refinedHours: readonly number[],
+  known?: ClimateRows,
+): Promise<ClimateRows> {
+  const newest = known ? known.newest : await loadNewestReading(sensorId, now)
   const refined = [...new Set([...refinedHours, hourStartOf(newest?.measuredAt ?? now)])]
   const [hours, readings] = await Promise.all([
-    loadHours(sensorId, hourStartOf(from), hourStartOf(now) + 3_600_000),
+    known?.hours ?? loadHours(sensorId, hourStartOf(from), hourStartOf(now) + 3_600_000),
     loadReadingsInHours(sensorId, refined),
   ])
   return { sensorId, hours, readings: readings.filter((reading) => reading.measuredAt <= now), refinedHours: refined, newest }

@@ -1,13 +1,9 @@
-// Stand-in until the people and the foundry are stored.
-export async function loadSignIn(): Promise<{
-  foundryName: string
-  demoSignIns: { name: string; role: string; email: string; password: string }[]
-}> {
-  return {
-    foundryName: 'Marram Lane Art Foundry',
-    demoSignIns: [
-      { name: 'Ines', role: 'supervisor', email: 'ines@marramlane.example', password: 'otter-gate-panel-two' },
-      { name: 'Maud', role: 'operator', email: 'maud@marramlane.example', password: 'swimmer-at-rest-six' },
-    ],
-  }
+import type { DemoSignIn } from '@/lib/demo/people'
+import { loadDemoSignIns } from '@/lib/queries/demo-sign-ins'
+import { Foundry } from '@/models'
+
+/** What the sign-in page shows: whose it is, and the ways into a demo. */
+export async function loadSignIn(): Promise<{ foundryName: string; demoSignIns: DemoSignIn[] }> {
+  const [foundry, demoSignIns] = await Promise.all([Foundry.findByPk(1), loadDemoSignIns()])
+  return { foundryName: foundry?.name ?? 'Kilnward', demoSignIns }
 }

@@ -1,4 +1,6 @@
+import { millisecondsInHour } from 'date-fns/constants'
 import type { Warning } from '@/lib/queue/contract'
+import { HORIZON_HOURS } from '@/lib/room/climate'
 import { pourDeadline, type ShiftHours } from '@/lib/schedule/shifts'
 import { assessTree, type Assessment } from '@/lib/trees/assess'
 import type { TreeFacts } from '@/lib/trees/facts'
@@ -37,6 +39,8 @@ function missesPour(
   if (facts.pourDate === null || ['released', 'scrapped', 'ready for burnout', 'dried out'].includes(state)) return false
   const deadline = pourDeadline(facts.pourDate, shiftHours, context.timeZone)
   if (context.now > deadline) return true
-  const isForeseen = driedOut !== null
-  return isForeseen && (driedOut.likelyAt === null || driedOut.likelyAt > deadline)
+  if (driedOut === null) return false
+  // Beyond the horizon nobody can say; a deadline within it is lost.
+  const horizon = context.now + HORIZON_HOURS * millisecondsInHour
+  return driedOut.likelyAt === null ? deadline <= horizon : driedOut.likelyAt > deadline
 }

@@ -33,11 +33,19 @@ export function floorContext({ climates, places, from, ...rest }: ContextInput):
   const spansOf = (place: PlaceFacts) => placeSpans({ from, to, place, pressurePa: rest.pressurePa, timeZone: rest.timeZone })
   return {
     ...rest,
-    climates: new Map(climates.map((climate) => [climate.sensorId, climate])),
+    climates: bySensor(climates),
     places: new Map(places.map((place) => [place.id, place])),
     placeSpans: new Map(places.map((place) => [place.id, spansOf(place)])),
   }
 }
+
+/** The same pass with other climates; places and shifts stand. */
+export const withClimates = (context: FloorContext, climates: readonly RoomClimate[]): FloorContext => ({
+  ...context,
+  climates: bySensor(climates),
+})
+
+const bySensor = (climates: readonly RoomClimate[]) => new Map(climates.map((climate) => [climate.sensorId, climate]))
 
 type Stay = { placeId: string; since: number }
 

@@ -14,9 +14,17 @@ const page = (route: string, who: Who, example?: string): Door => door('PAGE', r
  * Routes are written as in the build: folders without the groups, parameters in brackets.
  */
 export const DOORS: readonly Door[] = [
+  // Leads to the floor, which asks for a sign-in.
+  page('/', 'anybody'),
   page('/sign-in', 'anybody'),
   page('/floor', 'crew'),
+  page('/trees', 'crew'),
+  page('/trees/[tag]', 'crew', '/trees/KW-1'),
+  page('/trees/[tag]/edit', 'supervisor', '/trees/KW-1/edit'),
+  page('/trees/new', 'supervisor'),
+  page('/burnout', 'crew'),
   page('/me', 'crew'),
+  door('GET', '/manifest.webmanifest', 'anybody'),
 
   door('GET', '/api/health', 'anybody'),
   // Its own tests are in auth.test.ts.
@@ -45,5 +53,14 @@ export type ActionRow = { file: string; name: string; act: Act; who: Role }
 
 /** Every server action; its first line is `await requireMember('act')`, or `const member = await …`. */
 export const ACTIONS: readonly ActionRow[] = [
-  // { file: 'app/(office)/trees/new/actions.ts', name: 'createTree', act: 'trees', who: 'supervisor' },
+  { file: 'app/(office)/trees/new/actions.ts', name: 'createTreeAction', act: 'trees', who: 'supervisor' },
+  { file: 'app/(office)/trees/[tag]/edit/actions.ts', name: 'editTreeAction', act: 'trees', who: 'supervisor' },
+  { file: 'app/(office)/trees/[tag]/actions.ts', name: 'holdAction', act: 'hold', who: 'operator' },
+  { file: 'app/(office)/trees/[tag]/actions.ts', name: 'moveAction', act: 'move', who: 'operator' },
+  { file: 'app/(office)/trees/[tag]/actions.ts', name: 'intakeAction', act: 'intake', who: 'supervisor' },
+  { file: 'app/(office)/trees/[tag]/actions.ts', name: 'liftHoldAction', act: 'lift hold', who: 'supervisor' },
+  { file: 'app/(office)/trees/[tag]/actions.ts', name: 'lookOverAction', act: 'look over', who: 'supervisor' },
+  { file: 'app/(office)/trees/[tag]/actions.ts', name: 'scrapAction', act: 'trees', who: 'supervisor' },
+  { file: 'app/(office)/burnout/actions.ts', name: 'releaseAction', act: 'release', who: 'supervisor' },
+  { file: 'app/(office)/burnout/actions.ts', name: 'withdrawReleaseAction', act: 'release', who: 'supervisor' },
 ]

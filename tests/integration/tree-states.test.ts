@@ -111,6 +111,18 @@ describe('states of a tree over a drying', () => {
     expect(await at(tree.id, NOW + 4 * HOUR)).toMatchObject({ state: 'overdue', willMissPour: true })
     expect(await at(tree.id, NOW + HOUR)).toMatchObject({ state: 'drying', willMissPour: true })
   })
+
+  it('misses no pour that lies further off than anybody can look, and surely one that lies nearer', async () => {
+    const recipeVersionId = await buildRecipe(foundry, [
+      { kind: 'backup', stucco: 'medium', need: 190 },
+      { kind: 'backup', stucco: 'medium', need: 190 },
+    ])
+    const later = await buildTree(foundry, { recipeVersionId, pourDate: '2026-11-20' })
+    const sooner = await buildTree(foundry, { recipeVersionId, pourDate: '2026-10-23' })
+    for (const tree of [later, sooner]) await dip(tree.id, 1, NOW, { stucco: 'medium' })
+    expect(await at(later.id, NOW + HOUR)).toMatchObject({ driedOut: { likelyAt: null }, willMissPour: false })
+    expect(await at(sooner.id, NOW + HOUR)).toMatchObject({ driedOut: { likelyAt: null }, willMissPour: true })
+  })
 })
 
 describe('the end of a shell', () => {

@@ -1,0 +1,20 @@
+import { AppError } from '@/lib/core/errors'
+import { systemClock } from '@/lib/core/clock'
+import { log } from '@/lib/core/log'
+import { seedDemo } from '@/lib/demo/seed'
+import { keepDemoTokens } from '@/lib/demo/token-file'
+import { closeRecords } from '@/lib/server/records'
+
+// Run by the start script, which waits for one message; by hand it logs the sign-ins.
+try {
+  const { signIns, sensorTokens } = await seedDemo({ clock: systemClock })
+  await keepDemoTokens(sensorTokens)
+  await closeRecords()
+  if (process.send) process.send({ signIns })
+  else log('demo.made', { signIns })
+} catch (error) {
+  const reason = error instanceof AppError ? error.message : error instanceof Error ? error.stack : String(error)
+  log('demo.not-made', { reason })
+  process.exitCode = 1
+}
+process.disconnect?.()

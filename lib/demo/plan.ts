@@ -1,0 +1,63 @@
+import { millisecondsInDay, millisecondsInHour, millisecondsInMinute } from 'date-fns/constants'
+import { TZDate } from '@date-fns/tz'
+import { CAST } from '@/lib/demo/cast'
+import type { DemoClimate } from '@/lib/demo/climate'
+import { dryingRoom } from '@/lib/demo/drying-room'
+import { demandOf, recipeOf } from '@/lib/demo/plan-coats'
+import { planTree, type PlannedTree } from '@/lib/demo/plan-trees'
+import { seededRandom } from '@/lib/demo/random'
+import { DEMO_SHIFTS, DEMO_TIME_ZONE } from '@/lib/demo/shop'
+import { workHours, type WorkHours } from '@/lib/demo/work-hours'
+import { localDay, pourDeadline } from '@/lib/schedule/shifts'
+
+export const DEMO_SEED = 20
+/** Two weeks of readings before the start, and half a day so that the first dips have air around them. */
+export const DEMO_HISTORY_MS = 14.5 * millisecondsInDay
+
+export type TaggedTree = PlannedTree & { tag: string; pourDate: string | null }
+
+export type DemoPlan = { now: number; startsAt: number; climate: DemoClimate; hours: WorkHours; trees: TaggedTree[] }
+
+/** The climate of a demo foundry, by when its history begins. */
+export const demoClimate = (startsAt: number): DemoClimate => ({ seed: DEMO_SEED, startsAt, timeZone: DEMO_TIME_ZONE })
+
+/** Plans the whole past of the demo foundry for a first start at `now`. Pure: the same start gives the same past. */
+export function planDemo(now: number): DemoPlan {
+  const startsAt = now - DEMO_HISTORY_MS
+  const climate = demoClimate(startsAt)
+  const hours = workHours(startsAt, now)
+  const parts = { room: dryingRoom(climate, { from: startsAt, now }), hours, startsAt, now }
+  const planned = CAST.map((tree, index) => planTree(tree, { ...parts, random: seededRandom(DEMO_SEED + index) }))
+  const trees = planned
+    .toSorted((a, b) => a.createdAt - b.createdAt)
+    .map((tree, index) => ({ ...tree, tag: `T-${FIRST_TAG + index}`, pourDate: pourDateOf(tree, now) }))
+  return { now, startsAt, climate, hours, trees }
+}
+
+const FIRST_TAG = 412
+/** Wednesdays and Fridays. */
+const POUR_WEEKDAYS = [3, 5]
+
+/** A cautious day's drying, weekends and nights taken in, and the wait for somebody to dip. */
+const REFERENCE_HOURS_A_DAY = 7
+const WAIT_DAYS = 0.35
+
+/** The first pour day that leaves room for what is still to do. */
+function pourDateOf(planned: PlannedTree, now: number): string | null {
+  const { tree, coats, leftAt } = planned
+  if (tree.pour === undefined) return null
+  if (tree.pour === 'will miss') return firstPourDay(now + 20 * millisecondsInHour)
+  if (leftAt !== null) return firstPourDay(leftAt + 12 * millisecondsInHour)
+  const toCome = recipeOf(tree).slice(Math.max(0, coats.length - 1))
+  const referenceHours = toCome.reduce((sum, { number }) => sum + demandOf(planned, number).amount, 0)
+  const days = 2 + referenceHours / REFERENCE_HOURS_A_DAY + WAIT_DAYS * toCome.length
+  return firstPourDay(now + days * millisecondsInDay)
+}
+
+function firstPourDay(from: number): string {
+  for (let at = from; ; at += millisecondsInDay) {
+    const day = localDay(at, DEMO_TIME_ZONE)
+    const weekday = new TZDate(at, DEMO_TIME_ZONE).getDay()
+    if (POUR_WEEKDAYS.includes(weekday) && pourDeadline(day, DEMO_SHIFTS, DEMO_TIME_ZONE) > from - millisecondsInMinute) return day
+  }
+}

@@ -1,0 +1,103 @@
+import type { CoatKind, Guard, Stucco } from '@/lib/coats/vocabulary'
+import type { DemoAir } from '@/lib/demo/climate'
+import {
+  DEFAULT_LAST_MOISTURE_TARGET,
+  DEFAULT_LONGEST_WAIT_HOURS,
+  DEFAULT_MOISTURE_TARGET,
+  defaultReferenceHours,
+} from '@/lib/drying/recipe-defaults'
+import type { FanHours, PlaceAir } from '@/lib/drying/types'
+import type { ShiftHours } from '@/lib/schedule/shifts'
+
+export const DEMO_NAME = 'Marram Lane Art Foundry'
+export const DEMO_TIME_ZONE = 'Europe/London'
+export const DEMO_ALTITUDE_M = 4
+
+const everyWeekday = [1, 2, 3, 4, 5]
+const SATURDAY = 6
+
+export const DEMO_SHIFTS: readonly ShiftHours[] = [
+  ...everyWeekday.map((weekday) => ({ weekday, opensMinute: 7 * 60, closesMinute: 17 * 60 })),
+  { weekday: SATURDAY, opensMinute: 8 * 60, closesMinute: 12 * 60 },
+]
+
+/** Names of the loggers by the air they hang in; the wall hygrometer is read by people. */
+export const DEMO_LOGGERS: Record<DemoAir, string> = { 'shell room': 'Shell room logger', 'net loft': 'Net loft logger' }
+export const DEMO_WALL_HYGROMETER = 'Boat shed hygrometer'
+
+/** Fans run a little longer than people do, and never at night or on a Sunday. */
+const fansOn = (weekdayOff: number): FanHours[] => [
+  ...everyWeekday.map((weekday) => ({ weekday, onMinute: 7 * 60, offMinute: weekdayOff })),
+  { weekday: SATURDAY, onMinute: 8 * 60, offMinute: 13 * 60 },
+]
+
+export const DEMO_PLACES = {
+  fanRack: { name: 'Fan rack', air: 'shell room', airSpeedFansOnMps: 1.5, airSpeedFansOffMps: 0.1, fanHours: fansOn(18 * 60) },
+  longRack: { name: 'Long rack', air: 'shell room', airSpeedFansOnMps: 0.5, airSpeedFansOffMps: 0.1, fanHours: fansOn(18 * 60) },
+  netLoft: { name: 'Net loft', air: 'net loft', airSpeedFansOnMps: 0.6, airSpeedFansOffMps: 0.2, fanHours: fansOn(19 * 60) },
+  stillCorner: { name: 'Still corner', air: 'shell room', airSpeedFansOnMps: 0.1, airSpeedFansOffMps: 0.1, fanHours: [] },
+  boatShed: { name: 'Boat shed', air: null, airSpeedFansOnMps: 0.1, airSpeedFansOffMps: 0.1, fanHours: [] },
+} as const satisfies Record<string, PlaceAir & { name: string; air: DemoAir | null }>
+export type DemoPlace = keyof typeof DEMO_PLACES
+export const DEMO_PLACE_KEYS = ['fanRack', 'longRack', 'netLoft', 'stillCorner', 'boatShed'] as const satisfies readonly DemoPlace[]
+
+export type DemoBath = 'face' | 'backup'
+export const DEMO_BATH_NAMES: Record<DemoBath, string> = { face: 'Face slurry', backup: 'Backup slurry' }
+
+export type DemoRecipeCoat = {
+  number: number
+  kind: CoatKind
+  bath: DemoBath
+  stucco: Stucco
+  needReferenceHours: number
+  moistureTarget: number
+  guard: Guard
+  drainSeconds: number
+  longestWaitHours: number
+  isPrewet: boolean
+  readAloud: string
+}
+
+type Line = [kind: CoatKind, stucco: Stucco, readAloud: string]
+
+const FIRST_FACE: Line = [
+  'face',
+  'fine',
+  'Slow into the slurry, turn it, break every bubble with the brush. Even and matte before the sand.',
+]
+const SECOND_FACE: Line = ['face', 'fine', 'Blow off loose sand first. Prewet, drain to matte, then dip slowly.']
+const MEDIUM: Line = ['backup', 'medium', 'Prewet, dip, drain with the cup down. Look into the undercuts.']
+const COARSE: Line = ['backup', 'coarse', 'Dip and turn once. Coarse sand all round, edges twice.']
+const CORE_FILL: Line = ['core fill', 'coarse', 'Fill the open core, tamp it lightly, leave the drain holes free.']
+const SEAL: Line = ['seal', 'none', 'Slurry only, no sand. Keep the cup rim clean.']
+
+const DRAIN_SECONDS: Record<CoatKind, number> = { face: 75, backup: 40, 'core fill': 60, seal: 45 }
+
+/** Coats from lines: needs from our own starting values, so that nothing in the demo claims to be calibrated. */
+function coatsOf(lines: readonly Line[]): DemoRecipeCoat[] {
+  return lines.map(([kind, stucco, readAloud], index) => ({
+    number: index + 1,
+    kind,
+    bath: kind === 'face' ? 'face' : 'backup',
+    stucco,
+    needReferenceHours: defaultReferenceHours(kind, lines.slice(0, index).filter(([earlier]) => earlier === kind).length),
+    moistureTarget: kind === 'seal' ? DEFAULT_LAST_MOISTURE_TARGET : DEFAULT_MOISTURE_TARGET,
+    guard: kind === 'face' || kind === 'seal' ? 'safe' : 'likely',
+    drainSeconds: DRAIN_SECONDS[kind],
+    longestWaitHours: DEFAULT_LONGEST_WAIT_HOURS[kind],
+    isPrewet: index > 0 && kind !== 'core fill',
+    readAloud,
+  }))
+}
+
+const lines = (line: Line, count: number): Line[] => Array.from({ length: count }, () => line)
+
+export const DEMO_RECIPES = {
+  six: { name: 'Six coats, small work', coats: coatsOf([FIRST_FACE, SECOND_FACE, MEDIUM, ...lines(COARSE, 2), SEAL]) },
+  eight: { name: 'Eight coats, standard', coats: coatsOf([FIRST_FACE, SECOND_FACE, ...lines(MEDIUM, 2), ...lines(COARSE, 3), SEAL]) },
+  eleven: {
+    name: 'Eleven coats, large and hollow work',
+    coats: coatsOf([FIRST_FACE, SECOND_FACE, ...lines(MEDIUM, 2), CORE_FILL, ...lines(COARSE, 5), SEAL]),
+  },
+} as const satisfies Record<string, { name: string; coats: DemoRecipeCoat[] }>
+export type DemoRecipe = keyof typeof DEMO_RECIPES

@@ -1,0 +1,134 @@
+import { mkdtempSync, readFileSync, rmSync, statSync } from 'node:fs'
+import { createServer } from 'node:net'
+import { tmpdir } from 'node:os'
+import { join } from 'node:path'
+import { setTimeout as sleep } from 'node:timers/promises'
+import { afterEach, describe, expect, it } from 'vitest'
+import { startProgram, type Program } from '@/tests/setup/server'
+
+const running: Program[] = []
+const folders: string[] = []
+
+afterEach(async () => {
+  await Promise.all(running.splice(0).map((program) => program.stop()))
+  for (const folder of folders.splice(0)) rmSync(folder, { recursive: true, force: true })
+})
+
+const newFolder = () => {
+  const folder = mkdtempSync(join(tmpdir(), 'kilnward-start-'))
+  folders.push(folder)
+  return folder
+}
+
+const freePort = (): Promise<number> =>
+  new Promise((resolve) => {
+    const probe = createServer()
+    probe.listen(0, '127.0.0.1', () => {
+      const address = probe.address()
+      probe.close(() => resolve(typeof address === 'object' && address ? address.port : 0))
+    })
+  })
+
+const OWN_SETTINGS = /^(NEXTAUTH_|VAPID_|PUSH_|DATA_DIR|HOST|PORT|UV_THREADPOOL_SIZE|NODE_ENV|NODE_OPTIONS|VITEST)/
+
+/** `npm start` as a person would run it: nothing set but the folder and the port. */
+function start(dataDir: string, port: number, settings: Record<string, string> = {}): Program {
+  const bare = Object.fromEntries(Object.entries(process.env).filter(([name]) => !OWN_SETTINGS.test(name)))
+  // NODE_ENV is left to the program.
+  // oxlint-disable-next-line typescript/no-unsafe-type-assertion -- the framework's type insists on NODE_ENV
+  const env = { ...bare, DATA_DIR: dataDir, PORT: String(port), DEMO_FEED: 'off', ...settings } as unknown as NodeJS.ProcessEnv
+  const program = startProgram(['jobs/start.mjs'], env)
+  running.push(program)
+  return program
+}
+
+async function until(isTrue: () => boolean | Promise<boolean>, what: string, milliseconds = 60_000): Promise<void> {
+  const deadline = Date.now() + milliseconds
+  while (!(await isTrue())) {
+    if (Date.now() > deadline) throw new Error(`${what} did not come:\n${running.map((program) => program.output()).join('\n---\n')}`)
+    await sleep(50)
+  }
+}
+
+type Lock = { pid: number; port: number; children: { web: number; worker: number } }
+// oxlint-disable-next-line typescript/no-unsafe-type-assertion -- written by the start script
+const lockOf = (dataDir: string) => JSON.parse(readFileSync(join(dataDir, 'running.json'), 'utf8')) as Lock
+
+function isAlive(pid: number): boolean {
+  try {
+    process.kill(pid, 0)
+    // A dead child that nobody has waited for still answers.
+    return !/\) Z /.test(readFileSync(`/proc/${pid}/stat`, 'utf8'))
+  } catch {
+    return false
+  }
+}
+
+const opens = (program: Program) => until(() => /Stop with Ctrl-C/.test(program.output()), 'The address')
+const health = (port: number) => fetch(`http://127.0.0.1:${port}/api/health`).then((response) => response.json())
+
+describe('npm start', () => {
+  it('opens, brings a killed worker back, refuses a second start, and ends without a trace', async () => {
+    const [dataDir, port] = [newFolder(), await freePort()]
+    const first = start(dataDir, port)
+    await opens(first)
+    expect(first.output()).toContain(`Kilnward is open: http://localhost:${port}`)
+    expect(first.output()).toContain(join(dataDir, 'kilnward.sqlite'))
+    expect(first.output()).toMatch(/Sign in as:\n {2}\w+ +\S+@\S+ +\S+\n/)
+    expect(statSync(join(dataDir, 'secrets.json')).mode & 0o777).toBe(0o600)
+    // The worker has looked at the floor.
+    await until(async () => JSON.stringify(await health(port)) === '{"status":"ok"}', 'A pulse of the worker')
+
+    const second = start(dataDir, await freePort())
+    expect(await second.exited).toBe(1)
+    expect(second.output()).toContain(`is running already on ${dataDir}: process ${first.process.pid}, port ${port}`)
+    const third = start(newFolder(), port)
+    expect(await third.exited).toBe(1)
+    expect(third.output()).toContain(`Port ${port} is in use`)
+
+    const before = lockOf(dataDir).children
+    process.kill(before.worker, 'SIGKILL')
+    await until(() => /the worker has ended \(SIGKILL\)\. It starts again in 1 s/.test(first.output()), 'The report')
+    await until(() => lockOf(dataDir).children.worker !== before.worker, 'Another worker')
+    await until(() => first.output().split('"worker.started"').length === 3, 'Its start')
+
+    const children = Object.values(lockOf(dataDir).children)
+    const began = performance.now()
+    first.process.kill('SIGTERM')
+    expect(await first.exited).toBe(0)
+    expect(performance.now() - began).toBeLessThan(10_000)
+    expect([...children, before.worker].filter(isAlive)).toEqual([])
+    expect(() => lockOf(dataDir)).toThrow(/ENOENT/)
+  })
+
+  it('keeps its secrets, and clears away what a killed start left running', async () => {
+    const [dataDir, port] = [newFolder(), await freePort()]
+    const first = start(dataDir, port)
+    await opens(first)
+    const secrets = readFileSync(join(dataDir, 'secrets.json'), 'utf8')
+    const { children } = lockOf(dataDir)
+    first.process.kill('SIGKILL')
+    await until(() => !isAlive(children.worker), 'The end of the orphaned worker', 10_000)
+    const began = performance.now()
+    const second = start(dataDir, port)
+    await opens(second)
+    expect(performance.now() - began).toBeLessThan(30_000)
+    expect(isAlive(children.web)).toBe(false)
+    expect(readFileSync(join(dataDir, 'secrets.json'), 'utf8')).toBe(secrets)
+  })
+
+  it.each([
+    ['a short secret', { NEXTAUTH_SECRET: 'short' }, /NEXTAUTH_SECRET must be at least 32/],
+    ['a contact that push services refuse', { VAPID_SUBJECT: 'mailto:x@localhost' }, /VAPID_SUBJECT must be mailto: or https:/],
+    ['half a key pair', { VAPID_PUBLIC_KEY: 'B'.repeat(87) }, /Set both VAPID_PUBLIC_KEY and VAPID_PRIVATE_KEY/],
+    ['keys of two pairs', { VAPID_PUBLIC_KEY: 'B'.repeat(87), VAPID_PRIVATE_KEY: 'a'.repeat(43) }, /does not belong to VAPID_PRIVATE_KEY/],
+    ['too few threads', { UV_THREADPOOL_SIZE: '4' }, /UV_THREADPOOL_SIZE must be at least 16/],
+    ['a port that is none', { PORT: 'http' }, /PORT must be a number/],
+    ['a folder that cannot be', { DATA_DIR: '/dev/null/kilnward' }, /cannot write to \/dev\/null\/kilnward/],
+  ])('refuses %s in one line', async (_what, settings, line) => {
+    const program = start(newFolder(), await freePort(), settings)
+    expect(await program.exited).toBe(1)
+    expect(program.output()).toMatch(line)
+    expect(program.output()).not.toMatch(/\n\s+at /)
+  })
+})
