@@ -16,12 +16,14 @@ export default async function OfficeLayout({ children }: { children: ReactNode }
       <a className="skip-link" href="#page">
         To the page
       </a>
-      <OfficeBar
-        foundryName={foundry.name}
-        timeZone={foundry.timeZone}
-        member={{ name: member.name, role: member.role }}
-        serverNow={systemClock.now()}
-      />
+      <header>
+        <OfficeBar
+          foundryName={foundry.name}
+          timeZone={foundry.timeZone}
+          member={{ name: member.name, role: member.role }}
+          serverNow={systemClock.now()}
+        />
+      </header>
       <PushKeeper />
       <main id="page">{children}</main>
     </div>

@@ -65,7 +65,11 @@ export default async function BurnoutPage() {
         <h1>{burnoutHeadline(groups.ready.length)}</h1>
         <p className="stands">
           {stands.length === 0 ? (
-            'Nothing stands in the way.'
+            rows.length > 0 ? (
+              'Nothing stands in the way.'
+            ) : (
+              'No shell is near the kiln yet.'
+            )
           ) : (
             <>
               In the way:{' '}
@@ -169,10 +173,14 @@ export default async function BurnoutPage() {
             {groups.held.length > 0 && (
               <ul className="notes">
                 {groups.held.map((tree) => (
-                  <li key={tree.id} id={tree.tag}>
-                    <Tag tag={tree.tag} height={fittedTagHeight(tree.tag, 32)} isHeld isLink />
+                  <li key={tree.id} id={tree.tag} className="link-row">
+                    <Tag tag={tree.tag} height={fittedTagHeight(tree.tag, 32)} isHeld />
                     <div className="min-w-0">
-                      <b>{tree.title}</b>
+                      <b>
+                        <Link className="row-link" href={`/trees/${encodeURIComponent(tree.tag)}`} prefetch={false}>
+                          {tree.title}
+                        </Link>
+                      </b>
                       <span className="block text-furnace-ink">{tree.hold?.reason}</span>
                       <span className="block">
                         {tree.hold !== null && `${tree.hold.by}, ${formatMoment(tree.hold.at, now, timeZone)}. `}
@@ -197,10 +205,14 @@ export default async function BurnoutPage() {
             {released.length > 0 && (
               <ul className="notes">
                 {released.slice(0, MOST_RELEASED).map((tree) => (
-                  <li key={tree.id}>
-                    <Tag tag={tree.tag} height={fittedTagHeight(tree.tag, 32)} isLink />
+                  <li key={tree.id} className="link-row">
+                    <Tag tag={tree.tag} height={fittedTagHeight(tree.tag, 32)} />
                     <div className="min-w-0 grow">
-                      <b>{tree.title}</b>
+                      <b>
+                        <Link className="row-link" href={`/trees/${encodeURIComponent(tree.tag)}`} prefetch={false}>
+                          {tree.title}
+                        </Link>
+                      </b>
                       <span className="block">
                         {tree.stateSince === null ? '' : `Released ${formatMoment(tree.stateSince, now, timeZone)}.`}
                       </span>
@@ -316,12 +328,12 @@ function Cell({ label, children }: { label: string; children: ReactNode }) {
 
 function GroupRow({ tree, children }: { tree: QueueTree; children: ReactNode }) {
   return (
-    <tr id={tree.tag} role="row">
+    <tr id={tree.tag} role="row" className="link-row">
       <td role="cell" className="c-tag">
-        <Tag tag={tree.tag} height={fittedTagHeight(tree.tag, 32)} isLink />
+        <Tag tag={tree.tag} height={fittedTagHeight(tree.tag, 32)} />
       </td>
       <th role="rowheader" scope="row" className="c-piece">
-        <Link href={`/trees/${encodeURIComponent(tree.tag)}`} prefetch={false}>
+        <Link className="row-link" href={`/trees/${encodeURIComponent(tree.tag)}`} prefetch={false}>
           {tree.title}
         </Link>
       </th>

@@ -77,7 +77,7 @@ export function ReleasePlate({ rows, mayRelease, now }: { rows: ReleaseRow[]; ma
               const confirmation = checks.find((check) => check.code === 'confirmation')
               return (
                 <Fragment key={tree.id}>
-                  <tr id={tree.tag} role="row">
+                  <tr id={tree.tag} role="row" className="link-row">
                     {mayRelease && (
                       <td role="cell" className="c-tick">
                         <label className="tick">
@@ -93,10 +93,10 @@ export function ReleasePlate({ rows, mayRelease, now }: { rows: ReleaseRow[]; ma
                       </td>
                     )}
                     <td role="cell" className="c-tag">
-                      <Tag tag={tree.tag} height={fittedTagHeight(tree.tag, 32)} isLink />
+                      <Tag tag={tree.tag} height={fittedTagHeight(tree.tag, 32)} />
                     </td>
                     <th role="rowheader" scope="row" className="c-piece">
-                      <Link href={`/trees/${encodeURIComponent(tree.tag)}`} prefetch={false}>
+                      <Link className="row-link" href={`/trees/${encodeURIComponent(tree.tag)}`} prefetch={false}>
                         {tree.title}
                       </Link>
                     </th>

@@ -217,7 +217,7 @@ export function TreeForm({ action, values, choices, fixed, submitWords, cancelPa
         <KeyLink href={cancelPath} size={56} tone="quiet">
           Cancel
         </KeyLink>
-        <FormMessage state={form.state} />
+        <FormMessage state={form.state} isLongForm />
       </div>
     </form>
   )

@@ -25,12 +25,13 @@ export function TreeTable({ trees, context }: { trees: readonly TreeListRow[]; c
         </thead>
         <tbody role="rowgroup">
           {trees.map((tree) => (
-            <tr key={tree.id} role="row">
+            <tr key={tree.id} role="row" className="link-row">
               <td role="cell" className="c-tag">
-                <Tag tag={tree.tag} height={fittedTagHeight(tree.tag, 32)} isHeld={tree.state === 'held'} isLink />
+                <Tag tag={tree.tag} height={fittedTagHeight(tree.tag, 32)} isHeld={tree.state === 'held'} />
               </td>
               <th role="rowheader" scope="row" className="c-piece">
-                <Link href={`/trees/${encodeURIComponent(tree.tag)}`} prefetch={false}>
+                {/* The link covers its whole row. */}
+                <Link className="row-link" href={`/trees/${encodeURIComponent(tree.tag)}`} prefetch={false}>
                   {tree.title}
                 </Link>
               </th>

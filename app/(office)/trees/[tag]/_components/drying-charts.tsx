@@ -88,7 +88,7 @@ export function DryingCharts({ curve, climate, coatNumber, isLastCoat, moistureR
   return (
     <figure className="charts">
       <div role="img" aria-label={summary}>
-        <ResponsiveContainer width="100%" height={310} initialDimension={{ width: 604, height: 310 }}>
+        <ResponsiveContainer width="100%" height={310}>
           <ComposedChart data={rows} margin={MARGIN} accessibilityLayer={false}>
             <CartesianGrid {...GRID} />
             <XAxis
@@ -272,7 +272,7 @@ function RoomChart({
       role="img"
       aria-label={`${name}: ${format(Math.min(...values))} to ${format(Math.max(...values))}, newest ${format(newest[dataKey])}.`}
     >
-      <ResponsiveContainer width="100%" height={height} initialDimension={{ width: 604, height }}>
+      <ResponsiveContainer width="100%" height={height}>
         <LineChart data={rows} margin={MARGIN} accessibilityLayer={false}>
           <CartesianGrid {...GRID} />
           <XAxis
