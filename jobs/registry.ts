@@ -4,6 +4,7 @@ import { prune } from '@/jobs/prune'
 import { sendPushes } from '@/jobs/send-pushes'
 import { watchFloor } from '@/jobs/watch-floor'
 import type { Clock } from '@/lib/core/clock'
+import { hasFoundry } from '@/lib/queries/has-foundry'
 import { loadQueue } from '@/lib/queries/queue'
 import { webPushSender } from '@/lib/server/push-sender'
 
@@ -19,7 +20,7 @@ export function allJobs({ clock, vapidPublicKey, monotonic, random }: RegistryPa
   let isSuspended = false
   const send = sendPushes({ sender: webPushSender({ clock }), random, isSuspended: () => isSuspended })
   const watch = watchFloor({
-    loadQueue,
+    loadQueue: async (options) => ((await hasFoundry()) ? loadQueue(options) : null),
     vapidPublicKey,
     monotonic,
     suspendSending: (value) => {

@@ -216,7 +216,7 @@ function publicKeyOf(privateKey) {
 /** Migrates, and fills a new database with the demo foundry. */
 async function prepareRecords(env) {
   const records = await runScript('jobs/prepare-records.ts', env)
-  if (!records.isNew || !existsSync('lib/demo/seed.ts')) return records
+  if (!records.isNew) return records
   say('Kilnward: making the demo foundry.')
   await runScript('jobs/seed-demo.ts', env)
   return { ...records, isDemo: true }
@@ -294,13 +294,12 @@ async function announce(env, { file, isDemo }) {
     await new Promise((done) => setTimeout(done, 300))
     if (isStopping) return
   }
+  // Asked for first, so that nothing comes between the lines.
+  const signIns = isDemo ? (await runScript('jobs/demo-sign-ins.ts', env)).signIns : []
   say()
   say(`Kilnward is open: ${env.NEXTAUTH_URL}`)
-  if (isDemo && existsSync('lib/demo/people.ts')) {
-    const { signIns } = await runScript('jobs/demo-sign-ins.ts', env)
-    say('This is the demo foundry. Sign in as:')
-    for (const { role, email, password } of signIns) say(`  ${role.padEnd(10)}  ${email.padEnd(28)}  ${password}`)
-  }
+  if (signIns.length > 0) say('This is the demo foundry. Sign in as:')
+  for (const { role, email, password } of signIns) say(`  ${role.padEnd(10)}  ${email.padEnd(28)}  ${password}`)
   say(`Records: ${file}`)
   say('Stop with Ctrl-C.')
   say()

@@ -8,7 +8,8 @@ import type { Queue } from '@/lib/queue/contract'
 const JUMP_MS = 90_000
 
 export type WatchFloorParts = {
-  loadQueue: (options: { clock: Clock }) => Promise<{ queue: Queue }>
+  /** Null where there is no foundry to look at yet. */
+  loadQueue: (options: { clock: Clock }) => Promise<{ queue: Queue } | null>
   vapidPublicKey: string
   /** Milliseconds that only ever grow, to tell a jump of the wall clock from time that has passed. */
   monotonic: () => number
@@ -32,8 +33,9 @@ export function watchFloor({ loadQueue, vapidPublicKey, monotonic, suspendSendin
       // What was right by the old time may be wrong by the new one: look twice before anybody is told.
       suspendSending(hasJumped)
       if (hasJumped) log('clock.jumped', { milliseconds: jump })
-      const { queue } = await loadQueue({ clock })
-      const pass = await passNotices(queue, { vapidPublicKey, clock })
+      const loaded = await loadQueue({ clock })
+      if (!loaded) return { isEmpty: true }
+      const pass = await passNotices(loaded.queue, { vapidPublicKey, clock })
       if (pass.opened + pass.closed > 0) log('watch-floor.changed', pass)
       return { ...pass, ...(hasJumped && { clockJumpMs: jump }) }
     },

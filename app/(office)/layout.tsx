@@ -1,4 +1,5 @@
 import type { ReactNode } from 'react'
+import { PushKeeper } from '@/app/_components/push-keeper'
 import { OfficeBar } from '@/app/_components/office-bar'
 import { systemClock } from '@/lib/core/clock'
 import { loadFoundry } from '@/lib/queries/load-foundry'
@@ -21,6 +22,7 @@ export default async function OfficeLayout({ children }: { children: ReactNode }
         member={{ name: member.name, role: member.role }}
         serverNow={systemClock.now()}
       />
+      <PushKeeper />
       <main id="page">{children}</main>
     </div>
   )

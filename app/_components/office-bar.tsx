@@ -2,7 +2,7 @@
 
 import Link from 'next/link'
 import { usePathname } from 'next/navigation'
-import { signOut } from 'next-auth/react'
+import { signOutHere } from '@/app/_components/sign-out'
 import { Key } from '@/app/_components/key'
 import { LiveClock } from '@/app/_components/live-clock'
 import { ThemeKey } from '@/app/_components/theme-switch'
@@ -44,7 +44,7 @@ export function OfficeBar({ foundryName, timeZone, member, serverNow }: OfficeBa
         </Link>
         <LiveClock className="text-20 text-ink" serverNow={serverNow} timeZone={timeZone} />
         <ThemeKey />
-        <Key tone="quiet" className="px-3" onPress={() => void signOut({ callbackUrl: '/sign-in' })}>
+        <Key tone="quiet" className="px-3" onPress={() => void signOutHere()}>
           Sign out
         </Key>
       </div>

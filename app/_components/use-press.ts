@@ -1,6 +1,6 @@
 'use client'
 
-import { useCallback, useRef, type MouseEvent, type PointerEvent } from 'react'
+import { useCallback, useRef, type MouseEvent as ReactMouseEvent, type PointerEvent } from 'react'
 
 /** A wet glove bounces: a second touch of the same spot within this time is the same touch. */
 export const PRESS_DEAF_MS = 400
@@ -16,28 +16,27 @@ function isBounce(at: number, x: number, y: number): boolean {
 }
 
 /**
- * After a touch the browser sends a click to whatever lies there by then. Since keys act on pointer-up, a sheet that has just
- * opened would be clicked by the very touch that opened it.
+ * After a touch the browser sends a mouse press and a click to whatever lies there by then. Since keys act when the finger lifts,
+ * a sheet that has just opened would be clicked, or lose its focus, by the very touch that opened it.
  */
-function guardAgainstGhostClicks(): void {
+function swallow(event: MouseEvent): void {
+  if (event.detail === 0 || !isBounce(performance.now(), event.clientX, event.clientY)) return
+  event.preventDefault()
+  event.stopPropagation()
+}
+
+function guardAgainstGhosts(): void {
   if (isGhostGuardOn) return
   isGhostGuardOn = true
-  document.addEventListener(
-    'click',
-    (event) => {
-      if (event.detail === 0 || !isBounce(performance.now(), event.clientX, event.clientY)) return
-      event.preventDefault()
-      event.stopPropagation()
-    },
-    { capture: true },
-  )
+  document.addEventListener('click', swallow, { capture: true })
+  document.addEventListener('mousedown', swallow, { capture: true })
 }
 
 export type PressHandlers = {
   onPointerDown: (event: PointerEvent<HTMLElement>) => void
   onPointerUp: (event: PointerEvent<HTMLElement>) => void
   onPointerCancel: () => void
-  onClick: (event: MouseEvent<HTMLElement>) => void
+  onClick: (event: ReactMouseEvent<HTMLElement>) => void
 }
 
 /**
@@ -65,7 +64,7 @@ export function usePress(act: (() => void) | undefined, deafMs: number = PRESS_D
 
   return {
     onPointerDown: (event) => {
-      guardAgainstGhostClicks()
+      guardAgainstGhosts()
       finger.current = event.isPrimary && event.button === 0 ? event.pointerId : null
     },
     onPointerUp: (event) => {

@@ -36,7 +36,10 @@ describe('devices of a member', () => {
     expect((await clients.crew.send('POST', ADDRESS, bodyOf(device))).status).toBe(201)
     expect((await clients.crew.send('POST', ADDRESS, bodyOf(device, { scope: 'watched trees' }))).status).toBe(200)
     const list = await listOf(clients.crew)
-    expect(list).toMatchObject({ publicKey: vapidPublicKey, devices: [{ label: 'Firefox on Android', scope: 'watched trees', isOutdated: false }] })
+    expect(list).toMatchObject({
+      publicKey: vapidPublicKey,
+      devices: [{ label: 'Firefox on Android', scope: 'watched trees', isOutdated: false }],
+    })
     expect(JSON.stringify(list)).not.toContain(device.endpoint)
     expect(await listOf(clients.operator)).toMatchObject({ devices: [] })
 
@@ -65,7 +68,9 @@ describe('devices of a member', () => {
 
   it('are ten at most', async () => {
     const answers = []
-    for (let n = 0; n < 11; n += 1) answers.push((await clients.owner.send('POST', ADDRESS, bodyOf(service.subscribe(vapidPublicKey)))).status)
+    for (let n = 0; n < 11; n += 1) {
+      answers.push((await clients.owner.send('POST', ADDRESS, bodyOf(service.subscribe(vapidPublicKey)))).status)
+    }
     expect(answers).toEqual([...Array.from({ length: 10 }, () => 201), 409])
   })
 
@@ -90,10 +95,10 @@ describe('devices of a member', () => {
 
   it('are tested six times a minute at most', async () => {
     const device = service.subscribe(vapidPublicKey)
-    await clients.operator.send('POST', ADDRESS, bodyOf(device))
+    await clients.supervisor.send('POST', ADDRESS, bodyOf(device))
     const answers = []
     for (let n = 0; n < 7; n += 1) {
-      answers.push((await clients.operator.send('POST', '/api/v1/push/test', { endpoint: device.endpoint })).status)
+      answers.push((await clients.supervisor.send('POST', '/api/v1/push/test', { endpoint: device.endpoint })).status)
     }
     expect(answers).toEqual([200, 200, 200, 200, 200, 200, 429])
   })

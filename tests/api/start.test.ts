@@ -64,7 +64,7 @@ function isAlive(pid: number): boolean {
   }
 }
 
-const opens = (program: Program) => until(() => /Kilnward is open/.test(program.output()), 'The address')
+const opens = (program: Program) => until(() => /Stop with Ctrl-C/.test(program.output()), 'The address')
 const health = (port: number) => fetch(`http://127.0.0.1:${port}/api/health`).then((response) => response.json())
 
 describe('npm start', () => {
@@ -74,6 +74,7 @@ describe('npm start', () => {
     await opens(first)
     expect(first.output()).toContain(`Kilnward is open: http://localhost:${port}`)
     expect(first.output()).toContain(join(dataDir, 'kilnward.sqlite'))
+    expect(first.output()).toMatch(/Sign in as:\n {2}\w+ +\S+@\S+ +\S+\n/)
     expect(statSync(join(dataDir, 'secrets.json')).mode & 0o777).toBe(0o600)
     // The worker has looked at the floor.
     await until(async () => JSON.stringify(await health(port)) === '{"status":"ok"}', 'A pulse of the worker')
@@ -121,9 +122,9 @@ describe('npm start', () => {
     ['a contact that push services refuse', { VAPID_SUBJECT: 'mailto:x@localhost' }, /VAPID_SUBJECT must be mailto: or https:/],
     ['half a key pair', { VAPID_PUBLIC_KEY: 'B'.repeat(87) }, /Set both VAPID_PUBLIC_KEY and VAPID_PRIVATE_KEY/],
     ['keys of two pairs', { VAPID_PUBLIC_KEY: 'B'.repeat(87), VAPID_PRIVATE_KEY: 'a'.repeat(43) }, /does not belong to VAPID_PRIVATE_KEY/],
-    ['too few threads', { UV_THREADPOOL_SIZE: '4' }, /UV_THREADPOOL_SIZE: must be at least 16/],
+    ['too few threads', { UV_THREADPOOL_SIZE: '4' }, /UV_THREADPOOL_SIZE must be at least 16/],
     ['a port that is none', { PORT: 'http' }, /PORT must be a number/],
-    ['a folder that cannot be', { DATA_DIR: '/proc/kilnward' }, /cannot write to \/proc\/kilnward/],
+    ['a folder that cannot be', { DATA_DIR: '/dev/null/kilnward' }, /cannot write to \/dev\/null\/kilnward/],
   ])('refuses %s in one line', async (_what, settings, line) => {
     const program = start(newFolder(), await freePort(), settings)
     expect(await program.exited).toBe(1)

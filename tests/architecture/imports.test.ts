@@ -11,7 +11,7 @@ const isDomain = (path: string) => path.startsWith('lib/') && !NOT_DOMAIN.test(p
 const DOMAIN_PACKAGE = /^package:(?:zod|psychrolib|date-fns(?:\/constants)?|@date-fns\/tz)$/
 
 /** Run once by the start script before web and worker: they make the records, and tell a person on the terminal. */
-const START_SCRIPTS = ['jobs/prepare-records.ts']
+const START_SCRIPTS = ['jobs/seed-demo.ts', 'jobs/demo-sign-ins.ts']
 
 /** Inner layers know nothing of outer ones. The first prefix that fits decides; 'domain' is every folder of values and rules in lib/. */
 const LAYERS: readonly (readonly [prefix: string, mayImport: readonly string[]])[] = [

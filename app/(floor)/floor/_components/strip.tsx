@@ -1,0 +1,119 @@
+import { Icon } from '@/app/_components/icons'
+import { usePress } from '@/app/_components/use-press'
+import { bathsByNeed, PULL_WORDS, readingAge, roomsByWorry, shortBathName } from '@/lib/floor/strip'
+import { formatClock, formatDate, formatMoment } from '@/lib/format/local-time'
+import { formatKelvin, formatPercent, oneDecimal, wholeNumber } from '@/lib/format/units'
+import type { Queue } from '@/lib/queue/contract'
+
+const BATH_LINES = 2
+
+export type StripProps = {
+  queue: Queue
+  now: number
+  memberName: string
+  onRoom: () => void
+  onWho: () => void
+}
+
+/** The state of the shell room across the top: time, air, pull, baths, and whose hand it is. */
+export function Strip({ queue, now, memberName, onRoom, onWho }: StripProps) {
+  const { timeZone } = queue.foundry
+  const rooms = roomsByWorry(queue)
+  const room = rooms[0]
+  const roomPress = usePress(onRoom)
+  const whoPress = usePress(onWho)
+  const isSilent = room === undefined || room.measuredAt === null || room.isStale
+  const age = room ? readingAge(room, now, timeZone) : 'no sensor yet'
+  const name = rooms.length > 1 ? `${room?.sensorName ?? 'Room'}, 1 of ${rooms.length}` : 'Room'
+  return (
+    <header className="strip">
+      <h1 className="vh">Floor of {queue.foundry.name}</h1>
+      <div className="strip-cell strip-clock">
+        <b className="num">{formatClock(now, timeZone)}</b>
+        <span>{formatDate(now, timeZone)}</span>
+      </div>
+      <button type="button" className="strip-cell strip-room" {...roomPress} aria-haspopup="dialog">
+        <span className={`strip-label ${isSilent ? 'strip-alarm' : ''}`}>
+          {isSilent && <Icon name="warning" />} {name}, {age}
+        </span>
+        <span className="strip-figures">
+          <b className="num">
+            {room === undefined || isSilent || room.airTempC === null ? '–' : oneDecimal(room.airTempC)}
+            <small>°C</small>
+          </b>
+          <b className="num">
+            {room === undefined || isSilent || room.relHumidityPct === null ? '–' : wholeNumber(room.relHumidityPct)}
+            <small>% RH</small>
+          </b>
+        </span>
+      </button>
+      <button type="button" className="strip-cell strip-room" {...roomPress} aria-haspopup="dialog">
+        <span className="strip-label">Drying pull</span>
+        <span className="strip-figures">
+          <Pull pull={room?.pull ?? 'not known'} />
+          {room && !isSilent && room.pull !== 'not known' && (
+            <em>
+              {formatPercent(room.speedPct)}
+              <span className="strip-wide"> · {formatKelvin(room.wetBulbGapK)}</span>
+            </em>
+          )}
+        </span>
+      </button>
+      <Baths queue={queue} now={now} />
+      {queue.foundry.isDemoFeedOn && (
+        <div className="strip-cell strip-demo">
+          <span>
+            Demo<span className="strip-wide"> feed</span>
+          </span>
+        </div>
+      )}
+      <button type="button" className="strip-cell strip-who" {...whoPress} aria-haspopup="dialog">
+        <span className="strip-label">Signed in</span>
+        <b className="num">{memberName}</b>
+      </button>
+    </header>
+  )
+}
+
+function Pull({ pull }: { pull: Queue['rooms'][number]['pull'] }) {
+  const isGood = pull === 'good'
+  const words = PULL_WORDS[pull]
+  return (
+    <b className={`strip-pull ${isGood ? 'strip-good' : 'strip-alarm'} ${words.length > 9 ? 'strip-pull-long' : ''}`}>
+      <Icon name={isGood ? 'check' : 'warning'} /> {words}
+    </b>
+  )
+}
+
+function Baths({ queue, now }: { queue: Queue; now: number }) {
+  const { timeZone } = queue.foundry
+  const baths = bathsByNeed(queue.baths)
+  const lines = baths.length > BATH_LINES ? baths.slice(0, BATH_LINES - 1) : baths
+  const rest = baths.length - lines.length
+  const restToStir = baths.slice(lines.length).filter((bath) => !bath.isStirredToday).length
+  return (
+    <div className="strip-cell strip-baths">
+      <h2 className="vh">Baths</h2>
+      <ul>
+        {baths.length === 0 && <li>No bath yet</li>}
+        {lines.map((bath) => (
+          <li key={bath.id} className={bath.isStirredToday ? 'strip-good' : 'strip-alarm'}>
+            <Icon name={bath.isStirredToday ? 'check' : 'warning'} /> {shortBathName(bath.name)}:{' '}
+            {bath.isStirredToday && bath.stirredAt !== null
+              ? `stirred ${formatClock(bath.stirredAt, timeZone)}`
+              : stirWords(bath.stirredAt, now, timeZone)}
+          </li>
+        ))}
+        {rest > 0 && (
+          <li className={restToStir > 0 ? 'strip-alarm' : 'strip-good'}>
+            <Icon name={restToStir > 0 ? 'warning' : 'check'} /> {rest} more{restToStir > 0 ? `, ${restToStir} to stir` : ', stirred'}
+          </li>
+        )}
+      </ul>
+    </div>
+  )
+}
+
+function stirWords(stirredAt: number | null, now: number, timeZone: string): string {
+  return stirredAt === null ? 'stir' : `stir, last ${formatMoment(stirredAt, now, timeZone)}`
+}

@@ -1,0 +1,128 @@
+'use client'
+
+import { useEffect, useEffectEvent, useRef, useState } from 'react'
+import { Icon } from '@/app/_components/icons'
+import { Key } from '@/app/_components/key'
+import { stuccoWord } from '@/lib/format/coat-words'
+import { formatClock } from '@/lib/format/local-time'
+import { timePairWords } from '@/lib/format/time-pair'
+import { newOperationId } from '../_queries/operation-id'
+import { refusalWords } from '../_queries/request-json'
+import { postUndo } from '../_queries/writes'
+import type { Logged } from './dip-sheet'
+
+const UNDO_S = 20
+
+/** A word at the foot of the floor: a logged run that may be taken back, or a short note. */
+export type FootWord = { id: number; at: number } & ({ kind: 'logged'; logged: Logged } | { kind: 'note'; words: string })
+
+export type UndoBarProps = { word: FootWord; now: number; timeZone: string; onGone: () => void; onTakenBack: (words: string) => void }
+
+/** Stands 20 s; read out politely. Taking back needs no question before it: the log keeps both. */
+export function UndoBar({ word, now, timeZone, onGone, onTakenBack }: UndoBarProps) {
+  const [left, setLeft] = useState(UNDO_S)
+  const [trouble, setTrouble] = useState<string | null>(null)
+  const [isSending, setIsSending] = useState(false)
+  const inFlight = useRef(false)
+  const operationId = useRef<string | null>(null)
+  const gone = useEffectEvent(onGone)
+  // While taking back has not worked the bar stays: the run is still on the log.
+  const isRunning = !isSending && trouble === null
+
+  useEffect(() => {
+    if (!isRunning) return undefined
+    const timer = setInterval(() => setLeft((seconds) => Math.max(0, seconds - 1)), 1000)
+    return () => clearInterval(timer)
+  }, [isRunning])
+
+  useEffect(() => {
+    if (left === 0) gone()
+  }, [left])
+
+  const undo = async (logged: Logged) => {
+    if (inFlight.current) return
+    inFlight.current = true
+    setIsSending(true)
+    setTrouble(null)
+    operationId.current ??= newOperationId()
+    const outcome = await postUndo(
+      operationId.current,
+      logged.answer.coats.map((coat) => coat.coatId),
+    )
+    inFlight.current = false
+    setIsSending(false)
+    if (outcome.kind === 'done') {
+      onTakenBack(`Taken back: ${dipsWord(logged.answer.coats.length)}, ${tagsOf(logged)}. The coats below dry on.`)
+      return
+    }
+    if (outcome.kind === 'refused') operationId.current = null
+    setTrouble(
+      outcome.kind === 'refused' ? refusalWords(outcome.status, outcome.problem) : `Not taken back yet. ${outcome.detail} Try again.`,
+    )
+  }
+
+  if (word.kind === 'note') {
+    return (
+      // oxlint-disable-next-line jsx-a11y/prefer-tag-over-role -- an output element takes no blocks
+      <div className="undo" role="status">
+        <Icon name="check" />
+        <div>
+          <b>{word.words}</b>
+        </div>
+        <Key size={64} className="undo-done" onPress={onGone}>
+          Done
+        </Key>
+        <i className="undo-left" aria-hidden="true" />
+      </div>
+    )
+  }
+
+  const { logged } = word
+  return (
+    // oxlint-disable-next-line jsx-a11y/prefer-tag-over-role -- an output element takes no blocks
+    <div className="undo" role="status">
+      <Icon name={trouble ? 'warning' : 'check'} className={trouble ? 'undo-trouble' : ''} />
+      <div>
+        <b>
+          {dipsWord(logged.answer.coats.length)} logged at {formatClock(word.at, timeZone)}
+        </b>
+        <span>{trouble ?? loggedSentence(logged, now, timeZone)}</span>
+      </div>
+      <Key size={64} icon="undo" isOff={isSending} onPress={() => void undo(logged)} aria-label="Undo">
+        {isSending ? 'Taking back' : `Undo, ${left} s`}
+      </Key>
+      <Key size={64} className="undo-done" onPress={onGone}>
+        Done
+      </Key>
+      {isRunning && <i className="undo-left" aria-hidden="true" />}
+    </div>
+  )
+}
+
+const dipsWord = (count: number) => (count === 1 ? '1 dip' : `${count} dips`)
+
+function tagsOf({ answer }: Logged): string {
+  const tags = answer.coats.map((coat) => coat.tag)
+  return tags.length > 6 ? `${tags.slice(0, 6).join(', ')} and ${tags.length - 6} more` : tags.join(', ')
+}
+
+/** 'T-118, T-120 in Backup slurry, coarse. Likely 21:25, safe 22:30. T-120: other bath.' */
+function loggedSentence(logged: Logged, now: number, timeZone: string): string {
+  const [first, ...others] = logged.answer.coats
+  if (!first) return ''
+  const pair = timePairWords(first, now, timeZone).text
+  const isSame = others.every((coat) => timePairWords(coat, now, timeZone).text === pair)
+  const when =
+    first.likelyAt === null && first.safeAt === null
+      ? ''
+      : isSame
+        ? `${pair.charAt(0).toUpperCase()}${pair.slice(1)}.`
+        : `${first.tag} ${pair}.`
+  const unusual = logged.answer.coats
+    .filter((coat) => coat.deviations.length > 0)
+    .map((coat) => `${coat.tag}: ${coat.deviations.join(', ')}`)
+  const stucco = logged.stucco === 'none' ? 'no stucco' : stuccoWord(logged.stucco).toLowerCase()
+  return [`${tagsOf(logged)} in ${logged.bathName}, ${stucco}.`, when, unusual.length > 0 ? `Not as planned: ${unusual.join('; ')}.` : '']
+    .filter(Boolean)
+    .join(' ')
+}

@@ -1,0 +1,30 @@
+import { z } from 'zod'
+import { dipRefusal, dipRunAnswer, type DipRefusal, type DipRun } from '@/lib/coats/dip-contract'
+import { newOperationId } from './operation-id'
+import { postJson } from './request-json'
+
+const anyAnswer = z.unknown()
+
+export const postDips = (run: DipRun) => postJson('/api/v1/dips', run, dipRunAnswer)
+
+export const postUndo = (operationId: string, coatIds: string[]) => postJson('/api/v1/dips/undo', { operationId, coatIds }, anyAnswer)
+
+export const postStir = (bathId: string, operationId = newOperationId()) =>
+  postJson(`/api/v1/baths/${bathId}/stirs`, { operationId }, anyAnswer)
+
+export const postWatch = (treeId: string) => postJson(`/api/v1/trees/${treeId}/watch`, { operationId: newOperationId() }, anyAnswer)
+
+export const postLook = (treeId: string, verdict: 'looks dry' | 'not yet') =>
+  postJson(`/api/v1/trees/${treeId}/looks`, { operationId: newOperationId(), verdict }, anyAnswer)
+
+export const postHold = (treeId: string, operationId: string, reason: string) =>
+  postJson(`/api/v1/trees/${treeId}/holds`, { operationId, reason }, anyAnswer)
+
+export const postTypedReading = (reading: { operationId: string; sensorId: number; airTempC: number; relHumidityPct: number }) =>
+  postJson('/api/v1/readings/typed', reading, anyAnswer)
+
+/** The refused trees of a 409, if the server named any. */
+export function refusedTrees(trees: unknown): DipRefusal[] {
+  const parsed = z.array(dipRefusal).safeParse(trees)
+  return parsed.success ? parsed.data : []
+}

@@ -1,0 +1,162 @@
+import type { CoatingWay, Stucco } from '@/lib/coats/vocabulary'
+import type { DipRun } from '@/lib/coats/dip-contract'
+import type { Queue, QueueTree } from '@/lib/queue/contract'
+import { airTempC, relHumidityPct } from '@/lib/room/reading-contract'
+import type { TreeState } from '@/lib/trees/states'
+
+const MINUTE_MS = 60_000
+
+/** When the dip was made. 'ago' keys are rough by half their own length at most; a set clock by half its step. */
+export type DipDone = { kind: 'now' } | { kind: 'ago'; minutes: 10 | 20 | 40 } | { kind: 'at'; at: number }
+
+const ROUGH_MINUTES: Record<10 | 20 | 40, number> = { 10: 5, 20: 10, 40: 15 }
+/** The clock is set in steps of 5 min. */
+const SET_CLOCK_ROUGH_MINUTES = 3
+
+/** What stands on the dip sheet: filled in from the recipe, changed by a hand. */
+export type DipDraft = {
+  treeIds: string[]
+  bathId: string
+  stucco: Stucco
+  way: CoatingWay
+  drainSeconds: number
+  done: DipDone
+  /** Null hangs each tree back where it was. */
+  placeId: string | null
+  /** As typed from the wall hygrometer. */
+  roomTemp: string
+  roomHumidity: string
+  /** For trees that are held or not dry yet. */
+  reason: string
+  /** Numbers that a person has corrected: 'it was the next one'. */
+  coatNumbers: Record<string, number>
+}
+
+const NOT_DRY: ReadonlySet<TreeState> = new Set(['wet', 'drying', 'nearly dry', 'unknown', 'last coat on'])
+
+/** True when the newest coat is not known to be dry: the dip would be early. */
+export function isEarly(tree: QueueTree): boolean {
+  return NOT_DRY.has(tree.state) || tree.warnings.some(({ code }) => code === 'still wet' || code === 'unknown')
+}
+
+/** Held or early: the log takes the dip, wants to know why, and tells the supervisor. */
+export function needsReason(tree: QueueTree): boolean {
+  return tree.state === 'held' || isEarly(tree)
+}
+
+/** The sheet as the recipe and the tree's last place fill it in. Null when the first tree takes no coat. */
+export function startDraft(trees: readonly QueueTree[]): DipDraft | null {
+  const first = trees.find((tree) => tree.next !== null)
+  if (!first?.next) return null
+  return {
+    treeIds: trees.filter((tree) => tree.next !== null).map((tree) => tree.id),
+    bathId: first.next.bathId,
+    stucco: first.next.stucco,
+    way: 'dip',
+    drainSeconds: first.next.drainSeconds,
+    done: { kind: 'now' },
+    placeId: null,
+    roomTemp: '',
+    roomHumidity: '',
+    reason: '',
+    coatNumbers: {},
+  }
+}
+
+export function coatNumberOf(draft: DipDraft, tree: QueueTree): number {
+  return draft.coatNumbers[tree.id] ?? tree.next?.number ?? tree.coatsOn + 1
+}
+
+/** Which of the sheet's choices differ from the recipe of at least one tree. */
+export type Deviations = { bath: boolean; stucco: boolean }
+
+export function deviationsOf(draft: DipDraft, trees: readonly QueueTree[]): Deviations {
+  return {
+    bath: trees.some((tree) => tree.next !== null && tree.next.bathId !== draft.bathId),
+    stucco: trees.some((tree) => tree.next !== null && tree.next.stucco !== draft.stucco),
+  }
+}
+
+/** Stuccos to choose from: 'none' only where the next coat is a seal. */
+export function stuccoChoices(trees: readonly QueueTree[]): Stucco[] {
+  const grades: Stucco[] = ['fine', 'medium', 'coarse']
+  return trees.some((tree) => tree.next?.kind === 'seal' || tree.next?.stucco === 'none') ? [...grades, 'none'] : grades
+}
+
+/** True when one of the chosen places has no sensor, so that somebody has to read the wall hygrometer. */
+export function needsWallReading(draft: DipDraft, trees: readonly QueueTree[], places: Queue['places']): boolean {
+  const chosen = draft.placeId === null ? trees.map((tree) => tree.place.id) : [draft.placeId]
+  return places.some((place) => place.needsTypedReading && chosen.includes(place.id))
+}
+
+/** '19,5' and '19.5' are the same dial. Null when nothing was typed, NaN when it is no number. */
+export function parseDial(text: string): number | null {
+  const trimmed = text.trim().replace(',', '.').replace('−', '-')
+  return trimmed === '' ? null : Number(trimmed)
+}
+
+export type DialErrors = { airTempC?: string; relHumidityPct?: string }
+
+/** Checks what was typed from the wall hygrometer against what air can be. */
+export function checkDial(
+  temp: string,
+  humidity: string,
+): { errors: DialErrors; room: { airTempC: number; relHumidityPct: number } | null } {
+  const errors: DialErrors = {}
+  const parsedTemp = airTempC.safeParse(parseDial(temp) ?? undefined)
+  const parsedHumidity = relHumidityPct.safeParse(parseDial(humidity) ?? undefined)
+  if (!parsedTemp.success) errors.airTempC = parsedTemp.error.issues[0]?.message ?? 'Temperature is a number in °C.'
+  if (!parsedHumidity.success) errors.relHumidityPct = parsedHumidity.error.issues[0]?.message ?? 'Humidity is a number in %.'
+  const room = parsedTemp.success && parsedHumidity.success ? { airTempC: parsedTemp.data, relHumidityPct: parsedHumidity.data } : null
+  return { errors, room }
+}
+
+export function dippedAtOf(done: DipDone, now: number): { dippedAt: number; roughTime?: number } {
+  if (done.kind === 'now') return { dippedAt: now }
+  if (done.kind === 'ago') return { dippedAt: now - done.minutes * MINUTE_MS, roughTime: ROUGH_MINUTES[done.minutes] }
+  return { dippedAt: Math.min(done.at, now), roughTime: SET_CLOCK_ROUGH_MINUTES }
+}
+
+export type RunBody = Omit<DipRun, 'operationId'>
+
+/** The body of the run. The room goes along only when it was read from the wall. */
+export function runBody(
+  draft: DipDraft,
+  trees: readonly QueueTree[],
+  now: number,
+  room: { airTempC: number; relHumidityPct: number } | null,
+): RunBody {
+  const reason = draft.reason.trim()
+  return {
+    bathId: draft.bathId,
+    stucco: draft.stucco,
+    way: draft.way,
+    drainSeconds: draft.drainSeconds,
+    ...dippedAtOf(draft.done, now),
+    ...(room ? { room } : {}),
+    trees: trees.map((tree) => ({
+      treeId: tree.id,
+      coatNumber: coatNumberOf(draft, tree),
+      placeId: draft.placeId ?? tree.place.id,
+      ...(reason !== '' && needsReason(tree) ? { reason } : {}),
+    })),
+  }
+}
+
+/** Places to offer as keys beside the last one: the next ones along the rack. */
+export function nearPlaces(places: Queue['places'], trees: readonly QueueTree[], count: number): Queue['places'] {
+  const last = trees[0]?.place.id
+  const index = places.findIndex((place) => place.id === last)
+  const taken = new Set(trees.map((tree) => tree.place.id))
+  return [...places.slice(index + 1), ...places.slice(0, Math.max(0, index))].filter((place) => !taken.has(place.id)).slice(0, count)
+}
+
+/** 'Back to Rack B 2, B 3, B 4': the shared beginning is said once. */
+export function backToWords(trees: readonly QueueTree[]): string {
+  const names = [...new Set(trees.map((tree) => tree.place.name))]
+  if (names.length <= 1) return names[0] ?? ''
+  const start = names[0]!.split(' ').slice(0, -2).join(' ')
+  const canShorten = start !== '' && names.every((name) => name.startsWith(`${start} `))
+  const short = canShorten ? names.map((name, index) => (index === 0 ? name : name.slice(start.length + 1))) : names
+  return short.length > 4 ? `Back to their ${short.length} places` : `Back to ${short.join(', ')}`
+}

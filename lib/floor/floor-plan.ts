@@ -1,0 +1,94 @@
+import type { DipNowSizes } from '@/lib/floor/fold-dip-now'
+
+/** How the floor is laid out: one column to scroll, or a board without scrolling in one of three arrangements. */
+export type FloorMode = 'list' | 'portrait' | 'compact' | 'wide'
+
+/** Mode of a viewport, px. The same borders stand in floor.css. */
+export function floorMode(width: number, height: number): FloorMode {
+  if (width < 700 || height < 636) return 'list'
+  if (width <= 900) return 'portrait'
+  return width <= 1100 ? 'compact' : 'wide'
+}
+
+/** Heights shared with floor.css, px. */
+export const COLUMN_HEAD = 50
+export const TIDE_AXIS = 52
+export const TIDE_ROW_LEAST = 77
+export const TIDE_ROW_MOST = 104
+export const PAGE_KEY = 64
+export const BARE_WAX_LINE = 66
+export const HOOK = 64
+/** Three rails with their headings, the gaps between them and the feet. */
+export const RAILS = 127
+export const RACK_HEAD = 44
+export const HELD_HEAD = 40
+export const HELD_TREE = 104
+export const COMPACT_RACK = 126
+
+export const DIP_NOW_SIZES: Record<Exclude<FloorMode, 'list'>, DipNowSizes> = {
+  wide: { row: 84, denseRow: 77, rowGap: 10, head: 46, groupEdge: 13, runKey: 108, stirKey: 64, keyGap: 10, pageKey: 64, fold: 66 },
+  compact: { row: 84, denseRow: 77, rowGap: 10, head: 42, groupEdge: 11, runKey: 100, stirKey: 64, keyGap: 10, pageKey: 64, fold: 66 },
+  portrait: { row: 84, denseRow: 77, rowGap: 10, head: 44, groupEdge: 13, runKey: 100, stirKey: 64, keyGap: 10, pageKey: 64, fold: 66 },
+}
+
+/** Above an open sheet the run key is only as high as a row, and stirring waits. */
+export const BESIDE_SHEET_RUN_KEY = 77
+
+/** In portrait the dip column takes at most this share of the height, else the tide would lose its rows. */
+const PORTRAIT_DIP_SHARE = 0.56
+/** With a sheet open in portrait the dip column stands above it. */
+const PORTRAIT_SHEET = 690
+
+export type FloorPlan = {
+  /** Height for groups and rows in the dip column. */
+  dipList: number
+  /** Height of the whole dip column in portrait; the deck's own elsewhere. */
+  dipColumn: number
+  /** Height for the rows of the tide. */
+  tideRows: number
+  /** Rows of hooks on the rack. */
+  rackRows: number
+}
+
+/** Heights of the parts of the board. `dipNeed` is what the dip column would take with everything open. */
+export function planFloor(
+  mode: Exclude<FloorMode, 'list'>,
+  deckHeight: number,
+  needs: { dipNeed: number; hasBareWax: boolean; held: number; isSheetOpen: boolean },
+): FloorPlan {
+  const bare = needs.hasBareWax ? BARE_WAX_LINE : 0
+  const held = needs.held === 0 ? 0 : HELD_HEAD + HELD_TREE + (needs.held > 1 ? HOOK : 0)
+  const railRows = (height: number) => Math.max(3, Math.floor((height - RACK_HEAD - RAILS - held) / HOOK))
+  if (mode === 'portrait') {
+    const most = needs.isSheetOpen ? deckHeight - PORTRAIT_SHEET : deckHeight * PORTRAIT_DIP_SHARE
+    const edge = 6
+    const dipColumn = Math.round(Math.max(240, Math.min(COLUMN_HEAD + needs.dipNeed + bare + edge, most)))
+    const rest = deckHeight - dipColumn
+    return {
+      dipList: dipColumn - COLUMN_HEAD - bare - edge,
+      dipColumn,
+      tideRows: rest - COLUMN_HEAD - TIDE_AXIS - 5,
+      rackRows: railRows(rest),
+    }
+  }
+  const tide = mode === 'compact' ? deckHeight - COMPACT_RACK : deckHeight
+  return {
+    dipList: deckHeight - COLUMN_HEAD - bare,
+    dipColumn: deckHeight,
+    tideRows: tide - COLUMN_HEAD - TIDE_AXIS - 5,
+    rackRows: mode === 'compact' ? 3 : railRows(deckHeight),
+  }
+}
+
+/** How many rows the tide holds, and how high they stand. */
+export function tideCapacity(height: number): { all: number; withPageKey: number } {
+  return {
+    all: Math.max(1, Math.floor(height / TIDE_ROW_LEAST)),
+    withPageKey: Math.max(1, Math.floor((height - PAGE_KEY) / TIDE_ROW_LEAST)),
+  }
+}
+
+export function tideRowHeight(height: number, rows: number, hasPageKey: boolean): number {
+  if (rows === 0) return TIDE_ROW_MOST
+  return Math.floor(Math.min(TIDE_ROW_MOST, Math.max(TIDE_ROW_LEAST, (height - (hasPageKey ? PAGE_KEY : 0)) / rows)))
+}

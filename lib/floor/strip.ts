@@ -1,0 +1,53 @@
+import { formatReadAge } from '@/lib/format/duration'
+import { formatMoment } from '@/lib/format/local-time'
+import type { Queue, QueueBath, QueueRoom } from '@/lib/queue/contract'
+
+/** The drying pull as a word. */
+export const PULL_WORDS: Record<QueueRoom['pull'], string> = {
+  slow: 'Slow',
+  good: 'Good',
+  'too dry for face coats': 'Too dry for face coats',
+  'not known': 'Not known',
+}
+
+/** Age of the newest reading: 'read 2 min ago', 'no reading since 14:05', 'no reading yet'. */
+export function readingAge(room: QueueRoom, now: number, timeZone: string): string {
+  if (room.measuredAt === null) return 'no reading yet'
+  return room.isStale ? `no reading since ${formatMoment(room.measuredAt, now, timeZone)}` : formatReadAge(room.measuredAt, now)
+}
+
+/**
+ * The rooms with the one that most needs a look first: silent while trees dry in it, then too dry, then slow.
+ * Among equals the one where most trees hang.
+ */
+export function roomsByWorry(queue: Pick<Queue, 'rooms' | 'places' | 'trees'>): QueueRoom[] {
+  const sensorOf = new Map(queue.places.map((place) => [place.id, place.sensorId]))
+  const hanging = new Map<number, number>()
+  for (const tree of queue.trees) {
+    const sensorId = sensorOf.get(tree.place.id)
+    if (sensorId !== undefined) hanging.set(sensorId, (hanging.get(sensorId) ?? 0) + 1)
+  }
+  const trees = (room: QueueRoom) => hanging.get(room.sensorId) ?? 0
+  const worry = (room: QueueRoom) => {
+    // Nobody waits for the air of an empty room.
+    if (trees(room) === 0) return 5
+    if (room.isStale || room.pull === 'not known') return 0
+    return { 'too dry for face coats': 1, slow: 2, good: 3 }[room.pull]
+  }
+  return queue.rooms.toSorted((a, b) => worry(a) - worry(b) || trees(b) - trees(a) || a.sensorId - b.sensorId)
+}
+
+/** Baths that want stirring first, then the others, face before backup. */
+export function bathsByNeed(baths: readonly QueueBath[]): QueueBath[] {
+  return baths.toSorted(
+    (a, b) =>
+      Number(a.isStirredToday) - Number(b.isStirredToday) ||
+      Number(b.kind === 'face') - Number(a.kind === 'face') ||
+      a.name.localeCompare(b.name),
+  )
+}
+
+/** 'Face slurry' as 'Face': under the heading of the baths the second word is known. */
+export function shortBathName(name: string): string {
+  return name.replace(/ slurry$/i, '')
+}

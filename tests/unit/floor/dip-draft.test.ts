@@ -1,0 +1,128 @@
+import { describe, expect, it } from 'vitest'
+import { dipRun } from '@/lib/coats/dip-contract'
+import {
+  backToWords,
+  checkDial,
+  coatNumberOf,
+  deviationsOf,
+  nearPlaces,
+  needsReason,
+  needsWallReading,
+  runBody,
+  startDraft,
+  stuccoChoices,
+} from '@/lib/floor/dip-draft'
+import { afternoonFixture, FIXTURE_NOW, queueTreeFixture } from '../../factories/queue-fixture'
+
+const queue = afternoonFixture()
+const tree = (tag: string) => queue.trees.find((candidate) => candidate.tag === tag)!
+const run = [tree('T-118'), tree('T-120'), tree('T-121')]
+
+describe('startDraft', () => {
+  it('takes bath, stucco and drain from the recipe and hangs each tree back', () => {
+    expect(startDraft(run)).toMatchObject({ bathId: run[0]!.next!.bathId, stucco: 'coarse', drainSeconds: 45, placeId: null, way: 'dip' })
+  })
+
+  it('leaves out trees that take no coat', () => {
+    expect(startDraft([tree('T-113')])).toBeNull()
+    expect(startDraft([tree('T-118'), tree('T-113')])?.treeIds).toEqual([tree('T-118').id])
+  })
+})
+
+describe('runBody', () => {
+  it('is what the server takes', () => {
+    const draft = { ...startDraft(run)!, done: { kind: 'ago', minutes: 20 } as const }
+    const body = runBody(draft, run, FIXTURE_NOW, null)
+    expect(dipRun.safeParse({ operationId: '00000000-0000-4000-8000-000000000001', ...body }).success).toBe(true)
+    expect(body).toMatchObject({ dippedAt: FIXTURE_NOW - 20 * 60_000, roughTime: 10 })
+    expect(body.trees.map((part) => part.coatNumber)).toEqual([6, 5, 5])
+    expect(body).not.toHaveProperty('room')
+  })
+
+  it('never dates a dip ahead of the clock', () => {
+    const draft = { ...startDraft(run)!, done: { kind: 'at', at: FIXTURE_NOW + 60_000 } as const }
+    expect(runBody(draft, run, FIXTURE_NOW, null).dippedAt).toBe(FIXTURE_NOW)
+  })
+
+  it('gives the reason to those that need one only', () => {
+    const wet = tree('T-125')
+    const draft = { ...startDraft([wet, ...run])!, reason: ' Feels dry ' }
+    expect(runBody(draft, [wet, run[0]!], FIXTURE_NOW, null).trees.map((part) => part.reason)).toEqual(['Feels dry', undefined])
+  })
+
+  it('takes the number that a person has corrected', () => {
+    const draft = { ...startDraft(run)!, coatNumbers: { [run[0]!.id]: 7 } }
+    expect(coatNumberOf(draft, run[0]!)).toBe(7)
+    expect(runBody(draft, run, FIXTURE_NOW, null).trees[0]?.coatNumber).toBe(7)
+  })
+})
+
+describe('needsReason', () => {
+  it.each([
+    ['T-118', false],
+    ['T-126', false],
+    ['T-125', true],
+    ['T-127', true],
+    ['T-114', true],
+  ])('%s: %s', (tag, needs) => {
+    expect(needsReason(tree(tag))).toBe(needs)
+  })
+
+  it('asks for one where nobody knows how dry it is, and where an overdue coat is still wet', () => {
+    expect(needsReason(queueTreeFixture({ state: 'unknown' }))).toBe(true)
+    expect(needsReason(queueTreeFixture({ state: 'overdue', warnings: [{ code: 'still wet', level: 'warn', text: 'Still wet.' }] }))).toBe(
+      true,
+    )
+    expect(needsReason(queueTreeFixture({ state: 'bare wax' }))).toBe(false)
+  })
+})
+
+describe('choices', () => {
+  it('offer no stucco on a seal coat only', () => {
+    expect(stuccoChoices([tree('T-118')])).not.toContain('none')
+    expect(stuccoChoices([tree('T-116')])).toContain('none')
+  })
+
+  it('say what is not the recipe', () => {
+    const draft = startDraft(run)!
+    expect(deviationsOf(draft, run)).toEqual({ bath: false, stucco: false })
+    expect(deviationsOf({ ...draft, stucco: 'fine' }, run)).toEqual({ bath: false, stucco: true })
+    expect(deviationsOf(draft, [...run, tree('T-124')])).toEqual({ bath: true, stucco: true })
+  })
+
+  it('ask for the wall hygrometer where no sensor serves the place', () => {
+    const ferryman = tree('T-116')
+    const draft = startDraft([ferryman])!
+    expect(needsWallReading(draft, [ferryman], queue.places)).toBe(true)
+    expect(needsWallReading({ ...draft, placeId: tree('T-118').place.id }, [ferryman], queue.places)).toBe(false)
+  })
+
+  it('offer the next places along the rack', () => {
+    expect(nearPlaces(queue.places, [tree('T-118')], 2).map((place) => place.name)).toEqual(['Rack B 3', 'Rack B 4'])
+    expect(nearPlaces(queue.places, run, 1).map((place) => place.name)).toEqual(['Rack B 5'])
+  })
+
+  it('say the shared beginning of places once', () => {
+    expect(backToWords(run)).toBe('Back to Rack B 2, B 3, B 4')
+    expect(backToWords([run[0]!])).toBe('Rack B 2')
+    expect(backToWords([run[0]!, tree('T-116')])).toBe('Back to Rack B 2, Net loft 2')
+  })
+})
+
+describe('checkDial', () => {
+  it('reads a comma as a point', () => {
+    expect(checkDial('19,5', ' 66 ').room).toEqual({ airTempC: 19.5, relHumidityPct: 66 })
+  })
+
+  it.each([
+    ['', '66', 'Temperature is a number in °C.', undefined],
+    ['x', '66', 'Temperature is a number in °C.', undefined],
+    ['99', '66', 'A shell room is not hotter than 60 °C.', undefined],
+    ['20', '120', undefined, 'Humidity cannot be over 105 %.'],
+  ])('says what is wrong with %j and %j', (temp, humidity, tempError, humidityError) => {
+    const { errors, room } = checkDial(temp, humidity)
+    expect(room).toBeNull()
+    expect(errors.airTempC).toBe(tempError)
+    expect(errors.relHumidityPct).toBe(humidityError)
+  })
+})

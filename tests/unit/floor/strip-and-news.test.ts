@@ -1,0 +1,51 @@
+import { describe, expect, it } from 'vitest'
+import { floorNews } from '@/lib/floor/news'
+import { bathsByNeed, readingAge, roomsByWorry } from '@/lib/floor/strip'
+import { afternoonFixture, crowdFixture, FIXTURE_NOW, queueTreeFixture, roomFixture } from '../../factories/queue-fixture'
+
+const MINUTE = 60_000
+const plain = (text: string) => text.replaceAll('\u00A0', ' ')
+const age = (overrides: Parameters<typeof roomFixture>[0]) => plain(readingAge(roomFixture(overrides), FIXTURE_NOW, 'Europe/London'))
+
+describe('roomsByWorry', () => {
+  it('names the silent room first, then the too dry, then the slow', () => {
+    expect(roomsByWorry(crowdFixture(60)).map((room) => room.sensorName)).toEqual(['Net loft', 'Drying tunnel', 'Shell room'])
+  })
+
+  it('does not worry about a room without trees', () => {
+    const queue = afternoonFixture()
+    const rooms = [...queue.rooms, roomFixture({ sensorId: 9, sensorName: 'Empty store', isStale: true, pull: 'not known' })]
+    expect(roomsByWorry({ ...queue, rooms })[0]?.sensorName).toBe('Shell room')
+  })
+})
+
+describe('readingAge', () => {
+  it('tells the age of a reading, or since when there is none', () => {
+    expect(age({ measuredAt: FIXTURE_NOW - 2 * MINUTE })).toBe('read 2 min ago')
+    expect(age({ measuredAt: FIXTURE_NOW - 65 * MINUTE, isStale: true })).toBe('no reading since 14:05')
+    expect(age({ measuredAt: null, isStale: true })).toBe('no reading yet')
+  })
+})
+
+it('puts the bath that wants stirring first', () => {
+  expect(bathsByNeed(afternoonFixture().baths).map((bath) => bath.name)).toEqual(['Backup slurry', 'Face slurry'])
+})
+
+describe('floorNews', () => {
+  const tree = queueTreeFixture({ tag: 'T-118', state: 'nearly dry', coatsOn: 5 })
+
+  it('says what has come to be dipped', () => {
+    expect(floorNews([tree], [{ ...tree, state: 'dip now' }])).toEqual({ polite: 'Dip now: T-118, dip 6.', assertive: '' })
+  })
+
+  it('says overdue once', () => {
+    const overdue = { ...tree, state: 'overdue' as const }
+    expect(floorNews([tree], [overdue]).assertive).toBe('Overdue: T-118, dip 6.')
+    expect(floorNews([overdue], [overdue])).toEqual({ polite: '', assertive: '' })
+  })
+
+  it('is silent about a tree that was to dip already, and about one it has never seen', () => {
+    expect(floorNews([{ ...tree, state: 'dip now' }], [{ ...tree, state: 'waiting' }]).polite).toBe('')
+    expect(floorNews([], [{ ...tree, state: 'dip now' }]).polite).toBe('')
+  })
+})
