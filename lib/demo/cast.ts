@@ -247,7 +247,6 @@ export const CAST: readonly CastTree[] = [
     spacings: ['open', 'crowded'],
     waxMassKg: 6.8,
     cup: largeCup,
-    story: { kind: 'rough time', coat: 3 },
   },
   {
     ...anyShape,
@@ -310,6 +309,7 @@ export const CAST: readonly CastTree[] = [
     waxMassKg: 5.6,
     cup: largeCup,
     pour: 'planned',
+    story: { kind: 'rough time', coat: 4 },
   },
   { pieces: one('Gull on a Post', 2), recipe: 'six', aim: { kind: 'looked over' }, waxMassKg: 1.1, cup: paperCup, pour: 'planned' },
   // Gone from the floor.
