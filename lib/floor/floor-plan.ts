@@ -50,14 +50,14 @@ export type FloorPlan = {
   rackRows: number
 }
 
-/** Heights of the parts of the board. `dipNeed` is what the dip column would take with everything open. */
+/** Heights of the parts of the board. `dipNeed` is the height of its groups and rows. */
 export function planFloor(
   mode: Exclude<FloorMode, 'list'>,
   deckHeight: number,
-  needs: { dipNeed: number; hasBareWax: boolean; held: number; isSheetOpen: boolean },
+  needs: { dipNeed: number; hasBareWax: boolean; hasHeld: boolean; isSheetOpen: boolean },
 ): FloorPlan {
   const bare = needs.hasBareWax ? BARE_WAX_LINE : 0
-  const held = needs.held === 0 ? 0 : HELD_HEAD + HELD_TREE + (needs.held > 1 ? HOOK : 0)
+  const held = needs.hasHeld ? HELD_HEAD + HELD_TREE : 0
   const railRows = (height: number) => Math.max(3, Math.floor((height - RACK_HEAD - RAILS - held) / HOOK))
   if (mode === 'portrait') {
     const most = needs.isSheetOpen ? deckHeight - PORTRAIT_SHEET : deckHeight * PORTRAIT_DIP_SHARE

@@ -92,7 +92,7 @@ describe('planFloor', () => {
   })
 
   it('leaves the tide its rows in portrait', () => {
-    const plan = planFloor('portrait', 1120, { dipNeed: 2000, hasBareWax: true, held: 3, isSheetOpen: false })
+    const plan = planFloor('portrait', 1120, { dipNeed: 2000, hasBareWax: true, hasHeld: true, isSheetOpen: false })
     expect(plan.dipColumn).toBeLessThan(700)
     expect(tideCapacity(plan.tideRows).withPageKey).toBeGreaterThanOrEqual(3)
   })

@@ -78,7 +78,9 @@ export function DipSheet({ queue, draft, trees, now, memberName, onChange, onTre
   const withReason = trees.filter(needsReason)
   const hasWallDial = needsWallReading(draft, trees, queue.places)
   // Warnings and troubles need the room of the choices; those then stand in one line until somebody wants to change them.
-  const isShort = (warnings.length > 0 || trouble !== null) && panel === 'sheet'
+  const isShort = (warnings.length > 0 || trouble !== null || (hasWallDial && trees.length > CHIPS_WITH_TITLE)) && panel === 'sheet'
+  // Two rows of chips: what is read aloud then stands under the heading.
+  const isLongRun = trees.length > CHIPS_WITH_TITLE
   // They were read before 'Change' was touched.
   const isCrowded = warnings.length > 0 && panel === 'choices'
   const tone = warnings.some((warning) => warning.level === 'stop') ? 'stop' : warnings.length > 0 ? 'warn' : 'plain'
@@ -190,7 +192,7 @@ export function DipSheet({ queue, draft, trees, now, memberName, onChange, onTre
             under: `${coatsOnWords(first)}, ${first.place.name}. ${stateWords(first.state, first.stateSince, now)}.`,
             aside: hasWallDial && warnings.length === 0 ? <ShellSection {...sectionOf(first)} height={40} width={200} /> : undefined,
           }
-        : { heading: `Dip run, ${trees.length} trees` })}
+        : { heading: `Dip run, ${trees.length} trees`, under: isLongRun ? readAloudLines(trees).join(' ') : undefined })}
       foot={
         isSettling && trees.length === 0 ? (
           <Key size={80} tone="go" className="sheet-go" onPress={onCancel}>
@@ -247,7 +249,7 @@ export function DipSheet({ queue, draft, trees, now, memberName, onChange, onTre
             <ShellSection {...sectionOf(first)} height={40} width={692} className="sheet-section h-auto max-w-full" />
           )}
           {!isCrowded && <DipWarnings trees={trees} now={now} timeZone={timeZone} />}
-          {!isCrowded && !(wantsReason && hasWallDial) && <ReadAloud trees={trees} />}
+          {!isCrowded && !isLongRun && !(wantsReason && hasWallDial) && <ReadAloud trees={trees} />}
           {isShort ? (
             <>
               {early.length > 0 && !wantsReason && (
@@ -341,9 +343,12 @@ function wallWords(draft: DipDraft, trees: readonly QueueTree[], queue: Queue): 
   return `No sensor serves ${place?.name ?? 'this place'}. Read the dial there.`
 }
 
+const readAloudLines = (trees: readonly QueueTree[]) =>
+  [...new Set(trees.flatMap((tree) => (tree.next?.readAloud ? [tree.next.readAloud] : [])))].slice(0, 2)
+
 /** What the recipe says to do before the dip, each line once. */
 function ReadAloud({ trees }: { trees: readonly QueueTree[] }) {
-  const lines = [...new Set(trees.flatMap((tree) => (tree.next?.readAloud ? [tree.next.readAloud] : [])))].slice(0, 2)
+  const lines = readAloudLines(trees)
   if (lines.length === 0) return null
   return (
     <p className="read-aloud">
@@ -353,13 +358,14 @@ function ReadAloud({ trees }: { trees: readonly QueueTree[] }) {
   )
 }
 
-const CHIPS_WITH_TITLE = 6
-const CHIPS_MOST = 12
+/** One row of chips has room for titles; two rows are the most that leave the choices their place. */
+const CHIPS_WITH_TITLE = 3
+const CHIPS_MOST = 6
 
 function Chips({ trees, draft, onTrees }: { trees: readonly QueueTree[]; draft: DipDraft; onTrees: (ids: string[]) => void }) {
   const shown = trees.slice(0, trees.length > CHIPS_MOST ? CHIPS_MOST - 1 : CHIPS_MOST)
   return (
-    <ul className={`chips ${trees.length > CHIPS_WITH_TITLE / 2 ? 'chips-many' : ''}`}>
+    <ul className={`chips ${trees.length > CHIPS_WITH_TITLE ? 'chips-many' : ''}`}>
       {shown.map((tree) => (
         <Chip
           key={tree.id}
@@ -369,7 +375,7 @@ function Chips({ trees, draft, onTrees }: { trees: readonly QueueTree[]; draft: 
         />
       ))}
       {trees.length > shown.length && (
-        <li>
+        <li className="chips-rest">
           <div>
             <b>and {trees.length - shown.length} more</b>
           </div>

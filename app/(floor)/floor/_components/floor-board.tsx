@@ -85,13 +85,11 @@ export function FloorBoard({ initial, serverNow, member }: FloorBoardProps) {
     isStirred: group.isStirred || !canLog || isBesideSheet,
   }))
   const dipNeed = foldDipNow(foldable, Number.MAX_SAFE_INTEGER, sizes, groupChoice).height || 180
-  const heights = planFloor(boardMode, deck.height, {
-    dipNeed,
-    hasBareWax: board.bareWax.length > 0,
-    held: board.held.length,
-    isSheetOpen: open !== null,
-  })
-  const dipPlan = foldDipNow(foldable, heights.dipList, sizes, groupChoice)
+  const needs = { hasBareWax: board.bareWax.length > 0, hasHeld: board.held.length > 0, isSheetOpen: open !== null }
+  const atMost = planFloor(boardMode, deck.height, { ...needs, dipNeed })
+  const dipPlan = foldDipNow(foldable, atMost.dipList, sizes, groupChoice)
+  // Folded groups may take less than they were given: in portrait the tide has the rest.
+  const heights = planFloor(boardMode, deck.height, { ...needs, dipNeed: Math.min(dipNeed, dipPlan.height || dipNeed) })
 
   const say = (words: FootWordContent) => {
     wordCount.current += 1
@@ -256,6 +254,7 @@ export function FloorBoard({ initial, serverNow, member }: FloorBoardProps) {
                   ready={board.ready}
                   held={board.held}
                   rows={heights.rackRows}
+                  isNarrow={boardMode === 'compact'}
                   now={now}
                   timeZone={timeZone}
                   onList={onList}

@@ -14,6 +14,8 @@ export type RackProps = {
   ready: QueueTree[]
   held: QueueTree[]
   rows: number
+  /** The rack lies under the tide: no room for a tag beside the key that counts the rest. */
+  isNarrow: boolean
   now: number
   timeZone: string
   onList: (section: string) => void
@@ -31,9 +33,11 @@ const RAILS: Record<RailName, { words: string; state: TreeState; section: string
 const isSharing = (rail: Rail, index: number) => rail.name !== 'ready' && rail.hasMore && index === rail.shown - 1
 
 /** Trees past their last dip, as they hang; and those that are held. */
-export function Rack({ lastCoatOn, driedOut, ready, held, rows, now, timeZone, onList, onHeld }: RackProps) {
+export function Rack({ lastCoatOn, driedOut, ready, held, rows, isNarrow, now, timeZone, onList, onHeld }: RackProps) {
   const trees: Record<RailName, QueueTree[]> = { 'last coat on': lastCoatOn, 'dried out': driedOut, ready }
-  const rails = foldRack({ 'last coat on': lastCoatOn.length, 'dried out': driedOut.length, ready: ready.length }, rows)
+  const rails = foldRack({ 'last coat on': lastCoatOn.length, 'dried out': driedOut.length, ready: ready.length }, rows).map((rail) =>
+    isNarrow && rail.hasMore && rail.name !== 'last coat on' ? { ...rail, shown: 0 } : rail,
+  )
   const moreKey = (rail: Rail) => (
     <MoreHook
       words={rail.shown === 0 ? `See all ${rail.count}` : `and ${rail.count - rail.shown} more`}
@@ -64,7 +68,7 @@ export function Rack({ lastCoatOn, driedOut, ready, held, rows, now, timeZone, o
                   </li>
                 )
               })}
-              {rail.hasMore && rail.name === 'ready' && <li className="rail-more">{moreKey(rail)}</li>}
+              {rail.hasMore && (rail.name === 'ready' || rail.shown === 0) && <li className="rail-more">{moreKey(rail)}</li>}
             </ul>
           </section>
         ))}
@@ -136,7 +140,7 @@ function Held({ trees, onList, onHeld }: { trees: QueueTree[]; onList: RackProps
         <Tag tag={first.tag} height={fittedTagHeight(first.tag, 30)} isHeld ground="bone" />
         <span className="held-reason">{first.hold?.reason ?? 'No reason given'}</span>
       </RowKey>
-      {trees.length > 1 && <MoreHook words={`and ${trees.length - 1} more held`} onPress={() => onList('held')} />}
+      {trees.length > 1 && <MoreHook words={`and ${trees.length - 1} more`} onPress={() => onList('held')} />}
     </section>
   )
 }

@@ -34,7 +34,7 @@ export function Strip({ queue, now, memberName, onRoom, onWho }: StripProps) {
       </div>
       <button type="button" className="strip-cell strip-room" {...roomPress} aria-haspopup="dialog">
         <span className={`strip-label ${isSilent ? 'strip-alarm' : ''}`}>
-          {isSilent && <Icon name="warning" />} {name}, {age}
+          {isSilent && <Icon name="warning" />} {isSilent ? `${capital(age)}, ${name}` : `${name}, ${age}`}
         </span>
         <span className="strip-figures">
           <b className="num">
@@ -47,7 +47,7 @@ export function Strip({ queue, now, memberName, onRoom, onWho }: StripProps) {
           </b>
         </span>
       </button>
-      <button type="button" className="strip-cell strip-room" {...roomPress} aria-haspopup="dialog">
+      <button type="button" className="strip-cell strip-air" {...roomPress} aria-haspopup="dialog">
         <span className="strip-label">Drying pull</span>
         <span className="strip-figures">
           <Pull pull={room?.pull ?? 'not known'} />
@@ -75,11 +75,13 @@ export function Strip({ queue, now, memberName, onRoom, onWho }: StripProps) {
   )
 }
 
+const capital = (text: string) => text.charAt(0).toUpperCase() + text.slice(1)
+
 function Pull({ pull }: { pull: Queue['rooms'][number]['pull'] }) {
   const isGood = pull === 'good'
   const words = PULL_WORDS[pull]
   return (
-    <b className={`strip-pull ${isGood ? 'strip-good' : 'strip-alarm'} ${words.length > 9 ? 'strip-pull-long' : ''}`}>
+    <b className={`strip-pull ${isGood ? 'strip-good' : 'strip-alarm'} ${words.length > 8 ? 'strip-pull-long' : ''}`}>
       <Icon name={isGood ? 'check' : 'warning'} /> {words}
     </b>
   )
