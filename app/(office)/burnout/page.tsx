@@ -276,8 +276,12 @@ function DriedOut({
   pair: { likelyAt: number | null; safeAt: number | null } | null
   context: PourContext
 }) {
-  if (pair === null) {
-    return <span className="text-soot">not in sight: {tree.state === 'unknown' ? 'no reading of the air' : 'no forecast'}</span>
+  if (pair === null || pair.likelyAt === null) {
+    return (
+      <span className="text-soot">
+        not in sight: {tree.state === 'unknown' ? 'no reading of the air' : 'further off than the forecast'}
+      </span>
+    )
   }
   return (
     <>

@@ -71,6 +71,8 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
   const mayLook = isCoatOpen && canDo('look')
   const mayWatch =
     canDo('subscribe') && (['wet', 'drying', 'nearly dry', 'unknown', 'last coat on'].includes(tree.state) || detail.isWatched) && !hasLeft
+  // Without a reading nobody can tell: then no figure of the clock is shown as if it held.
+  const isUnknown = tree.state === 'unknown'
   const newestRow = coats.find((coat) => coat.isNewest)
   const targetPct = Math.round((1 - tree.openTarget) * 100)
   const isLookedOver = lookOvers.some((look) => look.coatNumber === tree.newestCoat?.number)
@@ -99,8 +101,15 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
       <p className="outlook">
         {tree.driedOut !== null && tree.next !== null && (
           <>
-            Dried out <TimePair pair={tree.driedOut} now={now} timeZone={timeZone} />
-            {tree.isUncalibrated && <span> ({NOT_CALIBRATED})</span>}
+            Dried out{' '}
+            {tree.driedOut.likelyAt === null ? (
+              'further off than the forecast'
+            ) : (
+              <>
+                <TimePair pair={tree.driedOut} now={now} timeZone={timeZone} />
+                {tree.isUncalibrated && <span> ({NOT_CALIBRATED})</span>}
+              </>
+            )}
             {pour === null || tree.pourDate === null ? '.' : ': '}
           </>
         )}
@@ -249,7 +258,11 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
                 : `; coat ${newestRow.number} may be dipped over at ${targetPct} % of its water or less`)}
           </p>
         </header>
-        {coats.length === 0 ? <p className="px-4 py-3 text-soot">The recipe has no coat.</p> : <CoatLog coats={coats} {...moment} />}
+        {coats.length === 0 ? (
+          <p className="px-4 py-3 text-soot">The recipe has no coat.</p>
+        ) : (
+          <CoatLog coats={coats} isUnknown={isUnknown} {...moment} />
+        )}
       </section>
 
       <div className="tree-columns">
@@ -263,11 +276,11 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
                 <p className="text-soot">No curve: no reading of the air reaches this coat.</p>
               ) : (
                 <DryingCharts
-                  curve={curve}
+                  curve={isUnknown ? { ...curve, likelyAt: null, safeAt: null } : curve}
                   climate={detail.climate}
                   coatNumber={newestRow.number}
                   isLastCoat={tree.next === null}
-                  moistureRatio={tree.moistureRatio}
+                  moistureRatio={isUnknown ? null : tree.moistureRatio}
                   now={now}
                   timeZone={timeZone}
                 />

@@ -32,8 +32,8 @@ function dryingWords(coat: Dipped): string {
   return coat.isCovered ? formatDuration(coat.dryingMs) : `${formatDuration(coat.dryingMs)} so far`
 }
 
-function leftWords(coat: Dipped): string {
-  if (coat.moistureRatio === null) return coat.isCovered ? 'not known' : 'now not known'
+function leftWords(coat: Dipped, isUnknown: boolean): string {
+  if (coat.moistureRatio === null || (isUnknown && !coat.isCovered)) return coat.isCovered ? 'not known' : 'now not known'
   return coat.isCovered ? `${formatShare(coat.moistureRatio)} left` : `now ${formatShare(coat.moistureRatio)} left`
 }
 
@@ -73,7 +73,7 @@ function Planned({ row, now, timeZone }: { row: CoatRow } & Moment) {
 }
 
 /** The coat log: thirteen columns on a desk, a list on a phone. */
-export function CoatLog({ coats, now, timeZone }: { coats: readonly CoatRow[] } & Moment) {
+export function CoatLog({ coats, isUnknown, now, timeZone }: { coats: readonly CoatRow[]; isUnknown: boolean } & Moment) {
   return (
     <>
       <div className="coat-log-wide" tabIndex={-1}>
@@ -145,7 +145,7 @@ export function CoatLog({ coats, now, timeZone }: { coats: readonly CoatRow[] } 
                     <td className="right">
                       <span className="num">{dryingWords(row.on)}</span>
                     </td>
-                    <td className="right num">{leftWords(row.on)}</td>
+                    <td className="right num">{leftWords(row.on, isUnknown)}</td>
                   </>
                 )}
               </tr>
@@ -180,7 +180,7 @@ export function CoatLog({ coats, now, timeZone }: { coats: readonly CoatRow[] } 
                   </p>
                   <details>
                     <summary>
-                      {dryingWords(row.on)}, {leftWords(row.on)}
+                      {dryingWords(row.on)}, {leftWords(row.on, isUnknown)}
                     </summary>
                     <dl className="facts">
                       <dt>Bath</dt>

@@ -32,7 +32,10 @@ export type DryingChartsProps = {
 const GRID = { stroke: 'var(--rule)', strokeWidth: 1, vertical: false } as const
 const TICK = { fill: 'var(--soot)', fontSize: 13, fontFamily: 'var(--font-text), sans-serif' } as const
 const LABEL = { fontSize: 14, fontWeight: 600, fontFamily: 'var(--font-text), sans-serif' } as const
-const MARGIN = { top: 8, right: 12, bottom: 0, left: 0 } as const
+const MARGIN = { top: 8, bottom: 0, left: 0 } as const
+/** At the right end of the room's lines stand their newest values. */
+const VALUE_ROOM = 76
+const STALE_MS = 30 * 60_000
 const NOW_LINE = { stroke: 'var(--ink)', strokeWidth: 3 } as const
 const DAY_MS = 86_400_000
 
@@ -67,13 +70,16 @@ export function DryingCharts({ curve, climate, coatNumber, isLastCoat, moistureR
   const to = Math.max(rows.at(-1)?.at ?? now, from + 60_000)
   const domain: [number, number] = [from, to]
   const span = to - from
+  const share = (at: number) => (at - from) / span
+  const newestAt = climate.at(-1)?.at ?? null
+  // All charts share one axis of time, so all make room.
+  const right = newestAt !== null && share(Math.max(newestAt, Math.min(now, to))) > 0.8 ? VALUE_ROOM : 12
   const ticks = hourTicks(from, to, timeZone, 8)
   const tickWords = (at: number) => {
     const clock = formatClock(at, timeZone)
     // Where midnights are on the axis they say the day; the hours between stay short.
     return span > DAY_MS && clock === '00:00' ? formatDate(at, timeZone).replace(/ \w+$/, '') : clock
   }
-  const share = (at: number) => (at - from) / span
   const left = moistureRatio === null ? null : moistureRatio * 100
   const pair = { likelyAt: curve.likelyAt, safeAt: curve.safeAt }
   const pairWords = timePairWords(pair, now, timeZone)
@@ -83,13 +89,13 @@ export function DryingCharts({ curve, climate, coatNumber, isLastCoat, moistureR
   const likelyAnchor = likelyShare > 0.82 ? 'end' : likelyShare < 0.3 || Math.abs(likelyShare - share(now)) < 0.16 ? 'start' : 'middle'
   const isInside = (at: number | null): at is number => at !== null && at >= from && at <= to
   const targetWords = `${act} at ${wholeNumber(curve.targetPct)} %`
-  const summary = `Drying curve of coat ${coatNumber}: ${left === null ? 'water left not known' : `${wholeNumber(left)} % of the water left now`}; ${targetWords}, ${pairWords.text}.`
+  const summary = `Drying curve of coat ${coatNumber}: ${left === null ? 'water left not known' : `${wholeNumber(left)} % of the water left now`}; ${targetWords}, ${curve.likelyAt === null ? 'when is not known' : pairWords.text}.`
 
   return (
     <figure className="charts">
       <div role="img" aria-label={summary}>
         <ResponsiveContainer width="100%" height={310}>
-          <ComposedChart data={rows} margin={MARGIN} accessibilityLayer={false}>
+          <ComposedChart data={rows} margin={{ ...MARGIN, right }} accessibilityLayer={false}>
             <CartesianGrid {...GRID} />
             <XAxis
               dataKey="at"
@@ -188,6 +194,8 @@ export function DryingCharts({ curve, climate, coatNumber, isLastCoat, moistureR
             color="var(--wax-ink)"
             format={(value) => formatTemperature(value)}
             name="Air temperature"
+            timeZone={timeZone}
+            right={right}
           />
           <RoomChart
             rows={climate}
@@ -199,6 +207,8 @@ export function DryingCharts({ curve, climate, coatNumber, isLastCoat, moistureR
             dash="4 3"
             format={(value) => `${wholeNumber(value)} % RH`}
             name="Humidity"
+            timeZone={timeZone}
+            right={right}
             foot={{ ticks, tickWords }}
           />
         </>
@@ -249,6 +259,8 @@ function RoomChart({
   dash,
   format,
   name,
+  timeZone,
+  right,
   foot,
 }: {
   rows: TreeDetail['climate']
@@ -260,20 +272,24 @@ function RoomChart({
   dash?: string
   format: (value: number) => string
   name: string
+  timeZone: string
+  /** Room at the right for the value. */
+  right: number
   foot?: { ticks: number[]; tickWords: (at: number) => string }
 }) {
   const values = rows.map((row) => row[dataKey])
   const bounds = evenBounds(values, step)
   const newest = rows.at(-1)!
+  const isStale = now - newest.at > STALE_MS && newest.at < domain[1]
+  const value = format(newest[dataKey])
   const height = foot ? 96 : 74
-  const isLate = (Math.max(newest.at, now) - domain[0]) / (domain[1] - domain[0]) > 0.8
   return (
     <div
       role="img"
       aria-label={`${name}: ${format(Math.min(...values))} to ${format(Math.max(...values))}, newest ${format(newest[dataKey])}.`}
     >
       <ResponsiveContainer width="100%" height={height}>
-        <LineChart data={rows} margin={MARGIN} accessibilityLayer={false}>
+        <LineChart data={rows} margin={{ ...MARGIN, right }} accessibilityLayer={false}>
           <CartesianGrid {...GRID} />
           <XAxis
             dataKey="at"
@@ -300,10 +316,16 @@ function RoomChart({
           />
           {now >= domain[0] && now <= domain[1] && <ReferenceLine x={now} {...NOW_LINE} />}
           <ReferenceDot
-            x={Math.min(Math.max(newest.at, now), domain[1])}
+            x={isStale ? newest.at : Math.min(Math.max(newest.at, now), domain[1])}
             y={newest[dataKey]}
             r={0}
-            label={{ value: format(newest[dataKey]), position: isLate ? 'left' : 'right', fill: color, offset: 10, ...LABEL }}
+            label={{
+              value: isStale ? `${value} at ${formatMoment(newest.at, now, timeZone)}` : value,
+              position: 'right',
+              fill: color,
+              offset: 10,
+              ...LABEL,
+            }}
           />
         </LineChart>
       </ResponsiveContainer>
