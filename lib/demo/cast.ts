@@ -23,7 +23,8 @@ export type Aim =
 
 /** Something out of the ordinary in a tree's past. */
 export type Story =
-  | { kind: 'dipped early'; overCoat: number; reason: string }
+  /** Over one of its middle coats; the planning finds out which. */
+  | { kind: 'dipped early'; overCoat?: number; reason: string }
   | { kind: 'other stucco'; coat: number; reason: string }
   | { kind: 'held overnight'; reason: string; lifted: string }
   | { kind: 'looked at'; verdict: 'looks dry' | 'not yet' }
@@ -336,7 +337,7 @@ export const CAST: readonly CastTree[] = [
     waxMassKg: 1.1,
     cup: paperCup,
     pour: 'planned',
-    story: { kind: 'dipped early', overCoat: 4, reason: 'Pour moved up a day, felt dry at the rim.' },
+    story: { kind: 'dipped early', reason: 'Pour moved up a day, felt dry at the rim.' },
   },
   {
     pieces: one('Lantern Boy', 3, 'head'),

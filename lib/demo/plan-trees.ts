@@ -97,13 +97,16 @@ function withEarlyCoats(shape: Shape): Shape[] {
   const { tree } = shape
   const { story } = tree
   if (story?.kind !== 'dipped early') return [shape]
-  return [story.overCoat, ...EARLY_COATS].map((overCoat) => ({ ...shape, tree: { ...tree, story: { ...story, overCoat } } }))
+  return EARLY_COATS.map((overCoat) => ({ ...shape, tree: { ...tree, story: { ...story, overCoat } } }))
 }
-const EARLY_COATS = [3, 5]
+
+// Again and again, with other delays and places each time.
+const EARLY_COATS = [4, 3, 5, 4, 3, 5, 4, 3, 5, 4, 3, 5]
 
 function hasItsEarlyDip({ coats, ...shape }: WithCoats, { room }: Parts): boolean {
   const { story } = shape.tree
   if (story?.kind !== 'dipped early') return true
+  if (story.overCoat === undefined) return false
   const [below, above] = [coats[story.overCoat - 1], coats[story.overCoat]]
   if (!below || !above) return false
   const dose = room.doseBetween(below.place, below.dippedAt + below.drainSeconds * 1000, above.dippedAt)
