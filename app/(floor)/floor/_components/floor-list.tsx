@@ -25,7 +25,7 @@ export type FloorListProps = DipActs & {
 /** The floor as ordered lists: the same trees in the same order, for a phone, a reader, or a calm look. */
 export function FloorList({ board, now, timeZone, chosenIds, stirringBathId, firstRows, canLog, onTree, onRun, onStir }: FloorListProps) {
   const row = (tree: QueueTree, middle?: ReactNode) => (
-    <ListRow key={tree.id} tree={tree} now={now} timeZone={timeZone} isChosen={chosenIds.has(tree.id)} onTree={onTree} middle={middle} />
+    <ListRow tree={tree} now={now} timeZone={timeZone} isChosen={chosenIds.has(tree.id)} onTree={onTree} middle={middle} />
   )
   const count = countTrees(board.dipNow)
   return (
@@ -49,7 +49,7 @@ export function FloorList({ board, now, timeZone, chosenIds, stirringBathId, fir
                 </Key>
               )}
             </div>
-            <Rows firstRows={firstRows}>{group.trees.map((tree) => row(tree))}</Rows>
+            <Rows trees={group.trees} row={row} firstRows={firstRows} />
           </div>
         ))}
       </section>
@@ -99,21 +99,20 @@ function ListSection({
       <h2 id={`list-${id}`} tabIndex={-1}>
         {title} <i>{trees.length}</i>
       </h2>
-      <Rows firstRows={firstRows}>{trees.map(row)}</Rows>
+      <Rows trees={trees} row={row} firstRows={firstRows} />
     </section>
   )
 }
 
-function Rows({ children, firstRows }: { children: ReactNode[]; firstRows: number }) {
+function Rows({ trees, row, firstRows }: { trees: QueueTree[]; row: (tree: QueueTree) => ReactNode; firstRows: number }) {
   const [isAll, setIsAll] = useState(false)
-  const shown = isAll ? children : children.slice(0, firstRows)
-  const left = children.length - shown.length
+  const shown = isAll ? trees : trees.slice(0, firstRows)
+  const left = trees.length - shown.length
   return (
     <>
       <ol>
-        {shown.map((child, index) => (
-          // eslint-disable-next-line react/no-array-index-key -- the row inside carries the tree's own key
-          <li key={index}>{child}</li>
+        {shown.map((tree) => (
+          <li key={tree.id}>{row(tree)}</li>
         ))}
       </ol>
       {left > 0 && (

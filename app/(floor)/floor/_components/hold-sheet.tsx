@@ -9,6 +9,7 @@ import { newOperationId } from '../_queries/operation-id'
 import { refusalWords } from '../_queries/request-json'
 import { postHold } from '../_queries/writes'
 import { Pager } from './dip-choices'
+import { focusInput } from './reason-choice'
 import { Sheet } from './sheet'
 import { SheetProblem } from './sheet-problem'
 
@@ -92,7 +93,7 @@ export function HoldSheet({ trees, onClose, onHeld }: HoldSheetProps) {
             aria-label="Other reason"
             maxLength={300}
             placeholder="In a few words"
-            ref={(input) => input?.focus()}
+            ref={focusInput}
             value={other}
             onChange={(event) => setOther(event.target.value)}
           />

@@ -1,6 +1,9 @@
 import { useId, useState } from 'react'
 import { Key } from '@/app/_components/key'
 
+/** The key before the line was pressed to type in it. Stable, so that the focus is taken once and not at every redraw. */
+export const focusInput = (input: HTMLInputElement | null): void => input?.focus()
+
 export type ReasonChoiceProps = { label: string; presets: string[]; reason: string; onReason: (reason: string) => void }
 
 /** Why: large keys for the usual reasons, a line for any other. */
@@ -43,8 +46,7 @@ export function ReasonChoice({ label, presets, reason, onReason }: ReasonChoiceP
           aria-label="Other reason"
           maxLength={300}
           placeholder="In a few words"
-          // The key before it was pressed to type here.
-          ref={(input) => input?.focus()}
+          ref={focusInput}
           value={reason}
           onChange={(event) => onReason(event.target.value)}
         />
