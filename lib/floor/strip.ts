@@ -21,13 +21,7 @@ export function readingAge(room: QueueRoom, now: number, timeZone: string): stri
  * Among equals the one where most trees hang.
  */
 export function roomsByWorry(queue: Pick<Queue, 'rooms' | 'places' | 'trees'>): QueueRoom[] {
-  const sensorOf = new Map(queue.places.map((place) => [place.id, place.sensorId]))
-  const hanging = new Map<number, number>()
-  for (const tree of queue.trees) {
-    const sensorId = sensorOf.get(tree.place.id)
-    if (sensorId !== undefined) hanging.set(sensorId, (hanging.get(sensorId) ?? 0) + 1)
-  }
-  const trees = (room: QueueRoom) => hanging.get(room.sensorId) ?? 0
+  const trees = treesOf(queue)
   const worry = (room: QueueRoom) => {
     // Nobody waits for the air of an empty room.
     if (trees(room) === 0) return 5
@@ -35,6 +29,29 @@ export function roomsByWorry(queue: Pick<Queue, 'rooms' | 'places' | 'trees'>): 
     return { 'too dry for face coats': 1, slow: 2, good: 3 }[room.pull]
   }
   return queue.rooms.toSorted((a, b) => worry(a) - worry(b) || trees(b) - trees(a) || a.sensorId - b.sensorId)
+}
+
+/**
+ * The room that the strip shows: of those that speak the one where most trees hang. The silent ones beside it are counted,
+ * so that a hygrometer nobody has read does not hide the air that is known.
+ */
+export function mainRoom(queue: Pick<Queue, 'rooms' | 'places' | 'trees'>): { room: QueueRoom | undefined; silentBeside: number } {
+  const trees = treesOf(queue)
+  const isSilent = (room: QueueRoom) => room.isStale || room.measuredAt === null
+  const speaking = queue.rooms.filter((room) => !isSilent(room)).toSorted((a, b) => trees(b) - trees(a) || a.sensorId - b.sensorId)
+  const room = speaking[0] ?? roomsByWorry(queue)[0]
+  return { room, silentBeside: queue.rooms.filter((other) => other !== room && isSilent(other) && trees(other) > 0).length }
+}
+
+/** How many trees hang in the air of a room's sensor. */
+function treesOf(queue: Pick<Queue, 'places' | 'trees'>): (room: QueueRoom) => number {
+  const sensorOf = new Map(queue.places.map((place) => [place.id, place.sensorId]))
+  const hanging = new Map<number, number>()
+  for (const tree of queue.trees) {
+    const sensorId = sensorOf.get(tree.place.id)
+    if (sensorId !== undefined) hanging.set(sensorId, (hanging.get(sensorId) ?? 0) + 1)
+  }
+  return (room) => hanging.get(room.sensorId) ?? 0
 }
 
 /** Baths that want stirring first, then the others, face before backup. */

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest'
 import { floorNews } from '@/lib/floor/news'
-import { bathsByNeed, readingAge, roomsByWorry } from '@/lib/floor/strip'
+import { bathsByNeed, mainRoom, readingAge, roomsByWorry } from '@/lib/floor/strip'
 import { afternoonFixture, crowdFixture, FIXTURE_NOW, queueTreeFixture, roomFixture } from '../../factories/queue-fixture'
 
 const MINUTE = 60_000
@@ -16,6 +16,20 @@ describe('roomsByWorry', () => {
     const queue = afternoonFixture()
     const rooms = [...queue.rooms, roomFixture({ sensorId: 9, sensorName: 'Empty store', isStale: true, pull: 'not known' })]
     expect(roomsByWorry({ ...queue, rooms })[0]?.sensorName).toBe('Shell room')
+  })
+})
+
+describe('mainRoom', () => {
+  it('is a room that speaks, with the silent ones counted beside it', () => {
+    const { room, silentBeside } = mainRoom(crowdFixture(60))
+    expect(room?.isStale).toBe(false)
+    expect(silentBeside).toBe(1)
+  })
+
+  it('is the silent room when no other speaks', () => {
+    const queue = afternoonFixture()
+    const rooms = queue.rooms.map((room) => ({ ...room, isStale: true }))
+    expect(mainRoom({ ...queue, rooms })).toMatchObject({ room: { isStale: true }, silentBeside: 0 })
   })
 })
 

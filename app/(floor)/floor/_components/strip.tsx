@@ -1,6 +1,6 @@
 import { Icon } from '@/app/_components/icons'
 import { usePress } from '@/app/_components/use-press'
-import { bathsByNeed, PULL_WORDS, readingAge, roomsByWorry, shortBathName } from '@/lib/floor/strip'
+import { bathsByNeed, PULL_WORDS, readingAge, mainRoom, shortBathName } from '@/lib/floor/strip'
 import { formatClock, formatDate, formatMoment } from '@/lib/format/local-time'
 import { formatKelvin, formatPercent, oneDecimal, wholeNumber } from '@/lib/format/units'
 import type { Queue } from '@/lib/queue/contract'
@@ -18,13 +18,12 @@ export type StripProps = {
 /** The state of the shell room across the top: time, air, pull, baths, and whose hand it is. */
 export function Strip({ queue, now, memberName, onRoom, onWho }: StripProps) {
   const { timeZone } = queue.foundry
-  const rooms = roomsByWorry(queue)
-  const room = rooms[0]
+  const { room, silentBeside } = mainRoom(queue)
   const roomPress = usePress(onRoom)
   const whoPress = usePress(onWho)
   const isSilent = room === undefined || room.measuredAt === null || room.isStale
   const age = room ? readingAge(room, now, timeZone) : 'no sensor yet'
-  const name = rooms.length > 1 ? `${room?.sensorName ?? 'Room'}, 1 of ${rooms.length}` : 'Room'
+  const name = queue.rooms.length > 1 ? (room?.sensorName ?? 'Room') : 'Room'
   return (
     <header className="strip">
       <h1 className="vh">Floor of {queue.foundry.name}</h1>
@@ -35,6 +34,12 @@ export function Strip({ queue, now, memberName, onRoom, onWho }: StripProps) {
       <button type="button" className="strip-cell strip-room" {...roomPress} aria-haspopup="dialog">
         <span className={`strip-label ${isSilent ? 'strip-alarm' : ''}`}>
           {isSilent && <Icon name="warning" />} {isSilent ? `${capital(age)}, ${name}` : `${name}, ${age}`}
+          {silentBeside > 0 && (
+            <b className="strip-alarm">
+              {' '}
+              <Icon name="warning" /> {silentBeside} silent
+            </b>
+          )}
         </span>
         <span className="strip-figures">
           <b className="num">
