@@ -121,7 +121,7 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
       </p>
     ) : null
   const takeBack = detail.takeBack !== null && newestRow !== undefined && (
-    <TakeBack takeBack={detail.takeBack} coatNumber={newestRow.number} now={now} />
+    <TakeBack key={detail.takeBack.coatId} takeBack={detail.takeBack} coatNumber={newestRow.number} now={now} />
   )
 
   return (
@@ -189,7 +189,7 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
           )}
           {mayLook && (
             <div className="verdict-look">
-              <LookKeys treeId={tree.id} said={said} />
+              <LookKeys key={tree.newestCoat?.id} treeId={tree.id} said={said} />
             </div>
           )}
         </div>

@@ -71,7 +71,9 @@ export function DryingCharts({ curve, climate, coatNumber, isLastCoat, moistureR
   const domain: [number, number] = [from, to]
   const span = to - from
   const share = (at: number) => (at - from) / span
-  const newestAt = climate.at(-1)?.at ?? null
+  // A point outside would stretch the axis, and the hours of the charts would no longer stand below each other.
+  const room = climate.filter((point) => point.at >= from && point.at <= to)
+  const newestAt = room.at(-1)?.at ?? null
   // All charts share one axis of time, so all make room.
   const right = newestAt !== null && share(Math.max(newestAt, Math.min(now, to))) > 0.8 ? VALUE_ROOM : 12
   const ticks = hourTicks(from, to, timeZone, 8)
@@ -181,12 +183,12 @@ export function DryingCharts({ curve, climate, coatNumber, isLastCoat, moistureR
         </ResponsiveContainer>
       </div>
       <p className="chart-title">Room while it dries</p>
-      {climate.length === 0 ? (
+      {room.length === 0 ? (
         <p className="text-15 text-soot">No reading since the dip.</p>
       ) : (
         <>
           <RoomChart
-            rows={climate}
+            rows={room}
             dataKey="airTempC"
             step={2}
             domain={domain}
@@ -198,7 +200,7 @@ export function DryingCharts({ curve, climate, coatNumber, isLastCoat, moistureR
             right={right}
           />
           <RoomChart
-            rows={climate}
+            rows={room}
             dataKey="relHumidityPct"
             step={10}
             domain={domain}
