@@ -3,6 +3,7 @@ import { addTreeEvent } from '@/lib/commands/tree-event'
 import type { Clock } from '@/lib/core/clock'
 import { AppError } from '@/lib/core/errors'
 import { newId } from '@/lib/core/ids'
+import { RECESS_FACTOR, SECTION_FACTOR } from '@/lib/drying/need'
 import type { Actor } from '@/lib/members/actor'
 import type { TreeInput } from '@/lib/trees/tree-input'
 import { Coat, inTransaction, Piece, Place, RecipeVersion, Section, Tree, TreePiece, TreePlace, Work } from '@/models'
@@ -37,7 +38,8 @@ export function createTree(input: TreeInput, { member, clock }: By): Promise<{ t
 }
 
 /**
- * Changes a tree. With a coat on, its recipe, its recesses, its spacing and its pieces stand: the coats were worked out on them.
+ * Changes a tree. With a coat on, its recipe and its pieces stand. A recess or a spacing that was noticed late is corrected, and the
+ * newest coat's need with it: the call follows the slowest spot of the tree.
  *
  * @throws {AppError} not_found; conflict with `fields` for what may no longer change.
  */
@@ -48,11 +50,10 @@ export function editTree(treeId: string, input: TreeInput, { member, clock }: By
     await requireRecipeAndPlace(input)
     if (input.tag !== tree.tag) refuseField('tag', `This tree is ${tree.tag} for ever.`)
     const coatsOn = await Coat.count({ where: { treeId, withdrawnAt: null } })
-    if (coatsOn > 0) {
-      for (const field of ['recipeVersionId', 'recessClass', 'spacing'] as const) {
-        if (input[field] !== tree[field]) refuseField(field, 'This stands from the first coat on: the coats were worked out on it.')
-      }
+    if (coatsOn > 0 && input.recipeVersionId !== tree.recipeVersionId) {
+      refuseField('recipeVersionId', 'This stands from the first coat on: the coats were worked out on it.')
     }
+    await correctNewestNeed(tree, input)
     const { pieces, placeId, ...columns } = input
     const before = Object.fromEntries(Object.keys(columns).map((key) => [key, tree.get(key)]))
     await tree.update({ ...columns, updatedAt: now })
@@ -67,6 +68,13 @@ export function editTree(treeId: string, input: TreeInput, { member, clock }: By
     if (coatsOn === 0) await replacePieces(treeId, pieces, now)
     await addTreeEvent(treeId, 'tree edited', { memberId: member.id, at: now, text: 'Tree edited.', before, after: columns })
   })
+}
+
+async function correctNewestNeed(tree: Tree, { recessClass, spacing }: TreeInput): Promise<void> {
+  const ratio = (RECESS_FACTOR[recessClass] / RECESS_FACTOR[tree.recessClass]) * (SECTION_FACTOR[spacing] / SECTION_FACTOR[tree.spacing])
+  if (ratio === 1) return
+  const newest = await Coat.findOne({ where: { treeId: tree.id, withdrawnAt: null }, order: [['number', 'DESC']] })
+  if (newest) await newest.update({ needReferenceHours: newest.needReferenceHours * ratio })
 }
 
 async function requireRecipeAndPlace(input: TreeInput): Promise<void> {

@@ -6,8 +6,9 @@ export type TreeField = keyof TreeInput
 export type FixedFields = Partial<Record<TreeField, string>>
 
 /**
- * What stays as it is while a tree is edited: its tag always, and with the first coat on all that the coats' needs were
- * worked out on. The place is then moved on the tree's own page, because the drying clock needs the hour.
+ * What stays as it is while a tree is edited: its tag always, and with the first coat on its recipe and its pieces. Recess and
+ * spacing may be corrected: a core that was noticed late has to be waited for. The place is then moved on the tree's own page,
+ * because the drying clock needs the hour.
  */
 export function fixedFields(coatsOn: number): FixedFields {
   const tag = 'A tag is for one tree, for ever.'
@@ -16,8 +17,6 @@ export function fixedFields(coatsOn: number): FixedFields {
   return {
     tag,
     recipeVersionId: `${since}. Their needs and targets come from this recipe.`,
-    recessClass: `${since}, worked out for this recess.`,
-    spacing: `${since}, worked out for this spacing.`,
     pieces: `${since}. The log is about these pieces.`,
     placeId: 'Moved on the tree’s page, so that the drying clock knows the hour.',
   }

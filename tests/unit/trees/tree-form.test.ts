@@ -65,7 +65,7 @@ describe('fieldErrors', () => {
 describe('fixedFields', () => {
   it('fixes the tag always, and what the coats were worked out on once one is on', () => {
     expect(Object.keys(fixedFields(0))).toEqual(['tag'])
-    expect(Object.keys(fixedFields(3)).toSorted()).toEqual(['pieces', 'placeId', 'recessClass', 'recipeVersionId', 'spacing', 'tag'])
+    expect(Object.keys(fixedFields(3)).toSorted()).toEqual(['pieces', 'placeId', 'recipeVersionId', 'tag'])
   })
   it('leaves open what no coat rests on', () => {
     const fixed = fixedFields(5)
@@ -93,7 +93,7 @@ describe('a known tree in its form', () => {
   it('keeps what is fixed, whatever the form sends', () => {
     const typed = readTreeForm(form({ ...whole, tag: 'X-1', recessClass: 'none', waxMassKg: '4' }))
     const kept = keepFixed(typed, stored, fixedFields(2))
-    expect(kept).toMatchObject({ tag: 'T-122', recessClass: 'closed core', waxMassKg: '4' })
+    expect(kept).toMatchObject({ tag: 'T-122', recessClass: 'none', waxMassKg: '4' })
     expect(kept.pieces).toEqual(stored.pieces)
     expect(keepFixed(typed, stored, fixedFields(0)).recessClass).toBe('none')
   })
