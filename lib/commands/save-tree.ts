@@ -1,3 +1,4 @@
+import { moveTree } from '@/lib/commands/move-tree'
 import { openTree } from '@/lib/commands/open-tree'
 import { addTreeEvent } from '@/lib/commands/tree-event'
 import type { Clock } from '@/lib/core/clock'
@@ -57,14 +58,7 @@ export function editTree(treeId: string, input: TreeInput, { member, clock }: By
     const { pieces, placeId, ...columns } = input
     const before = Object.fromEntries(Object.keys(columns).map((key) => [key, tree.get(key)]))
     await tree.update({ ...columns, updatedAt: now })
-    const current = await TreePlace.findOne({
-      where: { treeId, withdrawnAt: null },
-      order: [
-        ['since', 'DESC'],
-        ['id', 'DESC'],
-      ],
-    })
-    if (current?.placeId !== placeId) await TreePlace.create({ id: newId(now), treeId, placeId, since: now, memberId: member.id })
+    await moveTree(treeId, placeId, { member, clock })
     if (coatsOn === 0) await replacePieces(treeId, pieces, now)
     await addTreeEvent(treeId, 'tree edited', { memberId: member.id, at: now, text: 'Tree edited.', before, after: columns })
   })
