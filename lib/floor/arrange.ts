@@ -97,6 +97,7 @@ export function arrangeFloor(queue: Pick<Queue, 'trees' | 'baths'>): FloorBoard 
   }
 }
 
+/** How many trees may be dipped now, over all groups. */
 export function countTrees(groups: readonly DipGroup[]): number {
   return groups.reduce((sum, group) => sum + group.trees.length, 0)
 }

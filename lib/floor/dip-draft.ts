@@ -63,6 +63,7 @@ export function startDraft(trees: readonly QueueTree[]): DipDraft | null {
   }
 }
 
+/** The coat that a tree gets by this draft: its next one, or the one that was settled after a refusal. */
 export function coatNumberOf(draft: DipDraft, tree: QueueTree): number {
   return draft.coatNumbers[tree.id] ?? tree.next?.number ?? tree.coatsOn + 1
 }
@@ -70,6 +71,7 @@ export function coatNumberOf(draft: DipDraft, tree: QueueTree): number {
 /** Which of the sheet's choices differ from the recipe of at least one tree. */
 export type Deviations = { bath: boolean; stucco: boolean }
 
+/** Which of the draft's choices differ from the recipe of at least one of the trees. */
 export function deviationsOf(draft: DipDraft, trees: readonly QueueTree[]): Deviations {
   return {
     bath: trees.some((tree) => tree.next !== null && tree.next.bathId !== draft.bathId),
@@ -111,6 +113,7 @@ export function checkDial(
   return { errors, room }
 }
 
+/** When the dip was made, epoch milliseconds, and the half width of a rough time in minutes. */
 export function dippedAtOf(done: DipDone, now: number): { dippedAt: number; roughTime?: number } {
   if (done.kind === 'now') return { dippedAt: now }
   if (done.kind === 'ago') return { dippedAt: now - done.minutes * MINUTE_MS, roughTime: ROUGH_MINUTES[done.minutes] }

@@ -88,6 +88,7 @@ export function tideCapacity(height: number): { all: number; withPageKey: number
   }
 }
 
+/** Height of a row of the tide, px: what is there shared out, between the least a glove can hit and the most that helps. */
 export function tideRowHeight(height: number, rows: number, hasPageKey: boolean): number {
   if (rows === 0) return TIDE_ROW_MOST
   return Math.floor(Math.min(TIDE_ROW_MOST, Math.max(TIDE_ROW_LEAST, (height - (hasPageKey ? PAGE_KEY : 0)) / rows)))
