@@ -37,11 +37,12 @@ export function roomsByWorry(queue: Pick<Queue, 'rooms' | 'places' | 'trees'>): 
  */
 export function mainRoom(queue: Pick<Queue, 'rooms' | 'places' | 'trees'>): { room: QueueRoom | undefined; silentBeside: number } {
   const trees = treesOf(queue)
-  const isSilent = (room: QueueRoom) => room.isStale || room.measuredAt === null
   const speaking = queue.rooms.filter((room) => !isSilent(room)).toSorted((a, b) => trees(b) - trees(a) || a.sensorId - b.sensorId)
   const room = speaking[0] ?? roomsByWorry(queue)[0]
   return { room, silentBeside: queue.rooms.filter((other) => other !== room && isSilent(other) && trees(other) > 0).length }
 }
+
+const isSilent = (room: QueueRoom) => room.isStale || room.measuredAt === null
 
 /** How many trees hang in the air of a room's sensor. */
 function treesOf(queue: Pick<Queue, 'places' | 'trees'>): (room: QueueRoom) => number {

@@ -1,6 +1,7 @@
 import { randomUUID } from 'node:crypto'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { queue as queueSchema } from '@/lib/queue/contract'
+import type * as Factories from '@/tests/factories/shell-room'
 import { newClient, signIn, type Client } from '@/tests/setup/client'
 import { seedMember, startServer, type TestServer } from '@/tests/setup/server'
 
@@ -9,8 +10,8 @@ const MINUTE = 60_000
 let server: TestServer
 let maud: Client
 let wren: Client
-let factories: typeof import('@/tests/factories/shell-room')
-let foundry: Awaited<ReturnType<(typeof factories)['buildFoundry']>>
+let factories: typeof Factories
+let foundry: Factories.TestFoundry
 let sensorToken: { id: string; token: string }
 
 beforeAll(async () => {
