@@ -1,6 +1,7 @@
 'use client'
 
 import { useState, type FormEvent } from 'react'
+import { formatMoment } from '@/lib/format/local-time'
 import { Icon } from '@/app/_components/icons'
 import { Key } from '@/app/_components/key'
 import { checkDial, type DialErrors } from '@/lib/floor/dip-draft'
@@ -25,9 +26,17 @@ export function RoomSheet({ queue, now, canRead, onClose, onSaid }: RoomSheetPro
         {rooms.map((room) => (
           <RoomLine key={room.sensorId} room={room} queue={queue} now={now} canRead={canRead} onSaid={onSaid} />
         ))}
+        <p className="text-20 text-soot">{watchWords(queue, now)}</p>
       </div>
     </Sheet>
   )
+}
+
+/** Whether anybody is told when a coat is dry. */
+function watchWords({ worker, foundry }: Queue, now: number): string {
+  if (worker.pulseAt === null) return 'The watcher has not started: no calls are sent.'
+  const at = formatMoment(worker.pulseAt, now, foundry.timeZone)
+  return worker.isAlive ? `Watched: last look at the floor ${at}, calls are sent.` : `The watcher stopped ${at}: no calls are sent.`
 }
 
 function RoomLine({

@@ -29,7 +29,10 @@ export function Strip({ queue, now, memberName, onRoom, onWho }: StripProps) {
       <h1 className="vh">Floor of {queue.foundry.name}</h1>
       <div className="strip-cell strip-clock">
         <b className="num">{formatClock(now, timeZone)}</b>
-        <span>{formatDate(now, timeZone)}</span>
+        <span>
+          {formatDate(now, timeZone)}
+          <Pulse queue={queue} />
+        </span>
       </div>
       <button type="button" className="strip-cell strip-room" {...roomPress} aria-haspopup="dialog">
         <span className={`strip-label ${isSilent ? 'strip-alarm' : ''}`}>
@@ -77,6 +80,18 @@ export function Strip({ queue, now, memberName, onRoom, onWho }: StripProps) {
         <b className="num">{memberName}</b>
       </button>
     </header>
+  )
+}
+
+/** The watcher's pulse: beats or does not. When it has stopped, the alarm under the strip says since when. */
+function Pulse({ queue }: { queue: Queue }) {
+  const { isAlive, pulseAt } = queue.worker
+  if (!isAlive || pulseAt === null) return null
+  return (
+    <i className="strip-pulse" title={`Watched, last look ${formatClock(pulseAt, queue.foundry.timeZone)}`}>
+      <Icon name="pulse" />
+      <span className="vh">Watched, last look {formatClock(pulseAt, queue.foundry.timeZone)}</span>
+    </i>
   )
 }
 
