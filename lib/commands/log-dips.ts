@@ -85,7 +85,10 @@ async function putCoatsOn(run: DipRun, member: Actor, now: number): Promise<DipR
     const below = tree.coats.at(-1) ?? null
     const belowCall = below ? callOf(tree, below, context, run.dippedAt) : null
     const belowTarget = below ? (recipeCoatOf(tree, below.number)?.moistureTarget ?? 0.1) : 1
-    const isBelowDry = belowCall === null || belowCall.moistureRatio <= belowTarget || tree.look?.verdict === 'looks dry'
+    const saidDry = tree.look?.verdict === 'looks dry'
+    const isBelowDry = belowCall === null || belowCall.moistureRatio <= belowTarget || saidDry
+    // Early is before the guard, as on the sheet: likely dry is not safe under a face coat or in a recess.
+    const isEarly = belowCall !== null && belowCall.guardReachedAt === null && !saidDry
     const moistureRatioBelow = isBelowDry ? 0 : belowCall.moistureRatio
     const planned = recipeCoatOf(tree, coatNumber)
     const asPlanned = planned ?? tree.recipe.coats.findLast((coat) => coat.stucco === run.stucco) ?? tree.recipe.coats.at(-1)
@@ -94,7 +97,7 @@ async function putCoatsOn(run: DipRun, member: Actor, now: number): Promise<DipR
     const deviations: Deviation[] = [
       ...asList(tree.hold !== null, 'held'),
       ...asList(tree.intakePassedAt === null, 'intake open'),
-      ...(belowCall?.isUnknown ? asList(true, 'unknown') : asList(!isBelowDry && belowCall?.guardReachedAt === null, 'still wet')),
+      ...asList(isEarly, belowCall?.isUnknown ? 'unknown' : 'still wet'),
       ...asList(planned === null, 'not in the recipe'),
       ...asList(planned !== null && planned.bathId !== run.bathId, 'other bath'),
       ...asList(planned !== null && planned.stucco !== run.stucco, 'other stucco'),
@@ -187,7 +190,7 @@ const DEVIATION_SENTENCE = {
   held: 'The tree was held',
   'intake open': 'Its intake was open',
   unknown: 'No reading told whether the coat below was dry',
-  'still wet': 'The coat below was still wet',
+  'still wet': 'The coat below was not dry by its guard yet',
   'not in the recipe': 'The recipe has no such coat',
   'other bath': 'Another bath than the recipe',
   'other stucco': 'Another stucco than the recipe',

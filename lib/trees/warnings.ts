@@ -35,7 +35,8 @@ function beforeDip({ facts, state, call, newest, isLastOn, dippableSince }: Asse
   }
   if (call === null) return warnings
   const targetPct = whole((recipeCoatOf(facts, newest.number)?.moistureTarget ?? 0.1) * 100)
-  if (call.isUnknown) {
+  // Somebody who felt it has confirmed it for the next dip; before a release the missing air still counts.
+  if (call.isUnknown && (dippableSince === null || isLastOn)) {
     warnings.push({
       code: 'unknown',
       level: 'warn',
