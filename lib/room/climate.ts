@@ -89,9 +89,12 @@ export function readingsForFlags(climate: RoomClimate, from: number, to: number)
   return [...means, ...climate.exact].filter((reading) => reading.measuredAt >= from && reading.measuredAt <= to)
 }
 
-/** Mean and worst humidity between two instants: whole hours by their figures, the two end hours by their readings where those are at hand. */
-export function humidityBetween(climate: RoomClimate, from: number, to: number): { meanPct: number; worstPct: number } | null {
-  const figures = [
+/** One room's air from one instant to another. */
+export type AirStretch = { climate: RoomClimate; from: number; to: number }
+
+/** Mean and worst humidity of some stretches: whole hours by their figures, the two end hours by their readings where those are at hand. */
+export function humidityOf(stretches: readonly AirStretch[]): { meanPct: number; worstPct: number } | null {
+  const figures = stretches.flatMap(({ climate, from, to }) => [
     ...climate.hours
       .filter((hour) => hour.hourStart >= from && hour.hourStart + millisecondsInHour <= to && hour.readingCount > 0)
       .map((hour) => ({ mean: hour.meanRelHumidityPct ?? 0, worst: hour.maxRelHumidityPct ?? 0, weight: hour.readingCount })),
@@ -102,7 +105,7 @@ export function humidityBetween(climate: RoomClimate, from: number, to: number):
         return reading.measuredAt >= from && reading.measuredAt <= to && !isWholeHour
       })
       .map((reading) => ({ mean: reading.relHumidityPct, worst: reading.relHumidityPct, weight: 1 })),
-  ]
+  ])
   const weight = figures.reduce((sum, figure) => sum + figure.weight, 0)
   if (weight === 0) return null
   return {

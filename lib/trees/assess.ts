@@ -5,9 +5,8 @@ import { coatPhase } from '@/lib/drying/coat-phase'
 import { dampInStoreFlag, isOverdue } from '@/lib/drying/flags'
 import { guardFor } from '@/lib/drying/need'
 import type { CoatCall } from '@/lib/drying/types'
-import { readingsForFlags } from '@/lib/room/climate'
 import { clockStart, type CoatFacts, type RecipeCoatFacts, type TreeFacts } from '@/lib/trees/facts'
-import { dryingSpans, readingsBehind, type FloorContext } from '@/lib/trees/spans'
+import { dryingSpans, readingsAround, readingsBehind, type FloorContext } from '@/lib/trees/spans'
 import type { TreeState } from '@/lib/trees/states'
 
 /** For this long after its guard a coat is 'dip now'; then it is 'waiting'. Our own choice. */
@@ -143,7 +142,5 @@ function finishedState(base: Base, call: CoatCall, context: FloorContext): { sta
 /** Whether a finished shell hung in damp air since it was dry, or since somebody last looked it over. */
 export function dampInStore(facts: TreeFacts, call: CoatCall, context: FloorContext) {
   const since = Math.max(call.safeAt ?? call.likelyAt ?? context.now, facts.lookedOverAt ?? 0)
-  const place = context.places.get(facts.stays.at(-1)?.placeId ?? '')
-  const climate = place && context.climates.get(place.sensorId)
-  return climate ? dampInStoreFlag(readingsForFlags(climate, since, context.now), since, context.now) : null
+  return dampInStoreFlag(readingsAround(context, facts.stays, since, context.now), since, context.now)
 }
