@@ -129,10 +129,14 @@ function overdueFrom(base: Base, newest: CoatFacts, context: FloorContext): numb
   return isOverdue(hours, longestWaitHours) ? newest.dippedAt + longestWaitHours * millisecondsInHour : null
 }
 
+/** A dry last coat: by the safe time, or by the likely one and a person's 'looks dry'. A hold does not make it wet. */
+export function isDriedOut(facts: TreeFacts, call: CoatCall): boolean {
+  return call.isSafeDry || (call.isLikelyDry && facts.look?.verdict === 'looks dry')
+}
+
 function finishedState(base: Base, call: CoatCall, context: FloorContext): { state: TreeState; stateSince: number | null } {
   const { facts } = base
-  const byTouch = call.isLikelyDry && facts.look?.verdict === 'looks dry'
-  if (!call.isSafeDry && !byTouch) return { state: 'last coat on', stateSince: null }
+  if (!isDriedOut(facts, call)) return { state: 'last coat on', stateSince: null }
   const dryAt = call.isSafeDry ? call.safeAt : (facts.look?.at ?? null)
   const isLookedOver = facts.lookedOverAt !== null
   if (!isLookedOver || dampInStore(base.facts, call, context) !== null) return { state: 'dried out', stateSince: dryAt }
