@@ -169,6 +169,14 @@ describe('the end of a shell', () => {
 })
 
 describe('a shell that was moved', () => {
+  it('hangs where it was carried last, though the dip came from a tablet whose clock runs ahead', async () => {
+    const tree = await buildTree(foundry)
+    const [rack, corner] = [await buildPlace({ sensorId: foundry.sensorId }), await buildPlace({ sensorId: foundry.sensorId })]
+    await logDips(dipBody(foundry, [{ treeId: tree.id, coatNumber: 1, placeId: rack.id }], { dippedAt: NOW + 1.5 * MINUTE }), by(maud, NOW))
+    await moveTree(tree.id, corner.id, by(maud, NOW + MINUTE))
+    expect((await at(tree.id, NOW + HOUR)).facts.stays.at(-1)?.placeId).toBe(corner.id)
+  })
+
   it('stays damp in store when it is carried into a dry room', async () => {
     const damp = await Sensor.create({ name: 'Damp cellar', kind: 'logger', createdAt: NOW })
     const cellar = await buildPlace({ sensorId: damp.id })
