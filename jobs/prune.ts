@@ -1,9 +1,9 @@
 import type { Job } from '@/jobs/job'
 import { pruneRecords } from '@/lib/commands/prune-records'
 
-/** Daily, away from the full hour at which other work begins. */
+/** Hourly, because a foundry's machine may be off every night; away from the full hour at which other work begins. */
 export const prune: Job = {
   name: 'prune',
-  schedule: '0 17 2 * * *',
+  schedule: '0 17 * * * *',
   run: ({ clock }) => pruneRecords({ clock }),
 }

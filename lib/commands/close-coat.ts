@@ -1,7 +1,7 @@
 import type { CoatCall } from '@/lib/drying/types'
-import { humidityBetween } from '@/lib/room/climate'
+import { humidityOf } from '@/lib/room/climate'
 import type { CoatFacts, TreeFacts } from '@/lib/trees/facts'
-import type { FloorContext } from '@/lib/trees/spans'
+import { airAround, type FloorContext } from '@/lib/trees/spans'
 import { Coat } from '@/models'
 
 /** Writes down how a coat dried, at the moment it is dipped over or the tree is released. */
@@ -11,9 +11,7 @@ export async function closeCoat(
   context: FloorContext,
   { at, call }: { at: number; call: CoatCall },
 ): Promise<void> {
-  const place = context.places.get(tree.stays.at(-1)?.placeId ?? '')
-  const climate = place && context.climates.get(place.sensorId)
-  const humidity = climate ? humidityBetween(climate, coat.dippedAt, at) : null
+  const humidity = humidityOf(airAround(context, tree.stays, coat.dippedAt, at))
   await Coat.update(
     {
       coveredAt: at,

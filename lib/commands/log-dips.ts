@@ -11,6 +11,7 @@ import { newId } from '@/lib/core/ids'
 import { chillFlag } from '@/lib/drying/flags'
 import { needReferenceHours } from '@/lib/drying/need'
 import { wetBulbDepressionK } from '@/lib/drying/room-factor'
+import { holdsUntil } from '@/lib/drying/room-segments'
 import type { RoomReading } from '@/lib/drying/types'
 import type { Actor } from '@/lib/members/actor'
 import { deriveFloor } from '@/lib/queries/floor'
@@ -85,7 +86,10 @@ async function putCoatsOn(run: DipRun, member: Actor, now: number): Promise<DipR
     const below = tree.coats.at(-1) ?? null
     const belowCall = below ? callOf(tree, below, context, run.dippedAt) : null
     const belowTarget = below ? (recipeCoatOf(tree, below.number)?.moistureTarget ?? 0.1) : 1
-    const isBelowDry = belowCall === null || belowCall.moistureRatio <= belowTarget || tree.look?.verdict === 'looks dry'
+    const saidDry = tree.look?.verdict === 'looks dry'
+    const isBelowDry = belowCall === null || belowCall.moistureRatio <= belowTarget || saidDry
+    // Early is before the guard, as on the sheet: likely dry is not safe under a face coat or in a recess.
+    const isEarly = belowCall !== null && belowCall.guardReachedAt === null && !saidDry
     const moistureRatioBelow = isBelowDry ? 0 : belowCall.moistureRatio
     const planned = recipeCoatOf(tree, coatNumber)
     const asPlanned = planned ?? tree.recipe.coats.findLast((coat) => coat.stucco === run.stucco) ?? tree.recipe.coats.at(-1)
@@ -94,11 +98,11 @@ async function putCoatsOn(run: DipRun, member: Actor, now: number): Promise<DipR
     const deviations: Deviation[] = [
       ...asList(tree.hold !== null, 'held'),
       ...asList(tree.intakePassedAt === null, 'intake open'),
-      ...(belowCall?.isUnknown ? asList(true, 'unknown') : asList(!isBelowDry && belowCall?.guardReachedAt === null, 'still wet')),
+      ...asList(isEarly, belowCall?.isUnknown ? 'unknown' : 'still wet'),
       ...asList(planned === null, 'not in the recipe'),
       ...asList(planned !== null && planned.bathId !== run.bathId, 'other bath'),
       ...asList(planned !== null && planned.stucco !== run.stucco, 'other stucco'),
-      ...asList(asPlanned.kind === 'face' && air !== null && isTooDryForFace(air, context, placeId), 'too dry for face'),
+      ...asList(asPlanned.kind === 'face' && air !== null && isTooDryForFace(coatNumber, air, context, placeId), 'too dry for face'),
     ]
     if (below && belowCall) await closeCoat(below, tree, context, { at: run.dippedAt, call: belowCall })
     const coat: CoatFacts = {
@@ -187,7 +191,7 @@ const DEVIATION_SENTENCE = {
   held: 'The tree was held',
   'intake open': 'Its intake was open',
   unknown: 'No reading told whether the coat below was dry',
-  'still wet': 'The coat below was still wet',
+  'still wet': 'The coat below was not dry by its guard yet',
   'not in the recipe': 'The recipe has no such coat',
   'other bath': 'Another bath than the recipe',
   'other stucco': 'Another stucco than the recipe',
@@ -237,22 +241,19 @@ async function refuseImpossible(chosen: readonly Chosen[], run: DipRun): Promise
   }
 }
 
-/** The reading nearest to an instant in one room, within half an hour; a typed reading counts for as long as it holds. */
+/** The reading nearest to an instant in one room, within half an hour; a typed reading counts for as long as it holds after it. */
 function airAt(context: FloorContext, sensorId: number, at: number): RoomReading | null {
-  const climate = context.climates.get(sensorId)
-  const nearest = climate?.exact.reduce<RoomReading | null>(
-    (best, reading) => (best === null || Math.abs(reading.measuredAt - at) < Math.abs(best.measuredAt - at) ? reading : best),
-    null,
+  const distance = ({ measuredAt }: RoomReading) => Math.abs(measuredAt - at)
+  const telling = (context.climates.get(sensorId)?.exact ?? []).filter(
+    (reading) => distance(reading) <= AIR_AT_DIP_MS || (reading.measuredAt <= at && holdsUntil(reading) >= at),
   )
-  if (!nearest) return null
-  const limit = nearest.source === 'typed' ? 12 * 60 * millisecondsInMinute : AIR_AT_DIP_MS
-  return Math.abs(nearest.measuredAt - at) <= limit ? nearest : null
+  return telling.toSorted((a, b) => distance(a) - distance(b))[0] ?? null
 }
 
-function isTooDryForFace(air: RoomReading, context: FloorContext, placeId: string): boolean {
+function isTooDryForFace(coatNumber: number, air: RoomReading, context: FloorContext, placeId: string): boolean {
   const span = context.placeSpans.get(placeId)?.find((candidate) => candidate.from <= air.measuredAt && candidate.to > air.measuredAt)
   const flag = chillFlag({
-    coatNumber: 1,
+    coatNumber,
     wetBulbDepressionK: wetBulbDepressionK(air, context.pressurePa),
     roomFactor: air.roomFactor,
     placeFactor: span?.placeFactor ?? 1,

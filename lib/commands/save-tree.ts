@@ -40,7 +40,7 @@ export function createTree(input: TreeInput, { member, clock }: By): Promise<{ t
 
 /**
  * Changes a tree. With a coat on, its recipe and its pieces stand. A recess or a spacing that was noticed late is corrected, and the
- * newest coat's need with it: the call follows the slowest spot of the tree.
+ * needs of its coats with it: the call follows the slowest spot of the tree.
  *
  * @throws {AppError} not_found; conflict with `fields` for what may no longer change.
  */
@@ -54,7 +54,7 @@ export function editTree(treeId: string, input: TreeInput, { member, clock }: By
     if (coatsOn > 0 && input.recipeVersionId !== tree.recipeVersionId) {
       refuseField('recipeVersionId', 'This stands from the first coat on: the coats were worked out on it.')
     }
-    await correctNewestNeed(tree, input)
+    await correctNeeds(tree, input)
     const { pieces, placeId, ...columns } = input
     const before = Object.fromEntries(Object.keys(columns).map((key) => [key, tree.get(key)]))
     await tree.update({ ...columns, updatedAt: now })
@@ -64,11 +64,13 @@ export function editTree(treeId: string, input: TreeInput, { member, clock }: By
   })
 }
 
-async function correctNewestNeed(tree: Tree, { recessClass, spacing }: TreeInput): Promise<void> {
+/** Of every coat that is on: when the newest is taken back the one below dries on, and it has the same recess. */
+async function correctNeeds(tree: Tree, { recessClass, spacing }: TreeInput): Promise<void> {
   const ratio = (RECESS_FACTOR[recessClass] / RECESS_FACTOR[tree.recessClass]) * (SECTION_FACTOR[spacing] / SECTION_FACTOR[tree.spacing])
   if (ratio === 1) return
-  const newest = await Coat.findOne({ where: { treeId: tree.id, withdrawnAt: null }, order: [['number', 'DESC']] })
-  if (newest) await newest.update({ needReferenceHours: newest.needReferenceHours * ratio })
+  for (const coat of await Coat.findAll({ where: { treeId: tree.id, withdrawnAt: null } })) {
+    await coat.update({ needReferenceHours: coat.needReferenceHours * ratio })
+  }
 }
 
 async function requireRecipeAndPlace(input: TreeInput): Promise<void> {

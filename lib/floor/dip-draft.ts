@@ -28,7 +28,7 @@ export type DipDraft = {
   roomHumidity: string
   /** For trees that are held or not dry yet. */
   reason: string
-  /** Numbers that a person has corrected: 'it was the next one'. */
+  /** The coat of each tree as it stood when the tree was taken up, or as a person has corrected it: 'it was the next one'. */
   coatNumbers: Record<string, number>
 }
 
@@ -48,8 +48,8 @@ export function needsReason(tree: QueueTree): boolean {
 export function startDraft(trees: readonly QueueTree[]): DipDraft | null {
   const first = trees.find((tree) => tree.next !== null)
   if (!first?.next) return null
-  return {
-    treeIds: trees.filter((tree) => tree.next !== null).map((tree) => tree.id),
+  const empty: DipDraft = {
+    treeIds: [],
     bathId: first.next.bathId,
     stucco: first.next.stucco,
     way: 'dip',
@@ -61,9 +61,29 @@ export function startDraft(trees: readonly QueueTree[]): DipDraft | null {
     reason: '',
     coatNumbers: {},
   }
+  return trees.filter((tree) => tree.next !== null).reduce(withTree, empty)
 }
 
-/** The coat that a tree gets by this draft: its next one, or the one that was settled after a refusal. */
+/**
+ * The draft with one more tree. Its coat number stands from now on: when another tablet logs that coat meanwhile, this dip must not
+ * slip to the next number by itself but be asked about.
+ */
+export function withTree(draft: DipDraft, tree: QueueTree): DipDraft {
+  const number = tree.next?.number ?? tree.coatsOn + 1
+  return { ...draft, treeIds: [...draft.treeIds, tree.id], coatNumbers: { ...draft.coatNumbers, [tree.id]: number } }
+}
+
+/** Whether a kept draft is the run that is begun now: the same trees for the same coats. */
+export function isSameRun(kept: DipDraft, fresh: DipDraft): boolean {
+  return kept.treeIds.join() === fresh.treeIds.join() && fresh.treeIds.every((id) => kept.coatNumbers[id] === fresh.coatNumbers[id])
+}
+
+/** Trees whose coat of this draft is not on yet. The others were logged meanwhile: the server says by whom. */
+export function stillToDip(draft: DipDraft, trees: readonly QueueTree[]): QueueTree[] {
+  return trees.filter((tree) => coatNumberOf(draft, tree) > tree.coatsOn)
+}
+
+/** The coat that a tree gets by this draft. */
 export function coatNumberOf(draft: DipDraft, tree: QueueTree): number {
   return draft.coatNumbers[tree.id] ?? tree.next?.number ?? tree.coatsOn + 1
 }

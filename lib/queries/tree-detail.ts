@@ -9,12 +9,12 @@ import { may, type Role } from '@/lib/members/roles'
 import { loadFloor, type Floor } from '@/lib/queries/floor'
 import { loadReadingsInRange } from '@/lib/queries/load-climate'
 import { queueTree } from '@/lib/queue/assemble'
-import { humidityBetween, type RoomClimate } from '@/lib/room/climate'
+import { humidityOf, type RoomClimate } from '@/lib/room/climate'
 import { recipeCoatOf } from '@/lib/trees/assess'
 import type { DerivedTree } from '@/lib/trees/derive'
 import type { CoatRow, TreeDetail } from '@/lib/trees/detail-contract'
 import { clockStart } from '@/lib/trees/facts'
-import { dryingSpans } from '@/lib/trees/spans'
+import { airAround, dryingSpans } from '@/lib/trees/spans'
 import { Coat, database, Member, RecipeVersion, Tree } from '@/models'
 
 /** The chart is some 700 px wide: more points would not be seen. */
@@ -169,7 +169,6 @@ async function coatRows(derived: DerivedTree, floor: Floor, now: number): Promis
       facts.id,
     ),
   ])
-  const climate = climateOf(derived, floor)
   const planned = facts.recipe.coats
     .filter((coat) => coat.number > facts.coats.length)
     .toReversed()
@@ -188,7 +187,7 @@ async function coatRows(derived: DerivedTree, floor: Floor, now: number): Promis
   const on = stored.map((row): CoatRow => {
     const coat = facts.coats.find((candidate) => candidate.id === row.id)
     const isNewest = row.id === newest?.id
-    const soFar = isNewest && climate ? humidityBetween(climate, row.dippedAt, now) : null
+    const soFar = isNewest ? humidityOf(airAround(floor.context, facts.stays, row.dippedAt, now)) : null
     return {
       number: row.number,
       kind: coat?.kind ?? 'backup',

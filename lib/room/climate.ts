@@ -2,7 +2,7 @@ import { millisecondsInHour, millisecondsInMinute } from 'date-fns/constants'
 import { hourStartOf, segmentsFromHours, spliceCurve } from '@/lib/drying/dose-hours'
 import { forecastSegments } from '@/lib/drying/forecast'
 import { indexCurve } from '@/lib/drying/room-curve'
-import { holdsUntil, roomSegments } from '@/lib/drying/room-segments'
+import { holdsUntil, onePerInstant, roomSegments } from '@/lib/drying/room-segments'
 import type { DoseHour, RoomCurve, RoomReading } from '@/lib/drying/types'
 
 /** A row of the hourly table with the plain figures of the hour's own readings. */
@@ -47,7 +47,8 @@ export type ClimateRows = {
  */
 export function buildClimate(rows: ClimateRows, { now, timeZone }: { now: number; timeZone: string }): RoomClimate {
   const { sensorId, hours, newest } = rows
-  const exactReadings = newest ? [...rows.readings, newest] : [...rows.readings]
+  // The newest one is often among them already: a lone typed reading must not count as two.
+  const exactReadings = onePerInstant(newest ? [...rows.readings, newest] : rows.readings)
   const tailFrom = newest ? hourStartOf(newest.measuredAt) : hourStartOf(now)
   const refined = rows.refinedHours.filter((hour) => hour < tailFrom).map((hour) => ({ from: hour, to: hour + millisecondsInHour }))
   const past = spliceCurve(segmentsFromHours(hours.filter((hour) => hour.hourStart < tailFrom)), roomSegments(exactReadings, { now }), [
@@ -61,7 +62,7 @@ export function buildClimate(rows: ClimateRows, { now, timeZone }: { now: number
     sensorId,
     curve,
     hours,
-    exact: exactReadings.toSorted((a, b) => a.measuredAt - b.measuredAt),
+    exact: exactReadings,
     newest,
     isStale: newest === null || holdsUntil(newest) < now,
   }
@@ -88,9 +89,12 @@ export function readingsForFlags(climate: RoomClimate, from: number, to: number)
   return [...means, ...climate.exact].filter((reading) => reading.measuredAt >= from && reading.measuredAt <= to)
 }
 
-/** Mean and worst humidity between two instants: whole hours by their figures, the two end hours by their readings where those are at hand. */
-export function humidityBetween(climate: RoomClimate, from: number, to: number): { meanPct: number; worstPct: number } | null {
-  const figures = [
+/** One room's air from one instant to another. */
+export type AirStretch = { climate: RoomClimate; from: number; to: number }
+
+/** Mean and worst humidity of some stretches: whole hours by their figures, the two end hours by their readings where those are at hand. */
+export function humidityOf(stretches: readonly AirStretch[]): { meanPct: number; worstPct: number } | null {
+  const figures = stretches.flatMap(({ climate, from, to }) => [
     ...climate.hours
       .filter((hour) => hour.hourStart >= from && hour.hourStart + millisecondsInHour <= to && hour.readingCount > 0)
       .map((hour) => ({ mean: hour.meanRelHumidityPct ?? 0, worst: hour.maxRelHumidityPct ?? 0, weight: hour.readingCount })),
@@ -101,7 +105,7 @@ export function humidityBetween(climate: RoomClimate, from: number, to: number):
         return reading.measuredAt >= from && reading.measuredAt <= to && !isWholeHour
       })
       .map((reading) => ({ mean: reading.relHumidityPct, worst: reading.relHumidityPct, weight: 1 })),
-  ]
+  ])
   const weight = figures.reduce((sum, figure) => sum + figure.weight, 0)
   if (weight === 0) return null
   return {

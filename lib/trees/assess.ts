@@ -5,9 +5,8 @@ import { coatPhase } from '@/lib/drying/coat-phase'
 import { dampInStoreFlag, isOverdue } from '@/lib/drying/flags'
 import { guardFor } from '@/lib/drying/need'
 import type { CoatCall } from '@/lib/drying/types'
-import { readingsForFlags } from '@/lib/room/climate'
 import { clockStart, type CoatFacts, type RecipeCoatFacts, type TreeFacts } from '@/lib/trees/facts'
-import { dryingSpans, readingsBehind, type FloorContext } from '@/lib/trees/spans'
+import { dryingSpans, readingsAround, readingsBehind, type FloorContext } from '@/lib/trees/spans'
 import type { TreeState } from '@/lib/trees/states'
 
 /** For this long after its guard a coat is 'dip now'; then it is 'waiting'. Our own choice. */
@@ -130,10 +129,14 @@ function overdueFrom(base: Base, newest: CoatFacts, context: FloorContext): numb
   return isOverdue(hours, longestWaitHours) ? newest.dippedAt + longestWaitHours * millisecondsInHour : null
 }
 
+/** A dry last coat: by the safe time, or by the likely one and a person's 'looks dry'. A hold does not make it wet. */
+export function isDriedOut(facts: TreeFacts, call: CoatCall): boolean {
+  return call.isSafeDry || (call.isLikelyDry && facts.look?.verdict === 'looks dry')
+}
+
 function finishedState(base: Base, call: CoatCall, context: FloorContext): { state: TreeState; stateSince: number | null } {
   const { facts } = base
-  const byTouch = call.isLikelyDry && facts.look?.verdict === 'looks dry'
-  if (!call.isSafeDry && !byTouch) return { state: 'last coat on', stateSince: null }
+  if (!isDriedOut(facts, call)) return { state: 'last coat on', stateSince: null }
   const dryAt = call.isSafeDry ? call.safeAt : (facts.look?.at ?? null)
   const isLookedOver = facts.lookedOverAt !== null
   if (!isLookedOver || dampInStore(base.facts, call, context) !== null) return { state: 'dried out', stateSince: dryAt }
@@ -143,7 +146,5 @@ function finishedState(base: Base, call: CoatCall, context: FloorContext): { sta
 /** Whether a finished shell hung in damp air since it was dry, or since somebody last looked it over. */
 export function dampInStore(facts: TreeFacts, call: CoatCall, context: FloorContext) {
   const since = Math.max(call.safeAt ?? call.likelyAt ?? context.now, facts.lookedOverAt ?? 0)
-  const place = context.places.get(facts.stays.at(-1)?.placeId ?? '')
-  const climate = place && context.climates.get(place.sensorId)
-  return climate ? dampInStoreFlag(readingsForFlags(climate, since, context.now), since, context.now) : null
+  return dampInStoreFlag(readingsAround(context, facts.stays, since, context.now), since, context.now)
 }

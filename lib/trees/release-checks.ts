@@ -1,3 +1,4 @@
+import { isDriedOut } from '@/lib/trees/assess'
 import type { DerivedTree } from '@/lib/trees/derive'
 import type { ReleaseCheck } from '@/lib/trees/detail-contract'
 import type { Confirmation } from '@/lib/trees/tree-input'
@@ -18,14 +19,14 @@ export function needsConfirmation(tree: DerivedTree): boolean {
 export function releaseChecks(tree: DerivedTree, confirmation: Confirmation | null): ReleaseCheck[] {
   const { facts } = tree
   const toCome = facts.recipe.coats.length - facts.coats.length
-  const isDriedOut = tree.state === 'dried out' || tree.state === 'ready for burnout'
+  const isDry = tree.isLastOn && tree.call !== null && isDriedOut(facts, tree.call)
   const checks: ReleaseCheck[] = [
     {
       code: 'coats',
       isMet: tree.isLastOn,
       text: tree.isLastOn ? 'Every coat of the recipe is on.' : `${toCome} more to come by the recipe.`,
     },
-    { code: 'dry', isMet: isDriedOut, text: isDriedOut ? 'The last coat is dried out.' : 'The last coat is not dried out.' },
+    { code: 'dry', isMet: isDry, text: isDry ? 'The last coat is dried out.' : 'The last coat is not dried out.' },
     {
       code: 'look-over',
       isMet: facts.lookedOverAt !== null,
@@ -33,7 +34,7 @@ export function releaseChecks(tree: DerivedTree, confirmation: Confirmation | nu
     },
     { code: 'hold', isMet: facts.hold === null, text: facts.hold ? `Held by ${facts.hold.by}: ${facts.hold.reason}` : 'No hold is open.' },
   ]
-  if (!isDriedOut || !needsConfirmation(tree)) return checks
+  if (!isDry || !needsConfirmation(tree)) return checks
   return [
     ...checks,
     {

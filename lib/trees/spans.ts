@@ -1,9 +1,8 @@
 import { millisecondsInHour } from 'date-fns/constants'
 import { hourStartOf } from '@/lib/drying/dose-hours'
 import { placeSpans, type PlaceSpan } from '@/lib/drying/place-spans'
-import type { DryingSpan, ReadingMark, WindowReadings } from '@/lib/drying/types'
-import type { RoomClimate } from '@/lib/room/climate'
-import { HORIZON_HOURS } from '@/lib/room/climate'
+import type { DryingSpan, ReadingMark, RoomReading, WindowReadings } from '@/lib/drying/types'
+import { HORIZON_HOURS, readingsForFlags, type AirStretch, type RoomClimate } from '@/lib/room/climate'
 import type { Shift } from '@/lib/schedule/shifts'
 import type { PlaceFacts } from '@/lib/trees/facts'
 
@@ -73,6 +72,20 @@ export function dryingSpans(context: FloorContext, stays: readonly Stay[], from:
         curve: climate.curve,
       }))
   })
+}
+
+/** The air that a tree hung in from one instant to another: each room for as long as the tree was there. */
+export function airAround(context: FloorContext, stays: readonly Stay[], from: number, to: number): AirStretch[] {
+  const relevant = staysFrom(stays, from).filter((stay) => stay.since <= to)
+  return relevant.flatMap((stay, index) => {
+    const climate = context.climates.get(context.places.get(stay.placeId)?.sensorId ?? -1)
+    return climate ? [{ climate, from: stay.since, to: Math.min(to, relevant[index + 1]?.since ?? to) }] : []
+  })
+}
+
+/** Readings for the flags of the air that a tree hung in: a shell carried into a dry room has still hung damp. */
+export function readingsAround(context: FloorContext, stays: readonly Stay[], from: number, to: number): RoomReading[] {
+  return airAround(context, stays, from, to).flatMap((air) => readingsForFlags(air.climate, air.from, air.to))
 }
 
 const markOf = (reading: ReadingMark | null | undefined): ReadingMark | null =>

@@ -2,9 +2,9 @@ import { millisecondsInHour } from 'date-fns/constants'
 import { chillFlag, dampFlag, heatFlag, isOverdue, swingFlag } from '@/lib/drying/flags'
 import { wetBulbDepressionK } from '@/lib/drying/room-factor'
 import type { Warning } from '@/lib/queue/contract'
-import { readingsForFlags, type RoomClimate } from '@/lib/room/climate'
+import type { RoomClimate } from '@/lib/room/climate'
 import { dampInStore, recipeCoatOf, type Assessment } from '@/lib/trees/assess'
-import type { FloorContext } from '@/lib/trees/spans'
+import { readingsAround, type FloorContext } from '@/lib/trees/spans'
 
 const one = (value: number) => value.toFixed(1)
 const whole = (value: number) => String(Math.round(value))
@@ -35,7 +35,8 @@ function beforeDip({ facts, state, call, newest, isLastOn, dippableSince }: Asse
   }
   if (call === null) return warnings
   const targetPct = whole((recipeCoatOf(facts, newest.number)?.moistureTarget ?? 0.1) * 100)
-  if (call.isUnknown) {
+  // Somebody who felt it has confirmed it for the next dip; before a release the missing air still counts.
+  if (call.isUnknown && (dippableSince === null || isLastOn)) {
     warnings.push({
       code: 'unknown',
       level: 'warn',
@@ -82,7 +83,7 @@ function ofTheAir(assessment: Assessment, climate: RoomClimate, context: FloorCo
         text: `Coat ${newest.number} chills the wax: ${why}, limit ${one(chill.limit)}. Raise the humidity or take air off the tree.`,
       })
     }
-    const readings = readingsForFlags(climate, newest.dippedAt, context.now)
+    const readings = readingsAround(context, facts.stays, newest.dippedAt, context.now)
     const swing = swingFlag(
       { coatNumber: newest.number, isWet: true, dippedAt: newest.dippedAt, airTempAtDipC: newest.airTempC },
       readings,
@@ -120,7 +121,7 @@ function ofTheAir(assessment: Assessment, climate: RoomClimate, context: FloorCo
   }
   const dryAt = isLastOn ? call?.safeAt : call?.guardReachedAt
   if (call && dryAt && dryAt <= context.now) {
-    const damp = dampFlag(readingsForFlags(climate, dryAt - millisecondsInHour, dryAt), dryAt)
+    const damp = dampFlag(readingsAround(context, facts.stays, dryAt - millisecondsInHour, dryAt), dryAt)
     if (damp?.code === 'damp') {
       warnings.push({
         code: 'damp room',

@@ -1,7 +1,11 @@
 import { beforeAll, describe, expect, it } from 'vitest'
+import { dipRunAnswer } from '@/lib/coats/dip-contract'
 import { logDips } from '@/lib/commands/log-dips'
 import { createTree, editTree } from '@/lib/commands/save-tree'
+import { undoDips } from '@/lib/commands/undo-dips'
+import { newId } from '@/lib/core/ids'
 import type { Actor } from '@/lib/members/actor'
+import { loadFacts } from '@/lib/queries/load-facts'
 import { treeInput, type TreeInput } from '@/lib/trees/tree-input'
 import { Coat, Piece, Tree, TreePiece } from '@/models'
 import {
@@ -92,5 +96,17 @@ describe('editing a tree', () => {
     await editTree(treeId, { ...first, recessClass: 'closed core', spacing: 'crowded' }, by())
     const coat = await Coat.findOne({ where: { treeId }, rejectOnEmpty: true })
     expect(coat.needReferenceHours).toBeCloseTo(2.5 * 2.5 * 1.25, 9)
+  })
+
+  it('makes the coat below wait as well when the newest is taken back after it', async () => {
+    const first = input()
+    const { treeId } = await createTree(first, by())
+    await logDips(dipBody(foundry, [{ treeId, coatNumber: 1 }], { dippedAt: NOW - HOUR }), by())
+    const { response } = await logDips(dipBody(foundry, [{ treeId, coatNumber: 2 }]), by())
+    await editTree(treeId, { ...first, recessClass: 'closed core' }, by())
+    const coatIds = dipRunAnswer.parse(response).coats.map((coat) => coat.coatId)
+    await undoDips({ operationId: newId(), coatIds }, by())
+    const [below] = (await loadFacts({ ids: [treeId] }))[0]!.coats
+    expect(below!.needReferenceHours).toBeCloseTo(2.5 * 2.5, 9)
   })
 })

@@ -8,7 +8,7 @@ import { recordReadings } from '@/lib/commands/record-readings'
 import { releaseTrees, withdrawRelease } from '@/lib/commands/release-trees'
 import type { Actor } from '@/lib/members/actor'
 import { loadFloor } from '@/lib/queries/floor'
-import { Sensor } from '@/models'
+import { Coat, Sensor } from '@/models'
 import {
   buildAir,
   buildFoundry,
@@ -137,6 +137,9 @@ describe('the end of a shell', () => {
     expect((await at(tree.id, NOW + 6 * HOUR)).state).toBe('dried out')
     await expect(release(NOW + 6 * HOUR)).rejects.toMatchObject({ message: expect.stringContaining('looked it over') })
     await lookOver(tree.id, 'Rim clean', by(ines, NOW + 6 * HOUR))
+    await holdTree(tree.id, 'Kiln is full', by(maud, NOW + 6 * HOUR))
+    await expect(release(NOW + 6 * HOUR)).rejects.toMatchObject({ message: expect.stringContaining('Held by Maud: Kiln is full') })
+    await liftHold(tree.id, 'Room again', by(ines, NOW + 6 * HOUR))
     expect((await at(tree.id, NOW + 6.1 * HOUR)).state).toBe('ready for burnout')
     await release(NOW + 6.2 * HOUR)
     expect((await at(tree.id, NOW + 6.3 * HOUR)).state).toBe('released')
@@ -165,13 +168,59 @@ describe('the end of a shell', () => {
   })
 })
 
+describe('a shell that was moved', () => {
+  it('hangs where it was carried last, though the dip came from a tablet whose clock runs ahead', async () => {
+    const tree = await buildTree(foundry)
+    const [rack, corner] = [await buildPlace({ sensorId: foundry.sensorId }), await buildPlace({ sensorId: foundry.sensorId })]
+    await logDips(dipBody(foundry, [{ treeId: tree.id, coatNumber: 1, placeId: rack.id }], { dippedAt: NOW + 1.5 * MINUTE }), by(maud, NOW))
+    await moveTree(tree.id, corner.id, by(maud, NOW + MINUTE))
+    expect((await at(tree.id, NOW + HOUR)).facts.stays.at(-1)?.placeId).toBe(corner.id)
+  })
+
+  it('stays damp in store when it is carried into a dry room', async () => {
+    const damp = await Sensor.create({ name: 'Damp cellar', kind: 'logger', createdAt: NOW })
+    const cellar = await buildPlace({ sensorId: damp.id })
+    await buildAir(damp.id, NOW - HOUR, NOW + 7 * HOUR)
+    await buildAir(damp.id, NOW + 7 * HOUR + 5 * MINUTE, NOW + 24 * HOUR, { airTempC: 17, relHumidityPct: 85 })
+    const recipeVersionId = await buildRecipe(foundry, [{ kind: 'backup', stucco: 'coarse', need: 4, target: 0.05 }])
+    const tree = await buildTree(foundry, { recipeVersionId, placeId: cellar.id })
+    await logDips(
+      dipBody(foundry, [{ treeId: tree.id, coatNumber: 1, placeId: cellar.id }], { dippedAt: NOW, stucco: 'coarse' }),
+      by(maud, NOW),
+    )
+    await lookOver(tree.id, '', by(ines, NOW + 6.5 * HOUR))
+    await moveTree(tree.id, foundry.placeId, by(maud, NOW + 20.5 * HOUR))
+    const moved = await at(tree.id, NOW + 21 * HOUR)
+    expect(moved.state).toBe('dried out')
+    expect(moved.warnings.map((warning) => warning.code)).toContain('damp in store')
+    await releaseTrees([tree.id], { confirmations: { [tree.id]: 'weight' } }, by(ines, NOW + 21 * HOUR))
+    // The coat log keeps the cellar's air, not that of the room where it hung for its last half hour.
+    const coat = await Coat.findOne({ where: { treeId: tree.id }, rejectOnEmpty: true })
+    expect(coat.worstRelHumidityPct).toBe(85)
+    expect(coat.meanRelHumidityPct).toBeGreaterThan(70)
+  })
+})
+
 describe('what the air does not tell', () => {
   it('is unknown without readings, and never dry', async () => {
     const silent = await Sensor.create({ name: 'Silent', kind: 'logger', createdAt: NOW })
     const place = await buildPlace({ sensorId: silent.id })
     const tree = await buildTree(foundry, { placeId: place.id })
     await logDips(dipBody(foundry, [{ treeId: tree.id, coatNumber: 1, placeId: place.id }]), by(maud, NOW))
-    expect(await at(tree.id, NOW + 30 * HOUR)).toMatchObject({ state: 'unknown', mayDip: false })
+    const unknown = await at(tree.id, NOW + 30 * HOUR)
+    expect(unknown).toMatchObject({ state: 'unknown', mayDip: false })
+    expect(unknown.warnings.map((warning) => warning.code)).toContain('unknown')
+    // The warning asks for a touch: after it the tree is dipped like any other.
+    await recordLook(tree.id, 'looks dry', by(maud, NOW + 30 * HOUR))
+    const felt = await at(tree.id, NOW + 30 * HOUR)
+    expect(felt).toMatchObject({ mayDip: true, dippableSince: NOW + 30 * HOUR })
+    expect(felt.warnings.map((warning) => warning.code)).not.toContain('unknown')
+    const backup = { bathId: foundry.backupBathId, stucco: 'medium', dippedAt: NOW + 30 * HOUR } as const
+    const { response } = await logDips(
+      dipBody(foundry, [{ treeId: tree.id, coatNumber: 2, placeId: place.id }], backup),
+      by(maud, NOW + 30 * HOUR),
+    )
+    expect(response).toMatchObject({ coats: [{ deviations: [] }] })
   })
 
   it('takes a dry call back when late readings show damp air', async () => {
@@ -207,6 +256,25 @@ describe('what the air does not tell', () => {
       { clock: stoppedClock(NOW + 8 * HOUR) },
     )
     expect(await at(tree.id, NOW + 8.1 * HOUR)).toMatchObject({ mayDip: true, state: 'waiting' })
+  })
+
+  it('counts a reading typed after the dip once, however often it is read from the records', async () => {
+    const wall = await Sensor.create({ name: 'Wall of the annexe', kind: 'wall hygrometer', createdAt: NOW })
+    const place = await buildPlace({ sensorId: wall.id })
+    const tree = await buildTree(foundry, { placeId: place.id })
+    await logDips(dipBody(foundry, [{ treeId: tree.id, coatNumber: 1, placeId: place.id }]), by(maud, NOW))
+    await recordReadings(
+      {
+        sensorId: wall.id,
+        source: 'typed',
+        enteredBy: maud.id,
+        rows: [{ measuredAt: NOW + 10 * MINUTE, airTempC: 21, relHumidityPct: 50 }],
+      },
+      { clock: stoppedClock(NOW + 10 * MINUTE) },
+    )
+    const lone = await at(tree.id, NOW + 8 * HOUR)
+    expect(lone).toMatchObject({ mayDip: false, call: { isLikelyDry: true, isSafeDry: false, needsConfirmation: true } })
+    expect(lone.warnings.map((warning) => warning.code)).toContain('confirm first')
   })
 
   it('splits the dose where a tree was moved', async () => {

@@ -5,12 +5,15 @@ import {
   checkDial,
   coatNumberOf,
   deviationsOf,
+  isSameRun,
   nearPlaces,
   needsReason,
   needsWallReading,
   runBody,
   startDraft,
+  stillToDip,
   stuccoChoices,
+  withTree,
 } from '@/lib/floor/dip-draft'
 import { afternoonFixture, FIXTURE_NOW, queueTreeFixture } from '../../factories/queue-fixture'
 
@@ -54,6 +57,30 @@ describe('runBody', () => {
     const draft = { ...startDraft(run)!, coatNumbers: { [run[0]!.id]: 7 } }
     expect(coatNumberOf(draft, run[0]!)).toBe(7)
     expect(runBody(draft, run, FIXTURE_NOW, null).trees[0]?.coatNumber).toBe(7)
+  })
+})
+
+describe('a coat that another tablet logs while the sheet is open', () => {
+  const before = tree('T-118')
+  const draft = startDraft([before])!
+  const after = { ...before, coatsOn: 6, next: { ...before.next!, number: 7 }, state: 'wet' as const }
+
+  it('does not turn this dip into the next one', () => {
+    expect(before.next!.number).toBe(6)
+    expect(runBody(draft, [after], FIXTURE_NOW, null).trees[0]?.coatNumber).toBe(6)
+    expect(stillToDip(draft, [before])).toEqual([before])
+    expect(stillToDip(draft, [after])).toEqual([])
+  })
+
+  it('is not the run that was kept', () => {
+    expect(isSameRun(draft, startDraft([before])!)).toBe(true)
+    expect(isSameRun(draft, startDraft([after])!)).toBe(false)
+  })
+
+  it('keeps the number of a tree that joined the run', () => {
+    const joined = withTree(startDraft([tree('T-120')])!, before)
+    expect(joined.treeIds).toEqual([tree('T-120').id, before.id])
+    expect(coatNumberOf(joined, after)).toBe(6)
   })
 })
 

@@ -15,6 +15,7 @@ import {
   needsReason,
   needsWallReading,
   runBody,
+  stillToDip,
   type DialErrors,
   type DipDraft,
   type RunBody,
@@ -74,8 +75,9 @@ export function DipSheet({ queue, draft, trees, now, memberName, onChange, onTre
 
   const first = trees[0]
   const warnings = warningsOf(trees)
-  const early = trees.filter(isEarly)
-  const withReason = trees.filter(needsReason)
+  const toDip = stillToDip(draft, trees)
+  const early = toDip.filter(isEarly)
+  const withReason = toDip.filter(needsReason)
   const hasWallDial = needsWallReading(draft, trees, queue.places)
   // Warnings and troubles need the room of the choices; those then stand in one line until somebody wants to change them.
   const isShort = (warnings.length > 0 || trouble !== null || (hasWallDial && trees.length > CHIPS_WITH_TITLE)) && panel === 'sheet'
@@ -177,7 +179,7 @@ export function DipSheet({ queue, draft, trees, now, memberName, onChange, onTre
     ? 'Logging'
     : trouble?.mayRetry
       ? 'Try again'
-      : logWords(trees, draft, { early: early.length, reason: draft.reason, isAsking: wantsReason })
+      : logWords(trees, draft, { early: early.length, isOdd: withReason.length > 0, reason: draft.reason, isAsking: wantsReason })
 
   return (
     <Sheet
@@ -324,11 +326,11 @@ export function DipSheet({ queue, draft, trees, now, memberName, onChange, onTre
 function logWords(
   trees: readonly QueueTree[],
   draft: DipDraft,
-  { early, reason, isAsking }: { early: number; reason: string; isAsking: boolean },
+  { early, isOdd, reason, isAsking }: { early: number; isOdd: boolean; reason: string; isAsking: boolean },
 ): string {
   const [only] = trees
   const dips = trees.length === 1 && only ? dipWords(coatNumberOf(draft, only), only.next?.kind ?? 'backup') : `${trees.length} dips`
-  if (!trees.some(needsReason)) return `Log ${dips}`
+  if (!isOdd) return `Log ${dips}`
   if (reason.trim() !== '') return early > 0 ? `Log ${dips} as early` : `Log ${dips}, held`
   if (isAsking) return 'Say why first'
   return early > 0 ? `It is done: log as early dip` : 'It is done: log it, held'

@@ -3,7 +3,7 @@
 import { useEffect, useMemo, useRef, useState } from 'react'
 import { Key, KeyLink } from '@/app/_components/key'
 import { arrangeFloor } from '@/lib/floor/arrange'
-import { startDraft, type DipDraft } from '@/lib/floor/dip-draft'
+import { isSameRun, startDraft, withTree, type DipDraft } from '@/lib/floor/dip-draft'
 import { BESIDE_SHEET_RUN_KEY, DIP_NOW_SIZES, floorMode, planFloor, type FloorMode } from '@/lib/floor/floor-plan'
 import { foldDipNow, type DipNowChoice } from '@/lib/floor/fold-dip-now'
 import { tideScale } from '@/lib/floor/tide-scale'
@@ -35,7 +35,8 @@ export type FloorBoardProps = {
   member: { name: string; role: Role }
 }
 
-type Open = { kind: 'dip'; draft: DipDraft } | { kind: 'room' } | { kind: 'hold' } | { kind: 'who' }
+/** `sheet` tells one sheet from the next; within one the trees may change. */
+type Open = { kind: 'dip'; draft: DipDraft; sheet: number } | { kind: 'room' } | { kind: 'hold' } | { kind: 'who' }
 
 /** Before the browser has measured the page, the server draws the list with few rows. */
 const ROWS_UNMEASURED = 12
@@ -62,6 +63,7 @@ export function FloorBoard({ initial, serverNow, member }: FloorBoardProps) {
   const kept = useRef(new Map<string, DipDraft>())
   const returnTo = useRef<HTMLElement | null>(null)
   const wordCount = useRef(0)
+  const sheetCount = useRef(0)
   const listFrame = useRef<HTMLDivElement>(null)
 
   const board = useMemo(() => arrangeFloor(queue), [queue])
@@ -112,7 +114,7 @@ export function FloorBoard({ initial, serverNow, member }: FloorBoardProps) {
   }
 
   const setDraft = (update: (draft: DipDraft) => DipDraft) => {
-    setOpen((current) => (current?.kind === 'dip' ? { kind: 'dip', draft: update(current.draft) } : current))
+    setOpen((current) => (current?.kind === 'dip' ? { ...current, draft: update(current.draft) } : current))
   }
 
   const openRun = (trees: QueueTree[]) => {
@@ -123,8 +125,8 @@ export function FloorBoard({ initial, serverNow, member }: FloorBoardProps) {
     const group = board.dipNow.find((candidate) => candidate.trees.some((tree) => tree.id === first))
     // Where groups are folded, the one in hand stands open.
     if (group) setGroupChoice((choice) => (choice.openKey === group.key ? choice : { openKey: group.key, page: 0 }))
-    const isSameRun = before !== undefined && before.treeIds.join() === fresh.treeIds.join()
-    show({ kind: 'dip', draft: isSameRun ? before : fresh })
+    sheetCount.current += 1
+    show({ kind: 'dip', draft: before && isSameRun(before, fresh) ? before : fresh, sheet: sheetCount.current })
   }
 
   /** A row of the dip column: opens the sheet, or adds the tree to the open run, or takes it out. */
@@ -134,7 +136,7 @@ export function FloorBoard({ initial, serverNow, member }: FloorBoardProps) {
       return
     }
     const { treeIds } = open.draft
-    if (!treeIds.includes(tree.id)) setDraft((draft) => ({ ...draft, treeIds: [...draft.treeIds, tree.id] }))
+    if (!treeIds.includes(tree.id)) setDraft((draft) => withTree(draft, tree))
     else if (treeIds.length > 1) setTreeIds(treeIds.filter((id) => id !== tree.id))
   }
 
@@ -286,7 +288,7 @@ export function FloorBoard({ initial, serverNow, member }: FloorBoardProps) {
         )}
         {open?.kind === 'dip' && !isEmptySheet && (
           <DipSheet
-            key={open.draft.treeIds[0]}
+            key={open.sheet}
             queue={queue}
             draft={open.draft}
             trees={draftTrees}
