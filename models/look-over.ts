@@ -7,6 +7,7 @@ import {
   type NonAttribute,
   type Sequelize,
 } from 'sequelize'
+import { flag } from '@/models/columns'
 import type { Coat } from '@/models/coat'
 import type { Member } from '@/models/member'
 import type { Tree } from '@/models/tree'
@@ -17,6 +18,7 @@ export class LookOver extends Model<InferAttributes<LookOver>, InferCreationAttr
   declare treeId: string
   declare coatId: string
   declare note: CreationOptional<string>
+  declare wasDriedOut: boolean
   declare memberId: string
   declare lookedOverAt: number
 
@@ -31,6 +33,7 @@ export class LookOver extends Model<InferAttributes<LookOver>, InferCreationAttr
         treeId: { type: DataTypes.TEXT, allowNull: false },
         coatId: { type: DataTypes.TEXT, allowNull: false },
         note: { type: DataTypes.TEXT, allowNull: false, defaultValue: '' },
+        wasDriedOut: flag('wasDriedOut'),
         memberId: { type: DataTypes.TEXT, allowNull: false },
         lookedOverAt: { type: DataTypes.INTEGER, allowNull: false },
       },

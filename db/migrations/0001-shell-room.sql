@@ -328,6 +328,8 @@ CREATE TABLE look_overs (
   -- The coat that was outermost: a later coat, or taking this one back, asks for a new look-over.
   coat_id TEXT NOT NULL REFERENCES coats (id) ON DELETE RESTRICT,
   note TEXT NOT NULL DEFAULT '' CHECK (length(note) <= 300),
+  -- A look at a wet shell is kept, but cracks come while it dries: only one at a dried-out shell counts.
+  was_dried_out INTEGER NOT NULL CHECK (was_dried_out IN (0, 1)),
   member_id TEXT NOT NULL REFERENCES members (id) ON DELETE RESTRICT,
   looked_over_at INTEGER NOT NULL CHECK (looked_over_at > 0)
 ) STRICT;

@@ -71,7 +71,7 @@ export async function loadFacts(selection: TreeSelection): Promise<TreeFacts[]> 
     ),
     select<{ coatId: string; at: number }>(
       `SELECT coat_id AS coatId, max(looked_over_at) AS at FROM look_overs
-        WHERE tree_id IN (SELECT value FROM json_each(:ids)) GROUP BY coat_id`,
+        WHERE was_dried_out = 1 AND tree_id IN (SELECT value FROM json_each(:ids)) GROUP BY coat_id`,
       { ids },
     ),
     select<OfTree<PieceName>>(

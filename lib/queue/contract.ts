@@ -25,6 +25,7 @@ export const warning = z.object({
     'too dry for face',
     'overdue',
     'said not yet',
+    'said dry',
     'pour at risk',
     'damp in store',
   ]),

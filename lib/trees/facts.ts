@@ -51,7 +51,7 @@ export type TreeFacts = {
   hold: { id: string; reason: string; by: string; at: number } | null
   /** Newest look at the newest coat. */
   look: { verdict: 'looks dry' | 'not yet'; by: string; at: number } | null
-  /** Newest look-over made on the newest coat. */
+  /** Newest look-over of the newest coat that was made when the shell was dried out; earlier ones do not count. */
   lookedOverAt: number | null
 }
 

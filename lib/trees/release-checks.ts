@@ -30,7 +30,7 @@ export function releaseChecks(tree: DerivedTree, confirmation: Confirmation | nu
     {
       code: 'look-over',
       isMet: facts.lookedOverAt !== null,
-      text: facts.lookedOverAt === null ? 'Nobody has looked it over since its last coat.' : 'Looked over since its last coat.',
+      text: facts.lookedOverAt === null ? 'Nobody has looked it over since it dried out.' : 'Looked over since it dried out.',
     },
     { code: 'hold', isMet: facts.hold === null, text: facts.hold ? `Held by ${facts.hold.by}: ${facts.hold.reason}` : 'No hold is open.' },
   ]

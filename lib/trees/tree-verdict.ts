@@ -9,7 +9,10 @@ export type TreeVerdict = {
   next: string | null
 }
 
-type VerdictTree = Pick<QueueTree, 'state' | 'stateSince' | 'coats' | 'coatsOn' | 'newestCoat' | 'next' | 'dry' | 'hold' | 'moistureRatio'>
+type VerdictTree = Pick<
+  QueueTree,
+  'state' | 'stateSince' | 'coats' | 'coatsOn' | 'newestCoat' | 'next' | 'dry' | 'guard' | 'look' | 'hold' | 'moistureRatio'
+>
 
 /** 'dip 6: Backup slurry, coarse stucco', or 'dip 8, seal: Backup slurry, no stucco'. */
 export function nextDipWords(next: NonNullable<QueueTree['next']>): string {
@@ -26,6 +29,8 @@ export function treeVerdict(tree: VerdictTree, now: number): TreeVerdict {
   const next = tree.next === null ? null : `Then ${nextDipWords(tree.next)}.`
   const go = tree.next === null ? null : `${capital(nextDipWords(tree.next))}.`
   const since = tree.stateSince === null ? '' : ` ${formatDuration(now - tree.stateSince)}`
+  const byEye = seenDryBy(tree, now)
+  const pairLead = tree.dry === null ? null : byEye === null ? 'Dry' : 'By the clock dry'
   switch (tree.state) {
     case 'bare wax':
       return { headline: 'Bare wax', pairLead: null, next: 'Pass the intake below, then coat 1 may go on.' }
@@ -40,11 +45,15 @@ export function treeVerdict(tree: VerdictTree, now: number): TreeVerdict {
     case 'unknown':
       return { headline: `${coat}: dryness unknown`, pairLead: tree.dry === null ? null : 'Last forecast: dry', next }
     case 'dip now':
-      return { headline: `Dry: ${dip} now`, pairLead: tree.dry === null ? null : 'Dry', next: go }
+      return { headline: byEye === null ? `Dry: ${dip} now` : `Looks dry to ${byEye}: ${dip}`, pairLead, next: go }
     case 'waiting':
-      return { headline: `Dry, waiting${since} for ${dip}`, pairLead: tree.dry === null ? null : 'Dry', next: go }
+      return {
+        headline: byEye === null ? `Dry, waiting${since} for ${dip}` : `Looks dry to ${byEye}, waiting${since} for ${dip}`,
+        pairLead,
+        next: go,
+      }
     case 'overdue':
-      return { headline: `Overdue${since}: ${dip}`, pairLead: tree.dry === null ? null : 'Dry', next: go }
+      return { headline: `Overdue${since}: ${dip}`, pairLead, next: go }
     case 'last coat on':
       return { headline: `Last coat on, ${tree.coatsOn} of ${total}`, pairLead: 'Dried out', next: 'Then look it over.' }
     case 'dried out':
@@ -62,6 +71,13 @@ export function treeVerdict(tree: VerdictTree, now: number): TreeVerdict {
         next: next === null ? 'Lift the hold before its release.' : `Lift the hold, then ${nextDipWords(tree.next!)}.`,
       }
   }
+}
+
+/** Who said 'looks dry' while the clock's own guard still lies ahead; null where the clock says it too. */
+export function seenDryBy(tree: Pick<QueueTree, 'dry' | 'guard' | 'look'>, now: number): string | null {
+  if (tree.look?.verdict !== 'looks dry') return null
+  const guardAt = tree.guard === 'likely' ? tree.dry?.likelyAt : tree.dry?.safeAt
+  return guardAt != null && guardAt <= now ? null : tree.look.by
 }
 
 function capital(text: string): string {

@@ -56,6 +56,10 @@ function beforeDip({ facts, state, call, newest, isLastOn, dippableSince }: Asse
       text: 'One typed reading stands behind this call: likely dry, confirm by touch or read the hygrometer again.',
     })
   }
+  if (facts.look?.verdict === 'looks dry' && call.guardReachedAt === null && !isLastOn) {
+    const left = call.isUnknown ? 'the clock knows nothing of it' : `by the clock ${whole(call.moistureRatio * 100)} % of its water is left`
+    warnings.push({ code: 'said dry', level: 'warn', text: `${facts.look.by} looked at it and said: looks dry; ${left}.` })
+  }
   if (facts.look?.verdict === 'not yet' && state !== 'wet' && state !== 'drying') {
     warnings.push({ code: 'said not yet', level: 'warn', text: `${facts.look.by} looked at it and said: not yet.` })
   }

@@ -134,6 +134,8 @@ describe('the end of a shell', () => {
     expect((await at(tree.id, NOW + 5 * HOUR)).state).toBe('last coat on')
     const release = (now: number) => releaseTrees([tree.id], { confirmations: {} }, by(ines, now))
     await expect(release(NOW + 5 * HOUR)).rejects.toMatchObject({ message: expect.stringContaining('not dried out') })
+    // A look at the wet shell is kept, but cracks come while it dries: it does not count.
+    await lookOver(tree.id, 'Rim clean', by(ines, NOW + 5 * HOUR))
     expect((await at(tree.id, NOW + 6 * HOUR)).state).toBe('dried out')
     await expect(release(NOW + 6 * HOUR)).rejects.toMatchObject({ message: expect.stringContaining('looked it over') })
     await lookOver(tree.id, 'Rim clean', by(ines, NOW + 6 * HOUR))

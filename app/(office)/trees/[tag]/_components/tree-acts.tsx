@@ -25,16 +25,19 @@ type Panel = 'hold' | 'lift' | 'move' | 'scrap'
 /** The keys of a tree, and the little form that each of them opens under the head. */
 export function TreeActs({ treeId, tag, isHeld, may, nextDip, places, placeId }: TreeActsProps) {
   const [panel, setPanel] = useState<Panel | null>(null)
-  const [said, setSaid] = useState<string | null>(null)
+  // With the hold as it is after the act: words of a hold that was lifted since are not true any more.
+  const [said, setSaid] = useState<{ words: string; isHeld: boolean } | null>(null)
   const path = `/trees/${encodeURIComponent(tag)}`
   const toggle = (next: Panel) => () => {
     setSaid(null)
     setPanel(panel === next ? null : next)
   }
-  const done = (words: string) => () => {
-    setPanel(null)
-    setSaid(words)
-  }
+  const done =
+    (words: string, isHeldAfter = isHeld) =>
+    () => {
+      setPanel(null)
+      setSaid({ words, isHeld: isHeldAfter })
+    }
   return (
     <>
       <div className="tree-acts">
@@ -79,10 +82,10 @@ export function TreeActs({ treeId, tag, isHeld, may, nextDip, places, placeId }:
         </div>
       )}
       <p role="status" className="tree-acts-said">
-        {said !== null && (
+        {said?.isHeld === isHeld && (
           <span className="form-done">
             <Icon name="check" />
-            <span>{said}</span>
+            <span>{said.words}</span>
           </span>
         )}
       </p>
@@ -96,7 +99,7 @@ export function TreeActs({ treeId, tag, isHeld, may, nextDip, places, placeId }:
                 label={`Why ${tag} is held, and what to do`}
                 hint="Everybody sees it on the floor: ‘Crack at the cup. Patch, then ask Ines.’"
                 confirm={`Hold ${tag}`}
-                onDone={done(`${tag} is held.`)}
+                onDone={done(`${tag} is held.`, true)}
               />
             )}
             {panel === 'lift' && (
@@ -105,7 +108,7 @@ export function TreeActs({ treeId, tag, isHeld, may, nextDip, places, placeId }:
                 action={liftHoldAction.bind(null, treeId)}
                 label="Why the hold is lifted"
                 confirm="Lift the hold"
-                onDone={done('The hold is lifted.')}
+                onDone={done('The hold is lifted.', false)}
               />
             )}
             {panel === 'move' && <MoveForm treeId={treeId} places={places} placeId={placeId} onDone={done('Moved.')} />}
