@@ -126,12 +126,14 @@ async function putCoatsOn(run: DipRun, member: Actor, now: number): Promise<DipR
       }),
       airTempC: air?.airTempC ?? null,
     }
-    const hasMoved = tree.stays.at(-1)?.placeId !== placeId
+    // A dip told late may lie before a later move: what counts is where the tree hung then.
+    const hungAt = tree.stays.findLast((stay) => stay.since <= run.dippedAt) ?? tree.stays.at(-1)
+    const hasMoved = hungAt?.placeId !== placeId
     if (hasMoved) await TreePlace.create({ id: newId(now), treeId: tree.id, placeId, since: run.dippedAt, memberId: member.id })
     const after: TreeFacts = {
       ...tree,
       coats: [...tree.coats, coat],
-      stays: hasMoved ? [...tree.stays, { placeId, since: run.dippedAt }] : tree.stays,
+      stays: hasMoved ? [...tree.stays, { placeId, since: run.dippedAt }].toSorted((a, b) => a.since - b.since) : tree.stays,
       look: null,
     }
     const call = callOf(after, coat, context, Math.max(now, clockStart(coat)))

@@ -41,6 +41,7 @@ export function callCoat({ coat, spans, now, readings }: CallCoatInput): CoatCal
   const guardReachedAt = isReached(guardAt, now) ? guardAt : null
   const isStale = readings.newest === null || holdsUntil(readings.newest) < now
   return {
+    creditedFrom: from,
     dose,
     need,
     moistureRatio: moistureRatio(dose.likely, need.likely, coat.moistureTarget),

@@ -36,7 +36,7 @@ export function dryingCurve({
   return instants
     .toSorted((a, b) => a - b)
     .map((at) => {
-      const dose = doseOverSpans(spans, start, at)
+      const dose = doseOverSpans(spans, call.creditedFrom, at)
       return {
         at,
         likely: moistureRatio(dose.likely, call.need.likely, moistureTarget),

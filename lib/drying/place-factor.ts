@@ -3,9 +3,6 @@ import { assertWithin } from '@/lib/drying/guards'
 
 const STANDARD_PRESSURE_PA = 101_325
 
-/** Starting air speeds by place, m/s; measure with a vane or hot-wire meter at the tree. Our own starting values, to be calibrated. */
-export const DEFAULT_AIR_SPEED_MPS = { corner: 0.1, rack: 0.5, 'fan path': 1.5 } as const
-
 /**
  * Place factor phi: how fast water leaves where the tree hangs, compared with air of 1.0 m/s at sea level.
  *

@@ -102,6 +102,8 @@ export type WindowReadings = {
 
 /** What the clock says of the newest coat of a tree. */
 export type CoatCall = {
+  /** From when on the readings are credited: the clock's start, or the first reading where nothing held at the start. */
+  creditedFrom: Instant
   dose: Dose
   need: Dose
   /** 1 just dipped, moistureTarget at the need. */

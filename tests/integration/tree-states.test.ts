@@ -98,6 +98,11 @@ describe('states of a tree over a drying', () => {
     await dip(tree.id, 1, NOW)
     await recordLook(tree.id, 'looks dry', by(maud, NOW + 2 * HOUR))
     expect(await at(tree.id, NOW + 2.1 * HOUR)).toMatchObject({ state: 'dip now', mayDip: true, dippableSince: NOW + 2 * HOUR })
+    const seen = await at(tree.id, NOW + 2.1 * HOUR)
+    expect(seen.warnings.find((warning) => warning.code === 'said dry')?.text).toMatch(
+      /^Maud .* by the clock \d+ % of its water is left\.$/,
+    )
+    expect((await at(tree.id, NOW + 4 * HOUR)).warnings.map((warning) => warning.code)).not.toContain('said dry')
     await recordLook(tree.id, 'not yet', by(maud, NOW + 2.2 * HOUR))
     expect((await at(tree.id, NOW + 2.3 * HOUR)).mayDip).toBe(false)
     const dry = await at(tree.id, NOW + 4 * HOUR)

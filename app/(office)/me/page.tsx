@@ -3,6 +3,7 @@ import { Plate } from '@/app/_components/plate'
 import { PushDevice } from '@/app/_components/push-device'
 import { DeviceList } from '@/app/(office)/me/_components/device-list'
 import { systemClock } from '@/lib/core/clock'
+import { browserName } from '@/lib/format/browser-name'
 import { formatMoment } from '@/lib/format/local-time'
 import { loadFoundry } from '@/lib/queries/load-foundry'
 import { ownSessions } from '@/lib/queries/own-sessions'
@@ -36,7 +37,7 @@ export default async function MePage() {
           <ul className="flex flex-col gap-3">
             {sessions.map((session) => (
               <li key={session.id}>
-                <b>{session.userAgent.slice(0, 120) || 'Unknown browser'}</b>
+                <b>{browserName(session.userAgent)}</b>
                 {session.id === member.sessionId && ', here'}
                 <br />
                 Since {formatMoment(session.createdAt, now, timeZone)}, until {formatMoment(session.expiresAt, now, timeZone)} at the

@@ -119,6 +119,12 @@ const tagWidth = (tag: string) => tag.length * 9 + 24
 
 const labelTop = (level: number) => LOWEST_LABEL - level * LEVEL_STEP
 
+/** The pair of a stand; of several shells it is the latest, so it is true for all of them. */
+function standWords(stand: PathStand, { now, timeZone }: PourContext): string {
+  const { text } = timePairWords(stand, now, timeZone)
+  return stand.trees.length > 1 ? `all ${text}` : text
+}
+
 /** Shells at one spot: the drawn shell of the first stands for all. */
 function Stand({ stand, context }: { stand: PathStand; context: PourContext }) {
   const { trees, verdict, label } = stand
@@ -126,7 +132,7 @@ function Stand({ stand, context }: { stand: PathStand; context: PourContext }) {
   if (first === undefined) return null
   const x = LEFT + stand.safeX
   const likelyX = LEFT + stand.likelyX
-  const { text } = timePairWords(stand, context.now, context.timeZone)
+  const text = standWords(stand, context)
   const share = first.coats.length === 0 ? 1 : first.coatsOn / first.coats.length
   const size = 0.7 + 0.3 * share
   const names = trees.map((tree) => `${tree.tag}, ${tree.title}`).join('; ')
@@ -173,7 +179,7 @@ function StandLabel({ stand, context }: { stand: PathStand; context: PourContext
         {beside}
       </text>
       <text x="0" y="35" className="way-time">
-        {timePairWords(stand, context.now, context.timeZone).text}
+        {standWords(stand, context)}
         {verdict !== null && verdict !== 'holds' && (
           <tspan dx="10" style={{ fill: VERDICT_INK[verdict], fontWeight: 600 }}>
             {verdict}

@@ -323,7 +323,8 @@ function RoomChart({
             r={0}
             label={{
               value: isStale ? `${value} at ${formatMoment(newest.at, now, timeZone)}` : value,
-              position: 'right',
+              // Words of a stale value are long: they stand over the line's end, inside the plate.
+              position: isStale ? 'top' : 'right',
               fill: color,
               offset: 10,
               ...LABEL,
