@@ -36,6 +36,11 @@ export function dueAt(tree: QueueTree): number | null {
   return tree.guard === 'safe' ? (safeAt ?? likelyAt) : (likelyAt ?? safeAt)
 }
 
+/** True when one of the trees shows a drying time that rests on starting values nobody has calibrated. */
+export function hasUncalibratedTime(trees: readonly QueueTree[]): boolean {
+  return trees.some((tree) => tree.isUncalibrated && tree.dry !== null && tree.state !== 'unknown')
+}
+
 const NEVER = Number.MAX_SAFE_INTEGER
 const byTag = (a: QueueTree, b: QueueTree) => a.tag.localeCompare(b.tag, 'en', { numeric: true })
 

@@ -35,7 +35,13 @@ import { Sheet } from './sheet'
 import { SheetProblem } from './sheet-problem'
 import { WallReading } from './wall-reading'
 
-export type Logged = { answer: DipRunAnswer; bathName: string; stucco: DipDraft['stucco'] }
+export type Logged = {
+  answer: DipRunAnswer
+  bathName: string
+  stucco: DipDraft['stucco']
+  /** The times of the answer rest on starting values nobody has calibrated. */
+  isUncalibrated: boolean
+}
 
 /** One attempt at a run: its id belongs to exactly this body, and both go out again until the server has answered. */
 type Attempt = { choices: string; operationId: string; body: RunBody }
@@ -118,7 +124,7 @@ export function DipSheet({ queue, draft, trees, now, memberName, onChange, onTre
     setIsSending(false)
     if (outcome.kind === 'done') {
       const bathName = queue.baths.find((bath) => bath.id === body.bathId)?.name ?? 'the bath'
-      onLogged({ answer: outcome.data, bathName, stucco: body.stucco })
+      onLogged({ answer: outcome.data, bathName, stucco: body.stucco, isUncalibrated: trees.some((tree) => tree.isUncalibrated) })
       return
     }
     setPanel('sheet')

@@ -1,6 +1,6 @@
 import { Icon } from '@/app/_components/icons'
 import { formatDuration } from '@/lib/format/duration'
-import { timePairWords } from '@/lib/format/time-pair'
+import { NOT_CALIBRATED, timePairWords } from '@/lib/format/time-pair'
 import type { QueueTree, Warning } from '@/lib/queue/contract'
 
 /** How many warnings show before the rest are counted. */
@@ -42,7 +42,12 @@ export function DipWarnings({ trees, now, timeZone }: DipWarningsProps) {
         ))}
         {told.length > MOST && <li>and {told.length - MOST} more on the page of the tree</li>}
       </ul>
-      {pair && <Pair pair={pair} now={now} timeZone={timeZone} />}
+      {pair && (
+        <div className="warn-pair">
+          <Pair pair={pair} now={now} timeZone={timeZone} />
+          {only?.isUncalibrated && <small>{NOT_CALIBRATED}</small>}
+        </div>
+      )}
     </div>
   )
 }
