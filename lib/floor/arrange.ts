@@ -107,6 +107,12 @@ export function countTrees(groups: readonly DipGroup[]): number {
   return groups.reduce((sum, group) => sum + group.trees.length, 0)
 }
 
+/** How long the one of the trees has waited that has waited longest, milliseconds; null where none has begun to. */
+export function longestWait(trees: readonly QueueTree[], now: number): number | null {
+  const waits = trees.flatMap((tree) => (tree.stateSince === null ? [] : [now - tree.stateSince]))
+  return waits.length > 0 ? Math.max(...waits) : null
+}
+
 /** The words of a run key. */
 export function runKeyWords(count: number): string {
   if (count === 1) return 'Dip it'

@@ -187,7 +187,9 @@ export function FloorBoard({ initial, serverNow, member }: FloorBoardProps) {
 
   const acts = canLog ? { onTree, onRun: openRun, onStir: (bathId: string) => void stir(bathId) } : {}
   const nextUp = board.drying.find((tree) => tree.dry !== null && tree.state !== 'unknown')
-  const nextWords = nextUp?.dry ? `Next ${nextUp.tag}: ${timePairWords(nextUp.dry, now, timeZone).text}${nextUp.isUncalibrated ? `, ${NOT_CALIBRATED}` : ''}.` : null
+  const nextWords = nextUp?.dry
+    ? `Next ${nextUp.tag}: ${timePairWords(nextUp.dry, now, timeZone).text}${nextUp.isUncalibrated ? `, ${NOT_CALIBRATED}` : ''}.`
+    : null
   const list = (
     <FloorList
       {...acts}
