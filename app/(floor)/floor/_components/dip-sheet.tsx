@@ -21,6 +21,7 @@ import {
   type RunBody,
 } from '@/lib/floor/dip-draft'
 import { coatsOnWords, dipWords } from '@/lib/format/coat-words'
+import { splitName } from '@/lib/format/person-name'
 import { stateWords } from '@/lib/format/state-words'
 import type { Queue, QueueTree } from '@/lib/queue/contract'
 import { sectionOf } from '@/lib/trees/section'
@@ -80,6 +81,7 @@ export function DipSheet({ queue, draft, trees, now, memberName, onChange, onTre
   const inFlight = useRef(false)
 
   const first = trees[0]
+  const who = splitName(memberName)
   const warnings = warningsOf(trees)
   const toDip = stillToDip(draft, trees)
   const early = toDip.filter(isEarly)
@@ -213,7 +215,10 @@ export function DipSheet({ queue, draft, trees, now, memberName, onChange, onTre
             </Key>
             <span className="sheet-who">
               Who
-              <b>{memberName}</b>
+              <b title={memberName}>
+                {who.first}
+                {who.rest !== '' && <span className="vh"> {who.rest}</span>}
+              </b>
             </span>
             <Key
               size={80}
