@@ -1,4 +1,5 @@
 import { Icon } from '@/app/_components/icons'
+import { tagsWords } from '@/lib/floor/dip-draft'
 import { formatDuration } from '@/lib/format/duration'
 import { NOT_CALIBRATED, timePairWords } from '@/lib/format/time-pair'
 import type { QueueTree, Warning } from '@/lib/queue/contract'
@@ -57,12 +58,10 @@ function Sentence({ warning, hasTags }: { warning: Told; hasTags: boolean }) {
   const end = warning.text.indexOf('. ')
   const head = end < 0 ? warning.text.replace(/\.$/, '') : warning.text.slice(0, end)
   const rest = end < 0 ? '' : warning.text.slice(end + 2)
-  const tags =
-    warning.tags.length > 3 ? `${warning.tags.slice(0, 3).join(', ')} and ${warning.tags.length - 3} more` : warning.tags.join(', ')
   return (
     <>
       <b>
-        {hasTags && `${tags}: `}
+        {hasTags && `${tagsWords(warning.tags)}: `}
         {head}
       </b>
       {rest && <span>{rest}</span>}
