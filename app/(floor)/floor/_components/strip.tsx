@@ -140,7 +140,7 @@ function Baths({ queue, now }: { queue: Queue; now: number }) {
             <Icon name={bath.isStirredToday ? 'check' : 'warning'} /> {shortBathName(bath.name)}:{' '}
             {bath.isStirredToday && bath.stirredAt !== null ? (
               <>
-                <span className="strip-far">stirred </span>
+                <span className="strip-near">stirred </span>
                 {formatClock(bath.stirredAt, timeZone)}
               </>
             ) : (
