@@ -36,6 +36,11 @@ export function dueAt(tree: QueueTree): number | null {
   return tree.guard === 'safe' ? (safeAt ?? likelyAt) : (likelyAt ?? safeAt)
 }
 
+/** True when one of the trees shows a drying time that rests on starting values nobody has calibrated. */
+export function hasUncalibratedTime(trees: readonly QueueTree[]): boolean {
+  return trees.some((tree) => tree.isUncalibrated && tree.dry !== null && tree.state !== 'unknown')
+}
+
 const NEVER = Number.MAX_SAFE_INTEGER
 const byTag = (a: QueueTree, b: QueueTree) => a.tag.localeCompare(b.tag, 'en', { numeric: true })
 
@@ -100,6 +105,12 @@ export function arrangeFloor(queue: Pick<Queue, 'trees' | 'baths'>): FloorBoard 
 /** How many trees may be dipped now, over all groups. */
 export function countTrees(groups: readonly DipGroup[]): number {
   return groups.reduce((sum, group) => sum + group.trees.length, 0)
+}
+
+/** How long the one of the trees has waited that has waited longest, milliseconds; null where none has begun to. */
+export function longestWait(trees: readonly QueueTree[], now: number): number | null {
+  const waits = trees.flatMap((tree) => (tree.stateSince === null ? [] : [now - tree.stateSince]))
+  return waits.length > 0 ? Math.max(...waits) : null
 }
 
 /** The words of a run key. */

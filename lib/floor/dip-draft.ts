@@ -44,6 +44,51 @@ export function needsReason(tree: QueueTree): boolean {
   return tree.state === 'held' || isEarly(tree)
 }
 
+const EARLY_REASONS = ['Feels dry', 'Weighed, it is dry', 'Was dipped before I looked', 'The pour cannot wait']
+const HELD_REASONS = ['Patched, goes on', 'Supervisor said so', 'Was dipped before I looked']
+
+/** What the sheet asks before a dip that is early, held, or both, and what its key then says. */
+export type ReasonAsk = { question: string; presets: string[]; keyWithReason: (dips: string) => string; keyWithout: string }
+
+/** The question for the trees of a run that need a reason; null when none does. A hold outweighs a wet coat on the key. */
+export function reasonAsk(trees: readonly QueueTree[]): ReasonAsk | null {
+  const hasHeld = trees.some((tree) => tree.state === 'held')
+  const hasEarly = trees.some(isEarly)
+  if (hasHeld) {
+    return {
+      question: hasEarly ? 'Why although held, and before it is dry?' : 'Why although it is held?',
+      presets: hasEarly ? [...new Set([...HELD_REASONS, ...EARLY_REASONS])] : HELD_REASONS,
+      keyWithReason: (dips) => `Log ${dips} although held`,
+      keyWithout: 'It is done: log although held',
+    }
+  }
+  if (!hasEarly) return null
+  return {
+    question: 'Why before it is dry?',
+    presets: EARLY_REASONS,
+    keyWithReason: (dips) => `Log ${dips} as early`,
+    keyWithout: 'It is done: log as early dip',
+  }
+}
+
+const TAGS_NAMED = 3
+
+/** Tags in a sentence: 'T-1, T-2, T-3 and 4 more'. */
+export function tagsWords(tags: readonly string[]): string {
+  const named = tags.slice(0, TAGS_NAMED).join(', ')
+  return tags.length > TAGS_NAMED ? `${named} and ${tags.length - TAGS_NAMED} more` : named
+}
+
+/** What the recipes say to do before the dip, each line once; where lines differ each begins with the tags it is for. */
+export function readAloudLines(trees: readonly QueueTree[]): string[] {
+  const tagsOf = new Map<string, string[]>()
+  for (const { next, tag } of trees) {
+    if (next?.readAloud) tagsOf.set(next.readAloud, [...(tagsOf.get(next.readAloud) ?? []), tag])
+  }
+  const lines = [...tagsOf]
+  return lines.length > 1 ? lines.map(([line, tags]) => `${tagsWords(tags)}: ${line}`) : lines.map(([line]) => line)
+}
+
 /** The sheet as the recipe and the tree's last place fill it in. Null when the first tree takes no coat. */
 export function startDraft(trees: readonly QueueTree[]): DipDraft | null {
   const first = trees.find((tree) => tree.next !== null)

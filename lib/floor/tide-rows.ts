@@ -9,12 +9,14 @@ const MINUTE_MS = 60_000
 const sameMinute = (a: number | null, b: number | null) =>
   a === b || (a !== null && b !== null && Math.floor(a / MINUTE_MS) === Math.floor(b / MINUTE_MS))
 
-/** True when two trees went through one run and the floor would do the next thing with both at once. */
+/** True when two trees went through one run stand at the same coat of as many, and the floor would do the next thing with both at once. */
 function isOneRun(a: QueueTree, b: QueueTree): boolean {
   return (
     a.state === b.state &&
     a.newestCoat !== null &&
     b.newestCoat !== null &&
+    a.coatsOn === b.coatsOn &&
+    a.coats.length === b.coats.length &&
     a.newestCoat.dippedAt === b.newestCoat.dippedAt &&
     a.next?.bathId === b.next?.bathId &&
     a.next?.stucco === b.next?.stucco &&

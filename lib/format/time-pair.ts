@@ -1,5 +1,11 @@
 import { dayWord, formatClock } from '@/lib/format/local-time'
 
+/** Said wherever a promised time rests on starting values that nobody has checked. */
+export const NOT_CALIBRATED = 'not calibrated yet'
+
+/** The same, once at the head of many times. */
+export const TIMES_NOT_CALIBRATED = `times ${NOT_CALIBRATED}`
+
 /** One of the two promised times, cut so that a screen may set the day small and the clock large. */
 export type PairTime = {
   word: 'likely' | 'safe'

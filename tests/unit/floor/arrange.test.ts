@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest'
-import { arrangeFloor, countTrees, runKeyWords } from '@/lib/floor/arrange'
-import { afternoonFixture, crowdFixture, queueFixture, queueTreeFixture } from '../../factories/queue-fixture'
+import { arrangeFloor, countTrees, hasUncalibratedTime, longestWait, runKeyWords } from '@/lib/floor/arrange'
+import { afternoonFixture, crowdFixture, FIXTURE_NOW, queueFixture, queueTreeFixture } from '../../factories/queue-fixture'
 
 const toDip = (tag: string, state: 'overdue' | 'waiting' | 'wax ready', since?: number) =>
   queueTreeFixture({ tag, state, coatsOn: 0, ...(since === undefined ? {} : { since }) })
@@ -51,6 +51,30 @@ describe('arrangeFloor', () => {
   it('keeps a tree to dip whose recipe names no next coat', () => {
     const board = arrangeFloor(queueFixture({ trees: [queueTreeFixture({ state: 'waiting', next: null })] }))
     expect(board.drying).toHaveLength(1)
+  })
+})
+
+describe('hasUncalibratedTime', () => {
+  const tree = (state: 'drying' | 'unknown', isUncalibrated: boolean, likelyIn?: number) =>
+    queueTreeFixture({ state, isUncalibrated, ...(likelyIn === undefined ? {} : { likelyIn }) })
+
+  it('is about times that are shown', () => {
+    expect(hasUncalibratedTime([tree('drying', false, 60), tree('drying', true, 60)])).toBe(true)
+    expect(hasUncalibratedTime([tree('drying', false, 60), tree('drying', true), tree('unknown', true, 60)])).toBe(false)
+  })
+})
+
+describe('longestWait', () => {
+  it('is that of the trees it is asked about', () => {
+    const trees = [toDip('T-1', 'overdue', 60), toDip('T-2', 'waiting', 90), toDip('T-3', 'wax ready')]
+    expect(longestWait(trees, FIXTURE_NOW)).toBe(90 * 60_000)
+    expect(
+      longestWait(
+        trees.filter((tree) => tree.state === 'overdue'),
+        FIXTURE_NOW,
+      ),
+    ).toBe(60 * 60_000)
+    expect(longestWait([], FIXTURE_NOW)).toBeNull()
   })
 })
 

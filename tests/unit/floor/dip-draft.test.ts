@@ -9,6 +9,8 @@ import {
   nearPlaces,
   needsReason,
   needsWallReading,
+  readAloudLines,
+  reasonAsk,
   runBody,
   startDraft,
   stillToDip,
@@ -29,6 +31,40 @@ describe('startDraft', () => {
   it('leaves out trees that take no coat', () => {
     expect(startDraft([tree('T-113')])).toBeNull()
     expect(startDraft([tree('T-118'), tree('T-113')])?.treeIds).toEqual([tree('T-118').id])
+  })
+})
+
+describe('reasonAsk', () => {
+  it('asks nothing of trees that are free and dry', () => {
+    expect(reasonAsk(run)).toBeNull()
+  })
+
+  it('offers reasons of both kinds for a tree that is held and wet, and names the hold', () => {
+    const both = reasonAsk([{ ...tree('T-125'), state: 'held' }])!
+    expect(both.presets).toEqual(expect.arrayContaining(['Feels dry', 'Patched, goes on']))
+    expect(new Set(both.presets).size).toBe(both.presets.length)
+    expect(both.keyWithout).toBe('It is done: log although held')
+    expect(both.keyWithReason('dip 3')).toBe('Log dip 3 although held')
+  })
+
+  it('offers the reasons of its own kind for one that is held or wet only', () => {
+    expect(reasonAsk([tree('T-114')])!.presets).not.toContain('Feels dry')
+    expect(reasonAsk([tree('T-125')])!.presets).not.toContain('Patched, goes on')
+  })
+})
+
+describe('readAloudLines', () => {
+  const seal = queueTreeFixture({ tag: 'T-901', state: 'waiting', coatsOn: 7 })
+
+  it('says a line that all share once, without tags', () => {
+    expect(readAloudLines(run)).toEqual(['Blow off loose stucco. Brush bubbles. Wipe the rim.'])
+  })
+
+  it('tells whose line it is where lines differ', () => {
+    expect(readAloudLines([...run, tree('T-124'), seal])).toEqual([
+      'T-118, T-120, T-121 and 1 more: Blow off loose stucco. Brush bubbles. Wipe the rim.',
+      'T-901: Blow off loose stucco. Seal is slurry only. Drain until it stops.',
+    ])
   })
 })
 

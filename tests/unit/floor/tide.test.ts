@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest'
 import { placeRow, tidePage, tideRows } from '@/lib/floor/tide-rows'
 import { tideScale } from '@/lib/floor/tide-scale'
-import { FIXTURE_NOW, queueTreeFixture } from '../../factories/queue-fixture'
+import { FIXTURE_NOW, queueTreeFixture, type TreeFixture } from '../../factories/queue-fixture'
 
 const zone = 'Europe/London'
 const MINUTE = 60_000
@@ -98,13 +98,14 @@ describe('tideScale', () => {
 
 describe('tideRows', () => {
   const dippedAt = FIXTURE_NOW - 60 * MINUTE
-  const inRun = (tag: string, safeIn = 120) =>
+  const inRun = (tag: string, safeIn = 120, overrides: Partial<TreeFixture> = {}) =>
     queueTreeFixture({
       tag,
       state: 'drying',
       likelyIn: 60,
       safeIn,
       newestCoat: { id: '00000000-0000-4000-8000-000000000001', number: 4, dippedAt },
+      ...overrides,
     })
 
   it('makes one row of a run that comes due together', () => {
@@ -114,6 +115,13 @@ describe('tideRows', () => {
 
   it('keeps apart what comes due at different times', () => {
     expect(tideRows([inRun('T-1'), inRun('T-2', 150)])).toHaveLength(2)
+  })
+
+  it('keeps apart what does not stand at the same coat of as many', () => {
+    const next = inRun('T-1').next
+    expect(tideRows([inRun('T-1'), inRun('T-2', 120, { coatsOn: 3, next })])).toHaveLength(2)
+    expect(tideRows([inRun('T-1'), inRun('T-2', 120, { coats: inRun('T-2').coats.slice(0, 7) })])).toHaveLength(2)
+    expect(tideRows([inRun('T-1'), inRun('T-2', 120, { state: 'nearly dry' })])).toHaveLength(2)
   })
 
   it('pages what does not fit and counts its trees', () => {

@@ -6,7 +6,7 @@ import { StateGlyph, StateMark } from '@/app/_components/state-mark'
 import { StuccoSwatch } from '@/app/_components/stucco-swatch'
 import { fittedTagHeight, Tag } from '@/app/_components/tag'
 import { usePress } from '@/app/_components/use-press'
-import { countTrees, runKeyWords, treesWord, type DipGroup } from '@/lib/floor/arrange'
+import { countTrees, longestWait, runKeyWords, treesWord, type DipGroup } from '@/lib/floor/arrange'
 import type { DipNowPlan } from '@/lib/floor/fold-dip-now'
 import { coatsOnWords, thenStucco } from '@/lib/format/coat-words'
 import { formatDuration } from '@/lib/format/duration'
@@ -212,8 +212,8 @@ function DipRow({
 function FoldedGroup({ group, now, onOpenGroup }: DipNowProps & { group: DipGroup }) {
   const press = usePress(() => onOpenGroup(group.key))
   const overdue = group.trees.filter((tree) => tree.state === 'overdue')
-  const waits = group.trees.flatMap((tree) => (tree.stateSince === null ? [] : [now - tree.stateSince]))
-  const longest = waits.length > 0 ? Math.max(...waits) : null
+  // What is overdue is told of the overdue trees only: another may have waited longer and yet be in time.
+  const longest = longestWait(overdue.length > 0 ? overdue : group.trees, now)
   return (
     <button type="button" className="fold-key" {...press} aria-expanded={false}>
       <StuccoSwatch stucco={group.stucco} />

@@ -14,13 +14,17 @@ import {
   isEarly,
   needsReason,
   needsWallReading,
+  readAloudLines,
+  reasonAsk,
   runBody,
   stillToDip,
   type DialErrors,
   type DipDraft,
+  type ReasonAsk,
   type RunBody,
 } from '@/lib/floor/dip-draft'
 import { coatsOnWords, dipWords } from '@/lib/format/coat-words'
+import { splitName } from '@/lib/format/person-name'
 import { stateWords } from '@/lib/format/state-words'
 import type { Queue, QueueTree } from '@/lib/queue/contract'
 import { sectionOf } from '@/lib/trees/section'
@@ -35,7 +39,13 @@ import { Sheet } from './sheet'
 import { SheetProblem } from './sheet-problem'
 import { WallReading } from './wall-reading'
 
-export type Logged = { answer: DipRunAnswer; bathName: string; stucco: DipDraft['stucco'] }
+export type Logged = {
+  answer: DipRunAnswer
+  bathName: string
+  stucco: DipDraft['stucco']
+  /** The times of the answer rest on starting values nobody has calibrated. */
+  isUncalibrated: boolean
+}
 
 /** One attempt at a run: its id belongs to exactly this body, and both go out again until the server has answered. */
 type Attempt = { choices: string; operationId: string; body: RunBody }
@@ -55,9 +65,6 @@ export type DipSheetProps = {
   onSaid: (words: string) => void
 }
 
-const EARLY_REASONS = ['Feels dry', 'Weighed, it is dry', 'Was dipped before I looked', 'The pour cannot wait']
-const HELD_REASONS = ['Patched, goes on', 'Supervisor said so', 'Was dipped before I looked']
-
 type Trouble = { title: string; detail?: string | undefined; mayRetry: boolean }
 
 /** The dip sheet: one tree or a run. Warns, names what is unusual, and logs. */
@@ -74,15 +81,18 @@ export function DipSheet({ queue, draft, trees, now, memberName, onChange, onTre
   const inFlight = useRef(false)
 
   const first = trees[0]
+  const who = splitName(memberName)
   const warnings = warningsOf(trees)
   const toDip = stillToDip(draft, trees)
   const early = toDip.filter(isEarly)
   const withReason = toDip.filter(needsReason)
+  const ask = reasonAsk(toDip)
   const hasWallDial = needsWallReading(draft, trees, queue.places)
   // Warnings and troubles need the room of the choices; those then stand in one line until somebody wants to change them.
   const isShort = (warnings.length > 0 || trouble !== null || (hasWallDial && trees.length > CHIPS_WITH_TITLE)) && panel === 'sheet'
-  // Two rows of chips: what is read aloud then stands under the heading.
-  const isLongRun = trees.length > CHIPS_WITH_TITLE
+  const aloud = readAloudLines(trees)
+  // Two rows of chips: what is read aloud then stands under the heading, if it is one line.
+  const isReadInHead = trees.length > CHIPS_WITH_TITLE && aloud.length <= 1
   // They were read before 'Change' was touched.
   const isCrowded = warnings.length > 0 && panel === 'choices'
   const tone = warnings.some((warning) => warning.level === 'stop') ? 'stop' : warnings.length > 0 ? 'warn' : 'plain'
@@ -118,7 +128,7 @@ export function DipSheet({ queue, draft, trees, now, memberName, onChange, onTre
     setIsSending(false)
     if (outcome.kind === 'done') {
       const bathName = queue.baths.find((bath) => bath.id === body.bathId)?.name ?? 'the bath'
-      onLogged({ answer: outcome.data, bathName, stucco: body.stucco })
+      onLogged({ answer: outcome.data, bathName, stucco: body.stucco, isUncalibrated: trees.some((tree) => tree.isUncalibrated) })
       return
     }
     setPanel('sheet')
@@ -175,11 +185,7 @@ export function DipSheet({ queue, draft, trees, now, memberName, onChange, onTre
 
   const isSettling = refusals.length > 0 || settled.length > 0
   const label = trees.length === 1 && first ? `Dip ${first.tag}` : `Dip run of ${trees.length}`
-  const goWords = isSending
-    ? 'Logging'
-    : trouble?.mayRetry
-      ? 'Try again'
-      : logWords(trees, draft, { early: early.length, isOdd: withReason.length > 0, reason: draft.reason, isAsking: wantsReason })
+  const goWords = isSending ? 'Logging' : trouble?.mayRetry ? 'Try again' : logWords(trees, draft, { ask, isAsking: wantsReason })
 
   return (
     <Sheet
@@ -194,7 +200,7 @@ export function DipSheet({ queue, draft, trees, now, memberName, onChange, onTre
             under: `${coatsOnWords(first)}, ${first.place.name}. ${stateWords(first.state, first.stateSince, now)}.`,
             aside: hasWallDial && warnings.length === 0 ? <ShellSection {...sectionOf(first)} height={40} width={200} /> : undefined,
           }
-        : { heading: `Dip run, ${trees.length} trees`, under: isLongRun ? readAloudLines(trees).join(' ') : undefined })}
+        : { heading: `Dip run, ${trees.length} trees`, under: isReadInHead ? aloud[0] : undefined })}
       foot={
         isSettling && trees.length === 0 ? (
           <Key size={80} tone="go" className="sheet-go" onPress={onCancel}>
@@ -207,7 +213,10 @@ export function DipSheet({ queue, draft, trees, now, memberName, onChange, onTre
             </Key>
             <span className="sheet-who">
               Who
-              <b>{memberName}</b>
+              <b title={memberName}>
+                {who.first}
+                {who.rest !== '' && <span className="vh"> {who.rest}</span>}
+              </b>
             </span>
             <Key
               size={80}
@@ -251,7 +260,7 @@ export function DipSheet({ queue, draft, trees, now, memberName, onChange, onTre
             <ShellSection {...sectionOf(first)} height={40} width={692} className="sheet-section h-auto max-w-full" />
           )}
           {!isCrowded && <DipWarnings trees={trees} now={now} timeZone={timeZone} />}
-          {!isCrowded && !isLongRun && !(wantsReason && hasWallDial) && <ReadAloud trees={trees} />}
+          {!isCrowded && !isReadInHead && !(wantsReason && hasWallDial) && <ReadAloud lines={aloud} />}
           {isShort ? (
             <>
               {early.length > 0 && !wantsReason && (
@@ -282,13 +291,8 @@ export function DipSheet({ queue, draft, trees, now, memberName, onChange, onTre
                   </Key>
                 </div>
               )}
-              {wantsReason && (
-                <ReasonChoice
-                  label={early.length > 0 ? 'Why before it is dry?' : 'Why although it is held?'}
-                  presets={early.length > 0 ? EARLY_REASONS : HELD_REASONS}
-                  reason={draft.reason}
-                  onReason={(reason) => change({ reason })}
-                />
+              {wantsReason && ask && (
+                <ReasonChoice label={ask.question} presets={ask.presets} reason={draft.reason} onReason={(reason) => change({ reason })} />
               )}
               <div className="sheet-summary">
                 <span>{draftSummary(draft, trees, queue, now)}</span>
@@ -323,17 +327,12 @@ export function DipSheet({ queue, draft, trees, now, memberName, onChange, onTre
   )
 }
 
-function logWords(
-  trees: readonly QueueTree[],
-  draft: DipDraft,
-  { early, isOdd, reason, isAsking }: { early: number; isOdd: boolean; reason: string; isAsking: boolean },
-): string {
+function logWords(trees: readonly QueueTree[], draft: DipDraft, { ask, isAsking }: { ask: ReasonAsk | null; isAsking: boolean }): string {
   const [only] = trees
   const dips = trees.length === 1 && only ? dipWords(coatNumberOf(draft, only), only.next?.kind ?? 'backup') : `${trees.length} dips`
-  if (!isOdd) return `Log ${dips}`
-  if (reason.trim() !== '') return early > 0 ? `Log ${dips} as early` : `Log ${dips}, held`
-  if (isAsking) return 'Say why first'
-  return early > 0 ? `It is done: log as early dip` : 'It is done: log it, held'
+  if (!ask) return `Log ${dips}`
+  if (draft.reason.trim() !== '') return ask.keyWithReason(dips)
+  return isAsking ? 'Say why first' : ask.keyWithout
 }
 
 function wallWords(draft: DipDraft, trees: readonly QueueTree[], queue: Queue): string {
@@ -345,17 +344,19 @@ function wallWords(draft: DipDraft, trees: readonly QueueTree[], queue: Queue): 
   return `No sensor serves ${place?.name ?? 'this place'}. Read the dial there.`
 }
 
-const readAloudLines = (trees: readonly QueueTree[]) =>
-  [...new Set(trees.flatMap((tree) => (tree.next?.readAloud ? [tree.next.readAloud] : [])))].slice(0, 2)
-
-/** What the recipe says to do before the dip, each line once. */
-function ReadAloud({ trees }: { trees: readonly QueueTree[] }) {
-  const lines = readAloudLines(trees)
+/** What the recipe says to do before the dip. */
+function ReadAloud({ lines }: { lines: readonly string[] }) {
   if (lines.length === 0) return null
   return (
     <p className="read-aloud">
       <Icon name="hand" />
-      <span>{lines.join(' ')}</span>
+      <span>
+        {lines.map((line) => (
+          <span key={line} className="block">
+            {line}
+          </span>
+        ))}
+      </span>
     </p>
   )
 }
@@ -365,7 +366,9 @@ const CHIPS_WITH_TITLE = 3
 const CHIPS_MOST = 6
 
 function Chips({ trees, draft, onTrees }: { trees: readonly QueueTree[]; draft: DipDraft; onTrees: (ids: string[]) => void }) {
-  const shown = trees.slice(0, trees.length > CHIPS_MOST ? CHIPS_MOST - 1 : CHIPS_MOST)
+  const [isAll, setIsAll] = useState(false)
+  const toggle = usePress(() => setIsAll(!isAll))
+  const shown = isAll ? trees : trees.slice(0, trees.length > CHIPS_MOST ? CHIPS_MOST - 1 : CHIPS_MOST)
   return (
     <ul className={`chips ${trees.length > CHIPS_WITH_TITLE ? 'chips-many' : ''}`}>
       {shown.map((tree) => (
@@ -376,11 +379,12 @@ function Chips({ trees, draft, onTrees }: { trees: readonly QueueTree[]; draft: 
           onRemove={() => onTrees(draft.treeIds.filter((id) => id !== tree.id))}
         />
       ))}
-      {trees.length > shown.length && (
+      {trees.length > CHIPS_MOST && (
         <li className="chips-rest">
-          <div>
-            <b>and {trees.length - shown.length} more</b>
-          </div>
+          <button type="button" {...toggle} aria-expanded={isAll}>
+            <b>{isAll ? 'Show fewer' : `and ${trees.length - shown.length} more`}</b>
+            <Icon name={isAll ? 'up' : 'down'} />
+          </button>
         </li>
       )}
     </ul>

@@ -1,6 +1,7 @@
 import { Icon } from '@/app/_components/icons'
+import { tagsWords } from '@/lib/floor/dip-draft'
 import { formatDuration } from '@/lib/format/duration'
-import { timePairWords } from '@/lib/format/time-pair'
+import { NOT_CALIBRATED, timePairWords } from '@/lib/format/time-pair'
 import type { QueueTree, Warning } from '@/lib/queue/contract'
 
 /** How many warnings show before the rest are counted. */
@@ -42,7 +43,12 @@ export function DipWarnings({ trees, now, timeZone }: DipWarningsProps) {
         ))}
         {told.length > MOST && <li>and {told.length - MOST} more on the page of the tree</li>}
       </ul>
-      {pair && <Pair pair={pair} now={now} timeZone={timeZone} />}
+      {pair && (
+        <div className="warn-pair">
+          <Pair pair={pair} now={now} timeZone={timeZone} />
+          {only?.isUncalibrated && <small>{NOT_CALIBRATED}</small>}
+        </div>
+      )}
     </div>
   )
 }
@@ -52,12 +58,10 @@ function Sentence({ warning, hasTags }: { warning: Told; hasTags: boolean }) {
   const end = warning.text.indexOf('. ')
   const head = end < 0 ? warning.text.replace(/\.$/, '') : warning.text.slice(0, end)
   const rest = end < 0 ? '' : warning.text.slice(end + 2)
-  const tags =
-    warning.tags.length > 3 ? `${warning.tags.slice(0, 3).join(', ')} and ${warning.tags.length - 3} more` : warning.tags.join(', ')
   return (
     <>
       <b>
-        {hasTags && `${tags}: `}
+        {hasTags && `${tagsWords(warning.tags)}: `}
         {head}
       </b>
       {rest && <span>{rest}</span>}

@@ -7,7 +7,7 @@ import { isSameRun, startDraft, withTree, type DipDraft } from '@/lib/floor/dip-
 import { BESIDE_SHEET_RUN_KEY, DIP_NOW_SIZES, floorMode, planFloor, type FloorMode } from '@/lib/floor/floor-plan'
 import { foldDipNow, type DipNowChoice } from '@/lib/floor/fold-dip-now'
 import { tideScale } from '@/lib/floor/tide-scale'
-import { timePairWords } from '@/lib/format/time-pair'
+import { NOT_CALIBRATED, timePairWords } from '@/lib/format/time-pair'
 import { may, type Role } from '@/lib/members/roles'
 import type { Queue, QueueTree } from '@/lib/queue/contract'
 import { refusalWords } from '../_queries/request-json'
@@ -187,7 +187,9 @@ export function FloorBoard({ initial, serverNow, member }: FloorBoardProps) {
 
   const acts = canLog ? { onTree, onRun: openRun, onStir: (bathId: string) => void stir(bathId) } : {}
   const nextUp = board.drying.find((tree) => tree.dry !== null && tree.state !== 'unknown')
-  const nextWords = nextUp?.dry ? `Next ${nextUp.tag}: ${timePairWords(nextUp.dry, now, timeZone).text}.` : null
+  const nextWords = nextUp?.dry
+    ? `Next ${nextUp.tag}: ${timePairWords(nextUp.dry, now, timeZone).text}${nextUp.isUncalibrated ? `, ${NOT_CALIBRATED}` : ''}.`
+    : null
   const list = (
     <FloorList
       {...acts}
@@ -242,6 +244,7 @@ export function FloorBoard({ initial, serverNow, member }: FloorBoardProps) {
                 />
                 <Tide
                   drying={board.drying}
+                  onRack={board.lastCoatOn}
                   scale={scale}
                   now={now}
                   timeZone={timeZone}

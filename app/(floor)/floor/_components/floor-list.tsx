@@ -4,8 +4,9 @@ import { ShellSection } from '@/app/_components/shell-section'
 import { StateMark } from '@/app/_components/state-mark'
 import { Tag, fittedTagHeight } from '@/app/_components/tag'
 import { TimePair } from '@/app/_components/time-pair'
-import { countTrees, runKeyWords, treesWord, type FloorBoard } from '@/lib/floor/arrange'
+import { countTrees, hasUncalibratedTime, runKeyWords, treesWord, type FloorBoard } from '@/lib/floor/arrange'
 import { coatsOnWords } from '@/lib/format/coat-words'
+import { TIMES_NOT_CALIBRATED } from '@/lib/format/time-pair'
 import type { QueueTree } from '@/lib/queue/contract'
 import { sectionOf } from '@/lib/trees/section'
 import { StirKey, type DipActs } from './dip-now'
@@ -57,6 +58,7 @@ export function FloorList({ board, now, timeZone, chosenIds, stirringBathId, fir
         id="drying"
         title="Drying"
         trees={board.drying}
+        hasTimes
         firstRows={firstRows}
         row={(tree) => row(tree, pairOf(tree, now, timeZone))}
       />
@@ -64,6 +66,7 @@ export function FloorList({ board, now, timeZone, chosenIds, stirringBathId, fir
         id="last-coat-on"
         title="Last coat on"
         trees={board.lastCoatOn}
+        hasTimes
         firstRows={firstRows}
         row={(tree) => row(tree, pairOf(tree, now, timeZone))}
       />
@@ -86,18 +89,24 @@ function ListSection({
   trees,
   row,
   firstRows,
+  hasTimes = false,
 }: {
   id: string
   title: string
   trees: QueueTree[]
   row: (tree: QueueTree) => ReactNode
   firstRows: number
+  hasTimes?: boolean
 }) {
   if (trees.length === 0) return null
   return (
     <section aria-labelledby={`list-${id}`}>
       <h2 id={`list-${id}`} tabIndex={-1}>
-        {title} <i>{trees.length}</i>
+        {title}{' '}
+        <i>
+          {trees.length}
+          {hasTimes && hasUncalibratedTime(trees) && `, ${TIMES_NOT_CALIBRATED}`}
+        </i>
       </h2>
       <Rows trees={trees} row={row} firstRows={firstRows} />
     </section>

@@ -3,7 +3,7 @@ import { StateGlyph } from '@/app/_components/state-mark'
 import { fittedTagHeight, Tag } from '@/app/_components/tag'
 import { usePress } from '@/app/_components/use-press'
 import { foldRack, type Rail, type RailName } from '@/lib/floor/fold-rack'
-import { timePairWords } from '@/lib/format/time-pair'
+import { NOT_CALIBRATED, timePairWords } from '@/lib/format/time-pair'
 import type { QueueTree } from '@/lib/queue/contract'
 import type { TreeState } from '@/lib/trees/states'
 import { RowKey } from './row-key'
@@ -106,6 +106,7 @@ function Hook({
               <span>
                 safe {pair.safe.day} <b className="num">{pair.safe.clock}</b>
               </span>
+              {tree.isUncalibrated && <span className="vh">{NOT_CALIBRATED}</span>}
             </>
           ) : (
             <span>no time yet</span>

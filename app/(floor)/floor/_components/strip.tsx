@@ -1,7 +1,9 @@
+import type { ReactNode } from 'react'
 import { Icon } from '@/app/_components/icons'
 import { usePress } from '@/app/_components/use-press'
 import { bathsByNeed, PULL_WORDS, readingAge, mainRoom, shortBathName } from '@/lib/floor/strip'
 import { formatClock, formatDate, formatMoment } from '@/lib/format/local-time'
+import { splitName } from '@/lib/format/person-name'
 import { formatKelvin, formatPercent, oneDecimal, wholeNumber } from '@/lib/format/units'
 import type { Queue } from '@/lib/queue/contract'
 
@@ -23,6 +25,7 @@ export function Strip({ queue, now, memberName, onRoom, onWho }: StripProps) {
   const whoPress = usePress(onWho)
   const isSilent = room === undefined || room.measuredAt === null || room.isStale
   const age = room ? readingAge(room, now, timeZone) : 'no sensor yet'
+  const { first, rest } = splitName(memberName)
   const name = queue.rooms.length > 1 ? (room?.sensorName ?? 'Room') : 'Room'
   return (
     <header className="strip">
@@ -36,7 +39,15 @@ export function Strip({ queue, now, memberName, onRoom, onWho }: StripProps) {
       </div>
       <button type="button" className="strip-cell strip-room" {...roomPress} aria-haspopup="dialog">
         <span className={`strip-label ${isSilent ? 'strip-alarm' : ''}`}>
-          {isSilent && <Icon name="warning" />} {isSilent ? `${capital(age)}, ${name}` : `${name}, ${age}`}
+          {isSilent && <Icon name="warning" />}{' '}
+          {isSilent ? (
+            `${capital(age)}, ${name}`
+          ) : (
+            <>
+              <span className="strip-full">{name}, </span>
+              {age}
+            </>
+          )}
           {silentBeside > 0 && (
             <b className="strip-alarm">
               {' '}
@@ -77,7 +88,10 @@ export function Strip({ queue, now, memberName, onRoom, onWho }: StripProps) {
       )}
       <button type="button" className="strip-cell strip-who" {...whoPress} aria-haspopup="dialog">
         <span className="strip-label">Signed in</span>
-        <b className="num">{memberName}</b>
+        <b className="num" title={memberName}>
+          {first}
+          {rest !== '' && <span className="strip-full"> {rest}</span>}
+        </b>
       </button>
     </header>
   )
@@ -100,9 +114,12 @@ const capital = (text: string) => text.charAt(0).toUpperCase() + text.slice(1)
 function Pull({ pull }: { pull: Queue['rooms'][number]['pull'] }) {
   const isGood = pull === 'good'
   const words = PULL_WORDS[pull]
+  // 'Too dry for face coats' is 'Too dry' where there is no room for whom.
+  const [short = words, whom] = words.split(/(?= for )/)
   return (
     <b className={`strip-pull ${isGood ? 'strip-good' : 'strip-alarm'} ${words.length > 8 ? 'strip-pull-long' : ''}`}>
-      <Icon name={isGood ? 'check' : 'warning'} /> {words}
+      <Icon name={isGood ? 'check' : 'warning'} /> {short}
+      {whom !== undefined && <span className="strip-far">{whom}</span>}
     </b>
   )
 }
@@ -121,9 +138,14 @@ function Baths({ queue, now }: { queue: Queue; now: number }) {
         {lines.map((bath) => (
           <li key={bath.id} className={bath.isStirredToday ? 'strip-good' : 'strip-alarm'}>
             <Icon name={bath.isStirredToday ? 'check' : 'warning'} /> {shortBathName(bath.name)}:{' '}
-            {bath.isStirredToday && bath.stirredAt !== null
-              ? `stirred ${formatClock(bath.stirredAt, timeZone)}`
-              : stirWords(bath.stirredAt, now, timeZone)}
+            {bath.isStirredToday && bath.stirredAt !== null ? (
+              <>
+                <span className="strip-near">stirred </span>
+                {formatClock(bath.stirredAt, timeZone)}
+              </>
+            ) : (
+              stirWords(bath.stirredAt, now, timeZone)
+            )}
           </li>
         ))}
         {rest > 0 && (
@@ -136,6 +158,12 @@ function Baths({ queue, now }: { queue: Queue; now: number }) {
   )
 }
 
-function stirWords(stirredAt: number | null, now: number, timeZone: string): string {
-  return stirredAt === null ? 'stir' : `stir, last ${formatMoment(stirredAt, now, timeZone)}`
+function stirWords(stirredAt: number | null, now: number, timeZone: string): ReactNode {
+  if (stirredAt === null) return 'stir'
+  return (
+    <>
+      stir, <span className="strip-far">last </span>
+      {formatMoment(stirredAt, now, timeZone)}
+    </>
+  )
 }

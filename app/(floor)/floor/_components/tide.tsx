@@ -1,12 +1,12 @@
 import { ShellSection } from '@/app/_components/shell-section'
 import { StateMark } from '@/app/_components/state-mark'
 import { fittedTagHeight, Tag } from '@/app/_components/tag'
-import { treesWord } from '@/lib/floor/arrange'
+import { hasUncalibratedTime, treesWord } from '@/lib/floor/arrange'
 import { tideCapacity, tideRowHeight } from '@/lib/floor/floor-plan'
 import { placeRow, tidePage, tideRows, type TideRow } from '@/lib/floor/tide-rows'
 import type { TideScale } from '@/lib/floor/tide-scale'
 import { coatsOnWords } from '@/lib/format/coat-words'
-import { timePairWords, type PairTime, type TimePairWords } from '@/lib/format/time-pair'
+import { TIMES_NOT_CALIBRATED, timePairWords, type PairTime, type TimePairWords } from '@/lib/format/time-pair'
 import type { QueueTree } from '@/lib/queue/contract'
 import { sectionOf } from '@/lib/trees/section'
 import { PageKey } from './dip-now'
@@ -15,6 +15,8 @@ import { useElementSize } from './use-viewport'
 
 export type TideProps = {
   drying: QueueTree[]
+  /** Trees on the rack, where a time has no room for a word beside it: the head of the tide speaks for them too. */
+  onRack: QueueTree[]
   scale: TideScale
   now: number
   timeZone: string
@@ -31,15 +33,18 @@ const LOW_ROW = 84
 const TAGS_IN_ROW = 3
 
 /** What dries, by the time it comes due: water from now to likely, wet sand from likely to safe. */
-export function Tide({ drying, scale, now, timeZone, rowsHeight, page, onPage, onTrees }: TideProps) {
+export function Tide({ drying, onRack, scale, now, timeZone, rowsHeight, page, onPage, onTrees }: TideProps) {
   const [measure, { width }] = useElementSize({ width: 488, height: 500 })
   const shown = tidePage(tideRows(drying), tideCapacity(rowsHeight), page)
   const hasPageKey = shown.pages > 1
   const height = tideRowHeight(rowsHeight, shown.rows.length, hasPageKey)
   const unknown = drying.filter((tree) => tree.state === 'unknown').length
+  // The page key names a time of the first row that is to come.
+  const timed = [...shown.rows, ...shown.laterRows.slice(0, 1)].flatMap((row) => row.trees)
+  const isUncalibrated = hasUncalibratedTime([...timed, ...onRack])
   return (
     <section className="tide" aria-label="Drying, by the time each tree comes due">
-      <h2 className="column-head">
+      <h2 className={`column-head ${isUncalibrated ? 'column-head-noted' : ''}`}>
         <span>Drying</span>
         <i>
           {treesWord(drying.length)}
@@ -51,6 +56,7 @@ export function Tide({ drying, scale, now, timeZone, rowsHeight, page, onPage, o
           <u className="tide-key-sand" />
           safe
         </span>
+        {isUncalibrated && <small>{TIMES_NOT_CALIBRATED}</small>}
       </h2>
       <div className="sea" ref={measure}>
         <div aria-hidden="true">

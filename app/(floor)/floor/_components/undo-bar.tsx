@@ -5,7 +5,7 @@ import { Icon } from '@/app/_components/icons'
 import { Key } from '@/app/_components/key'
 import { stuccoWord } from '@/lib/format/coat-words'
 import { formatClock } from '@/lib/format/local-time'
-import { timePairWords } from '@/lib/format/time-pair'
+import { NOT_CALIBRATED, timePairWords } from '@/lib/format/time-pair'
 import { newOperationId } from '../_queries/operation-id'
 import { refusalWords } from '../_queries/request-json'
 import { postUndo } from '../_queries/writes'
@@ -111,13 +111,14 @@ function loggedSentence(logged: Logged, now: number, timeZone: string): string {
   const [first, ...others] = logged.answer.coats
   if (!first) return ''
   const pair = timePairWords(first, now, timeZone).text
+  const note = logged.isUncalibrated ? `, ${NOT_CALIBRATED}` : ''
   const isSame = others.every((coat) => timePairWords(coat, now, timeZone).text === pair)
   const when =
     first.likelyAt === null && first.safeAt === null
       ? ''
       : isSame
-        ? `${pair.charAt(0).toUpperCase()}${pair.slice(1)}.`
-        : `${first.tag} ${pair}.`
+        ? `${pair.charAt(0).toUpperCase()}${pair.slice(1)}${note}.`
+        : `${first.tag} ${pair}${note}.`
   const unusual = logged.answer.coats
     .filter((coat) => coat.deviations.length > 0)
     .map((coat) => `${coat.tag}: ${coat.deviations.join(', ')}`)
