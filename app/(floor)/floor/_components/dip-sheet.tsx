@@ -348,7 +348,7 @@ function wallWords(draft: DipDraft, trees: readonly QueueTree[], queue: Queue): 
 function ReadAloud({ lines }: { lines: readonly string[] }) {
   if (lines.length === 0) return null
   return (
-    <p className="read-aloud">
+    <p className={`read-aloud ${lines.length > 1 ? 'read-aloud-many' : ''}`}>
       <Icon name="hand" />
       <span>
         {lines.map((line) => (
@@ -382,7 +382,7 @@ function Chips({ trees, draft, onTrees }: { trees: readonly QueueTree[]; draft: 
       {trees.length > CHIPS_MOST && (
         <li className="chips-rest">
           <button type="button" {...toggle} aria-expanded={isAll}>
-            <b>{isAll ? 'Show fewer' : `and ${trees.length - shown.length} more`}</b>
+            <b>{isAll ? 'Fewer' : `and ${trees.length - shown.length} more`}</b>
             <Icon name={isAll ? 'up' : 'down'} />
           </button>
         </li>
