@@ -8,12 +8,14 @@ import {
   type Sequelize,
 } from 'sequelize'
 import type { BathStir } from '@/models/bath-stir'
+import { flag } from '@/models/columns'
 
 export class Bath extends Model<InferAttributes<Bath>, InferCreationAttributes<Bath>> {
   declare id: string
   declare name: string
   declare kind: 'face' | 'backup'
   declare retiredAt: CreationOptional<number | null>
+  declare isDemo: CreationOptional<boolean>
   declare createdAt: number
 
   declare stirs?: NonAttribute<BathStir[]>
@@ -25,6 +27,7 @@ export class Bath extends Model<InferAttributes<Bath>, InferCreationAttributes<B
         name: { type: DataTypes.TEXT, allowNull: false },
         kind: { type: DataTypes.TEXT, allowNull: false },
         retiredAt: { type: DataTypes.INTEGER },
+        isDemo: { ...flag('isDemo'), defaultValue: false },
         createdAt: { type: DataTypes.INTEGER, allowNull: false },
       },
       { sequelize, modelName: 'Bath', tableName: 'baths', underscored: true, timestamps: false },

@@ -1,4 +1,5 @@
 import { DataTypes, Model, type CreationOptional, type InferAttributes, type InferCreationAttributes, type Sequelize } from 'sequelize'
+import type { LengthUnit, MassUnit, TempUnit } from '@/lib/format/units'
 import { flag } from '@/models/columns'
 
 export class Foundry extends Model<InferAttributes<Foundry>, InferCreationAttributes<Foundry>> {
@@ -7,6 +8,15 @@ export class Foundry extends Model<InferAttributes<Foundry>, InferCreationAttrib
   declare timeZone: string
   declare altitudeM: number
   declare isDemo: CreationOptional<boolean>
+  declare tempUnit: CreationOptional<TempUnit>
+  declare massUnit: CreationOptional<MassUnit>
+  declare lengthUnit: CreationOptional<LengthUnit>
+  declare bandLowTempC: CreationOptional<number>
+  declare bandHighTempC: CreationOptional<number>
+  declare bandLowRhPct: CreationOptional<number>
+  declare bandHighRhPct: CreationOptional<number>
+  /** When the first run was ended by its owner; null until then. */
+  declare setUpAt: CreationOptional<number | null>
   declare createdAt: number
 
   static initialize(sequelize: Sequelize): typeof Foundry {
@@ -17,6 +27,14 @@ export class Foundry extends Model<InferAttributes<Foundry>, InferCreationAttrib
         timeZone: { type: DataTypes.TEXT, allowNull: false },
         altitudeM: { type: DataTypes.DOUBLE, allowNull: false },
         isDemo: { ...flag('isDemo'), defaultValue: false },
+        tempUnit: { type: DataTypes.TEXT, allowNull: false, defaultValue: 'degC' },
+        massUnit: { type: DataTypes.TEXT, allowNull: false, defaultValue: 'kg' },
+        lengthUnit: { type: DataTypes.TEXT, allowNull: false, defaultValue: 'mm' },
+        bandLowTempC: { type: DataTypes.DOUBLE, allowNull: false, defaultValue: 20 },
+        bandHighTempC: { type: DataTypes.DOUBLE, allowNull: false, defaultValue: 23 },
+        bandLowRhPct: { type: DataTypes.DOUBLE, allowNull: false, defaultValue: 45 },
+        bandHighRhPct: { type: DataTypes.DOUBLE, allowNull: false, defaultValue: 58 },
+        setUpAt: { type: DataTypes.INTEGER },
         createdAt: { type: DataTypes.INTEGER, allowNull: false },
       },
       { sequelize, modelName: 'Foundry', tableName: 'foundry', underscored: true, timestamps: false },

@@ -1,12 +1,15 @@
 import { database, inTransaction } from '@/db/connection'
+import { Backup } from '@/models/backup'
 import { Bath } from '@/models/bath'
 import { BathStir } from '@/models/bath-stir'
+import { Closure } from '@/models/closure'
 import { Coat } from '@/models/coat'
 import { CoatLook } from '@/models/coat-look'
 import { Delivery } from '@/models/delivery'
 import { DoseHour } from '@/models/dose-hour'
 import { FanHours } from '@/models/fan-hours'
 import { Foundry } from '@/models/foundry'
+import { FoundryEvent } from '@/models/foundry-event'
 import { Hold } from '@/models/hold'
 import { JobRun } from '@/models/job-run'
 import { LookOver } from '@/models/look-over'
@@ -39,6 +42,7 @@ import { Work } from '@/models/work'
 const models = [
   Foundry,
   ShiftHours,
+  Closure,
   Member,
   Session,
   SignInWait,
@@ -71,6 +75,8 @@ const models = [
   PushSubscription,
   Delivery,
   JobRun,
+  FoundryEvent,
+  Backup,
 ]
 for (const model of models) model.initialize(database)
 
@@ -125,6 +131,7 @@ Release.belongsTo(Tree, { as: 'tree', foreignKey: 'treeId' })
 Release.belongsTo(Member, { as: 'releaser', foreignKey: 'releasedBy' })
 TreeEvent.belongsTo(Tree, { as: 'tree', foreignKey: 'treeId' })
 TreeEvent.belongsTo(Member, { as: 'member', foreignKey: 'memberId' })
+FoundryEvent.belongsTo(Member, { as: 'member', foreignKey: 'memberId' })
 TreeWatch.belongsTo(Tree, { as: 'tree', foreignKey: 'treeId' })
 TreeWatch.belongsTo(Member, { as: 'member', foreignKey: 'memberId' })
 Notice.belongsTo(Tree, { as: 'tree', foreignKey: 'treeId' })
@@ -138,6 +145,7 @@ export {
   inTransaction,
   Foundry,
   ShiftHours,
+  Closure,
   Member,
   Session,
   SignInWait,
@@ -170,4 +178,6 @@ export {
   PushSubscription,
   Delivery,
   JobRun,
+  FoundryEvent,
+  Backup,
 }

@@ -9,6 +9,7 @@ import {
 } from 'sequelize'
 import type { FanHours } from '@/models/fan-hours'
 import type { Sensor } from '@/models/sensor'
+import { flag } from '@/models/columns'
 
 export class Place extends Model<InferAttributes<Place>, InferCreationAttributes<Place>> {
   declare id: string
@@ -17,6 +18,7 @@ export class Place extends Model<InferAttributes<Place>, InferCreationAttributes
   declare airSpeedFansOffMps: number
   declare sensorId: number
   declare retiredAt: CreationOptional<number | null>
+  declare isDemo: CreationOptional<boolean>
   declare createdAt: number
 
   declare sensor?: NonAttribute<Sensor>
@@ -31,6 +33,7 @@ export class Place extends Model<InferAttributes<Place>, InferCreationAttributes
         airSpeedFansOffMps: { type: DataTypes.DOUBLE, allowNull: false },
         sensorId: { type: DataTypes.INTEGER, allowNull: false },
         retiredAt: { type: DataTypes.INTEGER },
+        isDemo: { ...flag('isDemo'), defaultValue: false },
         createdAt: { type: DataTypes.INTEGER, allowNull: false },
       },
       { sequelize, modelName: 'Place', tableName: 'places', underscored: true, timestamps: false },

@@ -16,6 +16,8 @@ export class RecipeVersion extends Model<InferAttributes<RecipeVersion>, InferCr
   declare version: number
   /** Null until somebody has checked the needs against finished coats. */
   declare calibratedAt: CreationOptional<number | null>
+  /** Why this version, in its maker's words. */
+  declare note: CreationOptional<string>
   declare createdBy: CreationOptional<string | null>
   declare createdAt: number
 
@@ -29,6 +31,7 @@ export class RecipeVersion extends Model<InferAttributes<RecipeVersion>, InferCr
         recipeId: { type: DataTypes.TEXT, allowNull: false },
         version: { type: DataTypes.INTEGER, allowNull: false },
         calibratedAt: { type: DataTypes.INTEGER },
+        note: { type: DataTypes.TEXT, allowNull: false, defaultValue: '' },
         createdBy: { type: DataTypes.TEXT },
         createdAt: { type: DataTypes.INTEGER, allowNull: false },
       },

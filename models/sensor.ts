@@ -9,12 +9,14 @@ import {
 } from 'sequelize'
 import type { Place } from '@/models/place'
 import type { SensorToken } from '@/models/sensor-token'
+import { flag } from '@/models/columns'
 
 export class Sensor extends Model<InferAttributes<Sensor>, InferCreationAttributes<Sensor>> {
   declare id: CreationOptional<number>
   declare name: string
   declare kind: 'logger' | 'wall hygrometer'
   declare retiredAt: CreationOptional<number | null>
+  declare isDemo: CreationOptional<boolean>
   declare createdAt: number
 
   declare tokens?: NonAttribute<SensorToken[]>
@@ -27,6 +29,7 @@ export class Sensor extends Model<InferAttributes<Sensor>, InferCreationAttribut
         name: { type: DataTypes.TEXT, allowNull: false },
         kind: { type: DataTypes.TEXT, allowNull: false },
         retiredAt: { type: DataTypes.INTEGER },
+        isDemo: { ...flag('isDemo'), defaultValue: false },
         createdAt: { type: DataTypes.INTEGER, allowNull: false },
       },
       { sequelize, modelName: 'Sensor', tableName: 'sensors', underscored: true, timestamps: false },

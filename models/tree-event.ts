@@ -17,6 +17,8 @@ export class TreeEvent extends Model<InferAttributes<TreeEvent>, InferCreationAt
   declare treeId: string
   declare kind: string
   declare memberId: CreationOptional<string | null>
+  /** Browser and system of the member, in words; empty for Kilnward itself. */
+  declare device: CreationOptional<string>
   declare at: number
   declare detail: Record<string, unknown>
 
@@ -30,6 +32,7 @@ export class TreeEvent extends Model<InferAttributes<TreeEvent>, InferCreationAt
         treeId: { type: DataTypes.TEXT, allowNull: false },
         kind: { type: DataTypes.TEXT, allowNull: false },
         memberId: { type: DataTypes.TEXT },
+        device: { type: DataTypes.TEXT, allowNull: false, defaultValue: '' },
         at: { type: DataTypes.INTEGER, allowNull: false },
         detail: json('detail'),
       },

@@ -40,6 +40,7 @@ export class Tree extends Model<InferAttributes<Tree>, InferCreationAttributes<T
   declare intakePassedBy: CreationOptional<string | null>
   declare releasedAt: CreationOptional<number | null>
   declare scrappedAt: CreationOptional<number | null>
+  declare isDemo: CreationOptional<boolean>
   declare createdBy: CreationOptional<string | null>
   declare createdAt: number
   declare updatedAt: number
@@ -75,6 +76,7 @@ export class Tree extends Model<InferAttributes<Tree>, InferCreationAttributes<T
         intakePassedBy: { type: DataTypes.TEXT },
         releasedAt: { type: DataTypes.INTEGER },
         scrappedAt: { type: DataTypes.INTEGER },
+        isDemo: { ...flag('isDemo'), defaultValue: false },
         createdBy: { type: DataTypes.TEXT },
         createdAt: { type: DataTypes.INTEGER, allowNull: false },
         updatedAt: { type: DataTypes.INTEGER, allowNull: false },

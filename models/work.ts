@@ -1,9 +1,19 @@
-import { DataTypes, Model, type InferAttributes, type InferCreationAttributes, type NonAttribute, type Sequelize } from 'sequelize'
+import {
+  DataTypes,
+  Model,
+  type CreationOptional,
+  type InferAttributes,
+  type InferCreationAttributes,
+  type NonAttribute,
+  type Sequelize,
+} from 'sequelize'
 import type { Section } from '@/models/section'
+import { flag } from '@/models/columns'
 
 export class Work extends Model<InferAttributes<Work>, InferCreationAttributes<Work>> {
   declare id: string
   declare title: string
+  declare isDemo: CreationOptional<boolean>
   declare createdAt: number
 
   declare sections?: NonAttribute<Section[]>
@@ -13,6 +23,7 @@ export class Work extends Model<InferAttributes<Work>, InferCreationAttributes<W
       {
         id: { type: DataTypes.TEXT, primaryKey: true, allowNull: false },
         title: { type: DataTypes.TEXT, allowNull: false },
+        isDemo: { ...flag('isDemo'), defaultValue: false },
         createdAt: { type: DataTypes.INTEGER, allowNull: false },
       },
       { sequelize, modelName: 'Work', tableName: 'works', underscored: true, timestamps: false },

@@ -7,17 +7,13 @@ import { Key } from '@/app/_components/key'
 import { LiveClock } from '@/app/_components/live-clock'
 import { ThemeKey } from '@/app/_components/theme-switch'
 import { Wordmark } from '@/app/_components/wordmark'
-
-const TABS = [
-  { href: '/floor', word: 'Floor' },
-  { href: '/trees', word: 'Trees' },
-  { href: '/burnout', word: 'Burnout' },
-] as const
+import { currentPage, FOUNDRY_PAGES, OFFICE_TABS, pagesFor } from '@/lib/members/office-pages'
+import type { Role } from '@/lib/members/roles'
 
 export type OfficeBarProps = {
   foundryName: string
   timeZone: string
-  member: { name: string; role: string }
+  member: { name: string; role: Role }
   /** Server time at which the page was made, epoch ms. */
   serverNow: number
 }
@@ -25,14 +21,15 @@ export type OfficeBarProps = {
 /** Frame of the office pages: the tabs, whose page it is, the time, and the way out. */
 export function OfficeBar({ foundryName, timeZone, member, serverNow }: OfficeBarProps) {
   const path = usePathname()
+  const current = currentPage(path, FOUNDRY_PAGES) ? '/settings' : currentPage(path, OFFICE_TABS)?.href
   return (
     <div className="office-bar">
       <Link className="flex items-center" href="/floor" aria-label="Kilnward, to the floor">
         <Wordmark height={36} />
       </Link>
       <nav aria-label="Pages">
-        {TABS.map(({ href, word }) => (
-          <Link key={href} href={href} prefetch={false} aria-current={path === href || path.startsWith(`${href}/`) ? 'page' : undefined}>
+        {pagesFor(member.role, OFFICE_TABS).map(({ href, word }) => (
+          <Link key={href} href={href} prefetch={false} aria-current={href === current ? 'page' : undefined}>
             {word}
           </Link>
         ))}

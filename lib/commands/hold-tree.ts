@@ -23,7 +23,7 @@ export function holdTree(treeId: string, reason: string, { member, clock }: By):
     }
     const now = clock.now()
     const hold = await Hold.create({ id: newId(now), treeId, reason, heldBy: member.id, heldAt: now })
-    await addTreeEvent(treeId, 'held', { memberId: member.id, at: now, text: `Held: ${reason}` })
+    await addTreeEvent(treeId, 'held', { by: member, at: now, text: `Held: ${reason}` })
     return { holdId: hold.id }
   })
 }
@@ -40,6 +40,6 @@ export function liftHold(treeId: string, reason: string, { member, clock }: By):
     if (!open) throw new AppError('conflict', `${tree.tag} is not held.`)
     const now = clock.now()
     await open.update({ liftedBy: member.id, liftedAt: now, liftReason: reason })
-    await addTreeEvent(treeId, 'hold lifted', { memberId: member.id, at: now, text: `Hold lifted: ${reason}` })
+    await addTreeEvent(treeId, 'hold lifted', { by: member, at: now, text: `Hold lifted: ${reason}` })
   })
 }

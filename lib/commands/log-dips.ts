@@ -155,7 +155,7 @@ async function putCoatsOn(run: DipRun, member: Actor, now: number): Promise<DipR
       forecastP90At: call.safeAt,
     })
     await addTreeEvent(tree.id, 'coat on', {
-      memberId: member.id,
+      by: member,
       at: now,
       text: `Coat ${coatNumber} dipped${deviations.length > 0 ? `: ${deviations.join(', ')}${reason ? ` (${reason})` : ''}` : ''}.`,
       coatId: coat.id,

@@ -25,7 +25,7 @@ export function lookOver(treeId: string, note: string, { member, clock }: { memb
     const wasDriedOut = derived.call !== null && isDriedOut(derived.facts, derived.call)
     await LookOver.create({ id: newId(now), treeId, coatId: derived.newest.id, note, wasDriedOut, memberId: member.id, lookedOverAt: now })
     await addTreeEvent(treeId, 'looked over', {
-      memberId: member.id,
+      by: member,
       at: now,
       text: `Looked over${wasDriedOut ? '' : ' while it was still drying out'}${note ? `: ${note}` : ', nothing found.'}`,
     })

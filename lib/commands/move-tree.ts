@@ -28,6 +28,6 @@ export function moveTree(treeId: string, placeId: string, { member, clock }: { m
     // A dip may stand up to two minutes ahead of us: the newest stay has to stay the last one.
     const since = Math.max(now, (current?.since ?? 0) + 1)
     await TreePlace.create({ id: newId(now), treeId, placeId, since, memberId: member.id })
-    await addTreeEvent(treeId, 'moved', { memberId: member.id, at: now, text: `Moved to ${place.name}.`, placeId })
+    await addTreeEvent(treeId, 'moved', { by: member, at: now, text: `Moved to ${place.name}.`, placeId })
   })
 }

@@ -27,7 +27,7 @@ export function passIntake(treeId: string, intake: IntakeInput, { member, clock 
       const text = isWhole
         ? `Intake passed: wax ${intake.waxSurface}, at room temperature, cup firm, vents and core pins in.`
         : 'Intake opened again.'
-      await addTreeEvent(treeId, 'intake passed', { memberId: member.id, at: now, text })
+      await addTreeEvent(treeId, 'intake passed', { by: member, at: now, text })
     }
     return isWhole
   })

@@ -35,7 +35,7 @@ export function recordLook(
       forecastP90At: derived.call.safeAt,
     })
     await addTreeEvent(treeId, 'looked at', {
-      memberId: member.id,
+      by: member,
       at: now,
       text: `Coat ${derived.newest.number}: ${verdict}.`,
       coatId: derived.newest.id,

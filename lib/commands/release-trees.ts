@@ -40,7 +40,7 @@ export function releaseTrees(
       await Release.create({ id: newId(now), treeId, releasedBy: member.id, releasedAt: now, confirmedBy })
       await Tree.update({ releasedAt: now, updatedAt: now }, { where: { id: treeId } })
       await addTreeEvent(treeId, 'released', {
-        memberId: member.id,
+        by: member,
         at: now,
         text: `Released to burnout${confirmedBy ? `, dryness confirmed by ${confirmedBy}` : ''}.`,
       })
@@ -64,6 +64,6 @@ export function withdrawRelease(treeId: string, reason: string, { member, clock 
     await tree.update({ releasedAt: null, updatedAt: now })
     const newest = await Coat.findOne({ where: { treeId, withdrawnAt: null }, order: [['number', 'DESC']] })
     if (newest) await reopenCoat(newest.id)
-    await addTreeEvent(treeId, 'release taken back', { memberId: member.id, at: now, text: `Release taken back: ${reason}` })
+    await addTreeEvent(treeId, 'release taken back', { by: member, at: now, text: `Release taken back: ${reason}` })
   })
 }

@@ -30,10 +30,12 @@ export function createTree(input: TreeInput, { member, clock }: By): Promise<{ t
     await requireRecipeAndPlace(input)
     const { pieces, placeId, ...columns } = input
     const treeId = newId(now)
-    await Tree.create({ ...columns, id: treeId, createdBy: member.id, createdAt: now, updatedAt: now })
+    await Tree.create({ ...columns, id: treeId, isDemo: member.isDemo ?? false, createdBy: member.id, createdAt: now, updatedAt: now })
     await TreePlace.create({ id: newId(now), treeId, placeId, since: now, memberId: member.id })
-    for (const [index, piece] of pieces.entries()) await TreePiece.create({ treeId, pieceId: await addPiece(piece, index, now) })
-    await addTreeEvent(treeId, 'tree added', { memberId: member.id, at: now, text: 'Tree added.' })
+    for (const [index, piece] of pieces.entries()) {
+      await TreePiece.create({ treeId, pieceId: await addPiece(piece, index, { member, now }) })
+    }
+    await addTreeEvent(treeId, 'tree added', { by: member, at: now, text: 'Tree added.' })
     return { treeId, tag: input.tag }
   })
 }
@@ -59,8 +61,8 @@ export function editTree(treeId: string, input: TreeInput, { member, clock }: By
     const before = Object.fromEntries(Object.keys(columns).map((key) => [key, tree.get(key)]))
     await tree.update({ ...columns, updatedAt: now })
     await moveTree(treeId, placeId, { member, clock })
-    if (coatsOn === 0) await replacePieces(treeId, pieces, now)
-    await addTreeEvent(treeId, 'tree edited', { memberId: member.id, at: now, text: 'Tree edited.', before, after: columns })
+    if (coatsOn === 0) await replacePieces(treeId, pieces, { member, now })
+    await addTreeEvent(treeId, 'tree edited', { by: member, at: now, text: 'Tree edited.', before, after: columns })
   })
 }
 
@@ -79,21 +81,25 @@ async function requireRecipeAndPlace(input: TreeInput): Promise<void> {
   if (!place || place.retiredAt !== null) refuseField('placeId', 'There is no such place.')
 }
 
-async function replacePieces(treeId: string, pieces: TreeInput['pieces'], now: number): Promise<void> {
+async function replacePieces(treeId: string, pieces: TreeInput['pieces'], by: { member: Actor; now: number }): Promise<void> {
   const before = await TreePiece.findAll({ where: { treeId } })
   await TreePiece.destroy({ where: { treeId } })
   for (const { pieceId } of before) {
     const recasts = await Piece.count({ where: { recastOf: pieceId } })
     if (recasts === 0) await Piece.destroy({ where: { id: pieceId } })
   }
-  for (const [index, piece] of pieces.entries()) await TreePiece.create({ treeId, pieceId: await addPiece(piece, index, now) })
+  for (const [index, piece] of pieces.entries()) await TreePiece.create({ treeId, pieceId: await addPiece(piece, index, by) })
 }
 
 /** One casting of a section; the work and the section are made when they are new. */
-async function addPiece(input: TreeInput['pieces'][number], index: number, now: number): Promise<string> {
+async function addPiece(
+  input: TreeInput['pieces'][number],
+  index: number,
+  { member, now }: { member: Actor; now: number },
+): Promise<string> {
   const [work] = await Work.findOrCreate({
     where: { title: input.workTitle },
-    defaults: { id: newId(now), title: input.workTitle, createdAt: now },
+    defaults: { id: newId(now), title: input.workTitle, isDemo: member.isDemo ?? false, createdAt: now },
   })
   const [section] = await Section.findOrCreate({
     where: { workId: work.id, name: input.sectionName },

@@ -10,6 +10,6 @@ export function scrapTree(treeId: string, reason: string, { member, clock }: { m
     const tree = await openTree(treeId)
     const now = clock.now()
     await tree.update({ scrappedAt: now, updatedAt: now })
-    await addTreeEvent(treeId, 'scrapped', { memberId: member.id, at: now, text: `Scrapped: ${reason}` })
+    await addTreeEvent(treeId, 'scrapped', { by: member, at: now, text: `Scrapped: ${reason}` })
   })
 }

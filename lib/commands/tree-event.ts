@@ -1,8 +1,10 @@
+import type { Actor } from '@/lib/members/actor'
 import { TreeEvent } from '@/models'
 
 export type TreeEventKind =
   | 'tree added'
   | 'tree edited'
+  | 'recipe moved'
   | 'intake passed'
   | 'coat on'
   | 'coat taken back'
@@ -16,11 +18,11 @@ export type TreeEventKind =
   | 'scrapped'
   | 'notice'
 
-/** Adds a line to a tree's history. `text` is what a person reads there; the rest is for later use. */
+/** Adds a line to a tree's history; `by` null is Kilnward itself. `text` is what a person reads there; the rest is for later use. */
 export async function addTreeEvent(
   treeId: string,
   kind: TreeEventKind,
-  { memberId, at, text, ...detail }: { memberId: string | null; at: number; text: string } & Record<string, unknown>,
+  { by, at, text, ...detail }: { by: Actor | null; at: number; text: string } & Record<string, unknown>,
 ): Promise<void> {
-  await TreeEvent.create({ treeId, kind, memberId, at, detail: { text, ...detail } })
+  await TreeEvent.create({ treeId, kind, memberId: by?.id ?? null, device: by?.device ?? '', at, detail: { text, ...detail } })
 }

@@ -56,7 +56,7 @@ async function takeBack(coatId: string, reason: string | undefined, member: Acto
   const below = await Coat.findOne({ where: { treeId: coat.treeId, number: coat.number - 1, withdrawnAt: null } })
   if (below) await reopenCoat(below.id)
   await addTreeEvent(coat.treeId, 'coat taken back', {
-    memberId: member.id,
+    by: member,
     at: now,
     text: `Coat ${coat.number} taken back${reason ? `: ${reason}` : ''}.`,
     coatId: coat.id,

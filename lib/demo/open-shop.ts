@@ -52,19 +52,27 @@ export async function openShop({
   passwordHashes: ReadonlyMap<DemoPersonKey, string>
 }): Promise<DemoShop> {
   const id = () => newId(createdAt)
-  await Foundry.create({ id: 1, name: DEMO_NAME, timeZone: DEMO_TIME_ZONE, altitudeM: DEMO_ALTITUDE_M, isDemo: true, createdAt })
+  await Foundry.create({
+    id: 1,
+    name: DEMO_NAME,
+    timeZone: DEMO_TIME_ZONE,
+    altitudeM: DEMO_ALTITUDE_M,
+    isDemo: true,
+    setUpAt: createdAt,
+    createdAt,
+  })
   await ShiftHoursRow.bulkCreate([...DEMO_SHIFTS])
 
   const people = new Map<DemoPersonKey, Actor>()
   for (const { key, name, role, email } of DEMO_PEOPLE) {
-    const member = { id: id(), name, role }
+    const member = { id: id(), name, role, isDemo: true }
     await Member.create({ ...member, email, passwordHash: passwordHashes.get(key) ?? '', createdAt })
     people.set(key, member)
   }
 
-  const shellRoom = await Sensor.create({ name: DEMO_LOGGERS['shell room'], kind: 'logger', createdAt })
-  const netLoft = await Sensor.create({ name: DEMO_LOGGERS['net loft'], kind: 'logger', createdAt })
-  const wall = await Sensor.create({ name: DEMO_WALL_HYGROMETER, kind: 'wall hygrometer', createdAt })
+  const shellRoom = await Sensor.create({ name: DEMO_LOGGERS['shell room'], kind: 'logger', isDemo: true, createdAt })
+  const netLoft = await Sensor.create({ name: DEMO_LOGGERS['net loft'], kind: 'logger', isDemo: true, createdAt })
+  const wall = await Sensor.create({ name: DEMO_WALL_HYGROMETER, kind: 'wall hygrometer', isDemo: true, createdAt })
   const sensorIds = { 'shell room': shellRoom.id, 'net loft': netLoft.id }
   const clock: Clock = { now: () => createdAt }
   const sensorTokens: DemoShop['sensorTokens'] = []
@@ -77,16 +85,18 @@ export async function openShop({
   for (const key of DEMO_PLACE_KEYS) {
     const { air, fanHours, ...place } = DEMO_PLACES[key]
     const placeId = placeIds[key]
-    await Place.create({ id: placeId, ...place, sensorId: air === null ? wall.id : sensorIds[air], createdAt })
+    await Place.create({ id: placeId, ...place, sensorId: air === null ? wall.id : sensorIds[air], isDemo: true, createdAt })
     await FanHoursRow.bulkCreate(fanHours.map((row) => ({ placeId, ...row })))
   }
 
   const bathIds = { face: id(), backup: id() }
-  for (const kind of ['face', 'backup'] as const) await Bath.create({ id: bathIds[kind], name: DEMO_BATH_NAMES[kind], kind, createdAt })
+  for (const kind of ['face', 'backup'] as const) {
+    await Bath.create({ id: bathIds[kind], name: DEMO_BATH_NAMES[kind], kind, isDemo: true, createdAt })
+  }
 
   const recipeVersionIds = { six: id(), eight: id(), eleven: id() }
   for (const key of ['six', 'eight', 'eleven'] as const) {
-    const recipe = await Recipe.create({ id: id(), name: DEMO_RECIPES[key].name, createdAt })
+    const recipe = await Recipe.create({ id: id(), name: DEMO_RECIPES[key].name, isDemo: true, createdAt })
     const recipeVersionId = recipeVersionIds[key]
     const createdBy = people.get('ines')?.id ?? null
     await RecipeVersion.create({ id: recipeVersionId, recipeId: recipe.id, version: 1, createdBy, createdAt })

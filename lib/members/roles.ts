@@ -28,10 +28,15 @@ const LOWEST_ROLE = {
   release: 'supervisor',
   correct: 'supervisor',
   recipes: 'supervisor',
+  works: 'supervisor',
   places: 'supervisor',
+  baths: 'supervisor',
   sensors: 'supervisor',
+  history: 'supervisor',
   people: 'owner',
   settings: 'owner',
+  /** Backups, the health page, demo data. */
+  upkeep: 'owner',
 } as const satisfies Record<string, Role>
 
 export type Act = keyof typeof LOWEST_ROLE

@@ -1,5 +1,6 @@
 import { stationPressurePa } from '@/lib/drying/air'
 import type { FanHours } from '@/lib/drying/types'
+import type { Units } from '@/lib/format/units'
 import type { ShiftHours as Hours } from '@/lib/schedule/shifts'
 import type { PlaceFacts } from '@/lib/trees/facts'
 import { FanHours as FanHoursRow, Foundry, Place, Sensor, ShiftHours } from '@/models'
@@ -9,7 +10,11 @@ export type FoundryFacts = {
   name: string
   timeZone: string
   pressurePa: number
+  /** The whole foundry is the demo; where only some data is, its rows are marked. */
   isDemo: boolean
+  units: Units
+  /** The room that the recipes were made for, °C and %. */
+  band: { lowTempC: number; highTempC: number; lowRhPct: number; highRhPct: number }
   shiftHours: Hours[]
   places: PlaceFacts[]
   sensors: { id: number; name: string; kind: 'logger' | 'wall hygrometer' }[]
@@ -33,6 +38,13 @@ export async function loadFoundry(): Promise<FoundryFacts> {
     timeZone: foundry.timeZone,
     pressurePa: stationPressurePa(foundry.altitudeM),
     isDemo: foundry.isDemo,
+    units: { temp: foundry.tempUnit, mass: foundry.massUnit, length: foundry.lengthUnit },
+    band: {
+      lowTempC: foundry.bandLowTempC,
+      highTempC: foundry.bandHighTempC,
+      lowRhPct: foundry.bandLowRhPct,
+      highRhPct: foundry.bandHighRhPct,
+    },
     shiftHours: shiftHours.map(({ weekday, opensMinute, closesMinute }) => ({ weekday, opensMinute, closesMinute })),
     places: places.map((place) => ({
       id: place.id,

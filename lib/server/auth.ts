@@ -12,12 +12,12 @@ import { env } from '@/lib/core/env'
 import { AppError } from '@/lib/core/errors'
 import { log } from '@/lib/core/log'
 import { ownPath } from '@/lib/members/own-path'
-import { may, rolesFor, type Act, type Role } from '@/lib/members/roles'
-import { sessionMember } from '@/lib/queries/session-member'
+import { may, rolesFor, type Act } from '@/lib/members/roles'
+import { sessionMember, type SessionMember } from '@/lib/queries/session-member'
 import { processWide } from '@/lib/server/process-wide'
 
 /** The person behind a request, as the database knows them at this moment. */
-export type Member = { id: string; name: string; email: string; role: Role; sessionId: string }
+export type Member = SessionMember
 
 const credentials = z.object({ email: z.string().min(1).max(254), password: z.string().min(1).max(1000) })
 

@@ -46,7 +46,7 @@ export async function buildMember(role: Role = 'operator', name = `Member ${next
 
 /** A foundry at sea level with one sensor, one place in 1.0 m/s air day and night, and two baths. */
 export async function buildFoundry({ timeZone = 'Europe/London' } = {}) {
-  await Foundry.create({ id: 1, name: 'Test foundry', timeZone, altitudeM: 0, isDemo: false, createdAt: NOW })
+  await Foundry.create({ id: 1, name: 'Test foundry', timeZone, altitudeM: 0, isDemo: false, setUpAt: NOW, createdAt: NOW })
   await ShiftHours.bulkCreate([1, 2, 3, 4, 5].map((weekday) => ({ weekday, opensMinute: 420, closesMinute: 1020 })))
   const sensor = await Sensor.create({ name: 'Shell room', kind: 'logger', createdAt: NOW })
   const place = await buildPlace({ sensorId: sensor.id })

@@ -122,8 +122,11 @@ describe('models and the schema', async () => {
   })
 
   it.each(tables)('agree on the columns of $name', async ({ name }) => {
-    const columns = await rows<Column>(`SELECT * FROM pragma_table_info('${name}')`)
-    const attributes = Object.values(byTable.get(name)!.getAttributes())
+    // By name: a column that came later stands last in its table, and in the model where it belongs.
+    const columns = await rows<Column>(`SELECT * FROM pragma_table_info('${name}') ORDER BY name`)
+    const attributes = Object.values(byTable.get(name)!.getAttributes()).toSorted((one, other) =>
+      (one.field ?? '') < (other.field ?? '') ? -1 : 1,
+    )
     expect(
       attributes.map((attribute) => ({
         name: attribute.field,

@@ -2,6 +2,7 @@ import { beforeEach, describe, expect, it } from 'vitest'
 import { endMemberSessions } from '@/lib/commands/end-member-sessions'
 import { endSession } from '@/lib/commands/end-session'
 import { SESSION_MS, signIn } from '@/lib/commands/sign-in'
+import { SI_UNITS } from '@/lib/format/units'
 import { sessionMember } from '@/lib/queries/session-member'
 import { Member, Session, SignInWait } from '@/models'
 import { seedMember, type SeededMember } from '@/tests/setup/server'
@@ -121,6 +122,10 @@ describe('a session', () => {
       email: member.email,
       role: 'operator',
       sessionId,
+      device: 'Unknown browser',
+      isDemo: false,
+      mustChangePassword: false,
+      units: SI_UNITS,
     })
     now += 1
     expect(await sessionMember(sessionId, { clock })).toBeNull()

@@ -24,10 +24,14 @@ const WHO_MAY: Record<Act, Role[]> = {
   release: OFFICE,
   correct: OFFICE,
   recipes: OFFICE,
+  works: OFFICE,
   places: OFFICE,
+  baths: OFFICE,
   sensors: OFFICE,
+  history: OFFICE,
   people: OWNER,
   settings: OWNER,
+  upkeep: OWNER,
 }
 const isAct = (name: string): name is Act => name in WHO_MAY
 

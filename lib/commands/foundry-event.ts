@@ -1,0 +1,43 @@
+import type { Actor } from '@/lib/members/actor'
+import { FoundryEvent } from '@/models'
+
+/** What is not a tree and can change. */
+export type EventSubject = {
+  type: 'foundry' | 'hours' | 'closure' | 'place' | 'bath' | 'sensor' | 'recipe' | 'work' | 'member' | 'backup' | 'demo'
+  /** Empty where there is only one. */
+  id?: string
+  /** Its name at this moment. */
+  name?: string
+}
+
+/**
+ * Adds a line to the foundry's history: who changed what, when and from which device. Takes part in the caller's transaction.
+ *
+ * @param event.kind what happened, in a few plain words ('place changed'); the history is filtered by it.
+ * @param event.text what a person reads, one sentence.
+ * @param event.before and `after`: only the fields that changed. Never a password, a token or a hash.
+ */
+export async function addFoundryEvent(
+  subject: EventSubject,
+  event: {
+    kind: string
+    by: Actor | null
+    at: number
+    text: string
+    before?: Record<string, unknown>
+    after?: Record<string, unknown>
+  },
+): Promise<void> {
+  const { kind, by, at, ...detail } = event
+  await FoundryEvent.create({
+    kind,
+    subjectType: subject.type,
+    subjectId: subject.id ?? '',
+    subjectName: subject.name ?? '',
+    memberId: by?.id ?? null,
+    device: by?.device ?? '',
+    at,
+    detail,
+    isDemo: by?.isDemo ?? false,
+  })
+}
