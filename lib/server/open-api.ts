@@ -7,7 +7,11 @@ import { PROBLEMS, problemDocument, problemType, type ProblemCode } from '@/lib/
 type Json = Record<string, unknown>
 
 /** An OpenAPI 3.1 document; the parts that pages and tests walk through are typed, the rest is JSON. */
-export type OpenApiDocument = { openapi: '3.1.0'; paths: Record<string, Record<string, Operation>> } & Json
+export type OpenApiDocument = {
+  openapi: '3.1.0'
+  tags: { name: string; description: string }[]
+  paths: Record<string, Record<string, Operation>>
+} & Json
 export type Operation = { operationId: string; summary: string; tags: string[] } & Json
 
 export const API_VERSION = '1'

@@ -58,9 +58,11 @@ describe('the description of the API', () => {
     const row = DOORS.find((each) => each.method === door.method && each.route === route)
     const operation = document.paths[door.path]?.[door.method.toLowerCase()]
     expect(row).toBeDefined()
-    const schemes = { anybody: [], sensor: [{ sensorToken: [] }] }
-    expect(operation?.['security']).toEqual(row && row.who in schemes ? schemes[row.who as keyof typeof schemes] : [{ session: [] }])
-    if (row && !(row.who in schemes)) expect(operation?.['description']).toContain(`the role ${row.who}`)
+    const open = { anybody: [[], 'Open to everybody.'], sensor: [[{ sensorToken: [] }], 'For a sensor'] }
+    const who = row?.who ?? 'anybody'
+    const [security, words] = who === 'anybody' || who === 'sensor' ? open[who] : [[{ session: [] }], `the role ${who}`]
+    expect(operation?.['security']).toEqual(security)
+    expect(operation?.['description']).toContain(words)
     expect(Object.keys(door.params ?? {})).toEqual([...door.path.matchAll(/\{(\w+)\}/g)].map(([, name]) => name))
   })
 
