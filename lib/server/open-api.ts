@@ -103,25 +103,24 @@ function securityOf({ who }: DoorDescription): Json[] {
   return [who === 'sensor' ? { sensorToken: [] } : { session: [] }]
 }
 
-function parametersOf({ params = {}, query = {}, headers = {}, method, who }: DoorDescription): Json[] {
+function parametersOf({ params, query, headers, method, who }: DoorDescription): Json[] {
   const isOwnOriginAsked = method !== 'GET' && who !== 'anybody' && who !== 'sensor'
-  const list = (place: string, named: NonNullable<DoorDescription['params']>) =>
-    Object.entries(named).map(([name, { schema, text }]) => ({
-      name,
-      in: place,
-      required: place === 'path' || !schema.safeParse(undefined).success,
-      description: text,
-      schema: schemaOf(schema, 'input'),
-    }))
+  const origin = { Origin: { schema: z.url(), text: "The program's own address. Browsers send it by themselves." } }
   return [
-    ...list('path', params),
-    ...list('query', query),
-    ...list('header', headers),
-    ...(isOwnOriginAsked
-      ? list('header', { Origin: { schema: z.url(), text: "The program's own address. Browsers send it by themselves." } })
-      : []),
+    ...parameters('path', params),
+    ...parameters('query', query),
+    ...parameters('header', { ...headers, ...(isOwnOriginAsked && origin) }),
   ]
 }
+
+const parameters = (place: 'path' | 'query' | 'header', named: DoorDescription['params'] = {}): Json[] =>
+  Object.entries(named).map(([name, { schema, text }]) => ({
+    name,
+    in: place,
+    required: place === 'path' || !schema.safeParse(undefined).success,
+    description: text,
+    schema: schemaOf(schema, 'input'),
+  }))
 
 function answerOf({ text, schema, example, headers = {} }: DoorAnswer): Json {
   return {

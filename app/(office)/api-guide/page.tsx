@@ -33,7 +33,7 @@ const PROBLEM = `{
 /** What to do about each refusal that a sensor can meet, beside what it means. */
 const WHAT_TO_DO: readonly { code: ProblemCode; act: string }[] = [
   { code: 'unauthenticated', act: 'Check the token. A revoked one, or one of a retired sensor, stays refused: make a new one.' },
-  { code: 'too_many_requests', act: 'Wait, then send all the rows that have gathered in one request.' },
+  { code: 'too_many_requests', act: 'Then send all the rows that have gathered in one request.' },
   { code: 'unavailable', act: 'Keep the rows, wait, send them again.' },
   { code: 'malformed', act: 'Mend the program: the body is not JSON.' },
   { code: 'unsupported_media_type', act: 'Send the header Content-Type: application/json.' },
@@ -61,7 +61,7 @@ export default async function ApiGuidePage() {
       <div className="api-guide">
         <Plate title="1. Get a token">
           <p>
-            Each sensor has its own token. On the page <Link href="/settings/sensors">Sensors</Link> choose the sensor, make a token, and
+            Each sensor has its own token. On the page <Link href="/settings/sensors" prefetch={false}>Sensors</Link> choose the sensor, make a token, and
             copy it: it is shown once. It begins with <code>kw_</code>, sends readings of this one sensor and opens nothing else. Keep it
             like a key; if it gets out, revoke it there and make another. In a shell, set it once for the lines below.
           </p>
@@ -125,7 +125,7 @@ export default async function ApiGuidePage() {
             </li>
             <li>
               <b>Late rows:</b> up to 31 days. The drying of every tree in that air is worked out anew from them; what was said on the floor
-              meanwhile stays in its history. Older rows come in as a file, on the page <Link href="/room">Room</Link>.
+              meanwhile stays in its history. Older rows come in as a file, on the page <Link href="/room" prefetch={false}>Room</Link>.
             </li>
             <li>
               After 30 minutes without a reading the trees of that room are shown as unknown, never as dry. A batch that comes late ends
