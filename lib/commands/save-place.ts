@@ -8,9 +8,9 @@ import { nameList } from '@/lib/format/name-list'
 import type { Actor } from '@/lib/members/actor'
 import { changedFields } from '@/lib/members/changed-fields'
 import { hangingTrees } from '@/lib/queries/hanging-trees'
-import type { PlaceInput } from '@/lib/room/place-input'
+import type { AirSince, PlaceInput } from '@/lib/room/place-input'
 import { weekWords } from '@/lib/schedule/week-words'
-import { FanHours, inTransaction, Place, Sensor } from '@/models'
+import { FanHours, FormerAir, inTransaction, Place, Sensor } from '@/models'
 
 type By = { member: Actor; clock: Clock }
 
@@ -37,11 +37,12 @@ export function createPlace(input: PlaceInput, { member, clock }: By): Promise<{
 }
 
 /**
- * Changes a place in use.
+ * Changes a place in use. From now on, another air leaves what has dried so far as it was; as a correction, every coat that is still open
+ * is worked out again with it.
  *
  * @throws {AppError} not_found; conflict when it is retired, with `fields` for a name that is taken or a sensor that is not in use.
  */
-export function changePlace(placeId: string, input: PlaceInput, { member, clock }: By): Promise<void> {
+export function changePlace(placeId: string, input: PlaceInput, since: AirSince, { member, clock }: By): Promise<void> {
   return inTransaction(async () => {
     const now = clock.now()
     const place = await placeInUse(placeId)
@@ -52,12 +53,14 @@ export function changePlace(placeId: string, input: PlaceInput, { member, clock 
     const { fans, ...columns } = input
     const changed = changedFields(inWords(place, formerFans, formerSensor.name), inWords(input, fans, sensor.name))
     if (Object.keys(changed.after).length === 0) return
+    const isOtherAir = Object.keys(changed.after).some((field) => field !== 'name')
+    if (isOtherAir && since === 'now') await keepFormerAir(place, formerFans, now)
     await place.update(columns)
     await FanHours.destroy({ where: { placeId } })
     await FanHours.bulkCreate(fans.map((row) => ({ ...row, placeId })))
     await addFoundryEvent(
       { type: 'place', id: placeId, name: input.name },
-      { kind: 'place changed', by: member, at: now, text: `Place ${input.name} changed.`, ...changed },
+      { kind: 'place changed', by: member, at: now, text: changeText(input.name, isOtherAir ? since : null), ...changed },
     )
   })
 }
@@ -103,6 +106,17 @@ export function reusePlace(placeId: string, { member, clock }: By): Promise<void
       { kind: 'place in use again', by: member, at: clock.now(), text: `Place ${place.name} taken into use again.` },
     )
   })
+}
+
+function changeText(name: string, since: AirSince | null): string {
+  if (since === null) return `Place ${name} renamed.`
+  return since === 'now' ? `Place ${name} changed, from now on.` : `Place ${name} corrected; what hangs there was worked out again.`
+}
+
+async function keepFormerAir(place: Place, fans: readonly Fans[], until: number): Promise<void> {
+  const { airSpeedFansOnMps, airSpeedFansOffMps, sensorId } = place
+  const fanHours = fans.map(({ weekday, onMinute, offMinute }) => ({ weekday, onMinute, offMinute }))
+  await FormerAir.create({ id: newId(until), placeId: place.id, until, airSpeedFansOnMps, airSpeedFansOffMps, sensorId, fanHours })
 }
 
 async function placeInUse(placeId: string): Promise<Place> {

@@ -11,7 +11,7 @@ import {
   DEMO_PLACE_KEYS,
   DEMO_PLACES,
   DEMO_RECIPES,
-  DEMO_SHIFTS,
+  DEMO_CALENDAR,
   DEMO_TIME_ZONE,
   DEMO_WALL_HYGROMETER,
   type DemoBath,
@@ -61,7 +61,7 @@ export async function openShop({
     setUpAt: createdAt,
     createdAt,
   })
-  await ShiftHoursRow.bulkCreate([...DEMO_SHIFTS])
+  await ShiftHoursRow.bulkCreate([...DEMO_CALENDAR.hours])
 
   const people = new Map<DemoPersonKey, Actor>()
   for (const { key, name, role, email } of DEMO_PEOPLE) {

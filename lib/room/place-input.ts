@@ -34,6 +34,14 @@ export const placeInput = z.strictObject({
 })
 export type PlaceInput = z.infer<typeof placeInput>
 
+/**
+ * From when on a change of a place's air counts. 'now': the fans were turned, a sensor was moved; what has dried so far stands.
+ * 'always': the figures were wrong; what hangs there is worked out again, back to the change before.
+ */
+export const AIR_SINCE = ['now', 'always'] as const
+export const airSince = z.enum(AIR_SINCE, 'Say whether it was so before.')
+export type AirSince = z.infer<typeof airSince>
+
 /** A place's form as it stands in the fields. */
 export type PlaceFormValues = {
   name: string

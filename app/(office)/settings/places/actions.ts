@@ -4,7 +4,8 @@ import { z } from 'zod'
 import { answerFields, answerSettings } from '@/app/(office)/settings/answer-settings'
 import { changePlace, createPlace, retirePlace, reusePlace } from '@/lib/commands/save-place'
 import { systemClock as clock } from '@/lib/core/clock'
-import { placeInput, readPlaceForm } from '@/lib/room/place-input'
+import { formText } from '@/lib/format/form-text'
+import { airSince, placeInput, readPlaceForm } from '@/lib/room/place-input'
 import { requireMember } from '@/lib/server/auth'
 import type { FormState } from '@/lib/server/form-state'
 
@@ -20,8 +21,9 @@ export async function addPlaceAction(_previous: FormState, form: FormData): Prom
 
 export async function changePlaceAction(placeId: string, _previous: FormState, form: FormData): Promise<FormState> {
   const member = await requireMember('places')
-  return answerFields(placeInput.safeParse(readPlaceForm(form)), async (input) => {
-    await changePlace(placeIdInput.parse(placeId), input, { member, clock })
+  const changed = placeInput.extend({ since: airSince }).safeParse({ ...readPlaceForm(form), since: formText(form, 'since') })
+  return answerFields(changed, async ({ since, ...input }) => {
+    await changePlace(placeIdInput.parse(placeId), input, since, { member, clock })
     return `${input.name} is saved.`
   })
 }
