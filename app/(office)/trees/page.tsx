@@ -23,8 +23,8 @@ const namesOf = (trees: readonly TreeListRow[], name: (tree: TreeListRow) => str
 export default async function TreesPage({ searchParams }: PageProps<'/trees'>) {
   const member = await requireMemberPage('see', '/trees')
   const view = readTreeView(await searchParams)
-  const [trees, { timeZone, shiftHours }] = await Promise.all([loadTreeList({ clock: systemClock }), loadFoundry()])
-  const context = { now: systemClock.now(), timeZone, shiftHours }
+  const [trees, { timeZone, calendar }] = await Promise.all([loadTreeList({ clock: systemClock }), loadFoundry()])
+  const context = { now: systemClock.now(), timeZone, calendar }
   const mayAdd = may(member.role, 'trees')
   const isGone = view.group === 'gone'
   const gone = isGone

@@ -5,7 +5,7 @@ import { NOW, queueTree } from '../../fixtures/queue-tree'
 type Overrides = Parameters<typeof queueTree>[0]
 const row = (overrides: Overrides, recipeLabel = 'Six coats') => ({ ...queueTree(overrides), recipeLabel })
 const tags = (trees: { tag: string }[]) => trees.map((tree) => tree.tag)
-const context = { now: NOW, timeZone: 'Europe/London', shiftHours: [] }
+const context = { now: NOW, timeZone: 'Europe/London', calendar: { hours: [], closures: [] } }
 
 describe('the view in the address bar', () => {
   it('goes there and back', () => {

@@ -11,8 +11,8 @@ const ROWS_A_PART = 200
 /** The list of trees as a file: what the address shows, all pages of it. */
 export const GET = memberRoute('see', async ({ request, clock }) => {
   const view = readTreeView(Object.fromEntries(request.nextUrl.searchParams))
-  const { timeZone, shiftHours } = await loadFoundry()
-  const context = { now: clock.now(), timeZone, shiftHours }
+  const { timeZone, calendar } = await loadFoundry()
+  const context = { now: clock.now(), timeZone, calendar }
   const columns = treeColumns(timeZone)
   const fileName = `trees-${localDay(context.now, timeZone)}.csv`
   if (view.group === 'gone') {
