@@ -68,6 +68,10 @@ export const SCENES: Record<string, (scene: Scene) => Promise<void>> = {
       ;({ status } = await ask(operator, 'readQueue', { headers: { 'if-none-match': etag } }))
     }
   },
+  exportTrees: async ({ ask, operator, factories, foundry }) => {
+    await factories.buildTree(foundry)
+    await ask(operator, 'exportTrees')
+  },
   logDips: async (scene) => {
     const { body } = await dippedTree(scene)
     await scene.ask(scene.operator, 'logDips', { body })
