@@ -1,6 +1,7 @@
 import type { z } from 'zod'
 import { typedText } from '@/lib/format/typed-units'
 import type { MassUnit } from '@/lib/format/units'
+import { formText as text } from '@/lib/format/form-text'
 import type { TreeDetail } from '@/lib/trees/detail-contract'
 import type { FixedFields } from '@/lib/trees/fixed-fields'
 
@@ -23,11 +24,6 @@ export type TreeFormValues = {
 }
 
 const MOST_PIECES = 41
-
-function text(form: FormData, name: string): string {
-  const value = form.get(name)
-  return typeof value === 'string' ? value.trim() : ''
-}
 
 /** Form fields to the tree form's values. Pieces come as `pieces.0.workTitle`, `pieces.0.isRecast`, and so on, from 0 without a gap. */
 export function readTreeForm(form: FormData): TreeFormValues {
