@@ -13,6 +13,7 @@ function isRealContact(subject: string): boolean {
 }
 
 const schema = z.object({
+  NODE_ENV: z.enum(['production', 'development', 'test']).default('production'),
   /** Folder of the database and of what a new foundry makes for itself. */
   DATA_DIR: z.string().min(1).default('data'),
   NEXTAUTH_SECRET: z.string().min(32, 'NEXTAUTH_SECRET must be at least 32 characters.'),

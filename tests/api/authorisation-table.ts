@@ -53,6 +53,10 @@ export const DOORS: readonly Door[] = [
   door('DELETE', '/api/v1/trees/[treeId]/watch', 'crew'),
   door('POST', '/api/v1/readings', 'sensor'),
   door('POST', '/api/v1/readings/typed', 'operator'),
+  // The API's description, how to use it, and the history of every change.
+  door('GET', '/api/v1/openapi.json', 'anybody'),
+  page('/api-guide', 'supervisor'),
+  page('/history', 'supervisor'),
 ]
 
 /** One server action: file and exported name, the act that its first line requires, and from which role upwards that is. */
