@@ -1,6 +1,6 @@
 import { addFoundryEvent } from '@/lib/commands/foundry-event'
 import type { Clock } from '@/lib/core/clock'
-import { formatMoment } from '@/lib/format/local-time'
+import { formatClock, formatDate } from '@/lib/format/local-time'
 import { Foundry, inTransaction, Session } from '@/models'
 
 /**
@@ -14,7 +14,8 @@ export function noteRestore(
   return inTransaction(async () => {
     const at = clock.now()
     const foundry = await Foundry.findByPk(1)
-    const moment = backupAt === null || !foundry ? '' : ` of ${formatMoment(backupAt, at, foundry.timeZone)}`
+    const moment =
+      backupAt === null || !foundry ? '' : ` of ${formatDate(backupAt, foundry.timeZone)}, ${formatClock(backupAt, foundry.timeZone)}`
     await Session.update({ endedAt: at }, { where: { endedAt: null } })
     await addFoundryEvent(
       { type: 'backup', name: fileName },

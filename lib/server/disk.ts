@@ -2,6 +2,7 @@ import { createHash } from 'node:crypto'
 import { createReadStream } from 'node:fs'
 import { open, readdir, readlink, realpath, stat, statfs } from 'node:fs/promises'
 import { pipeline } from 'node:stream/promises'
+import { databaseFile } from '@/db/connection'
 
 /** Size of a file in bytes; 0 where there is none. */
 export async function sizeOf(file: string): Promise<number> {
@@ -47,9 +48,16 @@ export async function processesWithOpen(file: string): Promise<number[]> {
   const holders: number[] = []
   for (const pid of pids.filter((name) => /^\d+$/.test(name) && Number(name) !== process.pid)) {
     // Another user's, or gone by now.
-    const open = await readdir(`/proc/${pid}/fd`).catch(() => [])
-    const targets = await Promise.all(open.map((fd) => readlink(`/proc/${pid}/fd/${fd}`).catch(() => '')))
+    const descriptors = await readdir(`/proc/${pid}/fd`).catch(() => [])
+    const targets = await Promise.all(descriptors.map((fd) => readlink(`/proc/${pid}/fd/${fd}`).catch(() => '')))
     if (targets.includes(path ?? '')) holders.push(Number(pid))
   }
   return holders
+}
+
+/** Sizes of the database file and of its write-ahead log. */
+export async function recordSizes(): Promise<{ sizeBytes: number; walBytes: number }> {
+  const file = databaseFile()
+  const [sizeBytes, walBytes] = await Promise.all([sizeOf(file), sizeOf(`${file}-wal`)])
+  return { sizeBytes, walBytes }
 }

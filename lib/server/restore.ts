@@ -128,8 +128,9 @@ async function presentWords(present: readonly string[]): Promise<string> {
 
 async function refuseWithoutRoom(file: string, folder: string): Promise<void> {
   const [needed, free] = await Promise.all([sizeOf(file), freeBytesOf(folder)])
-  if (needed * 1.1 > free)
+  if (needed * 1.1 > free) {
     throw new RestoreRefusal(`${folder} has no room: ${formatBytes(needed)} are needed, ${formatBytes(free)} are free.`)
+  }
 }
 
 async function moveAll(files: readonly string[], folder: string): Promise<void> {

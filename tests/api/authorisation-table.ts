@@ -24,6 +24,9 @@ export const DOORS: readonly Door[] = [
   page('/trees/new', 'supervisor'),
   page('/burnout', 'crew'),
   page('/me', 'crew'),
+  // Upkeep: the state of the program, and the records as a file.
+  page('/upkeep', 'owner'),
+  door('GET', '/api/v1/backups/newest', 'owner'),
   door('GET', '/manifest.webmanifest', 'anybody'),
 
   door('GET', '/api/health', 'anybody'),
@@ -63,4 +66,5 @@ export const ACTIONS: readonly ActionRow[] = [
   { file: 'app/(office)/trees/[tag]/actions.ts', name: 'scrapAction', act: 'trees', who: 'supervisor' },
   { file: 'app/(office)/burnout/actions.ts', name: 'releaseAction', act: 'release', who: 'supervisor' },
   { file: 'app/(office)/burnout/actions.ts', name: 'withdrawReleaseAction', act: 'release', who: 'supervisor' },
+  { file: 'app/(office)/upkeep/actions.ts', name: 'backUpNowAction', act: 'upkeep', who: 'owner' },
 ]
