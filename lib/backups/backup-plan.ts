@@ -1,5 +1,5 @@
 import { millisecondsInHour } from 'date-fns/constants'
-import { localDay } from '@/lib/schedule/shifts'
+import { localDay } from '@/lib/format/local-time'
 
 /** Why a copy was made; how long it is kept follows from it. As the CHECK of the table has them. */
 export const BACKUP_KINDS = ['hourly', 'daily', 'monthly', 'by hand', 'before an upgrade'] as const
@@ -83,5 +83,5 @@ const ROOM_LEFT_BYTES = 100 * 1024 * 1024
 
 /** Bytes that are missing before a copy may be made; 0 when there is room. */
 export function missingRoom({ sizeBytes, freeBytes }: { sizeBytes: number; freeBytes: number }): number {
-  return Math.max(0, Math.ceil(sizeBytes * 1.1) + ROOM_LEFT_BYTES - freeBytes)
+  return Math.max(0, Math.round(sizeBytes * 1.1) + ROOM_LEFT_BYTES - freeBytes)
 }
