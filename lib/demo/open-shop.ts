@@ -11,7 +11,7 @@ import {
   DEMO_PLACE_KEYS,
   DEMO_PLACES,
   DEMO_RECIPES,
-  DEMO_SHIFTS,
+  DEMO_CALENDAR,
   DEMO_TIME_ZONE,
   DEMO_WALL_HYGROMETER,
   type DemoBath,
@@ -61,7 +61,7 @@ export async function openShop({
     setUpAt: createdAt,
     createdAt,
   })
-  await ShiftHoursRow.bulkCreate([...DEMO_SHIFTS])
+  await ShiftHoursRow.bulkCreate([...DEMO_CALENDAR.hours])
 
   const people = new Map<DemoPersonKey, Actor>()
   for (const { key, name, role, email } of DEMO_PEOPLE) {
@@ -77,7 +77,7 @@ export async function openShop({
   const clock: Clock = { now: () => createdAt }
   const sensorTokens: DemoShop['sensorTokens'] = []
   for (const sensor of [shellRoom, netLoft]) {
-    const { token } = await issueSensorToken({ sensorId: sensor.id, memberId: people.get('ines')?.id ?? null }, { clock })
+    const { token } = await issueSensorToken({ sensorId: sensor.id }, { member: people.get('ines') ?? null, clock })
     sensorTokens.push({ sensorId: sensor.id, name: sensor.name, token })
   }
 

@@ -6,7 +6,7 @@ import { dryingRoom } from '@/lib/demo/drying-room'
 import { demandOf, recipeOf } from '@/lib/demo/plan-coats'
 import { planTree, type PlannedTree } from '@/lib/demo/plan-trees'
 import { seededRandom } from '@/lib/demo/random'
-import { DEMO_SHIFTS, DEMO_TIME_ZONE } from '@/lib/demo/shop'
+import { DEMO_CALENDAR, DEMO_TIME_ZONE } from '@/lib/demo/shop'
 import { workHours, type WorkHours } from '@/lib/demo/work-hours'
 import { localDay, pourDeadline } from '@/lib/schedule/shifts'
 
@@ -58,6 +58,6 @@ function firstPourDay(from: number): string {
   for (let at = from; ; at += millisecondsInDay) {
     const day = localDay(at, DEMO_TIME_ZONE)
     const weekday = new TZDate(at, DEMO_TIME_ZONE).getDay()
-    if (POUR_WEEKDAYS.includes(weekday) && pourDeadline(day, DEMO_SHIFTS, DEMO_TIME_ZONE) > from - millisecondsInMinute) return day
+    if (POUR_WEEKDAYS.includes(weekday) && pourDeadline(day, DEMO_CALENDAR, DEMO_TIME_ZONE) > from - millisecondsInMinute) return day
   }
 }

@@ -1,7 +1,7 @@
 import { TZDate } from '@date-fns/tz'
 import { millisecondsInDay, millisecondsInMinute } from 'date-fns/constants'
 import { unitOf } from '@/lib/demo/random'
-import { DEMO_SHIFTS, DEMO_TIME_ZONE, type DemoBath } from '@/lib/demo/shop'
+import { DEMO_CALENDAR, DEMO_TIME_ZONE, type DemoBath } from '@/lib/demo/shop'
 import { COATING_WAYS, STUCCOS, type CoatingWay, type Stucco } from '@/lib/coats/vocabulary'
 import { shiftsFrom, type Shift } from '@/lib/schedule/shifts'
 
@@ -14,7 +14,7 @@ const WEEK_MS = 7 * millisecondsInDay
 export function workHours(from: number, to: number): WorkHours {
   const byOpening = new Map<number, Shift>()
   for (let at = from; at <= to + WEEK_MS; at += WEEK_MS) {
-    for (const shift of shiftsFrom(at, DEMO_SHIFTS, DEMO_TIME_ZONE)) byOpening.set(shift.opensAt, shift)
+    for (const shift of shiftsFrom(at, DEMO_CALENDAR, DEMO_TIME_ZONE)) byOpening.set(shift.opensAt, shift)
   }
   return { shifts: [...byOpening.values()].filter((shift) => shift.opensAt <= to).toSorted((a, b) => a.opensAt - b.opensAt) }
 }

@@ -27,6 +27,12 @@ export const DOORS: readonly Door[] = [
   // Upkeep: the state of the program, and the records as a file.
   page('/upkeep', 'owner'),
   door('GET', '/api/v1/backups/newest', 'owner'),
+  // The foundry's settings.
+  page('/settings', 'supervisor'),
+  page('/settings/hours', 'supervisor'),
+  page('/settings/places', 'supervisor'),
+  page('/settings/baths', 'supervisor'),
+  page('/settings/sensors', 'supervisor'),
   door('GET', '/manifest.webmanifest', 'anybody'),
 
   door('GET', '/api/health', 'anybody'),
@@ -35,6 +41,7 @@ export const DOORS: readonly Door[] = [
   door('POST', '/api/auth/[...nextauth]', 'anybody', '/api/auth/signout'),
 
   door('GET', '/api/v1/queue', 'crew'),
+  door('GET', '/api/v1/trees.csv', 'crew'),
   door('POST', '/api/v1/dips', 'operator'),
   door('POST', '/api/v1/dips/undo', 'operator'),
   door('POST', '/api/v1/trees/[treeId]/holds', 'operator'),
@@ -67,4 +74,24 @@ export const ACTIONS: readonly ActionRow[] = [
   { file: 'app/(office)/burnout/actions.ts', name: 'releaseAction', act: 'release', who: 'supervisor' },
   { file: 'app/(office)/burnout/actions.ts', name: 'withdrawReleaseAction', act: 'release', who: 'supervisor' },
   { file: 'app/(office)/upkeep/actions.ts', name: 'backUpNowAction', act: 'upkeep', who: 'owner' },
+  // The foundry's settings.
+  { file: 'app/(office)/settings/actions.ts', name: 'saveFoundryAction', act: 'settings', who: 'owner' },
+  { file: 'app/(office)/settings/hours/actions.ts', name: 'saveHoursAction', act: 'settings', who: 'owner' },
+  { file: 'app/(office)/settings/hours/actions.ts', name: 'addClosureAction', act: 'settings', who: 'owner' },
+  { file: 'app/(office)/settings/hours/actions.ts', name: 'changeClosureAction', act: 'settings', who: 'owner' },
+  { file: 'app/(office)/settings/hours/actions.ts', name: 'removeClosureAction', act: 'settings', who: 'owner' },
+  { file: 'app/(office)/settings/places/actions.ts', name: 'addPlaceAction', act: 'places', who: 'supervisor' },
+  { file: 'app/(office)/settings/places/actions.ts', name: 'changePlaceAction', act: 'places', who: 'supervisor' },
+  { file: 'app/(office)/settings/places/actions.ts', name: 'retirePlaceAction', act: 'places', who: 'supervisor' },
+  { file: 'app/(office)/settings/places/actions.ts', name: 'reusePlaceAction', act: 'places', who: 'supervisor' },
+  { file: 'app/(office)/settings/baths/actions.ts', name: 'addBathAction', act: 'baths', who: 'supervisor' },
+  { file: 'app/(office)/settings/baths/actions.ts', name: 'changeBathAction', act: 'baths', who: 'supervisor' },
+  { file: 'app/(office)/settings/baths/actions.ts', name: 'retireBathAction', act: 'baths', who: 'supervisor' },
+  { file: 'app/(office)/settings/baths/actions.ts', name: 'reuseBathAction', act: 'baths', who: 'supervisor' },
+  { file: 'app/(office)/settings/sensors/actions.ts', name: 'addSensorAction', act: 'sensors', who: 'supervisor' },
+  { file: 'app/(office)/settings/sensors/actions.ts', name: 'renameSensorAction', act: 'sensors', who: 'supervisor' },
+  { file: 'app/(office)/settings/sensors/actions.ts', name: 'retireSensorAction', act: 'sensors', who: 'supervisor' },
+  { file: 'app/(office)/settings/sensors/actions.ts', name: 'reuseSensorAction', act: 'sensors', who: 'supervisor' },
+  { file: 'app/(office)/settings/sensors/actions.ts', name: 'issueTokenAction', act: 'sensors', who: 'supervisor' },
+  { file: 'app/(office)/settings/sensors/actions.ts', name: 'revokeTokenAction', act: 'sensors', who: 'supervisor' },
 ]
