@@ -15,7 +15,7 @@ const copy = (kind: BackupKind, startedAt: number, isSound = true): StandingBack
 })
 
 /** Runs the plan every ten minutes, as the worker does, and gives what then lies there and all that was ever made. */
-function runPlan(from: number, to: number, { timeZone = LONDON, everyMs = 10 * MINUTE, isOn = (_at: number) => true } = {}) {
+function runPlan(from: number, to: number, { timeZone = LONDON, everyMs = 10 * MINUTE, isOn = (_at: number): boolean => true } = {}) {
   let standing: StandingBackup[] = []
   const made: StandingBackup[] = []
   for (let now = from; now < to; now += everyMs) {
