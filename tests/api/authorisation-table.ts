@@ -24,6 +24,9 @@ export const DOORS: readonly Door[] = [
   page('/trees/new', 'supervisor'),
   page('/burnout', 'crew'),
   page('/me', 'crew'),
+  // Upkeep: the state of the program, and the records as a file.
+  page('/upkeep', 'owner'),
+  door('GET', '/api/v1/backups/newest', 'owner'),
   // The foundry's settings.
   page('/settings', 'supervisor'),
   page('/settings/hours', 'supervisor'),
@@ -74,6 +77,7 @@ export const ACTIONS: readonly ActionRow[] = [
   { file: 'app/(office)/trees/[tag]/actions.ts', name: 'scrapAction', act: 'trees', who: 'supervisor' },
   { file: 'app/(office)/burnout/actions.ts', name: 'releaseAction', act: 'release', who: 'supervisor' },
   { file: 'app/(office)/burnout/actions.ts', name: 'withdrawReleaseAction', act: 'release', who: 'supervisor' },
+  { file: 'app/(office)/upkeep/actions.ts', name: 'backUpNowAction', act: 'upkeep', who: 'owner' },
   // The foundry's settings.
   { file: 'app/(office)/settings/actions.ts', name: 'saveFoundryAction', act: 'settings', who: 'owner' },
   { file: 'app/(office)/settings/hours/actions.ts', name: 'saveHoursAction', act: 'settings', who: 'owner' },
