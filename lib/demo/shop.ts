@@ -21,6 +21,11 @@ export const DEMO_SHIFTS: readonly ShiftHours[] = [
   { weekday: SATURDAY, opensMinute: 8 * 60, closesMinute: 12 * 60 },
 ]
 
+/** Where and when the demo happens: in a foundry of its own, or in the one that it is laid over. */
+export type DemoSetting = { timeZone: string; altitudeM: number; shifts: readonly ShiftHours[] }
+
+export const DEMO_SETTING: DemoSetting = { timeZone: DEMO_TIME_ZONE, altitudeM: DEMO_ALTITUDE_M, shifts: DEMO_SHIFTS }
+
 /** Names of the loggers by the air they hang in; the wall hygrometer is read by people. */
 export const DEMO_LOGGERS: Record<DemoAir, string> = { 'shell room': 'Shell room logger', 'net loft': 'Net loft logger' }
 export const DEMO_WALL_HYGROMETER = 'Boat shed hygrometer'

@@ -147,9 +147,10 @@ export function describeDemoAt(name: string, iso: string): void {
     it('has dips that the drying clock agrees with', async () => {
       const { dryingRoom } = await import('@/lib/demo/drying-room')
       const { demoClimate, DEMO_HISTORY_MS } = await import('@/lib/demo/plan')
-      const { DEMO_PLACES, DEMO_PLACE_KEYS } = await import('@/lib/demo/shop')
+      const { DEMO_PLACES, DEMO_PLACE_KEYS, DEMO_SETTING } = await import('@/lib/demo/shop')
       const { moistureRatio } = await import('@/lib/drying/moisture')
-      const room = dryingRoom(demoClimate(now - DEMO_HISTORY_MS), { from: now - DEMO_HISTORY_MS, now })
+      const startsAt = now - DEMO_HISTORY_MS
+      const room = dryingRoom(demoClimate(startsAt, DEMO_SETTING.timeZone), { from: startsAt, now, altitudeM: DEMO_SETTING.altitudeM })
       let inside = 0
       let judged = 0
       for (const [index, coat] of coats.entries()) {
