@@ -12,7 +12,7 @@ export const treeTag = z
   .regex(/^[A-Z]{1,3}-\d{1,5}$/, 'A tag is one to three capital letters, a dash and a number, such as T-128.')
 
 /** Form fields arrive as text; a decimal comma is as good as a point. An empty field is 'not given'. */
-const typedNumber = (field: string) =>
+export const typedNumber = (field: string) =>
   z.preprocess(
     (value) => {
       if (typeof value !== 'string') return value
