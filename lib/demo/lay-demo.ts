@@ -4,13 +4,11 @@ import { AppError } from '@/lib/core/errors'
 import { fillShop } from '@/lib/demo/fill-shop'
 import { openShop, type DemoShop } from '@/lib/demo/open-shop'
 import { DEMO_PEOPLE } from '@/lib/demo/people'
-import { planDemo, type DemoPlan } from '@/lib/demo/plan'
-import { DEMO_SHIFTS } from '@/lib/demo/shop'
+import { planDemoAnyhow } from '@/lib/demo/plan'
 import { keepDemoTokens } from '@/lib/demo/token-file'
 import type { Actor } from '@/lib/members/actor'
 import { loadFoundry } from '@/lib/queries/load-foundry'
 import { hashRandomPassword } from '@/lib/server/password'
-import type { ShiftHours } from '@/lib/schedule/shifts'
 import { Foundry, inTransaction, Member, Tree } from '@/models'
 
 export type LaidDemo = {
@@ -34,7 +32,7 @@ export async function layDemo({ member, clock }: { member: Actor; clock: Clock }
   const foundry = await Foundry.findByPk(1, { rejectOnEmpty: true })
   const { timeZone, altitudeM } = foundry
   const { shiftHours } = await loadFoundry()
-  const { plan, isInOwnHours } = planIn({ timeZone, altitudeM, shifts: shiftHours }, now)
+  const { plan, isInOwnHours } = planDemoAnyhow(now, { timeZone, altitudeM, shifts: shiftHours })
   const passwordHashes = new Map(await Promise.all(DEMO_PEOPLE.map(async ({ key }) => [key, await hashRandomPassword()] as const)))
   const { shop, laid } = await inTransaction(async () => {
     await refuseUnlessEmpty()
@@ -53,16 +51,4 @@ export async function layDemo({ member, clock }: { member: Actor; clock: Clock }
 async function refuseUnlessEmpty(): Promise<void> {
   if ((await Member.count({ where: { isDemo: true } })) > 0) throw new AppError('conflict', 'The demo data is here already.')
   if ((await Tree.count()) > 0) throw new AppError('conflict', 'There are trees here already: demo data is only for a floor without any.')
-}
-
-/** Hours so short that two weeks of work do not fit into them are the foundry's own affair: the demo then keeps its own. */
-function planIn(
-  setting: { timeZone: string; altitudeM: number; shifts: readonly ShiftHours[] },
-  now: number,
-): { plan: DemoPlan; isInOwnHours: boolean } {
-  try {
-    return { plan: planDemo(now, setting), isInOwnHours: true }
-  } catch {
-    return { plan: planDemo(now, { ...setting, shifts: DEMO_SHIFTS }), isInOwnHours: false }
-  }
 }

@@ -62,7 +62,7 @@ export async function openShop({
     people.set(key, member)
   }
 
-  const sensorNames = new Set((await Sensor.findAll()).map(({ name }) => name))
+  const sensorNames = new Set((await Sensor.findAll()).map(({ name }) => name.toLowerCase()))
   const addSensor = (name: string, kind: 'logger' | 'wall hygrometer') =>
     Sensor.create({ name: free(name, sensorNames), kind, isDemo: true, createdAt })
   const shellRoom = await addSensor(DEMO_LOGGERS['shell room'], 'logger')
@@ -77,7 +77,7 @@ export async function openShop({
   }
 
   const placeIds = { fanRack: id(), longRack: id(), netLoft: id(), stillCorner: id(), boatShed: id() }
-  const placeNames = new Set((await Place.findAll()).map(({ name }) => name))
+  const placeNames = new Set((await Place.findAll()).map(({ name }) => name.toLowerCase()))
   for (const key of DEMO_PLACE_KEYS) {
     const { name, air, fanHours, ...place } = DEMO_PLACES[key]
     const placeId = placeIds[key]
@@ -93,13 +93,13 @@ export async function openShop({
   }
 
   const bathIds = { face: id(), backup: id() }
-  const bathNames = new Set((await Bath.findAll()).map(({ name }) => name))
+  const bathNames = new Set((await Bath.findAll()).map(({ name }) => name.toLowerCase()))
   for (const kind of ['face', 'backup'] as const) {
     await Bath.create({ id: bathIds[kind], name: free(DEMO_BATH_NAMES[kind], bathNames), kind, isDemo: true, createdAt })
   }
 
   const recipeVersionIds = { six: id(), eight: id(), eleven: id() }
-  const recipeNames = new Set((await Recipe.findAll()).map(({ name }) => name))
+  const recipeNames = new Set((await Recipe.findAll()).map(({ name }) => name.toLowerCase()))
   for (const key of ['six', 'eight', 'eleven'] as const) {
     const recipe = await Recipe.create({ id: id(), name: free(DEMO_RECIPES[key].name, recipeNames), isDemo: true, createdAt })
     const recipeVersionId = recipeVersionIds[key]
@@ -107,16 +107,16 @@ export async function openShop({
     await RecipeVersion.create({ id: recipeVersionId, recipeId: recipe.id, version: 1, createdBy, createdAt })
     await RecipeCoat.bulkCreate(DEMO_RECIPES[key].coats.map(({ bath, ...coat }) => ({ ...coat, recipeVersionId, bathId: bathIds[bath] })))
   }
-  const titles = new Set((await Work.findAll()).map(({ title }) => title))
+  const titles = new Set((await Work.findAll()).map(({ title }) => title.toLowerCase()))
   const castTitles = [...new Set(CAST.flatMap(({ pieces }) => pieces.map(({ workTitle }) => workTitle)))]
   const workTitles = new Map(castTitles.map((title) => [title, free(title, titles)]))
   return { people, sensorIds, wallSensorId: wall.id, placeIds, bathIds, recipeVersionIds, sensorTokens, workTitles, renamed }
 }
 
-/** The name, or the name with a word behind it where somebody else has it. */
+/** The name, or the name with a word behind it where something has it, in whatever capitals. */
 function freeName(name: string, taken: ReadonlySet<string>): string {
   for (let count = 1; ; count += 1) {
     const candidate = count === 1 ? name : `${name} (demo${count === 2 ? '' : ` ${count - 1}`})`
-    if (!taken.has(candidate)) return candidate
+    if (!taken.has(candidate.toLowerCase())) return candidate
   }
 }

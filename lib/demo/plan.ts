@@ -6,7 +6,7 @@ import { dryingRoom } from '@/lib/demo/drying-room'
 import { demandOf, recipeOf } from '@/lib/demo/plan-coats'
 import { planTree, type PlannedTree } from '@/lib/demo/plan-trees'
 import { seededRandom } from '@/lib/demo/random'
-import type { DemoSetting } from '@/lib/demo/shop'
+import { DEMO_SHIFTS, type DemoSetting } from '@/lib/demo/shop'
 import { workHours, type WorkHours } from '@/lib/demo/work-hours'
 import { localDay, pourDeadline } from '@/lib/schedule/shifts'
 
@@ -36,6 +36,19 @@ export function planDemo(now: number, setting: DemoSetting): DemoPlan {
     .toSorted((a, b) => a.createdAt - b.createdAt)
     .map((tree, index) => ({ ...tree, tag: `T-${FIRST_TAG + index}`, pourDate: pourDateOf(tree, now, setting) }))
   return { now, startsAt, climate, hours, trees }
+}
+
+/**
+ * The same for any foundry: where its hours are so short that two weeks of work do not fit into them, the demo keeps its own.
+ *
+ * @example planDemoAnyhow(now, { ...setting, shifts: [oneMorningAWeek] }).isInOwnHours // => false
+ */
+export function planDemoAnyhow(now: number, setting: DemoSetting): { plan: DemoPlan; isInOwnHours: boolean } {
+  try {
+    return { plan: planDemo(now, setting), isInOwnHours: true }
+  } catch {
+    return { plan: planDemo(now, { ...setting, shifts: DEMO_SHIFTS }), isInOwnHours: false }
+  }
 }
 
 const FIRST_TAG = 412

@@ -231,5 +231,21 @@ export function describeDemoAt(name: string, iso: string): void {
       expect(turnedAt.size).toBe(2)
       expect([...turnedAt.values()].every((minute) => minute > 3)).toBe(true)
     })
+
+    it('is taken away whole, so that the next visitor sets up their own', async () => {
+      const { models } = await load()
+      const { removeDemo } = await import('@/lib/demo/remove-demo')
+      const { id, name: ownerName, role } = await models.Member.findOne({ where: { role: 'owner' }, rejectOnEmpty: true })
+      const answer = await removeDemo({ member: { id, name: ownerName, role, isDemo: true }, clock })
+      expect(answer).toMatchObject({ kept: [], isEmptied: true })
+      const tables = await select<{ table: string }>(`SELECT name AS "table" FROM sqlite_schema WHERE type = 'table'`)
+      const left = await Promise.all(tables.map(async ({ table }) => ({ table, rows: await select<object>(`SELECT * FROM "${table}"`) })))
+      expect(
+        left
+          .filter(({ rows }) => rows.length > 0)
+          .map(({ table }) => table)
+          .toSorted(),
+      ).toEqual(['migrations', 'sqlite_sequence'])
+    })
   })
 }
