@@ -82,7 +82,7 @@ async function makeTokens({ loggers }: DemoFeedState, clock: Clock): Promise<Dem
   const tokens: DemoTokens = []
   for (const { sensorId, name } of loggers) {
     if (airOfLogger(name) === null) continue
-    const { token } = await issueSensorToken({ sensorId, memberId: null }, { clock })
+    const { token } = await issueSensorToken({ sensorId }, { member: null, clock })
     tokens.push({ sensorId, name, token })
   }
   await keepDemoTokens(tokens)

@@ -9,7 +9,7 @@ import { keepDemoTokens } from '@/lib/demo/token-file'
 import type { Actor } from '@/lib/members/actor'
 import { loadFoundry } from '@/lib/queries/load-foundry'
 import { hashRandomPassword } from '@/lib/server/password'
-import { Foundry, inTransaction, Member, Tree } from '@/models'
+import { inTransaction, Member, Tree } from '@/models'
 
 export type LaidDemo = {
   treeCount: number
@@ -29,10 +29,8 @@ export type LaidDemo = {
 export async function layDemo({ member, clock }: { member: Actor; clock: Clock }): Promise<LaidDemo> {
   await refuseUnlessEmpty()
   const now = clock.now()
-  const foundry = await Foundry.findByPk(1, { rejectOnEmpty: true })
-  const { timeZone, altitudeM } = foundry
-  const { shiftHours } = await loadFoundry()
-  const { plan, isInOwnHours } = planDemoAnyhow(now, { timeZone, altitudeM, shifts: shiftHours })
+  const { timeZone, altitudeM, calendar } = await loadFoundry()
+  const { plan, isInOwnHours } = planDemoAnyhow(now, { timeZone, altitudeM, calendar })
   const passwordHashes = new Map(await Promise.all(DEMO_PEOPLE.map(async ({ key }) => [key, await hashRandomPassword()] as const)))
   const { shop, laid } = await inTransaction(async () => {
     await refuseUnlessEmpty()

@@ -72,7 +72,7 @@ export async function openShop({
   const clock: Clock = { now: () => createdAt }
   const sensorTokens: DemoShop['sensorTokens'] = []
   for (const sensor of [shellRoom, netLoft]) {
-    const { token } = await issueSensorToken({ sensorId: sensor.id, memberId: people.get('ines')?.id ?? null }, { clock })
+    const { token } = await issueSensorToken({ sensorId: sensor.id }, { member: people.get('ines') ?? null, clock })
     sensorTokens.push({ sensorId: sensor.id, name: sensor.name, token })
   }
 

@@ -6,7 +6,7 @@ import { dryingRoom } from '@/lib/demo/drying-room'
 import { demandOf, recipeOf } from '@/lib/demo/plan-coats'
 import { planTree, type PlannedTree } from '@/lib/demo/plan-trees'
 import { seededRandom } from '@/lib/demo/random'
-import { DEMO_SHIFTS, type DemoSetting } from '@/lib/demo/shop'
+import { DEMO_CALENDAR, type DemoSetting } from '@/lib/demo/shop'
 import { workHours, type WorkHours } from '@/lib/demo/work-hours'
 import { localDay, pourDeadline } from '@/lib/schedule/shifts'
 
@@ -41,13 +41,13 @@ export function planDemo(now: number, setting: DemoSetting): DemoPlan {
 /**
  * The same for any foundry: where its hours are so short that two weeks of work do not fit into them, the demo keeps its own.
  *
- * @example planDemoAnyhow(now, { ...setting, shifts: [oneMorningAWeek] }).isInOwnHours // => false
+ * @example planDemoAnyhow(now, { ...setting, calendar: oneMorningAWeek }).isInOwnHours // => false
  */
 export function planDemoAnyhow(now: number, setting: DemoSetting): { plan: DemoPlan; isInOwnHours: boolean } {
   try {
     return { plan: planDemo(now, setting), isInOwnHours: true }
   } catch {
-    return { plan: planDemo(now, { ...setting, shifts: DEMO_SHIFTS }), isInOwnHours: false }
+    return { plan: planDemo(now, { ...setting, calendar: DEMO_CALENDAR }), isInOwnHours: false }
   }
 }
 
@@ -71,10 +71,10 @@ function pourDateOf(planned: PlannedTree, now: number, setting: DemoSetting): st
   return firstPourDay(now + days * millisecondsInDay, setting)
 }
 
-function firstPourDay(from: number, { timeZone, shifts }: DemoSetting): string {
+function firstPourDay(from: number, { timeZone, calendar }: DemoSetting): string {
   for (let at = from; ; at += millisecondsInDay) {
     const day = localDay(at, timeZone)
     const weekday = new TZDate(at, timeZone).getDay()
-    if (POUR_WEEKDAYS.includes(weekday) && pourDeadline(day, shifts, timeZone) > from - millisecondsInMinute) return day
+    if (POUR_WEEKDAYS.includes(weekday) && pourDeadline(day, calendar, timeZone) > from - millisecondsInMinute) return day
   }
 }

@@ -76,7 +76,7 @@ const STOOD_ON: readonly { kind: KeptThing['kind']; table: string; name: string;
     table: 'sensors',
     name: 'name',
     // A token that somebody of this foundry has made is in a logger of theirs.
-    by: `SELECT sensor_id FROM places WHERE is_demo = 0
+    by: `SELECT sensor_id FROM places WHERE is_demo = 0 UNION SELECT sensor_id FROM former_airs WHERE place_id IN (SELECT id FROM places WHERE is_demo = 0)
           UNION SELECT sensor_id FROM sensor_tokens WHERE created_by IN (SELECT id FROM members WHERE is_demo = 0)`,
   },
   {
@@ -143,7 +143,7 @@ async function removeShop(): Promise<void> {
   await run('DELETE FROM recipes WHERE is_demo = 1')
   await run(`DELETE FROM bath_stirs WHERE bath_id IN ${baths} OR member_id IN ${members}`)
   await run('DELETE FROM baths WHERE is_demo = 1')
-  await run(`DELETE FROM fan_hours WHERE place_id IN ${places}`)
+  for (const table of ['fan_hours', 'former_airs']) await run(`DELETE FROM ${table} WHERE place_id IN ${places}`)
   await run('DELETE FROM places WHERE is_demo = 1')
   for (const table of ['readings', 'dose_hours', 'sensor_tokens']) await run(`DELETE FROM ${table} WHERE sensor_id IN ${sensors}`)
   await run('DELETE FROM sensors WHERE is_demo = 1')

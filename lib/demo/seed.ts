@@ -24,9 +24,9 @@ export async function seedDemo({ clock, scryptCost }: { clock: Clock; scryptCost
   return inTransaction(async () => {
     await refuseSecondFoundry()
     const createdAt = plan.startsAt
-    const { timeZone, altitudeM, shifts } = DEMO_SETTING
+    const { timeZone, altitudeM, calendar } = DEMO_SETTING
     await Foundry.create({ id: 1, name: DEMO_NAME, timeZone, altitudeM, isDemo: true, setUpAt: createdAt, createdAt })
-    await ShiftHours.bulkCreate([...shifts])
+    await ShiftHours.bulkCreate([...calendar.hours])
     const shop = await openShop({ createdAt, passwordHashes })
     await fillShop(plan, shop)
     return { signIns: [...DEMO_SIGN_INS], sensorTokens: shop.sensorTokens }

@@ -7,24 +7,25 @@ import {
   defaultReferenceHours,
 } from '@/lib/drying/recipe-defaults'
 import type { FanHours, PlaceAir } from '@/lib/drying/types'
-import type { ShiftHours } from '@/lib/schedule/shifts'
+import type { WorkCalendar } from '@/lib/schedule/shifts'
 
 export const DEMO_NAME = 'Marram Lane Art Foundry'
-export const DEMO_TIME_ZONE = 'Europe/London'
-export const DEMO_ALTITUDE_M = 4
 
 const everyWeekday = [1, 2, 3, 4, 5]
 const SATURDAY = 6
 
-export const DEMO_SHIFTS: readonly ShiftHours[] = [
-  ...everyWeekday.map((weekday) => ({ weekday, opensMinute: 7 * 60, closesMinute: 17 * 60 })),
-  { weekday: SATURDAY, opensMinute: 8 * 60, closesMinute: 12 * 60 },
-]
+export const DEMO_CALENDAR: WorkCalendar = {
+  hours: [
+    ...everyWeekday.map((weekday) => ({ weekday, opensMinute: 7 * 60, closesMinute: 17 * 60 })),
+    { weekday: SATURDAY, opensMinute: 8 * 60, closesMinute: 12 * 60 },
+  ],
+  closures: [],
+}
 
 /** Where and when the demo happens: in a foundry of its own, or in the one that it is laid over. */
-export type DemoSetting = { timeZone: string; altitudeM: number; shifts: readonly ShiftHours[] }
+export type DemoSetting = { timeZone: string; altitudeM: number; calendar: WorkCalendar }
 
-export const DEMO_SETTING: DemoSetting = { timeZone: DEMO_TIME_ZONE, altitudeM: DEMO_ALTITUDE_M, shifts: DEMO_SHIFTS }
+export const DEMO_SETTING: DemoSetting = { timeZone: 'Europe/London', altitudeM: 4, calendar: DEMO_CALENDAR }
 
 /** Names of the loggers by the air they hang in; the wall hygrometer is read by people. */
 export const DEMO_LOGGERS: Record<DemoAir, string> = { 'shell room': 'Shell room logger', 'net loft': 'Net loft logger' }

@@ -11,10 +11,10 @@ export type WorkHours = { timeZone: string; shifts: readonly Shift[] }
 const WEEK_MS = 7 * millisecondsInDay
 
 /** The shifts that touch [from, to]. */
-export function workHours(from: number, to: number, { shifts, timeZone }: Pick<DemoSetting, 'shifts' | 'timeZone'>): WorkHours {
+export function workHours(from: number, to: number, { calendar, timeZone }: Pick<DemoSetting, 'calendar' | 'timeZone'>): WorkHours {
   const byOpening = new Map<number, Shift>()
   for (let at = from; at <= to + WEEK_MS; at += WEEK_MS) {
-    for (const shift of shiftsFrom(at, shifts, timeZone)) byOpening.set(shift.opensAt, shift)
+    for (const shift of shiftsFrom(at, calendar, timeZone)) byOpening.set(shift.opensAt, shift)
   }
   return { timeZone, shifts: [...byOpening.values()].filter((shift) => shift.opensAt <= to).toSorted((a, b) => a.opensAt - b.opensAt) }
 }

@@ -49,7 +49,8 @@ async function makeQueue(now: number): Promise<Queue> {
     loadBaths(),
     workerPulse(now),
   ])
-  const usedSensors = new Set(foundry.places.map((place) => place.sensorId))
+  const places = foundry.places.filter((place) => !place.isRetired)
+  const usedSensors = new Set(places.map((place) => place.sensorId))
   return {
     now,
     foundry: {
@@ -76,7 +77,7 @@ async function makeQueue(now: number): Promise<Queue> {
         },
       ),
     ),
-    places: foundry.places.map((place) => ({
+    places: places.map((place) => ({
       id: place.id,
       name: place.name,
       sensorId: place.sensorId,

@@ -1,4 +1,5 @@
 import type { z } from 'zod'
+import { formText as text } from '@/lib/format/form-text'
 import type { TreeDetail } from '@/lib/trees/detail-contract'
 import type { FixedFields } from '@/lib/trees/fixed-fields'
 
@@ -21,11 +22,6 @@ export type TreeFormValues = {
 }
 
 const MOST_PIECES = 41
-
-function text(form: FormData, name: string): string {
-  const value = form.get(name)
-  return typeof value === 'string' ? value.trim() : ''
-}
 
 /** Form fields to the tree form's values. Pieces come as `pieces.0.workTitle`, `pieces.0.isRecast`, and so on, from 0 without a gap. */
 export function readTreeForm(form: FormData): TreeFormValues {

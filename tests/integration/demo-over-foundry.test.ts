@@ -45,7 +45,7 @@ beforeAll(async () => {
   owner = await buildMember('owner', 'Real Owner')
   await buildRecipe(foundry)
   await buildAir(foundry.sensorId, NOW - 6 * HOUR, NOW)
-  await issueSensorToken({ sensorId: foundry.sensorId, memberId: owner.id }, { clock })
+  await issueSensorToken({ sensorId: foundry.sensorId }, by())
 })
 
 // In this order: laying takes seconds, so that what is laid serves several tests.

@@ -37,8 +37,8 @@ const MOST_RELEASED = 20
 
 export default async function BurnoutPage() {
   const member = await requireMemberPage('see', '/burnout')
-  const [trees, { timeZone, shiftHours }] = await Promise.all([loadTreeList({ clock: systemClock }), loadFoundry()])
-  const context: PourContext = { now: systemClock.now(), timeZone, shiftHours }
+  const [trees, { timeZone, calendar }] = await Promise.all([loadTreeList({ clock: systemClock }), loadFoundry()])
+  const context: PourContext = { now: systemClock.now(), timeZone, calendar }
   const finished = trees.filter((tree) => tree.state === 'ready for burnout' || tree.state === 'dried out')
   const checks =
     finished.length === 0

@@ -29,7 +29,7 @@ export default async function TreesPage({ searchParams }: PageProps<'/trees'>) {
   const words = await searchParams
   const query = (first(words['q']) ?? '').trim().slice(0, 80)
   const group = readTreeGroup(first(words['state']))
-  const [trees, { timeZone, shiftHours }] = await Promise.all([loadTreeList({ clock: systemClock }), loadFoundry()])
+  const [trees, { timeZone, calendar }] = await Promise.all([loadTreeList({ clock: systemClock }), loadFoundry()])
   const now = systemClock.now()
   const rows = sortByDue(filterTrees(trees, { query, group }))
   const counts = countGroups(trees, query)
@@ -89,7 +89,7 @@ export default async function TreesPage({ searchParams }: PageProps<'/trees'>) {
           </div>
         </section>
       ) : (
-        <TreeTable trees={rows} context={{ now, timeZone, shiftHours }} />
+        <TreeTable trees={rows} context={{ now, timeZone, calendar }} />
       )}
     </>
   )

@@ -52,7 +52,7 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
   if (tag === null) notFound()
   const member = await requireMemberPage('see', `/trees/${encodeURIComponent(tag)}`)
   const now = systemClock.now()
-  const [detail, { timeZone, shiftHours }, { places }] = await Promise.all([
+  const [detail, { timeZone, calendar }, { places }] = await Promise.all([
     loadTreeDetail({ tag, viewer: { id: member.id, role: member.role }, clock: systemClock }),
     loadFoundry(),
     loadTreeForm(),
@@ -62,7 +62,7 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
   const { tree, recipe, coats, curve, intake, holds, lookOvers, release } = detail
   const moment = { now, timeZone }
   const verdict = treeVerdict(tree, now)
-  const pour = pourVerdict(tree, { now, timeZone, shiftHours })
+  const pour = pourVerdict(tree, { now, timeZone, calendar })
   const hasLeft = tree.state === 'released' || tree.state === 'scrapped'
   const isDryNow = tree.dry?.safeAt != null && tree.dry.safeAt <= now
   const isCoatOpen = tree.newestCoat !== null && !hasLeft && tree.state !== 'ready for burnout'
