@@ -1,13 +1,13 @@
 import { database, databaseFile } from '@/db/connection'
 import { migrate } from '@/db/migrator'
 import { env } from '@/lib/core/env'
-import { Foundry } from '@/models'
+import { Foundry, Member } from '@/models'
 
 export type Records = {
   file: string
   /** Migrations that were applied now. */
   applied: string[]
-  /** No foundry yet. */
+  /** Neither a foundry nor a member yet. */
   isNew: boolean
   isDemo: boolean
 }
@@ -22,7 +22,7 @@ export async function bringUpToDate(): Promise<Records> {
   const file = databaseFile()
   const applied = await migrate(file)
   const foundry = await Foundry.findOne()
-  return { file, applied, isNew: foundry === null, isDemo: foundry?.isDemo ?? false }
+  return { file, applied, isNew: foundry === null && (await Member.count()) === 0, isDemo: foundry?.isDemo ?? false }
 }
 
 /** Closes the handle that stays open for the life of a process. */
