@@ -7,13 +7,14 @@ import { useKeptForm } from '@/app/(office)/_components/use-kept-form'
 import { FanWeek } from '@/app/(office)/settings/places/_components/fan-week'
 import { addPlaceAction, changePlaceAction } from '@/app/(office)/settings/places/actions'
 import '@/app/(office)/settings/settings.css'
+import { nameList } from '@/lib/format/name-list'
 import type { PlaceFormValues } from '@/lib/room/place-input'
 
 export type PlaceFormProps = {
   /** The sensors in use. */
   sensors: readonly { id: number; name: string }[]
-  /** A known place; a new one without. */
-  place?: { id: string; values: PlaceFormValues }
+  /** A known place with the tags that hang there; a new one without. */
+  place?: { id: string; values: PlaceFormValues; trees: readonly string[] }
   onDone?: () => void
 }
 
@@ -74,6 +75,7 @@ export function PlaceForm({ sensors, place, onDone }: PlaceFormProps) {
         />
       </div>
       <FanWeek fans={values.fans} errorOf={form.errorOf} />
+      {place && <SinceChoice trees={place.trees} error={form.errorOf('since')} />}
       <div className="form-foot">
         <Key type="submit" tone="go" isOff={form.isPending}>
           {place ? 'Save the place' : 'Add the place'}
@@ -81,5 +83,29 @@ export function PlaceForm({ sensors, place, onDone }: PlaceFormProps) {
         <FormMessage state={form.state} isLongForm />
       </div>
     </form>
+  )
+}
+
+/** Asked only where something hangs: with another air the past of its coats could be told in two ways. */
+function SinceChoice({ trees, error }: { trees: readonly string[]; error: string | undefined }) {
+  if (trees.length === 0) return <input type="hidden" name="since" value="now" />
+  return (
+    <fieldset className="tick-set">
+      <legend className="label">
+        {nameList(trees)} {trees.length === 1 ? 'hangs' : 'hang'} here. Since when is the air as you say?
+      </legend>
+      <label className="tick">
+        <input type="radio" name="since" value="now" defaultChecked />
+        <span>From now on: what has dried so far stands, and the rest dries in the new air.</span>
+      </label>
+      <label className="tick">
+        <input type="radio" name="since" value="always" />
+        <span>It was so before, and the figures here were wrong: work out again every coat that dries here, from its dip.</span>
+      </label>
+      <p className="field-hint">
+        The likely and safe times of these trees move at once. When in doubt, take ‘from now on’ and feel the shells before the next dip.
+      </p>
+      {error !== undefined && <p className="field-error">{error}</p>}
+    </fieldset>
   )
 }
