@@ -1,6 +1,7 @@
 import type { ReactNode } from 'react'
 import { PushKeeper } from '@/app/_components/push-keeper'
 import { OfficeBar } from '@/app/_components/office-bar'
+import { UnitsProvider } from '@/app/_components/units-context'
 import { systemClock } from '@/lib/core/clock'
 import { loadFoundry } from '@/lib/queries/load-foundry'
 import { currentMember } from '@/lib/server/auth'
@@ -25,7 +26,9 @@ export default async function OfficeLayout({ children }: { children: ReactNode }
         />
       </header>
       <PushKeeper />
-      <main id="page">{children}</main>
+      <main id="page">
+        <UnitsProvider units={member.units}>{children}</UnitsProvider>
+      </main>
     </div>
   )
 }

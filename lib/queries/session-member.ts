@@ -26,6 +26,8 @@ export async function sessionMember(sessionId: string, { clock }: { clock: Clock
   const session = await Session.findByPk(sessionId, { include: 'member' })
   const member = session?.member
   if (!session || !member || session.endedAt !== null || session.expiresAt <= clock.now() || member.disabledAt !== null) return null
+  // A first password that has run out opens nothing any more, not even through the session it has opened.
+  if (member.firstPasswordUntil !== null && member.firstPasswordUntil <= clock.now()) return null
   const foundry = await Foundry.findByPk(1)
   return {
     id: member.id,

@@ -31,6 +31,8 @@ export const warning = z.object({
   ]),
   level: z.enum(['note', 'warn', 'stop']),
   text: z.string(),
+  /** The same sentence with its temperatures in °F; only where it has any. All tablets share one queue. */
+  textInDegF: z.string().optional(),
 })
 export type Warning = z.infer<typeof warning>
 

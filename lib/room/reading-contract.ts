@@ -1,10 +1,13 @@
 import { z } from 'zod'
 
+/** The coldest and the hottest that a shell room can be, °C. */
+export const AIR_TEMP_LIMITS_C = { least: -10, most: 60 } as const
+
 /** What a shell room's air can be; anything else is a fault of the sensor or a slip of the finger. */
 export const airTempC = z
   .number('Temperature is a number in °C.')
-  .min(-10, 'A shell room is not colder than -10 °C.')
-  .max(60, 'A shell room is not hotter than 60 °C.')
+  .min(AIR_TEMP_LIMITS_C.least, 'A shell room is not colder than -10 °C.')
+  .max(AIR_TEMP_LIMITS_C.most, 'A shell room is not hotter than 60 °C.')
 
 /** Sensors report a little over 100 % in saturated air, so 105 is the limit; the clock itself clamps to 0.5-100. */
 export const relHumidityPct = z
