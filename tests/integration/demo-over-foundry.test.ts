@@ -28,8 +28,8 @@ async function everything(): Promise<Record<string, object[]>> {
   const tables = await select<{ name: string }>(`SELECT name FROM sqlite_schema WHERE type = 'table' ORDER BY name`)
   const all: Record<string, object[]> = {}
   for (const { name } of tables) {
-    if (!GROWS.includes(name))
-      all[name] = (await select<object>(`SELECT * FROM "${name}"`)).toSorted((a, b) => (JSON.stringify(a) < JSON.stringify(b) ? -1 : 1))
+    if (GROWS.includes(name)) continue
+    all[name] = (await select<object>(`SELECT * FROM "${name}"`)).toSorted((a, b) => (JSON.stringify(a) < JSON.stringify(b) ? -1 : 1))
   }
   return all
 }
