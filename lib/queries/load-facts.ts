@@ -4,8 +4,8 @@ import { treeTitle, type PieceName } from '@/lib/trees/title'
 import type { CoatFacts, RecipeCoatFacts, TreeFacts } from '@/lib/trees/facts'
 import { database } from '@/models'
 
-/** Which trees: those on the floor, some by id, or those that left it lately. */
-export type TreeSelection = { on: 'floor' } | { ids: readonly string[] } | { leftSince: number }
+/** Which trees: those on the floor, or some by id. */
+export type TreeSelection = { on: 'floor' } | { ids: readonly string[] }
 
 type TreeRow = {
   id: string
@@ -29,10 +29,7 @@ const select = <Row extends object>(sql: string, replacements: Record<string, un
 
 function condition(selection: TreeSelection): { where: string; replacements: Record<string, unknown> } {
   if ('on' in selection) return { where: 't.released_at IS NULL AND t.scrapped_at IS NULL', replacements: {} }
-  if ('ids' in selection) {
-    return { where: 't.id IN (SELECT value FROM json_each(:ids))', replacements: { ids: JSON.stringify(selection.ids) } }
-  }
-  return { where: 't.released_at >= :since OR t.scrapped_at >= :since', replacements: { since: selection.leftSince } }
+  return { where: 't.id IN (SELECT value FROM json_each(:ids))', replacements: { ids: JSON.stringify(selection.ids) } }
 }
 
 /** Stored facts of the chosen trees, by tag; a handful of queries, however many trees there are. */

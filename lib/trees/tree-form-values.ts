@@ -1,7 +1,7 @@
 import type { z } from 'zod'
-import { formText as text } from '@/lib/format/form-text'
 import { typedText } from '@/lib/format/typed-units'
 import type { MassUnit } from '@/lib/format/units'
+import { formText as text } from '@/lib/format/form-text'
 import type { TreeDetail } from '@/lib/trees/detail-contract'
 import type { FixedFields } from '@/lib/trees/fixed-fields'
 

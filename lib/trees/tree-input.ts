@@ -1,8 +1,8 @@
 import { z } from 'zod'
 import { RECESS_CLASSES, SPACINGS } from '@/lib/coats/vocabulary'
-import { typedNumber } from '@/lib/format/typed-number'
 import { readTyped } from '@/lib/format/typed-units'
 import { formatMass, type MassUnit } from '@/lib/format/units'
+import { typedNumber } from '@/lib/format/typed-number'
 
 export const CUP_KINDS = ['wax', 'paper', 'ceramic'] as const
 export type CupKind = (typeof CUP_KINDS)[number]

@@ -40,6 +40,7 @@ export const DOORS: readonly Door[] = [
   door('POST', '/api/auth/[...nextauth]', 'anybody', '/api/auth/signout'),
 
   door('GET', '/api/v1/queue', 'crew'),
+  door('GET', '/api/v1/trees.csv', 'crew'),
   door('POST', '/api/v1/dips', 'operator'),
   door('POST', '/api/v1/dips/undo', 'operator'),
   door('POST', '/api/v1/trees/[treeId]/holds', 'operator'),
