@@ -2,9 +2,10 @@ import type { NextRequest } from 'next/server'
 import { RateLimiterMemory, type RateLimiterRes } from 'rate-limiter-flexible'
 import { stampSensorToken } from '@/lib/commands/stamp-sensor-token'
 import { systemClock, type Clock } from '@/lib/core/clock'
-import { AppError } from '@/lib/core/errors'
+import { AppError, notSetUp } from '@/lib/core/errors'
 import { log } from '@/lib/core/log'
 import type { Act } from '@/lib/members/roles'
+import { hasMembers } from '@/lib/queries/has-members'
 import { sensorOfToken, type TokenSensor } from '@/lib/queries/sensor-of-token'
 import { requireMember, type Member } from '@/lib/server/auth'
 import { SENSOR_REQUESTS_PER_MINUTE } from '@/lib/server/limits'
@@ -70,6 +71,7 @@ export function sensorRoute<P extends Params = Params>(handler: (call: Call<P> &
 async function requireSensor(request: NextRequest, clock: Clock): Promise<TokenSensor> {
   const [, token] = /^Bearer +(\S+)$/i.exec(request.headers.get('authorization') ?? '') ?? []
   const sensor = token ? await sensorOfToken(token) : null
+  if (!sensor && !(await hasMembers())) throw notSetUp()
   if (!sensor) throw new AppError('unauthenticated', 'Send the token of a sensor in use: Authorization: Bearer kw_…')
   await sensorRequests.consume(sensor.tokenId).catch((refusal: RateLimiterRes) => {
     throw new AppError(

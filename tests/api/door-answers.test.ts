@@ -30,7 +30,9 @@ beforeAll(async () => {
   const anonymous = newClient(server.baseUrl)
   document = (await (await anonymous.fetch('/api/v1/openapi.json')).json()) as OpenApiDocument
   const operator = await signIn(server.baseUrl, member.email, member.password)
-  scene = { foundry, factories, service, operator, anonymous, sensorToken: token, ask }
+  const boss = await seedMember('owner')
+  const owner = await signIn(server.baseUrl, boss.email, boss.password)
+  scene = { foundry, factories, service, operator, owner, anonymous, dataDir: server.dataDir, sensorToken: token, ask }
 })
 afterAll(() => Promise.all([server.stop(), stopService()]))
 
