@@ -17,7 +17,7 @@ const CHANGES = [
   /\b(?:TreeEvent|FoundryEvent)\s*\.\s*find\w+\([^;]*\)\s*\)?\s*\.\s*(?:update|destroy|save|set)\b/,
   /\b(?:UPDATE|DELETE\s+FROM|REPLACE\s+INTO|INSERT\s+OR\s+REPLACE\s+INTO|DROP\s+TABLE|ALTER\s+TABLE)\s+["`]?(?:tree_events|foundry_events)\b/i,
   // A name that is put into a statement from elsewhere.
-  /(?<!tableName: |kindsIn\()['"](?:tree|foundry)_events['"]/,
+  /(?<!tableName: |kindsIn\(|has\()['"](?:tree|foundry)_events['"]/,
   /DROP\s+TRIGGER\s+["`]?(?:tree|foundry)_events_no_/i,
 ]
 
