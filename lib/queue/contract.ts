@@ -3,7 +3,7 @@ import { COAT_KINDS, GUARDS, STUCCOS } from '@/lib/coats/vocabulary'
 import { TREE_STATES } from '@/lib/trees/states'
 
 /** Instants travel as epoch milliseconds (UTC); the browser shows them in the foundry's zone. */
-const instant = z.int()
+const instant = z.int().describe('Epoch milliseconds, UTC.')
 
 /** A pair of promised times. Null where the time lies beyond the forecast's horizon. */
 const pair = z.object({ earliestAt: instant.nullable(), likelyAt: instant.nullable(), safeAt: instant.nullable() })

@@ -26,6 +26,9 @@ export const DOORS: readonly Door[] = [
   page('/trees/new', 'supervisor'),
   page('/burnout', 'crew'),
   page('/me', 'crew'),
+  // Upkeep: the state of the program, and the records as a file.
+  page('/upkeep', 'owner'),
+  door('GET', '/api/v1/backups/newest', 'owner'),
   // The foundry's settings.
   page('/settings', 'supervisor'),
   page('/settings/hours', 'supervisor'),
@@ -55,6 +58,10 @@ export const DOORS: readonly Door[] = [
   door('DELETE', '/api/v1/trees/[treeId]/watch', 'crew'),
   door('POST', '/api/v1/readings', 'sensor'),
   door('POST', '/api/v1/readings/typed', 'operator'),
+  // The API's description, how to use it, and the history of every change.
+  door('GET', '/api/v1/openapi.json', 'anybody'),
+  page('/api-guide', 'supervisor'),
+  page('/history', 'supervisor'),
 ]
 
 /** One server action: file and exported name, the act that its first line requires, and from which role upwards that is. */
@@ -75,6 +82,7 @@ export const ACTIONS: readonly ActionRow[] = [
   { file: 'app/(office)/trees/[tag]/actions.ts', name: 'scrapAction', act: 'trees', who: 'supervisor' },
   { file: 'app/(office)/burnout/actions.ts', name: 'releaseAction', act: 'release', who: 'supervisor' },
   { file: 'app/(office)/burnout/actions.ts', name: 'withdrawReleaseAction', act: 'release', who: 'supervisor' },
+  { file: 'app/(office)/upkeep/actions.ts', name: 'backUpNowAction', act: 'upkeep', who: 'owner' },
   // The foundry's settings.
   { file: 'app/(office)/settings/actions.ts', name: 'saveFoundryAction', act: 'settings', who: 'owner' },
   { file: 'app/(office)/settings/hours/actions.ts', name: 'saveHoursAction', act: 'settings', who: 'owner' },
