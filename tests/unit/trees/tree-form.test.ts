@@ -74,7 +74,7 @@ describe('fixedFields', () => {
 })
 
 describe('a known tree in its form', () => {
-  const known = {
+  const known: Parameters<typeof formValuesOf>[0] = {
     tree: { tag: 'T-122', place: { id: whole.placeId, name: 'Rack B 5' }, pourDate: null },
     recipe: { versionId: whole.recipeVersionId },
     waxMassKg: 3.2,
@@ -84,7 +84,7 @@ describe('a known tree in its form', () => {
     spacing: 'open',
     hungMassKg: null,
     pieces: [{ id: 'x', workTitle: 'Otter Gate', sectionName: 'panel 2', editionNumber: 1, isRecast: false }],
-  } as const
+  }
   const stored = formValuesOf(known, 'kg')
 
   it('goes through the form unchanged', () => {
