@@ -23,7 +23,7 @@ beforeAll(async () => {
   }
 })
 
-// 29 °C is 84.2 °F, 26 °C is 78.8 °F; 8 K is a difference of 14.4 °F: by the definition of the scales.
+// 29 °C is 84.2 °F, 26 °C is 78.8 °F; 8 K and 10 K are differences of 14.4 and 18.0 °F: by the definition of the scales.
 it('the heat of a room is said in the unit of the reader, with its limit', () => {
   expect(sentences.get('heat')?.inDegC).toContain('The room is at 29.0\u00A0°C, limit 26.0\u00A0°C')
   expect(sentences.get('heat')?.inDegF).toContain('The room is at 84.2\u00A0°F, limit 78.8\u00A0°F')
@@ -35,8 +35,8 @@ it('a move of the room is a difference: no 32 is added', () => {
 })
 
 it('so is the gap to the wet bulb', () => {
-  expect(sentences.get('chill')?.inDegC).toMatch(/the wet bulb lies \d+\.\d\u00A0K under the room, limit 8\.0\u00A0K/)
-  expect(sentences.get('chill')?.inDegF).toMatch(/the wet bulb lies \d+\.\d\u00A0°F under the room, limit 14\.4\u00A0°F/)
+  expect(sentences.get('chill')?.inDegC).toMatch(/the wet bulb lies \d+\.\d\u00A0K under the room, limit 10\.0\u00A0K/)
+  expect(sentences.get('chill')?.inDegF).toMatch(/the wet bulb lies \d+\.\d\u00A0°F under the room, limit 18\.0\u00A0°F/)
 })
 
 it('what has no temperature is the same for all', () => {
