@@ -38,7 +38,7 @@ export function SensorRows({
                 text: 'Every logger that sends the air of the room stands here, and every hygrometer that you read off the wall. Without readings the drying clock knows nothing.',
               }
         }
-        form={(onDone) => <SensorForm onDone={onDone} />}
+        renderForm={(onDone) => <SensorForm onDone={onDone} />}
       />
       <ul className="settings-rows">
         {inUse.map((sensor) => (
@@ -47,6 +47,7 @@ export function SensorRows({
             title={sensor.name}
             line={KIND_LINES[sensor.kind]}
             form={<SensorForm sensor={sensor} />}
+            verb="Rename"
             keys={
               <ActForm action={() => retireSensorAction(sensor.id)} label={`Retire ${sensor.name}`}>
                 Retire
