@@ -1,4 +1,6 @@
 import type { z } from 'zod'
+import { typedText } from '@/lib/format/typed-units'
+import type { MassUnit } from '@/lib/format/units'
 import { formText as text } from '@/lib/format/form-text'
 import type { TreeDetail } from '@/lib/trees/detail-contract'
 import type { FixedFields } from '@/lib/trees/fixed-fields'
@@ -6,7 +8,7 @@ import type { FixedFields } from '@/lib/trees/fixed-fields'
 /** A piece as typed. */
 export type PieceValues = { workTitle: string; sectionName: string; editionNumber: string; isRecast: boolean }
 
-/** A tree as typed: text as it stands in the fields, so that nothing is lost when the form comes back. */
+/** A tree as typed: text as it stands in the fields, so that nothing is lost when the form comes back. Masses are in the typist's unit. */
 export type TreeFormValues = {
   tag: string
   recipeVersionId: string
@@ -67,8 +69,8 @@ type KnownTree = Pick<TreeDetail, 'waxMassKg' | 'cupKind' | 'cupVolumeL' | 'rece
   tree: Pick<TreeDetail['tree'], 'tag' | 'place' | 'pourDate'>
 }
 
-/** A known tree as its form shows it. */
-export function formValuesOf({ tree, recipe, pieces, ...detail }: KnownTree): TreeFormValues {
+/** A known tree as its form shows it, with its masses in this unit. */
+export function formValuesOf({ tree, recipe, pieces, ...detail }: KnownTree, massUnit: MassUnit): TreeFormValues {
   return {
     tag: tree.tag,
     recipeVersionId: recipe.versionId,
@@ -79,12 +81,12 @@ export function formValuesOf({ tree, recipe, pieces, ...detail }: KnownTree): Tr
       editionNumber: String(piece.editionNumber),
       isRecast: piece.isRecast,
     })),
-    waxMassKg: String(detail.waxMassKg),
+    waxMassKg: typedText(detail.waxMassKg, massUnit),
     cupKind: detail.cupKind,
     cupVolumeL: String(detail.cupVolumeL),
     recessClass: detail.recessClass,
     spacing: detail.spacing,
-    hungMassKg: detail.hungMassKg === null ? '' : String(detail.hungMassKg),
+    hungMassKg: detail.hungMassKg === null ? '' : typedText(detail.hungMassKg, massUnit),
     pourDate: tree.pourDate ?? '',
   }
 }
