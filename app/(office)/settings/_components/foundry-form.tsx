@@ -60,7 +60,7 @@ export function FoundryForm({ values, shown, zones, onDone }: FoundryFormProps) 
             defaultValue={values.altitudeM}
             onInput={(event) => setAltitude(event.currentTarget.value)}
             error={form.errorOf('altitudeM')}
-            hint={`${pressureWords(altitude)} The drying clock works out new readings with it; those that are stored stay as they are.`}
+            hint={`${pressureWords(altitude)} New readings are worked out with it; stored ones stay as they are. How fast moving air dries follows at once.`}
             autoComplete="off"
           />
         </div>
