@@ -1,5 +1,5 @@
 // `npm start`: from a fresh checkout to an open Kilnward in one command. Plain Node, because it runs before anything is installed.
-import { spawn, spawnSync } from 'node:child_process'
+import { spawn } from 'node:child_process'
 import { createECDH, randomBytes, randomInt } from 'node:crypto'
 import { chmodSync, closeSync, existsSync, mkdirSync, openSync, readFileSync, renameSync, rmSync, writeFileSync } from 'node:fs'
 import { createServer } from 'node:net'
@@ -20,8 +20,8 @@ const TSX = ['--import', 'tsx']
 const isDev = process.argv.includes('--dev')
 /** A new database stays empty, for a foundry of one's own. */
 const isEmpty = process.argv.includes('--empty')
-const lock = { pid: process.pid, port: 0, children: {} }
-let lockFile
+/** Set once the data folder is ours. */
+let lock
 let isStopping = false
 
 /** Lines for a person; events of the program itself go to stderr as JSON. */
