@@ -13,12 +13,12 @@ export const relHumidityPct = z
   .max(105, 'Humidity cannot be over 105 %.')
 
 /** An instant as ISO 8601 with a zone, or epoch milliseconds. */
-const measuredAt = z
-  .union([z.int().min(0), z.iso.datetime({ offset: true })])
+export const instant = z
+  .union([z.int().min(0), z.iso.datetime({ offset: true })], 'A time is ISO 8601 with its zone, or epoch milliseconds.')
   .transform((value) => (typeof value === 'number' ? value : Date.parse(value)))
 
 /** One row of `POST /api/v1/readings`; rows are checked one by one so that good ones are kept. */
-export const readingRow = z.strictObject({ measuredAt, airTempC, relHumidityPct })
+export const readingRow = z.strictObject({ measuredAt: instant, airTempC, relHumidityPct })
 export type ReadingRow = z.infer<typeof readingRow>
 
 /** Body of `POST /api/v1/readings`: at most 10,000 rows. */
@@ -32,5 +32,11 @@ export const readingBatchAnswer = z.object({
 })
 export type ReadingBatchAnswer = z.infer<typeof readingBatchAnswer>
 
-/** A person reads the wall hygrometer. */
-export const typedReading = z.strictObject({ operationId: z.uuid(), sensorId: z.int(), airTempC, relHumidityPct })
+/** A person reads the wall hygrometer: now, or at the time they name. */
+export const typedReading = z.strictObject({
+  operationId: z.uuid(),
+  sensorId: z.int(),
+  airTempC,
+  relHumidityPct,
+  measuredAt: instant.optional(),
+})
