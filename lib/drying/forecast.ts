@@ -31,7 +31,7 @@ export type ForecastInput = ForecastSpan & {
  * @source our own rule, to be calibrated.
  */
 export function forecastSegments({ hours, lastRoomFactor, ...span }: ForecastInput): RoomSegment[] {
-  return forecastHours({ hours, valueOf: meanRoomFactor, last: lastRoomFactor, ...span }).map(({ from, to, likely }) =>
+  return forecastHours(meanRoomFactor, { hours, last: lastRoomFactor, ...span }).map(({ from, to, likely }) =>
     constantSegment(from, to, 'forecast', likely),
   )
 }
@@ -46,14 +46,10 @@ export type ForecastHour = { from: Instant; to: Instant; likely: number; low: nu
  * @param last what is taken where no hour tells; null gives no forecast.
  * @source our own rule, to be calibrated.
  */
-export function forecastHours<Row extends { hourStart: Instant }>({
-  hours,
-  valueOf,
-  now,
-  timeZone,
-  last,
-  horizonHours,
-}: ForecastSpan & { hours: readonly Row[]; valueOf: (row: Row) => number | null; last: number | null }): ForecastHour[] {
+export function forecastHours<Row extends { hourStart: Instant }>(
+  valueOf: (row: Row) => number | null,
+  { hours, now, timeZone, last, horizonHours }: ForecastSpan & { hours: readonly Row[]; last: number | null },
+): ForecastHour[] {
   const localHour = localHourIn(timeZone)
   const byLocalHour = new Map<number, number[]>()
   const lastDay: number[] = []

@@ -1,5 +1,6 @@
 import { z } from 'zod'
 import { RECESS_CLASSES, SPACINGS } from '@/lib/coats/vocabulary'
+import { typedNumber } from '@/lib/format/typed-number'
 
 export const CUP_KINDS = ['wax', 'paper', 'ceramic'] as const
 export type CupKind = (typeof CUP_KINDS)[number]
@@ -10,17 +11,6 @@ export type WaxSurface = (typeof WAX_SURFACES)[number]
 export const treeTag = z
   .string()
   .regex(/^[A-Z]{1,3}-\d{1,5}$/, 'A tag is one to three capital letters, a dash and a number, such as T-128.')
-
-/** Form fields arrive as text; a decimal comma is as good as a point. An empty field is 'not given'. */
-const typedNumber = (field: string) =>
-  z.preprocess(
-    (value) => {
-      if (typeof value !== 'string') return value
-      const text = value.trim().replace(',', '.')
-      return text === '' ? undefined : Number(text)
-    },
-    z.number(`${field} is a number.`),
-  )
 
 const optionalText = (schema: z.ZodType<string>) =>
   z.preprocess((value) => (value === '' || value === undefined ? null : value), schema.nullable())
