@@ -1,8 +1,8 @@
 import { moveTree } from '@/lib/commands/move-tree'
 import { openTree } from '@/lib/commands/open-tree'
+import { refuseField } from '@/lib/commands/refuse-field'
 import { addTreeEvent } from '@/lib/commands/tree-event'
 import type { Clock } from '@/lib/core/clock'
-import { AppError } from '@/lib/core/errors'
 import { newId } from '@/lib/core/ids'
 import { RECESS_FACTOR, SECTION_FACTOR } from '@/lib/drying/need'
 import type { Actor } from '@/lib/members/actor'
@@ -10,11 +10,6 @@ import type { TreeInput } from '@/lib/trees/tree-input'
 import { Coat, inTransaction, Piece, Place, RecipeVersion, Section, Tree, TreePiece, TreePlace, Work } from '@/models'
 
 type By = { member: Actor; clock: Clock }
-
-/** A refusal that belongs beside one field of the form. */
-function refuseField(field: string, reason: string): never {
-  throw new AppError('conflict', reason, { fields: [{ path: field, message: reason }] })
-}
 
 /**
  * Adds a tree with its pieces, hung at its place.
