@@ -26,7 +26,7 @@ import {
   type TreeEffect,
 } from '@/lib/room/tonight'
 import { shiftsFrom } from '@/lib/schedule/shifts'
-import { database, Place } from '@/models'
+import { database } from '@/models'
 
 const MOST_BARS = 12
 const MOST_DRIED = 120
@@ -45,14 +45,10 @@ type RoomInput = {
  */
 export async function loadRoomPage({ sensorId, tempUnit, clock }: RoomInput): Promise<RoomPage> {
   const now = clock.now()
-  const [floor, active] = await Promise.all([
-    loadFloor({ now, trees: { on: 'floor' } }),
-    Place.findAll({ where: { retiredAt: null }, attributes: ['id'] }),
-  ])
+  const floor = await loadFloor({ now, trees: { on: 'floor' } })
   const { foundry, context } = floor
   const { timeZone, pressurePa } = foundry
-  const activeIds = new Set(active.map((place) => place.id))
-  const places = foundry.places.filter((place) => activeIds.has(place.id))
+  const places = foundry.places.filter((place) => !place.isRetired)
   const sensorOf = (tree: DryingTree) => context.places.get(tree.facts.stays.at(-1)?.placeId ?? '')?.sensorId
   const rooms = foundry.sensors.flatMap((sensor) => {
     const climate = context.climates.get(sensor.id)
@@ -60,7 +56,7 @@ export async function loadRoomPage({ sensorId, tempUnit, clock }: RoomInput): Pr
   })
 
   const drying = dryingTrees(floor.trees)
-  const tonight = tonightOf(context, foundry.shiftHours.length > 0)
+  const tonight = tonightOf(context, foundry.calendar.hours.length > 0)
   const dryer = bestDryer(floor, drying, tonight, sensorOf)
   const effects = treeEffects(drying, context, tonight, dryer)
   const fans = places
@@ -76,7 +72,7 @@ export async function loadRoomPage({ sensorId, tempUnit, clock }: RoomInput): Pr
   const from = now - BACK_HOURS * millisecondsInHour
   const to = now + AHEAD_HOURS * millisecondsInHour
   // From three days back, so that the shift or night in which the charts begin is a whole one.
-  const shifts = shiftsFrom(from - 3 * millisecondsInDay, foundry.shiftHours, timeZone)
+  const shifts = shiftsFrom(from - 3 * millisecondsInDay, foundry.calendar, timeZone)
   const since = mondayOf(now, timeZone)
   const [readings, dried] = await Promise.all([
     room ? loadReadingsInRange(room.sensorId, exactFrom(now), now) : [],
@@ -129,10 +125,10 @@ export async function loadRoomPage({ sensorId, tempUnit, clock }: RoomInput): Pr
     points: climate ? roomSeries(climate, readings, { now, timeZone, pressurePa }) : [],
     from,
     to,
-    closed: foundry.shiftHours.length > 0 ? closedStretches(shifts, from, to) : [],
+    closed: foundry.calendar.hours.length > 0 ? closedStretches(shifts, from, to) : [],
     bars: room ? barsOf(effects, (effect) => sensorOf(effect.tree) === room.sensorId) : [],
     shiftSpeeds:
-      climate && foundry.shiftHours.length > 0 ? shiftSpeeds(climate.curve, shifts, { from, to: tonight.to, now, timeZone }) : [],
+      climate && foundry.calendar.hours.length > 0 ? shiftSpeeds(climate.curve, shifts, { from, to: tonight.to, now, timeZone }) : [],
     dried: { since, coats: dried.slice(0, MOST_DRIED), isCut: dried.length > MOST_DRIED },
     places: here.map((place) => ({ name: place.name, airSpeedMps: place.airSpeedFansOnMps })),
     coolestCoat1C: coat1Temps.length > 0 ? Math.min(...coat1Temps) : null,

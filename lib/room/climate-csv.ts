@@ -1,6 +1,7 @@
 import { TZDate } from '@date-fns/tz'
-import { millisecondsInDay, millisecondsInHour } from 'date-fns/constants'
+import { millisecondsInDay } from 'date-fns/constants'
 import { z } from 'zod'
+import { hourStartOf } from '@/lib/drying/dose-hours'
 import { fromSi, TEMP_UNITS, type TempUnit } from '@/lib/format/units'
 import type { ClimateHour } from '@/lib/room/climate'
 import { hourPoint, type RoomPoint } from '@/lib/room/series'
@@ -23,92 +24,51 @@ export const climateRange = z
   })
 export type ClimateRange = z.output<typeof climateRange>
 
-/** Columns of the file, units in the names. */
-export function climateColumns(temp: TempUnit): string[] {
-  const t = temp === 'degF' ? 'degF' : 'degC'
-  return [
-    'kind',
-    'hour_start_utc',
-    'hour_start_local',
-    'sensor',
-    `mean_air_temp_${t}`,
-    `min_air_temp_${t}`,
-    `max_air_temp_${t}`,
-    'mean_rel_humidity_pct',
-    'max_rel_humidity_pct',
-    `dew_point_${t}`,
-    'vapour_pressure_deficit_pa',
-    'wet_bulb_gap_k',
-    'drying_speed_pct',
-    'drying_speed_low_pct',
-    'drying_speed_high_pct',
-    'dose_reference_hours',
-    'covered_minutes',
-    'gap_minutes',
-    'readings',
-    'typed_readings',
-  ]
-}
-
 const rounded = (value: number | null | undefined, digits: number) =>
   value === null || value === undefined ? null : Math.round(value * 10 ** digits) / 10 ** digits
 
-type RowContext = { sensorName: string; temp: TempUnit; timeZone: string; pressurePa: number }
+/** A row of the file: an hour of the table with its figures, or an hour of the forecast. */
+export type ClimateFileRow = { hourStart: number; hour: ClimateHour | null; point: RoomPoint }
+
+/** Measured hours in order, then the forecast. */
+export function climateFileRows(hours: readonly ClimateHour[], forecast: readonly RoomPoint[], pressurePa: number): ClimateFileRow[] {
+  return [
+    ...hours.map((hour) => ({ hourStart: hour.hourStart, hour, point: hourPoint(hour, pressurePa) })),
+    ...forecast.map((point) => ({ hourStart: hourStartOf(point.at), hour: null, point })),
+  ]
+}
+
+export type ClimateColumn = { head: string; value: (row: ClimateFileRow) => string | number | null }
 
 /**
- * Rows of the file: measured hours in order, then the forecast.
+ * Columns of the file, units in their heads. Instants are ISO 8601, in UTC and with the foundry's own offset.
  *
- * Speeds in percent of the reference speed in air of 1.0 m/s; the dose is that of the whole hour at a place factor of 1. Gap, dew point
- * and deficit are those of the hour's mean air.
+ * Speeds in percent of the reference speed in air of 1.0 m/s; the dose is that of the whole hour at a place factor of 1. Dew point,
+ * deficit and gap are those of the hour's mean air. In a forecast the least and the most are its bounds.
  */
-export function climateRows(
-  hours: readonly ClimateHour[],
-  forecast: readonly RoomPoint[],
-  context: RowContext,
-): (string | number | null)[][] {
-  const { sensorName, timeZone, pressurePa } = context
+export function climateColumns({ sensorName, temp, timeZone }: { sensorName: string; temp: TempUnit; timeZone: string }): ClimateColumn[] {
   const temperature = (celsius: number | null | undefined) =>
-    celsius === null || celsius === undefined ? null : rounded(fromSi(celsius, context.temp), 2)
-  const when = (at: number) => [new Date(at).toISOString(), new TZDate(at, timeZone).toISOString()]
-  const figures = ({ dewPointC, vaporPressureDeficitPa, wetBulbGapK, speed }: RoomPoint) => [
-    temperature(dewPointC),
-    rounded(vaporPressureDeficitPa, 0),
-    rounded(wetBulbGapK?.likely, 2),
-    rounded(speed && speed.likely * 100, 1),
-    rounded(speed && speed.low * 100, 1),
-    rounded(speed && speed.high * 100, 1),
+    celsius === null || celsius === undefined ? null : rounded(fromSi(celsius, temp), 2)
+  return [
+    { head: 'kind', value: ({ hour }) => (hour === null ? 'forecast' : hour.hasTyped ? 'typed' : 'measured') },
+    { head: 'hour_start_utc', value: ({ hourStart }) => new Date(hourStart).toISOString() },
+    { head: 'hour_start_local', value: ({ hourStart }) => new TZDate(hourStart, timeZone).toISOString() },
+    { head: 'sensor', value: () => sensorName },
+    { head: `mean_air_temp_${temp}`, value: ({ point }) => temperature(point.airTempC?.likely) },
+    { head: `min_air_temp_${temp}`, value: ({ hour, point }) => temperature(hour ? hour.minAirTempC : point.airTempC?.low) },
+    { head: `max_air_temp_${temp}`, value: ({ hour, point }) => temperature(hour ? hour.maxAirTempC : point.airTempC?.high) },
+    { head: 'mean_rel_humidity_pct', value: ({ point }) => rounded(point.relHumidityPct?.likely, 1) },
+    { head: 'max_rel_humidity_pct', value: ({ hour, point }) => rounded(hour ? hour.maxRelHumidityPct : point.relHumidityPct?.high, 1) },
+    { head: `dew_point_${temp}`, value: ({ point }) => temperature(point.dewPointC) },
+    { head: 'vapour_pressure_deficit_pa', value: ({ point }) => rounded(point.vaporPressureDeficitPa, 0) },
+    { head: 'wet_bulb_gap_k', value: ({ point }) => rounded(point.wetBulbGapK?.likely, 2) },
+    { head: 'drying_speed_pct', value: ({ point }) => rounded(point.speed && point.speed.likely * 100, 1) },
+    { head: 'drying_speed_low_pct', value: ({ point }) => rounded(point.speed && point.speed.low * 100, 1) },
+    { head: 'drying_speed_high_pct', value: ({ point }) => rounded(point.speed && point.speed.high * 100, 1) },
+    { head: 'dose_reference_hours', value: ({ hour }) => rounded(hour?.dose.likely, 4) },
+    { head: 'covered_minutes', value: ({ hour }) => rounded(hour?.coveredMinutes, 1) },
+    { head: 'gap_minutes', value: ({ hour }) => rounded(hour?.gapMinutes, 1) },
+    { head: 'readings', value: ({ hour }) => hour?.readingCount ?? null },
+    { head: 'typed_readings', value: ({ hour }) => hour?.typedCount ?? null },
   ]
-  const measured = hours.map((hour) => [
-    hour.hasTyped ? 'typed' : 'measured',
-    ...when(hour.hourStart),
-    sensorName,
-    temperature(hour.meanAirTempC),
-    temperature(hour.minAirTempC),
-    temperature(hour.maxAirTempC),
-    rounded(hour.meanRelHumidityPct, 1),
-    rounded(hour.maxRelHumidityPct, 1),
-    ...figures(hourPoint(hour, pressurePa)),
-    rounded(hour.dose.likely, 4),
-    rounded(hour.coveredMinutes, 1),
-    rounded(hour.gapMinutes, 1),
-    hour.readingCount,
-    hour.typedCount,
-  ])
-  const coming = forecast.map((point) => [
-    'forecast',
-    ...when(Math.floor(point.at / millisecondsInHour) * millisecondsInHour),
-    sensorName,
-    temperature(point.airTempC?.likely),
-    temperature(point.airTempC?.low),
-    temperature(point.airTempC?.high),
-    rounded(point.relHumidityPct?.likely, 1),
-    rounded(point.relHumidityPct?.high, 1),
-    ...figures(point),
-    null,
-    null,
-    null,
-    0,
-    0,
-  ])
-  return [...measured, ...coming]
 }

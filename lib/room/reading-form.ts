@@ -1,11 +1,9 @@
 import { TZDate } from '@date-fns/tz'
 import { z } from 'zod'
 import { typedNumber } from '@/lib/format/typed-number'
-import { fromSi, toSi, UNIT_SIGNS, wholeNumber, type TempUnit } from '@/lib/format/units'
-import { relHumidityPct } from '@/lib/room/reading-contract'
-
-const COLDEST_C = -10
-const HOTTEST_C = 60
+import { readTyped } from '@/lib/format/typed-units'
+import { fromSi, UNIT_SIGNS, wholeNumber, type TempUnit } from '@/lib/format/units'
+import { AIR_TEMP_LIMITS_C, relHumidityPct } from '@/lib/room/reading-contract'
 
 /**
  * An instant from the wall clock of a zone, as a form's field of day and time gives it: '2026-10-13T15:10'. In the hour that a clock
@@ -26,10 +24,10 @@ export const readingForm = (unit: TempUnit, timeZone: string) =>
     airTempC: typedNumber('Temperature').pipe(
       z
         .number('Temperature is a number.')
-        .refine((typed) => typed >= fromSi(COLDEST_C, unit) && typed <= fromSi(HOTTEST_C, unit), {
-          error: `A shell room is between ${wholeNumber(fromSi(COLDEST_C, unit))} and ${wholeNumber(fromSi(HOTTEST_C, unit))} ${UNIT_SIGNS[unit]}.`,
+        .refine((typed) => typed >= fromSi(AIR_TEMP_LIMITS_C.least, unit) && typed <= fromSi(AIR_TEMP_LIMITS_C.most, unit), {
+          error: `A shell room is between ${wholeNumber(fromSi(AIR_TEMP_LIMITS_C.least, unit))} and ${wholeNumber(fromSi(AIR_TEMP_LIMITS_C.most, unit))} ${UNIT_SIGNS[unit]}.`,
         })
-        .transform((typed) => Math.round(toSi(typed, unit) * 1e4) / 1e4),
+        .transform((typed) => readTyped(typed, unit)),
     ),
     relHumidityPct: typedNumber('Humidity').pipe(relHumidityPct),
     measuredAt: z.string().transform((text, context) => {

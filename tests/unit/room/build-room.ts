@@ -2,7 +2,7 @@ import { roomFactor } from '@/lib/drying/room-factor'
 import type { RoomReading } from '@/lib/drying/types'
 import type { CoatKind, RecessClass, Stucco } from '@/lib/coats/vocabulary'
 import { buildClimate, type ClimateHour, type RoomClimate } from '@/lib/room/climate'
-import { shiftsFrom, type ShiftHours } from '@/lib/schedule/shifts'
+import { shiftsFrom, type WorkCalendar } from '@/lib/schedule/shifts'
 import type { PlaceFacts, TreeFacts } from '@/lib/trees/facts'
 import { deriveTree, type DerivedTree } from '@/lib/trees/derive'
 import { floorContext, type FloorContext } from '@/lib/trees/spans'
@@ -14,7 +14,10 @@ export const NOW = Date.parse('2026-10-13T15:00:00Z')
 export const TIME_ZONE = 'Europe/London'
 const PRESSURE_PA = 101_325
 
-export const WEEK: ShiftHours[] = [1, 2, 3, 4, 5].map((weekday) => ({ weekday, opensMinute: 420, closesMinute: 1020 }))
+export const WEEK: WorkCalendar = {
+  hours: [1, 2, 3, 4, 5].map((weekday) => ({ weekday, opensMinute: 420, closesMinute: 1020 })),
+  closures: [],
+}
 
 export type Air = { airTempC: number; relHumidityPct: number }
 export const RECIPE_AIR: Air = { airTempC: 21, relHumidityPct: 50 }
@@ -61,22 +64,33 @@ export function buildRoom(
 }
 
 export function buildPlaceFacts(id: string, overrides: Partial<PlaceFacts> = {}): PlaceFacts {
-  return { id, name: id, sensorId: 1, isTypedOnly: false, airSpeedFansOnMps: 1, airSpeedFansOffMps: 1, fanHours: [], ...overrides }
+  return {
+    id,
+    name: id,
+    sensorId: 1,
+    isTypedOnly: false,
+    airSpeedFansOnMps: 1,
+    airSpeedFansOffMps: 1,
+    fanHours: [],
+    formerAirs: [],
+    isRetired: false,
+    ...overrides,
+  }
 }
 
 export function buildContext({
   climates = [buildRoom(() => RECIPE_AIR)],
   places = [buildPlaceFacts('Rack')],
   now = NOW,
-  shiftHours = WEEK,
-}: { climates?: RoomClimate[]; places?: PlaceFacts[]; now?: number; shiftHours?: ShiftHours[] } = {}): FloorContext {
+  calendar = WEEK,
+}: { climates?: RoomClimate[]; places?: PlaceFacts[]; now?: number; calendar?: WorkCalendar } = {}): FloorContext {
   return floorContext({
     now,
     timeZone: TIME_ZONE,
     pressurePa: PRESSURE_PA,
     climates,
     places,
-    shifts: shiftsFrom(now, shiftHours, TIME_ZONE),
+    shifts: shiftsFrom(now, calendar, TIME_ZONE),
     from: now - 14 * 24 * HOUR,
   })
 }
@@ -109,6 +123,7 @@ export function buildDerived(context: FloorContext, spec: TreeSpec = {}): Derive
     id: tag,
     tag,
     title: tag,
+    isDemo: false,
     recessClass,
     spacing: 'open',
     pourDate: null,

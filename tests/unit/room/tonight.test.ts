@@ -33,7 +33,10 @@ describe('the time that is weighed', () => {
   })
 
   it('is a day where the foundry keeps no hours', () => {
-    expect(tonightOf(buildContext({ shiftHours: [], climates: [] }), false)).toMatchObject({ to: NOW + 24 * HOUR, name: 'The next 24 h' })
+    expect(tonightOf(buildContext({ calendar: { hours: [], closures: [] }, climates: [] }), false)).toMatchObject({
+      to: NOW + 24 * HOUR,
+      name: 'The next 24 h',
+    })
   })
 })
 
