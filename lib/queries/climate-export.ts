@@ -19,7 +19,10 @@ export async function loadClimateExport(sensorId: number, range: ClimateRange, {
   const [sensor, { timeZone, pressurePa }] = await Promise.all([Sensor.findByPk(sensorId), loadFoundry()])
   if (!sensor) return null
   const columns = climateColumns({ sensorName: sensor.name, temp: range.temp, timeZone })
-  const named = sensor.name.toLowerCase().replaceAll(/[^a-z0-9]+/g, '-')
+  const named = sensor.name
+    .toLowerCase()
+    .replaceAll(/[^a-z0-9]+/g, '-')
+    .replaceAll(/^-|-$/g, '')
   if (range.from !== undefined && range.to !== undefined) {
     const hours = await loadHours(sensorId, hourStartOf(startOfLocalDay(range.from, timeZone)), startOfDayAfter(range.to, timeZone))
     return { fileName: `climate-${named}-${range.from}-to-${range.to}.csv`, columns, rows: climateFileRows(hours, [], pressurePa) }

@@ -1,5 +1,5 @@
 import { millisecondsInHour } from 'date-fns/constants'
-import { pullWord, VERY_SLOW_SPEED } from '@/lib/room/drying-pull'
+import { PULL_WORDS, pullWord, VERY_SLOW_SPEED } from '@/lib/room/drying-pull'
 import type { RoomPoint } from '@/lib/room/series'
 
 /** A stretch of the ribbon under one word, with its mean speed as a share of the reference speed. */
@@ -52,7 +52,7 @@ function merged(left: Cell, right: Cell, word: string): Cell {
  * hours goes into the longer of its neighbours.
  */
 export function ribbonRuns(points: readonly RoomPoint[], now: number): RibbonRun[] {
-  const runs = joined(cellsOf(points, now), (left, right) => left.word === right.word)
+  let runs = withOneWord(cellsOf(points, now))
   for (;;) {
     const shortest = runs
       .map((run, index) => ({ index, length: run.to - run.from }))
@@ -62,11 +62,18 @@ export function ribbonRuns(points: readonly RoomPoint[], now: number): RibbonRun
     const { index } = shortest
     const into = neighbours(runs, index).toSorted((a, b) => runs[b]!.to - runs[b]!.from - (runs[a]!.to - runs[a]!.from))[0]!
     const [left, right] = [Math.min(index, into), Math.max(index, into)]
-    runs.splice(left, 2, merged(runs[left]!, runs[right]!, runs[into]!.word))
+    runs = withOneWord(runs.toSpliced(left, 2, merged(runs[left]!, runs[right]!, runs[into]!.word)))
   }
   // The word is that of the whole stretch's own mean, unless a face coat would suffer.
-  return runs.map((run) => ({ ...run, word: run.word.startsWith('Too') ? run.word : pullWord({ roomFactor: run.speed, wetBulbGapK: 0 }) }))
+  return withOneWord(
+    runs.map((run) => ({
+      ...run,
+      word: run.word === PULL_WORDS['too dry for face coats'] ? run.word : pullWord({ roomFactor: run.speed, wetBulbGapK: 0 }),
+    })),
+  )
 }
+
+const withOneWord = (cells: readonly Cell[]) => joined(cells, (left, right) => left.word === right.word)
 
 function neighbours(runs: readonly Cell[], index: number): number[] {
   const run = runs[index]!
