@@ -62,6 +62,11 @@ export const DOORS: readonly Door[] = [
   door('DELETE', '/api/v1/trees/[treeId]/watch', 'crew'),
   door('POST', '/api/v1/readings', 'sensor'),
   door('POST', '/api/v1/readings/typed', 'operator'),
+
+  // The room and its drying.
+  page('/room', 'crew'),
+  door('POST', '/api/v1/drying/estimate', 'crew'),
+  door('GET', '/api/v1/rooms/[sensorId]/climate.csv', 'crew', '/api/v1/rooms/1/climate.csv'),
   // The API's description, how to use it, and the history of every change.
   door('GET', '/api/v1/openapi.json', 'anybody'),
   page('/api-guide', 'supervisor'),
@@ -125,4 +130,6 @@ export const ACTIONS: readonly ActionRow[] = [
   { file: 'app/(first-run)/first-run/actions.ts', name: 'lookWithDemoAction', act: 'upkeep', who: 'owner' },
   { file: 'app/(office)/upkeep/demo-actions.ts', name: 'layDemoAction', act: 'upkeep', who: 'owner' },
   { file: 'app/(office)/upkeep/demo-actions.ts', name: 'removeDemoAction', act: 'upkeep', who: 'owner' },
+  // The room and its drying.
+  { file: 'app/(office)/room/actions.ts', name: 'typedReadingAction', act: 'read', who: 'operator' },
 ]
