@@ -1,6 +1,11 @@
 // `npm start`: from a fresh checkout to an open Kilnward in one command. Plain Node, because it runs before anything is installed.
+<<<<<<< HEAD
 import { spawn } from 'node:child_process'
 import { createECDH, randomBytes } from 'node:crypto'
+=======
+import { spawn, spawnSync } from 'node:child_process'
+import { createECDH, randomBytes, randomInt } from 'node:crypto'
+>>>>>>> setup
 import { chmodSync, closeSync, existsSync, mkdirSync, openSync, readFileSync, renameSync, rmSync, writeFileSync } from 'node:fs'
 import { createServer } from 'node:net'
 import { dirname, join, resolve } from 'node:path'
@@ -18,8 +23,15 @@ const NEXT = 'node_modules/next/dist/bin/next'
 const TSX = ['--import', 'tsx']
 
 const isDev = process.argv.includes('--dev')
+<<<<<<< HEAD
 /** Set once the data folder is ours. */
 let lock
+=======
+/** A new database stays empty, for a foundry of one's own. */
+const isEmpty = process.argv.includes('--empty')
+const lock = { pid: process.pid, port: 0, children: {} }
+let lockFile
+>>>>>>> setup
 let isStopping = false
 
 /** Lines for a person; events of the program itself go to stderr as JSON. */
@@ -65,6 +77,9 @@ async function main() {
     UV_THREADPOOL_SIZE: process.env.UV_THREADPOOL_SIZE || '16',
   }
   const records = await prepareRecords(env)
+  const setupCode = setupCodeFor(records, env)
+  if (setupCode) env.SETUP_CODE = setupCode
+  else delete env.SETUP_CODE
   if (!isDev) ensureBuilt()
 
   const children = [
@@ -156,13 +171,32 @@ function publicKeyOf(privateKey) {
   }
 }
 
-/** Migrates, and fills a new database with the demo foundry. */
+/** Migrates, and fills a new database with the demo foundry, unless it is to stay empty. */
 async function prepareRecords(env) {
   const records = await runScript('jobs/prepare-records.ts', env)
-  if (!records.isNew) return records
+  if (!records.isNew || isEmpty) return records
   say('Kilnward: making the demo foundry.')
   await runScript('jobs/seed-demo.ts', env)
-  return { ...records, isDemo: true }
+  return { ...records, isNew: false, isDemo: true }
+}
+
+/** Without letters and digits that are read for each other. */
+const CODE_LETTERS = 'ABCDEFGHJKMNPQRSTUVWXYZ23456789'
+const CODE_LENGTH = 12
+
+/**
+ * The code that the first owner types, where others can reach this server before them; null where nobody can, or where there is an owner.
+ * A demo that is removed leaves records without one.
+ */
+function setupCodeFor({ isNew, isDemo }, { HOST, NEXTAUTH_URL }) {
+  const isOpenToOthers = !isLoopback(HOST) || !URL.canParse(NEXTAUTH_URL) || !isLoopback(new URL(NEXTAUTH_URL).hostname)
+  if (!isOpenToOthers || !(isNew || isDemo)) return null
+  const letters = Array.from({ length: CODE_LENGTH }, () => CODE_LETTERS[randomInt(CODE_LETTERS.length)]).join('')
+  return letters.replaceAll(/(.{4})(?=.)/g, '$1-')
+}
+
+function isLoopback(host) {
+  return host === 'localhost' || host === '::1' || host === '[::1]' || /^127(\.\d{1,3}){3}$/.test(host)
 }
 
 /** Runs a script to its end and gives the message that it sent. */
@@ -230,7 +264,7 @@ async function stop(keepers, signal) {
 }
 
 /** Says where Kilnward is, once it answers. */
-async function announce(env, { file, isDemo }) {
+async function announce(env, { file, isNew, isDemo }) {
   const host = env.HOST === '0.0.0.0' || env.HOST === '::' ? '127.0.0.1' : env.HOST
   const address = `http://${host.includes(':') ? `[${host}]` : host}:${env.PORT}/api/health`
   while (!(await isHealthy(address))) {
@@ -240,7 +274,9 @@ async function announce(env, { file, isDemo }) {
   // Asked for first, so that nothing comes between the lines.
   const signIns = isDemo ? (await runScript('jobs/demo-sign-ins.ts', env)).signIns : []
   say()
-  say(`Kilnward is open: ${env.NEXTAUTH_URL}`)
+  if (isNew) say(`Open ${env.NEXTAUTH_URL} to set up your foundry.`)
+  else say(`Kilnward is open: ${env.NEXTAUTH_URL}`)
+  if (env.SETUP_CODE) say(`${isNew ? 'It asks' : 'If you remove the demo, the first page asks'} for this setup code: ${env.SETUP_CODE}`)
   if (signIns.length > 0) say('This is the demo foundry. Sign in as:')
   for (const { role, email, password } of signIns) say(`  ${role.padEnd(10)}  ${email.padEnd(28)}  ${password}`)
   say(`Records: ${file}`)

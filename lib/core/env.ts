@@ -14,6 +14,7 @@ function isRealContact(subject: string): boolean {
 }
 
 const schema = z.object({
+  NODE_ENV: z.enum(['production', 'development', 'test']).default('production'),
   /** Folder of the database and of what a new foundry makes for itself. */
   DATA_DIR: z.string().min(1).default('data'),
   /** Folder of the backups, where it is not inside DATA_DIR. */
@@ -32,6 +33,8 @@ const schema = z.object({
   PUSH_EXTRA_HOSTS: z.string().default(''),
   /** PEM file of a certificate authority to trust for pushes, beside the system's. */
   PUSH_CA_FILE: z.string().optional(),
+  /** Made by npm start where others can reach the server: the first owner types it, so that nobody else comes first. */
+  SETUP_CODE: z.string().min(8).optional(),
   /** 'off' stops the demo foundry's own sensors. */
   DEMO_FEED: z.enum(['on', 'off']).default('on'),
 })

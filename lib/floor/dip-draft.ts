@@ -1,7 +1,7 @@
 import type { CoatingWay, Stucco } from '@/lib/coats/vocabulary'
 import type { DipRun } from '@/lib/coats/dip-contract'
-import { readTyped } from '@/lib/format/typed-units'
-import { formatTemperature, UNIT_SIGNS, type TempUnit } from '@/lib/format/units'
+import { readTyped, typedWords } from '@/lib/format/typed-units'
+import { UNIT_SIGNS, type TempUnit } from '@/lib/format/units'
 import type { Queue, QueueTree } from '@/lib/queue/contract'
 import { AIR_TEMP_LIMITS_C, relHumidityPct } from '@/lib/room/reading-contract'
 import type { TreeState } from '@/lib/trees/states'
@@ -171,8 +171,8 @@ function tempProblem(typed: number | null, unit: TempUnit): string | null {
   if (typed === null || !Number.isFinite(typed)) return `Temperature is a number in ${UNIT_SIGNS[unit]}.`
   const celsius = readTyped(typed, unit)
   const { least, most } = AIR_TEMP_LIMITS_C
-  if (celsius < least) return `A shell room is not colder than ${formatTemperature(least, unit)}.`
-  return celsius > most ? `A shell room is not hotter than ${formatTemperature(most, unit)}.` : null
+  if (celsius < least) return `A shell room is not colder than ${typedWords(least, unit)}.`
+  return celsius > most ? `A shell room is not hotter than ${typedWords(most, unit)}.` : null
 }
 
 /** Checks what was typed from the wall hygrometer against what air can be. The dial is read in `unit`; the room comes back in °C. */

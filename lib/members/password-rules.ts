@@ -10,8 +10,10 @@ const folded = (text: string) =>
     .toLowerCase()
     .replaceAll(/[^\p{L}\p{N}]/gu, '')
 
-/** A piece of up to eight characters, over and over: 'aaaaaaaaaaaa', 'passwordpassword'. */
-const REPEATS = /^(.{1,8}?)\1+$/su
+/** One piece over and over: 'aaaaaaaaaaaa', 'passwordpassword'. */
+const REPEATS = /^(.+?)\1+$/su
+
+const BETTER = 'Take a few words that only you would put together.'
 
 /**
  * Why a new password is refused, as a sentence; null when it may stand. Length and being hard to guess count, kinds of characters do not.
@@ -27,11 +29,9 @@ export function passwordProblem(password: string, owner?: { name: string; email:
   if (letters < LEAST_PASSWORD_LETTERS) return `A password has at least ${LEAST_PASSWORD_LETTERS} characters.`
   if (letters > MOST_PASSWORD_LETTERS) return `A password has at most ${MOST_PASSWORD_LETTERS} characters.`
   const small = password.trim().toLowerCase()
-  if (COMMON_PASSWORDS.has(small) || REPEATS.test(small) || folded(small) === '') {
-    return 'This is one of the first passwords that anybody would try. Take a few words that only you would put together.'
-  }
-  if (owner && isOwnName(password, owner))
-    return 'A password is not a name or an e-mail. Take a few words that only you would put together.'
+  if (COMMON_PASSWORDS.has(small)) return `This is one of the first passwords that anybody would try. ${BETTER}`
+  if (REPEATS.test(small)) return `This only repeats itself. ${BETTER}`
+  if (owner && isOwnName(password, owner)) return `A password is not a name or an e-mail. ${BETTER}`
   return null
 }
 

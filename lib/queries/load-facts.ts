@@ -10,6 +10,7 @@ export type TreeSelection = { on: 'floor' } | { ids: readonly string[] }
 type TreeRow = {
   id: string
   tag: string
+  isDemo: number
   recessClass: RecessClass
   spacing: Spacing
   pourDate: string | null
@@ -35,7 +36,7 @@ function condition(selection: TreeSelection): { where: string; replacements: Rec
 export async function loadFacts(selection: TreeSelection): Promise<TreeFacts[]> {
   const { where, replacements } = condition(selection)
   const trees = await select<TreeRow>(
-    `SELECT t.id, t.tag, t.recess_class AS recessClass, t.spacing, t.pour_date AS pourDate, t.intake_passed_at AS intakePassedAt,
+    `SELECT t.id, t.tag, t.is_demo AND NOT (SELECT is_demo FROM foundry) AS isDemo, t.recess_class AS recessClass, t.spacing, t.pour_date AS pourDate, t.intake_passed_at AS intakePassedAt,
             t.released_at AS releasedAt, t.scrapped_at AS scrappedAt, v.id AS versionId, v.version, v.calibrated_at AS calibratedAt, r.name AS recipeName
        FROM trees t JOIN recipe_versions v ON v.id = t.recipe_version_id JOIN recipes r ON r.id = v.recipe_id
       WHERE ${where} ORDER BY t.tag`,
@@ -100,6 +101,7 @@ export async function loadFacts(selection: TreeSelection): Promise<TreeFacts[]> 
       id: tree.id,
       tag: tree.tag,
       title: treeTitle(piecesOf.get(tree.id) ?? []),
+      isDemo: tree.isDemo === 1,
       recessClass: tree.recessClass,
       spacing: tree.spacing,
       pourDate: tree.pourDate,

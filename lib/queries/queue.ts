@@ -57,7 +57,8 @@ async function makeQueue(now: number): Promise<Queue> {
       name: foundry.name,
       timeZone: foundry.timeZone,
       isDemo: foundry.isDemo,
-      isDemoFeedOn: foundry.isDemo && env().DEMO_FEED === 'on',
+      hasDemoData: foundry.hasDemoData,
+      isDemoFeedOn: foundry.hasDemoData && env().DEMO_FEED === 'on',
     },
     shift: queueShift(now, context.shifts, foundry.timeZone),
     rooms: foundry.sensors

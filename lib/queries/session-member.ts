@@ -17,6 +17,8 @@ export type SessionMember = {
   units: Units
   /** Signed in with a password that somebody else has made: nothing is open but the page where they make their own. */
   mustChangePassword: boolean
+  /** False until the owner has ended the first run: every page leads there. */
+  isFoundrySetUp: boolean
 }
 
 /** The member behind a session as the database knows them now; null once it has ended, run out, or its member was disabled. */
@@ -41,5 +43,6 @@ export async function sessionMember(sessionId: string, { clock }: { clock: Clock
       length: member.lengthUnit ?? foundry?.lengthUnit ?? 'mm',
     },
     mustChangePassword: member.firstPasswordUntil !== null,
+    isFoundrySetUp: typeof foundry?.setUpAt === 'number',
   }
 }

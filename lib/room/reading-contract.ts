@@ -19,6 +19,7 @@ export const relHumidityPct = z
 const measuredAt = z
   .union([z.int().min(0), z.iso.datetime({ offset: true })])
   .transform((value) => (typeof value === 'number' ? value : Date.parse(value)))
+  .describe('When it was measured: ISO 8601 with a zone, or epoch milliseconds (UTC).')
 
 /** One row of `POST /api/v1/readings`; rows are checked one by one so that good ones are kept. */
 export const readingRow = z.strictObject({ measuredAt, airTempC, relHumidityPct })
@@ -37,3 +38,6 @@ export type ReadingBatchAnswer = z.infer<typeof readingBatchAnswer>
 
 /** A person reads the wall hygrometer. */
 export const typedReading = z.strictObject({ operationId: z.uuid(), sensorId: z.int(), airTempC, relHumidityPct })
+
+/** Answer of `POST /api/v1/readings/typed`: the instant from which it counts. */
+export const typedReadingAnswer = z.object({ sensorId: z.int(), measuredAt: z.int() })

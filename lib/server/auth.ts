@@ -9,10 +9,11 @@ import { endSession } from '@/lib/commands/end-session'
 import { SESSION_MS, signIn } from '@/lib/commands/sign-in'
 import { systemClock } from '@/lib/core/clock'
 import { env } from '@/lib/core/env'
-import { AppError } from '@/lib/core/errors'
+import { AppError, notSetUp } from '@/lib/core/errors'
 import { log } from '@/lib/core/log'
 import { ownPath } from '@/lib/members/own-path'
 import { may, rolesFor, type Act } from '@/lib/members/roles'
+import { hasMembers } from '@/lib/queries/has-members'
 import { sessionMember, type SessionMember } from '@/lib/queries/session-member'
 import { knownDevice, rememberDevice } from '@/lib/server/known-device'
 import { processWide } from '@/lib/server/process-wide'
@@ -130,11 +131,11 @@ export async function currentMember(): Promise<Member | null> {
  * The member who sent this request, when their role may do this act. The first call of every handler and server action:
  * no layout or proxy guards them. With a password that somebody else has made, only a new password may be made.
  *
- * @throws {AppError} unauthenticated or forbidden.
+ * @throws {AppError} unauthenticated or forbidden; unavailable while nobody is a member.
  */
 export async function requireMember(act: Act): Promise<Member> {
   const member = await currentMember()
-  if (!member) throw new AppError('unauthenticated', 'Sign in first.')
+  if (!member) throw (await hasMembers()) ? new AppError('unauthenticated', 'Sign in first.') : notSetUp()
   if (member.mustChangePassword && act !== 'own password') {
     throw new AppError('forbidden', 'Make a password of your own first: yours was made by somebody else.')
   }
@@ -148,15 +149,28 @@ export async function requireMember(act: Act): Promise<Member> {
 /**
  * The same for a page: sends a stranger to the sign-in page and back to `path` after it, and says there when a session has ended;
  * a member with a first password to the page where they make their own, and one without the right to the floor,
- * which everybody may see.
+ * which everybody may see. Until the foundry is set up, everybody goes to the first run.
  */
 export async function requireMemberPage(act: Act, path: string): Promise<Member> {
   const member = await currentMember()
   if (!member) {
+    if (!(await hasMembers())) redirect('/first-run')
     const hasEnded = (await cookies()).has(sessionCookie())
     redirect(`/sign-in?callbackUrl=${encodeURIComponent(path)}${hasEnded ? '&ended=1' : ''}`)
   }
   if (member.mustChangePassword && act !== 'own password') redirect('/me/password')
+  if (!member.isFoundrySetUp && act !== 'own password') redirect('/first-run')
   if (!may(member.role, act)) redirect('/floor')
   return member
+}
+
+/**
+ * The first line of what is only for records in which nobody is a member.
+ *
+ * @throws {AppError} conflict when somebody is.
+ */
+export async function requireNobody(): Promise<void> {
+  // First, as in currentMember.
+  await cookies()
+  if (await hasMembers()) throw new AppError('conflict', 'The owner’s account has been made already. Sign in, or ask the owner.')
 }

@@ -4,13 +4,13 @@ import { systemClock } from '@/lib/core/clock'
 import { backupDir, env } from '@/lib/core/env'
 import { log } from '@/lib/core/log'
 import { writeBackup } from '@/lib/server/backup-files'
-import { Foundry } from '@/models'
+import { Foundry, Member } from '@/models'
 
 export type Records = {
   file: string
   /** Migrations that were applied now. */
   applied: string[]
-  /** No foundry yet. */
+  /** Neither a foundry nor a member yet. */
   isNew: boolean
   isDemo: boolean
 }
@@ -26,7 +26,7 @@ export async function bringUpToDate(): Promise<Records> {
   await backUpBeforeUpgrade(file)
   const applied = await migrate(file)
   const foundry = await Foundry.findOne()
-  return { file, applied, isNew: foundry === null, isDemo: foundry?.isDemo ?? false }
+  return { file, applied, isNew: foundry === null && (await Member.count()) === 0, isDemo: foundry?.isDemo ?? false }
 }
 
 /** The list of backups may be one of the tables that are still to come, so the worker writes this one into it later. */

@@ -37,6 +37,8 @@ export type TreeFacts = {
   id: string
   tag: string
   title: string
+  /** Demo data in a foundry that is not the demo itself: it is marked wherever it shows. */
+  isDemo: boolean
   recessClass: RecessClass
   spacing: Spacing
   pourDate: string | null

@@ -1,7 +1,7 @@
 import { z } from 'zod'
 import { RECESS_CLASSES, SPACINGS } from '@/lib/coats/vocabulary'
 import { readTyped } from '@/lib/format/typed-units'
-import { formatMass, type MassUnit } from '@/lib/format/units'
+import { fromSi, type MassUnit } from '@/lib/format/units'
 import { typedNumber } from '@/lib/format/typed-number'
 
 export const CUP_KINDS = ['wax', 'paper', 'ceramic'] as const
@@ -24,9 +24,7 @@ const typedMass = (field: string, mostKg: number, unit: MassUnit) =>
       .number()
       .gt(0, `${field} is more than 0 ${unit}.`)
       .transform((value) => readTyped(value, unit))
-      .pipe(
-        z.number().max(mostKg, `${field} is at most ${unit === 'kg' ? `${mostKg.toLocaleString('en')} kg` : formatMass(mostKg, unit)}.`),
-      ),
+      .pipe(z.number().max(mostKg, `${field} is at most ${Math.floor(fromSi(mostKg, unit)).toLocaleString('en')} ${unit}.`)),
   )
 
 const pieceInput = z.strictObject({

@@ -1,9 +1,11 @@
 'use server'
 
 import { revalidatePath } from 'next/cache'
+import { z } from 'zod'
 import { endOtherSessions, endOwnSession } from '@/lib/commands/end-own-sessions'
 import { saveOwnUnits } from '@/lib/commands/save-own-units'
 import { systemClock } from '@/lib/core/clock'
+import { AppError } from '@/lib/core/errors'
 import { ownUnits } from '@/lib/members/own-units'
 import { requireMember } from '@/lib/server/auth'
 import { answerForm, type FormState } from '@/lib/server/form-state'
@@ -29,7 +31,10 @@ export async function saveUnitsAction(_previous: FormState, form: FormData): Pro
 export async function endSessionAction(sessionId: string, _previous: FormState, _form: FormData): Promise<FormState> {
   const member = await requireMember('see')
   return answerForm(async () => {
-    await endOwnSession(sessionId, { member, clock: systemClock })
+    // Bound to the form, but sent by the browser like any field.
+    const parsed = z.uuid().safeParse(sessionId)
+    if (!parsed.success) throw new AppError('not_found', 'There is no such session.')
+    await endOwnSession(parsed.data, { member, clock: systemClock })
     revalidatePath('/me')
     return { status: 'done', text: 'Ended.' }
   })
