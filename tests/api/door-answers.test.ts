@@ -26,7 +26,7 @@ beforeAll(async () => {
   const foundry = await factories.buildFoundry()
   const member = await seedMember('operator')
   const clock = { now: () => Date.now() }
-  const { token } = await issueSensorToken({ sensorId: foundry.sensorId, memberId: member.id }, { clock })
+  const { token } = await issueSensorToken({ sensorId: foundry.sensorId }, { member: null, clock })
   const anonymous = newClient(server.baseUrl)
   document = (await (await anonymous.fetch('/api/v1/openapi.json')).json()) as OpenApiDocument
   const operator = await signIn(server.baseUrl, member.email, member.password)

@@ -246,7 +246,7 @@ describe('a member', () => {
       body: 'b',
       urgency: 'high',
     } as const
-    const { id: noticeId } = await Notice.create({ id: newId(), ...notice, ttlSeconds: 600, trueSince: now, openedAt: now })
+    const { id: noticeId } = await Notice.create({ id: newId(), ...notice, ttlSeconds: 600, openedAt: now })
     const delivery = { noticeId, memberId: member.id, status: 'waiting', nextAttemptAt: now, expiresAt: now + DAY } as const
     const { id: deliveryId } = await Delivery.create({ id: newId(), subscriptionId, ...delivery })
 

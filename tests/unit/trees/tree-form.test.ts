@@ -78,13 +78,13 @@ describe('a known tree in its form', () => {
     tree: { tag: 'T-122', place: { id: whole.placeId, name: 'Rack B 5' }, pourDate: null },
     recipe: { versionId: whole.recipeVersionId },
     waxMassKg: 3.2,
-    cupKind: 'paper',
+    cupKind: 'paper' as const,
     cupVolumeL: 0.35,
-    recessClass: 'closed core',
-    spacing: 'open',
+    recessClass: 'closed core' as const,
+    spacing: 'open' as const,
     hungMassKg: null,
     pieces: [{ id: 'x', workTitle: 'Otter Gate', sectionName: 'panel 2', editionNumber: 1, isRecast: false }],
-  } as const
+  }
   const stored = formValuesOf(known, 'kg')
 
   it('goes through the form unchanged', () => {
