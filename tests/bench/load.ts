@@ -37,7 +37,7 @@ export function ask(url: string, headers: Record<string, string>, agent?: Agent)
       response.on('error', reject)
       response.on('end', () => {
         const { statusCode = 0, headers: answered } = response
-        resolve({ status: statusCode, etag: String(answered.etag ?? ''), bytes, milliseconds: performance.now() - began })
+        resolve({ status: statusCode, etag: answered.etag ?? '', bytes, milliseconds: performance.now() - began })
       })
     })
       .on('error', reject)
