@@ -25,9 +25,11 @@ beforeEach(async () => {
 /** Statements that a piece of work sends to the database. */
 async function statementsOf(work: () => Promise<unknown>): Promise<string[]> {
   const seen: string[] = []
-  database.options.logging = (sql) => void seen.push(sql)
+  // Not in its types.
+  const { options } = database as unknown as { options: { logging: false | ((sql: string) => void) } }
+  options.logging = (sql) => void seen.push(sql)
   await work()
-  database.options.logging = false
+  options.logging = false
   return seen
 }
 
