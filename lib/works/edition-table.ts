@@ -62,3 +62,16 @@ export function recastWords(cast: Cast, before: Cast | null): string | null {
     ? `${words}, because ${before.tree.tag} was scrapped`
     : `${words}, though ${before.tree.tag} still carries one`
 }
+
+/** How many editions are whole, in one line: '2 of 3 editions are whole; 5 more of 8 not begun'. */
+export function editionVerdict(rows: readonly EditionRow[], editionSize: number | null): string {
+  const [only, ...others] = rows
+  if (only === undefined) return 'none is begun'
+  const whole = rows.filter(({ missing }) => missing.length === 0).length
+  const begun =
+    others.length === 0
+      ? `edition ${only.editionNumber} is ${whole === 1 ? 'whole' : 'not whole'}`
+      : `${whole} of ${rows.length} editions ${whole === 1 ? 'is' : 'are'} whole`
+  const toCome = editionSize === null ? 0 : editionSize - rows.length
+  return toCome > 0 ? `${begun}; ${toCome} more of ${editionSize} not begun` : begun
+}
