@@ -23,6 +23,13 @@ export const DOORS: readonly Door[] = [
   page('/trees/[tag]/edit', 'supervisor', '/trees/KW-1/edit'),
   page('/trees/new', 'supervisor'),
   page('/burnout', 'crew'),
+  // Recipes and works.
+  page('/recipes', 'crew'),
+  page('/recipes/new', 'supervisor'),
+  page('/recipes/[recipeId]', 'crew'),
+  page('/recipes/[recipeId]/new-version', 'supervisor'),
+  page('/works', 'crew'),
+  page('/works/[workId]', 'crew'),
   page('/me', 'crew'),
   door('GET', '/manifest.webmanifest', 'anybody'),
 
@@ -61,6 +68,15 @@ export const ACTIONS: readonly ActionRow[] = [
   { file: 'app/(office)/trees/[tag]/actions.ts', name: 'liftHoldAction', act: 'lift hold', who: 'supervisor' },
   { file: 'app/(office)/trees/[tag]/actions.ts', name: 'lookOverAction', act: 'look over', who: 'supervisor' },
   { file: 'app/(office)/trees/[tag]/actions.ts', name: 'scrapAction', act: 'trees', who: 'supervisor' },
+  // Recipes and works.
+  { file: 'app/(office)/recipes/actions.ts', name: 'createRecipeAction', act: 'recipes', who: 'supervisor' },
+  { file: 'app/(office)/recipes/actions.ts', name: 'addVersionAction', act: 'recipes', who: 'supervisor' },
+  { file: 'app/(office)/recipes/actions.ts', name: 'renameRecipeAction', act: 'recipes', who: 'supervisor' },
+  { file: 'app/(office)/recipes/actions.ts', name: 'retireRecipeAction', act: 'recipes', who: 'supervisor' },
+  { file: 'app/(office)/recipes/actions.ts', name: 'moveTreesAction', act: 'recipes', who: 'supervisor' },
+  { file: 'app/(office)/works/actions.ts', name: 'editWorkAction', act: 'works', who: 'supervisor' },
+  { file: 'app/(office)/works/actions.ts', name: 'addSectionAction', act: 'works', who: 'supervisor' },
+  { file: 'app/(office)/works/actions.ts', name: 'renameSectionAction', act: 'works', who: 'supervisor' },
   { file: 'app/(office)/burnout/actions.ts', name: 'releaseAction', act: 'release', who: 'supervisor' },
   { file: 'app/(office)/burnout/actions.ts', name: 'withdrawReleaseAction', act: 'release', who: 'supervisor' },
 ]

@@ -10,6 +10,7 @@ import { RecipeSection } from '@/app/(office)/recipes/_components/recipe-section
 import { MoveTrees } from '@/app/(office)/recipes/[recipeId]/_components/move-trees'
 import { RecipeActs } from '@/app/(office)/recipes/[recipeId]/_components/recipe-acts'
 import { formatDateOfYear } from '@/lib/format/local-time'
+import { referenceAirWords } from '@/lib/recipes/need-words'
 import { may } from '@/lib/members/roles'
 import { loadFoundry } from '@/lib/queries/load-foundry'
 import { loadRecipeDetail, type RecipeVersionRow } from '@/lib/queries/recipe-detail'
@@ -23,7 +24,7 @@ import '@/app/(office)/recipes/recipes.css'
 export const metadata: Metadata = { title: 'Recipe' }
 
 /** Tags that stand in a line of the list of versions; the others are folded. */
-const TAGS_SHOWN = 12
+const TAGS_SHOWN = 24
 
 export default async function RecipePage({ params, searchParams }: PageProps<'/recipes/[recipeId]'>) {
   const { recipeId } = await params
@@ -96,7 +97,7 @@ export default async function RecipePage({ params, searchParams }: PageProps<'/r
         </div>
         <CoatTable coats={shown.coats} differences={differences} />
         <p className="need-hint">
-          Needs are hours in the reference air of 21 °C, 50 % and 1 m/s.{' '}
+          Needs are hours in the reference air: {referenceAirWords(member.units.temp)}.{' '}
           {!shown.isCalibrated &&
             'They are not calibrated yet: your first twenty to thirty coats show what a coat needs here, and a new version then says so. '}
           Face coats, the last coat and trees with a recess wait for safe, whatever the guard says.
@@ -145,7 +146,7 @@ export default async function RecipePage({ params, searchParams }: PageProps<'/r
         </ul>
       </section>
 
-      {mayWrite && onOlder.length > 0 && (
+      {mayWrite && recipe.versions.length > 1 && (
         <section className="plate mt-5">
           <header>
             <h2>Move trees to version {newest.version}</h2>

@@ -10,9 +10,11 @@ import { DifferenceMark } from '@/app/(office)/recipes/_components/difference-ma
 import { Differences } from '@/app/(office)/recipes/_components/differences'
 import { RecipeSection } from '@/app/(office)/recipes/_components/recipe-section'
 import { COAT_KINDS, STUCCOS } from '@/lib/coats/vocabulary'
+import type { TempUnit } from '@/lib/format/units'
 import type { BathChoice } from '@/lib/queries/recipe-detail'
 import { areNeedsSame, coatCells, coatsInShort, type VersionCoat } from '@/lib/recipes/coat-cells'
 import { cellsOfValues, coatValuesOf, nextCoatIndex, startingCoat, startingNeed, type CoatValues } from '@/lib/recipes/recipe-form-values'
+import { referenceAirWords, startingNeedsWords } from '@/lib/recipes/need-words'
 import { MOST_COATS } from '@/lib/recipes/recipe-input'
 import { hasDifferences, versionDifferences, type CoatDifference } from '@/lib/recipes/version-differences'
 import type { FormState } from '@/lib/server/form-state'
@@ -26,13 +28,14 @@ export type RecipeFormProps = {
   coats: readonly VersionCoat[]
   /** For a further version: the newest one, which it follows, and the one whose coats fill the form. */
   versions: { newest: Version; from: Version } | null
+  temp: TempUnit
   cancelPath: string
 }
 
 type Row = { key: number; coat: CoatValues }
 
 /** The form of a recipe or of a further version: its coats as rows, the shell they build, and what differs from the version before. */
-export function RecipeForm({ action, baths, coats, versions, cancelPath }: RecipeFormProps) {
+export function RecipeForm({ action, baths, coats, versions, temp, cancelPath }: RecipeFormProps) {
   const nextKey = useRef(MOST_COATS)
   const [rows, setRows] = useState<Row[]>(() => firstRows(coats, baths))
   // Complaints come by place in the list as it was sent; a row that moves takes its own along.
@@ -110,9 +113,9 @@ export function RecipeForm({ action, baths, coats, versions, cancelPath }: Recip
           <RecipeSection coats={drawn} />
         </div>
         <p className="need-hint">
-          A need is the hours that a coat takes to its target in the reference air of 21 °C, 50 % and 1 m/s; the target is the water left in
-          the coat. Our starting values: face 2.5, then 3; backup 4, rising 4 % a coat; core fill 10; seal 12, to 5 %. The first twenty to
-          thirty coats calibrate them. Face coats, the last coat and trees with a recess wait for safe, whatever the guard says.
+          A need is the hours that a coat takes in the reference air ({referenceAirWords(temp)}) until only its target of water is left in
+          it. Our starting values: {startingNeedsWords()}. Your first twenty to thirty coats calibrate them. Face coats, the last coat and
+          trees with a recess wait for safe, whatever the guard says.
         </p>
         <div className="coat-rows">
           <CoatFieldsHead />

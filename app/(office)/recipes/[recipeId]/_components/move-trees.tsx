@@ -24,6 +24,7 @@ export function MoveTrees({ versionId, version, trees }: MoveTreesProps) {
   return (
     <form {...form.formProps} className="grid gap-3">
       <input type="hidden" name="versionId" value={versionId} />
+      {trees.length === 0 && <p className="text-soot">No open tree stands on an older version.</p>}
       <ul className="move-rows">
         {trees.map((tree) => (
           <li key={tree.id}>
