@@ -1,3 +1,4 @@
+import { backUp } from '@/jobs/back-up'
 import { demoFeed } from '@/jobs/demo-feed'
 import type { Job } from '@/jobs/job'
 import { prune } from '@/jobs/prune'
@@ -28,5 +29,5 @@ export function allJobs({ clock, vapidPublicKey, monotonic, random }: RegistryPa
     },
     followedBy: [send],
   })
-  return [watch, send, prune, demoFeed({ fetch })]
+  return [watch, send, prune, backUp, demoFeed({ fetch })]
 }

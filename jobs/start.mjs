@@ -1,10 +1,11 @@
 // `npm start`: from a fresh checkout to an open Kilnward in one command. Plain Node, because it runs before anything is installed.
-import { spawn, spawnSync } from 'node:child_process'
-import { createECDH, randomBytes } from 'node:crypto'
+import { spawn } from 'node:child_process'
+import { createECDH, randomBytes, randomInt } from 'node:crypto'
 import { chmodSync, closeSync, existsSync, mkdirSync, openSync, readFileSync, renameSync, rmSync, writeFileSync } from 'node:fs'
 import { createServer } from 'node:net'
 import { dirname, join, resolve } from 'node:path'
 import { fileURLToPath } from 'node:url'
+import { Refusal, takeLock } from './lock.mjs'
 import { ensureBuilt, ensureInstalled } from './prepare.mjs'
 
 const ROOT = dirname(dirname(fileURLToPath(import.meta.url)))
@@ -17,8 +18,10 @@ const NEXT = 'node_modules/next/dist/bin/next'
 const TSX = ['--import', 'tsx']
 
 const isDev = process.argv.includes('--dev')
-const lock = { pid: process.pid, port: 0, children: {} }
-let lockFile
+/** A new database stays empty, for a foundry of one's own. */
+const isEmpty = process.argv.includes('--empty')
+/** Set once the data folder is ours. */
+let lock
 let isStopping = false
 
 /** Lines for a person; events of the program itself go to stderr as JSON. */
@@ -26,11 +29,9 @@ function say(line = '') {
   process.stdout.write(`${line}\n`)
 }
 
-class Refusal extends Error {}
-
 process.chdir(ROOT)
 main().catch((error) => {
-  releaseLock()
+  lock?.release()
   process.stderr.write(`${error instanceof Refusal ? error.message : error.stack}\n`)
   process.exit(1)
 })
@@ -42,7 +43,13 @@ async function main() {
   const host = process.env.HOST || '127.0.0.1'
   const port = readPort(process.env.PORT || '3000')
   makeDataDir(dataDir)
-  takeLock(dataDir, port)
+  lock = await takeLock(dataDir, {
+    port,
+    refusal: (holder) =>
+      holder.program === 'restore.mjs'
+        ? `A backup is being restored to ${dataDir} by process ${holder.pid}. Start again when that has ended.`
+        : `Kilnward is running already on ${dataDir}: process ${holder.pid}, port ${holder.port}. Stop it first, or set DATA_DIR and PORT.`,
+  })
   await refuseTakenPort(host, port)
 
   ensureInstalled()
@@ -60,6 +67,9 @@ async function main() {
     UV_THREADPOOL_SIZE: process.env.UV_THREADPOOL_SIZE || '16',
   }
   const records = await prepareRecords(env)
+  const setupCode = setupCodeFor(records, env)
+  if (setupCode) env.SETUP_CODE = setupCode
+  else delete env.SETUP_CODE
   if (!isDev) ensureBuilt()
 
   const children = [
@@ -85,68 +95,6 @@ function makeDataDir(dataDir) {
   } catch (error) {
     throw new Refusal(`Kilnward cannot write to ${dataDir} (${error.code}). Set DATA_DIR to a folder of your own.`)
   }
-}
-
-// One Kilnward per data folder: two workers would be harmless, two versions of the program would not.
-
-function takeLock(dataDir, port) {
-  const file = join(dataDir, 'running.json')
-  lock.port = port
-  for (let attempt = 0; attempt < 2; attempt += 1) {
-    try {
-      writeFileSync(file, JSON.stringify(lock), { flag: 'wx', mode: 0o600 })
-      lockFile = file
-      return
-    } catch (error) {
-      if (error.code !== 'EEXIST') throw error
-      const holder = readHolder(file)
-      if (holder && isOurs(holder.pid, 'start.mjs')) {
-        throw new Refusal(
-          `Kilnward is running already on ${dataDir}: process ${holder.pid}, port ${holder.port}. Stop it first, or set DATA_DIR and PORT.`,
-        )
-      }
-      // It ended without a word, as after a power cut. What it left running would hold the port and the records.
-      for (const [name, pid] of Object.entries(holder?.children ?? {})) {
-        if (isOurs(pid, name === 'web' ? 'next' : 'jobs/worker.ts')) process.kill(pid, 'SIGTERM')
-      }
-      rmSync(file, { force: true })
-    }
-  }
-  throw new Refusal(`Another Kilnward is starting on ${dataDir}. Try again in a moment.`)
-}
-
-function readHolder(file) {
-  try {
-    return JSON.parse(readFileSync(file, 'utf8'))
-  } catch {
-    return null
-  }
-}
-
-/** Whether a process lives and is the one we mean: numbers of processes are used again. */
-function isOurs(pid, part) {
-  if (!Number.isInteger(pid) || pid === process.pid) return false
-  try {
-    process.kill(pid, 0)
-  } catch (error) {
-    if (error.code !== 'EPERM') return false
-  }
-  try {
-    return readFileSync(`/proc/${pid}/cmdline`, 'utf8').replaceAll('\0', ' ').includes(part)
-  } catch {
-    const { status, stdout } = spawnSync('ps', ['-p', String(pid), '-o', 'command='], { encoding: 'utf8' })
-    return status === 0 && stdout.includes(part)
-  }
-}
-
-function noteChild(name, pid) {
-  lock.children[name] = pid
-  if (lockFile) writeFileSync(lockFile, JSON.stringify(lock), { mode: 0o600 })
-}
-
-function releaseLock() {
-  if (lockFile) rmSync(lockFile, { force: true })
-  lockFile = undefined
 }
 
 async function refuseTakenPort(host, port) {
@@ -213,13 +161,32 @@ function publicKeyOf(privateKey) {
   }
 }
 
-/** Migrates, and fills a new database with the demo foundry. */
+/** Migrates, and fills a new database with the demo foundry, unless it is to stay empty. */
 async function prepareRecords(env) {
   const records = await runScript('jobs/prepare-records.ts', env)
-  if (!records.isNew) return records
+  if (!records.isNew || isEmpty) return records
   say('Kilnward: making the demo foundry.')
   await runScript('jobs/seed-demo.ts', env)
-  return { ...records, isDemo: true }
+  return { ...records, isNew: false, isDemo: true }
+}
+
+/** Without letters and digits that are read for each other. */
+const CODE_LETTERS = 'ABCDEFGHJKMNPQRSTUVWXYZ23456789'
+const CODE_LENGTH = 12
+
+/**
+ * The code that the first owner types, where others can reach this server before them; null where nobody can, or where there is an owner.
+ * A demo that is removed leaves records without one.
+ */
+function setupCodeFor({ isNew, isDemo }, { HOST, NEXTAUTH_URL }) {
+  const isOpenToOthers = !isLoopback(HOST) || !URL.canParse(NEXTAUTH_URL) || !isLoopback(new URL(NEXTAUTH_URL).hostname)
+  if (!isOpenToOthers || !(isNew || isDemo)) return null
+  const letters = Array.from({ length: CODE_LENGTH }, () => CODE_LETTERS[randomInt(CODE_LETTERS.length)]).join('')
+  return letters.replaceAll(/(.{4})(?=.)/g, '$1-')
+}
+
+function isLoopback(host) {
+  return host === 'localhost' || host === '::1' || host === '[::1]' || /^127(\.\d{1,3}){3}$/.test(host)
 }
 
 /** Runs a script to its end and gives the message that it sent. */
@@ -246,7 +213,7 @@ function keepRunning(name, args, env) {
     const stdio = ['ignore', 'inherit', 'inherit', ...(name === 'worker' ? ['ipc'] : [])]
     const child = spawn(process.execPath, args, { env, stdio })
     keeper.child = child
-    noteChild(name, child.pid)
+    lock.noteChild(name, child.pid)
     child.on('error', (error) => say(`Kilnward: the ${name} cannot be started (${error.message}).`))
     child.on('exit', (code, signal) => {
       keeper.child = null
@@ -282,12 +249,12 @@ async function stop(keepers, signal) {
       clearTimeout(patience)
     }),
   )
-  releaseLock()
+  lock.release()
   process.exit(0)
 }
 
 /** Says where Kilnward is, once it answers. */
-async function announce(env, { file, isDemo }) {
+async function announce(env, { file, isNew, isDemo }) {
   const host = env.HOST === '0.0.0.0' || env.HOST === '::' ? '127.0.0.1' : env.HOST
   const address = `http://${host.includes(':') ? `[${host}]` : host}:${env.PORT}/api/health`
   while (!(await isHealthy(address))) {
@@ -297,7 +264,9 @@ async function announce(env, { file, isDemo }) {
   // Asked for first, so that nothing comes between the lines.
   const signIns = isDemo ? (await runScript('jobs/demo-sign-ins.ts', env)).signIns : []
   say()
-  say(`Kilnward is open: ${env.NEXTAUTH_URL}`)
+  if (isNew) say(`Open ${env.NEXTAUTH_URL} to set up your foundry.`)
+  else say(`Kilnward is open: ${env.NEXTAUTH_URL}`)
+  if (env.SETUP_CODE) say(`${isNew ? 'It asks' : 'If you remove the demo, the first page asks'} for this setup code: ${env.SETUP_CODE}`)
   if (signIns.length > 0) say('This is the demo foundry. Sign in as:')
   for (const { role, email, password } of signIns) say(`  ${role.padEnd(10)}  ${email.padEnd(28)}  ${password}`)
   say(`Records: ${file}`)

@@ -17,6 +17,8 @@ export class Foundry extends Model<InferAttributes<Foundry>, InferCreationAttrib
   declare bandHighRhPct: CreationOptional<number>
   /** When the first run was ended by its owner; null until then. */
   declare setUpAt: CreationOptional<number | null>
+  /** The step of the first run that its owner has not ended yet; one of lib/foundry's. */
+  declare firstRunStep: CreationOptional<string>
   declare createdAt: number
 
   static initialize(sequelize: Sequelize): typeof Foundry {
@@ -35,6 +37,7 @@ export class Foundry extends Model<InferAttributes<Foundry>, InferCreationAttrib
         bandLowRhPct: { type: DataTypes.DOUBLE, allowNull: false, defaultValue: 45 },
         bandHighRhPct: { type: DataTypes.DOUBLE, allowNull: false, defaultValue: 58 },
         setUpAt: { type: DataTypes.INTEGER },
+        firstRunStep: { type: DataTypes.TEXT, allowNull: false, defaultValue: 'foundry' },
         createdAt: { type: DataTypes.INTEGER, allowNull: false },
       },
       { sequelize, modelName: 'Foundry', tableName: 'foundry', underscored: true, timestamps: false },

@@ -9,6 +9,7 @@ import { Delivery } from '@/models/delivery'
 import { DoseHour } from '@/models/dose-hour'
 import { FanHours } from '@/models/fan-hours'
 import { Foundry } from '@/models/foundry'
+import { FormerAir } from '@/models/former-air'
 import { FoundryEvent } from '@/models/foundry-event'
 import { Hold } from '@/models/hold'
 import { JobRun } from '@/models/job-run'
@@ -52,6 +53,7 @@ const models = [
   DoseHour,
   Place,
   FanHours,
+  FormerAir,
   Bath,
   BathStir,
   Recipe,
@@ -155,6 +157,7 @@ export {
   DoseHour,
   Place,
   FanHours,
+  FormerAir,
   Bath,
   BathStir,
   Recipe,

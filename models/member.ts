@@ -24,6 +24,7 @@ export class Member extends Model<InferAttributes<Member>, InferCreationAttribut
   declare lengthUnit: CreationOptional<LengthUnit | null>
   /** Set while the password is one that somebody else has made: until when it opens the page where they make their own. */
   declare firstPasswordUntil: CreationOptional<number | null>
+  declare lastSignedInAt: CreationOptional<number | null>
   declare isDemo: CreationOptional<boolean>
   declare createdAt: number
 
@@ -42,6 +43,7 @@ export class Member extends Model<InferAttributes<Member>, InferCreationAttribut
         massUnit: { type: DataTypes.TEXT },
         lengthUnit: { type: DataTypes.TEXT },
         firstPasswordUntil: { type: DataTypes.INTEGER },
+        lastSignedInAt: { type: DataTypes.INTEGER },
         isDemo: { ...flag('isDemo'), defaultValue: false },
         createdAt: { type: DataTypes.INTEGER, allowNull: false },
       },

@@ -1,6 +1,8 @@
 import type { ReactNode } from 'react'
 import { PushKeeper } from '@/app/_components/push-keeper'
 import { OfficeBar } from '@/app/_components/office-bar'
+import { OfficeKeys } from '@/app/(office)/_components/office-keys'
+import { UnitsProvider } from '@/app/_components/units-context'
 import { systemClock } from '@/lib/core/clock'
 import { loadFoundry } from '@/lib/queries/load-foundry'
 import { currentMember } from '@/lib/server/auth'
@@ -25,7 +27,10 @@ export default async function OfficeLayout({ children }: { children: ReactNode }
         />
       </header>
       <PushKeeper />
-      <main id="page">{children}</main>
+      <OfficeKeys role={member.role} />
+      <main id="page">
+        <UnitsProvider units={member.units}>{children}</UnitsProvider>
+      </main>
     </div>
   )
 }

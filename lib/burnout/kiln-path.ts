@@ -42,7 +42,7 @@ function graver(left: PourVerdict | null, right: PourVerdict | null): PourVerdic
  * Trees without a safe time in sight and those beyond the paving are counted, not drawn.
  */
 export function kilnPath(trees: readonly QueueTree[], context: PourContext, width: number): KilnPath {
-  const { now, timeZone, shiftHours } = context
+  const { now, timeZone, calendar } = context
   const all = trees
     .flatMap((tree) => {
       const pair = tree.next === null ? tree.dry : tree.driedOut
@@ -53,7 +53,7 @@ export function kilnPath(trees: readonly QueueTree[], context: PourContext, widt
   const drawn = all.filter((shell) => shell.safeAt < horizon).slice(0, MOST_SHELLS)
   const lastAt = drawn.at(-1)?.safeAt ?? now
 
-  const openDays = new Set(shiftsFrom(now - DAY_MS, shiftHours, timeZone).map((shift) => localDay(shift.opensAt, timeZone)))
+  const openDays = new Set(shiftsFrom(now - DAY_MS, calendar, timeZone).map((shift) => localDay(shift.opensAt, timeZone)))
   const plan: { day: string; from: number; to: number; weight: number; isOpen: boolean }[] = []
   for (let from = now; from <= lastAt && plan.length <= MOST_DAYS;) {
     const day = localDay(from, timeZone)

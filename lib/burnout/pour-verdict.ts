@@ -1,20 +1,20 @@
 import { formatDay } from '@/lib/format/local-time'
 import type { QueueTree } from '@/lib/queue/contract'
-import { pourDeadline, startOfLocalDay, type ShiftHours } from '@/lib/schedule/shifts'
+import { pourDeadline, startOfLocalDay, type WorkCalendar } from '@/lib/schedule/shifts'
 
 /** 'tight': half of such shells make it, not nine of ten. 'passed': the day is over and the tree still hangs here. */
 export const POUR_VERDICTS = ['holds', 'tight', 'will miss', 'passed', 'not in sight'] as const
 export type PourVerdict = (typeof POUR_VERDICTS)[number]
 
-/** The moment and the hours of the foundry against which a pour is judged. */
-export type PourContext = { now: number; timeZone: string; shiftHours: readonly ShiftHours[] }
+/** The moment and the calendar of the foundry against which a pour is judged. */
+export type PourContext = { now: number; timeZone: string; calendar: WorkCalendar }
 
 type PourTree = Pick<QueueTree, 'pourDate' | 'willMissPour' | 'driedOut' | 'state'>
 
 /** Whether the whole shell is dried out in time for its pour; null without a pour date or once it has left the room. */
-export function pourVerdict(tree: PourTree, { now, timeZone, shiftHours }: PourContext): PourVerdict | null {
+export function pourVerdict(tree: PourTree, { now, timeZone, calendar }: PourContext): PourVerdict | null {
   if (tree.pourDate === null || tree.state === 'released' || tree.state === 'scrapped') return null
-  const deadline = pourDeadline(tree.pourDate, shiftHours, timeZone)
+  const deadline = pourDeadline(tree.pourDate, calendar, timeZone)
   const dayAfter = startOfLocalDay(nextDay(tree.pourDate), timeZone)
   if (now >= dayAfter) return 'passed'
   if (tree.willMissPour) return 'will miss'

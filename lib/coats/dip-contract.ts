@@ -2,7 +2,7 @@ import { z } from 'zod'
 import { COATING_WAYS, STUCCOS } from '@/lib/coats/vocabulary'
 import { airTempC, relHumidityPct } from '@/lib/room/reading-contract'
 
-const instant = z.int().min(0)
+const instant = z.int().min(0).describe('Epoch milliseconds, UTC.')
 
 /** Body of `POST /api/v1/dips`: one run of one or more trees through one bath. */
 export const dipRun = z.strictObject({
@@ -57,6 +57,12 @@ export const dipRunAnswer = z.object({
   ),
 })
 export type DipRunAnswer = z.infer<typeof dipRunAnswer>
+
+/** Answer of `POST /api/v1/dips/undo`. */
+export const undoDipsAnswer = z.object({
+  operationId: z.uuid(),
+  coats: z.array(z.object({ coatId: z.uuid(), treeId: z.uuid(), number: z.int() })),
+})
 
 /** Member `trees` of the 409 problem: why each refused tree was refused. */
 export const dipRefusal = z.object({

@@ -14,7 +14,9 @@ export type CoatingWay = (typeof COATING_WAYS)[number]
 export const RECESS_CLASSES = ['none', 'deep recess', 'closed core', 'closed core, no duct'] as const
 export type RecessClass = (typeof RECESS_CLASSES)[number]
 
-/** Smallest wall-to-wall gap on a tree: 'crowded' is under 40 mm. */
+/** A tree is crowded when its smallest gap from wall to wall is under this. */
+export const CROWDED_UNDER_MM = 40
+
 export const SPACINGS = ['open', 'crowded'] as const
 export type Spacing = (typeof SPACINGS)[number]
 

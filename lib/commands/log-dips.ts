@@ -20,7 +20,7 @@ import { loadFoundry } from '@/lib/queries/load-foundry'
 import { callOf, recipeCoatOf } from '@/lib/trees/assess'
 import { clockStart, type CoatFacts, type TreeFacts } from '@/lib/trees/facts'
 import { Bath, Coat, Member, TreePlace } from '@/models'
-import type { FloorContext } from '@/lib/trees/spans'
+import { airOf, type FloorContext } from '@/lib/trees/spans'
 
 /** A tablet's clock may run a little ahead of ours. */
 const FUTURE_LIMIT_MS = 2 * millisecondsInMinute
@@ -30,7 +30,7 @@ const AIR_AT_DIP_MS = 30 * millisecondsInMinute
 /**
  * Logs a run: every tree gets its coat, or none does. What was made is recorded with its deviations, never refused for them.
  *
- * @throws {AppError} not_found for an unknown tree, bath or place; conflict with `trees` when a coat is already on, one is
+ * @throws {AppError} not_found for an unknown tree, bath or place, and for a retired place; conflict with `trees` when a coat is already on, one is
  *   skipped or the tree has left the floor; unprocessable for a time ahead of the clock or before the coat below.
  */
 export async function logDips(run: DipRun, { member, clock }: { member: Actor; clock: Clock }) {
@@ -66,6 +66,9 @@ async function putCoatsOn(run: DipRun, member: Actor, now: number): Promise<DipR
     if (!treeFacts) throw new AppError('not_found', 'There is no such tree.', { treeId: tree.treeId })
     const place = placeOf.get(tree.placeId)
     if (!place) throw new AppError('not_found', 'There is no such place.', { placeId: tree.placeId })
+    if (place.isRetired) {
+      throw new AppError('not_found', `${place.name} is not used any more: choose where it hangs.`, { placeId: tree.placeId })
+    }
     return { ...tree, facts: treeFacts, place }
   })
   await refuseImpossible(chosen, run)
@@ -95,7 +98,7 @@ async function putCoatsOn(run: DipRun, member: Actor, now: number): Promise<DipR
     // Beyond the recipe a coat has to dry as far as its last one.
     const last = planned ?? tree.recipe.coats.at(-1)
     if (!asPlanned || !last) throw new AppError('unprocessable', `The recipe of ${tree.tag} has no coat.`)
-    const air = airAt(context, place.sensorId, run.dippedAt)
+    const air = airAt(context, airOf(place, run.dippedAt).sensorId, run.dippedAt)
     const deviations: Deviation[] = [
       ...asList(tree.hold !== null, 'held'),
       ...asList(tree.intakePassedAt === null, 'intake open'),

@@ -1,10 +1,9 @@
-import { Op } from 'sequelize'
+import { countTry, forgetTries } from '@/lib/commands/count-try'
 import type { Clock } from '@/lib/core/clock'
 import { newId } from '@/lib/core/ids'
 import type { Role } from '@/lib/members/roles'
-import { FORGET_FAILURES_AFTER_MS, waitAfterFailuresMs } from '@/lib/members/sign-in-waits'
 import { isPasswordRight } from '@/lib/server/password'
-import { inTransaction, Member, Session, SignInWait } from '@/models'
+import { inTransaction, Member, Session } from '@/models'
 
 /** A session ends this long after the sign-in, whatever happens in between. */
 export const SESSION_MS = 12 * 3_600_000
@@ -15,6 +14,8 @@ export type SignInResult =
   | { outcome: 'signed in'; sessionId: string; member: { id: string; name: string; email: string; role: Role } }
   /** Unknown, disabled or wrong: the caller cannot tell which. */
   | { outcome: 'refused' }
+  /** The right password, but one that was good for a day and has run out. */
+  | { outcome: 'first password over' }
   | { outcome: 'wait'; waitSeconds: number }
 
 /**
@@ -33,9 +34,11 @@ export async function signIn(input: SignInInput, { clock }: { clock: Clock }): P
   if (!member || !isRight || member.disabledAt !== null) return { outcome: 'refused' }
 
   const now = clock.now()
+  if (member.firstPasswordUntil !== null && member.firstPasswordUntil <= now) return { outcome: 'first password over' }
   const sessionId = newId(now)
   await inTransaction(async () => {
-    await SignInWait.destroy({ where: { subject } })
+    await forgetTries(subject)
+    await member.update({ lastSignedInAt: now })
     await Session.create({
       id: sessionId,
       memberId: member.id,
@@ -45,21 +48,4 @@ export async function signIn(input: SignInInput, { clock }: { clock: Clock }): P
     })
   })
   return { outcome: 'signed in', sessionId, member: { id: member.id, name: member.name, email: member.email, role: member.role } }
-}
-
-/**
- * Counts a try as failed before the password is looked at, so that a hundred tries at once still make a hundred;
- * a success takes the count away again.
- *
- * @returns how long to wait; 0 when the try may go on.
- */
-function countTry(subject: string, now: number): Promise<number> {
-  return inTransaction(async () => {
-    await SignInWait.destroy({ where: { lastFailedAt: { [Op.lte]: now - FORGET_FAILURES_AFTER_MS } } })
-    const row = await SignInWait.findByPk(subject)
-    if (row && row.waitUntil > now) return row.waitUntil - now
-    const failures = (row?.failures ?? 0) + 1
-    await SignInWait.upsert({ subject, failures, lastFailedAt: now, waitUntil: now + waitAfterFailuresMs(failures) })
-    return 0
-  })
 }

@@ -1,3 +1,4 @@
+import { join } from 'node:path'
 import { z } from 'zod'
 
 const RESERVED_HOST = /(^|\.)(localhost|local|invalid|test|localdomain)$/i
@@ -13,8 +14,11 @@ function isRealContact(subject: string): boolean {
 }
 
 const schema = z.object({
+  NODE_ENV: z.enum(['production', 'development', 'test']).default('production'),
   /** Folder of the database and of what a new foundry makes for itself. */
   DATA_DIR: z.string().min(1).default('data'),
+  /** Folder of the backups, where it is not inside DATA_DIR. */
+  BACKUP_DIR: z.string().optional(),
   NEXTAUTH_SECRET: z.string().min(32, 'NEXTAUTH_SECRET must be at least 32 characters.'),
   NEXTAUTH_URL: z.url('NEXTAUTH_URL must be the address people open, such as http://localhost:3000.'),
   /** Waiting writers and password hashes hold threads; with Node's four the holder of the write lock can wait for one for ever. */
@@ -29,6 +33,8 @@ const schema = z.object({
   PUSH_EXTRA_HOSTS: z.string().default(''),
   /** PEM file of a certificate authority to trust for pushes, beside the system's. */
   PUSH_CA_FILE: z.string().optional(),
+  /** Made by npm start where others can reach the server: the first owner types it, so that nobody else comes first. */
+  SETUP_CODE: z.string().min(8).optional(),
   /** 'off' stops the demo foundry's own sensors. */
   DEMO_FEED: z.enum(['on', 'off']).default('on'),
 })
@@ -49,3 +55,9 @@ export function env(): Env {
   }
   return (parsed = result.data)
 }
+
+/** Where the records and secrets lie. Asked for apart from the rest: a restore needs no other setting. */
+export const dataDir = (): string => process.env['DATA_DIR'] || 'data'
+
+/** Where the backups lie; on another disk if BACKUP_DIR names one. */
+export const backupDir = (): string => process.env['BACKUP_DIR'] || join(dataDir(), 'backups')

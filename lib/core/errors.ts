@@ -25,3 +25,7 @@ export class AppError extends Error {
     super(message, options)
   }
 }
+
+/** The refusal of everything that needs a foundry before there is one. */
+export const notSetUp = (): AppError =>
+  new AppError('unavailable', 'Kilnward is not set up yet. Open it in a browser to make the owner’s account.')

@@ -82,7 +82,7 @@ function treeInput({ tree, tag, pourDate, recessClass, spacing, coats }: TaggedT
     recipeVersionId: shop.recipeVersionIds[tree.recipe],
     placeId: shop.placeIds[coats[0]?.place ?? 'longRack'],
     pieces: tree.pieces.map(({ workTitle, sectionName = '', editionNumber, isRecast = false }) => ({
-      workTitle,
+      workTitle: shop.workTitles.get(workTitle) ?? workTitle,
       sectionName,
       editionNumber,
       isRecast,

@@ -1,5 +1,5 @@
 import { TZDate } from '@date-fns/tz'
-import { millisecondsInDay, millisecondsInHour } from 'date-fns/constants'
+import { millisecondsInDay, millisecondsInHour, millisecondsInMinute } from 'date-fns/constants'
 import { unitOf } from '@/lib/demo/random'
 import type { Air } from '@/lib/drying/types'
 
@@ -48,7 +48,7 @@ export function demoAirAt(climate: DemoClimate, air: DemoAir, at: number): Air {
   const sensor = DEMO_AIRS.indexOf(air)
   const { targetPct, share, warmerC } = DRIED[air]
   // By the sun, so that a clock change moves nothing but people and their machines.
-  const sunHour = (at / millisecondsInHour) % 24
+  const sunHour = ((at + sunOffsetMs(climate.timeZone)) / millisecondsInHour) % 24
   const front = frontAt(climate, at)
   const dayDrift = slowNoise(climate.seed, 1, at, 31 * millisecondsInHour)
   const hourDrift = slowNoise(climate.seed, 2 + sensor, at, 2.3 * millisecondsInHour)
@@ -62,6 +62,19 @@ export function demoAirAt(climate: DemoClimate, air: DemoAir, at: number): Air {
   const airTempC =
     19.7 + warmerC + Math.cos(((sunHour - 15) / 24) * 2 * Math.PI) + 0.5 * dayDrift + 0.15 * hourDrift + 0.6 * front + 0.08 * jitter
   return { airTempC: round(airTempC), relHumidityPct: round(Math.min(relHumidityPct, 88)) }
+}
+
+const sunOffsets = new Map<string, number>()
+const ANY_YEAR = 2026
+
+/** How far a zone's sun is ahead of Greenwich's, to the hour of its clocks in winter. */
+function sunOffsetMs(timeZone: string): number {
+  const known = sunOffsets.get(timeZone)
+  if (known !== undefined) return known
+  const offsets = [0, 6].map((month) => -new TZDate(ANY_YEAR, month, 1, timeZone).getTimezoneOffset() * millisecondsInMinute)
+  const offset = Math.min(...offsets)
+  sunOffsets.set(timeZone, offset)
+  return offset
 }
 
 const round = (value: number) => Math.round(value * 10) / 10

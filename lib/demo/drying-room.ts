@@ -1,6 +1,6 @@
 import { millisecondsInHour, millisecondsInMinute } from 'date-fns/constants'
 import { DEMO_AIRS, demoAirAt, type DemoAir, type DemoClimate } from '@/lib/demo/climate'
-import { DEMO_ALTITUDE_M, DEMO_PLACE_KEYS, DEMO_PLACES, type DemoPlace } from '@/lib/demo/shop'
+import { DEMO_PLACE_KEYS, DEMO_PLACES, type DemoPlace } from '@/lib/demo/shop'
 import { stationPressurePa } from '@/lib/drying/air'
 import { placeSpans } from '@/lib/drying/place-spans'
 import { roomFactor } from '@/lib/drying/room-factor'
@@ -41,9 +41,9 @@ export type DryingRoom = {
 }
 
 /** Works the drying clock over the history and the next three quarters of an hour. */
-export function dryingRoom(climate: DemoClimate, { from, now }: { from: number; now: number }): DryingRoom {
+export function dryingRoom(climate: DemoClimate, { from, now, altitudeM }: { from: number; now: number; altitudeM: number }): DryingRoom {
   const to = now + LOOK_AHEAD_MS
-  const pressurePa = stationPressurePa(DEMO_ALTITUDE_M)
+  const pressurePa = stationPressurePa(altitudeM)
   const curves = new Map(
     DEMO_AIRS.map((air) => {
       const readings = demoReadings(climate, air, { from, to, now })

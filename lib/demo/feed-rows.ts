@@ -6,8 +6,8 @@ import { DEMO_LOGGERS } from '@/lib/demo/shop'
 /** The door takes no older rows; a little less, because a request takes its time. */
 const FURTHEST_BACK_MS = 31 * millisecondsInDay - 10 * millisecondsInMinute
 
-/** The air that a logger of the demo hangs in, by the name it was given; null for a logger of somebody else's. */
-export const airOfLogger = (name: string): DemoAir | null => DEMO_AIRS.find((air) => DEMO_LOGGERS[air] === name) ?? null
+/** The air that a logger of the demo hangs in, by the name it was given, with whatever was put behind it; null for any other. */
+export const airOfLogger = (name: string): DemoAir | null => DEMO_AIRS.find((air) => name.startsWith(DEMO_LOGGERS[air])) ?? null
 
 /**
  * What a demo logger has still to send: the five-minute rows that it missed, 31 days at most, and this minute's.

@@ -6,7 +6,7 @@ import { dryingRoom } from '@/lib/demo/drying-room'
 import { demandOf, recipeOf } from '@/lib/demo/plan-coats'
 import { planTree, type PlannedTree } from '@/lib/demo/plan-trees'
 import { seededRandom } from '@/lib/demo/random'
-import { DEMO_SHIFTS, DEMO_TIME_ZONE } from '@/lib/demo/shop'
+import { DEMO_CALENDAR, type DemoSetting } from '@/lib/demo/shop'
 import { workHours, type WorkHours } from '@/lib/demo/work-hours'
 import { localDay, pourDeadline } from '@/lib/schedule/shifts'
 
@@ -18,20 +18,37 @@ export type TaggedTree = PlannedTree & { tag: string; pourDate: string | null }
 
 export type DemoPlan = { now: number; startsAt: number; climate: DemoClimate; hours: WorkHours; trees: TaggedTree[] }
 
-/** The climate of a demo foundry, by when its history begins. */
-export const demoClimate = (startsAt: number): DemoClimate => ({ seed: DEMO_SEED, startsAt, timeZone: DEMO_TIME_ZONE })
+/** The climate of a demo, by when its history begins and by the zone that it lies in. */
+export const demoClimate = (startsAt: number, timeZone: string): DemoClimate => ({ seed: DEMO_SEED, startsAt, timeZone })
 
-/** Plans the whole past of the demo foundry for a first start at `now`. Pure: the same start gives the same past. */
-export function planDemo(now: number): DemoPlan {
+/**
+ * Plans the whole past of the demo for a start at `now`. Pure: the same start and setting give the same past.
+ *
+ * @throws {Error} when the working hours of the setting leave no room for it.
+ */
+export function planDemo(now: number, setting: DemoSetting): DemoPlan {
   const startsAt = now - DEMO_HISTORY_MS
-  const climate = demoClimate(startsAt)
-  const hours = workHours(startsAt, now)
-  const parts = { room: dryingRoom(climate, { from: startsAt, now }), hours, startsAt, now }
+  const climate = demoClimate(startsAt, setting.timeZone)
+  const hours = workHours(startsAt, now, setting)
+  const parts = { room: dryingRoom(climate, { from: startsAt, now, altitudeM: setting.altitudeM }), hours, startsAt, now }
   const planned = CAST.map((tree, index) => planTree(tree, { ...parts, random: seededRandom(DEMO_SEED + index) }))
   const trees = planned
     .toSorted((a, b) => a.createdAt - b.createdAt)
-    .map((tree, index) => ({ ...tree, tag: `T-${FIRST_TAG + index}`, pourDate: pourDateOf(tree, now) }))
+    .map((tree, index) => ({ ...tree, tag: `T-${FIRST_TAG + index}`, pourDate: pourDateOf(tree, now, setting) }))
   return { now, startsAt, climate, hours, trees }
+}
+
+/**
+ * The same for any foundry: where its hours are so short that two weeks of work do not fit into them, the demo keeps its own.
+ *
+ * @example planDemoAnyhow(now, { ...setting, calendar: oneMorningAWeek }).isInOwnHours // => false
+ */
+export function planDemoAnyhow(now: number, setting: DemoSetting): { plan: DemoPlan; isInOwnHours: boolean } {
+  try {
+    return { plan: planDemo(now, setting), isInOwnHours: true }
+  } catch {
+    return { plan: planDemo(now, { ...setting, calendar: DEMO_CALENDAR }), isInOwnHours: false }
+  }
 }
 
 const FIRST_TAG = 412
@@ -43,21 +60,21 @@ const REFERENCE_HOURS_A_DAY = 7
 const WAIT_DAYS = 0.35
 
 /** The first pour day that leaves room for what is still to do. */
-function pourDateOf(planned: PlannedTree, now: number): string | null {
+function pourDateOf(planned: PlannedTree, now: number, setting: DemoSetting): string | null {
   const { tree, coats, leftAt } = planned
   if (tree.pour === undefined) return null
-  if (tree.pour === 'will miss') return firstPourDay(now + 20 * millisecondsInHour)
-  if (leftAt !== null) return firstPourDay(leftAt + 12 * millisecondsInHour)
+  if (tree.pour === 'will miss') return firstPourDay(now + 20 * millisecondsInHour, setting)
+  if (leftAt !== null) return firstPourDay(leftAt + 12 * millisecondsInHour, setting)
   const toCome = recipeOf(tree).slice(Math.max(0, coats.length - 1))
   const referenceHours = toCome.reduce((sum, { number }) => sum + demandOf(planned, number).amount, 0)
   const days = 2 + referenceHours / REFERENCE_HOURS_A_DAY + WAIT_DAYS * toCome.length
-  return firstPourDay(now + days * millisecondsInDay)
+  return firstPourDay(now + days * millisecondsInDay, setting)
 }
 
-function firstPourDay(from: number): string {
+function firstPourDay(from: number, { timeZone, calendar }: DemoSetting): string {
   for (let at = from; ; at += millisecondsInDay) {
-    const day = localDay(at, DEMO_TIME_ZONE)
-    const weekday = new TZDate(at, DEMO_TIME_ZONE).getDay()
-    if (POUR_WEEKDAYS.includes(weekday) && pourDeadline(day, DEMO_SHIFTS, DEMO_TIME_ZONE) > from - millisecondsInMinute) return day
+    const day = localDay(at, timeZone)
+    const weekday = new TZDate(at, timeZone).getDay()
+    if (POUR_WEEKDAYS.includes(weekday) && pourDeadline(day, calendar, timeZone) > from - millisecondsInMinute) return day
   }
 }

@@ -1,19 +1,12 @@
-import { randomBytes } from 'node:crypto'
-import { millisecondsInDay } from 'date-fns/constants'
-import { recordReadings } from '@/lib/commands/record-readings'
 import type { Clock } from '@/lib/core/clock'
 import { AppError } from '@/lib/core/errors'
-import { actOut } from '@/lib/demo/act-out'
-import { DEMO_AIRS } from '@/lib/demo/climate'
-import { demoReadings } from '@/lib/demo/drying-room'
-import { happenings } from '@/lib/demo/happenings'
-import { DEMO_PEOPLE, DEMO_SIGN_INS, type DemoPersonKey, type DemoSignIn } from '@/lib/demo/people'
-import { planDemo, type DemoPlan } from '@/lib/demo/plan'
+import { fillShop } from '@/lib/demo/fill-shop'
 import { openShop, type DemoShop } from '@/lib/demo/open-shop'
-import { hashPassword } from '@/lib/server/password'
-import { Foundry, inTransaction } from '@/models'
-
-const LOW_COST = 1024
+import { DEMO_PEOPLE, DEMO_SIGN_INS, type DemoPersonKey, type DemoSignIn } from '@/lib/demo/people'
+import { planDemo } from '@/lib/demo/plan'
+import { DEMO_NAME, DEMO_SETTING } from '@/lib/demo/shop'
+import { hashPassword, hashRandomPassword } from '@/lib/server/password'
+import { Foundry, inTransaction, ShiftHours } from '@/models'
 
 export type SeededDemo = { signIns: DemoSignIn[]; sensorTokens: DemoShop['sensorTokens'] }
 
@@ -26,13 +19,16 @@ export type SeededDemo = { signIns: DemoSignIn[]; sensorTokens: DemoShop['sensor
  */
 export async function seedDemo({ clock, scryptCost }: { clock: Clock; scryptCost?: number }): Promise<SeededDemo> {
   await refuseSecondFoundry()
-  const plan = planDemo(clock.now())
+  const plan = planDemo(clock.now(), DEMO_SETTING)
   const passwordHashes = await hashPasswords(scryptCost)
   return inTransaction(async () => {
     await refuseSecondFoundry()
-    const shop = await openShop({ createdAt: plan.startsAt, passwordHashes })
-    await storeReadings(plan, shop)
-    await actOut(happenings(plan), shop)
+    const createdAt = plan.startsAt
+    const { timeZone, altitudeM, calendar } = DEMO_SETTING
+    await Foundry.create({ id: 1, name: DEMO_NAME, timeZone, altitudeM, isDemo: true, setUpAt: createdAt, createdAt })
+    await ShiftHours.bulkCreate([...calendar.hours])
+    const shop = await openShop({ createdAt, passwordHashes })
+    await fillShop(plan, shop)
     return { signIns: [...DEMO_SIGN_INS], sensorTokens: shop.sensorTokens }
   })
 }
@@ -44,23 +40,9 @@ async function refuseSecondFoundry(): Promise<void> {
 async function hashPasswords(cost: number | undefined): Promise<Map<DemoPersonKey, string>> {
   const hashes = await Promise.all(
     DEMO_PEOPLE.map(async ({ key, password }): Promise<[DemoPersonKey, string]> => {
-      // Nobody knows the password of those who are there for company; it is too long to guess, whatever the cost of a guess.
-      const hash =
-        password === null ? await hashPassword(randomBytes(32).toString('base64url'), LOW_COST) : await hashPassword(password, cost)
+      const hash = password === null ? await hashRandomPassword() : await hashPassword(password, cost)
       return [key, hash]
     }),
   )
   return new Map(hashes)
-}
-
-/** A day at a time, as they came in. */
-async function storeReadings({ climate, startsAt, now }: DemoPlan, shop: DemoShop): Promise<void> {
-  for (const air of DEMO_AIRS) {
-    const readings = demoReadings(climate, air, { from: startsAt, to: now, now })
-    for (let from = startsAt; from <= now; from += millisecondsInDay) {
-      const to = Math.min(now, from + millisecondsInDay - 1)
-      const rows = readings.filter(({ measuredAt }) => measuredAt >= from && measuredAt <= to)
-      await recordReadings({ sensorId: shop.sensorIds[air], source: 'sensor', enteredBy: null, rows }, { clock: { now: () => to } })
-    }
-  }
 }

@@ -1,25 +1,25 @@
-import type { CoatKind, Guard, Stucco } from '@/lib/coats/vocabulary'
 import type { DemoAir } from '@/lib/demo/climate'
-import {
-  DEFAULT_LAST_MOISTURE_TARGET,
-  DEFAULT_LONGEST_WAIT_HOURS,
-  DEFAULT_MOISTURE_TARGET,
-  defaultReferenceHours,
-} from '@/lib/drying/recipe-defaults'
 import type { FanHours, PlaceAir } from '@/lib/drying/types'
-import type { ShiftHours } from '@/lib/schedule/shifts'
+import { startingCoats, type CoatLine, type StartingCoat } from '@/lib/recipes/starting-coats'
+import type { WorkCalendar } from '@/lib/schedule/shifts'
 
 export const DEMO_NAME = 'Marram Lane Art Foundry'
-export const DEMO_TIME_ZONE = 'Europe/London'
-export const DEMO_ALTITUDE_M = 4
 
 const everyWeekday = [1, 2, 3, 4, 5]
 const SATURDAY = 6
 
-export const DEMO_SHIFTS: readonly ShiftHours[] = [
-  ...everyWeekday.map((weekday) => ({ weekday, opensMinute: 7 * 60, closesMinute: 17 * 60 })),
-  { weekday: SATURDAY, opensMinute: 8 * 60, closesMinute: 12 * 60 },
-]
+export const DEMO_CALENDAR: WorkCalendar = {
+  hours: [
+    ...everyWeekday.map((weekday) => ({ weekday, opensMinute: 7 * 60, closesMinute: 17 * 60 })),
+    { weekday: SATURDAY, opensMinute: 8 * 60, closesMinute: 12 * 60 },
+  ],
+  closures: [],
+}
+
+/** Where and when the demo happens: in a foundry of its own, or in the one that it is laid over. */
+export type DemoSetting = { timeZone: string; altitudeM: number; calendar: WorkCalendar }
+
+export const DEMO_SETTING: DemoSetting = { timeZone: 'Europe/London', altitudeM: 4, calendar: DEMO_CALENDAR }
 
 /** Names of the loggers by the air they hang in; the wall hygrometer is read by people. */
 export const DEMO_LOGGERS: Record<DemoAir, string> = { 'shell room': 'Shell room logger', 'net loft': 'Net loft logger' }
@@ -44,53 +44,35 @@ export const DEMO_PLACE_KEYS = ['fanRack', 'longRack', 'netLoft', 'stillCorner',
 export type DemoBath = 'face' | 'backup'
 export const DEMO_BATH_NAMES: Record<DemoBath, string> = { face: 'Face slurry', backup: 'Backup slurry' }
 
-export type DemoRecipeCoat = {
-  number: number
-  kind: CoatKind
-  bath: DemoBath
-  stucco: Stucco
-  needReferenceHours: number
-  moistureTarget: number
-  guard: Guard
-  drainSeconds: number
-  longestWaitHours: number
-  isPrewet: boolean
-  readAloud: string
+export type DemoRecipeCoat = Omit<StartingCoat, 'bathKind'> & { number: number; bath: DemoBath }
+
+const FIRST_FACE: CoatLine = {
+  kind: 'face',
+  stucco: 'fine',
+  readAloud: 'Slow into the slurry, turn it, break every bubble with the brush. Even and matte before the sand.',
 }
-
-type Line = [kind: CoatKind, stucco: Stucco, readAloud: string]
-
-const FIRST_FACE: Line = [
-  'face',
-  'fine',
-  'Slow into the slurry, turn it, break every bubble with the brush. Even and matte before the sand.',
-]
-const SECOND_FACE: Line = ['face', 'fine', 'Blow off loose sand first. Prewet, drain to matte, then dip slowly.']
-const MEDIUM: Line = ['backup', 'medium', 'Prewet, dip, drain with the cup down. Look into the undercuts.']
-const COARSE: Line = ['backup', 'coarse', 'Dip and turn once. Coarse sand all round, edges twice.']
-const CORE_FILL: Line = ['core fill', 'coarse', 'Fill the open core, tamp it lightly, leave the drain holes free.']
-const SEAL: Line = ['seal', 'none', 'Slurry only, no sand. Keep the cup rim clean.']
-
-const DRAIN_SECONDS: Record<CoatKind, number> = { face: 75, backup: 40, 'core fill': 60, seal: 45 }
-
-/** Coats from lines: needs from our own starting values, so that nothing in the demo claims to be calibrated. */
-function coatsOf(lines: readonly Line[]): DemoRecipeCoat[] {
-  return lines.map(([kind, stucco, readAloud], index) => ({
-    number: index + 1,
-    kind,
-    bath: kind === 'face' ? 'face' : 'backup',
-    stucco,
-    needReferenceHours: defaultReferenceHours(kind, lines.slice(0, index).filter(([earlier]) => earlier === kind).length),
-    moistureTarget: kind === 'seal' ? DEFAULT_LAST_MOISTURE_TARGET : DEFAULT_MOISTURE_TARGET,
-    guard: kind === 'face' || kind === 'seal' ? 'safe' : 'likely',
-    drainSeconds: DRAIN_SECONDS[kind],
-    longestWaitHours: DEFAULT_LONGEST_WAIT_HOURS[kind],
-    isPrewet: index > 0 && kind !== 'core fill',
-    readAloud,
-  }))
+const SECOND_FACE: CoatLine = {
+  kind: 'face',
+  stucco: 'fine',
+  readAloud: 'Blow off loose sand first. Prewet, drain to matte, then dip slowly.',
 }
+const MEDIUM: CoatLine = {
+  kind: 'backup',
+  stucco: 'medium',
+  readAloud: 'Prewet, dip, drain with the cup down. Look into the undercuts.',
+}
+const COARSE: CoatLine = { kind: 'backup', stucco: 'coarse', readAloud: 'Dip and turn once. Coarse sand all round, edges twice.' }
+const CORE_FILL: CoatLine = {
+  kind: 'core fill',
+  stucco: 'coarse',
+  readAloud: 'Fill the open core, tamp it lightly, leave the drain holes free.',
+}
+const SEAL: CoatLine = { kind: 'seal', stucco: 'none', readAloud: 'Slurry only, no sand. Keep the cup rim clean.' }
 
-const lines = (line: Line, count: number): Line[] => Array.from({ length: count }, () => line)
+const coatsOf = (lines: readonly CoatLine[]): DemoRecipeCoat[] =>
+  startingCoats(lines).map(({ bathKind, ...coat }, index) => ({ ...coat, number: index + 1, bath: bathKind }))
+
+const lines = (line: CoatLine, count: number): CoatLine[] => Array.from({ length: count }, () => line)
 
 export const DEMO_RECIPES = {
   six: { name: 'Six coats, small work', coats: coatsOf([FIRST_FACE, SECOND_FACE, MEDIUM, ...lines(COARSE, 2), SEAL]) },

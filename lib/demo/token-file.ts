@@ -1,4 +1,4 @@
-import { chmod, mkdir, readFile, rename, writeFile } from 'node:fs/promises'
+import { chmod, mkdir, readFile, rename, rm, writeFile } from 'node:fs/promises'
 import { dirname, join } from 'node:path'
 import { z } from 'zod'
 import { env } from '@/lib/core/env'
@@ -25,3 +25,6 @@ export async function readDemoTokens(): Promise<DemoTokens | null> {
     return null
   }
 }
+
+/** Throws the kept tokens away, after the demo has gone. */
+export const dropDemoTokens = (): Promise<void> => rm(fileOf(), { force: true })

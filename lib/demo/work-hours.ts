@@ -1,22 +1,22 @@
 import { TZDate } from '@date-fns/tz'
 import { millisecondsInDay, millisecondsInMinute } from 'date-fns/constants'
 import { unitOf } from '@/lib/demo/random'
-import { DEMO_SHIFTS, DEMO_TIME_ZONE, type DemoBath } from '@/lib/demo/shop'
+import type { DemoBath, DemoSetting } from '@/lib/demo/shop'
 import { COATING_WAYS, STUCCOS, type CoatingWay, type Stucco } from '@/lib/coats/vocabulary'
 import { shiftsFrom, type Shift } from '@/lib/schedule/shifts'
 
 /** When people were at work over the history, in order. */
-export type WorkHours = { shifts: readonly Shift[] }
+export type WorkHours = { timeZone: string; shifts: readonly Shift[] }
 
 const WEEK_MS = 7 * millisecondsInDay
 
 /** The shifts that touch [from, to]. */
-export function workHours(from: number, to: number): WorkHours {
+export function workHours(from: number, to: number, { calendar, timeZone }: Pick<DemoSetting, 'calendar' | 'timeZone'>): WorkHours {
   const byOpening = new Map<number, Shift>()
   for (let at = from; at <= to + WEEK_MS; at += WEEK_MS) {
-    for (const shift of shiftsFrom(at, DEMO_SHIFTS, DEMO_TIME_ZONE)) byOpening.set(shift.opensAt, shift)
+    for (const shift of shiftsFrom(at, calendar, timeZone)) byOpening.set(shift.opensAt, shift)
   }
-  return { shifts: [...byOpening.values()].filter((shift) => shift.opensAt <= to).toSorted((a, b) => a.opensAt - b.opensAt) }
+  return { timeZone, shifts: [...byOpening.values()].filter((shift) => shift.opensAt <= to).toSorted((a, b) => a.opensAt - b.opensAt) }
 }
 
 /** The shift that an instant lies in, its ends included. */
@@ -36,7 +36,7 @@ export function lastAtWork({ shifts }: WorkHours, at: number, margin = 0): numbe
  */
 export function oddness(hours: WorkHours, at: number): number {
   if (shiftAt(hours, at)) return 0
-  const hour = new TZDate(at, DEMO_TIME_ZONE).getHours()
+  const hour = new TZDate(at, hours.timeZone).getHours()
   if (hour >= 8 && hour < 19) return 1
   return hour >= 6 && hour < 22 ? 2 : 4
 }

@@ -31,14 +31,18 @@ export function assertPressurePa(pressurePa: number): void {
   assertWithin('Station pressure in Pa', pressurePa, 50_000, 110_000)
 }
 
+/** The shore of the Dead Sea, and higher than any town. */
+export const LOWEST_ALTITUDE_M = -430
+export const HIGHEST_ALTITUDE_M = 5000
+
 /**
  * Pressure of the standard atmosphere at a foundry's altitude, Pa. A barometer is better where there is one.
  *
- * @throws {RangeError} outside -400 to 5000 m.
+ * @throws {RangeError} outside -430 to 5000 m.
  * @source ASHRAE Handbook - Fundamentals (SI) 2017, ch. 1, eq. 3.
  */
 export function stationPressurePa(altitudeM: number): number {
-  assertWithin('Altitude in metres', altitudeM, -400, 5000)
+  assertWithin('Altitude in metres', altitudeM, LOWEST_ALTITUDE_M, HIGHEST_ALTITUDE_M)
   return psychrolib.GetStandardAtmPressure(altitudeM)
 }
 

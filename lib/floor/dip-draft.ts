@@ -1,7 +1,9 @@
 import type { CoatingWay, Stucco } from '@/lib/coats/vocabulary'
 import type { DipRun } from '@/lib/coats/dip-contract'
+import { readTyped, typedWords } from '@/lib/format/typed-units'
+import { UNIT_SIGNS, type TempUnit } from '@/lib/format/units'
 import type { Queue, QueueTree } from '@/lib/queue/contract'
-import { airTempC, relHumidityPct } from '@/lib/room/reading-contract'
+import { AIR_TEMP_LIMITS_C, relHumidityPct } from '@/lib/room/reading-contract'
 import type { TreeState } from '@/lib/trees/states'
 
 const MINUTE_MS = 60_000
@@ -164,17 +166,31 @@ export function parseDial(text: string): number | null {
 
 export type DialErrors = { airTempC?: string; relHumidityPct?: string }
 
-/** Checks what was typed from the wall hygrometer against what air can be. */
+/** What is wrong with a temperature that was typed, with the limits in the unit it was typed in; null when nothing is. */
+function tempProblem(typed: number | null, unit: TempUnit): string | null {
+  if (typed === null || !Number.isFinite(typed)) return `Temperature is a number in ${UNIT_SIGNS[unit]}.`
+  const celsius = readTyped(typed, unit)
+  const { least, most } = AIR_TEMP_LIMITS_C
+  if (celsius < least) return `A shell room is not colder than ${typedWords(least, unit)}.`
+  return celsius > most ? `A shell room is not hotter than ${typedWords(most, unit)}.` : null
+}
+
+/** Checks what was typed from the wall hygrometer against what air can be. The dial is read in `unit`; the room comes back in °C. */
 export function checkDial(
   temp: string,
   humidity: string,
+  unit: TempUnit,
 ): { errors: DialErrors; room: { airTempC: number; relHumidityPct: number } | null } {
   const errors: DialErrors = {}
-  const parsedTemp = airTempC.safeParse(parseDial(temp) ?? undefined)
+  const typedTemp = parseDial(temp)
+  const problem = tempProblem(typedTemp, unit)
   const parsedHumidity = relHumidityPct.safeParse(parseDial(humidity) ?? undefined)
-  if (!parsedTemp.success) errors.airTempC = parsedTemp.error.issues[0]?.message ?? 'Temperature is a number in °C.'
+  if (problem !== null) errors.airTempC = problem
   if (!parsedHumidity.success) errors.relHumidityPct = parsedHumidity.error.issues[0]?.message ?? 'Humidity is a number in %.'
-  const room = parsedTemp.success && parsedHumidity.success ? { airTempC: parsedTemp.data, relHumidityPct: parsedHumidity.data } : null
+  const room =
+    typedTemp !== null && problem === null && parsedHumidity.success
+      ? { airTempC: readTyped(typedTemp, unit), relHumidityPct: parsedHumidity.data }
+      : null
   return { errors, room }
 }
 

@@ -11,6 +11,8 @@ const LOWEST_ROLE = {
   see: 'crew',
   /** Notices on one's own devices, and watching a tree. */
   subscribe: 'crew',
+  /** One's own password: the one act that is open with a password that somebody else has made. */
+  'own password': 'crew',
   dip: 'operator',
   /** Taking back one's own dip within ten minutes. Later, or another's, is `correct`. */
   undo: 'operator',

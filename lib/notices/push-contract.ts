@@ -16,6 +16,9 @@ export const subscribeInput = z.strictObject({
 })
 export type SubscribeInput = z.infer<typeof subscribeInput>
 
+/** Answer of `POST /api/v1/push/subscriptions`. */
+export const subscribeAnswer = z.object({ id: z.uuid() })
+
 /** Body of `DELETE /api/v1/push/subscriptions` and of `POST /api/v1/push/test`: one device, by its address or by its id. */
 export const deviceInput = z.union([z.strictObject({ endpoint }), z.strictObject({ id: z.uuid() })])
 export type DeviceInput = z.infer<typeof deviceInput>

@@ -35,7 +35,12 @@ export async function deriveFloor(
   const starts = facts.flatMap((tree) => tree.coats.slice(-1).map(clockStart))
   const oldest = Math.min(now - FORECAST_HISTORY_MS, ...starts, ...extraInstants)
   const from = Math.max(oldest, now - LONGEST_WINDOW_MS)
-  const sensorIds = [...new Set([...foundry.places.map((place) => place.sensorId), ...foundry.sensors.map((sensor) => sensor.id)])]
+  const sensorIds = [
+    ...new Set([
+      ...foundry.places.flatMap(({ sensorId, formerAirs }) => [sensorId, ...formerAirs.map((air) => air.sensorId)]),
+      ...foundry.sensors.map(({ id }) => id),
+    ]),
+  ]
   // An hour before each instant too: the damp flag and the room at the dip look back from it.
   const needed = new Set(
     [...starts, ...extraInstants, now]
@@ -60,7 +65,7 @@ export async function deriveFloor(
     pressurePa: foundry.pressurePa,
     climates: await loadClimates(),
     places: foundry.places,
-    shifts: shiftsFrom(now, foundry.shiftHours, foundry.timeZone),
+    shifts: shiftsFrom(now, foundry.calendar, foundry.timeZone),
     from: hourStartOf(from),
   })
   const before = needed.size
@@ -75,5 +80,5 @@ export async function deriveFloor(
     }
   }
   const context = needed.size > before ? withClimates(coarse, await loadClimates()) : coarse
-  return { foundry, context, trees: facts.map((tree) => deriveTree(tree, context, foundry.shiftHours)) }
+  return { foundry, context, trees: facts.map((tree) => deriveTree(tree, context, foundry.calendar)) }
 }

@@ -4,12 +4,13 @@ import { treeTitle, type PieceName } from '@/lib/trees/title'
 import type { CoatFacts, RecipeCoatFacts, TreeFacts } from '@/lib/trees/facts'
 import { database } from '@/models'
 
-/** Which trees: those on the floor, some by id, or those that left it lately. */
-export type TreeSelection = { on: 'floor' } | { ids: readonly string[] } | { leftSince: number }
+/** Which trees: those on the floor, or some by id. */
+export type TreeSelection = { on: 'floor' } | { ids: readonly string[] }
 
 type TreeRow = {
   id: string
   tag: string
+  isDemo: number
   recessClass: RecessClass
   spacing: Spacing
   pourDate: string | null
@@ -28,17 +29,14 @@ const select = <Row extends object>(sql: string, replacements: Record<string, un
 
 function condition(selection: TreeSelection): { where: string; replacements: Record<string, unknown> } {
   if ('on' in selection) return { where: 't.released_at IS NULL AND t.scrapped_at IS NULL', replacements: {} }
-  if ('ids' in selection) {
-    return { where: 't.id IN (SELECT value FROM json_each(:ids))', replacements: { ids: JSON.stringify(selection.ids) } }
-  }
-  return { where: 't.released_at >= :since OR t.scrapped_at >= :since', replacements: { since: selection.leftSince } }
+  return { where: 't.id IN (SELECT value FROM json_each(:ids))', replacements: { ids: JSON.stringify(selection.ids) } }
 }
 
 /** Stored facts of the chosen trees, by tag; a handful of queries, however many trees there are. */
 export async function loadFacts(selection: TreeSelection): Promise<TreeFacts[]> {
   const { where, replacements } = condition(selection)
   const trees = await select<TreeRow>(
-    `SELECT t.id, t.tag, t.recess_class AS recessClass, t.spacing, t.pour_date AS pourDate, t.intake_passed_at AS intakePassedAt,
+    `SELECT t.id, t.tag, t.is_demo AND NOT (SELECT is_demo FROM foundry) AS isDemo, t.recess_class AS recessClass, t.spacing, t.pour_date AS pourDate, t.intake_passed_at AS intakePassedAt,
             t.released_at AS releasedAt, t.scrapped_at AS scrappedAt, v.id AS versionId, v.version, v.calibrated_at AS calibratedAt, r.name AS recipeName
        FROM trees t JOIN recipe_versions v ON v.id = t.recipe_version_id JOIN recipes r ON r.id = v.recipe_id
       WHERE ${where} ORDER BY t.tag`,
@@ -104,6 +102,7 @@ export async function loadFacts(selection: TreeSelection): Promise<TreeFacts[]> 
       id: tree.id,
       tag: tree.tag,
       title: treeTitle(piecesOf.get(tree.id) ?? []),
+      isDemo: tree.isDemo === 1,
       recessClass: tree.recessClass,
       spacing: tree.spacing,
       pourDate: tree.pourDate,

@@ -49,14 +49,16 @@ async function makeQueue(now: number): Promise<Queue> {
     loadBaths(),
     workerPulse(now),
   ])
-  const usedSensors = new Set(foundry.places.map((place) => place.sensorId))
+  const places = foundry.places.filter((place) => !place.isRetired)
+  const usedSensors = new Set(places.map((place) => place.sensorId))
   return {
     now,
     foundry: {
       name: foundry.name,
       timeZone: foundry.timeZone,
       isDemo: foundry.isDemo,
-      isDemoFeedOn: foundry.isDemo && env().DEMO_FEED === 'on',
+      hasDemoData: foundry.hasDemoData,
+      isDemoFeedOn: foundry.hasDemoData && env().DEMO_FEED === 'on',
     },
     shift: queueShift(now, context.shifts, foundry.timeZone),
     rooms: foundry.sensors
@@ -75,7 +77,7 @@ async function makeQueue(now: number): Promise<Queue> {
         },
       ),
     ),
-    places: foundry.places.map((place) => ({
+    places: places.map((place) => ({
       id: place.id,
       name: place.name,
       sensorId: place.sensorId,

@@ -17,6 +17,8 @@ export type SessionMember = {
   units: Units
   /** Signed in with a password that somebody else has made: nothing is open but the page where they make their own. */
   mustChangePassword: boolean
+  /** False until the owner has ended the first run: every page leads there. */
+  isFoundrySetUp: boolean
 }
 
 /** The member behind a session as the database knows them now; null once it has ended, run out, or its member was disabled. */
@@ -24,6 +26,8 @@ export async function sessionMember(sessionId: string, { clock }: { clock: Clock
   const session = await Session.findByPk(sessionId, { include: 'member' })
   const member = session?.member
   if (!session || !member || session.endedAt !== null || session.expiresAt <= clock.now() || member.disabledAt !== null) return null
+  // A first password that has run out opens nothing any more, not even through the session it has opened.
+  if (member.firstPasswordUntil !== null && member.firstPasswordUntil <= clock.now()) return null
   const foundry = await Foundry.findByPk(1)
   return {
     id: member.id,
@@ -39,5 +43,6 @@ export async function sessionMember(sessionId: string, { clock }: { clock: Clock
       length: member.lengthUnit ?? foundry?.lengthUnit ?? 'mm',
     },
     mustChangePassword: member.firstPasswordUntil !== null,
+    isFoundrySetUp: typeof foundry?.setUpAt === 'number',
   }
 }

@@ -20,6 +20,7 @@ export function queueTree(tree: DerivedTree, places: ReadonlyMap<string, PlaceFa
     id: facts.id,
     tag: facts.tag,
     title: facts.title,
+    isDemo: facts.isDemo,
     place: { id: place?.id ?? '', name: place?.name ?? '' },
     state: tree.state,
     stateSince: tree.stateSince,

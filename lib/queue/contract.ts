@@ -3,7 +3,7 @@ import { COAT_KINDS, GUARDS, STUCCOS } from '@/lib/coats/vocabulary'
 import { TREE_STATES } from '@/lib/trees/states'
 
 /** Instants travel as epoch milliseconds (UTC); the browser shows them in the foundry's zone. */
-const instant = z.int()
+const instant = z.int().describe('Epoch milliseconds, UTC.')
 
 /** A pair of promised times. Null where the time lies beyond the forecast's horizon. */
 const pair = z.object({ earliestAt: instant.nullable(), likelyAt: instant.nullable(), safeAt: instant.nullable() })
@@ -31,6 +31,8 @@ export const warning = z.object({
   ]),
   level: z.enum(['note', 'warn', 'stop']),
   text: z.string(),
+  /** The same sentence with its temperatures in °F; only where it has any. All tablets share one queue. */
+  textInDegF: z.string().optional(),
 })
 export type Warning = z.infer<typeof warning>
 
@@ -39,6 +41,8 @@ export const queueTree = z.object({
   tag: z.string(),
   /** What hangs on the tree in one line: 'Otter Gate, panel 2', or 'Kelp Bowl, 2 pieces'. */
   title: z.string(),
+  /** Demo data in a foundry that is not the demo itself: it is marked wherever it shows. */
+  isDemo: z.boolean(),
   place: z.object({ id: z.uuid(), name: z.string() }),
   state: z.enum(TREE_STATES),
   /** Short words after the state's own: 'Waiting 35 min' counts from here; 'Overdue 1 h 05 min' too; null where there is no since. */
@@ -113,7 +117,7 @@ export type QueueBath = z.infer<typeof queueBath>
 
 export const queue = z.object({
   now: instant,
-  foundry: z.object({ name: z.string(), timeZone: z.string(), isDemo: z.boolean(), isDemoFeedOn: z.boolean() }),
+  foundry: z.object({ name: z.string(), timeZone: z.string(), isDemo: z.boolean(), hasDemoData: z.boolean(), isDemoFeedOn: z.boolean() }),
   /** This shift's end and the next shift's two ends; the tide axis lies on them. Closed days are skipped. */
   shift: z.object({ isOpen: z.boolean(), endsAt: instant, nextStartsAt: instant, nextEndsAt: instant }),
   rooms: z.array(queueRoom),

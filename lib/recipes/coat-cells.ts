@@ -53,10 +53,11 @@ export function coatCells(coat: Omit<VersionCoat, 'number' | 'bathId'>): CoatCel
   }
 }
 
-/** A cell's text with its unit; an empty one is 'nothing'. */
+/** A cell's text with its unit, a sentence in quotes; an empty one is 'nothing'. */
 export function cellWords(key: CoatCell, text: string): string {
   const unit = COAT_CELLS.find((cell) => cell.key === key)?.unit ?? ''
   if (text === '') return 'nothing'
+  if (key === 'readAloud') return `‘${text}’`
   return unit === '' ? text : `${text}\u00A0${unit}`
 }
 

@@ -1,6 +1,6 @@
 import { z } from 'zod'
 import { COAT_KINDS, GUARDS, STUCCOS } from '@/lib/coats/vocabulary'
-import { typedNumber } from '@/lib/trees/tree-input'
+import { typedNumber } from '@/lib/format/typed-number'
 
 export const MOST_COATS = 40
 

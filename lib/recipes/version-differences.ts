@@ -10,7 +10,7 @@ export type CoatDifference =
 
 /** How much another text in a cell speaks for another coat. Two coats whose weights pass LEAVE are not the same coat changed. */
 const WEIGHTS: Record<CoatCell, number> = {
-  kind: 0.8,
+  kind: 1.7,
   stucco: 0.6,
   bath: 0.4,
   need: 0.2,

@@ -1,10 +1,13 @@
 import { z } from 'zod'
 
+/** The coldest and the hottest that a shell room can be, °C. */
+export const AIR_TEMP_LIMITS_C = { least: -10, most: 60 } as const
+
 /** What a shell room's air can be; anything else is a fault of the sensor or a slip of the finger. */
 export const airTempC = z
   .number('Temperature is a number in °C.')
-  .min(-10, 'A shell room is not colder than -10 °C.')
-  .max(60, 'A shell room is not hotter than 60 °C.')
+  .min(AIR_TEMP_LIMITS_C.least, 'A shell room is not colder than -10 °C.')
+  .max(AIR_TEMP_LIMITS_C.most, 'A shell room is not hotter than 60 °C.')
 
 /** Sensors report a little over 100 % in saturated air, so 105 is the limit; the clock itself clamps to 0.5-100. */
 export const relHumidityPct = z
@@ -16,6 +19,7 @@ export const relHumidityPct = z
 const measuredAt = z
   .union([z.int().min(0), z.iso.datetime({ offset: true })])
   .transform((value) => (typeof value === 'number' ? value : Date.parse(value)))
+  .describe('When it was measured: ISO 8601 with a zone, or epoch milliseconds (UTC).')
 
 /** One row of `POST /api/v1/readings`; rows are checked one by one so that good ones are kept. */
 export const readingRow = z.strictObject({ measuredAt, airTempC, relHumidityPct })
@@ -34,3 +38,6 @@ export type ReadingBatchAnswer = z.infer<typeof readingBatchAnswer>
 
 /** A person reads the wall hygrometer. */
 export const typedReading = z.strictObject({ operationId: z.uuid(), sensorId: z.int(), airTempC, relHumidityPct })
+
+/** Answer of `POST /api/v1/readings/typed`: the instant from which it counts. */
+export const typedReadingAnswer = z.object({ sensorId: z.int(), measuredAt: z.int() })

@@ -2,11 +2,13 @@ import type { NextRequest } from 'next/server'
 import { RateLimiterMemory, type RateLimiterRes } from 'rate-limiter-flexible'
 import { stampSensorToken } from '@/lib/commands/stamp-sensor-token'
 import { systemClock, type Clock } from '@/lib/core/clock'
-import { AppError } from '@/lib/core/errors'
+import { AppError, notSetUp } from '@/lib/core/errors'
 import { log } from '@/lib/core/log'
 import type { Act } from '@/lib/members/roles'
+import { hasMembers } from '@/lib/queries/has-members'
 import { sensorOfToken, type TokenSensor } from '@/lib/queries/sensor-of-token'
 import { requireMember, type Member } from '@/lib/server/auth'
+import { SENSOR_REQUESTS_PER_MINUTE } from '@/lib/server/limits'
 import { requireOwnOrigin } from '@/lib/server/origin'
 import { problemOf } from '@/lib/server/problem'
 import { processWide } from '@/lib/server/process-wide'
@@ -15,9 +17,8 @@ type Params = Record<string, string | string[]>
 type Call<P extends Params> = { request: NextRequest; params: P; clock: Clock }
 type Route<P extends Params> = (request: NextRequest, context: { params: Promise<P> }) => Promise<Response>
 
-const REQUESTS_PER_MINUTE = 60
 const STAMP_EVERY_MS = 60_000
-const sensorRequests = processWide('sensor requests', () => new RateLimiterMemory({ points: REQUESTS_PER_MINUTE, duration: 60 }))
+const sensorRequests = processWide('sensor requests', () => new RateLimiterMemory({ points: SENSOR_REQUESTS_PER_MINUTE, duration: 60 }))
 
 /** A route that anybody may call. It must not change anything. */
 export function openRoute<P extends Params = Params>(handler: (call: Call<P>) => Promise<Response>): Route<P> {
@@ -52,7 +53,7 @@ export function memberRoute<P extends Params = Params>(
 }
 
 /**
- * A route for sensors with a bearer token: no cookies, no members. 60 requests a minute for each token.
+ * A route for sensors with a bearer token: no cookies, no members. A limited number of requests a minute for each token.
  */
 export function sensorRoute<P extends Params = Params>(handler: (call: Call<P> & { sensor: TokenSensor }) => Promise<Response>): Route<P> {
   const route = openRoute<P>(async (call) => {
@@ -70,11 +71,16 @@ export function sensorRoute<P extends Params = Params>(handler: (call: Call<P> &
 async function requireSensor(request: NextRequest, clock: Clock): Promise<TokenSensor> {
   const [, token] = /^Bearer +(\S+)$/i.exec(request.headers.get('authorization') ?? '') ?? []
   const sensor = token ? await sensorOfToken(token) : null
+  if (!sensor && !(await hasMembers())) throw notSetUp()
   if (!sensor) throw new AppError('unauthenticated', 'Send the token of a sensor in use: Authorization: Bearer kw_…')
   await sensorRequests.consume(sensor.tokenId).catch((refusal: RateLimiterRes) => {
-    throw new AppError('too_many_requests', `More than ${REQUESTS_PER_MINUTE} requests in a minute. Send several readings at once.`, {
-      retryAfterSeconds: Math.ceil(refusal.msBeforeNext / 1000),
-    })
+    throw new AppError(
+      'too_many_requests',
+      `More than ${SENSOR_REQUESTS_PER_MINUTE} requests in a minute. Send several readings at once.`,
+      {
+        retryAfterSeconds: Math.ceil(refusal.msBeforeNext / 1000),
+      },
+    )
   })
   if (clock.now() - (sensor.lastUsedAt ?? 0) >= STAMP_EVERY_MS) {
     // Readings count more than the stamp.

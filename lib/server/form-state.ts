@@ -5,8 +5,8 @@ import type { FieldErrors } from '@/lib/trees/tree-form-values'
 /** Answer of a server action to a form. What was typed stays in the browser, so it does not travel back. */
 export type FormState =
   | { status: 'idle' }
-  /** `text` says what was done, for the eyes and for a reader. */
-  | { status: 'done'; text: string }
+  /** `text` says what was done, for the eyes and for a reader; `secret` is shown this one time and kept nowhere. */
+  | { status: 'done'; text: string; secret?: string }
   | { status: 'invalid'; fields: FieldErrors }
   | { status: 'refused'; text: string }
 

@@ -51,3 +51,10 @@ export async function isPasswordRight(password: string, hash: string | null, cos
   const actual = await derive(password, Buffer.from(salt, 'base64url'), Number(n), Number(r), Number(p))
   return expected.length === actual.length && timingSafeEqual(expected, actual)
 }
+
+const RANDOM_PASSWORD_COST = 1024
+
+/** Hash of a password that nobody knows, for a member who is not to sign in. It is too long to guess, whatever the cost of a guess. */
+export function hashRandomPassword(): Promise<string> {
+  return hashPassword(randomBytes(32).toString('base64url'), RANDOM_PASSWORD_COST)
+}

@@ -2,27 +2,54 @@ import { z } from 'zod'
 import { AppError, type ErrorCode } from '@/lib/core/errors'
 import { log } from '@/lib/core/log'
 
-const STATUS: Record<ErrorCode, number> = {
-  malformed: 400,
-  unauthenticated: 401,
-  forbidden: 403,
-  not_found: 404,
-  conflict: 409,
-  too_large: 413,
-  unsupported_media_type: 415,
-  invalid_input: 422,
-  unprocessable: 422,
-  too_many_requests: 429,
-  unavailable: 503,
-}
-
 const MOST_FIELDS = 50
 
+export type ProblemCode = ErrorCode | 'internal'
+
+/** The status of each problem, and what it means to the program that gets it. */
+export const PROBLEMS: Readonly<Record<ProblemCode, { status: number; text: string }>> = {
+  malformed: { status: 400, text: 'The body is not JSON.' },
+  unauthenticated: { status: 401, text: 'No session or token, or one that has ended.' },
+  forbidden: { status: 403, text: "The member's role may not do this, or the request came from another site." },
+  not_found: { status: 404, text: 'What the path or the body names is not there.' },
+  conflict: { status: 409, text: 'It does not go with what is there now. Read it again before you send anew.' },
+  too_large: { status: 413, text: 'The body is too large. Send less at once.' },
+  unsupported_media_type: { status: 415, text: 'The body must be sent as application/json.' },
+  invalid_input: { status: 422, text: 'Fields are missing or wrong; `fields` says which, and why.' },
+  unprocessable: { status: 422, text: 'The fields are right by themselves, but cannot be true together or at this moment.' },
+  too_many_requests: { status: 429, text: 'Wait as many seconds as Retry-After says.' },
+  internal: { status: 500, text: 'A fault of Kilnward. It stands in the log of the server.' },
+  unavailable: { status: 503, text: 'The records are busy or the disk is full. Nothing was saved; send again after Retry-After.' },
+}
+
+const TYPE_PREFIX = 'urn:kilnward:problem:'
+
+/** The stable name of a problem. */
+export const problemType = (code: ProblemCode): string => `${TYPE_PREFIX}${code}`
+
+// oxlint-disable-next-line typescript/no-unsafe-type-assertion -- the keys of the list above
+const CODES = Object.keys(PROBLEMS) as ProblemCode[]
+
+/** A problem document as a client sees it. Some doors add members of their own. */
+export const problemDocument = z.looseObject({
+  type: z.enum(CODES.map(problemType)).describe('What to branch on.'),
+  title: z.string().describe('The same in words.'),
+  status: z.int().min(400).max(599),
+  detail: z.string().describe('A sentence for a person.'),
+  fields: z
+    .array(z.object({ path: z.string(), message: z.string() }))
+    .max(MOST_FIELDS)
+    .optional()
+    .describe('What is wrong with the body, field by field.'),
+  fieldsLeftOut: z.int().optional().describe('How many more there are.'),
+  retryAfterSeconds: z.int().optional().describe('As in the header Retry-After.'),
+})
+
 /** Problem details of RFC 9457. `type` is a stable URN that a client may branch on; `detail` is a sentence for a person. */
-export function problem(code: ErrorCode | 'internal', detail: string, extra: object = {}, headers: HeadersInit = {}): Response {
-  const status = code === 'internal' ? 500 : STATUS[code]
+export function problem(code: ProblemCode, detail: string, extra: object = {}, headers: HeadersInit = {}): Response {
+  const { status } = PROBLEMS[code]
   return Response.json(
-    { ...extra, type: `urn:kilnward:problem:${code}`, title: code.replaceAll('_', ' '), status, detail },
+    { ...extra, type: problemType(code), title: code.replaceAll('_', ' '), status, detail },
     {
       status,
       headers: { 'cache-control': 'no-store', ...Object.fromEntries(new Headers(headers)), 'content-type': 'application/problem+json' },

@@ -7,6 +7,7 @@ import webPush from 'web-push'
 import type { Clock } from '@/lib/core/clock'
 import { env } from '@/lib/core/env'
 import { endpointProblem, isExtraHost, keysProblem } from '@/lib/notices/push-endpoint'
+import { refusalWords } from '@/lib/notices/push-refusal'
 import { readRetryAfter } from '@/lib/notices/retry-plan'
 
 export type PushTarget = { endpoint: string; p256dh: string; auth: string }
@@ -89,11 +90,7 @@ function outcomeOf(error: unknown, now: number): PushOutcome {
     const words = statusCode === 429 ? 'The push service asks for a pause.' : 'The push service is out of order.'
     return { kind: 'retry', words, detail, retryAfterMs: readRetryAfter(headerOf(headers, 'retry-after'), now) }
   }
-  const words =
-    statusCode === 401 || statusCode === 403
-      ? 'The push service does not accept the keys of this server.'
-      : `The push service refused the message (${statusCode}).`
-  return { kind: 'our fault', words, detail }
+  return { kind: 'our fault', words: refusalWords(statusCode), detail }
 }
 
 function headerOf(headers: Readonly<Record<string, string | string[] | undefined>>, name: string): string | undefined {

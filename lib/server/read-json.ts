@@ -1,7 +1,6 @@
 import type { z } from 'zod'
 import { AppError } from '@/lib/core/errors'
-
-const DEFAULT_MAX_BYTES = 64 * 1024
+import { LARGEST_BODY_BYTES } from '@/lib/server/limits'
 
 async function readText(request: Request, maxBytes: number): Promise<string> {
   const tooLarge = () => new AppError('too_large', `The body is larger than ${Math.floor(maxBytes / 1024)} KiB.`)
@@ -29,7 +28,7 @@ async function readText(request: Request, maxBytes: number): Promise<string> {
 export async function readJson<Schema extends z.ZodType>(
   request: Request,
   schema: Schema,
-  { maxBytes = DEFAULT_MAX_BYTES }: { maxBytes?: number } = {},
+  { maxBytes = LARGEST_BODY_BYTES }: { maxBytes?: number } = {},
 ): Promise<z.output<Schema>> {
   const text = await readText(request, maxBytes)
   let body: unknown

@@ -1,7 +1,6 @@
-import { readdir } from 'node:fs/promises'
-import { join } from 'node:path'
 import { QueryTypes } from 'sequelize'
 import { database } from '@/db/connection'
+import { shippedMigrations } from '@/db/migrator'
 import { env } from '@/lib/core/env'
 import { log } from '@/lib/core/log'
 
@@ -18,9 +17,8 @@ export async function prepareProcess(): Promise<void> {
     .catch((error: Error) => {
       throw new Error(`The records cannot be read (${error.message}). Start Kilnward with npm start.`)
     })
-  const shipped = (await readdir(join(process.cwd(), 'db/migrations'))).filter((name) => name.endsWith('.sql')).toSorted()
   const names = applied.map(({ name }) => name)
-  if (names.join() !== shipped.join()) {
+  if (names.join() !== (await shippedMigrations()).join()) {
     throw new Error('The records were written by another version of Kilnward. Start it with npm start, which brings them up to date.')
   }
 }

@@ -1,7 +1,7 @@
 import { millisecondsInHour } from 'date-fns/constants'
 import type { Warning } from '@/lib/queue/contract'
 import { HORIZON_HOURS } from '@/lib/room/climate'
-import { pourDeadline, type ShiftHours } from '@/lib/schedule/shifts'
+import { pourDeadline, type WorkCalendar } from '@/lib/schedule/shifts'
 import { assessTree, type Assessment } from '@/lib/trees/assess'
 import type { TreeFacts } from '@/lib/trees/facts'
 import { playForward, type PlayedForward } from '@/lib/trees/play-forward'
@@ -15,10 +15,10 @@ export type DerivedTree = Assessment & PlayedForward & { willMissPour: boolean; 
  * Derives a tree: its state, its times, its future and its warnings.
  * A coat that may be dipped over while the pour date is already lost is overdue, like one past its longest wait.
  */
-export function deriveTree(facts: TreeFacts, context: FloorContext, shiftHours: readonly ShiftHours[]): DerivedTree {
+export function deriveTree(facts: TreeFacts, context: FloorContext, calendar: WorkCalendar): DerivedTree {
   const assessment = assessTree(facts, context)
   const played = playForward(assessment, context)
-  const willMissPour = missesPour(assessment, played, context, shiftHours)
+  const willMissPour = missesPour(assessment, played, context, calendar)
   const isLost = willMissPour && (assessment.state === 'dip now' || assessment.state === 'waiting')
   return {
     ...assessment,
@@ -30,14 +30,9 @@ export function deriveTree(facts: TreeFacts, context: FloorContext, shiftHours: 
 }
 
 /** True when even the likely time of drying out lies after the pour's deadline, or the deadline has gone by before the shell was ready. */
-function missesPour(
-  { facts, state }: Assessment,
-  { driedOut }: PlayedForward,
-  context: FloorContext,
-  shiftHours: readonly ShiftHours[],
-): boolean {
+function missesPour({ facts, state }: Assessment, { driedOut }: PlayedForward, context: FloorContext, calendar: WorkCalendar): boolean {
   if (facts.pourDate === null || ['released', 'scrapped', 'ready for burnout', 'dried out'].includes(state)) return false
-  const deadline = pourDeadline(facts.pourDate, shiftHours, context.timeZone)
+  const deadline = pourDeadline(facts.pourDate, calendar, context.timeZone)
   if (context.now > deadline) return true
   if (driedOut === null) return false
   // Beyond the horizon nobody can say; a deadline within it is lost.

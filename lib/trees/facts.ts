@@ -41,6 +41,8 @@ export type TreeFacts = {
   id: string
   tag: string
   title: string
+  /** Demo data in a foundry that is not the demo itself: it is marked wherever it shows. */
+  isDemo: boolean
   recessClass: RecessClass
   spacing: Spacing
   pourDate: string | null
@@ -59,7 +61,18 @@ export type TreeFacts = {
   lookedOverAt: number | null
 }
 
-export type PlaceFacts = PlaceAir & { id: string; name: string; sensorId: number; isTypedOnly: boolean }
+/** How the air at a place was until it was changed. */
+export type FormerAir = PlaceAir & { until: number; sensorId: number }
+
+export type PlaceFacts = PlaceAir & {
+  id: string
+  name: string
+  sensorId: number
+  isTypedOnly: boolean
+  isRetired: boolean
+  /** In order of `until`; before the first change there is none. */
+  formerAirs: readonly FormerAir[]
+}
 
 /** The moment of the stucco: from then on the coat dries. */
 export const clockStart = (coat: { dippedAt: number; drainSeconds: number }): number => coat.dippedAt + coat.drainSeconds * 1000

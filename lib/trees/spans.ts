@@ -1,7 +1,7 @@
 import { millisecondsInHour } from 'date-fns/constants'
 import { hourStartOf } from '@/lib/drying/dose-hours'
 import { placeSpans, type PlaceSpan } from '@/lib/drying/place-spans'
-import type { DryingSpan, ReadingMark, RoomReading, WindowReadings } from '@/lib/drying/types'
+import type { DryingSpan, PlaceAir, ReadingMark, RoomReading, WindowReadings } from '@/lib/drying/types'
 import { HORIZON_HOURS, readingsForFlags, type AirStretch, type RoomClimate } from '@/lib/room/climate'
 import type { Shift } from '@/lib/schedule/shifts'
 import type { PlaceFacts } from '@/lib/trees/facts'
@@ -13,7 +13,7 @@ export type FloorContext = {
   pressurePa: number
   climates: ReadonlyMap<number, RoomClimate>
   places: ReadonlyMap<string, PlaceFacts>
-  /** Fan-on and fan-off stretches of each place, from the oldest hour in use to the horizon. */
+  /** Fan-on and fan-off stretches of each place, by the air it had at the time, from the oldest hour in use to the horizon. */
   placeSpans: ReadonlyMap<string, readonly PlaceSpan[]>
   /** Shifts from now on. */
   shifts: readonly Shift[]
@@ -29,7 +29,10 @@ type ContextInput = Omit<FloorContext, 'placeSpans' | 'climates' | 'places'> & {
 /** Makes the context that every tree of one pass is assessed in. */
 export function floorContext({ climates, places, from, ...rest }: ContextInput): FloorContext {
   const to = rest.now + HORIZON_HOURS * millisecondsInHour
-  const spansOf = (place: PlaceFacts) => placeSpans({ from, to, place, pressurePa: rest.pressurePa, timeZone: rest.timeZone })
+  const spansOf = (place: PlaceFacts) =>
+    airsOf(place, from, to).flatMap(({ air, ...ends }) =>
+      placeSpans({ ...ends, place: air, pressurePa: rest.pressurePa, timeZone: rest.timeZone }),
+    )
   return {
     ...rest,
     climates: bySensor(climates),
@@ -46,24 +49,49 @@ export const withClimates = (context: FloorContext, climates: readonly RoomClima
 
 const bySensor = (climates: readonly RoomClimate[]) => new Map(climates.map((climate) => [climate.sensorId, climate]))
 
+/** The air of a place as it was over a stretch of time, split where it was changed. */
+function airsOf(place: PlaceFacts, from: number, to: number): { air: PlaceAir & { sensorId: number }; from: number; to: number }[] {
+  const changes = place.formerAirs.map(({ until }) => until).filter((until) => until > from && until < to)
+  const starts = [from, ...changes]
+  return starts.map((start, index) => ({ air: airOf(place, start), from: start, to: starts[index + 1] ?? to }))
+}
+
+/** The air of a place, and the sensor that read it, as they were at an instant. */
+export function airOf(place: PlaceFacts, at: number): PlaceAir & { sensorId: number } {
+  return place.formerAirs.find(({ until }) => at < until) ?? place
+}
+
 type Stay = { placeId: string; since: number }
 
-/** Stays that matter from an instant on, the first one cut to begin there. */
-function staysFrom(stays: readonly Stay[], from: number): Stay[] {
+/** Part of a stay with one sensor; null where the place is not known. */
+type SensedStay = Stay & { sensorId: number | null }
+
+/** Stays that matter from an instant on, the first one cut to begin there, split where another sensor took over. */
+function staysFrom({ places }: FloorContext, stays: readonly Stay[], from: number): SensedStay[] {
   const current = stays.findLast((stay) => stay.since <= from) ?? stays[0]
   if (!current) return []
-  return [{ ...current, since: from }, ...stays.filter((stay) => stay.since > from)]
+  const relevant = [{ ...current, since: from }, ...stays.filter((stay) => stay.since > from)]
+  return relevant.flatMap((stay, index): SensedStay[] => {
+    const place = places.get(stay.placeId)
+    if (!place) return [{ ...stay, sensorId: null }]
+    const airs = airsOf(place, stay.since, relevant[index + 1]?.since ?? Infinity)
+    return airs
+      .filter(({ air }, at) => air.sensorId !== airs[at - 1]?.air.sensorId)
+      .map((part) => ({ placeId: stay.placeId, since: part.from, sensorId: part.air.sensorId }))
+  })
 }
+
+const climateOf = ({ climates }: FloorContext, stay: SensedStay | undefined): RoomClimate | undefined =>
+  stay?.sensorId == null ? undefined : climates.get(stay.sensorId)
 
 /** A tree's spans from an instant to the horizon: split at every move and at every switch of the fans. */
 export function dryingSpans(context: FloorContext, stays: readonly Stay[], from: number): DryingSpan[] {
-  const relevant = staysFrom(stays, from)
+  const relevant = staysFrom(context, stays, from)
   return relevant.flatMap((stay, index) => {
-    const place = context.places.get(stay.placeId)
-    const climate = place && context.climates.get(place.sensorId)
-    if (!place || !climate) return []
+    const climate = climateOf(context, stay)
+    if (!climate) return []
     const end = relevant[index + 1]?.since ?? Infinity
-    return (context.placeSpans.get(place.id) ?? [])
+    return (context.placeSpans.get(stay.placeId) ?? [])
       .filter((span) => span.to > stay.since && span.from < end)
       .map((span) => ({
         from: Math.max(span.from, stay.since),
@@ -76,9 +104,9 @@ export function dryingSpans(context: FloorContext, stays: readonly Stay[], from:
 
 /** The air that a tree hung in from one instant to another: each room for as long as the tree was there. */
 export function airAround(context: FloorContext, stays: readonly Stay[], from: number, to: number): AirStretch[] {
-  const relevant = staysFrom(stays, from).filter((stay) => stay.since <= to)
+  const relevant = staysFrom(context, stays, from).filter((stay) => stay.since <= to)
   return relevant.flatMap((stay, index) => {
-    const climate = context.climates.get(context.places.get(stay.placeId)?.sensorId ?? -1)
+    const climate = climateOf(context, stay)
     return climate ? [{ climate, from: stay.since, to: Math.min(to, relevant[index + 1]?.since ?? to) }] : []
   })
 }
@@ -97,13 +125,12 @@ const markOf = (reading: ReadingMark | null | undefined): ReadingMark | null =>
  */
 export function readingsBehind(context: FloorContext, stays: readonly Stay[], start: number, at: number): WindowReadings {
   // While a coat still drains its clock starts a moment ahead.
-  const relevant = staysFrom(stays, start).filter((stay) => stay.since <= Math.max(at, start))
-  const climateOf = (stay: Stay | undefined) => context.climates.get(context.places.get(stay?.placeId ?? '')?.sensorId ?? -1)
+  const relevant = staysFrom(context, stays, start).filter((stay) => stay.since <= Math.max(at, start))
   let sensorCount = 0
   let typedCount = 0
   let firstInWindowAt: number | null = null
   for (const [index, stay] of relevant.entries()) {
-    const climate = climateOf(stay)
+    const climate = climateOf(context, stay)
     if (!climate) continue
     const to = Math.min(at, relevant[index + 1]?.since ?? at)
     const exactHours = new Set(climate.exact.map((reading) => hourStartOf(reading.measuredAt)))
@@ -120,11 +147,11 @@ export function readingsBehind(context: FloorContext, stays: readonly Stay[], st
       firstInWindowAt = Math.min(firstInWindowAt ?? Infinity, hour.hourStart)
     }
   }
-  const newest = climateOf(relevant.at(-1))?.newest
+  const newest = climateOf(context, relevant.at(-1))?.newest
   return {
     sensorCount,
     typedCount,
-    lastBeforeStart: markOf(climateOf(relevant[0])?.exact.findLast((reading) => reading.measuredAt <= start)),
+    lastBeforeStart: markOf(climateOf(context, relevant[0])?.exact.findLast((reading) => reading.measuredAt <= start)),
     firstInWindowAt,
     newest: markOf(newest),
   }

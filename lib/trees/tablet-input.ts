@@ -8,3 +8,9 @@ export const lookInput = z.strictObject({ operationId, verdict: z.enum(['looks d
 export const holdInput = z.strictObject({ operationId, reason: reasonInput })
 export const placeInput = z.strictObject({ operationId, placeId: z.uuid() })
 export const stirInput = z.strictObject({ operationId })
+
+/** Their answers: what was taken in. */
+export const lookAnswer = lookInput.omit({ operationId: true }).extend({ treeId: z.uuid() })
+export const holdAnswer = z.object({ treeId: z.uuid(), reason: z.string(), holdId: z.uuid() })
+export const placeAnswer = placeInput.omit({ operationId: true }).extend({ treeId: z.uuid() })
+export const stirAnswer = z.object({ bathId: z.uuid() })

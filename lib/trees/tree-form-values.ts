@@ -1,11 +1,14 @@
 import type { z } from 'zod'
+import { typedText } from '@/lib/format/typed-units'
+import type { MassUnit } from '@/lib/format/units'
+import { formText as text } from '@/lib/format/form-text'
 import type { TreeDetail } from '@/lib/trees/detail-contract'
 import type { FixedFields } from '@/lib/trees/fixed-fields'
 
 /** A piece as typed. */
 export type PieceValues = { workTitle: string; sectionName: string; editionNumber: string; isRecast: boolean }
 
-/** A tree as typed: text as it stands in the fields, so that nothing is lost when the form comes back. */
+/** A tree as typed: text as it stands in the fields, so that nothing is lost when the form comes back. Masses are in the typist's unit. */
 export type TreeFormValues = {
   tag: string
   recipeVersionId: string
@@ -21,11 +24,6 @@ export type TreeFormValues = {
 }
 
 const MOST_PIECES = 41
-
-function text(form: FormData, name: string): string {
-  const value = form.get(name)
-  return typeof value === 'string' ? value.trim() : ''
-}
 
 /** Form fields to the tree form's values. Pieces come as `pieces.0.workTitle`, `pieces.0.isRecast`, and so on, from 0 without a gap. */
 export function readTreeForm(form: FormData): TreeFormValues {
@@ -71,8 +69,8 @@ type KnownTree = Pick<TreeDetail, 'waxMassKg' | 'cupKind' | 'cupVolumeL' | 'rece
   tree: Pick<TreeDetail['tree'], 'tag' | 'place' | 'pourDate'>
 }
 
-/** A known tree as its form shows it. */
-export function formValuesOf({ tree, recipe, pieces, ...detail }: KnownTree): TreeFormValues {
+/** A known tree as its form shows it, with its masses in this unit. */
+export function formValuesOf({ tree, recipe, pieces, ...detail }: KnownTree, massUnit: MassUnit): TreeFormValues {
   return {
     tag: tree.tag,
     recipeVersionId: recipe.versionId,
@@ -83,12 +81,12 @@ export function formValuesOf({ tree, recipe, pieces, ...detail }: KnownTree): Tr
       editionNumber: String(piece.editionNumber),
       isRecast: piece.isRecast,
     })),
-    waxMassKg: String(detail.waxMassKg),
+    waxMassKg: typedText(detail.waxMassKg, massUnit),
     cupKind: detail.cupKind,
     cupVolumeL: String(detail.cupVolumeL),
     recessClass: detail.recessClass,
     spacing: detail.spacing,
-    hungMassKg: detail.hungMassKg === null ? '' : String(detail.hungMassKg),
+    hungMassKg: detail.hungMassKg === null ? '' : typedText(detail.hungMassKg, massUnit),
     pourDate: tree.pourDate ?? '',
   }
 }

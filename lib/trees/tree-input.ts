@@ -1,5 +1,8 @@
 import { z } from 'zod'
 import { RECESS_CLASSES, SPACINGS } from '@/lib/coats/vocabulary'
+import { readTyped } from '@/lib/format/typed-units'
+import { fromSi, type MassUnit } from '@/lib/format/units'
+import { typedNumber } from '@/lib/format/typed-number'
 
 export const CUP_KINDS = ['wax', 'paper', 'ceramic'] as const
 export type CupKind = (typeof CUP_KINDS)[number]
@@ -11,19 +14,18 @@ export const treeTag = z
   .string()
   .regex(/^[A-Z]{1,3}-\d{1,5}$/, 'A tag is one to three capital letters, a dash and a number, such as T-128.')
 
-/** Form fields arrive as text; a decimal comma is as good as a point. An empty field is 'not given'. */
-export const typedNumber = (field: string) =>
-  z.preprocess(
-    (value) => {
-      if (typeof value !== 'string') return value
-      const text = value.trim().replace(',', '.')
-      return text === '' ? undefined : Number(text)
-    },
-    z.number(`${field} is a number.`),
-  )
-
 const optionalText = (schema: z.ZodType<string>) =>
   z.preprocess((value) => (value === '' || value === undefined ? null : value), schema.nullable())
+
+/** A mass as somebody types it in their unit, more than nothing and at most `mostKg`; it comes out in kg. */
+const typedMass = (field: string, mostKg: number, unit: MassUnit) =>
+  typedNumber(field).pipe(
+    z
+      .number()
+      .gt(0, `${field} is more than 0 ${unit}.`)
+      .transform((value) => readTyped(value, unit))
+      .pipe(z.number().max(mostKg, `${field} is at most ${Math.floor(fromSi(mostKg, unit)).toLocaleString('en')} ${unit}.`)),
+  )
 
 const pieceInput = z.strictObject({
   workTitle: z.string().trim().min(1, 'Name the work.').max(80, 'A title has at most 80 letters.'),
@@ -34,23 +36,26 @@ const pieceInput = z.strictObject({
   isRecast: z.boolean(),
 })
 
-/** What a supervisor enters for a tree. */
-export const treeInput = z.strictObject({
-  tag: treeTag,
-  recipeVersionId: z.uuid('Choose a recipe.'),
-  placeId: z.uuid('Choose where it hangs.'),
-  pieces: z.array(pieceInput).min(1, 'A tree carries at least one piece.').max(40, 'A tree carries at most 40 pieces.'),
-  waxMassKg: typedNumber('Wax mass').pipe(z.number().gt(0, 'Wax mass is more than 0 kg.').max(500, 'Wax mass is at most 500 kg.')),
-  cupKind: z.enum(CUP_KINDS, 'Choose the kind of cup.'),
-  cupVolumeL: typedNumber('Cup volume').pipe(z.number().min(0, 'Cup volume is not under 0 L.').max(50, 'Cup volume is at most 50 L.')),
-  recessClass: z.enum(RECESS_CLASSES, 'Choose the deepest recess.'),
-  spacing: z.enum(SPACINGS, 'Choose the spacing.'),
-  hungMassKg: z.preprocess(
-    (value) => (value === '' || value === undefined ? null : value),
-    typedNumber('Weight').pipe(z.number().gt(0, 'Weight is more than 0 kg.').max(2000, 'Weight is at most 2,000 kg.')).nullable(),
-  ),
-  pourDate: optionalText(z.iso.date('A pour date is a day, such as 2026-12-18.')),
-})
+/** What a supervisor enters for a tree, with its masses in their unit; the values come out in kg. */
+export const treeInputIn = (massUnit: MassUnit) =>
+  z.strictObject({
+    tag: treeTag,
+    recipeVersionId: z.uuid('Choose a recipe.'),
+    placeId: z.uuid('Choose where it hangs.'),
+    pieces: z.array(pieceInput).min(1, 'A tree carries at least one piece.').max(40, 'A tree carries at most 40 pieces.'),
+    waxMassKg: typedMass('Wax mass', 500, massUnit),
+    cupKind: z.enum(CUP_KINDS, 'Choose the kind of cup.'),
+    cupVolumeL: typedNumber('Cup volume').pipe(z.number().min(0, 'Cup volume is not under 0 L.').max(50, 'Cup volume is at most 50 L.')),
+    recessClass: z.enum(RECESS_CLASSES, 'Choose the deepest recess.'),
+    spacing: z.enum(SPACINGS, 'Choose the spacing.'),
+    hungMassKg: z.preprocess(
+      (value) => (value === '' || value === undefined ? null : value),
+      typedMass('Weight', 2000, massUnit).nullable(),
+    ),
+    pourDate: optionalText(z.iso.date('A pour date is a day, such as 2026-12-18.')),
+  })
+/** The same in kg: for programs, and for what is stored. */
+export const treeInput = treeInputIn('kg')
 export type TreeInput = z.infer<typeof treeInput>
 
 /** Intake: passed only as a whole; what is not ticked stays open. */

@@ -30,7 +30,8 @@ export function dueAt(tree: Pick<QueueTree, 'dry' | 'guard' | 'state'>): number 
   return at ?? Number.POSITIVE_INFINITY
 }
 
-function tagOrder(left: string, right: string): number {
+/** Order of two tags: letters, then numbers as numbers. */
+export function tagOrder(left: string, right: string): number {
   const [leftLetters = '', leftDigits = '0'] = left.split('-')
   const [rightLetters = '', rightDigits = '0'] = right.split('-')
   return leftLetters < rightLetters ? -1 : leftLetters > rightLetters ? 1 : Number(leftDigits) - Number(rightDigits)
@@ -70,9 +71,9 @@ export function filterTrees<Row extends QueueTree>(
   return trees.filter((tree) => (group === null ? isOpenTree(tree) : groupOf(tree.state) === group) && matchesWords(tree, words))
 }
 
-/** How many trees each group would show for these words; null counts all open ones. */
+/** How many open trees each group would show for these words; null counts all. Those that left are not counted: there is no end of them. */
 export function countGroups(trees: readonly QueueTree[], query: string): Map<TreeGroup | null, number> {
   const counts = new Map<TreeGroup | null, number>([[null, filterTrees(trees, { query, group: null }).length]])
-  for (const { key } of TREE_GROUPS) counts.set(key, filterTrees(trees, { query, group: key }).length)
+  for (const { key } of TREE_GROUPS) if (key !== 'gone') counts.set(key, filterTrees(trees, { query, group: key }).length)
   return counts
 }

@@ -1,12 +1,15 @@
 import { millisecondsInHour } from 'date-fns/constants'
 import { chillFlag, dampFlag, heatFlag, isOverdue, swingFlag } from '@/lib/drying/flags'
 import { wetBulbDepressionK } from '@/lib/drying/room-factor'
+import { formatKelvin, formatTemperature, type TempUnit } from '@/lib/format/units'
 import type { Warning } from '@/lib/queue/contract'
 import type { RoomClimate } from '@/lib/room/climate'
 import { dampInStore, type Assessment } from '@/lib/trees/assess'
 import { readingsAround, type FloorContext } from '@/lib/trees/spans'
 
 const one = (value: number) => value.toFixed(1)
+/** A sentence that holds temperatures, in both units. */
+const inBoth = (sentence: (unit: TempUnit) => string) => ({ text: sentence('degC'), textInDegF: sentence('degF') })
 const whole = (value: number) => String(Math.round(value))
 
 /**
@@ -77,14 +80,15 @@ function ofTheAir(assessment: Assessment, climate: RoomClimate, context: FloorCo
   if (newest && call && air && depressionK !== null && dippableSince === null) {
     const chill = chillFlag({ coatNumber: newest.number, wetBulbDepressionK: depressionK, roomFactor: air.roomFactor, placeFactor })
     if (chill?.code === 'chill') {
-      const why =
-        chill.measure === 'depression'
-          ? `the wet bulb lies ${one(chill.value)} K under the room`
-          : `it dries at ${one(chill.value)} times the reference speed`
+      const { measure, value, limit } = chill
+      const why = (unit: TempUnit) =>
+        measure === 'depression'
+          ? `the wet bulb lies ${formatKelvin(value, unit)} under the room, limit ${formatKelvin(limit, unit)}`
+          : `it dries at ${one(value)} times the reference speed, limit ${one(limit)}`
       warnings.push({
         code: 'chill',
         level: chill.level,
-        text: `Coat ${newest.number} chills the wax: ${why}, limit ${one(chill.limit)}. Raise the humidity or take air off the tree.`,
+        ...inBoth((unit) => `Coat ${newest.number} chills the wax: ${why(unit)}. Raise the humidity or take air off the tree.`),
       })
     }
     const readings = readingsAround(context, facts.stays, newest.dippedAt, context.now)
@@ -97,18 +101,22 @@ function ofTheAir(assessment: Assessment, climate: RoomClimate, context: FloorCo
       warnings.push({
         code: 'swing',
         level: 'warn',
-        text: `The room has moved ${one(Math.abs(swing.deviationK))} K ${swing.deviationK > 0 ? 'up' : 'down'} since the dip, limit ${one(swing.limitK)} K: coat ${newest.number} can lift. Hold the temperature.`,
+        ...inBoth(
+          (unit) =>
+            `The room has moved ${formatKelvin(Math.abs(swing.deviationK), unit)} ${swing.deviationK > 0 ? 'up' : 'down'} since the dip, limit ${formatKelvin(swing.limitK, unit)}: coat ${newest.number} can lift. Hold the temperature.`,
+        ),
       })
     }
   }
   if (air) {
     const heat = heatFlag({ airTempC: air.airTempC, airTempAtCoat1C: facts.coats[0]?.airTempC ?? null, hasWax: true })
     if (heat?.code === 'heat') {
-      const text =
-        heat.measure === 'room'
-          ? `The room is at ${one(heat.value)} °C, limit ${one(heat.limit)} °C: wax grows and cracks the shell. Cool the room.`
-          : `The room is ${one(heat.value)} K warmer than at coat 1, limit ${one(heat.limit)} K: wax grows and cracks the shell. Cool the room.`
-      warnings.push({ code: 'heat', level: 'warn', text })
+      const { measure, value, limit } = heat
+      const sentence = (unit: TempUnit) =>
+        measure === 'room'
+          ? `The room is at ${formatTemperature(value, unit)}, limit ${formatTemperature(limit, unit)}: wax grows and cracks the shell. Cool the room.`
+          : `The room is ${formatKelvin(value, unit)} warmer than at coat 1, limit ${formatKelvin(limit, unit)}: wax grows and cracks the shell. Cool the room.`
+      warnings.push({ code: 'heat', level: 'warn', ...inBoth(sentence) })
     }
     const mayTakeFace = next?.kind === 'face' && (newest === null || dippableSince !== null)
     const tooDry =

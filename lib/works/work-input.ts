@@ -1,5 +1,5 @@
 import { z } from 'zod'
-import { typedNumber } from '@/lib/trees/tree-input'
+import { typedNumber } from '@/lib/format/typed-number'
 
 /** What a supervisor says of a work: its title, and how many there will be. */
 export const workInput = z.strictObject({

@@ -17,6 +17,8 @@ export const DOORS: readonly Door[] = [
   // Leads to the floor, which asks for a sign-in.
   page('/', 'anybody'),
   page('/sign-in', 'anybody'),
+  // While nobody is a member; afterwards it leads to the floor, and from there to the sign-in.
+  page('/first-run', 'anybody'),
   page('/floor', 'crew'),
   page('/trees', 'crew'),
   page('/trees/[tag]', 'crew', '/trees/KW-1'),
@@ -31,6 +33,15 @@ export const DOORS: readonly Door[] = [
   page('/works', 'crew'),
   page('/works/[workId]', 'crew'),
   page('/me', 'crew'),
+  // Upkeep: the state of the program, and the records as a file.
+  page('/upkeep', 'owner'),
+  door('GET', '/api/v1/backups/newest', 'owner'),
+  // The foundry's settings.
+  page('/settings', 'supervisor'),
+  page('/settings/hours', 'supervisor'),
+  page('/settings/places', 'supervisor'),
+  page('/settings/baths', 'supervisor'),
+  page('/settings/sensors', 'supervisor'),
   door('GET', '/manifest.webmanifest', 'anybody'),
 
   door('GET', '/api/health', 'anybody'),
@@ -39,6 +50,7 @@ export const DOORS: readonly Door[] = [
   door('POST', '/api/auth/[...nextauth]', 'anybody', '/api/auth/signout'),
 
   door('GET', '/api/v1/queue', 'crew'),
+  door('GET', '/api/v1/trees.csv', 'crew'),
   door('POST', '/api/v1/dips', 'operator'),
   door('POST', '/api/v1/dips/undo', 'operator'),
   door('POST', '/api/v1/trees/[treeId]/holds', 'operator'),
@@ -53,12 +65,19 @@ export const DOORS: readonly Door[] = [
   door('DELETE', '/api/v1/trees/[treeId]/watch', 'crew'),
   door('POST', '/api/v1/readings', 'sensor'),
   door('POST', '/api/v1/readings/typed', 'operator'),
+  // The API's description, how to use it, and the history of every change.
+  door('GET', '/api/v1/openapi.json', 'anybody'),
+  page('/api-guide', 'supervisor'),
+  page('/history', 'supervisor'),
 ]
 
 /** One server action: file and exported name, the act that its first line requires, and from which role upwards that is. */
-export type ActionRow = { file: string; name: string; act: Act; who: Role }
+export type ActionRow = { file: string; name: string; act: Act; who: Role } | { file: string; name: string; act: null; who: 'nobody yet' }
 
-/** Every server action; its first line is `await requireMember('act')`, or `const member = await …`. */
+/**
+ * Every server action; its first line is `await requireMember('act')`, or `const member = await …`.
+ * Without an act it is for records in which nobody is a member yet, and its first line is `await requireNobody()`.
+ */
 export const ACTIONS: readonly ActionRow[] = [
   { file: 'app/(office)/trees/new/actions.ts', name: 'createTreeAction', act: 'trees', who: 'supervisor' },
   { file: 'app/(office)/trees/[tag]/edit/actions.ts', name: 'editTreeAction', act: 'trees', who: 'supervisor' },
@@ -79,4 +98,33 @@ export const ACTIONS: readonly ActionRow[] = [
   { file: 'app/(office)/works/actions.ts', name: 'renameSectionAction', act: 'works', who: 'supervisor' },
   { file: 'app/(office)/burnout/actions.ts', name: 'releaseAction', act: 'release', who: 'supervisor' },
   { file: 'app/(office)/burnout/actions.ts', name: 'withdrawReleaseAction', act: 'release', who: 'supervisor' },
+  { file: 'app/(office)/upkeep/actions.ts', name: 'backUpNowAction', act: 'upkeep', who: 'owner' },
+  // The foundry's settings.
+  { file: 'app/(office)/settings/actions.ts', name: 'saveFoundryAction', act: 'settings', who: 'owner' },
+  { file: 'app/(office)/settings/hours/actions.ts', name: 'saveHoursAction', act: 'settings', who: 'owner' },
+  { file: 'app/(office)/settings/hours/actions.ts', name: 'addClosureAction', act: 'settings', who: 'owner' },
+  { file: 'app/(office)/settings/hours/actions.ts', name: 'changeClosureAction', act: 'settings', who: 'owner' },
+  { file: 'app/(office)/settings/hours/actions.ts', name: 'removeClosureAction', act: 'settings', who: 'owner' },
+  { file: 'app/(office)/settings/places/actions.ts', name: 'addPlaceAction', act: 'places', who: 'supervisor' },
+  { file: 'app/(office)/settings/places/actions.ts', name: 'changePlaceAction', act: 'places', who: 'supervisor' },
+  { file: 'app/(office)/settings/places/actions.ts', name: 'retirePlaceAction', act: 'places', who: 'supervisor' },
+  { file: 'app/(office)/settings/places/actions.ts', name: 'reusePlaceAction', act: 'places', who: 'supervisor' },
+  { file: 'app/(office)/settings/baths/actions.ts', name: 'addBathAction', act: 'baths', who: 'supervisor' },
+  { file: 'app/(office)/settings/baths/actions.ts', name: 'changeBathAction', act: 'baths', who: 'supervisor' },
+  { file: 'app/(office)/settings/baths/actions.ts', name: 'retireBathAction', act: 'baths', who: 'supervisor' },
+  { file: 'app/(office)/settings/baths/actions.ts', name: 'reuseBathAction', act: 'baths', who: 'supervisor' },
+  { file: 'app/(office)/settings/sensors/actions.ts', name: 'addSensorAction', act: 'sensors', who: 'supervisor' },
+  { file: 'app/(office)/settings/sensors/actions.ts', name: 'renameSensorAction', act: 'sensors', who: 'supervisor' },
+  { file: 'app/(office)/settings/sensors/actions.ts', name: 'retireSensorAction', act: 'sensors', who: 'supervisor' },
+  { file: 'app/(office)/settings/sensors/actions.ts', name: 'reuseSensorAction', act: 'sensors', who: 'supervisor' },
+  { file: 'app/(office)/settings/sensors/actions.ts', name: 'issueTokenAction', act: 'sensors', who: 'supervisor' },
+  { file: 'app/(office)/settings/sensors/actions.ts', name: 'revokeTokenAction', act: 'sensors', who: 'supervisor' },
+  // The first run, and the demo data.
+  { file: 'app/(first-run)/first-run/actions.ts', name: 'makeFirstOwnerAction', act: null, who: 'nobody yet' },
+  { file: 'app/(first-run)/first-run/actions.ts', name: 'endStepAction', act: 'settings', who: 'owner' },
+  { file: 'app/(first-run)/first-run/actions.ts', name: 'takeStarterRecipesAction', act: 'recipes', who: 'supervisor' },
+  { file: 'app/(first-run)/first-run/actions.ts', name: 'endFirstRunAction', act: 'settings', who: 'owner' },
+  { file: 'app/(first-run)/first-run/actions.ts', name: 'lookWithDemoAction', act: 'upkeep', who: 'owner' },
+  { file: 'app/(office)/upkeep/demo-actions.ts', name: 'layDemoAction', act: 'upkeep', who: 'owner' },
+  { file: 'app/(office)/upkeep/demo-actions.ts', name: 'removeDemoAction', act: 'upkeep', who: 'owner' },
 ]

@@ -23,7 +23,7 @@ beforeAll(async () => {
   const second = await seedMember('operator', { name: 'Wren', email: 'wren@kilnward.example' })
   maud = await signIn(server.baseUrl, first.email, first.password)
   wren = await signIn(server.baseUrl, second.email, second.password)
-  sensorToken = await issueSensorToken({ sensorId: foundry.sensorId, memberId: first.id }, { clock: { now: () => Date.now() } })
+  sensorToken = await issueSensorToken({ sensorId: foundry.sensorId }, { member: null, clock: { now: () => Date.now() } })
 })
 afterAll(() => server.stop())
 
@@ -171,10 +171,10 @@ describe('POST /api/v1/readings', () => {
     const { revokeSensorToken } = await import('@/lib/commands/revoke-sensor-token')
     const { issueSensorToken } = await import('@/lib/commands/issue-sensor-token')
     const clock = { now: () => Date.now() }
-    const other = await issueSensorToken({ sensorId: foundry.sensorId, memberId: null }, { clock })
+    const other = await issueSensorToken({ sensorId: foundry.sensorId }, { member: null, clock })
     const row = { measuredAt: Date.now(), airTempC: 21, relHumidityPct: 50 }
     expect((await send([row], other.token)).status).toBe(200)
-    await revokeSensorToken({ tokenId: other.id }, { clock })
+    await revokeSensorToken({ tokenId: other.id }, { member: null, clock })
     expect((await send([row], other.token)).status).toBe(401)
     expect((await send([row], `${sensorToken.token}x`)).status).toBe(401)
   })

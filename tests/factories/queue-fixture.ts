@@ -101,6 +101,7 @@ export function queueTreeFixture({ state, placeIndex, likelyIn, safeIn, since, .
     id: id(3, count),
     tag: `T-${count}`,
     title: TITLES[count % TITLES.length] ?? 'Tide Bell',
+    isDemo: false,
     place: { id: place.id, name: place.name },
     state,
     stateSince: since === undefined ? null : now - since * MINUTE,
@@ -143,7 +144,7 @@ export type QueueFixtureOptions = {
 export function queueFixture({ trees, now = FIXTURE_NOW, rooms, baths, overrides = {} }: QueueFixtureOptions): Queue {
   return {
     now,
-    foundry: { name: 'Marram Lane Art Foundry', timeZone: 'Europe/London', isDemo: true, isDemoFeedOn: true },
+    foundry: { name: 'Marram Lane Art Foundry', timeZone: 'Europe/London', isDemo: true, hasDemoData: true, isDemoFeedOn: true },
     shift: {
       isOpen: true,
       endsAt: Date.parse('2026-10-13T16:30:00Z'),

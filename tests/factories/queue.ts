@@ -18,6 +18,7 @@ export function buildQueueTree(overrides: Partial<QueueTree> = {}): QueueTree {
     id: testId(1, 122),
     tag: 'T-122',
     title: 'Otter Gate, panel 2',
+    isDemo: false,
     place: { id: PLACE_ID, name: 'Rack B' },
     state: 'drying',
     stateSince: null,
@@ -81,7 +82,7 @@ export function buildQueueRoom(overrides: Partial<QueueRoom> = {}): QueueRoom {
 export function buildQueue(overrides: Partial<Queue> = {}): Queue {
   return {
     now: NOW,
-    foundry: { name: 'Marram Lane', timeZone: 'Europe/London', isDemo: false, isDemoFeedOn: false },
+    foundry: { name: 'Marram Lane', timeZone: 'Europe/London', isDemo: false, hasDemoData: false, isDemoFeedOn: false },
     shift: { isOpen: true, endsAt: NOW + 180 * MINUTE_MS, nextStartsAt: NOW + 1080 * MINUTE_MS, nextEndsAt: NOW + 1620 * MINUTE_MS },
     rooms: [buildQueueRoom()],
     baths: [],

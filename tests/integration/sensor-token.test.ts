@@ -20,7 +20,7 @@ beforeEach(async () => {
   sensor = await Sensor.create({ name: `Drying room ${count}`, kind: 'logger', createdAt: clock.now() })
 })
 
-const issue = () => issueSensorToken({ sensorId: sensor.id, memberId: null }, { clock })
+const issue = () => issueSensorToken({ sensorId: sensor.id }, { member: null, clock })
 function send(headers: Record<string, string>, text = '{"airTempC":21}'): Promise<Response> {
   const request = new NextRequest('http://kilnward.shop/api/v1/readings', {
     method: 'POST',
@@ -56,8 +56,8 @@ describe('a sensor token', () => {
 
   it('is worth nothing once revoked, while a newer one of the same sensor is', async () => {
     const [old, fresh] = [await issue(), await issue()]
-    await revokeSensorToken({ tokenId: old.id }, { clock })
-    await revokeSensorToken({ tokenId: old.id }, { clock })
+    await revokeSensorToken({ tokenId: old.id }, { member: null, clock })
+    await revokeSensorToken({ tokenId: old.id }, { member: null, clock })
     expect((await withToken(old.token)).status).toBe(401)
     expect((await withToken(fresh.token)).status).toBe(200)
   })
@@ -71,9 +71,9 @@ describe('a sensor token', () => {
 
   it('is not made for a wall hygrometer or for no sensor', async () => {
     const wall = await Sensor.create({ name: `Wall ${count}`, kind: 'wall hygrometer', createdAt: clock.now() })
-    await expect(issueSensorToken({ sensorId: wall.id, memberId: null }, { clock })).rejects.toMatchObject({ code: 'conflict' })
-    await expect(issueSensorToken({ sensorId: 99_999, memberId: null }, { clock })).rejects.toMatchObject({ code: 'not_found' })
-    await expect(revokeSensorToken({ tokenId: 'no-such-token' }, { clock })).rejects.toMatchObject({ code: 'not_found' })
+    await expect(issueSensorToken({ sensorId: wall.id }, { member: null, clock })).rejects.toMatchObject({ code: 'conflict' })
+    await expect(issueSensorToken({ sensorId: 99_999 }, { member: null, clock })).rejects.toMatchObject({ code: 'not_found' })
+    await expect(revokeSensorToken({ tokenId: 'no-such-token' }, { member: null, clock })).rejects.toMatchObject({ code: 'not_found' })
   })
 
   it('has to be right in every part', async () => {

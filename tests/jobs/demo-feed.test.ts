@@ -8,7 +8,7 @@ import { openShop, type DemoShop } from '@/lib/demo/open-shop'
 import { keepDemoTokens, readDemoTokens } from '@/lib/demo/token-file'
 import { sensorOfToken } from '@/lib/queries/sensor-of-token'
 import { checkRows } from '@/lib/room/check-rows'
-import { Foundry, inTransaction, Reading } from '@/models'
+import { Foundry, inTransaction, Reading, Sensor } from '@/models'
 import { demoFeed, feedDemo } from '@/jobs/demo-feed'
 
 const MINUTE_MS = 60_000
@@ -39,9 +39,9 @@ const job = demoFeed({ fetch: door })
 beforeAll(async () => {
   const hash = 'scrypt$1024$8$1$AAAA$AAAA'
   const keys = ['ines', 'maud', 'wren', 'tobias', 'halvard', 'oona'] as const
-  shop = await inTransaction(() =>
-    openShop({ createdAt: START - 14 * DAY_MS, passwordHashes: new Map(keys.map((key) => [key, hash] as const)) }),
-  )
+  const createdAt = START - 14 * DAY_MS
+  await Foundry.create({ id: 1, name: 'Marram Lane', timeZone: 'Europe/London', altitudeM: 4, isDemo: true, setUpAt: createdAt, createdAt })
+  shop = await inTransaction(() => openShop({ createdAt, passwordHashes: new Map(keys.map((key) => [key, hash] as const)) }))
   await keepDemoTokens(shop.sensorTokens)
   for (const sensorId of Object.values(shop.sensorIds)) {
     const rows = [{ measuredAt: START - 4 * MINUTE_MS, airTempC: 20, relHumidityPct: 55 }]
@@ -59,7 +59,7 @@ describe('the demo feed', () => {
     expect(await job.run(context)).toEqual({ sent: 0 })
     const at = START + 2 * MINUTE_MS
     const stored = await Reading.findOne({ where: { sensorId: shop.sensorIds['net loft'], measuredAt: at } })
-    expect(stored).toMatchObject(demoAirAt(demoClimate(START - 14 * DAY_MS), 'net loft', at))
+    expect(stored).toMatchObject(demoAirAt(demoClimate(START - 14 * DAY_MS, 'Europe/London'), 'net loft', at))
   })
 
   it('catches up after a pause in bounded requests, and leaves no hole', async () => {
@@ -92,8 +92,10 @@ describe('the demo feed', () => {
   })
 
   it("does nothing in a foundry of one's own", async () => {
-    await Foundry.update({ isDemo: false }, { where: { id: 1 } })
+    await Sensor.update({ isDemo: false }, { where: {} })
     now += MINUTE_MS
+    requests = []
     expect(await job.run(context)).toEqual({ demo: false })
+    expect(requests).toEqual([])
   })
 })

@@ -147,9 +147,10 @@ export function describeDemoAt(name: string, iso: string): void {
     it('has dips that the drying clock agrees with', async () => {
       const { dryingRoom } = await import('@/lib/demo/drying-room')
       const { demoClimate, DEMO_HISTORY_MS } = await import('@/lib/demo/plan')
-      const { DEMO_PLACES, DEMO_PLACE_KEYS } = await import('@/lib/demo/shop')
+      const { DEMO_PLACES, DEMO_PLACE_KEYS, DEMO_SETTING } = await import('@/lib/demo/shop')
       const { moistureRatio } = await import('@/lib/drying/moisture')
-      const room = dryingRoom(demoClimate(now - DEMO_HISTORY_MS), { from: now - DEMO_HISTORY_MS, now })
+      const startsAt = now - DEMO_HISTORY_MS
+      const room = dryingRoom(demoClimate(startsAt, DEMO_SETTING.timeZone), { from: startsAt, now, altitudeM: DEMO_SETTING.altitudeM })
       let inside = 0
       let judged = 0
       for (const [index, coat] of coats.entries()) {
@@ -229,6 +230,22 @@ export function describeDemoAt(name: string, iso: string): void {
       }
       expect(turnedAt.size).toBe(2)
       expect([...turnedAt.values()].every((minute) => minute > 3)).toBe(true)
+    })
+
+    it('is taken away whole, so that the next visitor sets up their own', async () => {
+      const { models } = await load()
+      const { removeDemo } = await import('@/lib/demo/remove-demo')
+      const { id, name: ownerName, role } = await models.Member.findOne({ where: { role: 'owner' }, rejectOnEmpty: true })
+      const answer = await removeDemo({ member: { id, name: ownerName, role, isDemo: true }, clock })
+      expect(answer).toMatchObject({ kept: [], isEmptied: true })
+      const tables = await select<{ table: string }>(`SELECT name AS "table" FROM sqlite_schema WHERE type = 'table'`)
+      const left = await Promise.all(tables.map(async ({ table }) => ({ table, rows: await select<object>(`SELECT * FROM "${table}"`) })))
+      expect(
+        left
+          .filter(({ rows }) => rows.length > 0)
+          .map(({ table }) => table)
+          .toSorted(),
+      ).toEqual(['migrations', 'sqlite_sequence'])
     })
   })
 }

@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest'
 import { planDemo } from '@/lib/demo/plan'
+import { DEMO_SETTING } from '@/lib/demo/shop'
 import { oddness } from '@/lib/demo/work-hours'
 
 const MINUTE_MS = 60_000
@@ -12,7 +13,7 @@ const starts = ['2026-10-19T00:13:00Z', '2026-12-21T02:41:00Z', '2027-03-22T01:0
 
 describe('the demo, planned for a first start at any hour', () => {
   it.each(starts.map((now) => [new Date(now).toISOString(), now] as const))('%s', (_iso, now) => {
-    const { trees, hours } = planDemo(now)
+    const { trees, hours } = planDemo(now, DEMO_SETTING)
     expect(trees.filter(({ leftAt }) => leftAt === null)).toHaveLength(32)
     expect(trees.some(({ tree }) => tree.story?.kind === 'dipped early' && tree.story.overCoat !== undefined)).toBe(true)
     for (const { coats, createdAt, intakeAt, lookOverAt, leftAt, tag } of trees) {

@@ -12,7 +12,7 @@ export const metadata: Metadata = { title: 'Sign in' }
 const RECIPE: BandGrade[] = ['fine', 'fine', 'medium', 'medium', 'coarse', 'coarse', 'coarse']
 
 export default async function SignInPage({ searchParams }: PageProps<'/sign-in'>) {
-  const { callbackUrl } = await searchParams
+  const { callbackUrl, ended } = await searchParams
   const { foundryName, demoSignIns } = await loadSignIn()
   // The origin stands for this site; whatever leads elsewhere becomes '/', which goes to the floor.
   const goTo = ownPath(typeof callbackUrl === 'string' ? callbackUrl : '/floor', 'http://this.site')
@@ -34,7 +34,7 @@ export default async function SignInPage({ searchParams }: PageProps<'/sign-in'>
         <Wordmark height={46} />
         <h1>{foundryName}</h1>
         <p className="text-17 text-soot">Shell room log</p>
-        <SignInForm goTo={goTo} demoSignIns={demoSignIns} />
+        <SignInForm goTo={goTo} demoSignIns={demoSignIns} hasEnded={ended === '1'} />
       </main>
     </div>
   )

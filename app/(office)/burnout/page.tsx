@@ -24,10 +24,9 @@ import { formatMoment } from '@/lib/format/local-time'
 import { may } from '@/lib/members/roles'
 import { loadFoundry } from '@/lib/queries/load-foundry'
 import { loadReleaseChecks } from '@/lib/queries/release-checks'
-import { loadTreeList } from '@/lib/queries/tree-list'
+import { loadReleasedSince, loadTreeList } from '@/lib/queries/tree-list'
 import type { QueueTree } from '@/lib/queue/contract'
 import { requireMemberPage } from '@/lib/server/auth'
-import { sortByDue } from '@/lib/trees/tree-list'
 
 export const metadata: Metadata = { title: 'Burnout' }
 
@@ -37,8 +36,8 @@ const MOST_RELEASED = 20
 
 export default async function BurnoutPage() {
   const member = await requireMemberPage('see', '/burnout')
-  const [trees, { timeZone, shiftHours }] = await Promise.all([loadTreeList({ clock: systemClock }), loadFoundry()])
-  const context: PourContext = { now: systemClock.now(), timeZone, shiftHours }
+  const [trees, { timeZone, calendar }] = await Promise.all([loadTreeList({ clock: systemClock }), loadFoundry()])
+  const context: PourContext = { now: systemClock.now(), timeZone, calendar }
   const finished = trees.filter((tree) => tree.state === 'ready for burnout' || tree.state === 'dried out')
   const checks =
     finished.length === 0
@@ -55,7 +54,7 @@ export default async function BurnoutPage() {
     checks: checks[tree.id] ?? [],
     verdict: pourVerdict(tree, context),
   }))
-  const released = sortByDue(trees.filter((tree) => tree.state === 'released' && (tree.stateSince ?? 0) > context.now - RECENT_MS))
+  const released = await loadReleasedSince({ since: context.now - RECENT_MS, most: MOST_RELEASED + 1 }, { clock: systemClock })
   const { now } = context
 
   return (
@@ -232,7 +231,7 @@ export default async function BurnoutPage() {
                 ))}
                 {released.length > MOST_RELEASED && (
                   <li>
-                    <Link href="/trees?state=gone">{released.length - MOST_RELEASED} more among the trees</Link>
+                    <Link href="/trees?state=gone">More among the trees</Link>
                   </li>
                 )}
               </ul>

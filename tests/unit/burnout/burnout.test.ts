@@ -9,7 +9,7 @@ import { NOW, queueTree, ZONE } from '../../fixtures/queue-tree'
 const CONTEXT: PourContext = {
   now: NOW,
   timeZone: ZONE,
-  shiftHours: [1, 2, 3, 4, 5].map((weekday) => ({ weekday, opensMinute: 420, closesMinute: 1020 })),
+  calendar: { hours: [1, 2, 3, 4, 5].map((weekday) => ({ weekday, opensMinute: 420, closesMinute: 1020 })), closures: [] },
 }
 const at = (text: string) => Date.parse(text)
 const driedOut = (likely: string, safe: string | null) => ({

@@ -7,7 +7,7 @@ const HOUR = 3_600_000
 const CONTEXT: PourContext = {
   now: NOW,
   timeZone: ZONE,
-  shiftHours: [1, 2, 3, 4, 5].map((weekday) => ({ weekday, opensMinute: 420, closesMinute: 1020 })),
+  calendar: { hours: [1, 2, 3, 4, 5].map((weekday) => ({ weekday, opensMinute: 420, closesMinute: 1020 })), closures: [] },
 }
 const drying = (tag: string, likelyHours: number, safeHours: number) =>
   queueTree({ tag, driedOut: { earliestAt: null, likelyAt: NOW + likelyHours * HOUR, safeAt: NOW + safeHours * HOUR } })

@@ -174,18 +174,28 @@ describe('choices', () => {
 
 describe('checkDial', () => {
   it('reads a comma as a point', () => {
-    expect(checkDial('19,5', ' 66 ').room).toEqual({ airTempC: 19.5, relHumidityPct: 66 })
+    expect(checkDial('19,5', ' 66 ', 'degC').room).toEqual({ airTempC: 19.5, relHumidityPct: 66 })
   })
 
   it.each([
-    ['', '66', 'Temperature is a number in °C.', undefined],
-    ['x', '66', 'Temperature is a number in °C.', undefined],
-    ['99', '66', 'A shell room is not hotter than 60 °C.', undefined],
-    ['20', '120', undefined, 'Humidity cannot be over 105 %.'],
-  ])('says what is wrong with %j and %j', (temp, humidity, tempError, humidityError) => {
-    const { errors, room } = checkDial(temp, humidity)
+    ['', '66', 'degC', 'Temperature is a number in °C.', undefined],
+    ['x', '66', 'degC', 'Temperature is a number in °C.', undefined],
+    ['99', '66', 'degC', 'A shell room is not hotter than 60\u00A0°C.', undefined],
+    ['−11', '66', 'degC', 'A shell room is not colder than -10\u00A0°C.', undefined],
+    ['20', '120', 'degC', undefined, 'Humidity cannot be over 105 %.'],
+    ['', '66', 'degF', 'Temperature is a number in °F.', undefined],
+    ['141', '66', 'degF', 'A shell room is not hotter than 140\u00A0°F.', undefined],
+    ['13', '66', 'degF', 'A shell room is not colder than 14\u00A0°F.', undefined],
+  ] as const)('says what is wrong with %j and %j in %s', (temp, humidity, unit, tempError, humidityError) => {
+    const { errors, room } = checkDial(temp, humidity, unit)
     expect(room).toBeNull()
     expect(errors.airTempC).toBe(tempError)
     expect(errors.relHumidityPct).toBe(humidityError)
+  })
+
+  it('takes what is typed in °F as °C, to the limits themselves', () => {
+    expect(checkDial('70', '66', 'degF').room).toEqual({ airTempC: 21.11, relHumidityPct: 66 })
+    expect(checkDial('140', '66', 'degF').room?.airTempC).toBe(60)
+    expect(checkDial('14', '66', 'degF').room?.airTempC).toBe(-10)
   })
 })

@@ -10,6 +10,7 @@ const OWNER: Role[] = ['owner']
 const WHO_MAY: Record<Act, Role[]> = {
   see: ALL,
   subscribe: ALL,
+  'own password': ALL,
   dip: FLOOR,
   undo: FLOOR,
   hold: FLOOR,

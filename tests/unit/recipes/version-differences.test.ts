@@ -75,6 +75,14 @@ describe('differences of two versions', () => {
     })
   })
 
+  it('see a coat that moved although another one of its run went', () => {
+    const core = backup({ kind: 'core fill', need: '10', readAloud: 'Tamp it lightly.' })
+    const run = [backup({ need: '4.33' }), backup({ need: '4.5' }), backup({ need: '4.68' })] as const
+    const before = [face(), core, ...run, seal()]
+    const after = [face(), run[0], run[1], core, seal()]
+    expect(inShort(before, after)).toEqual(['1=1', '2=3', '3=4', '-5', '4>2', '5=6'])
+  })
+
   it('call quite another coat in the same place another coat', () => {
     const core = backup({ kind: 'core fill', bath: 'Third slurry', stucco: 'fine', need: '10', readAloud: 'Tamp it lightly.' })
     expect(inShort(plain, plain.with(2, core))).toEqual(['1=1', '2=2', '-3', '+3', '4=4', '5=5'])

@@ -2,7 +2,7 @@ import { describe, expect, it } from 'vitest'
 import { fixedFields } from '@/lib/trees/fixed-fields'
 import { fieldErrors, formValuesOf, keepFixed, readTreeForm } from '@/lib/trees/tree-form-values'
 import { readTag } from '@/lib/trees/read-tag'
-import { treeInput } from '@/lib/trees/tree-input'
+import { treeInput, treeInputIn } from '@/lib/trees/tree-input'
 
 function form(fields: Record<string, string>): FormData {
   const data = new FormData()
@@ -74,20 +74,35 @@ describe('fixedFields', () => {
 })
 
 describe('a known tree in its form', () => {
-  const stored = formValuesOf({
+  const known = {
     tree: { tag: 'T-122', place: { id: whole.placeId, name: 'Rack B 5' }, pourDate: null },
     recipe: { versionId: whole.recipeVersionId },
     waxMassKg: 3.2,
-    cupKind: 'paper',
+    cupKind: 'paper' as const,
     cupVolumeL: 0.35,
-    recessClass: 'closed core',
-    spacing: 'open',
+    recessClass: 'closed core' as const,
+    spacing: 'open' as const,
     hungMassKg: null,
     pieces: [{ id: 'x', workTitle: 'Otter Gate', sectionName: 'panel 2', editionNumber: 1, isRecast: false }],
-  })
+  }
+  const stored = formValuesOf(known, 'kg')
 
   it('goes through the form unchanged', () => {
     expect(treeInput.parse(stored)).toMatchObject({ tag: 'T-122', waxMassKg: 3.2, hungMassKg: null, pourDate: null })
+  })
+
+  it('goes through the form unchanged in pounds too, and is stored in kilograms', () => {
+    const inPounds = formValuesOf({ ...known, hungMassKg: 31 }, 'lb')
+    expect(inPounds).toMatchObject({ waxMassKg: '7.055', hungMassKg: '68.343' })
+    expect(treeInputIn('lb').parse(inPounds)).toMatchObject({ waxMassKg: 3.2, hungMassKg: 31 })
+  })
+
+  it('says its limits in the unit that is typed', () => {
+    const most = treeInputIn('lb').safeParse({ ...stored, waxMassKg: '1103', hungMassKg: '-1' })
+    expect(fieldErrors(most.error!)).toEqual({ waxMassKg: 'Wax mass is at most 1,102 lb.', hungMassKg: 'Weight is more than 0 lb.' })
+    expect(treeInputIn('lb').safeParse({ ...stored, waxMassKg: '1102' }).success).toBe(true)
+    const { error } = treeInput.safeParse({ ...stored, waxMassKg: '501' })
+    expect(fieldErrors(error!)).toEqual({ waxMassKg: 'Wax mass is at most 500 kg.' })
   })
 
   it('keeps what is fixed, whatever the form sends', () => {

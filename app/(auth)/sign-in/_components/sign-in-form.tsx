@@ -12,11 +12,12 @@ export type DemoSignIn = { name: string; role: string; email: string; password: 
 function refusalSentence(error: string): string {
   const wait = /^WAIT:(\d+)$/.exec(error)
   if (wait) return `Too many tries. Wait ${wait[1]} s, then try again.`
+  if (error === 'FIRST_PASSWORD_OVER') return 'This first password has run out. Ask the owner of the foundry for a new one.'
   if (error === 'CredentialsSignin') return 'E-mail or password is not right.'
   return 'Signing in did not work. Try again; if it stays, ask the supervisor.'
 }
 
-export function SignInForm({ goTo, demoSignIns }: { goTo: string; demoSignIns: DemoSignIn[] }) {
+export function SignInForm({ goTo, demoSignIns, hasEnded }: { goTo: string; demoSignIns: DemoSignIn[]; hasEnded: boolean }) {
   const [email, setEmail] = useState('')
   const [password, setPassword] = useState('')
   const [problem, setProblem] = useState<string>()
@@ -75,6 +76,12 @@ export function SignInForm({ goTo, demoSignIns }: { goTo: string; demoSignIns: D
           value={password}
           onChange={(event) => setPassword(event.target.value)}
         />
+        {hasEnded && !problem && (
+          <p className="sign-in-ended text-17">
+            <Icon name="warning" />
+            <span>You are signed out here: the session has ended. Sign in again; what was not logged yet is not on the log.</span>
+          </p>
+        )}
         <div role="alert" aria-live="assertive">
           {problem && (
             <p className="field-error text-17">
@@ -87,7 +94,7 @@ export function SignInForm({ goTo, demoSignIns }: { goTo: string; demoSignIns: D
           {isSending ? 'Signing in' : 'Sign in'}
         </Key>
       </form>
-      <p className="text-17 text-soot">Forgotten password: ask your supervisor for a new one.</p>
+      <p className="text-17 text-soot">Forgotten password: ask the owner of the foundry for a new one.</p>
       {demoSignIns.length > 0 && (
         <section className="demo-sign-ins" aria-label="Demo sign-ins">
           <h2>Demo foundry: sign in as</h2>

@@ -6,6 +6,7 @@ import { Icon } from '@/app/_components/icons'
 import { Key } from '@/app/_components/key'
 import { ShellSection } from '@/app/_components/shell-section'
 import { fittedTagHeight, Tag } from '@/app/_components/tag'
+import { useUnits } from '@/app/_components/units-context'
 import { usePress } from '@/app/_components/use-press'
 import type { DipRefusal, DipRunAnswer } from '@/lib/coats/dip-contract'
 import {
@@ -70,6 +71,7 @@ type Trouble = { title: string; detail?: string | undefined; mayRetry: boolean }
 /** The dip sheet: one tree or a run. Warns, names what is unusual, and logs. */
 export function DipSheet({ queue, draft, trees, now, memberName, onChange, onTrees, onClose, onCancel, onLogged, onSaid }: DipSheetProps) {
   const { timeZone } = queue.foundry
+  const { temp: tempUnit } = useUnits()
   const [panel, setPanel] = useState<'sheet' | 'choices' | 'places'>('sheet')
   const [wantsReason, setWantsReason] = useState(false)
   const [isSending, setIsSending] = useState(false)
@@ -109,7 +111,7 @@ export function DipSheet({ queue, draft, trees, now, memberName, onChange, onTre
       setPanel('sheet')
       return
     }
-    const dial = hasWallDial ? checkDial(draft.roomTemp, draft.roomHumidity) : null
+    const dial = hasWallDial ? checkDial(draft.roomTemp, draft.roomHumidity, tempUnit) : null
     if (dial && !dial.room) {
       setDialErrors(dial.errors)
       return

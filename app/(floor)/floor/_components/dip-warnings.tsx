@@ -1,8 +1,10 @@
 import { Icon } from '@/app/_components/icons'
+import { useUnits } from '@/app/_components/units-context'
 import { tagsWords } from '@/lib/floor/dip-draft'
 import { formatDuration } from '@/lib/format/duration'
 import { NOT_CALIBRATED, timePairWords } from '@/lib/format/time-pair'
 import type { QueueTree, Warning } from '@/lib/queue/contract'
+import { warningText } from '@/lib/queue/warning-text'
 
 /** How many warnings show before the rest are counted. */
 const MOST = 3
@@ -55,9 +57,10 @@ export function DipWarnings({ trees, now, timeZone }: DipWarningsProps) {
 
 /** The first sentence says what is wrong, the rest what to do about it. */
 function Sentence({ warning, hasTags }: { warning: Told; hasTags: boolean }) {
-  const end = warning.text.indexOf('. ')
-  const head = end < 0 ? warning.text.replace(/\.$/, '') : warning.text.slice(0, end)
-  const rest = end < 0 ? '' : warning.text.slice(end + 2)
+  const text = warningText(warning, useUnits().temp)
+  const end = text.indexOf('. ')
+  const head = end < 0 ? text.replace(/\.$/, '') : text.slice(0, end)
+  const rest = end < 0 ? '' : text.slice(end + 2)
   return (
     <>
       <b>

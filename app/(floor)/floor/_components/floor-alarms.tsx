@@ -1,32 +1,21 @@
 import { Icon } from '@/app/_components/icons'
-import { KeyLink } from '@/app/_components/key'
 import { formatMoment } from '@/lib/format/local-time'
 import type { Queue } from '@/lib/queue/contract'
 
-export type FloorAlarmsProps = { queue: Queue; now: number; isConnected: boolean; isSignedOut: boolean; answeredAt: number }
+export type FloorAlarmsProps = { queue: Queue; now: number; isConnected: boolean; answeredAt: number }
 
 /** What is wrong with the floor itself: no server, no watcher. Each with the time since. */
-export function FloorAlarms({ queue, now, isConnected, isSignedOut, answeredAt }: FloorAlarmsProps) {
+export function FloorAlarms({ queue, now, isConnected, answeredAt }: FloorAlarmsProps) {
   const { timeZone } = queue.foundry
   const { worker } = queue
   return (
     // oxlint-disable-next-line jsx-a11y/prefer-tag-over-role -- an output element takes no blocks
     <div className="floor-alarms" role="status">
-      {isSignedOut ? (
-        <p>
+      {!isConnected && (
+        <p className="floor-alarm-ochre">
           <Icon name="warning" />
-          <span className="flex-1">Signed out. What you see is from {formatMoment(answeredAt, now, timeZone)}.</span>
-          <KeyLink href="/sign-in?callbackUrl=%2Ffloor" size={64}>
-            Sign in
-          </KeyLink>
+          <span>Not connected. What you see is from {formatMoment(answeredAt, now, timeZone)}.</span>
         </p>
-      ) : (
-        !isConnected && (
-          <p className="floor-alarm-ochre">
-            <Icon name="warning" />
-            <span>Not connected. What you see is from {formatMoment(answeredAt, now, timeZone)}.</span>
-          </p>
-        )
       )}
       {!worker.isAlive && (
         <p>

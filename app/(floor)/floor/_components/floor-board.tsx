@@ -70,6 +70,10 @@ export function FloorBoard({ initial, serverNow, member }: FloorBoardProps) {
   const minute = Math.floor(now / 60_000) * 60_000
   const scale = useMemo(() => tideScale(minute, queue.shift, timeZone), [minute, queue.shift, timeZone])
   const canLog = may(member.role, 'dip')
+  // The session has ended, or somebody has ended it: nothing of this page may stay in strange hands.
+  useEffect(() => {
+    if (floor.isSignedOut) window.location.assign('/sign-in?callbackUrl=%2Ffloor&ended=1')
+  }, [floor.isSignedOut])
   const canHold = may(member.role, 'hold')
   const treeOf = useMemo(() => new Map(queue.trees.map((tree) => [tree.id, tree])), [queue.trees])
 
@@ -208,13 +212,7 @@ export function FloorBoard({ initial, serverNow, member }: FloorBoardProps) {
   return (
     <div className={classes} style={{ '--dip-column': `${heights.dipColumn}px` }}>
       <Strip queue={queue} now={now} memberName={member.name} onRoom={() => show({ kind: 'room' })} onWho={() => show({ kind: 'who' })} />
-      <FloorAlarms
-        queue={queue}
-        now={now}
-        isConnected={floor.isConnected}
-        isSignedOut={floor.isSignedOut}
-        answeredAt={floor.answeredAt + floor.clockGap}
-      />
+      <FloorAlarms queue={queue} now={now} isConnected={floor.isConnected} answeredAt={floor.answeredAt + floor.clockGap} />
       <div className="stage">
         {!hasTrees ? (
           <NoTrees canAdd={may(member.role, 'trees')} />

@@ -4,9 +4,10 @@ import { useState, type FormEvent } from 'react'
 import { formatMoment } from '@/lib/format/local-time'
 import { Icon } from '@/app/_components/icons'
 import { Key } from '@/app/_components/key'
+import { useUnits } from '@/app/_components/units-context'
 import { checkDial, type DialErrors } from '@/lib/floor/dip-draft'
 import { PULL_WORDS, readingAge, roomsByWorry } from '@/lib/floor/strip'
-import { formatKelvin, formatPercent, formatTemperature } from '@/lib/format/units'
+import { formatKelvin, formatPercent, formatTemperature, UNIT_SIGNS } from '@/lib/format/units'
 import type { Queue, QueueRoom } from '@/lib/queue/contract'
 import { newOperationId } from '../_queries/operation-id'
 import { refusalWords } from '../_queries/request-json'
@@ -52,6 +53,7 @@ function RoomLine({
   canRead: boolean
   onSaid: (words: string) => void
 }) {
+  const { temp } = useUnits()
   const isGood = room.pull === 'good'
   const placeIds = new Set(queue.places.filter((place) => place.sensorId === room.sensorId).map((place) => place.id))
   const trees = queue.trees.filter((tree) => placeIds.has(tree.place.id)).length
@@ -70,7 +72,7 @@ function RoomLine({
       </div>
       <div>
         {room.isStale && room.airTempC !== null && <span>last</span>}
-        <b className="num">{formatTemperature(room.airTempC)}</b>
+        <b className="num">{formatTemperature(room.airTempC, temp)}</b>
         <b className="num">{formatPercent(room.relHumidityPct)} RH</b>
         <span className={`state ${isGood ? 'state-verdigris' : 'state-ochre'}`}>
           <Icon name={isGood ? 'check' : 'warning'} />
@@ -78,7 +80,7 @@ function RoomLine({
         </span>
         {!room.isStale && (
           <span>
-            {formatPercent(room.speedPct)} of reference speed, {formatKelvin(room.wetBulbGapK)} to the wet bulb
+            {formatPercent(room.speedPct)} of reference speed, {formatKelvin(room.wetBulbGapK, temp)} to the wet bulb
           </span>
         )}
       </div>
@@ -88,6 +90,7 @@ function RoomLine({
 }
 
 function TypedReading({ room, onSaid }: { room: QueueRoom; onSaid: (words: string) => void }) {
+  const unit = useUnits().temp
   const [temp, setTemp] = useState('')
   const [humidity, setHumidity] = useState('')
   const [errors, setErrors] = useState<DialErrors>({})
@@ -99,7 +102,7 @@ function TypedReading({ room, onSaid }: { room: QueueRoom; onSaid: (words: strin
   const send = async (event: FormEvent) => {
     event.preventDefault()
     if (isSending) return
-    const { errors: wrong, room: air } = checkDial(temp, humidity)
+    const { errors: wrong, room: air } = checkDial(temp, humidity, unit)
     setErrors(wrong)
     setTrouble(undefined)
     if (!air) return
@@ -113,7 +116,7 @@ function TypedReading({ room, onSaid }: { room: QueueRoom; onSaid: (words: strin
       setTemp('')
       setHumidity('')
       setAttempt(null)
-      onSaid(`${room.sensorName}: ${formatTemperature(air.airTempC)}, ${formatPercent(air.relHumidityPct)} RH noted.`)
+      onSaid(`${room.sensorName}: ${formatTemperature(air.airTempC, unit)}, ${formatPercent(air.relHumidityPct)} RH noted.`)
       return
     }
     if (outcome.kind === 'refused') setAttempt(null)
@@ -141,7 +144,7 @@ function TypedReading({ room, onSaid }: { room: QueueRoom; onSaid: (words: strin
   return (
     <>
       <form onSubmit={(event) => void send(event)} noValidate aria-label={`Wall hygrometer, ${room.sensorName}`}>
-        {dial('Temperature', '°C', temp, errors.airTempC !== undefined, setTemp)}
+        {dial('Temperature', UNIT_SIGNS[unit], temp, errors.airTempC !== undefined, setTemp)}
         {dial('Humidity', '% RH', humidity, errors.relHumidityPct !== undefined, setHumidity)}
         <Key type="submit" size={64} tone="go" isOff={isSending}>
           {isSending ? 'Noting it' : 'Note the reading'}

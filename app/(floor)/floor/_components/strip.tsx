@@ -1,10 +1,11 @@
 import type { ReactNode } from 'react'
 import { Icon } from '@/app/_components/icons'
+import { useUnits } from '@/app/_components/units-context'
 import { usePress } from '@/app/_components/use-press'
 import { bathsByNeed, PULL_WORDS, readingAge, mainRoom, shortBathName } from '@/lib/floor/strip'
 import { formatClock, formatDate, formatMoment } from '@/lib/format/local-time'
 import { splitName } from '@/lib/format/person-name'
-import { formatKelvin, formatPercent, oneDecimal, wholeNumber } from '@/lib/format/units'
+import { formatKelvin, formatPercent, fromSi, oneDecimal, UNIT_SIGNS, wholeNumber } from '@/lib/format/units'
 import type { Queue } from '@/lib/queue/contract'
 
 const BATH_LINES = 2
@@ -21,6 +22,7 @@ export type StripProps = {
 export function Strip({ queue, now, memberName, onRoom, onWho }: StripProps) {
   const { timeZone } = queue.foundry
   const { room, silentBeside } = mainRoom(queue)
+  const { temp } = useUnits()
   const roomPress = usePress(onRoom)
   const whoPress = usePress(onWho)
   const isSilent = room === undefined || room.measuredAt === null || room.isStale
@@ -57,8 +59,8 @@ export function Strip({ queue, now, memberName, onRoom, onWho }: StripProps) {
         </span>
         <span className="strip-figures">
           <b className="num">
-            {room === undefined || isSilent || room.airTempC === null ? '–' : oneDecimal(room.airTempC)}
-            <small>°C</small>
+            {room === undefined || isSilent || room.airTempC === null ? '–' : oneDecimal(fromSi(room.airTempC, temp))}
+            <small>{UNIT_SIGNS[temp]}</small>
           </b>
           <b className="num">
             {room === undefined || isSilent || room.relHumidityPct === null ? '–' : wholeNumber(room.relHumidityPct)}
@@ -73,7 +75,7 @@ export function Strip({ queue, now, memberName, onRoom, onWho }: StripProps) {
           {room && !isSilent && room.pull !== 'not known' && (
             <em>
               {formatPercent(room.speedPct)}
-              <span className="strip-wide"> · {formatKelvin(room.wetBulbGapK)}</span>
+              <span className="strip-wide"> · {formatKelvin(room.wetBulbGapK, temp)}</span>
             </em>
           )}
         </span>

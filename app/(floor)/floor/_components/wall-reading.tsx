@@ -1,6 +1,8 @@
 import { useId } from 'react'
 import { Icon } from '@/app/_components/icons'
+import { useUnits } from '@/app/_components/units-context'
 import type { DialErrors } from '@/lib/floor/dip-draft'
+import { UNIT_SIGNS } from '@/lib/format/units'
 
 export type WallReadingProps = {
   temp: string
@@ -14,6 +16,7 @@ export type WallReadingProps = {
 /** The two dials of a wall hygrometer, with the sentence about a wrong one beside them. */
 export function WallReading({ temp, humidity, errors, words, onTemp, onHumidity }: WallReadingProps) {
   const id = useId()
+  const { temp: unit } = useUnits()
   const wrong = [errors.airTempC, errors.relHumidityPct].filter((error) => error !== undefined)
   const errorId = `${id}-error`
   return (
@@ -22,7 +25,7 @@ export function WallReading({ temp, humidity, errors, words, onTemp, onHumidity 
       <Dial
         id={`${id}-t`}
         label="Temperature"
-        unit="°C"
+        unit={UNIT_SIGNS[unit]}
         value={temp}
         isWrong={errors.airTempC !== undefined}
         errorId={errorId}

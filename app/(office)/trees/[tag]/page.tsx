@@ -31,7 +31,8 @@ import { pourSentence, pourVerdict } from '@/lib/burnout/pour-verdict'
 import { systemClock } from '@/lib/core/clock'
 import { stateTone } from '@/lib/format/state-words'
 import { formatDate, formatDay, formatMoment } from '@/lib/format/local-time'
-import { formatSeconds, formatShare } from '@/lib/format/units'
+import { typedWords } from '@/lib/format/typed-units'
+import { formatSeconds, formatShare, type MassUnit } from '@/lib/format/units'
 import { may } from '@/lib/members/roles'
 import { loadFoundry } from '@/lib/queries/load-foundry'
 import { loadNewerVersions } from '@/lib/queries/newer-versions'
@@ -53,7 +54,7 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
   if (tag === null) notFound()
   const member = await requireMemberPage('see', `/trees/${encodeURIComponent(tag)}`)
   const now = systemClock.now()
-  const [detail, { timeZone, shiftHours }, { places }] = await Promise.all([
+  const [detail, { timeZone, calendar }, { places }] = await Promise.all([
     loadTreeDetail({ tag, viewer: { id: member.id, role: member.role }, clock: systemClock }),
     loadFoundry(),
     loadTreeForm(),
@@ -64,7 +65,7 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
   const { tree, recipe, coats, curve, intake, holds, lookOvers, release } = detail
   const moment = { now, timeZone }
   const verdict = treeVerdict(tree, now)
-  const pour = pourVerdict(tree, { now, timeZone, shiftHours })
+  const pour = pourVerdict(tree, { now, timeZone, calendar })
   const hasLeft = tree.state === 'released' || tree.state === 'scrapped'
   const isDryNow = tree.dry?.safeAt != null && tree.dry.safeAt <= now
   const isCoatOpen = tree.newestCoat !== null && !hasLeft && tree.state !== 'ready for burnout'
@@ -149,7 +150,7 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
             {[
               `Recipe ${recipe.name}`,
               `treed ${formatDate(detail.createdAt, timeZone)}${detail.createdBy === null ? '' : ` by ${detail.createdBy}`}`,
-              `${detail.waxMassKg}\u00A0kg wax`,
+              `${typedWords(detail.waxMassKg, member.units.mass)} wax`,
               tree.place.name,
               tree.pourDate === null ? 'no pour date' : `pour ${formatDay(tree.pourDate)}`,
             ].join(' · ')}
@@ -265,7 +266,7 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
         {coats.length === 0 ? (
           <p className="px-4 py-3 text-soot">The recipe has no coat.</p>
         ) : (
-          <CoatLog coats={coats} isUnknown={isUnknown} {...moment} />
+          <CoatLog coats={coats} isUnknown={isUnknown} tempUnit={member.units.temp} {...moment} />
         )}
       </section>
 
@@ -292,7 +293,7 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
             </Plate>
           )}
           <Plate title="About the tree">
-            <About detail={detail} timeZone={timeZone} now={now} />
+            <About detail={detail} massUnit={member.units.mass} timeZone={timeZone} now={now} />
           </Plate>
         </div>
         <div className="tree-column">
@@ -409,7 +410,7 @@ function IntakeLines({ intake }: { intake: Detail['intake'] }) {
   )
 }
 
-function About({ detail, now, timeZone }: { detail: Detail; now: number; timeZone: string }) {
+function About({ detail, massUnit, now, timeZone }: { detail: Detail; massUnit: MassUnit; now: number; timeZone: string }) {
   const { intake } = detail
   const facts: [string, ReactNode][] = [
     ...detail.pieces.map((piece, index): [string, ReactNode] => [
@@ -420,11 +421,11 @@ function About({ detail, now, timeZone }: { detail: Detail; now: number; timeZon
     ['Treed', `${formatDate(detail.createdAt, timeZone)}${detail.createdBy === null ? '' : ` by ${detail.createdBy}`}`],
     ['Place', detail.tree.place.name],
     ['Pour date', detail.tree.pourDate === null ? 'none set' : formatDay(detail.tree.pourDate)],
-    ['Wax', `${detail.waxMassKg} kg`],
+    ['Wax', typedWords(detail.waxMassKg, massUnit)],
     ['Cup', `${detail.cupKind}, ${detail.cupVolumeL} L`],
     ['Deepest recess', detail.recessClass],
     ['Spacing', detail.spacing],
-    ...(detail.hungMassKg === null ? [] : [['Weight as hung', `${detail.hungMassKg} kg`] as [string, ReactNode]]),
+    ...(detail.hungMassKg === null ? [] : [['Weight as hung', typedWords(detail.hungMassKg, massUnit)] as [string, ReactNode]]),
     [
       'Intake',
       intake.passedAt === null

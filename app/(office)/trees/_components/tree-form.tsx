@@ -4,10 +4,12 @@ import { useId, useRef, useState, type ReactNode } from 'react'
 import { Field, SelectField } from '@/app/_components/field'
 import { Icon } from '@/app/_components/icons'
 import { Key, KeyLink } from '@/app/_components/key'
+import { useUnits } from '@/app/_components/units-context'
 import { FormMessage } from '@/app/(office)/_components/form-message'
 import { useKeptForm, type KeptForm } from '@/app/(office)/_components/use-kept-form'
-import { RECESS_CLASSES, SPACINGS, type RecessClass, type Spacing } from '@/lib/coats/vocabulary'
+import { CROWDED_UNDER_MM, RECESS_CLASSES, SPACINGS, type RecessClass, type Spacing } from '@/lib/coats/vocabulary'
 import { isSameName } from '@/lib/format/same-name'
+import { formatLength, UNIT_SIGNS, type LengthUnit } from '@/lib/format/units'
 import type { TreeForm as TreeChoices } from '@/lib/queries/tree-form'
 import type { FormState } from '@/lib/server/form-state'
 import type { FixedFields } from '@/lib/trees/fixed-fields'
@@ -21,7 +23,10 @@ const RECESS_WORDS: Record<RecessClass, string> = {
   'closed core': 'Closed core, with a duct',
   'closed core, no duct': 'Closed core, no duct',
 }
-const SPACING_WORDS: Record<Spacing, string> = { open: 'Open', crowded: 'Crowded: a gap under 40 mm' }
+const spacingWords = (unit: LengthUnit): Record<Spacing, string> => ({
+  open: 'Open',
+  crowded: `Crowded: a gap under ${formatLength(CROWDED_UNDER_MM, unit)}`,
+})
 
 const MOST_PIECES = 40
 const NO_PIECE: PieceValues = { workTitle: '', sectionName: '', editionNumber: '1', isRecast: false }
@@ -38,6 +43,8 @@ export type TreeFormProps = {
 /** The form of a tree, new or known. Fields that stand say why; what was typed stays until it is saved. */
 export function TreeForm({ action, values, choices, fixed, submitWords, cancelPath }: TreeFormProps) {
   const form = useKeptForm(action)
+  const units = useUnits()
+  const spacings = spacingWords(units.length)
   const recipe = choices.recipes.find((candidate) => candidate.versionId === values.recipeVersionId)
   return (
     <form {...form.formProps} className="tree-form">
@@ -139,7 +146,7 @@ export function TreeForm({ action, values, choices, fixed, submitWords, cancelPa
           <Field
             name="waxMassKg"
             label="Wax mass"
-            unit="kg"
+            unit={UNIT_SIGNS[units.mass]}
             inputMode="decimal"
             defaultValue={values.waxMassKg}
             error={form.errorOf('waxMassKg')}
@@ -149,7 +156,7 @@ export function TreeForm({ action, values, choices, fixed, submitWords, cancelPa
           <Field
             name="hungMassKg"
             label="Weight as hung"
-            unit="kg"
+            unit={UNIT_SIGNS[units.mass]}
             inputMode="decimal"
             defaultValue={values.hungMassKg}
             error={form.errorOf('hungMassKg')}
@@ -203,12 +210,12 @@ export function TreeForm({ action, values, choices, fixed, submitWords, cancelPa
               </option>
               {SPACINGS.map((spacing) => (
                 <option key={spacing} value={spacing}>
-                  {SPACING_WORDS[spacing]}
+                  {spacings[spacing]}
                 </option>
               ))}
             </SelectField>
           ) : (
-            <FixedField label="Spacing on the tree" value={words(SPACING_WORDS, values.spacing)} why={fixed.spacing} />
+            <FixedField label="Spacing on the tree" value={words(spacings, values.spacing)} why={fixed.spacing} />
           )}
         </div>
       </section>

@@ -7,12 +7,12 @@ import { systemClock } from '@/lib/core/clock'
 import { requireMember } from '@/lib/server/auth'
 import { answerForm, type FormState } from '@/lib/server/form-state'
 import { fieldErrors, readTreeForm } from '@/lib/trees/tree-form-values'
-import { treeInput } from '@/lib/trees/tree-input'
+import { treeInputIn } from '@/lib/trees/tree-input'
 
 /** Adds a tree and goes to its page, where the intake waits. */
 export async function createTreeAction(_previous: FormState, form: FormData): Promise<FormState> {
   const member = await requireMember('trees')
-  const parsed = treeInput.safeParse(readTreeForm(form))
+  const parsed = treeInputIn(member.units.mass).safeParse(readTreeForm(form))
   if (!parsed.success) return { status: 'invalid', fields: fieldErrors(parsed.error) }
   return answerForm(async () => {
     const { tag } = await createTree(parsed.data, { member, clock: systemClock })

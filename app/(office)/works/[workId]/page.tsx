@@ -58,15 +58,17 @@ export default async function WorkPage({ params }: PageProps<'/works/[workId]'>)
         )}
       </section>
 
-      {work.sections.map((section) => (
-        <section key={section.id} className="plate mt-5">
-          <header>
-            <h2>{sectionWord(section.name)}</h2>
-            <p>every cast of it, newest edition last</p>
-          </header>
-          <SectionCasts casts={work.casts.filter((cast) => cast.sectionId === section.id)} castOf={castOf} now={now} />
-        </section>
-      ))}
+      <div className="section-plates">
+        {work.sections.map((section) => (
+          <section key={section.id} className="plate">
+            <header>
+              <h2>{sectionWord(section.name)}</h2>
+              <p>every cast of it</p>
+            </header>
+            <SectionCasts casts={work.casts.filter((cast) => cast.sectionId === section.id)} castOf={castOf} now={now} />
+          </section>
+        ))}
+      </div>
     </article>
   )
 }
@@ -89,7 +91,7 @@ function SectionCasts({ casts, castOf, now }: { casts: readonly WorkCast[]; cast
                 <StateMark state={cast.tree.state} since={cast.tree.stateSince} now={now} />
               </span>
             )}
-            {recast !== null && <span className="text-soot">{recast}</span>}
+            {recast !== null && <span className="cast-why">{recast}</span>}
           </li>
         )
       })}

@@ -5,7 +5,7 @@ import type { Moment } from '@/app/(office)/_components/due-words'
 import { stuccoWord } from '@/lib/format/coat-words'
 import { formatDuration } from '@/lib/format/duration'
 import { formatClock, formatDate, formatMoment } from '@/lib/format/local-time'
-import { formatPercent, formatSeconds, formatShare, oneDecimal, wholeNumber } from '@/lib/format/units'
+import { formatPercent, formatSeconds, formatShare, fromSi, oneDecimal, UNIT_SIGNS, wholeNumber, type TempUnit } from '@/lib/format/units'
 import type { CoatRow } from '@/lib/trees/detail-contract'
 
 type Dipped = NonNullable<CoatRow['on']>
@@ -17,9 +17,9 @@ function dippedWords(coat: Dipped, timeZone: string): string {
   return coat.roughMinutes === 0 ? clock : `${clock} ± ${coat.roughMinutes}\u00A0min`
 }
 
-function climateWords(coat: Dipped): string {
+function climateWords(coat: Dipped, unit: TempUnit): string {
   if (coat.airTempC === null && coat.relHumidityPct === null) return '–'
-  return `${coat.airTempC === null ? '–' : oneDecimal(coat.airTempC)} / ${coat.relHumidityPct === null ? '–' : wholeNumber(coat.relHumidityPct)}`
+  return `${coat.airTempC === null ? '–' : oneDecimal(fromSi(coat.airTempC, unit))} / ${coat.relHumidityPct === null ? '–' : wholeNumber(coat.relHumidityPct)}`
 }
 
 /** How long the coat was foreseen to dry, from the dip, as a pair. */
@@ -73,7 +73,13 @@ function Planned({ row, now, timeZone }: { row: CoatRow } & Moment) {
 }
 
 /** The coat log: thirteen columns on a desk, a list on a phone. */
-export function CoatLog({ coats, isUnknown, now, timeZone }: { coats: readonly CoatRow[]; isUnknown: boolean } & Moment) {
+export function CoatLog({
+  coats,
+  isUnknown,
+  tempUnit,
+  now,
+  timeZone,
+}: { coats: readonly CoatRow[]; isUnknown: boolean; tempUnit: TempUnit } & Moment) {
   return (
     <>
       <div className="coat-log-wide" tabIndex={-1}>
@@ -91,7 +97,7 @@ export function CoatLog({ coats, isUnknown, now, timeZone }: { coats: readonly C
                 Drain
               </th>
               <th scope="col" className="right">
-                °C / % RH
+                {UNIT_SIGNS[tempUnit]} / % RH
                 <br />
                 at dip
               </th>
@@ -139,7 +145,7 @@ export function CoatLog({ coats, isUnknown, now, timeZone }: { coats: readonly C
                     <td>{row.on.by}</td>
                     <td>{row.on.placeName}</td>
                     <td className="right num">{formatSeconds(row.on.drainSeconds)}</td>
-                    <td className="right num">{climateWords(row.on)}</td>
+                    <td className="right num">{climateWords(row.on, tempUnit)}</td>
                     <td className="right num">{formatPercent(row.on.meanRelHumidityPct)}</td>
                     <td className="right num">{formatPercent(row.on.worstRelHumidityPct)}</td>
                     <td className="right">
@@ -189,8 +195,8 @@ export function CoatLog({ coats, isUnknown, now, timeZone }: { coats: readonly C
                       </dd>
                       <dt>Place</dt>
                       <dd>{row.on.placeName}</dd>
-                      <dt>°C / % RH at dip</dt>
-                      <dd>{climateWords(row.on)}</dd>
+                      <dt>{UNIT_SIGNS[tempUnit]} / % RH at dip</dt>
+                      <dd>{climateWords(row.on, tempUnit)}</dd>
                       <dt>RH while drying</dt>
                       <dd>
                         mean {formatPercent(row.on.meanRelHumidityPct)}, worst {formatPercent(row.on.worstRelHumidityPct)}

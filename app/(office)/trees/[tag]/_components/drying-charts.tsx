@@ -12,9 +12,10 @@ import {
   XAxis,
   YAxis,
 } from 'recharts'
+import { useUnits } from '@/app/_components/units-context'
 import { formatClock, formatDate, formatMoment } from '@/lib/format/local-time'
 import { timePairWords } from '@/lib/format/time-pair'
-import { formatTemperature, wholeNumber } from '@/lib/format/units'
+import { fromSi, oneDecimal, UNIT_SIGNS, wholeNumber } from '@/lib/format/units'
 import { curveRows, evenBounds, hourTicks, thinOut } from '@/lib/trees/curve-series'
 import type { TreeDetail } from '@/lib/trees/detail-contract'
 
@@ -65,6 +66,7 @@ function markerShape(words: string, isSafe: boolean, lift: number, anchor: 'star
 
 /** Water left in the newest coat, and the room's air below it on the same hours. */
 export function DryingCharts({ curve, climate, coatNumber, isLastCoat, moistureRatio, now, timeZone }: DryingChartsProps) {
+  const { temp } = useUnits()
   const rows = curveRows(curve.points)
   const from = rows[0]?.at ?? now
   const to = Math.max(rows.at(-1)?.at ?? now, from + 60_000)
@@ -72,7 +74,9 @@ export function DryingCharts({ curve, climate, coatNumber, isLastCoat, moistureR
   const span = to - from
   const share = (at: number) => (at - from) / span
   // A point outside would stretch the axis, and the hours of the charts would no longer stand below each other.
-  const room = climate.filter((point) => point.at >= from && point.at <= to)
+  const room = climate
+    .filter((point) => point.at >= from && point.at <= to)
+    .map((point) => ({ at: point.at, airTemp: fromSi(point.airTempC, temp), relHumidityPct: point.relHumidityPct }))
   const newestAt = room.at(-1)?.at ?? null
   // All charts share one axis of time, so all make room.
   const right = newestAt !== null && share(Math.max(newestAt, Math.min(now, to))) > 0.8 ? VALUE_ROOM : 12
@@ -189,12 +193,12 @@ export function DryingCharts({ curve, climate, coatNumber, isLastCoat, moistureR
         <>
           <RoomChart
             rows={room}
-            dataKey="airTempC"
-            step={2}
+            dataKey="airTemp"
+            step={temp === 'degF' ? 4 : 2}
             domain={domain}
             now={now}
             color="var(--wax-ink)"
-            format={(value) => formatTemperature(value)}
+            format={(value) => `${oneDecimal(value)}\u00A0${UNIT_SIGNS[temp]}`}
             name="Air temperature"
             timeZone={timeZone}
             right={right}
@@ -265,8 +269,9 @@ function RoomChart({
   right,
   foot,
 }: {
-  rows: TreeDetail['climate']
-  dataKey: 'airTempC' | 'relHumidityPct'
+  /** Temperatures in the unit of the reader. */
+  rows: { at: number; airTemp: number; relHumidityPct: number }[]
+  dataKey: 'airTemp' | 'relHumidityPct'
   step: number
   domain: [number, number]
   now: number

@@ -49,7 +49,7 @@ export default async function EditTreePage({ params }: PageProps<'/trees/[tag]/e
         <TreeForm
           action={editTreeAction.bind(null, tag)}
           choices={{ ...choices, recipes }}
-          values={formValuesOf(detail)}
+          values={formValuesOf(detail, member.units.mass)}
           fixed={fixedFields(coatsOn)}
           submitWords="Save"
           cancelPath={path}

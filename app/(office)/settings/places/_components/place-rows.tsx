@@ -1,0 +1,92 @@
+'use client'
+
+import { AddPlate } from '@/app/(office)/settings/_components/add-plate'
+import { ActForm } from '@/app/(office)/settings/_components/act-form'
+import { RetiredFold } from '@/app/(office)/settings/_components/retired-fold'
+import { RowPlate } from '@/app/(office)/settings/_components/row-plate'
+import { PlaceForm } from '@/app/(office)/settings/places/_components/place-form'
+import { retirePlaceAction, reusePlaceAction } from '@/app/(office)/settings/places/actions'
+import { nameList } from '@/lib/format/name-list'
+import type { PlaceList, PlaceRow } from '@/lib/queries/place-list'
+import { placeFormValues } from '@/lib/room/place-input'
+import { weekWords } from '@/lib/schedule/week-words'
+
+/** The places in use with their forms, the key that adds one, and those that are retired. */
+export function PlaceRows({ places: { inUse, retired, sensors } }: { places: PlaceList }) {
+  return (
+    <>
+      <AddPlate
+        words="Add a place"
+        empty={
+          inUse.length > 0
+            ? null
+            : {
+                title: 'No place yet',
+                text: 'Every rack, rail and corner where trees hang stands here, with its air. The drying clock needs to know how fast the air is where a shell dries.',
+              }
+        }
+        form={(onDone) => <PlaceForm sensors={sensors} onDone={onDone} />}
+      />
+      <ul className="settings-rows">
+        {inUse.map((place) => (
+          <RowPlate
+            key={place.id}
+            title={place.name}
+            line={`air read by ${place.sensor.name}`}
+            form={
+              <PlaceForm
+                sensors={sensors}
+                place={{ id: place.id, values: placeFormValues({ ...place, sensorId: place.sensor.id }), trees: place.trees }}
+              />
+            }
+            keys={
+              <ActForm action={() => retirePlaceAction(place.id)} label={`Retire ${place.name}`}>
+                Retire
+              </ActForm>
+            }
+          >
+            <PlaceWords place={place} />
+          </RowPlate>
+        ))}
+      </ul>
+      <RetiredFold count={retired.length}>
+        {retired.map((place) => (
+          <RowPlate
+            key={place.id}
+            title={place.name}
+            line="retired"
+            keys={
+              <ActForm action={() => reusePlaceAction(place.id)} label={`Use ${place.name} again`}>
+                Use again
+              </ActForm>
+            }
+          >
+            <PlaceWords place={place} />
+          </RowPlate>
+        ))}
+      </RetiredFold>
+    </>
+  )
+}
+
+function PlaceWords({ place }: { place: PlaceRow }) {
+  const fans = place.fanHours.map(({ weekday, onMinute, offMinute }) => ({ weekday, fromMinute: onMinute, toMinute: offMinute }))
+  return (
+    <dl className="facts">
+      <div>
+        <dt>Air speed</dt>
+        <dd>
+          {place.airSpeedFansOnMps} m/s with fans, {place.airSpeedFansOffMps} m/s without
+        </dd>
+      </div>
+      <div>
+        <dt>Fans run</dt>
+        <dd>{weekWords(fans, 'never')}</dd>
+      </div>
+      <div>
+        <dt>Hanging now</dt>
+        <dd>{place.trees.length === 0 ? 'nothing' : nameList(place.trees)}</dd>
+      </div>
+    </dl>
+  )
+}

@@ -1,0 +1,152 @@
+import { addFoundryEvent } from '@/lib/commands/foundry-event'
+import { refuseField } from '@/lib/commands/refuse-field'
+import type { Clock } from '@/lib/core/clock'
+import { AppError } from '@/lib/core/errors'
+import { newId } from '@/lib/core/ids'
+import type { FanHours as Fans } from '@/lib/drying/types'
+import { nameList } from '@/lib/format/name-list'
+import type { Actor } from '@/lib/members/actor'
+import { changedFields } from '@/lib/members/changed-fields'
+import { hangingTrees } from '@/lib/queries/hanging-trees'
+import type { AirSince, PlaceInput } from '@/lib/room/place-input'
+import { weekWords } from '@/lib/schedule/week-words'
+import { FanHours, FormerAir, inTransaction, Place, Sensor } from '@/models'
+
+type By = { member: Actor; clock: Clock }
+
+/**
+ * Adds a place where trees hang.
+ *
+ * @throws {AppError} conflict with `fields` for a name that is taken or a sensor that is not in use.
+ */
+export function createPlace(input: PlaceInput, { member, clock }: By): Promise<{ placeId: string }> {
+  return inTransaction(async () => {
+    const now = clock.now()
+    await requireFreeName(input.name, null)
+    const sensor = await requireSensor(input.sensorId)
+    const { fans, ...columns } = input
+    const placeId = newId(now)
+    await Place.create({ ...columns, id: placeId, isDemo: member.isDemo ?? false, createdAt: now })
+    await FanHours.bulkCreate(fans.map((row) => ({ ...row, placeId })))
+    await addFoundryEvent(
+      { type: 'place', id: placeId, name: input.name },
+      { kind: 'place added', by: member, at: now, text: `Place ${input.name} added.`, after: inWords(input, fans, sensor.name) },
+    )
+    return { placeId }
+  })
+}
+
+/**
+ * Changes a place in use. From now on, another air leaves what has dried so far as it was; as a correction, every coat that is still open
+ * is worked out again with it.
+ *
+ * @throws {AppError} not_found; conflict when it is retired, with `fields` for a name that is taken or a sensor that is not in use.
+ */
+export function changePlace(placeId: string, input: PlaceInput, since: AirSince, { member, clock }: By): Promise<void> {
+  return inTransaction(async () => {
+    const now = clock.now()
+    const place = await placeInUse(placeId)
+    await requireFreeName(input.name, placeId)
+    const sensor = await requireSensor(input.sensorId)
+    const formerSensor = await Sensor.findByPk(place.sensorId, { rejectOnEmpty: true })
+    const formerFans = await FanHours.findAll({ where: { placeId } })
+    const { fans, ...columns } = input
+    const changed = changedFields(inWords(place, formerFans, formerSensor.name), inWords(input, fans, sensor.name))
+    if (Object.keys(changed.after).length === 0) return
+    const isOtherAir = Object.keys(changed.after).some((field) => field !== 'name')
+    if (isOtherAir && since === 'now') await keepFormerAir(place, formerFans, now)
+    await place.update(columns)
+    await FanHours.destroy({ where: { placeId } })
+    await FanHours.bulkCreate(fans.map((row) => ({ ...row, placeId })))
+    await addFoundryEvent(
+      { type: 'place', id: placeId, name: input.name },
+      { kind: 'place changed', by: member, at: now, text: changeText(input.name, isOtherAir ? since : null), ...changed },
+    )
+  })
+}
+
+/**
+ * Retires a place: nobody can choose it any more, and what hung there keeps it in its log.
+ *
+ * @throws {AppError} not_found; conflict while trees hang there, or when it is retired already.
+ */
+export function retirePlace(placeId: string, { member, clock }: By): Promise<void> {
+  return inTransaction(async () => {
+    const now = clock.now()
+    const place = await placeInUse(placeId)
+    const tags = (await hangingTrees()).get(placeId) ?? []
+    if (tags.length > 0) {
+      const [verb, them] = tags.length === 1 ? ['hangs', 'it'] : ['hang', 'them']
+      throw new AppError('conflict', `${nameList(tags)} ${verb} at ${place.name}. Move ${them} first.`)
+    }
+    await place.update({ retiredAt: now })
+    await addFoundryEvent(
+      { type: 'place', id: placeId, name: place.name },
+      { kind: 'place retired', by: member, at: now, text: `Place ${place.name} retired.` },
+    )
+  })
+}
+
+/**
+ * Takes a retired place into use again, as it was.
+ *
+ * @throws {AppError} not_found; conflict while its sensor is retired. Without effect when it is in use.
+ */
+export function reusePlace(placeId: string, { member, clock }: By): Promise<void> {
+  return inTransaction(async () => {
+    const place = await Place.findByPk(placeId, { include: 'sensor' })
+    if (!place) throw new AppError('not_found', 'There is no such place.')
+    if (place.retiredAt === null) return
+    if (!place.sensor || place.sensor.retiredAt !== null) {
+      throw new AppError('conflict', `Its sensor, ${place.sensor?.name ?? 'unknown'}, is retired. Take that into use again first.`)
+    }
+    await place.update({ retiredAt: null })
+    await addFoundryEvent(
+      { type: 'place', id: placeId, name: place.name },
+      { kind: 'place in use again', by: member, at: clock.now(), text: `Place ${place.name} taken into use again.` },
+    )
+  })
+}
+
+function changeText(name: string, since: AirSince | null): string {
+  if (since === null) return `Place ${name} renamed.`
+  return since === 'now' ? `Place ${name} changed, from now on.` : `Place ${name} corrected; what hangs there was worked out again.`
+}
+
+async function keepFormerAir(place: Place, fans: readonly Fans[], until: number): Promise<void> {
+  const { airSpeedFansOnMps, airSpeedFansOffMps, sensorId } = place
+  const fanHours = fans.map(({ weekday, onMinute, offMinute }) => ({ weekday, onMinute, offMinute }))
+  await FormerAir.create({ id: newId(until), placeId: place.id, until, airSpeedFansOnMps, airSpeedFansOffMps, sensorId, fanHours })
+}
+
+async function placeInUse(placeId: string): Promise<Place> {
+  const place = await Place.findByPk(placeId)
+  if (!place) throw new AppError('not_found', 'There is no such place.')
+  if (place.retiredAt !== null) throw new AppError('conflict', `${place.name} is retired.`)
+  return place
+}
+
+async function requireFreeName(name: string, ownId: string | null): Promise<void> {
+  const other = await Place.findOne({ where: { name } })
+  if (!other || other.id === ownId) return
+  refuseField(
+    'name',
+    other.retiredAt === null
+      ? `There is a ${name} already.`
+      : `A retired place is called ${name}. Take it into use again, or choose another name.`,
+  )
+}
+
+async function requireSensor(sensorId: number): Promise<Sensor> {
+  const sensor = await Sensor.findByPk(sensorId)
+  if (!sensor || sensor.retiredAt !== null) refuseField('sensorId', 'Choose a sensor that is in use.')
+  return sensor
+}
+
+type Air = { name: string; airSpeedFansOnMps: number; airSpeedFansOffMps: number }
+
+/** A place as the history tells it. */
+function inWords({ name, airSpeedFansOnMps, airSpeedFansOffMps }: Air, fans: readonly Fans[], sensor: string) {
+  const spans = fans.map(({ weekday, onMinute, offMinute }) => ({ weekday, fromMinute: onMinute, toMinute: offMinute }))
+  return { name, airSpeedFansOnMps, airSpeedFansOffMps, sensor, fans: weekWords(spans, 'never on') }
+}

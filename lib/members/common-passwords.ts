@@ -1,0 +1,46 @@
+/**
+ * The commonest passwords of at least 12 characters, in small letters; those that only repeat a piece of themselves are left out.
+ *
+ * @source password list of @zxcvbn-ts/language-common 4.1.3 (MIT licence, copyright 2012-2016 Dan Wheeler and Dropbox, Inc., 2021
+ * @zxcvbn-ts), which counts leaked passwords: every entry of this length.
+ */
+export const COMMON_PASSWORDS: ReadonlySet<string> = new Set(
+  `
+010203040506 012345678910 014702580369 01telemike01 050605rostik 102030405060 1111111111zz 111222333000 111222333444555
+112233445566 122333444455555 123123qweqwe 123321456654 123321qweewq 123456654321 12345677654321 123456782000 1234567887654321
+123456789000 12345678900987654321 123456789012 1234567890987654321 1234567890qaz 1234567890qw 1234567890qwe 1234567890qwerty
+1234567890zzz 123456789101 123456789123 1234567892000 12345678987654321 123456789987654321 123456789aaa 123456789abc
+123456789asd 123456789qaz 123456789qqq 123456789qwe 123456789qwer 123456789qwerty 123456789zxc 1234567qwertyu 123456qwerty
+123456zxcvbn 1234qwerasdf 1234qwerasdfzxcv 123ewqasdcxz 123qwe456rty 123qweasdzxc 123qwerty123 12qw34er56ty 159753456852
+193570356033 19960610ilja 1a2a3a4a5a6a 1a2s3d4f5g6h 1q2w3e4r5t6y 1qa2ws3ed4rf 1qa2ws3ed4rf5tg 1qaz2wsx3edc 1qaz2wsx3edc4rfv
+1qazxsw23edc 1qazxsw23edcvfr4 23176djivanfros 23wkoa0fp78dk 31217221027711 32615948worms 41d8cd98f00b 420842084208555
+4815162342lf 4815162342lost 541233432442 59382113kevinp 6215mila6215 742617000027 89063032220m 89231243658s 89876065093rax
+89semtsriuty a1s2d3f4g5h6 abc123456789 admin18533362 administrator aksjdlasdakj89879 alpha135792468 amadeusptfcor an83546921an13
+andrewjackie antananarivu anytimetoday asdfgh123456 asdfghjkl123 auckland2010 avrillavigne badiman28200 bhrh0h2oof6xbqjeh
+blacksonblon bltynbabrfwbz boy4u2ownnyc bpgjldsgjldthnf bullnuts2003 businessbabe cheeseburger chesterfield chickenwing101
+christopher1 civilization cjdthitycndj cnfc35762209 combat123654 configuratio construction contortionist corperfmonsy
+cosmopolitan counterstrike devilmaycry4 digitalprodu dkflbvbhjdbx dkflbvbhjdyf domainlock2005 edwardcullen entertainment
+fatima753357 finalfantasy findaupair007 fkmnthyfnbdf fktrcfylhjdbx fktrcfylhjdf fktrcfylhjdyf flvbybcnhfnjh foreveryoung
+frederiksberg fucktheworld fuckyoubitch fynfyfyfhbde gfhfktkjuhfv ghbdtnrfrltkf ghhh47hj7649 ghjatccbjyfk ghjcnjgbpltw
+ghjcnjgfhjkm ghjcnjqgfhjkm ghjcnjrdfibyj ghjnbdjcnjzybt ghtdtlvtldtl gjkysqgbpltw greenlantern gthtrfnbgjkt gtnhjpfdjlcr
+hd764nw5d7e1vb1 hd764nw5d7e1vbv hedimaptfcor iampurehaha2 iloveboobies ilovemyfamily ingodwetrust installdevic installsqlst
+intelligence international ipo54tj45uy856 iseedeadpeople jamesbond007 josephphone7 justinbieber ktjynsq40147 leavemealone
+lhbjkjubz2957704 lost4815162342 love777321777 lytdybrbdfvgbhf lytghjgtnhjdcr mailcreated5240 maprchem56458 massimiliano
+masterbaiting masterbating masturbation maurolarastefy mevefalkcakk michaeljackson minecraft123 minnesota_hp momsanaladventure
+morganstanley mortalkombat motherfucker msoracle32re msorcloledbr ne_e_pod_chehyl necronomicon needforspeed nemvxyheqdd5oqxyxyzi
+networkingpe newproject2004 nhbujyjvtnhbz nhecsyfujkjdt nhfdvfnjkju123 nhfycajhvths nick1234-rem936 nightcrawler nondriversig
+ntktdbpjh1994 olcrackmaster ontheoutside p030710p$e4o paraklast1974 password1234 passwordassword passwordstandard peanutbutter
+pfqwtd27121988 philadelphia playstation2 playstation3 polniypizdec0211 polniypizdec1102 polniypizdec110211 pornographic
+professional ptybnxtvgbjy punksnotdead q1w2e3r4t5y6 q1w2e3r4t5y6u7 q1w2e3r4t5y6u7i8 q1w2e3r4t5y6u7i8o9p0 qawsedrftgyh
+qaz123wsx456 qazwsx123456 qazwsxedc123 qazwsxedcrfv qazwsxedcrfvtgb qazxswedc123 qazxswedcvfr qwaszxerdfcv qweasdzxc123
+qwerasdfzxcv qwertasdfgzxcvb qwerty123456 qwerty123456789 qwertyasdfgh qwertyuiop10 qwertyuiop12 qwertyuiop123 qwertyuiop12345
+qwertyytrewq residentevil rfnthbyf1988 ronaldinho10 sanfrancisco satisfaction saun24865709 scandinavian schoolgirlie
+sdicmt7seytn seemnemaailm sojdlg123aljg sonnenschein sonyericsson specialinsta stickdaddy77 stinkyfinger stratocaster
+supernatural systemofadown temppassword thecakeisalie ticketmaster transformers unbelievable vanyarespekt vfvfvskfhfve
+vladimirovna warhammer40k wazzkaprivet websolutions websolutionssu webuivalidat weihnachtsbau weihnachtsbaum whosyourdaddy
+xxxp455w0rd5 z1x2c3v4b5n6 z1x2c3v4b5n6m7 zaq12wsxcde3 zaq1xsw2cde3 zaqwsxcderfv zcfvfzkexifz zqjphsyf6ctifgu zxcasdqwe123
+zxcvbn123456 zxcvbnm123456789 zxcvbnmmnbvcxz
+`
+    .trim()
+    .split(/\s+/),
+)

@@ -1,0 +1,62 @@
+import { QueryTypes } from 'sequelize'
+import type { SensorKind } from '@/lib/room/sensor-input'
+import { database, Place } from '@/models'
+
+export type TokenRow = {
+  id: string
+  sensorId: number
+  /** Null: Kilnward itself. */
+  issuedBy: string | null
+  issuedAt: number
+  lastUsedAt: number | null
+  revokedAt: number | null
+}
+
+export type SensorRow = {
+  id: number
+  name: string
+  kind: SensorKind
+  retiredAt: number | null
+  newest: { measuredAt: number; airTempC: number; relHumidityPct: number } | null
+  /** Names of the places in use that it serves. */
+  places: string[]
+  tokens: TokenRow[]
+}
+
+type Row = {
+  id: number
+  name: string
+  kind: SensorKind
+  retiredAt: number | null
+  measuredAt: number | null
+  airTempC: number | null
+  relHumidityPct: number | null
+}
+
+/** The sensors, each with its newest reading, the places it serves and its tokens; never a token's secret. */
+export async function loadSensorList(): Promise<{ inUse: SensorRow[]; retired: SensorRow[] }> {
+  const [sensors, places, tokens] = await Promise.all([
+    database.query<Row>(
+      `SELECT s.id, s.name, s.kind, s.retired_at AS retiredAt,
+              r.measured_at AS measuredAt, r.air_temp_c AS airTempC, r.rel_humidity_pct AS relHumidityPct
+         FROM sensors s
+         LEFT JOIN readings r ON r.sensor_id = s.id AND r.measured_at = (SELECT max(measured_at) FROM readings WHERE sensor_id = s.id)
+        ORDER BY s.name`,
+      { type: QueryTypes.SELECT },
+    ),
+    Place.findAll({ where: { retiredAt: null }, order: [['name', 'ASC']] }),
+    database.query<TokenRow>(
+      `SELECT t.id, t.sensor_id AS sensorId, m.name AS issuedBy, t.created_at AS issuedAt, t.last_used_at AS lastUsedAt,
+              t.revoked_at AS revokedAt
+         FROM sensor_tokens t LEFT JOIN members m ON m.id = t.created_by ORDER BY t.created_at DESC, t.id`,
+      { type: QueryTypes.SELECT },
+    ),
+  ])
+  const rows = sensors.map(({ measuredAt, airTempC, relHumidityPct, ...sensor }): SensorRow => ({
+    ...sensor,
+    newest: measuredAt === null || airTempC === null || relHumidityPct === null ? null : { measuredAt, airTempC, relHumidityPct },
+    places: places.filter(({ sensorId }) => sensorId === sensor.id).map(({ name }) => name),
+    tokens: tokens.filter(({ sensorId }) => sensorId === sensor.id),
+  }))
+  return { inUse: rows.filter(({ retiredAt }) => retiredAt === null), retired: rows.filter(({ retiredAt }) => retiredAt !== null) }
+}

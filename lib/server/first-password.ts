@@ -1,0 +1,16 @@
+import { randomInt } from 'node:crypto'
+
+/** Small letters and digits, without those that are taken for each other on paper or by ear: 0 o, 1 l i, b p, m n, u v. */
+const CHARACTERS = 'acdefghjkqrstwxyz2345679'
+const GROUPS = 4
+const GROUP_LENGTH = 4
+
+/**
+ * A random first password, to be read out or written down once: four groups of four, some 73 bits.
+ *
+ * @example makeFirstPassword() // => 'kt4x-9dwe-h7rc-2qsa'
+ */
+export function makeFirstPassword(): string {
+  const group = () => Array.from({ length: GROUP_LENGTH }, () => CHARACTERS[randomInt(CHARACTERS.length)]).join('')
+  return Array.from({ length: GROUPS }, group).join('-')
+}

@@ -1,0 +1,138 @@
+import { randomUUID } from 'node:crypto'
+import type * as Factories from '@/tests/factories/shell-room'
+import type { FakePushService } from '@/tests/setup/fake-push-service'
+import type { Client } from '@/tests/setup/client'
+
+export type Scene = {
+  foundry: Factories.TestFoundry
+  factories: typeof Factories
+  service: FakePushService
+  operator: Client
+  anonymous: Client
+  sensorToken: string
+  /** Asks a door by its operation id; the answer is checked against the description. */
+  ask: (client: Client, operationId: string, asked?: Asked) => Promise<Response>
+}
+export type Asked = { params?: Record<string, string>; headers?: Record<string, string>; body?: unknown }
+
+const operation = (body: Record<string, unknown> = {}) => ({ operationId: randomUUID(), ...body })
+
+/** A tree with its first coat on, and the body that put it there. */
+async function dippedTree({ factories, foundry, operator, ask }: Scene) {
+  const { id } = await factories.buildTree(foundry)
+  const body = operation({
+    bathId: foundry.faceBathId,
+    stucco: 'fine',
+    way: 'dip',
+    drainSeconds: 60,
+    dippedAt: Date.now() - 60_000,
+    trees: [{ treeId: id, coatNumber: 1, placeId: foundry.placeId }],
+  })
+  const answer = (await (await ask(operator, 'logDips', { body })).json()) as { coats: { coatId: string }[] }
+  return { id, body, coatIds: answer.coats.map(({ coatId }) => coatId) }
+}
+
+async function subscribe({ service, operator, ask }: Scene) {
+  const listed = (await (await ask(operator, 'listPushDevices')).json()) as { publicKey: string }
+  const { endpoint, keys } = service.subscribe(listed.publicKey)
+  const body = { endpoint, keys, vapidPublicKey: listed.publicKey, scope: 'every tree', label: 'Phone' }
+  await ask(operator, 'savePushDevice', { body })
+  return body
+}
+
+/**
+ * How each door is brought to give every answer that its description promises. A door without a scene fails its test,
+ * and so does a promised answer that no scene brings about.
+ */
+export const SCENES: Record<string, (scene: Scene) => Promise<void>> = {
+  sendReadings: async ({ ask, anonymous, sensorToken }) => {
+    const headers = { authorization: `Bearer ${sensorToken}` }
+    const readings = [
+      { measuredAt: new Date().toISOString(), airTempC: 21.4, relHumidityPct: 52.5 },
+      { measuredAt: Date.now(), airTempC: 214, relHumidityPct: 52.5 },
+    ]
+    await ask(anonymous, 'sendReadings', { headers, body: { readings } })
+    await ask(anonymous, 'sendReadings', { headers, body: { readings: [] } })
+    await ask(anonymous, 'sendReadings', { body: { readings } })
+  },
+  typeReading: async ({ ask, operator, foundry }) => {
+    await ask(operator, 'typeReading', { body: operation({ sensorId: foundry.sensorId, airTempC: 20.5, relHumidityPct: 55 }) })
+    await ask(operator, 'typeReading', { body: operation({ sensorId: 4040, airTempC: 20.5, relHumidityPct: 55 }) })
+  },
+  readQueue: async (scene) => {
+    const { ask, operator } = scene
+    await dippedTree(scene)
+    // The minute is part of the tag, and may turn between the two.
+    for (let status = 200; status !== 304;) {
+      const etag = (await ask(operator, 'readQueue')).headers.get('etag') ?? ''
+      ;({ status } = await ask(operator, 'readQueue', { headers: { 'if-none-match': etag } }))
+    }
+  },
+  logDips: async (scene) => {
+    const { body } = await dippedTree(scene)
+    await scene.ask(scene.operator, 'logDips', { body })
+    // Another operation for the same coat.
+    await scene.ask(scene.operator, 'logDips', { body: { ...body, operationId: randomUUID() } })
+  },
+  undoDips: async (scene) => {
+    const { coatIds } = await dippedTree(scene)
+    await scene.ask(scene.operator, 'undoDips', { body: operation({ coatIds }) })
+    await scene.ask(scene.operator, 'undoDips', { body: operation({ coatIds }) })
+  },
+  holdTree: async ({ ask, operator, factories, foundry }) => {
+    const params = { treeId: (await factories.buildTree(foundry)).id }
+    await ask(operator, 'holdTree', { params, body: operation({ reason: 'Crack at the cup' }) })
+    await ask(operator, 'holdTree', { params, body: operation({ reason: 'Crack at the cup' }) })
+    await ask(operator, 'holdTree', { params, body: operation({ reason: '' }) })
+    await ask(operator, 'holdTree', { params: { treeId: randomUUID() }, body: operation({ reason: 'Crack at the cup' }) })
+  },
+  lookAtTree: async (scene) => {
+    const { id } = await dippedTree(scene)
+    await scene.ask(scene.operator, 'lookAtTree', { params: { treeId: id }, body: operation({ verdict: 'looks dry' }) })
+  },
+  moveTree: async ({ ask, operator, factories, foundry }) => {
+    const params = { treeId: (await factories.buildTree(foundry)).id }
+    const place = await factories.buildPlace({ sensorId: foundry.sensorId })
+    await ask(operator, 'moveTree', { params, body: operation({ placeId: place.id }) })
+  },
+  stirBath: async ({ ask, operator, foundry }) => {
+    const body = operation()
+    await ask(operator, 'stirBath', { params: { bathId: foundry.faceBathId }, body })
+    await ask(operator, 'stirBath', { params: { bathId: foundry.backupBathId }, body })
+  },
+  watchTree: async ({ ask, operator, factories, foundry }) => {
+    await ask(operator, 'watchTree', { params: { treeId: (await factories.buildTree(foundry)).id } })
+    await ask(operator, 'watchTree', { params: { treeId: randomUUID() } })
+  },
+  unwatchTree: async ({ ask, operator, factories, foundry }) => {
+    await ask(operator, 'unwatchTree', { params: { treeId: (await factories.buildTree(foundry)).id } })
+  },
+  listPushDevices: async (scene) => {
+    await subscribe(scene)
+    await scene.ask(scene.operator, 'listPushDevices')
+  },
+  savePushDevice: async (scene) => {
+    const body = await subscribe(scene)
+    await scene.ask(scene.operator, 'savePushDevice', { body })
+    await scene.ask(scene.operator, 'savePushDevice', { body: { ...body, endpoint: 'https://192.168.1.1/push' } })
+  },
+  removePushDevice: async (scene) => {
+    const { endpoint } = await subscribe(scene)
+    await scene.ask(scene.operator, 'removePushDevice', { body: { endpoint } })
+  },
+  testPush: async (scene) => {
+    const { endpoint } = await subscribe(scene)
+    for (let count = 0; count < 7; count += 1) await scene.ask(scene.operator, 'testPush', { body: { endpoint } })
+    await scene.ask(scene.operator, 'testPush', { body: { id: randomUUID() } })
+  },
+  readHealth: async ({ ask, anonymous }) => {
+    await ask(anonymous, 'readHealth')
+    const { database } = await import('@/models')
+    await database.query('ALTER TABLE job_runs RENAME TO job_runs_away')
+    await ask(anonymous, 'readHealth')
+    await database.query('ALTER TABLE job_runs_away RENAME TO job_runs')
+  },
+  describeApi: async ({ ask, anonymous }) => {
+    await ask(anonymous, 'describeApi')
+  },
+}
