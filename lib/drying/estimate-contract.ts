@@ -100,10 +100,10 @@ export const estimateInput = z
     if (end !== undefined && end > longest) complain(['until'], `until lies at most ${LONGEST_DAYS} days after the dip.`)
     for (const [index, at] of value.at.entries()) {
       if (at > (end ?? longest))
-        complain(
+        {complain(
           ['at', index],
           end === undefined ? `An instant lies at most ${LONGEST_DAYS} days after the dip.` : 'This lies after until.',
-        )
+        )}
     }
   })
 export type EstimateInput = z.output<typeof estimateInput>

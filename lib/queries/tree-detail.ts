@@ -10,7 +10,6 @@ import { loadFloor, type Floor } from '@/lib/queries/floor'
 import { loadReadingsInRange } from '@/lib/queries/load-climate'
 import { queueTree } from '@/lib/queue/assemble'
 import { humidityOf, type AirStretch } from '@/lib/room/climate'
-import { recipeCoatOf } from '@/lib/trees/assess'
 import type { DerivedTree } from '@/lib/trees/derive'
 import type { CoatRow, TreeDetail } from '@/lib/trees/detail-contract'
 import { clockStart } from '@/lib/trees/facts'
@@ -219,7 +218,7 @@ async function coatRows(derived: DerivedTree, floor: Floor, now: number): Promis
 function curveOf(derived: DerivedTree, floor: Floor, now: number): TreeDetail['curve'] {
   const { facts, newest, call } = derived
   if (!newest || !call) return null
-  const moistureTarget = recipeCoatOf(facts, newest.number)?.moistureTarget ?? 0.1
+  const { moistureTarget } = newest
   const start = clockStart(newest)
   const dryAt = call.safeAt ?? call.likelyAt ?? now + 12 * millisecondsInHour
   const until = dryAt + Math.max(millisecondsInHour, (dryAt - start) * 0.15)

@@ -1,10 +1,10 @@
 import { TZDate } from '@date-fns/tz'
 import { wetBulbDepressionK } from '@/lib/drying/room-factor'
+import { DEFAULT_MOISTURE_TARGET } from '@/lib/drying/recipe-defaults'
 import type { Queue, QueueBath, QueueRoom, QueueTree } from '@/lib/queue/contract'
 import type { RoomClimate } from '@/lib/room/climate'
 import { dryingPull } from '@/lib/room/drying-pull'
 import { localDay, nextOpenInstant, type Shift } from '@/lib/schedule/shifts'
-import { recipeCoatOf } from '@/lib/trees/assess'
 import type { DerivedTree } from '@/lib/trees/derive'
 import type { PlaceFacts } from '@/lib/trees/facts'
 
@@ -25,7 +25,7 @@ export function queueTree(tree: DerivedTree, places: ReadonlyMap<string, PlaceFa
     newestCoat: newest ? { id: newest.id, number: newest.number, dippedAt: newest.dippedAt } : null,
     coats: sectionCoats(tree),
     openDry: call && !isDry ? 1 - call.moistureRatio : null,
-    openTarget: 1 - ((newest ? recipeCoatOf(facts, newest.number)?.moistureTarget : undefined) ?? 0.1),
+    openTarget: 1 - (newest?.moistureTarget ?? DEFAULT_MOISTURE_TARGET),
     moistureRatio: call?.moistureRatio ?? null,
     next: next
       ? {

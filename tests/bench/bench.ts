@@ -32,7 +32,7 @@ async function serve(folder: string, dataDir: string) {
         () => false,
       )
     )
-      return { ...program, baseUrl }
+      {return { ...program, baseUrl }}
     await new Promise((resolve) => setTimeout(resolve, 100))
   }
 }

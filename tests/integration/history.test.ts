@@ -126,7 +126,7 @@ describe('loadHistory', () => {
       const [sql, options] = args
       if (typeof sql === 'string' && /FROM (?:tree|foundry)_events/.test(sql)) asked.push(withValues(sql, options?.replacements))
       return query.apply(database, args)
-    } as typeof query)
+    })
     const older = (await page()).older
     for (const memberId of [null, ines.id, 'kilnward']) {
       for (const tag of [null, tags[0]!]) {

@@ -87,7 +87,7 @@ const near = (valid: unknown) =>
       for (const { path, put, how, key } of changes) {
         if (how === 'key') keys = [...keys, { key, put }]
         else if (pathsOf(body).some((known) => known.join('/') === path.join('/')))
-          body = changedAt(body, path, how === 'remove' ? 'remove' : { put })
+          {body = changedAt(body, path, how === 'remove' ? 'remove' : { put })}
       }
       return keys.reduce((text, { key, put }) => withKey(text, key, put), JSON.stringify(body) ?? '')
     })
