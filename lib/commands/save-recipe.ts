@@ -75,7 +75,6 @@ export function addRecipeVersion(
     const calibratedAt = areNeedsSame((known.get(from.id) ?? []).map(coatCells), cells) ? from.calibratedAt : null
     const version = newest.version + 1
     const versionId = await addVersion(recipeId, version, { note: input.note, coats: input.coats, calibratedAt }, { member, now })
-    await stopBeingDemo(recipe, member)
     await addFoundryEvent(
       { type: 'recipe', id: recipeId, name: recipe.name },
       {
@@ -145,7 +144,7 @@ async function findRecipe(recipeId: string): Promise<Recipe> {
   return recipe
 }
 
-/** Whoever works on a demo recipe makes it the foundry's own: it stays when the demo goes. */
+/** Whoever changes a demo recipe itself makes it the foundry's own; what is built on it the demo's removal finds by itself. */
 async function stopBeingDemo(recipe: Recipe, member: Actor): Promise<void> {
   if (recipe.isDemo && !member.isDemo) await recipe.update({ isDemo: false })
 }

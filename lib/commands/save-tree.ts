@@ -119,8 +119,6 @@ async function addPiece(
   }
   if (input.isRecast && casts.length === 0) refuseField(field, `There is no edition ${input.editionNumber} of ${title} to recast.`)
   const id = newId(now)
-  // Whoever builds on a demo work makes it the foundry's own: it stays when the demo goes.
-  if (work.isDemo && !member.isDemo) await work.update({ isDemo: false })
   await Piece.create({ id, sectionId: section.id, editionNumber: input.editionNumber, recastOf: casts.at(-1)?.id ?? null, createdAt: now })
   return id
 }

@@ -110,7 +110,7 @@ async function requireRoom(workId: string, editionSize: number): Promise<void> {
   }
 }
 
-/** Whoever works on a demo work makes it the foundry's own: it stays when the demo goes. */
+/** Whoever changes a demo work itself makes it the foundry's own; what is built on it the demo's removal finds by itself. */
 async function stopBeingDemo(work: Work, member: Actor): Promise<void> {
   if (work.isDemo && !member.isDemo) await work.update({ isDemo: false })
 }

@@ -99,11 +99,12 @@ export const estimateInput = z
     const longest = value.dippedAt + LONGEST_DAYS * millisecondsInDay
     if (end !== undefined && end > longest) complain(['until'], `until lies at most ${LONGEST_DAYS} days after the dip.`)
     for (const [index, at] of value.at.entries()) {
-      if (at > (end ?? longest))
-        {complain(
+      if (at > (end ?? longest)) {
+        complain(
           ['at', index],
           end === undefined ? `An instant lies at most ${LONGEST_DAYS} days after the dip.` : 'This lies after until.',
-        )}
+        )
+      }
     }
   })
 export type EstimateInput = z.output<typeof estimateInput>

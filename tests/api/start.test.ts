@@ -47,8 +47,8 @@ function start(dataDir: string, port: number, settings: Record<string, string> =
   return program
 }
 
-async function until(isTrue: () => boolean | Promise<boolean>, what: string, milliseconds = 60_000): Promise<void> {
-  const deadline = Date.now() + milliseconds
+async function until(isTrue: () => boolean | Promise<boolean>, what: string, withinMs = 60_000): Promise<void> {
+  const deadline = Date.now() + withinMs
   while (!(await isTrue())) {
     if (Date.now() > deadline) throw new Error(`${what} did not come:\n${running.map((program) => program.output()).join('\n---\n')}`)
     await sleep(50)
@@ -225,9 +225,9 @@ describe('the web server alone', () => {
     const member = await seedMember('operator')
     const client = await signIn(server.baseUrl, member.email, member.password)
     const acknowledged: string[] = []
-    let isOver = false
+    const load = { isOver: false }
     const lane = async () => {
-      while (!isOver) {
+      while (!load.isOver) {
         const operationId = randomUUID()
         const body = { operationId, sensorId: foundry.sensorId, airTempC: 21, relHumidityPct: 50 }
         const answer = await client.send('POST', '/api/v1/readings/typed', body).catch(() => null)
@@ -241,7 +241,7 @@ describe('the web server alone', () => {
     server.process.kill('SIGTERM')
     await server.exited
     const tookMs = performance.now() - began
-    isOver = true
+    load.isOver = true
     await Promise.all(lanes)
     expect(tookMs).toBeLessThan(5000)
     const kept = new Set((await Operation.findAll({ attributes: ['operationId'] })).map((row) => row.operationId))

@@ -31,8 +31,9 @@ async function serve(folder: string, dataDir: string) {
         () => true,
         () => false,
       )
-    )
-      {return { ...program, baseUrl }}
+    ) {
+      return { ...program, baseUrl }
+    }
     await new Promise((resolve) => setTimeout(resolve, 100))
   }
 }

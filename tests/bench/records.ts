@@ -1,3 +1,4 @@
+import type { TestFoundry } from '@/tests/factories/shell-room'
 import { copyFileSync, mkdirSync, writeFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { openPlainHandle } from '@/db/plain-handle'
@@ -66,7 +67,7 @@ function airAt(at: number, sensorId: number): { airTempC: number; relHumidityPct
 }
 
 type Shop = {
-  foundry: Awaited<ReturnType<typeof import('@/tests/factories/shell-room').buildFoundry>>
+  foundry: TestFoundry
   recipeVersionId: string
   placeIds: string[]
   member: SeededMember

@@ -170,18 +170,18 @@ describe('a further version', () => {
       extra: { fields: [{ path: 'coats.1.bathId' }] },
     })
   })
-
-  it('makes a demo recipe the foundry’s own, unless one of the demo’s people makes it', async () => {
-    const asDemo = { member: { ...ines, isDemo: true }, clock: stoppedClock() }
-    const { recipeId } = await createRecipe(input(), asDemo)
-    await addRecipeVersion(recipeId, versionInput(), asDemo)
-    expect((await Recipe.findByPk(recipeId))!.isDemo).toBe(true)
-    await addRecipeVersion(recipeId, versionInput({ from: 2, follows: 2, coats: [face(), seal()] }), by())
-    expect((await Recipe.findByPk(recipeId))!.isDemo).toBe(false)
-  })
 })
 
 describe('a recipe', () => {
+  it('of the demo becomes the foundry’s own when somebody changes it, unless it is one of the demo’s people', async () => {
+    const asDemo = { member: { ...ines, isDemo: true }, clock: stoppedClock() }
+    const { recipeId } = await createRecipe(input({ name: 'Shown' }), asDemo)
+    await renameRecipe(recipeId, 'Shown to guests', asDemo)
+    expect((await Recipe.findByPk(recipeId))!.isDemo).toBe(true)
+    await renameRecipe(recipeId, 'Ours', by())
+    expect((await Recipe.findByPk(recipeId))!.isDemo).toBe(false)
+  })
+
   it('takes another name, but not one that is taken', async () => {
     const one = await createRecipe(input({ name: 'Reliefs' }), by())
     const other = await createRecipe(input({ name: 'Busts' }), by())

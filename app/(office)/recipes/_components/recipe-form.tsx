@@ -3,6 +3,7 @@
 import { useRef, useState } from 'react'
 import { Field } from '@/app/_components/field'
 import { Key, KeyLink } from '@/app/_components/key'
+import { useUnits } from '@/app/_components/units-context'
 import { FormMessage } from '@/app/(office)/_components/form-message'
 import { useKeptForm } from '@/app/(office)/_components/use-kept-form'
 import { CoatFields, CoatFieldsHead } from '@/app/(office)/recipes/_components/coat-fields'
@@ -10,7 +11,6 @@ import { DifferenceMark } from '@/app/(office)/recipes/_components/difference-ma
 import { Differences } from '@/app/(office)/recipes/_components/differences'
 import { RecipeSection } from '@/app/(office)/recipes/_components/recipe-section'
 import { COAT_KINDS, STUCCOS } from '@/lib/coats/vocabulary'
-import type { TempUnit } from '@/lib/format/units'
 import type { BathChoice } from '@/lib/queries/recipe-detail'
 import { areNeedsSame, coatCells, coatsInShort, type VersionCoat } from '@/lib/recipes/coat-cells'
 import { cellsOfValues, coatValuesOf, nextCoatIndex, startingCoat, startingNeed, type CoatValues } from '@/lib/recipes/recipe-form-values'
@@ -28,19 +28,19 @@ export type RecipeFormProps = {
   coats: readonly VersionCoat[]
   /** For a further version: the newest one, which it follows, and the one whose coats fill the form. */
   versions: { newest: Version; from: Version } | null
-  temp: TempUnit
   cancelPath: string
 }
 
 type Row = { key: number; coat: CoatValues }
 
 /** The form of a recipe or of a further version: its coats as rows, the shell they build, and what differs from the version before. */
-export function RecipeForm({ action, baths, coats, versions, temp, cancelPath }: RecipeFormProps) {
+export function RecipeForm({ action, baths, coats, versions, cancelPath }: RecipeFormProps) {
   const nextKey = useRef(MOST_COATS)
   const [rows, setRows] = useState<Row[]>(() => firstRows(coats, baths))
   // Complaints come by place in the list as it was sent; a row that moves takes its own along.
   const [sentKeys, setSentKeys] = useState<number[]>([])
   const form = useKeptForm(action)
+  const { temp } = useUnits()
   const values = rows.map(({ coat }) => coat)
   const cells = values.map((coat) => cellsOfValues(coat, baths))
   const drawn = values.flatMap((coat) => {

@@ -13,7 +13,7 @@ import '@/app/(office)/recipes/recipes.css'
 export const metadata: Metadata = { title: 'Make a recipe' }
 
 export default async function NewRecipePage({ searchParams }: PageProps<'/recipes/new'>) {
-  const member = await requireMemberPage('recipes', '/recipes/new')
+  await requireMemberPage('recipes', '/recipes/new')
   const { from } = await searchParams
   const [baths, recipes] = await Promise.all([loadBathChoices(), loadRecipeList()])
   const chosen = recipes.find((recipe) => recipe.id === from) ?? null
@@ -55,7 +55,6 @@ export default async function NewRecipePage({ searchParams }: PageProps<'/recipe
         baths={baths}
         coats={chosen?.coats ?? []}
         versions={null}
-        temp={member.units.temp}
         cancelPath="/recipes"
       />
     </>

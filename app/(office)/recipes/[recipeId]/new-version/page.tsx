@@ -12,7 +12,7 @@ export const metadata: Metadata = { title: 'New version' }
 export default async function NewVersionPage({ params, searchParams }: PageProps<'/recipes/[recipeId]/new-version'>) {
   const { recipeId } = await params
   const path = `/recipes/${encodeURIComponent(recipeId)}`
-  const member = await requireMemberPage('recipes', `${path}/new-version`)
+  await requireMemberPage('recipes', `${path}/new-version`)
   const [recipe, baths, { from: asked }] = await Promise.all([loadRecipeDetail(recipeId), loadBathChoices(), searchParams])
   const newest = recipe?.versions[0]
   if (recipe === null || newest === undefined) notFound()
@@ -34,7 +34,6 @@ export default async function NewVersionPage({ params, searchParams }: PageProps
         baths={baths}
         coats={from.coats}
         versions={{ newest: plain(newest), from: plain(from) }}
-        temp={member.units.temp}
         cancelPath={path}
       />
     </>
