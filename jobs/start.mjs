@@ -1,11 +1,6 @@
 // `npm start`: from a fresh checkout to an open Kilnward in one command. Plain Node, because it runs before anything is installed.
-<<<<<<< HEAD
 import { spawn } from 'node:child_process'
-import { createECDH, randomBytes } from 'node:crypto'
-=======
-import { spawn, spawnSync } from 'node:child_process'
 import { createECDH, randomBytes, randomInt } from 'node:crypto'
->>>>>>> setup
 import { chmodSync, closeSync, existsSync, mkdirSync, openSync, readFileSync, renameSync, rmSync, writeFileSync } from 'node:fs'
 import { createServer } from 'node:net'
 import { dirname, join, resolve } from 'node:path'
@@ -23,15 +18,10 @@ const NEXT = 'node_modules/next/dist/bin/next'
 const TSX = ['--import', 'tsx']
 
 const isDev = process.argv.includes('--dev')
-<<<<<<< HEAD
-/** Set once the data folder is ours. */
-let lock
-=======
 /** A new database stays empty, for a foundry of one's own. */
 const isEmpty = process.argv.includes('--empty')
-const lock = { pid: process.pid, port: 0, children: {} }
-let lockFile
->>>>>>> setup
+/** Set once the data folder is ours. */
+let lock
 let isStopping = false
 
 /** Lines for a person; events of the program itself go to stderr as JSON. */

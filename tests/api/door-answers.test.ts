@@ -26,11 +26,13 @@ beforeAll(async () => {
   const foundry = await factories.buildFoundry()
   const member = await seedMember('operator')
   const clock = { now: () => Date.now() }
-  const { token } = await issueSensorToken({ sensorId: foundry.sensorId }, { member: null, clock })
+  const { token } = await issueSensorToken({ sensorId: foundry.sensorId }, { member, clock })
   const anonymous = newClient(server.baseUrl)
   document = (await (await anonymous.fetch('/api/v1/openapi.json')).json()) as OpenApiDocument
   const operator = await signIn(server.baseUrl, member.email, member.password)
-  scene = { foundry, factories, service, operator, anonymous, sensorToken: token, ask }
+  const boss = await seedMember('owner')
+  const owner = await signIn(server.baseUrl, boss.email, boss.password)
+  scene = { foundry, factories, service, operator, owner, anonymous, dataDir: server.dataDir, sensorToken: token, ask }
 })
 afterAll(() => Promise.all([server.stop(), stopService()]))
 

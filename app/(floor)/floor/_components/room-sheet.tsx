@@ -126,7 +126,7 @@ function TypedReading({ room, onSaid }: { room: QueueRoom; onSaid: (words: strin
 
   const wrong = [errors.airTempC, errors.relHumidityPct].filter((error) => error !== undefined)
   const errorId = `typed-${room.sensorId}-error`
-  const dial = (label: string, unit: string, value: string, isWrong: boolean, onChange: (text: string) => void) => (
+  const dial = (label: string, sign: string, value: string, isWrong: boolean, onChange: (text: string) => void) => (
     <label className="wall-dial" data-wrong={isWrong}>
       <span>{label}</span>
       <span>
@@ -138,7 +138,7 @@ function TypedReading({ room, onSaid }: { room: QueueRoom; onSaid: (words: strin
           aria-describedby={errorId}
           onChange={(event) => onChange(event.target.value)}
         />
-        <small className="num">{unit}</small>
+        <small className="num">{sign}</small>
       </span>
     </label>
   )

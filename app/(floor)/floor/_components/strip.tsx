@@ -82,10 +82,10 @@ export function Strip({ queue, now, memberName, onRoom, onWho }: StripProps) {
         </span>
       </button>
       <Baths queue={queue} now={now} />
-      {queue.foundry.isDemoFeedOn && (
+      {(queue.foundry.isDemoFeedOn || (queue.foundry.hasDemoData && !queue.foundry.isDemo)) && (
         <div className="strip-cell strip-demo">
           <span>
-            Demo<span className="strip-wide"> feed</span>
+            Demo<span className="strip-wide"> {queue.foundry.isDemo ? 'feed' : 'data'}</span>
           </span>
         </div>
       )}
