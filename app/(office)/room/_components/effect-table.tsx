@@ -96,12 +96,13 @@ export function EffectTable({
 function LostWords({ lostMs }: { lostMs: number | null }) {
   if (lostMs === null) return <span className="text-soot">not known</span>
   if (Math.abs(lostMs) < LEAST_MS) return <span className="text-soot">none</span>
-  if (lostMs < 0)
+  if (lostMs < 0) {
     return (
       <span className="text-verdigris-ink">
         wins <span className="num">{roughDuration(lostMs)}</span>
       </span>
     )
+  }
   return <span className="num">{roughDuration(lostMs)}</span>
 }
 
