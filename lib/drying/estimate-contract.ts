@@ -98,13 +98,10 @@ export const estimateInput = z
     if (end !== undefined && end < value.dippedAt) complain(['until'], 'until lies before the dip.')
     const longest = value.dippedAt + LONGEST_DAYS * millisecondsInDay
     if (end !== undefined && end > longest) complain(['until'], `until lies at most ${LONGEST_DAYS} days after the dip.`)
+    const lastAt = end ?? longest
+    const tooLate = end === undefined ? `An instant lies at most ${LONGEST_DAYS} days after the dip.` : 'This lies after until.'
     for (const [index, at] of value.at.entries()) {
-      if (at > (end ?? longest)) {
-        complain(
-          ['at', index],
-          end === undefined ? `An instant lies at most ${LONGEST_DAYS} days after the dip.` : 'This lies after until.',
-        )
-      }
+      if (at > lastAt) complain(['at', index], tooLate)
     }
   })
 export type EstimateInput = z.output<typeof estimateInput>

@@ -177,7 +177,9 @@ export function chartLines(
     if (value === null) continue
     const isForecast = point.kind === 'forecast'
     const line = lines.at(-1)
-    const longest = before?.isTyped ? LONGEST_TYPED_JOIN_MS : LONGEST_JOIN_MS
+    // An hour for which it only held has no air of its own: what follows was not read.
+    const isTypedReading = before?.isTyped === true && before.airTempC !== null
+    const longest = isTypedReading ? LONGEST_TYPED_JOIN_MS : LONGEST_JOIN_MS
     const follows = before !== null && point.at - before.at <= longest
     if (line && follows && line.isForecast === isForecast) line.points.push({ at: point.at, ...value })
     else {

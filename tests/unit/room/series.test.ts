@@ -128,9 +128,12 @@ describe('the lines of a chart', () => {
     ])
   })
 
-  it('join over the hours for which a typed reading holds', () => {
-    const points = [point(-10, 1, { isTyped: true }), point(-1, 1, { isTyped: true })]
-    expect(chartLines(points, (each) => each.speed)).toHaveLength(1)
+  it('join from one typed reading to the next while it holds, and not from an hour for which one only held', () => {
+    const airTempC = { likely: 20, low: 20, high: 20 }
+    const read = [point(-10, 1, { isTyped: true, airTempC }), point(-1, 1, { isTyped: true, airTempC })]
+    expect(chartLines(read, (each) => each.airTempC)).toHaveLength(1)
+    const held = [point(-10, 1, { isTyped: true }), point(-1, 1, { isTyped: true, airTempC })]
+    expect(chartLines(held, (each) => each.speed)).toHaveLength(2)
   })
 
   it('begin the forecast at now', () => {

@@ -46,7 +46,7 @@ export function FigureChart({ frame, points, name, valueOf, band, step, value, u
               />
             )}
             <path
-              d={`M${path(line.points, (point) => point.likely)}${line.points.length === 1 ? 'h1' : ''}`}
+              d={`M${path(line.points, (point) => point.likely)}${line.points.length === 1 ? 'h6' : ''}`}
               className={line.isForecast ? 'value-line is-forecast' : 'value-line'}
             />
           </g>
