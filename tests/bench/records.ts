@@ -1,6 +1,7 @@
 import { copyFileSync, mkdirSync, writeFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { openPlainHandle } from '@/db/plain-handle'
+import type { TestFoundry } from '@/tests/factories/shell-room'
 import type { SeededMember } from '@/tests/setup/server'
 
 const MINUTE = 60_000
@@ -66,7 +67,7 @@ function airAt(at: number, sensorId: number): { airTempC: number; relHumidityPct
 }
 
 type Shop = {
-  foundry: Awaited<ReturnType<typeof import('@/tests/factories/shell-room').buildFoundry>>
+  foundry: TestFoundry
   recipeVersionId: string
   placeIds: string[]
   member: SeededMember
