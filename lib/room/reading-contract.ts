@@ -1,7 +1,5 @@
 import { z } from 'zod'
-
-/** The coldest and the hottest that a shell room can be, °C. */
-export const AIR_TEMP_LIMITS_C = { least: -10, most: 60 } as const
+import { AIR_TEMP_LIMITS_C, HUMIDITY_WORDS, REL_HUMIDITY_LIMITS_PCT } from '@/lib/room/air-limits'
 
 /** What a shell room's air can be; anything else is a fault of the sensor or a slip of the finger. */
 export const airTempC = z
@@ -9,11 +7,10 @@ export const airTempC = z
   .min(AIR_TEMP_LIMITS_C.least, 'A shell room is not colder than -10 °C.')
   .max(AIR_TEMP_LIMITS_C.most, 'A shell room is not hotter than 60 °C.')
 
-/** Sensors report a little over 100 % in saturated air, so 105 is the limit; the clock itself clamps to 0.5-100. */
 export const relHumidityPct = z
-  .number('Humidity is a number in %.')
-  .min(0, 'Humidity cannot be under 0 %.')
-  .max(105, 'Humidity cannot be over 105 %.')
+  .number(HUMIDITY_WORDS.notANumber)
+  .min(REL_HUMIDITY_LIMITS_PCT.least, HUMIDITY_WORDS.tooLow)
+  .max(REL_HUMIDITY_LIMITS_PCT.most, HUMIDITY_WORDS.tooHigh)
 
 /** An instant as ISO 8601 with a zone, or epoch milliseconds. */
 export const instant = z

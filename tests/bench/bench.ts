@@ -26,14 +26,11 @@ async function serve(folder: string, dataDir: string) {
   const program = startProgram([NEXT, 'start', '-H', '127.0.0.1', '-p', String(port)], env, folder)
   for (;;) {
     if (program.process.exitCode !== null) throw new Error(`The server ended:\n${program.output()}`)
-    if (
-      await fetch(baseUrl, { redirect: 'manual' }).then(
-        () => true,
-        () => false,
-      )
-    ) {
-      return { ...program, baseUrl }
-    }
+    const isUp = await fetch(baseUrl, { redirect: 'manual' }).then(
+      () => true,
+      () => false,
+    )
+    if (isUp) return { ...program, baseUrl }
     await new Promise((resolve) => setTimeout(resolve, 100))
   }
 }

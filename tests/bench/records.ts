@@ -2,6 +2,7 @@ import type { TestFoundry } from '@/tests/factories/shell-room'
 import { copyFileSync, mkdirSync, writeFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { openPlainHandle } from '@/db/plain-handle'
+import type { TestFoundry } from '@/tests/factories/shell-room'
 import type { SeededMember } from '@/tests/setup/server'
 
 const MINUTE = 60_000
