@@ -26,8 +26,9 @@ async function isLetIn(client: Client, { method, route, example }: Door): Promis
 
 async function letIn(client: Client, doors: readonly Door[]): Promise<string[]> {
   const open: string[] = []
-  for (const door of doors)
+  for (const door of doors) {
     if (await isLetIn(newClient(client.baseUrl, new Map(client.cookies)), door)) open.push(`${door.method} ${door.route}`)
+  }
   return open
 }
 

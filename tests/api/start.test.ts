@@ -37,18 +37,18 @@ const freePort = (): Promise<number> =>
 const OWN_SETTINGS = /^(NEXTAUTH_|VAPID_|PUSH_|DATA_DIR|HOST|PORT|UV_THREADPOOL_SIZE|NODE_ENV|NODE_OPTIONS|VITEST)/
 
 /** `npm start` as a person would run it: nothing set but the folder and the port. */
-function start(dataDir: string, port: number, settings: Record<string, string> = {}): Program {
+function start(dataDir: string, port: number, settings: Record<string, string> = {}, flags: readonly string[] = []): Program {
   const bare = Object.fromEntries(Object.entries(process.env).filter(([name]) => !OWN_SETTINGS.test(name)))
   // NODE_ENV is left to the program.
   // oxlint-disable-next-line typescript/no-unsafe-type-assertion -- the framework's type insists on NODE_ENV
   const env = { ...bare, DATA_DIR: dataDir, PORT: String(port), DEMO_FEED: 'off', ...settings } as unknown as NodeJS.ProcessEnv
-  const program = startProgram(['jobs/start.mjs'], env)
+  const program = startProgram(['jobs/start.mjs', ...flags], env)
   running.push(program)
   return program
 }
 
-async function until(isTrue: () => boolean | Promise<boolean>, what: string, milliseconds = 60_000): Promise<void> {
-  const deadline = Date.now() + milliseconds
+async function until(isTrue: () => boolean | Promise<boolean>, what: string, withinMs = 60_000): Promise<void> {
+  const deadline = Date.now() + withinMs
   while (!(await isTrue())) {
     if (Date.now() > deadline) throw new Error(`${what} did not come:\n${running.map((program) => program.output()).join('\n---\n')}`)
     await sleep(50)
@@ -120,6 +120,26 @@ describe('npm start', () => {
     expect(performance.now() - began).toBeLessThan(30_000)
     expect(isAlive(children.web)).toBe(false)
     expect(readFileSync(join(dataDir, 'secrets.json'), 'utf8')).toBe(secrets)
+  })
+
+  it('opens empty for a foundry of one’s own, and says where to go', async () => {
+    const [dataDir, port] = [newFolder(), await freePort()]
+    const program = start(dataDir, port, {}, ['--empty'])
+    await opens(program)
+    expect(program.output()).toContain(`Open http://localhost:${port} to set up your foundry.`)
+    expect(program.output()).not.toMatch(/Sign in as|demo|setup code/i)
+    const response = await fetch(`http://127.0.0.1:${port}/floor`, { redirect: 'manual' })
+    expect(response.headers.get('location')).toBe('/first-run')
+    // The worker has nothing to watch yet, and lives.
+    await until(async () => JSON.stringify(await health(port)) === '{"status":"ok"}', 'A pulse of the worker')
+  })
+
+  it('prints a code for the first owner where others can reach it', async () => {
+    const [dataDir, port] = [newFolder(), await freePort()]
+    const program = start(dataDir, port, { HOST: '0.0.0.0' }, ['--empty'])
+    await opens(program)
+    expect(program.output()).toMatch(/It asks for this setup code: [A-Z2-9]{4}-[A-Z2-9]{4}-[A-Z2-9]{4}\n/)
+    expect(await (await fetch(`http://127.0.0.1:${port}/first-run`)).text()).toContain('Setup code')
   })
 
   it.each([
@@ -205,9 +225,9 @@ describe('the web server alone', () => {
     const member = await seedMember('operator')
     const client = await signIn(server.baseUrl, member.email, member.password)
     const acknowledged: string[] = []
-    let isOver = false
+    const load = { isOver: false }
     const lane = async () => {
-      while (!isOver) {
+      while (!load.isOver) {
         const operationId = randomUUID()
         const body = { operationId, sensorId: foundry.sensorId, airTempC: 21, relHumidityPct: 50 }
         const answer = await client.send('POST', '/api/v1/readings/typed', body).catch(() => null)
@@ -221,7 +241,7 @@ describe('the web server alone', () => {
     server.process.kill('SIGTERM')
     await server.exited
     const tookMs = performance.now() - began
-    isOver = true
+    load.isOver = true
     await Promise.all(lanes)
     expect(tookMs).toBeLessThan(5000)
     const kept = new Set((await Operation.findAll({ attributes: ['operationId'] })).map((row) => row.operationId))

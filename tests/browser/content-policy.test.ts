@@ -39,6 +39,7 @@ beforeAll(async () => {
   // The browser tells of each thing that it did not load, run or apply.
   await page.addInitScript(() => {
     document.addEventListener('securitypolicyviolation', (event) => {
+      // oxlint-disable-next-line no-console -- in the browser, where the device collects it
       console.error(`Refused by the policy: ${event.effectiveDirective} ${event.blockedURI} ${event.sample}`)
     })
   })

@@ -121,12 +121,12 @@ describe('loadHistory', () => {
 
   it('walks along an index for every filter, with no scan and no sorting', async () => {
     const asked: string[] = []
-    const { query } = database
-    const spy = vi.spyOn(database, 'query').mockImplementation(function (this: typeof database, ...args: Parameters<typeof query>) {
+    const query = database.query.bind(database)
+    const spy = vi.spyOn(database, 'query').mockImplementation((...args: Parameters<typeof query>) => {
       const [sql, options] = args
       if (typeof sql === 'string' && /FROM (?:tree|foundry)_events/.test(sql)) asked.push(withValues(sql, options?.replacements))
-      return query.apply(database, args)
-    } as typeof query)
+      return query(...args)
+    })
     const older = (await page()).older
     for (const memberId of [null, ines.id, 'kilnward']) {
       for (const tag of [null, tags[0]!]) {

@@ -72,6 +72,15 @@ export const SCENES: Record<string, (scene: Scene) => Promise<void>> = {
       ;({ status } = await ask(operator, 'readQueue', { headers: { 'if-none-match': etag } }))
     }
   },
+  estimateDrying: async ({ ask, operator }) => {
+    const body = { airSpeedMps: 1, altitudeM: 0, need: { referenceHours: 4 }, dippedAt: Date.now() }
+    await ask(operator, 'estimateDrying', { body: { ...body, climate: { constant: { airTempC: 21, relHumidityPct: 50 } } } })
+    await ask(operator, 'estimateDrying', { body: { ...body, climate: {} } })
+  },
+  exportClimate: async ({ ask, operator, foundry }) => {
+    await ask(operator, 'exportClimate', { params: { sensorId: String(foundry.sensorId) } })
+    await ask(operator, 'exportClimate', { params: { sensorId: '4040' } })
+  },
   exportTrees: async ({ ask, operator, factories, foundry }) => {
     await factories.buildTree(foundry)
     await ask(operator, 'exportTrees')

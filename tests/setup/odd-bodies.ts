@@ -34,6 +34,7 @@ const NASTY: readonly unknown[] = [
   [null],
   { $gt: '' },
   { length: 1e9 },
+  // oxlint-disable-next-line unicorn/no-thenable -- that is what is odd about it
   { toString: 1, valueOf: null, then: 1 },
 ]
 const KEYS = ['__proto__', 'constructor', 'prototype', 'toString', 'role', 'isDemo', 'memberId', '', 'a'.repeat(5000)]
@@ -86,8 +87,9 @@ const near = (valid: unknown) =>
       let keys: { key: string; put: unknown }[] = []
       for (const { path, put, how, key } of changes) {
         if (how === 'key') keys = [...keys, { key, put }]
-        else if (pathsOf(body).some((known) => known.join('/') === path.join('/')))
+        else if (pathsOf(body).some((known) => known.join('/') === path.join('/'))) {
           body = changedAt(body, path, how === 'remove' ? 'remove' : { put })
+        }
       }
       return keys.reduce((text, { key, put }) => withKey(text, key, put), JSON.stringify(body) ?? '')
     })

@@ -2,6 +2,7 @@ import type { Metadata } from 'next'
 import Link from 'next/link'
 import { notFound } from 'next/navigation'
 import type { ReactNode } from 'react'
+import { DemoMark } from '@/app/_components/demo-mark'
 import { Icon } from '@/app/_components/icons'
 import { LiveClock } from '@/app/_components/live-clock'
 import { Plate } from '@/app/_components/plate'
@@ -35,6 +36,7 @@ import { typedWords } from '@/lib/format/typed-units'
 import { formatSeconds, formatShare, type MassUnit } from '@/lib/format/units'
 import { may } from '@/lib/members/roles'
 import { loadFoundry } from '@/lib/queries/load-foundry'
+import { loadNewerVersions } from '@/lib/queries/newer-versions'
 import { loadTreeDetail } from '@/lib/queries/tree-detail'
 import { loadTreeForm } from '@/lib/queries/tree-form'
 import { requireMemberPage } from '@/lib/server/auth'
@@ -59,6 +61,7 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
     loadTreeForm(),
   ])
   if (detail === null) notFound()
+  const newerVersions = may(member.role, 'recipes') ? await loadNewerVersions(detail.tree.id) : []
 
   const { tree, recipe, coats, curve, intake, holds, lookOvers, release } = detail
   const moment = { now, timeZone }
@@ -143,7 +146,9 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
           <Tag tag={tag} size="xl" isHeld={tree.state === 'held'} ground="bone" />
         </span>
         <div className="min-w-0 grow">
-          <h1>{tree.title}</h1>
+          <h1>
+            {tree.title} {tree.isDemo && <DemoMark />}
+          </h1>
           <p className="tree-facts">
             {[
               `Recipe ${recipe.name}`,
@@ -170,6 +175,8 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
           nextDip={tree.next === null ? null : { number: tree.next.number, isDue }}
           places={places}
           placeId={tree.place.id}
+          newerVersions={newerVersions}
+          coatsOn={tree.coatsOn}
         />
       </header>
 

@@ -29,13 +29,14 @@ export function BathRows({ baths: { inUse, retired }, now, timeZone }: { baths: 
                 text: 'Every slurry that trees are dipped in stands here. Recipes name the bath of each coat, so a bath comes before a recipe.',
               }
         }
-        form={(onDone) => <BathForm onDone={onDone} />}
+        renderForm={(onDone) => <BathForm onDone={onDone} />}
       />
       <ul className="settings-rows">
         {inUse.map((bath) => (
           <RowPlate
             key={bath.id}
             title={bath.name}
+            isDemo={bath.isDemo}
             line={KIND_LINES[bath.kind]}
             form={<BathForm bath={bath} />}
             keys={
@@ -53,6 +54,7 @@ export function BathRows({ baths: { inUse, retired }, now, timeZone }: { baths: 
           <RowPlate
             key={bath.id}
             title={bath.name}
+            isDemo={bath.isDemo}
             line="retired"
             keys={
               <ActForm action={() => reuseBathAction(bath.id)} label={`Use ${bath.name} again`}>

@@ -25,13 +25,14 @@ export function PlaceRows({ places: { inUse, retired, sensors } }: { places: Pla
                 text: 'Every rack, rail and corner where trees hang stands here, with its air. The drying clock needs to know how fast the air is where a shell dries.',
               }
         }
-        form={(onDone) => <PlaceForm sensors={sensors} onDone={onDone} />}
+        renderForm={(onDone) => <PlaceForm sensors={sensors} onDone={onDone} />}
       />
       <ul className="settings-rows">
         {inUse.map((place) => (
           <RowPlate
             key={place.id}
             title={place.name}
+            isDemo={place.isDemo}
             line={`air read by ${place.sensor.name}`}
             form={
               <PlaceForm
@@ -54,6 +55,7 @@ export function PlaceRows({ places: { inUse, retired, sensors } }: { places: Pla
           <RowPlate
             key={place.id}
             title={place.name}
+            isDemo={place.isDemo}
             line="retired"
             keys={
               <ActForm action={() => reusePlaceAction(place.id)} label={`Use ${place.name} again`}>
@@ -76,7 +78,9 @@ function PlaceWords({ place }: { place: PlaceRow }) {
       <div>
         <dt>Air speed</dt>
         <dd>
-          {place.airSpeedFansOnMps} m/s with fans, {place.airSpeedFansOffMps} m/s without
+          {fans.length === 0
+            ? `${place.airSpeedFansOffMps} m/s`
+            : `${place.airSpeedFansOnMps} m/s with the fans on, ${place.airSpeedFansOffMps} m/s with them off`}
         </dd>
       </div>
       <div>

@@ -38,15 +38,17 @@ export function SensorRows({
                 text: 'Every logger that sends the air of the room stands here, and every hygrometer that you read off the wall. Without readings the drying clock knows nothing.',
               }
         }
-        form={(onDone) => <SensorForm onDone={onDone} />}
+        renderForm={(onDone) => <SensorForm onDone={onDone} />}
       />
       <ul className="settings-rows">
         {inUse.map((sensor) => (
           <RowPlate
             key={sensor.id}
             title={sensor.name}
+            isDemo={sensor.isDemo}
             line={KIND_LINES[sensor.kind]}
             form={<SensorForm sensor={sensor} />}
+            verb="Rename"
             keys={
               <ActForm action={() => retireSensorAction(sensor.id)} label={`Retire ${sensor.name}`}>
                 Retire
@@ -63,6 +65,7 @@ export function SensorRows({
           <RowPlate
             key={sensor.id}
             title={sensor.name}
+            isDemo={sensor.isDemo}
             line="retired; a logger needs a new token when it comes back"
             keys={
               <ActForm action={() => reuseSensorAction(sensor.id)} label={`Use ${sensor.name} again`}>
