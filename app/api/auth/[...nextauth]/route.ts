@@ -35,7 +35,8 @@ function requireWayBack({ nextUrl, cookies }: NextRequest): void {
   const cookie = cookies.getAll().find(({ name }) => name.endsWith('next-auth.callback-url'))
   for (const address of [nextUrl.searchParams.get('callbackUrl'), cookie?.value]) {
     if (!address) continue
-    const url = URL.parse(address, address.startsWith('/') ? nextUrl.origin : undefined)
-    if (!/^https?:$/.test(url?.protocol ?? '')) throw new AppError('malformed', 'The address to come back to is none.')
+    const base = address.startsWith('/') ? nextUrl.origin : undefined
+    if (!URL.canParse(address, base) || !/^https?:$/.test(new URL(address, base).protocol))
+      throw new AppError('malformed', 'The address to come back to is none.')
   }
 }
