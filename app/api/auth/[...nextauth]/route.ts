@@ -36,7 +36,7 @@ function requireWayBack({ nextUrl, cookies }: NextRequest): void {
   for (const address of [nextUrl.searchParams.get('callbackUrl'), cookie?.value]) {
     if (!address) continue
     const base = address.startsWith('/') ? nextUrl.origin : undefined
-    if (!URL.canParse(address, base) || !/^https?:$/.test(new URL(address, base).protocol))
-      throw new AppError('malformed', 'The address to come back to is none.')
+    const isWayBack = URL.canParse(address, base) && /^https?:$/.test(new URL(address, base).protocol)
+    if (!isWayBack) throw new AppError('malformed', 'The address to come back to is none.')
   }
 }
