@@ -56,3 +56,15 @@ export async function prepareProcessOrExit(): Promise<void> {
     process.exit(1)
   }
 }
+
+const END_WITHIN_MS = 4000
+
+/**
+ * Ends the web server within seconds of being told to. The framework waits until every connection is idle, and a tablet that polls
+ * keeps its own busy for ever. What was answered by then is in the records, so nothing is lost.
+ */
+export function endInTime(): void {
+  for (const signal of ['SIGTERM', 'SIGINT'] as const) {
+    process.once(signal, () => setTimeout(() => process.exit(0), END_WITHIN_MS).unref())
+  }
+}

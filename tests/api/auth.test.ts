@@ -86,19 +86,16 @@ describe('signing in', () => {
     expect((await trySignIn(client, 'guessed@kilnward.example', 'wrong')).error).toMatch(/^WAIT:(?:[12]?\d|30)$/)
   })
 
-  it.each(['https://evil.example/x', '//evil.example/x', '/\\evil.example', 'javascript:alert(1)'])(
-    'never leads to %s',
-    async (callbackUrl) => {
-      const client = newClient(server.baseUrl)
-      const response = await client.fetch(`/api/auth/signin?callbackUrl=${encodeURIComponent(callbackUrl)}`)
-      const target = new URL(response.headers.get('location') ?? '', server.baseUrl)
-      expect(target.pathname).toBe('/sign-in')
-      expect(new URL(target.searchParams.get('callbackUrl') ?? '/', server.baseUrl).origin).toBe(server.baseUrl)
-    },
-  )
+  it.each(['https://evil.example/x', '//evil.example/x', '/\\evil.example'])('never leads to %s', async (callbackUrl) => {
+    const client = newClient(server.baseUrl)
+    const response = await client.fetch(`/api/auth/signin?callbackUrl=${encodeURIComponent(callbackUrl)}`)
+    const target = new URL(response.headers.get('location') ?? '', server.baseUrl)
+    expect(target.pathname).toBe('/sign-in')
+    expect(new URL(target.searchParams.get('callbackUrl') ?? '/', server.baseUrl).origin).toBe(server.baseUrl)
+  })
 
-  it('takes an address to come back to that is none for a mistake of the asker', async () => {
-    const response = await newClient(server.baseUrl).fetch(`/api/auth/signin?callbackUrl=${encodeURIComponent('>;')}`)
+  it.each(['>;', 'javascript:alert(1)', 'data:text/html,x'])('refuses %s, to which nobody comes back', async (callbackUrl) => {
+    const response = await newClient(server.baseUrl).fetch(`/api/auth/signin?callbackUrl=${encodeURIComponent(callbackUrl)}`)
     expect(response.status).toBe(400)
     expect(response.headers.get('content-type')).toBe('application/problem+json')
   })

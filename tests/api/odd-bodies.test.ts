@@ -57,7 +57,7 @@ afterAll(() => server.stop())
 const bodied = DESCRIBED_DOORS.filter(({ body }) => body)
 
 /** What no answer may hold: a stack, a path of the program, the words of the database. */
-const INSIDES = /\n\s+at \S+ \(|node_modules|\.(?:ts|js|mjs):\d+|SQLITE_|[Ss]equelize|ZodError|at Object\./
+const INSIDES = /\n\s+at [\w.<>]+ \(|node_modules|\.(?:ts|js|mjs):\d+|SQLITE_|[Ss]equelize|ZodError|at Object\./
 
 async function misfit(response: Response): Promise<string | null> {
   const text = await response.text()

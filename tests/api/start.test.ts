@@ -165,7 +165,7 @@ describe('npm start', () => {
     const folderForFile = newFolder()
     mkdirSync(join(folderForFile, 'kilnward.sqlite'))
     for (const [dataDir, line] of [
-      [newer, /newer version/],
+      [newer, /written by a newer Kilnward/],
       [folderForFile, /unable to open database file/],
     ] as const) {
       const program = start(dataDir, await freePort())

@@ -40,7 +40,7 @@ beforeAll(async () => {
   await page.addInitScript(() => {
     document.addEventListener('securitypolicyviolation', (event) => {
       // oxlint-disable-next-line no-console -- in the browser, where the device collects it
-      console.error(`Refused by the policy: ${event.effectiveDirective} ${event.blockedURI} ${event.sample}`)
+      console.error(`Refused by the policy: ${event.effectiveDirective} ${event.blockedURI} ${event.sourceFile}:${event.lineNumber}`)
     })
   })
 })
@@ -53,6 +53,7 @@ const violations = () => errors.filter((text) => /policy|refused to|nonce/i.test
 
 /** Opens a page and waits until its scripts have taken over. */
 async function open(path: string): Promise<void> {
+  errors.length = 0
   await page.goto(path)
   // Asked again and again from here: a wait inside the page would build code from text, which the policy forbids.
   await expect
