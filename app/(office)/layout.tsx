@@ -21,6 +21,7 @@ export default async function OfficeLayout({ children }: { children: ReactNode }
       <header>
         <OfficeBar
           foundryName={foundry.name}
+          hasDemoData={foundry.hasDemoData && !foundry.isDemo}
           timeZone={foundry.timeZone}
           member={{ name: member.name, role: member.role }}
           serverNow={systemClock.now()}

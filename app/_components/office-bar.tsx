@@ -2,6 +2,7 @@
 
 import Link from 'next/link'
 import { usePathname } from 'next/navigation'
+import './demo-mark.css'
 import { signOutHere } from '@/app/_components/sign-out'
 import { Key } from '@/app/_components/key'
 import { LiveClock } from '@/app/_components/live-clock'
@@ -12,6 +13,8 @@ import type { Role } from '@/lib/members/roles'
 
 export type OfficeBarProps = {
   foundryName: string
+  /** Demo data is laid over this foundry. */
+  hasDemoData: boolean
   timeZone: string
   member: { name: string; role: Role }
   /** Server time at which the page was made, epoch ms. */
@@ -19,7 +22,7 @@ export type OfficeBarProps = {
 }
 
 /** Frame of the office pages: the tabs, whose page it is, the time, and the way out. */
-export function OfficeBar({ foundryName, timeZone, member, serverNow }: OfficeBarProps) {
+export function OfficeBar({ foundryName, hasDemoData, timeZone, member, serverNow }: OfficeBarProps) {
   const path = usePathname()
   const current = currentPage(path, FOUNDRY_PAGES) ? '/settings' : currentPage(path, OFFICE_TABS)?.href
   return (
@@ -36,6 +39,7 @@ export function OfficeBar({ foundryName, timeZone, member, serverNow }: OfficeBa
       </nav>
       <div className="who">
         <span>{foundryName}</span>
+        {hasDemoData && <span className="demo-mark">Demo data</span>}
         <Link className="underline underline-offset-4" href="/me" prefetch={false}>
           <b className="text-ink">{member.name}</b>, {member.role}
         </Link>

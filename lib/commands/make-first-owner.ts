@@ -17,14 +17,15 @@ const NAMELESS = 'Our foundry'
  * Makes the owner's account and the foundry that it owns, in records in which nobody is a member: once, and never again.
  * They are signed in with it at once.
  *
+ * @param by.scryptCost a test may lower it.
  * @throws {AppError} conflict when somebody is a member, with `fields` for a wrong setup code; too_many_requests.
  */
 export async function makeFirstOwner(
   input: FirstOwnerInput,
-  { userAgent, clock }: { userAgent: string; clock: Clock },
+  { userAgent, clock, scryptCost }: { userAgent: string; clock: Clock; scryptCost?: number },
 ): Promise<{ memberId: string; sessionId: string }> {
   if (!(await isSetupCodeRight(input.setupCode))) refuseField('setupCode', 'This is not the code that the start has printed.')
-  const passwordHash = await hashPassword(input.password)
+  const passwordHash = await hashPassword(input.password, scryptCost)
   return inTransaction(async () => {
     // Two may have come at once. The transaction holds the write lock from its first line, so that the second one sees the first.
     if ((await Member.count()) > 0) throw new AppError('conflict', 'The owner’s account has been made already. Sign in, or ask the owner.')

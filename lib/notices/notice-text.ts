@@ -3,6 +3,9 @@ import type { NoticeText, NoticeTree } from '@/lib/notices/notice'
 
 export type TextContext = { now: number; timeZone: string }
 
+/** A push is read away from the room: there nothing else would say that a tree is made up. */
+const named = ({ tag, isDemo }: Pick<NoticeTree, 'tag' | 'isDemo'>): string => (isDemo ? `Demo ${tag}` : tag)
+
 /**
  * The coat may be dipped over. The guard's own time comes first and the other beside it, because a lone minute promises too much.
  *
@@ -11,20 +14,20 @@ export type TextContext = { now: number; timeZone: string }
 export function coatDryText(tree: NoticeTree, context: TextContext): NoticeText {
   const times = guardTimes(tree, context)
   if (tree.next === null) {
-    return { title: `${tree.tag} dried out: look over`, body: sentences('All coats on', tree.place.name, tree.title, times) }
+    return { title: `${named(tree)} dried out: look over`, body: sentences('All coats on', tree.place.name, tree.title, times) }
   }
   const guardAt = tree.guard === 'likely' ? tree.dry?.likelyAt : tree.dry?.safeAt
   // A person's word can be ahead of the clock.
   const isByEye = typeof guardAt === 'number' && guardAt > context.now
   const dry = isByEye ? 'looks dry' : tree.guard === 'likely' ? 'likely dry' : 'dry'
-  return { title: `${tree.tag} ${dry}: dip ${tree.next.number}`, body: sentences(slurry(tree.next), tree.place.name, tree.title, times) }
+  return { title: `${named(tree)} ${dry}: dip ${tree.next.number}`, body: sentences(slurry(tree.next), tree.place.name, tree.title, times) }
 }
 
 /** The wet coat's longest wait is over, or the pour date is lost. */
 export function overdueText(tree: NoticeTree, since: number | null, context: TextContext): NoticeText {
   const what = tree.next === null ? 'look over' : `dip ${tree.next.number}`
   return {
-    title: `${tree.tag} overdue: ${what}`,
+    title: `${named(tree)} overdue: ${what}`,
     body: sentences(
       tree.next && slurry(tree.next),
       tree.place.name,
@@ -38,7 +41,7 @@ export function overdueText(tree: NoticeTree, since: number | null, context: Tex
 /** Target reached: the last coat of the tree's list is on. */
 export function lastCoatOnText(tree: NoticeTree, context: TextContext): NoticeText {
   return {
-    title: `${tree.tag} last coat on: ${tree.coatsOn} coats`,
+    title: `${named(tree)} last coat on: ${tree.coatsOn} coats`,
     body: sentences(tree.place.name, tree.title, foreseen(tree, context)),
   }
 }
@@ -46,7 +49,7 @@ export function lastCoatOnText(tree: NoticeTree, context: TextContext): NoticeTe
 /** Looked over, dry, nothing open: the tree may be released. */
 export function readyForBurnoutText(tree: NoticeTree): NoticeText {
   return {
-    title: `${tree.tag} ready for burnout`,
+    title: `${named(tree)} ready for burnout`,
     body: sentences(tree.place.name, tree.title, 'Looked over, no open fault, no hold'),
   }
 }
@@ -54,7 +57,7 @@ export function readyForBurnoutText(tree: NoticeTree): NoticeText {
 /** A 'coat dry' that was told does not hold any more: readings that came late show wetter air. */
 export function callWithdrawnText(tree: NoticeTree, context: TextContext): NoticeText {
   return {
-    title: `${tree.tag} not dry yet: wait`,
+    title: `${named(tree)} not dry yet: wait`,
     body: sentences('Late readings show wetter air', tree.place.name, tree.title, foreseen(tree, context)),
   }
 }

@@ -1,10 +1,12 @@
 import type { FanHours as Fans } from '@/lib/drying/types'
 import { hangingTrees } from '@/lib/queries/hanging-trees'
-import { FanHours, Place, Sensor } from '@/models'
+import { FanHours, Foundry, Place, Sensor } from '@/models'
 
 export type PlaceRow = {
   id: string
   name: string
+  /** Demo data in a foundry that is not the demo itself. */
+  isDemo: boolean
   airSpeedFansOnMps: number
   airSpeedFansOffMps: number
   fanHours: Fans[]
@@ -18,7 +20,8 @@ export type PlaceList = { inUse: PlaceRow[]; retired: PlaceRow[]; sensors: { id:
 
 /** The places, and the sensors in use that can serve them. */
 export async function loadPlaceList(): Promise<PlaceList> {
-  const [places, fanHours, sensors, trees] = await Promise.all([
+  const [foundry, places, fanHours, sensors, trees] = await Promise.all([
+    Foundry.findByPk(1),
     Place.findAll({ include: 'sensor', order: [['name', 'ASC']] }),
     FanHours.findAll({
       order: [
@@ -31,6 +34,7 @@ export async function loadPlaceList(): Promise<PlaceList> {
   ])
   const rows = places.map((place): PlaceRow => ({
     id: place.id,
+    isDemo: place.isDemo && foundry?.isDemo !== true,
     name: place.name,
     airSpeedFansOnMps: place.airSpeedFansOnMps,
     airSpeedFansOffMps: place.airSpeedFansOffMps,

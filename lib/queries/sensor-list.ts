@@ -15,6 +15,8 @@ export type TokenRow = {
 export type SensorRow = {
   id: number
   name: string
+  /** Demo data in a foundry that is not the demo itself. */
+  isDemo: boolean
   kind: SensorKind
   retiredAt: number | null
   newest: { measuredAt: number; airTempC: number; relHumidityPct: number } | null
@@ -26,6 +28,7 @@ export type SensorRow = {
 type Row = {
   id: number
   name: string
+  isDemo: number
   kind: SensorKind
   retiredAt: number | null
   measuredAt: number | null
@@ -37,7 +40,7 @@ type Row = {
 export async function loadSensorList(): Promise<{ inUse: SensorRow[]; retired: SensorRow[] }> {
   const [sensors, places, tokens] = await Promise.all([
     database.query<Row>(
-      `SELECT s.id, s.name, s.kind, s.retired_at AS retiredAt,
+      `SELECT s.id, s.name, s.is_demo AND NOT (SELECT is_demo FROM foundry) AS isDemo, s.kind, s.retired_at AS retiredAt,
               r.measured_at AS measuredAt, r.air_temp_c AS airTempC, r.rel_humidity_pct AS relHumidityPct
          FROM sensors s
          LEFT JOIN readings r ON r.sensor_id = s.id AND r.measured_at = (SELECT max(measured_at) FROM readings WHERE sensor_id = s.id)
@@ -54,6 +57,7 @@ export async function loadSensorList(): Promise<{ inUse: SensorRow[]; retired: S
   ])
   const rows = sensors.map(({ measuredAt, airTempC, relHumidityPct, ...sensor }): SensorRow => ({
     ...sensor,
+    isDemo: sensor.isDemo === 1,
     newest: measuredAt === null || airTempC === null || relHumidityPct === null ? null : { measuredAt, airTempC, relHumidityPct },
     places: places.filter(({ sensorId }) => sensorId === sensor.id).map(({ name }) => name),
     tokens: tokens.filter(({ sensorId }) => sensorId === sensor.id),

@@ -1,15 +1,12 @@
 import { TZDate } from '@date-fns/tz'
 import { wetBulbDepressionK } from '@/lib/drying/room-factor'
-import { DEFAULT_FLAG_LIMITS } from '@/lib/drying/flags'
 import type { Queue, QueueBath, QueueRoom, QueueTree } from '@/lib/queue/contract'
 import type { RoomClimate } from '@/lib/room/climate'
+import { dryingPull } from '@/lib/room/drying-pull'
 import { localDay, nextOpenInstant, type Shift } from '@/lib/schedule/shifts'
 import { recipeCoatOf } from '@/lib/trees/assess'
 import type { DerivedTree } from '@/lib/trees/derive'
 import type { PlaceFacts } from '@/lib/trees/facts'
-
-/** Under this share of the reference speed drying is called slow. Our own choice. */
-const SLOW_SPEED = 0.85
 
 /** One tree as the floor shows it. */
 export function queueTree(tree: DerivedTree, places: ReadonlyMap<string, PlaceFacts>): QueueTree {
@@ -70,13 +67,7 @@ export function queueRoom(
   const { newest } = climate
   const gapK = newest ? wetBulbDepressionK(newest, pressurePa) : null
   const pull =
-    newest === null || gapK === null || climate.isStale
-      ? 'not known'
-      : gapK > DEFAULT_FLAG_LIMITS.chillWarnK || newest.roomFactor > DEFAULT_FLAG_LIMITS.chillSpeed
-        ? 'too dry for face coats'
-        : newest.roomFactor < SLOW_SPEED
-          ? 'slow'
-          : 'good'
+    newest === null || gapK === null || climate.isStale ? 'not known' : dryingPull({ wetBulbGapK: gapK, roomFactor: newest.roomFactor })
   return {
     sensorId: climate.sensorId,
     sensorName: name,

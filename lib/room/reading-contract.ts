@@ -16,10 +16,11 @@ export const relHumidityPct = z
   .max(105, 'Humidity cannot be over 105 %.')
 
 /** An instant as ISO 8601 with a zone, or epoch milliseconds. */
-const measuredAt = z
-  .union([z.int().min(0), z.iso.datetime({ offset: true })])
+export const instant = z
+  .union([z.int().min(0), z.iso.datetime({ offset: true })], 'A time is ISO 8601 with its zone, or epoch milliseconds.')
   .transform((value) => (typeof value === 'number' ? value : Date.parse(value)))
-  .describe('When it was measured: ISO 8601 with a zone, or epoch milliseconds (UTC).')
+
+const measuredAt = instant.describe('When it was measured: ISO 8601 with a zone, or epoch milliseconds (UTC).')
 
 /** One row of `POST /api/v1/readings`; rows are checked one by one so that good ones are kept. */
 export const readingRow = z.strictObject({ measuredAt, airTempC, relHumidityPct })
@@ -36,8 +37,14 @@ export const readingBatchAnswer = z.object({
 })
 export type ReadingBatchAnswer = z.infer<typeof readingBatchAnswer>
 
-/** A person reads the wall hygrometer. */
-export const typedReading = z.strictObject({ operationId: z.uuid(), sensorId: z.int(), airTempC, relHumidityPct })
+/** A person reads the wall hygrometer: now, or at the time they name. */
+export const typedReading = z.strictObject({
+  operationId: z.uuid(),
+  sensorId: z.int(),
+  airTempC,
+  relHumidityPct,
+  measuredAt: measuredAt.optional(),
+})
 
 /** Answer of `POST /api/v1/readings/typed`: the instant from which it counts. */
 export const typedReadingAnswer = z.object({ sensorId: z.int(), measuredAt: z.int() })

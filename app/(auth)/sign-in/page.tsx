@@ -1,8 +1,10 @@
 import type { Metadata } from 'next'
+import { redirect } from 'next/navigation'
 import { ShellSection } from '@/app/_components/shell-section'
 import { Wordmark } from '@/app/_components/wordmark'
 import { SignInForm } from '@/app/(auth)/sign-in/_components/sign-in-form'
 import { ownPath } from '@/lib/members/own-path'
+import { hasMembers } from '@/lib/queries/has-members'
 import { loadSignIn } from '@/lib/queries/sign-in'
 import type { BandGrade } from '@/lib/trees/section'
 import './sign-in.css'
@@ -13,6 +15,7 @@ const RECIPE: BandGrade[] = ['fine', 'fine', 'medium', 'medium', 'coarse', 'coar
 
 export default async function SignInPage({ searchParams }: PageProps<'/sign-in'>) {
   const { callbackUrl, ended } = await searchParams
+  if (!(await hasMembers())) redirect('/first-run')
   const { foundryName, demoSignIns } = await loadSignIn()
   // The origin stands for this site; whatever leads elsewhere becomes '/', which goes to the floor.
   const goTo = ownPath(typeof callbackUrl === 'string' ? callbackUrl : '/floor', 'http://this.site')

@@ -61,9 +61,13 @@ export default async function ApiGuidePage() {
       <div className="api-guide">
         <Plate title="1. Get a token">
           <p>
-            Each sensor has its own token. On the page <Link href="/settings/sensors" prefetch={false}>Sensors</Link> choose the sensor, make a token, and
-            copy it: it is shown once. It begins with <code>kw_</code>, sends readings of this one sensor and opens nothing else. Keep it
-            like a key; if it gets out, revoke it there and make another. In a shell, set it once for the lines below.
+            Each sensor has its own token. On the page{' '}
+            <Link href="/settings/sensors" prefetch={false}>
+              Sensors
+            </Link>{' '}
+            choose the sensor, make a token, and copy it: it is shown once. It begins with <code>kw_</code>, sends readings of this one
+            sensor and opens nothing else. Keep it like a key; if it gets out, revoke it there and make another. In a shell, set it once for
+            the lines below.
           </p>
           <CodeBlock label="The token" code={TOKEN_LINE} />
         </Plate>
@@ -125,7 +129,11 @@ export default async function ApiGuidePage() {
             </li>
             <li>
               <b>Late rows:</b> up to 31 days. The drying of every tree in that air is worked out anew from them; what was said on the floor
-              meanwhile stays in its history. Older rows come in as a file, on the page <Link href="/room" prefetch={false}>Room</Link>.
+              meanwhile stays in its history. Older rows come in as a file, on the page{' '}
+              <Link href="/room" prefetch={false}>
+                Room
+              </Link>
+              .
             </li>
             <li>
               After 30 minutes without a reading the trees of that room are shown as unknown, never as dry. A batch that comes late ends

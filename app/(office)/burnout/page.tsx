@@ -1,6 +1,7 @@
 import type { Metadata } from 'next'
 import Link from 'next/link'
 import type { ReactNode } from 'react'
+import { DemoMark } from '@/app/_components/demo-mark'
 import { Icon } from '@/app/_components/icons'
 import { KeyLink } from '@/app/_components/key'
 import { StateMark } from '@/app/_components/state-mark'
@@ -178,7 +179,8 @@ export default async function BurnoutPage() {
                       <b>
                         <Link className="row-link" href={`/trees/${encodeURIComponent(tree.tag)}`} prefetch={false}>
                           {tree.title}
-                        </Link>
+                        </Link>{' '}
+                        {tree.isDemo && <DemoMark />}
                       </b>
                       <span className="block text-furnace-ink">{tree.hold?.reason}</span>
                       <span className="block">
@@ -210,7 +212,8 @@ export default async function BurnoutPage() {
                       <b>
                         <Link className="row-link" href={`/trees/${encodeURIComponent(tree.tag)}`} prefetch={false}>
                           {tree.title}
-                        </Link>
+                        </Link>{' '}
+                        {tree.isDemo && <DemoMark />}
                       </b>
                       <span className="block">
                         {tree.stateSince === null ? '' : `Released ${formatMoment(tree.stateSince, now, timeZone)}.`}
@@ -338,7 +341,8 @@ function GroupRow({ tree, children }: { tree: QueueTree; children: ReactNode }) 
       <th role="rowheader" scope="row" className="c-piece">
         <Link className="row-link" href={`/trees/${encodeURIComponent(tree.tag)}`} prefetch={false}>
           {tree.title}
-        </Link>
+        </Link>{' '}
+        {tree.isDemo && <DemoMark />}
       </th>
       <td role="cell" className="c-shell">
         <TreeSection tree={tree} height={20} fit={110} isDecoration />

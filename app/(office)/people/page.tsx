@@ -1,5 +1,6 @@
 import type { Metadata } from 'next'
 import Link from 'next/link'
+import { DemoMark } from '@/app/_components/demo-mark'
 import { Plate } from '@/app/_components/plate'
 import { FoundryNav } from '@/app/(office)/_components/foundry-nav'
 import { AddMemberForm } from '@/app/(office)/people/_components/add-member-form'
@@ -16,7 +17,7 @@ export const metadata: Metadata = { title: 'People' }
 /** Everybody who works here: who they are, what they may do, and whether they can sign in. */
 export default async function PeoplePage() {
   const member = await requireMemberPage('people', '/people')
-  const [{ timeZone }, people] = await Promise.all([loadFoundry(), loadPeople()])
+  const [{ timeZone, isDemo: isDemoFoundry }, people] = await Promise.all([loadFoundry(), loadPeople()])
   const now = systemClock.now()
   const active = people.filter(({ disabledAt }) => disabledAt === null).length
   return (
@@ -52,7 +53,7 @@ export default async function PeoplePage() {
                     <Link className="row-link" href={`/people/${person.id}`} prefetch={false}>
                       {person.name}
                     </Link>
-                    {person.id === member.id && <span className="text-soot">, you</span>}
+                    {person.id === member.id && <span className="text-soot">, you</span>} {person.isDemo && !isDemoFoundry && <DemoMark />}
                   </th>
                   <td role="cell" className="c-role">
                     {person.role}

@@ -5,10 +5,12 @@ import { KeepFresh } from '@/app/(office)/_components/keep-fresh'
 import { BackUpNow } from '@/app/(office)/upkeep/_components/back-up-now'
 import { BackupTable } from '@/app/(office)/upkeep/_components/backup-table'
 import { CheckList } from '@/app/(office)/upkeep/_components/check-list'
+import { DemoPlate } from '@/app/(office)/upkeep/_components/demo-plate'
 import { BACKUPS_KEPT } from '@/lib/backups/backup-plan'
 import { systemClock } from '@/lib/core/clock'
 import { formatMoment } from '@/lib/format/local-time'
 import { loadBackupList, loadLastRestore } from '@/lib/queries/backup-list'
+import { loadDemoStanding } from '@/lib/queries/demo-standing'
 import { loadUpkeep } from '@/lib/queries/upkeep'
 import { requireMemberPage } from '@/lib/server/auth'
 import { upkeepChecks, upkeepHeadline } from '@/lib/upkeep/checks'
@@ -18,7 +20,12 @@ export const metadata: Metadata = { title: 'Upkeep' }
 
 export default async function UpkeepPage() {
   const member = await requireMemberPage('upkeep', '/upkeep')
-  const [facts, backups, restore] = await Promise.all([loadUpkeep({ clock: systemClock }), loadBackupList(), loadLastRestore()])
+  const [facts, backups, restore, demo] = await Promise.all([
+    loadUpkeep({ clock: systemClock }),
+    loadBackupList(),
+    loadLastRestore(),
+    loadDemoStanding(),
+  ])
   const { now, timeZone } = facts
   const checks = upkeepChecks(facts)
   return (
@@ -32,9 +39,12 @@ export default async function UpkeepPage() {
         </div>
       </div>
       <div className="upkeep">
-        <section className="plate" aria-label="How it stands">
-          <CheckList checks={checks} />
-        </section>
+        <div className="upkeep-column">
+          <section className="plate" aria-label="How it stands">
+            <CheckList checks={checks} />
+          </section>
+          <DemoPlate standing={demo} />
+        </div>
         <div className="upkeep-column">
           <section className="plate">
             <header>

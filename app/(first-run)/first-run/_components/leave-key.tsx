@@ -7,7 +7,7 @@ import { signOutHere } from '@/app/_components/sign-out'
 export function LeaveKey() {
   return (
     <Key tone="quiet" className="px-3" onPress={() => void signOutHere()}>
-      Leave, go on later
+      Leave for now
     </Key>
   )
 }

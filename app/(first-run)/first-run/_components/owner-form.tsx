@@ -1,6 +1,6 @@
 'use client'
 
-import { useEffect, useRef } from 'react'
+import { useSyncExternalStore } from 'react'
 import { Field } from '@/app/_components/field'
 import { Key } from '@/app/_components/key'
 import { ShellSection } from '@/app/_components/shell-section'
@@ -13,14 +13,14 @@ import '@/app/(auth)/sign-in/sign-in.css'
 
 const RECIPE: BandGrade[] = ['fine', 'fine', 'medium', 'medium', 'coarse', 'coarse', 'coarse', 'seal']
 
+const neverChanges = () => () => {}
+const browserZone = () => Intl.DateTimeFormat().resolvedOptions().timeZone
+
 /** The first visitor makes the owner's account; the next one finds the sign-in here. */
 export function OwnerForm({ asksForCode }: { asksForCode: boolean }) {
   const form = useKeptForm(makeFirstOwnerAction)
-  const zone = useRef<HTMLInputElement>(null)
-  useEffect(() => {
-    // Known to the browser alone: the server may stand in another zone.
-    if (zone.current) zone.current.value = Intl.DateTimeFormat().resolvedOptions().timeZone
-  }, [])
+  // Known to the browser alone: the server may stand in another zone.
+  const timeZone = useSyncExternalStore(neverChanges, browserZone, () => 'UTC')
   return (
     <div className="sign-in">
       <div className="sign-in-picture" aria-hidden="true">
@@ -42,7 +42,7 @@ export function OwnerForm({ asksForCode }: { asksForCode: boolean }) {
           Nobody has an account here yet. This one is the owner’s: who makes it sets up the foundry and adds the others.
         </p>
         <form {...form.formProps} className="sign-in-form">
-          <input ref={zone} type="hidden" name="timeZone" defaultValue="UTC" />
+          <input type="hidden" name="timeZone" value={timeZone} />
           {asksForCode && (
             <Field
               name="setupCode"

@@ -1,4 +1,5 @@
 import Link from 'next/link'
+import { DemoMark } from '@/app/_components/demo-mark'
 import { Icon } from '@/app/_components/icons'
 import { Key } from '@/app/_components/key'
 import { ShellSection } from '@/app/_components/shell-section'
@@ -197,7 +198,9 @@ function DipRow({
         <ShellSection {...sectionOf(tree)} height={isDense ? 23 : 26} width={118} isDecoration />
       </span>
       <span className="row-words">
-        <b title={tree.title}>{tree.title}</b>
+        <b title={tree.title}>
+          {tree.isDemo && <DemoMark />} {tree.title}
+        </b>
         <i>
           <em>{tree.place.name}</em>
           {coatsOnWords(tree)}

@@ -2,6 +2,7 @@
 
 import Link from 'next/link'
 import { useRef, useState } from 'react'
+import { DemoMark } from '@/app/_components/demo-mark'
 import { Icon } from '@/app/_components/icons'
 import { Key } from '@/app/_components/key'
 import { ShellSection } from '@/app/_components/shell-section'
@@ -406,7 +407,9 @@ function Chip({ tree, number, onRemove }: { tree: QueueTree; number: number; onR
           <Icon name="cross" />
         </button>
       </div>
-      <span>{tree.title}</span>
+      <span>
+        {tree.isDemo && <DemoMark />} {tree.title}
+      </span>
     </li>
   )
 }

@@ -6,6 +6,7 @@ import { arrangeFloor } from '@/lib/floor/arrange'
 import { isSameRun, startDraft, withTree, type DipDraft } from '@/lib/floor/dip-draft'
 import { BESIDE_SHEET_RUN_KEY, DIP_NOW_SIZES, floorMode, planFloor, type FloorMode } from '@/lib/floor/floor-plan'
 import { foldDipNow, type DipNowChoice } from '@/lib/floor/fold-dip-now'
+import type { SetUpLine } from '@/lib/floor/set-up'
 import { tideScale } from '@/lib/floor/tide-scale'
 import { NOT_CALIBRATED, timePairWords } from '@/lib/format/time-pair'
 import { may, type Role } from '@/lib/members/roles'
@@ -33,6 +34,8 @@ export type FloorBoardProps = {
   initial: { etag: string; queue: Queue }
   serverNow: number
   member: { name: string; role: Role }
+  /** What the room has and lacks before its first tree; empty where there are trees, or for somebody who cannot bring it about. */
+  setUp: readonly SetUpLine[]
 }
 
 /** `sheet` tells one sheet from the next; within one the trees may change. */
@@ -44,7 +47,7 @@ const ROWS_FIRST = 30
 const NO_IDS: ReadonlySet<string> = new Set()
 
 /** The floor on the wall: what to dip now, what dries, what is done with. */
-export function FloorBoard({ initial, serverNow, member }: FloorBoardProps) {
+export function FloorBoard({ initial, serverNow, member, setUp }: FloorBoardProps) {
   const floor = useFloorQueue({ ...initial, serverNow })
   const { queue, refresh } = floor
   const { timeZone } = queue.foundry
@@ -215,7 +218,7 @@ export function FloorBoard({ initial, serverNow, member }: FloorBoardProps) {
       <FloorAlarms queue={queue} now={now} isConnected={floor.isConnected} answeredAt={floor.answeredAt + floor.clockGap} />
       <div className="stage">
         {!hasTrees ? (
-          <NoTrees canAdd={may(member.role, 'trees')} />
+          <NoTrees canAdd={may(member.role, 'trees')} setUp={setUp} />
         ) : (
           <>
             {!showsList && (

@@ -1,4 +1,5 @@
 import { useState, type ReactNode } from 'react'
+import { DemoMark } from '@/app/_components/demo-mark'
 import { Key } from '@/app/_components/key'
 import { ShellSection } from '@/app/_components/shell-section'
 import { StateMark } from '@/app/_components/state-mark'
@@ -149,7 +150,9 @@ function ListRow({ tree, now, isChosen, onTree, middle }: ListRowProps) {
         <Tag tag={tree.tag} height={fittedTagHeight(tree.tag, 32)} ground="bone" />
       </span>
       <span className="list-row-words">
-        <b>{tree.title}</b>
+        <b>
+          {tree.title} {tree.isDemo && <DemoMark />}
+        </b>
         {middle !== undefined && <em className="list-pair">{middle}</em>}
         <em>
           {tree.place.name}, {coatsOnWords(tree)}

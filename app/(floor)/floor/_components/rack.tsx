@@ -96,6 +96,7 @@ function Hook({
   return (
     <Link className="hook" href={`/trees/${encodeURIComponent(tree.tag)}`} prefetch={false} title={tree.title}>
       <Tag tag={tree.tag} height={fittedTagHeight(tree.tag, 28)} ground="bone" />
+      {tree.isDemo && <span className="vh">Demo</span>}
       {rail === 'last coat on' && !isTagOnly && (
         <span>
           {pair ? (

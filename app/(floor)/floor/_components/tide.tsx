@@ -1,3 +1,4 @@
+import { DemoMark } from '@/app/_components/demo-mark'
 import { ShellSection } from '@/app/_components/shell-section'
 import { StateMark } from '@/app/_components/state-mark'
 import { fittedTagHeight, Tag } from '@/app/_components/tag'
@@ -159,6 +160,7 @@ function Row({ row, scale, now, timeZone, width, height, onTrees }: RowProps) {
               {tree.title}
             </b>
           )}
+          {row.trees.length === 1 && tree.isDemo && <DemoMark />}
         </span>
         {words && water ? (
           <span className="tide-times">

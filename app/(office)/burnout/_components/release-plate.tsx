@@ -2,6 +2,7 @@
 
 import { Fragment, useState } from 'react'
 import Link from 'next/link'
+import { DemoMark } from '@/app/_components/demo-mark'
 import { HoldKey } from '@/app/_components/hold-key'
 import { Icon } from '@/app/_components/icons'
 import { Key } from '@/app/_components/key'
@@ -98,7 +99,8 @@ export function ReleasePlate({ rows, mayRelease, now }: { rows: ReleaseRow[]; ma
                     <th role="rowheader" scope="row" className="c-piece">
                       <Link className="row-link" href={`/trees/${encodeURIComponent(tree.tag)}`} prefetch={false}>
                         {tree.title}
-                      </Link>
+                      </Link>{' '}
+                      {tree.isDemo && <DemoMark />}
                     </th>
                     <td role="cell" className="c-shell">
                       <TreeSection tree={tree} height={20} fit={110} isDecoration />

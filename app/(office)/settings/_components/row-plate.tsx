@@ -1,10 +1,13 @@
 'use client'
 
 import { useState, type ReactNode } from 'react'
+import { DemoMark } from '@/app/_components/demo-mark'
 import { Key } from '@/app/_components/key'
 
 export type RowPlateProps = {
   title: string
+  /** Demo data in a foundry that is not the demo itself. */
+  isDemo?: boolean
   /** Beside the title. */
   line?: ReactNode
   /** What is known of it. */
@@ -18,12 +21,14 @@ export type RowPlateProps = {
 }
 
 /** One row of the settings: what is known of it, its keys, and its form where somebody changes it. */
-export function RowPlate({ title, line, children, form, verb = 'Change', keys }: RowPlateProps) {
+export function RowPlate({ title, isDemo = false, line, children, form, verb = 'Change', keys }: RowPlateProps) {
   const [isOpen, setIsOpen] = useState(false)
   return (
     <li className="plate settings-row">
       <header>
-        <h2>{title}</h2>
+        <h2>
+          {title} {isDemo && <DemoMark />}
+        </h2>
         {line !== undefined && <p>{line}</p>}
       </header>
       <div className="plate-body">

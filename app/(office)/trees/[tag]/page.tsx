@@ -2,6 +2,7 @@ import type { Metadata } from 'next'
 import Link from 'next/link'
 import { notFound } from 'next/navigation'
 import type { ReactNode } from 'react'
+import { DemoMark } from '@/app/_components/demo-mark'
 import { Icon } from '@/app/_components/icons'
 import { LiveClock } from '@/app/_components/live-clock'
 import { Plate } from '@/app/_components/plate'
@@ -143,7 +144,9 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
           <Tag tag={tag} size="xl" isHeld={tree.state === 'held'} ground="bone" />
         </span>
         <div className="min-w-0 grow">
-          <h1>{tree.title}</h1>
+          <h1>
+            {tree.title} {tree.isDemo && <DemoMark />}
+          </h1>
           <p className="tree-facts">
             {[
               `Recipe ${recipe.name}`,

@@ -1,4 +1,5 @@
 import Link from 'next/link'
+import { DemoMark } from '@/app/_components/demo-mark'
 import { Icon } from '@/app/_components/icons'
 import { StateMark } from '@/app/_components/state-mark'
 import { fittedTagHeight, Tag } from '@/app/_components/tag'
@@ -44,7 +45,8 @@ export function TreeTable({ trees, context, view }: { trees: readonly TreeListRo
                 {/* The link covers its whole row. */}
                 <Link className="row-link" href={`/trees/${encodeURIComponent(tree.tag)}`} prefetch={false}>
                   {tree.title}
-                </Link>
+                </Link>{' '}
+                {tree.isDemo && <DemoMark />}
               </th>
               <td role="cell" className="c-shell">
                 <TreeSection tree={tree} height={20} fit={112} isDecoration />

@@ -7,6 +7,7 @@ import { FormMessage } from '@/app/(office)/_components/form-message'
 import { useKeptForm } from '@/app/(office)/_components/use-kept-form'
 import { layDemoAction, removeDemoAction } from '@/app/(office)/upkeep/demo-actions'
 import type { DemoStanding } from '@/lib/foundry/demo-standing'
+import type { FormState } from '@/lib/server/form-state'
 
 /** The demo data: laid over a floor without trees, and removed again, each in one step. */
 export function DemoPlate({ standing }: { standing: DemoStanding }) {
@@ -30,12 +31,17 @@ export function DemoPlate({ standing }: { standing: DemoStanding }) {
             </HoldKey>
           </form>
         )}
-        {/* What one act says goes when the other has been done. */}
-        <FormMessage state={standing === 'laid over' ? (remove.state.status === 'refused' ? remove.state : lay.state) : remove.state} />
-        {standing === 'none' && lay.state.status === 'refused' && <FormMessage state={lay.state} />}
+        <FormMessage state={lastWord(standing, lay.state, remove.state)} />
       </div>
     </Plate>
   )
+}
+
+/** The word of the act that led to how it stands, or of the one that was refused. */
+function lastWord(standing: DemoStanding, laid: FormState, removed: FormState): FormState {
+  const isThere = standing === 'laid over' || standing === 'all demo'
+  const [last, refusable] = isThere ? [laid, removed] : [removed, laid]
+  return refusable.status === 'refused' ? refusable : last
 }
 
 const LINES: Record<DemoStanding, string> = {

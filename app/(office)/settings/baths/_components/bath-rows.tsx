@@ -36,6 +36,7 @@ export function BathRows({ baths: { inUse, retired }, now, timeZone }: { baths: 
           <RowPlate
             key={bath.id}
             title={bath.name}
+            isDemo={bath.isDemo}
             line={KIND_LINES[bath.kind]}
             form={<BathForm bath={bath} />}
             keys={
@@ -53,6 +54,7 @@ export function BathRows({ baths: { inUse, retired }, now, timeZone }: { baths: 
           <RowPlate
             key={bath.id}
             title={bath.name}
+            isDemo={bath.isDemo}
             line="retired"
             keys={
               <ActForm action={() => reuseBathAction(bath.id)} label={`Use ${bath.name} again`}>

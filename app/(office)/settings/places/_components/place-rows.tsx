@@ -32,6 +32,7 @@ export function PlaceRows({ places: { inUse, retired, sensors } }: { places: Pla
           <RowPlate
             key={place.id}
             title={place.name}
+            isDemo={place.isDemo}
             line={`air read by ${place.sensor.name}`}
             form={
               <PlaceForm
@@ -54,6 +55,7 @@ export function PlaceRows({ places: { inUse, retired, sensors } }: { places: Pla
           <RowPlate
             key={place.id}
             title={place.name}
+            isDemo={place.isDemo}
             line="retired"
             keys={
               <ActForm action={() => reusePlaceAction(place.id)} label={`Use ${place.name} again`}>

@@ -45,6 +45,7 @@ export function SensorRows({
           <RowPlate
             key={sensor.id}
             title={sensor.name}
+            isDemo={sensor.isDemo}
             line={KIND_LINES[sensor.kind]}
             form={<SensorForm sensor={sensor} />}
             verb="Rename"
@@ -64,6 +65,7 @@ export function SensorRows({
           <RowPlate
             key={sensor.id}
             title={sensor.name}
+            isDemo={sensor.isDemo}
             line="retired; a logger needs a new token when it comes back"
             keys={
               <ActForm action={() => reuseSensorAction(sensor.id)} label={`Use ${sensor.name} again`}>
