@@ -3,7 +3,7 @@
 import './globals.css'
 
 /** Stands in when the frame of every page is broken, so it leans on nothing but the style sheet. */
-export default function GlobalError({ retry }: { error: unknown; retry: () => void }) {
+export default function GlobalError() {
   return (
     <html lang="en" data-theme="auto">
       <body>
@@ -13,11 +13,12 @@ export default function GlobalError({ retry }: { error: unknown; retry: () => vo
           <p className="max-w-[54ch] text-20">
             Nothing that was logged is lost. Try again; if it stays, restart the server and look at its log.
           </p>
-          <div className="flex flex-wrap gap-3">
-            <button type="button" className="key key-64 key-go" onClick={retry}>
+          {/* Made at build time, so its scripts have no nonce and do not run: a form needs none. */}
+          <form className="flex flex-wrap gap-3">
+            <button type="submit" className="key key-64 key-go">
               Try again
             </button>
-          </div>
+          </form>
         </main>
       </body>
     </html>

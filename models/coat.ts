@@ -7,7 +7,7 @@ import {
   type NonAttribute,
   type Sequelize,
 } from 'sequelize'
-import type { CoatKind, CoatingWay, Stucco } from '@/lib/coats/vocabulary'
+import type { CoatKind, CoatingWay, Guard, Stucco } from '@/lib/coats/vocabulary'
 import { json } from '@/models/columns'
 import type { Bath } from '@/models/bath'
 import type { CoatLook } from '@/models/coat-look'
@@ -16,7 +16,7 @@ import type { Operation } from '@/models/operation'
 import type { Place } from '@/models/place'
 import type { Tree } from '@/models/tree'
 
-/** Withdrawn when taken back, never deleted. Figures of air, need and forecast are as they were at the dip. */
+/** Withdrawn when taken back, never deleted. Figures of air, need, target and forecast are as they were at the dip. */
 export class Coat extends Model<InferAttributes<Coat>, InferCreationAttributes<Coat>> {
   declare id: string
   declare treeId: string
@@ -38,6 +38,9 @@ export class Coat extends Model<InferAttributes<Coat>, InferCreationAttributes<C
   declare relHumidityPct: CreationOptional<number | null>
   declare needReferenceHours: number
   declare moistureRatioBelow: number
+  declare moistureTarget: CreationOptional<number>
+  declare guard: CreationOptional<Guard>
+  declare longestWaitHours: CreationOptional<number>
   declare forecastP10At: CreationOptional<number | null>
   declare forecastP50At: CreationOptional<number | null>
   declare forecastP90At: CreationOptional<number | null>
@@ -79,6 +82,9 @@ export class Coat extends Model<InferAttributes<Coat>, InferCreationAttributes<C
         relHumidityPct: { type: DataTypes.DOUBLE },
         needReferenceHours: { type: DataTypes.DOUBLE, allowNull: false },
         moistureRatioBelow: { type: DataTypes.DOUBLE, allowNull: false },
+        moistureTarget: { type: DataTypes.DOUBLE, allowNull: false, defaultValue: 0.1 },
+        guard: { type: DataTypes.TEXT, allowNull: false, defaultValue: 'safe' },
+        longestWaitHours: { type: DataTypes.DOUBLE, allowNull: false, defaultValue: 72 },
         forecastP10At: { type: DataTypes.INTEGER },
         forecastP50At: { type: DataTypes.INTEGER },
         forecastP90At: { type: DataTypes.INTEGER },

@@ -13,6 +13,8 @@ import { flag } from '@/models/columns'
 export class Work extends Model<InferAttributes<Work>, InferCreationAttributes<Work>> {
   declare id: string
   declare title: string
+  /** How many there will be; null where nobody has said so. */
+  declare editionSize: CreationOptional<number | null>
   declare isDemo: CreationOptional<boolean>
   declare createdAt: number
 
@@ -23,6 +25,7 @@ export class Work extends Model<InferAttributes<Work>, InferCreationAttributes<W
       {
         id: { type: DataTypes.TEXT, primaryKey: true, allowNull: false },
         title: { type: DataTypes.TEXT, allowNull: false },
+        editionSize: { type: DataTypes.INTEGER },
         isDemo: { ...flag('isDemo'), defaultValue: false },
         createdAt: { type: DataTypes.INTEGER, allowNull: false },
       },

@@ -1,4 +1,5 @@
 import { z } from 'zod'
+import { clearMark, setMark } from '@/app/_components/push-mark'
 import {
   pushDevices,
   pushTestAnswer,
@@ -12,9 +13,6 @@ import {
 export type PushSupport = 'ok' | 'insecure' | 'install first' | 'unsupported' | 'blocked'
 
 const DEVICES_ADDRESS = '/api/v1/push/subscriptions'
-/** Remembers whose notices this browser shows and which, so that a subscription the browser has changed can be handed in again. */
-const MARK = 'kilnward-push'
-const mark = z.object({ memberId: z.string(), scope: z.enum(['every tree', 'watched trees']) })
 
 export function pushSupport(): PushSupport {
   if (!window.isSecureContext) return 'insecure'
@@ -72,7 +70,7 @@ export async function fetchDevices(): Promise<PushDevices> {
 export async function saveDevice(subscription: PushSubscription, { publicKey, memberId }: PushDevices, scope: PushScope): Promise<void> {
   const { endpoint, keys } = subscription.toJSON()
   await call('POST', DEVICES_ADDRESS, { endpoint, keys, vapidPublicKey: publicKey, scope, label: browserName() })
-  window.localStorage.setItem(MARK, JSON.stringify({ memberId, scope }))
+  setMark({ memberId, scope })
 }
 
 export async function removeDevice(device: DeviceInput): Promise<void> {
@@ -86,28 +84,11 @@ export async function testDevice(device: DeviceInput): Promise<PushTestAnswer> {
 /** Turns notices off in this browser, here and on the server; before signing out as well. */
 export async function forgetThisBrowser(): Promise<void> {
   if (!('serviceWorker' in navigator) || !('PushManager' in window)) return
-  window.localStorage.removeItem(MARK)
+  clearMark()
   const subscription = await ownSubscription()
   if (!subscription) return
   await removeDevice({ endpoint: subscription.endpoint })
   await subscription.unsubscribe()
-}
-
-/** What this browser was set to for this member; null where it was never turned on, or for somebody else. */
-export function rememberedScope(memberId: string): PushScope | null {
-  const known = readMark()
-  return known?.memberId === memberId ? known.scope : null
-}
-
-/** True where notices were turned on in this browser: only then is there anything to compare. */
-export const hasMark = (): boolean => readMark() !== null
-
-function readMark(): z.infer<typeof mark> | null {
-  try {
-    return mark.safeParse(JSON.parse(window.localStorage.getItem(MARK) ?? 'null')).data ?? null
-  } catch {
-    return null
-  }
 }
 
 /** 'Chrome on Android': enough to tell one's own devices apart. */

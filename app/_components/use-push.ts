@@ -6,16 +6,15 @@ import {
   endpointHash,
   fetchDevices,
   forgetThisBrowser,
-  hasMark,
   ownSubscription,
   pushSupport,
   Refused,
-  rememberedScope,
   saveDevice,
   subscribeBrowser,
   testDevice,
   type PushSupport,
 } from '@/app/_components/push-browser'
+import { rememberedScope } from '@/app/_components/push-mark'
 import type { PushDevice, PushDevices, PushScope } from '@/lib/notices/push-contract'
 
 /** How notices stand on this device. */
@@ -103,5 +102,5 @@ export function usePush(): Push {
 
 /** Compares this browser's subscription with the server's list once per page load, where notices were turned on before. */
 export function useKeptPush(): void {
-  useQuery({ queryKey: PUSH_KEY, queryFn: readPush, staleTime: Infinity, enabled: typeof window !== 'undefined' && hasMark() })
+  useQuery({ queryKey: PUSH_KEY, queryFn: readPush, staleTime: Infinity })
 }

@@ -38,8 +38,8 @@ export async function changePassword(
   }
   const { passwordHash } = await Member.findByPk(member.id, { rejectOnEmpty: true })
   if (!(await isPasswordRight(currentPassword, passwordHash))) refuseField('currentPassword', 'This is not the password that you have now.')
-  if (currentPassword.normalize('NFC') === newPassword.normalize('NFC'))
-    refuseField('newPassword', 'This is the password that you have now.')
+  const isSame = currentPassword.normalize('NFC') === newPassword.normalize('NFC')
+  if (isSame) refuseField('newPassword', 'This is the password that you have now.')
   const newHash = await hashPassword(newPassword)
   return inTransaction(async () => {
     const now = clock.now()

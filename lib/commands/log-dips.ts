@@ -88,15 +88,16 @@ async function putCoatsOn(run: DipRun, member: Actor, now: number): Promise<DipR
   for (const { facts: tree, place, coatNumber, placeId, reason } of chosen) {
     const below = tree.coats.at(-1) ?? null
     const belowCall = below ? callOf(tree, below, context, run.dippedAt) : null
-    const belowTarget = below ? (recipeCoatOf(tree, below.number)?.moistureTarget ?? 0.1) : 1
     const saidDry = tree.look?.verdict === 'looks dry'
-    const isBelowDry = belowCall === null || belowCall.moistureRatio <= belowTarget || saidDry
+    const isBelowDry = below === null || belowCall === null || belowCall.moistureRatio <= below.moistureTarget || saidDry
     // Early is before the guard, as on the sheet: likely dry is not safe under a face coat or in a recess.
     const isEarly = belowCall !== null && belowCall.guardReachedAt === null && !saidDry
     const moistureRatioBelow = isBelowDry ? 0 : belowCall.moistureRatio
     const planned = recipeCoatOf(tree, coatNumber)
     const asPlanned = planned ?? tree.recipe.coats.findLast((coat) => coat.stucco === run.stucco) ?? tree.recipe.coats.at(-1)
-    if (!asPlanned) throw new AppError('unprocessable', `The recipe of ${tree.tag} has no coat.`)
+    // Beyond the recipe a coat has to dry as far as its last one.
+    const last = planned ?? tree.recipe.coats.at(-1)
+    if (!asPlanned || !last) throw new AppError('unprocessable', `The recipe of ${tree.tag} has no coat.`)
     const air = airAt(context, airOf(place, run.dippedAt).sensorId, run.dippedAt)
     const deviations: Deviation[] = [
       ...asList(tree.hold !== null, 'held'),
@@ -127,6 +128,9 @@ async function putCoatsOn(run: DipRun, member: Actor, now: number): Promise<DipR
         moistureRatioBelow,
         treeTheta: 0,
       }),
+      moistureTarget: last.moistureTarget,
+      guard: last.guard,
+      longestWaitHours: last.longestWaitHours,
       airTempC: air?.airTempC ?? null,
     }
     // A dip told late may lie before a later move: what counts is where the tree hung then.

@@ -54,7 +54,10 @@ export function retireBath(bathId: string, { member, clock }: By): Promise<void>
     const recipes = await recipesThatNeed(bathId)
     if (recipes.length > 0) {
       const verb = recipes.length === 1 ? 'needs' : 'need'
-      throw new AppError('conflict', `${nameList(recipes)} ${verb} ${bath.name}. Make a new version of the recipe first.`)
+      throw new AppError(
+        'conflict',
+        `${nameList(recipes.map((name) => `‘${name}’`))} ${verb} ${bath.name}. Make a new version without it first.`,
+      )
     }
     const tags = await treesThatWait(bathId)
     if (tags.length > 0) {

@@ -1,11 +1,16 @@
-import { col, fn, where } from 'sequelize'
 import { addFoundryEvent } from '@/lib/commands/foundry-event'
 import { refuseField } from '@/lib/commands/refuse-field'
 import type { Clock } from '@/lib/core/clock'
+import { AppError } from '@/lib/core/errors'
 import { newId } from '@/lib/core/ids'
+import { isSameName } from '@/lib/format/same-name'
 import type { Actor } from '@/lib/members/actor'
-import type { RecipeCoatInput, RecipeInput } from '@/lib/recipes/recipe-input'
-import { Bath, inTransaction, Recipe, RecipeCoat, RecipeVersion } from '@/models'
+import { changedFields } from '@/lib/members/changed-fields'
+import { loadVersionCoats } from '@/lib/queries/version-coats'
+import { areNeedsSame, coatCells } from '@/lib/recipes/coat-cells'
+import type { RecipeCoatInput, RecipeInput, RecipeVersionInput } from '@/lib/recipes/recipe-input'
+import { differencesInShort, hasDifferences, versionDifferences } from '@/lib/recipes/version-differences'
+import { Bath, inTransaction, Member, Recipe, RecipeCoat, RecipeVersion } from '@/models'
 
 type By = { member: Actor; clock: Clock }
 
@@ -18,7 +23,7 @@ export function createRecipe(input: RecipeInput, { member, clock }: By): Promise
   return inTransaction(async () => {
     const now = clock.now()
     await requireFreeName(input.name)
-    const bathNames = await requireBaths(input.coats)
+    const coats = await withBaths(input.coats)
     const recipe = await Recipe.create({ id: newId(now), name: input.name, isDemo: member.isDemo ?? false, createdAt: now })
     const versionId = await addVersion(recipe.id, 1, { note: input.note, coats: input.coats, calibratedAt: null }, { member, now })
     await addFoundryEvent(
@@ -27,29 +32,139 @@ export function createRecipe(input: RecipeInput, { member, clock }: By): Promise
         kind: 'recipe added',
         by: member,
         at: now,
-        text: `Recipe ${recipe.name} added, version 1 with ${input.coats.length} ${input.coats.length === 1 ? 'coat' : 'coats'}.`,
-        after: { name: recipe.name, note: input.note, coats: namedCoats(input.coats, bathNames) },
+        text: `Recipe ${recipe.name} added, version 1 with ${coats.length} ${coats.length === 1 ? 'coat' : 'coats'}.`,
+        after: { name: recipe.name, note: input.note, coats: numbered(coats) },
       },
     )
     return { recipeId: recipe.id, versionId }
   })
 }
 
-/** Two names that differ in their capitals alone would be told apart by nobody. */
-export async function requireFreeName(name: string, ofRecipeId?: string): Promise<void> {
-  const holder = await Recipe.findOne({ where: where(fn('lower', col('name')), name.toLowerCase()) })
-  if (holder && holder.id !== ofRecipeId) refuseField('name', `There is a recipe ${holder.name} already.`)
+/**
+ * Adds the next version of a recipe; the versions before it stay as they are, and so do the trees that stand on them. It is
+ * calibrated only where the version it was filled from is, and nothing differs that a need rests on.
+ *
+ * @throws {AppError} not_found; conflict when somebody made a version meanwhile or nothing differs from the newest one, and with
+ *   `fields` for a bath that is unknown or retired.
+ */
+export function addRecipeVersion(
+  recipeId: string,
+  input: RecipeVersionInput,
+  { member, clock }: By,
+): Promise<{ versionId: string; version: number; isCalibrated: boolean }> {
+  return inTransaction(async () => {
+    const now = clock.now()
+    const recipe = await findRecipe(recipeId)
+    const versions = await RecipeVersion.findAll({ where: { recipeId }, order: [['version', 'DESC']] })
+    const newest = versions[0]
+    const from = versions.find(({ version }) => version === input.from)
+    if (!newest || !from) throw new AppError('not_found', 'There is no such version.')
+    if (newest.version !== input.follows) {
+      const maker = newest.createdBy === null ? null : await Member.findByPk(newest.createdBy)
+      const who = maker ? `${maker.name} made` : 'There is'
+      throw new AppError('conflict', `${who} version ${newest.version} meanwhile. Look at it first: what you typed is still here.`)
+    }
+    const coats = await withBaths(input.coats)
+    const known = await loadVersionCoats([newest.id, from.id])
+    const cells = coats.map(coatCells)
+    const before = known.get(newest.id) ?? []
+    const differences = versionDifferences(before.map(coatCells), cells)
+    if (!hasDifferences(differences)) {
+      throw new AppError('conflict', `Nothing differs from version ${newest.version}: a new version needs a difference.`)
+    }
+    const calibratedAt = areNeedsSame((known.get(from.id) ?? []).map(coatCells), cells) ? from.calibratedAt : null
+    const version = newest.version + 1
+    const versionId = await addVersion(recipeId, version, { note: input.note, coats: input.coats, calibratedAt }, { member, now })
+    await addFoundryEvent(
+      { type: 'recipe', id: recipeId, name: recipe.name },
+      {
+        kind: 'recipe version added',
+        by: member,
+        at: now,
+        text: `Version ${version} of ${recipe.name}: ${differencesInShort(differences)}. ${input.note}`,
+        ...changedFields(
+          { version: newest.version, coats: numbered(before), isCalibrated: newest.calibratedAt !== null },
+          { version, coats: numbered(coats), isCalibrated: calibratedAt !== null },
+        ),
+      },
+    )
+    return { versionId, version, isCalibrated: calibratedAt !== null }
+  })
 }
 
-/** Names of the baths in use, by id. */
-async function requireBaths(coats: readonly RecipeCoatInput[]): Promise<Map<string, string>> {
+/** Gives a recipe another name. @throws {AppError} not_found; conflict with `fields` when the name is taken. */
+export function renameRecipe(recipeId: string, name: string, { member, clock }: By): Promise<void> {
+  return inTransaction(async () => {
+    const recipe = await findRecipe(recipeId)
+    if (recipe.name === name) return
+    await requireFreeName(name, recipeId)
+    const before = recipe.name
+    await recipe.update({ name })
+    await stopBeingDemo(recipe, member)
+    await addFoundryEvent(
+      { type: 'recipe', id: recipeId, name },
+      {
+        kind: 'recipe renamed',
+        by: member,
+        at: clock.now(),
+        text: `Recipe ${before} is called ${name} now.`,
+        before: { name: before },
+        after: { name },
+      },
+    )
+  })
+}
+
+/** Retires a recipe, or takes it into use again. New trees are not offered a retired one; those that stand on it go on. */
+export function retireRecipe(recipeId: string, isRetired: boolean, { member, clock }: By): Promise<void> {
+  return inTransaction(async () => {
+    const recipe = await findRecipe(recipeId)
+    if ((recipe.retiredAt !== null) === isRetired) return
+    const now = clock.now()
+    const before = recipe.retiredAt
+    await recipe.update({ retiredAt: isRetired ? now : null })
+    await stopBeingDemo(recipe, member)
+    await addFoundryEvent(
+      { type: 'recipe', id: recipeId, name: recipe.name },
+      {
+        kind: isRetired ? 'recipe retired' : 'recipe taken into use',
+        by: member,
+        at: now,
+        text: isRetired ? `Recipe ${recipe.name} retired.` : `Recipe ${recipe.name} taken into use again.`,
+        before: { retiredAt: before },
+        after: { retiredAt: recipe.retiredAt },
+      },
+    )
+  })
+}
+
+async function findRecipe(recipeId: string): Promise<Recipe> {
+  const recipe = await Recipe.findByPk(recipeId)
+  if (!recipe) throw new AppError('not_found', 'There is no such recipe.')
+  return recipe
+}
+
+/** Whoever changes a demo recipe itself makes it the foundry's own; what is built on it the demo's removal finds by itself. */
+async function stopBeingDemo(recipe: Recipe, member: Actor): Promise<void> {
+  if (recipe.isDemo && !member.isDemo) await recipe.update({ isDemo: false })
+}
+
+async function requireFreeName(name: string, ofRecipeId?: string): Promise<void> {
+  const namesake = (await Recipe.findAll()).find((recipe) => recipe.id !== ofRecipeId && isSameName(recipe.name, name))
+  if (namesake) refuseField('name', `There is a recipe ${namesake.name} already.`)
+}
+
+type NamedCoat = RecipeCoatInput & { bathName: string }
+
+/** The coats with the names of their baths, each of which has to be in use. */
+async function withBaths(coats: readonly RecipeCoatInput[]): Promise<NamedCoat[]> {
   const baths = new Map((await Bath.findAll()).map((bath) => [bath.id, bath]))
-  for (const [index, coat] of coats.entries()) {
+  return coats.map((coat, index) => {
     const bath = baths.get(coat.bathId)
     if (!bath) refuseField(`coats.${index}.bathId`, 'There is no such bath.')
     if (bath.retiredAt !== null) refuseField(`coats.${index}.bathId`, `${bath.name} is retired: choose a bath in use.`)
-  }
-  return new Map([...baths].map(([id, { name }]) => [id, name]))
+    return { ...coat, bathName: bath.name }
+  })
 }
 
 async function addVersion(
@@ -65,6 +180,5 @@ async function addVersion(
 }
 
 /** Coats as the history keeps them: a bath by the name it had. */
-function namedCoats(coats: readonly RecipeCoatInput[], bathNames: ReadonlyMap<string, string>) {
-  return coats.map(({ bathId, ...coat }, index) => ({ number: index + 1, ...coat, bath: bathNames.get(bathId) ?? '' }))
-}
+const numbered = (coats: readonly NamedCoat[]) =>
+  coats.map(({ bathId: _bathId, bathName, ...coat }, index) => ({ ...coat, number: index + 1, bath: bathName }))

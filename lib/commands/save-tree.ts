@@ -22,7 +22,7 @@ export function createTree(input: TreeInput, { member, clock }: By): Promise<{ t
     if (await Tree.findOne({ where: { tag: input.tag } })) {
       refuseField('tag', `${input.tag} was used before: a tag is for one tree, for ever.`)
     }
-    await requireRecipeAndPlace(input)
+    await requireRecipeAndPlace(input, null)
     const { pieces, placeId, ...columns } = input
     const treeId = newId(now)
     await Tree.create({ ...columns, id: treeId, isDemo: member.isDemo ?? false, createdBy: member.id, createdAt: now, updatedAt: now })
@@ -45,11 +45,14 @@ export function editTree(treeId: string, input: TreeInput, { member, clock }: By
   return inTransaction(async () => {
     const now = clock.now()
     const tree = await openTree(treeId)
-    await requireRecipeAndPlace(input)
+    await requireRecipeAndPlace(input, tree.recipeVersionId)
     if (input.tag !== tree.tag) refuseField('tag', `This tree is ${tree.tag} for ever.`)
     const coatsOn = await Coat.count({ where: { treeId, withdrawnAt: null } })
     if (coatsOn > 0 && input.recipeVersionId !== tree.recipeVersionId) {
-      refuseField('recipeVersionId', 'This stands from the first coat on: the coats were worked out on it.')
+      refuseField(
+        'recipeVersionId',
+        'This stands from the first coat on. A tree is moved to a newer version of its recipe on its own page.',
+      )
     }
     await correctNeeds(tree, input)
     const { pieces, placeId, ...columns } = input
@@ -70,8 +73,13 @@ async function correctNeeds(tree: Tree, { recessClass, spacing }: TreeInput): Pr
   }
 }
 
-async function requireRecipeAndPlace(input: TreeInput): Promise<void> {
-  if (!(await RecipeVersion.findByPk(input.recipeVersionId))) refuseField('recipeVersionId', 'There is no such recipe.')
+/** A tree keeps the version that it stands on, also when its recipe is retired; a retired one is not chosen anew. */
+async function requireRecipeAndPlace(input: TreeInput, standsOn: string | null): Promise<void> {
+  const version = await RecipeVersion.findByPk(input.recipeVersionId, { include: { association: 'recipe' } })
+  if (!version?.recipe) refuseField('recipeVersionId', 'There is no such recipe.')
+  if (version.id !== standsOn && version.recipe.retiredAt !== null) {
+    refuseField('recipeVersionId', `${version.recipe.name} is retired: choose a recipe in use.`)
+  }
   const place = await Place.findByPk(input.placeId)
   if (!place || place.retiredAt !== null) refuseField('placeId', 'There is no such place.')
 }
@@ -103,6 +111,9 @@ async function addPiece(
   const casts = await Piece.findAll({ where: { sectionId: section.id, editionNumber: input.editionNumber }, order: [['createdAt', 'ASC']] })
   const title = [input.workTitle, input.sectionName].filter(Boolean).join(', ')
   const field = `pieces.${index}.editionNumber`
+  if (work.editionSize !== null && input.editionNumber > work.editionSize) {
+    refuseField(field, `${work.title} is an edition of ${work.editionSize}: there is no number ${input.editionNumber}.`)
+  }
   if (!input.isRecast && casts.length > 0) {
     refuseField(field, `Edition ${input.editionNumber} of ${title} exists already. Tick 'recast' if this replaces it.`)
   }

@@ -13,13 +13,20 @@ function isRealContact(subject: string): boolean {
   return host !== undefined && host.includes('.') && !RESERVED_HOST.test(host)
 }
 
+/** Words of a line that was copied from somewhere and never filled in; and keys hit at random do not repeat so few letters. */
+const isExampleSecret = (secret: string) =>
+  /change.?(?:me|this)|replace.?(?:me|this)|your.?secret|example|placeholder/i.test(secret) || new Set(secret).size < 10
+
 const schema = z.object({
   NODE_ENV: z.enum(['production', 'development', 'test']).default('production'),
   /** Folder of the database and of what a new foundry makes for itself. */
   DATA_DIR: z.string().min(1).default('data'),
   /** Folder of the backups, where it is not inside DATA_DIR. */
   BACKUP_DIR: z.string().optional(),
-  NEXTAUTH_SECRET: z.string().min(32, 'NEXTAUTH_SECRET must be at least 32 characters.'),
+  NEXTAUTH_SECRET: z
+    .string()
+    .min(32, 'NEXTAUTH_SECRET must be at least 32 characters.')
+    .refine((secret) => secret.length < 32 || !isExampleSecret(secret), 'NEXTAUTH_SECRET is an example: make your own, or leave it out.'),
   NEXTAUTH_URL: z.url('NEXTAUTH_URL must be the address people open, such as http://localhost:3000.'),
   /** Waiting writers and password hashes hold threads; with Node's four the holder of the write lock can wait for one for ever. */
   UV_THREADPOOL_SIZE: z

@@ -3,7 +3,7 @@ import type { DipRun } from '@/lib/coats/dip-contract'
 import { readTyped, typedWords } from '@/lib/format/typed-units'
 import { UNIT_SIGNS, type TempUnit } from '@/lib/format/units'
 import type { Queue, QueueTree } from '@/lib/queue/contract'
-import { AIR_TEMP_LIMITS_C, relHumidityPct } from '@/lib/room/reading-contract'
+import { AIR_TEMP_LIMITS_C, humidityProblem } from '@/lib/room/air-limits'
 import type { TreeState } from '@/lib/trees/states'
 
 const MINUTE_MS = 60_000
@@ -183,13 +183,14 @@ export function checkDial(
 ): { errors: DialErrors; room: { airTempC: number; relHumidityPct: number } | null } {
   const errors: DialErrors = {}
   const typedTemp = parseDial(temp)
+  const typedHumidity = parseDial(humidity)
   const problem = tempProblem(typedTemp, unit)
-  const parsedHumidity = relHumidityPct.safeParse(parseDial(humidity) ?? undefined)
+  const problemOfHumidity = humidityProblem(typedHumidity)
   if (problem !== null) errors.airTempC = problem
-  if (!parsedHumidity.success) errors.relHumidityPct = parsedHumidity.error.issues[0]?.message ?? 'Humidity is a number in %.'
+  if (problemOfHumidity !== null) errors.relHumidityPct = problemOfHumidity
   const room =
-    typedTemp !== null && problem === null && parsedHumidity.success
-      ? { airTempC: readTyped(typedTemp, unit), relHumidityPct: parsedHumidity.data }
+    typedTemp !== null && problem === null && typedHumidity !== null && problemOfHumidity === null
+      ? { airTempC: readTyped(typedTemp, unit), relHumidityPct: typedHumidity }
       : null
   return { errors, room }
 }

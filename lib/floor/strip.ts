@@ -2,14 +2,6 @@ import { formatReadAge } from '@/lib/format/duration'
 import { formatMoment } from '@/lib/format/local-time'
 import type { Queue, QueueBath, QueueRoom } from '@/lib/queue/contract'
 
-/** The drying pull as a word. */
-export const PULL_WORDS: Record<QueueRoom['pull'], string> = {
-  slow: 'Slow',
-  good: 'Good',
-  'too dry for face coats': 'Too dry for face coats',
-  'not known': 'Not known',
-}
-
 /** Age of the newest reading: 'read 2 min ago', 'no reading since 14:05', 'no reading yet'. */
 export function readingAge(room: QueueRoom, now: number, timeZone: string): string {
   if (room.measuredAt === null) return 'no reading yet'

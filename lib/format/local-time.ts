@@ -35,6 +35,11 @@ export function formatDate(at: number, timeZone: string): string {
   return `${part('weekday')} ${part('day')} ${part('month').slice(0, 3)}`
 }
 
+/** With its year, for what may lie long ago: 'Tue 13 Oct 2026'. */
+export function formatDateOfYear(at: number, timeZone: string): string {
+  return `${formatDate(at, timeZone)} ${localDay(at, timeZone).slice(0, 4)}`
+}
+
 /** A stored day such as a pour date: '2026-10-13' as 'Tue 13 Oct'. A day has no zone. */
 export function formatDay(day: string): string {
   return formatDate(Date.parse(`${day}T12:00:00Z`), 'UTC')

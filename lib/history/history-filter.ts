@@ -24,7 +24,7 @@ export type HistoryFilter = {
 const day = z.iso.date()
 const member = z.union([z.uuid(), z.literal(NOBODY)])
 const kind = z.string().trim().min(1).max(40)
-const cursor = z.templateLiteral([z.int().min(0), '.', z.enum(HISTORY_SOURCES), '.', z.int().min(0)])
+const cursor = z.string().regex(/^\d{1,15}\.(?:foundry|tree)\.\d{1,15}$/)
 
 type Words = Readonly<Record<string, string | string[] | undefined>>
 

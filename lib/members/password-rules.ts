@@ -25,12 +25,12 @@ const BETTER = 'Take a few words that only you would put together.'
  * @example passwordProblem('short') // => 'A password has at least 12 characters.'
  */
 export function passwordProblem(password: string, owner?: { name: string; email: string }): string | null {
-  const letters = [...password.normalize('NFC')].length
+  const letters = Array.from(password.normalize('NFC')).length
   if (letters < LEAST_PASSWORD_LETTERS) return `A password has at least ${LEAST_PASSWORD_LETTERS} characters.`
   if (letters > MOST_PASSWORD_LETTERS) return `A password has at most ${MOST_PASSWORD_LETTERS} characters.`
   const small = password.trim().toLowerCase()
   if (COMMON_PASSWORDS.has(small)) return `This is one of the first passwords that anybody would try. ${BETTER}`
-  if (REPEATS.test(small)) return `This only repeats itself. ${BETTER}`
+  if (REPEATS.test(small) || REPEATS.test(folded(small))) return `This only repeats itself. ${BETTER}`
   if (owner && isOwnName(password, owner)) return `A password is not a name or an e-mail. ${BETTER}`
   return null
 }

@@ -47,7 +47,8 @@ export async function loadFacts(selection: TreeSelection): Promise<TreeFacts[]> 
   const [coats, stays, holds, looks, lookOvers, pieces, recipeCoats] = await Promise.all([
     select<OfTree<CoatFacts>>(
       `SELECT tree_id AS treeId, id, number, kind, stucco, way, place_id AS placeId, dipped_at AS dippedAt, drain_seconds AS drainSeconds,
-              rough_minutes AS roughMinutes, need_reference_hours AS needReferenceHours, air_temp_c AS airTempC
+              rough_minutes AS roughMinutes, need_reference_hours AS needReferenceHours, moisture_target AS moistureTarget, guard,
+              longest_wait_hours AS longestWaitHours, air_temp_c AS airTempC
          FROM coats WHERE withdrawn_at IS NULL AND tree_id IN (SELECT value FROM json_each(:ids)) ORDER BY tree_id, number`,
       { ids },
     ),

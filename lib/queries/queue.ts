@@ -2,6 +2,7 @@ import { QueryTypes } from 'sequelize'
 import type { Clock } from '@/lib/core/clock'
 import { env } from '@/lib/core/env'
 import { newId } from '@/lib/core/ids'
+import { dataVersion } from '@/lib/queries/data-version'
 import { loadFloor } from '@/lib/queries/floor'
 import { workerPulse } from '@/lib/queries/worker-pulse'
 import { queueBath, queueRoom, queueShift, queueTree } from '@/lib/queue/assemble'
@@ -17,15 +18,9 @@ declare global {
 /** Changes with each start of the process: SQLite counts its versions for one open file only. */
 const bootId = newId()
 
-/**
- * The ETag of the queue: the database's own version and the minute.
- *
- * `data_version` on the handle that is used outside transactions moves whenever another handle or process has committed, and
- * every write of ours is a transaction, which has a handle of its own.
- */
+/** The ETag of the queue: the version of the records and the minute. */
 async function queueEtag(now: number): Promise<string> {
-  const [row] = await database.query<{ data_version: number }>('PRAGMA data_version', { type: QueryTypes.SELECT })
-  return `"${bootId}-${row?.data_version ?? 0}-${Math.floor(now / 60_000)}"`
+  return `"${bootId}-${await dataVersion()}-${Math.floor(now / 60_000)}"`
 }
 
 /** The queue for the floor. Worked out once for each change or minute, however many tablets ask. */

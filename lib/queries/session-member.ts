@@ -21,28 +21,45 @@ export type SessionMember = {
   isFoundrySetUp: boolean
 }
 
-/** The member behind a session as the database knows them now; null once it has ended, run out, or its member was disabled. */
-export async function sessionMember(sessionId: string, { clock }: { clock: Clock }): Promise<SessionMember | null> {
+/** A session that has not been ended, with what the clock decides still open. */
+export type KnownSession = { member: SessionMember; expiresAt: number; firstPasswordUntil: number | null }
+
+/** A session as the database knows it; null once it was ended or its member disabled. */
+export async function loadSession(sessionId: string): Promise<KnownSession | null> {
   const session = await Session.findByPk(sessionId, { include: 'member' })
   const member = session?.member
-  if (!session || !member || session.endedAt !== null || session.expiresAt <= clock.now() || member.disabledAt !== null) return null
-  // A first password that has run out opens nothing any more, not even through the session it has opened.
-  if (member.firstPasswordUntil !== null && member.firstPasswordUntil <= clock.now()) return null
+  if (!session || !member || session.endedAt !== null || member.disabledAt !== null) return null
   const foundry = await Foundry.findByPk(1)
   return {
-    id: member.id,
-    name: member.name,
-    email: member.email,
-    role: member.role,
-    sessionId: session.id,
-    device: browserName(session.userAgent),
-    isDemo: member.isDemo,
-    units: {
-      temp: member.tempUnit ?? foundry?.tempUnit ?? 'degC',
-      mass: member.massUnit ?? foundry?.massUnit ?? 'kg',
-      length: member.lengthUnit ?? foundry?.lengthUnit ?? 'mm',
+    expiresAt: session.expiresAt,
+    firstPasswordUntil: member.firstPasswordUntil,
+    member: {
+      id: member.id,
+      name: member.name,
+      email: member.email,
+      role: member.role,
+      sessionId: session.id,
+      device: browserName(session.userAgent),
+      isDemo: member.isDemo,
+      units: {
+        temp: member.tempUnit ?? foundry?.tempUnit ?? 'degC',
+        mass: member.massUnit ?? foundry?.massUnit ?? 'kg',
+        length: member.lengthUnit ?? foundry?.lengthUnit ?? 'mm',
+      },
+      mustChangePassword: member.firstPasswordUntil !== null,
+      isFoundrySetUp: typeof foundry?.setUpAt === 'number',
     },
-    mustChangePassword: member.firstPasswordUntil !== null,
-    isFoundrySetUp: typeof foundry?.setUpAt === 'number',
   }
+}
+
+/** The member of a session at a moment; null once it has run out. */
+export function memberAt(session: KnownSession | null, now: number): SessionMember | null {
+  if (!session || session.expiresAt <= now) return null
+  // A first password that has run out opens nothing any more, not even through the session it has opened.
+  return session.firstPasswordUntil !== null && session.firstPasswordUntil <= now ? null : session.member
+}
+
+/** The member behind a session as the database knows them now; null once it has ended, run out, or its member was disabled. */
+export async function sessionMember(sessionId: string, { clock }: { clock: Clock }): Promise<SessionMember | null> {
+  return memberAt(await loadSession(sessionId), clock.now())
 }

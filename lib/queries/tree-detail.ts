@@ -9,8 +9,7 @@ import { may, type Role } from '@/lib/members/roles'
 import { loadFloor, type Floor } from '@/lib/queries/floor'
 import { loadReadingsInRange } from '@/lib/queries/load-climate'
 import { queueTree } from '@/lib/queue/assemble'
-import { humidityOf, type RoomClimate } from '@/lib/room/climate'
-import { recipeCoatOf } from '@/lib/trees/assess'
+import { humidityOf, type AirStretch } from '@/lib/room/climate'
 import type { DerivedTree } from '@/lib/trees/derive'
 import type { CoatRow, TreeDetail } from '@/lib/trees/detail-contract'
 import { clockStart } from '@/lib/trees/facts'
@@ -119,11 +118,6 @@ function textOf(detail: string): string {
   return typeof parsed === 'object' && parsed !== null && 'text' in parsed ? String(parsed.text) : ''
 }
 
-function climateOf(derived: DerivedTree, floor: Floor): RoomClimate | null {
-  const place = floor.context.places.get(derived.facts.stays.at(-1)?.placeId ?? '')
-  return (place && floor.context.climates.get(place.sensorId)) ?? null
-}
-
 type StoredCoat = {
   id: string
   number: number
@@ -224,7 +218,7 @@ async function coatRows(derived: DerivedTree, floor: Floor, now: number): Promis
 function curveOf(derived: DerivedTree, floor: Floor, now: number): TreeDetail['curve'] {
   const { facts, newest, call } = derived
   if (!newest || !call) return null
-  const moistureTarget = recipeCoatOf(facts, newest.number)?.moistureTarget ?? 0.1
+  const { moistureTarget } = newest
   const start = clockStart(newest)
   const dryAt = call.safeAt ?? call.likelyAt ?? now + 12 * millisecondsInHour
   const until = dryAt + Math.max(millisecondsInHour, (dryAt - start) * 0.15)
@@ -246,28 +240,35 @@ function curveOf(derived: DerivedTree, floor: Floor, now: number): TreeDetail['c
   return { points, targetPct: moistureTarget * 100, likelyAt: call.likelyAt, safeAt: call.safeAt }
 }
 
-/** The air while the newest coat dried: readings over a short time, hourly means over a long one. */
+/** The air while the newest coat dried, of each room that the tree hung in: readings over a short time, hourly means over a long one. */
 async function climatePoints(derived: DerivedTree, floor: Floor, now: number): Promise<TreeDetail['climate']> {
-  const climate = climateOf(derived, floor)
-  if (!derived.newest || !climate) return []
+  if (!derived.newest) return []
   const from = derived.newest.dippedAt
   const to = Math.min(now, (derived.call?.safeAt ?? now) + 2 * millisecondsInHour)
-  if (to - from <= 24 * millisecondsInHour) {
-    const readings = await loadReadingsInRange(climate.sensorId, from, to)
-    const step = Math.ceil(readings.length / CLIMATE_POINTS) || 1
-    return readings
-      .filter((reading, index) => index % step === 0 && reading.measuredAt >= from && reading.measuredAt <= to)
-      .map((reading) => ({ at: reading.measuredAt, airTempC: reading.airTempC, relHumidityPct: reading.relHumidityPct }))
-  }
-  const hours = climate.hours.filter((hour) => hour.hourStart >= from && hour.hourStart < to)
-  const step = Math.ceil(hours.length / CLIMATE_POINTS) || 1
-  return hours
-    .filter((_, index) => index % step === 0)
-    .flatMap((hour) =>
-      hour.meanAirTempC === null || hour.meanRelHumidityPct === null
-        ? []
-        : [{ at: hour.hourStart + millisecondsInHour / 2, airTempC: hour.meanAirTempC, relHumidityPct: hour.meanRelHumidityPct }],
-    )
+  const stretches = airAround(floor.context, derived.facts.stays, from, to)
+  const points = to - from <= 24 * millisecondsInHour ? await exactPoints(stretches) : hourlyPoints(stretches)
+  const step = Math.ceil(points.length / CLIMATE_POINTS) || 1
+  return points.filter((_, index) => index % step === 0)
+}
+
+async function exactPoints(stretches: readonly AirStretch[]): Promise<TreeDetail['climate']> {
+  const readings = await Promise.all(
+    stretches.map(async (stretch) => {
+      const loaded = await loadReadingsInRange(stretch.climate.sensorId, stretch.from, stretch.to)
+      return loaded.filter((reading) => reading.measuredAt >= stretch.from && reading.measuredAt <= stretch.to)
+    }),
+  )
+  return readings.flat().map(({ measuredAt, airTempC, relHumidityPct }) => ({ at: measuredAt, airTempC, relHumidityPct }))
+}
+
+function hourlyPoints(stretches: readonly AirStretch[]): TreeDetail['climate'] {
+  return stretches.flatMap(({ climate, from, to }) =>
+    climate.hours.flatMap(({ hourStart, meanAirTempC, meanRelHumidityPct }) => {
+      const at = hourStart + millisecondsInHour / 2
+      if (at < from || at >= to || meanAirTempC === null || meanRelHumidityPct === null) return []
+      return [{ at, airTempC: meanAirTempC, relHumidityPct: meanRelHumidityPct }]
+    }),
+  )
 }
 
 async function takeBackOf(derived: DerivedTree, viewer: { id: string; role: Role }, now: number): Promise<TreeDetail['takeBack']> {

@@ -1,15 +1,12 @@
 import { TZDate } from '@date-fns/tz'
 import { wetBulbDepressionK } from '@/lib/drying/room-factor'
-import { DEFAULT_FLAG_LIMITS } from '@/lib/drying/flags'
+import { DEFAULT_MOISTURE_TARGET } from '@/lib/drying/recipe-defaults'
 import type { Queue, QueueBath, QueueRoom, QueueTree } from '@/lib/queue/contract'
 import type { RoomClimate } from '@/lib/room/climate'
+import { dryingPull } from '@/lib/room/drying-pull'
 import { localDay, nextOpenInstant, type Shift } from '@/lib/schedule/shifts'
-import { recipeCoatOf } from '@/lib/trees/assess'
 import type { DerivedTree } from '@/lib/trees/derive'
 import type { PlaceFacts } from '@/lib/trees/facts'
-
-/** Under this share of the reference speed drying is called slow. Our own choice. */
-const SLOW_SPEED = 0.85
 
 /** One tree as the floor shows it. */
 export function queueTree(tree: DerivedTree, places: ReadonlyMap<string, PlaceFacts>): QueueTree {
@@ -28,7 +25,7 @@ export function queueTree(tree: DerivedTree, places: ReadonlyMap<string, PlaceFa
     newestCoat: newest ? { id: newest.id, number: newest.number, dippedAt: newest.dippedAt } : null,
     coats: sectionCoats(tree),
     openDry: call && !isDry ? 1 - call.moistureRatio : null,
-    openTarget: 1 - ((newest ? recipeCoatOf(facts, newest.number)?.moistureTarget : undefined) ?? 0.1),
+    openTarget: 1 - (newest?.moistureTarget ?? DEFAULT_MOISTURE_TARGET),
     moistureRatio: call?.moistureRatio ?? null,
     next: next
       ? {
@@ -70,13 +67,7 @@ export function queueRoom(
   const { newest } = climate
   const gapK = newest ? wetBulbDepressionK(newest, pressurePa) : null
   const pull =
-    newest === null || gapK === null || climate.isStale
-      ? 'not known'
-      : gapK > DEFAULT_FLAG_LIMITS.chillWarnK || newest.roomFactor > DEFAULT_FLAG_LIMITS.chillSpeed
-        ? 'too dry for face coats'
-        : newest.roomFactor < SLOW_SPEED
-          ? 'slow'
-          : 'good'
+    newest === null || gapK === null || climate.isStale ? 'not known' : dryingPull({ wetBulbGapK: gapK, roomFactor: newest.roomFactor })
   return {
     sensorId: climate.sensorId,
     sensorName: name,

@@ -47,9 +47,15 @@ const versionNote = z.string().trim().max(300, 'A note has at most 300 letters.'
 export const recipeInput = z.strictObject({ name: recipeName, note: versionNote.default(''), coats: coatsInput })
 export type RecipeInput = z.infer<typeof recipeInput>
 
-/** A further version; `follows` is the newest version that its maker saw, so that two makers do not pass each other unseen. */
+const versionNumber = typedNumber('A version').pipe(z.int().min(1))
+
+/**
+ * A further version. `from` is the version its coats were filled from; `follows` is the newest one that its maker saw, so that two
+ * makers do not pass each other unseen.
+ */
 export const recipeVersionInput = z.strictObject({
-  follows: typedNumber('The version before').pipe(z.int().min(1)),
+  from: versionNumber,
+  follows: versionNumber,
   note: versionNote.min(1, 'Say in a few words why there is a new version.'),
   coats: coatsInput,
 })

@@ -1,9 +1,9 @@
 import { millisecondsInDay, millisecondsInMinute } from 'date-fns/constants'
 import { readingRow, type ReadingBatchAnswer, type ReadingRow } from '@/lib/room/reading-contract'
 
-const FUTURE_LIMIT_MS = 2 * millisecondsInMinute
+export const FUTURE_LIMIT_MS = 2 * millisecondsInMinute
 /** Older rows come as a file: the live door is for what a logger kept while the network was away. */
-const PAST_LIMIT_MS = 31 * millisecondsInDay
+export const PAST_LIMIT_MS = 31 * millisecondsInDay
 
 /**
  * Sorts the rows of a batch into good ones and refused ones, each refused one with its index and a sentence.

@@ -24,6 +24,8 @@ export type RoomClimate = {
   hours: readonly ClimateHour[]
   /** Readings of the refined hours and their neighbours, in order; elsewhere an hour's mean stands for it. */
   exact: readonly RoomReading[]
+  /** UTC hours of which every reading is among the exact ones. Of any other hour there may be a neighbour only. */
+  refinedHours: ReadonlySet<number>
   newest: RoomReading | null
   isStale: boolean
 }
@@ -63,16 +65,19 @@ export function buildClimate(rows: ClimateRows, { now, timeZone }: { now: number
     curve,
     hours,
     exact: exactReadings,
+    refinedHours: new Set(rows.refinedHours),
     newest,
     isStale: newest === null || holdsUntil(newest) < now,
   }
 }
 
-/** Readings for the flags: the exact ones, and for each other hour one reading in its middle that carries the hour's means. */
+/**
+ * Readings for the flags: the exact ones, and for each hour that is not refined one reading in its middle that carries the
+ * hour's means, beside the neighbour that may be at hand of it.
+ */
 export function readingsForFlags(climate: RoomClimate, from: number, to: number): RoomReading[] {
-  const exactHours = new Set(climate.exact.map((reading) => hourStartOf(reading.measuredAt)))
   const means = climate.hours
-    .filter((hour) => hour.hourStart >= hourStartOf(from) && hour.hourStart < to && !exactHours.has(hour.hourStart))
+    .filter((hour) => hour.hourStart >= hourStartOf(from) && hour.hourStart < to && !climate.refinedHours.has(hour.hourStart))
     .flatMap((hour): RoomReading[] =>
       hour.meanAirTempC === null || hour.meanRelHumidityPct === null
         ? []

@@ -1,7 +1,5 @@
 import { z } from 'zod'
-
-/** The coldest and the hottest that a shell room can be, °C. */
-export const AIR_TEMP_LIMITS_C = { least: -10, most: 60 } as const
+import { AIR_TEMP_LIMITS_C, HUMIDITY_WORDS, REL_HUMIDITY_LIMITS_PCT } from '@/lib/room/air-limits'
 
 /** What a shell room's air can be; anything else is a fault of the sensor or a slip of the finger. */
 export const airTempC = z
@@ -9,17 +7,17 @@ export const airTempC = z
   .min(AIR_TEMP_LIMITS_C.least, 'A shell room is not colder than -10 °C.')
   .max(AIR_TEMP_LIMITS_C.most, 'A shell room is not hotter than 60 °C.')
 
-/** Sensors report a little over 100 % in saturated air, so 105 is the limit; the clock itself clamps to 0.5-100. */
 export const relHumidityPct = z
-  .number('Humidity is a number in %.')
-  .min(0, 'Humidity cannot be under 0 %.')
-  .max(105, 'Humidity cannot be over 105 %.')
+  .number(HUMIDITY_WORDS.notANumber)
+  .min(REL_HUMIDITY_LIMITS_PCT.least, HUMIDITY_WORDS.tooLow)
+  .max(REL_HUMIDITY_LIMITS_PCT.most, HUMIDITY_WORDS.tooHigh)
 
 /** An instant as ISO 8601 with a zone, or epoch milliseconds. */
-const measuredAt = z
-  .union([z.int().min(0), z.iso.datetime({ offset: true })])
+export const instant = z
+  .union([z.int().min(0), z.iso.datetime({ offset: true })], 'A time is ISO 8601 with its zone, or epoch milliseconds.')
   .transform((value) => (typeof value === 'number' ? value : Date.parse(value)))
-  .describe('When it was measured: ISO 8601 with a zone, or epoch milliseconds (UTC).')
+
+const measuredAt = instant.describe('When it was measured: ISO 8601 with a zone, or epoch milliseconds (UTC).')
 
 /** One row of `POST /api/v1/readings`; rows are checked one by one so that good ones are kept. */
 export const readingRow = z.strictObject({ measuredAt, airTempC, relHumidityPct })
@@ -36,8 +34,14 @@ export const readingBatchAnswer = z.object({
 })
 export type ReadingBatchAnswer = z.infer<typeof readingBatchAnswer>
 
-/** A person reads the wall hygrometer. */
-export const typedReading = z.strictObject({ operationId: z.uuid(), sensorId: z.int(), airTempC, relHumidityPct })
+/** A person reads the wall hygrometer: now, or at the time they name. */
+export const typedReading = z.strictObject({
+  operationId: z.uuid(),
+  sensorId: z.int(),
+  airTempC,
+  relHumidityPct,
+  measuredAt: measuredAt.optional(),
+})
 
 /** Answer of `POST /api/v1/readings/typed`: the instant from which it counts. */
 export const typedReadingAnswer = z.object({ sensorId: z.int(), measuredAt: z.int() })

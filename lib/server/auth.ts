@@ -1,7 +1,7 @@
 import { cookies } from 'next/headers'
 import { redirect } from 'next/navigation'
 import type { NextAuthOptions } from 'next-auth'
-import { decode, encode } from 'next-auth/jwt'
+import { encode } from 'next-auth/jwt'
 import credentialsProvider from 'next-auth/providers/credentials'
 import { RateLimiterMemory, type RateLimiterRes } from 'rate-limiter-flexible'
 import { z } from 'zod'
@@ -14,8 +14,9 @@ import { log } from '@/lib/core/log'
 import { ownPath } from '@/lib/members/own-path'
 import { may, rolesFor, type Act } from '@/lib/members/roles'
 import { hasMembers } from '@/lib/queries/has-members'
-import { sessionMember, type SessionMember } from '@/lib/queries/session-member'
+import { memberAt, type SessionMember } from '@/lib/queries/session-member'
 import { knownDevice, rememberDevice } from '@/lib/server/known-device'
+import { knownSession, openCookie } from '@/lib/server/known-sessions'
 import { processWide } from '@/lib/server/process-wide'
 
 /** The person behind a request, as the database knows them at this moment. */
@@ -96,9 +97,9 @@ export const authOptions: NextAuthOptions = {
   },
 }
 
-function memberOf(token: Record<string, unknown> | null): Promise<Member | null> {
+async function memberOf(token: Record<string, unknown> | null): Promise<Member | null> {
   const sessionId = token?.['sid']
-  return typeof sessionId === 'string' ? sessionMember(sessionId, { clock: systemClock }) : Promise.resolve(null)
+  return typeof sessionId === 'string' ? memberAt(await knownSession(sessionId), systemClock.now()) : null
 }
 
 /** The session cookie's name: browsers refuse the prefix on plain http. */
@@ -124,7 +125,7 @@ export async function currentMember(): Promise<Member | null> {
   const { NEXTAUTH_SECRET: secret } = env()
   const cookie = jar.get(sessionCookie())
   // A stale or meddled cookie is the same as none.
-  return memberOf(await decode({ token: cookie?.value, secret }).catch(() => null))
+  return cookie ? memberOf(await openCookie(cookie.value, secret)) : null
 }
 
 /**

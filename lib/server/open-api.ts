@@ -122,12 +122,12 @@ const parameters = (place: 'path' | 'query' | 'header', named: DoorDescription['
     schema: schemaOf(schema, 'input'),
   }))
 
-function answerOf({ text, schema, example, headers = {} }: DoorAnswer): Json {
+function answerOf({ text, schema, type = 'application/json', example, headers = {} }: DoorAnswer): Json {
   return {
     description: text,
     ...(Object.keys(headers).length > 0 && { headers: headersOf(headers) }),
     ...(schema && {
-      content: { 'application/json': { schema: schemaOf(schema, 'output'), ...(example !== undefined && { example }) } },
+      content: { [type]: { schema: schemaOf(schema, 'output'), ...(example !== undefined && { example }) } },
     }),
   }
 }

@@ -1,5 +1,6 @@
+import { createECDH } from 'node:crypto'
 import { QueryTypes } from 'sequelize'
-import { database } from '@/db/connection'
+import { database, databaseFile, inTransaction } from '@/db/connection'
 import { shippedMigrations } from '@/db/migrator'
 import { env } from '@/lib/core/env'
 import { log } from '@/lib/core/log'
@@ -10,8 +11,9 @@ import { log } from '@/lib/core/log'
  * @throws {Error} with one line that says what to mend.
  */
 export async function prepareProcess(): Promise<void> {
-  env()
-  await database.query('PRAGMA journal_mode = WAL')
+  const { VAPID_PUBLIC_KEY: publicKey, VAPID_PRIVATE_KEY: privateKey } = env()
+  if (publicKeyOf(privateKey) !== publicKey) throw new Error('VAPID_PUBLIC_KEY does not belong to VAPID_PRIVATE_KEY.')
+  await requireWritableRecords()
   const applied = await database
     .query<{ name: string }>('SELECT name FROM migrations ORDER BY name', { type: QueryTypes.SELECT })
     .catch((error: Error) => {
@@ -20,6 +22,28 @@ export async function prepareProcess(): Promise<void> {
   const names = applied.map(({ name }) => name)
   if (names.join() !== (await shippedMigrations()).join()) {
     throw new Error('The records were written by another version of Kilnward. Start it with npm start, which brings them up to date.')
+  }
+}
+
+/** Asks for the lock of a writer, which a file that cannot be written does not give. */
+async function requireWritableRecords(): Promise<void> {
+  try {
+    await database.query('PRAGMA journal_mode = WAL')
+    await inTransaction(() => Promise.resolve())
+  } catch (error) {
+    throw new Error(`The records in ${databaseFile()} cannot be written (${error instanceof Error ? error.message : String(error)}).`, {
+      cause: error,
+    })
+  }
+}
+
+function publicKeyOf(privateKey: string): string | null {
+  try {
+    const pair = createECDH('prime256v1')
+    pair.setPrivateKey(Buffer.from(privateKey, 'base64url'))
+    return pair.getPublicKey('base64url')
+  } catch {
+    return null
   }
 }
 

@@ -34,26 +34,24 @@ export type Assessment = {
   dippableSince: number | null
 }
 
-/** The recipe's coat of a number. A tree that carries more coats than its recipe keeps the last one's figures. */
+/** The recipe's coat of a number; null beyond its list. */
 export function recipeCoatOf(facts: TreeFacts, number: number): RecipeCoatFacts | null {
   return facts.recipe.coats.find((coat) => coat.number === number) ?? null
 }
 
-/** The guard of a coat on this tree. */
-export function guardOf(facts: TreeFacts, number: number): Guard {
-  const recipeCoat = recipeCoatOf(facts, number) ?? facts.recipe.coats.at(-1)
+/** The guard of a coat on this tree, on or to come: its own, and the safe one wherever the shell asks for it. */
+export function guardOf(facts: TreeFacts, coat: Pick<CoatFacts, 'number' | 'kind' | 'guard'>): Guard {
   return guardFor({
-    kind: recipeCoat?.kind ?? 'backup',
-    isLast: number >= facts.recipe.coats.length,
+    kind: coat.kind,
+    isLast: coat.number >= facts.recipe.coats.length,
     recessClass: facts.recessClass,
-    recipeGuard: recipeCoat?.guard ?? 'safe',
+    recipeGuard: coat.guard,
   })
 }
 
 /** The drying clock's call on one coat of a tree, as it stands at `at`. */
 export function callOf(facts: TreeFacts, coat: CoatFacts, context: FloorContext, at: number = context.now): CoatCall {
   const start = Math.max(clockStart(coat), context.now - LONGEST_WINDOW_MS)
-  const recipeCoat = recipeCoatOf(facts, coat.number) ?? facts.recipe.coats.at(-1)
   return callCoat({
     coat: {
       number: coat.number,
@@ -61,8 +59,8 @@ export function callOf(facts: TreeFacts, coat: CoatFacts, context: FloorContext,
       clockStartsAt: start,
       roughMinutes: coat.roughMinutes,
       needReferenceHours: coat.needReferenceHours,
-      moistureTarget: recipeCoat?.moistureTarget ?? 0.1,
-      guard: guardOf(facts, coat.number),
+      moistureTarget: coat.moistureTarget,
+      guard: guardOf(facts, coat),
       recessClass: facts.recessClass,
       airTempAtDipC: coat.airTempC,
     },
@@ -84,7 +82,7 @@ export function assessTree(facts: TreeFacts, context: FloorContext): Assessment 
     facts,
     newest,
     call,
-    guard: newest ? guardOf(facts, newest.number) : null,
+    guard: newest ? guardOf(facts, newest) : null,
     next: isLastOn || hasLeft ? null : recipeCoatOf(facts, facts.coats.length + 1),
     isLastOn,
     mayDip: !isLastOn && facts.hold === null && dippableSince !== null,
@@ -114,7 +112,7 @@ function stateOf(base: Base, context: FloorContext): { state: TreeState; stateSi
   }
   if (base.isLastOn) return finishedState(base, call, context)
   if (dippableSince !== null) {
-    const overdueSince = overdueFrom(base, newest, context)
+    const overdueSince = overdueFrom(newest, context)
     if (overdueSince !== null) return { state: 'overdue', stateSince: overdueSince }
     return { state: context.now - dippableSince < FRESH_MS ? 'dip now' : 'waiting', stateSince: dippableSince }
   }
@@ -123,10 +121,9 @@ function stateOf(base: Base, context: FloorContext): { state: TreeState; stateSi
 }
 
 /** Past the wet coat's longest wait, or the pour date can no longer be kept. Only a coat that may be dipped over is overdue. */
-function overdueFrom(base: Base, newest: CoatFacts, context: FloorContext): number | null {
-  const longestWaitHours = recipeCoatOf(base.facts, newest.number)?.longestWaitHours ?? 72
-  const hours = (context.now - newest.dippedAt) / millisecondsInHour
-  return isOverdue(hours, longestWaitHours) ? newest.dippedAt + longestWaitHours * millisecondsInHour : null
+function overdueFrom({ dippedAt, longestWaitHours }: CoatFacts, context: FloorContext): number | null {
+  const hours = (context.now - dippedAt) / millisecondsInHour
+  return isOverdue(hours, longestWaitHours) ? dippedAt + longestWaitHours * millisecondsInHour : null
 }
 
 /** A dry last coat: by the safe time, or by the likely one and a person's 'looks dry'. A hold does not make it wet. */

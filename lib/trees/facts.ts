@@ -28,7 +28,11 @@ export type CoatFacts = {
   dippedAt: number
   drainSeconds: number
   roughMinutes: number
+  /** As they were at the dip: a tree that moves to a newer version of its recipe takes its coats along as they are. */
   needReferenceHours: number
+  moistureTarget: number
+  guard: Guard
+  longestWaitHours: number
   airTempC: number | null
 }
 

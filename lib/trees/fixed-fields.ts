@@ -16,7 +16,7 @@ export function fixedFields(coatsOn: number): FixedFields {
   const since = coatsOn === 1 ? 'Fixed since coat 1 went on' : `Fixed: ${coatsOn} coats are on`
   return {
     tag,
-    recipeVersionId: `${since}. Their needs and targets come from this recipe.`,
+    recipeVersionId: `${since}. A newer version is chosen on the tree’s page.`,
     pieces: `${since}. The log is about these pieces.`,
     placeId: 'Moved on the tree’s page, so that the drying clock knows the hour.',
   }

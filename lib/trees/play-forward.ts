@@ -74,7 +74,7 @@ function chain(assessment: Assessment, context: FloorContext, start: number | nu
       likelyAt: instantWhenDose(spans, from, need.likely, 'likely'),
       safeAt: instantWhenDose(spans, from, need.high, 'low'),
     }
-    readyAt = by === 'safe' || guardOf(facts, coat.number) === 'safe' ? dryAt.safeAt : dryAt.likelyAt
+    readyAt = by === 'safe' || guardOf(facts, coat) === 'safe' ? dryAt.safeAt : dryAt.likelyAt
   }
   return { ...dryAt, dips }
 }

@@ -133,18 +133,23 @@ export function readingsBehind(context: FloorContext, stays: readonly Stay[], st
     const climate = climateOf(context, stay)
     if (!climate) continue
     const to = Math.min(at, relevant[index + 1]?.since ?? at)
-    const exactHours = new Set(climate.exact.map((reading) => hourStartOf(reading.measuredAt)))
+    const touchedHours = new Set<number>()
+    const countsByRow = (hour: number) => hour > stay.since && !climate.refinedHours.has(hour)
     for (const reading of climate.exact) {
       if (reading.measuredAt <= stay.since || reading.measuredAt > to) continue
+      const hour = hourStartOf(reading.measuredAt)
+      touchedHours.add(hour)
+      firstInWindowAt = Math.min(firstInWindowAt ?? Infinity, reading.measuredAt)
+      if (countsByRow(hour)) continue
       if (reading.source === 'typed') typedCount += 1
       else sensorCount += 1
-      firstInWindowAt = Math.min(firstInWindowAt ?? Infinity, reading.measuredAt)
     }
     for (const hour of climate.hours) {
-      if (hour.hourStart <= stay.since || hour.hourStart > to || hour.readingCount === 0 || exactHours.has(hour.hourStart)) continue
+      if (!countsByRow(hour.hourStart) || hour.hourStart > to || hour.readingCount === 0) continue
       typedCount += hour.typedCount
       sensorCount += hour.readingCount - hour.typedCount
-      firstInWindowAt = Math.min(firstInWindowAt ?? Infinity, hour.hourStart)
+      // A neighbour at hand says the first instant better than the hour does.
+      if (!touchedHours.has(hour.hourStart)) firstInWindowAt = Math.min(firstInWindowAt ?? Infinity, hour.hourStart)
     }
   }
   const newest = climateOf(context, relevant.at(-1))?.newest

@@ -4,7 +4,7 @@ import { wetBulbDepressionK } from '@/lib/drying/room-factor'
 import { formatKelvin, formatTemperature, type TempUnit } from '@/lib/format/units'
 import type { Warning } from '@/lib/queue/contract'
 import type { RoomClimate } from '@/lib/room/climate'
-import { dampInStore, recipeCoatOf, type Assessment } from '@/lib/trees/assess'
+import { dampInStore, type Assessment } from '@/lib/trees/assess'
 import { readingsAround, type FloorContext } from '@/lib/trees/spans'
 
 const one = (value: number) => value.toFixed(1)
@@ -37,7 +37,7 @@ function beforeDip({ facts, state, call, newest, isLastOn, dippableSince }: Asse
     return warnings
   }
   if (call === null) return warnings
-  const targetPct = whole((recipeCoatOf(facts, newest.number)?.moistureTarget ?? 0.1) * 100)
+  const targetPct = whole(newest.moistureTarget * 100)
   // Somebody who felt it has confirmed it for the next dip; before a release the missing air still counts.
   if (call.isUnknown && (dippableSince === null || isLastOn)) {
     warnings.push({
@@ -153,9 +153,9 @@ function ofTheAir(assessment: Assessment, climate: RoomClimate, context: FloorCo
   return warnings
 }
 
-function ofTheWait({ facts, newest, isLastOn, dippableSince }: Assessment, context: FloorContext): Warning[] {
+function ofTheWait({ newest, isLastOn, dippableSince }: Assessment, context: FloorContext): Warning[] {
   if (newest === null || isLastOn) return []
-  const longestWaitHours = recipeCoatOf(facts, newest.number)?.longestWaitHours ?? 72
+  const { longestWaitHours } = newest
   const hours = (context.now - newest.dippedAt) / millisecondsInHour
   if (!isOverdue(hours, longestWaitHours)) return []
   const text =

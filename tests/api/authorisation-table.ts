@@ -25,6 +25,13 @@ export const DOORS: readonly Door[] = [
   page('/trees/[tag]/edit', 'supervisor', '/trees/KW-1/edit'),
   page('/trees/new', 'supervisor'),
   page('/burnout', 'crew'),
+  // Recipes and works.
+  page('/recipes', 'crew'),
+  page('/recipes/new', 'supervisor'),
+  page('/recipes/[recipeId]', 'crew'),
+  page('/recipes/[recipeId]/new-version', 'supervisor'),
+  page('/works', 'crew'),
+  page('/works/[workId]', 'crew'),
   page('/me', 'crew'),
   // Upkeep: the state of the program, and the records as a file.
   page('/upkeep', 'owner'),
@@ -35,6 +42,10 @@ export const DOORS: readonly Door[] = [
   page('/settings/places', 'supervisor'),
   page('/settings/baths', 'supervisor'),
   page('/settings/sensors', 'supervisor'),
+  // People and one's own page.
+  page('/people', 'owner'),
+  page('/people/[memberId]', 'owner'),
+  page('/me/password', 'crew'),
   door('GET', '/manifest.webmanifest', 'anybody'),
 
   door('GET', '/api/health', 'anybody'),
@@ -58,6 +69,11 @@ export const DOORS: readonly Door[] = [
   door('DELETE', '/api/v1/trees/[treeId]/watch', 'crew'),
   door('POST', '/api/v1/readings', 'sensor'),
   door('POST', '/api/v1/readings/typed', 'operator'),
+
+  // The room and its drying.
+  page('/room', 'crew'),
+  door('POST', '/api/v1/drying/estimate', 'crew'),
+  door('GET', '/api/v1/rooms/[sensorId]/climate.csv', 'crew', '/api/v1/rooms/1/climate.csv'),
   // The API's description, how to use it, and the history of every change.
   door('GET', '/api/v1/openapi.json', 'anybody'),
   page('/api-guide', 'supervisor'),
@@ -80,6 +96,15 @@ export const ACTIONS: readonly ActionRow[] = [
   { file: 'app/(office)/trees/[tag]/actions.ts', name: 'liftHoldAction', act: 'lift hold', who: 'supervisor' },
   { file: 'app/(office)/trees/[tag]/actions.ts', name: 'lookOverAction', act: 'look over', who: 'supervisor' },
   { file: 'app/(office)/trees/[tag]/actions.ts', name: 'scrapAction', act: 'trees', who: 'supervisor' },
+  // Recipes and works.
+  { file: 'app/(office)/recipes/actions.ts', name: 'createRecipeAction', act: 'recipes', who: 'supervisor' },
+  { file: 'app/(office)/recipes/actions.ts', name: 'addVersionAction', act: 'recipes', who: 'supervisor' },
+  { file: 'app/(office)/recipes/actions.ts', name: 'renameRecipeAction', act: 'recipes', who: 'supervisor' },
+  { file: 'app/(office)/recipes/actions.ts', name: 'retireRecipeAction', act: 'recipes', who: 'supervisor' },
+  { file: 'app/(office)/recipes/actions.ts', name: 'moveTreesAction', act: 'recipes', who: 'supervisor' },
+  { file: 'app/(office)/works/actions.ts', name: 'editWorkAction', act: 'works', who: 'supervisor' },
+  { file: 'app/(office)/works/actions.ts', name: 'addSectionAction', act: 'works', who: 'supervisor' },
+  { file: 'app/(office)/works/actions.ts', name: 'renameSectionAction', act: 'works', who: 'supervisor' },
   { file: 'app/(office)/burnout/actions.ts', name: 'releaseAction', act: 'release', who: 'supervisor' },
   { file: 'app/(office)/burnout/actions.ts', name: 'withdrawReleaseAction', act: 'release', who: 'supervisor' },
   { file: 'app/(office)/upkeep/actions.ts', name: 'backUpNowAction', act: 'upkeep', who: 'owner' },
@@ -103,6 +128,16 @@ export const ACTIONS: readonly ActionRow[] = [
   { file: 'app/(office)/settings/sensors/actions.ts', name: 'reuseSensorAction', act: 'sensors', who: 'supervisor' },
   { file: 'app/(office)/settings/sensors/actions.ts', name: 'issueTokenAction', act: 'sensors', who: 'supervisor' },
   { file: 'app/(office)/settings/sensors/actions.ts', name: 'revokeTokenAction', act: 'sensors', who: 'supervisor' },
+  // People and one's own page.
+  { file: 'app/(office)/people/actions.ts', name: 'addMemberAction', act: 'people', who: 'owner' },
+  { file: 'app/(office)/people/actions.ts', name: 'editMemberAction', act: 'people', who: 'owner' },
+  { file: 'app/(office)/people/actions.ts', name: 'renewFirstPasswordAction', act: 'people', who: 'owner' },
+  { file: 'app/(office)/people/actions.ts', name: 'disableMemberAction', act: 'people', who: 'owner' },
+  { file: 'app/(office)/people/actions.ts', name: 'enableMemberAction', act: 'people', who: 'owner' },
+  { file: 'app/(auth)/me/password/actions.ts', name: 'changePasswordAction', act: 'own password', who: 'crew' },
+  { file: 'app/(office)/me/actions.ts', name: 'saveUnitsAction', act: 'see', who: 'crew' },
+  { file: 'app/(office)/me/actions.ts', name: 'endSessionAction', act: 'see', who: 'crew' },
+  { file: 'app/(office)/me/actions.ts', name: 'endOtherSessionsAction', act: 'see', who: 'crew' },
   // The first run, and the demo data.
   { file: 'app/(first-run)/first-run/actions.ts', name: 'makeFirstOwnerAction', act: null, who: 'nobody yet' },
   { file: 'app/(first-run)/first-run/actions.ts', name: 'endStepAction', act: 'settings', who: 'owner' },
@@ -111,4 +146,6 @@ export const ACTIONS: readonly ActionRow[] = [
   { file: 'app/(first-run)/first-run/actions.ts', name: 'lookWithDemoAction', act: 'upkeep', who: 'owner' },
   { file: 'app/(office)/upkeep/demo-actions.ts', name: 'layDemoAction', act: 'upkeep', who: 'owner' },
   { file: 'app/(office)/upkeep/demo-actions.ts', name: 'removeDemoAction', act: 'upkeep', who: 'owner' },
+  // The room and its drying.
+  { file: 'app/(office)/room/actions.ts', name: 'typedReadingAction', act: 'read', who: 'operator' },
 ]

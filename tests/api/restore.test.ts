@@ -102,7 +102,7 @@ describe('npm run restore', () => {
     const mode = await handle.all('PRAGMA journal_mode')
     await handle.close()
     expect(event).toMatchObject({ kind: 'backup restored', name: backup.fileName })
-    expect(String((event as { detail: string }).detail)).toContain('The records were restored from the backup of')
+    expect((event as { detail: string }).detail).toContain('The records were restored from the backup of')
     // One that was ended after the backup must not be open again.
     expect(sessions).toEqual([])
     expect(mode).toEqual([{ journal_mode: 'wal' }])

@@ -1,10 +1,15 @@
-import { mkdtempSync, readFileSync, rmSync, statSync } from 'node:fs'
+import { execFile } from 'node:child_process'
+import { randomUUID } from 'node:crypto'
+import { mkdirSync, mkdtempSync, readFileSync, rmSync, statSync } from 'node:fs'
 import { createServer } from 'node:net'
 import { tmpdir } from 'node:os'
 import { join } from 'node:path'
 import { setTimeout as sleep } from 'node:timers/promises'
+import { promisify } from 'node:util'
+import sqlite3 from 'sqlite3'
 import { afterEach, describe, expect, it } from 'vitest'
-import { startProgram, type Program } from '@/tests/setup/server'
+import { signIn } from '@/tests/setup/client'
+import { makeDataDir, seedMember, startProgram, startRefused, startServer, type Program } from '@/tests/setup/server'
 
 const running: Program[] = []
 const folders: string[] = []
@@ -42,8 +47,8 @@ function start(dataDir: string, port: number, settings: Record<string, string> =
   return program
 }
 
-async function until(isTrue: () => boolean | Promise<boolean>, what: string, milliseconds = 60_000): Promise<void> {
-  const deadline = Date.now() + milliseconds
+async function until(isTrue: () => boolean | Promise<boolean>, what: string, withinMs = 60_000): Promise<void> {
+  const deadline = Date.now() + withinMs
   while (!(await isTrue())) {
     if (Date.now() > deadline) throw new Error(`${what} did not come:\n${running.map((program) => program.output()).join('\n---\n')}`)
     await sleep(50)
@@ -143,6 +148,7 @@ describe('npm start', () => {
     ['half a key pair', { VAPID_PUBLIC_KEY: 'B'.repeat(87) }, /Set both VAPID_PUBLIC_KEY and VAPID_PRIVATE_KEY/],
     ['keys of two pairs', { VAPID_PUBLIC_KEY: 'B'.repeat(87), VAPID_PRIVATE_KEY: 'a'.repeat(43) }, /does not belong to VAPID_PRIVATE_KEY/],
     ['too few threads', { UV_THREADPOOL_SIZE: '4' }, /UV_THREADPOOL_SIZE must be at least 16/],
+    ['an example for a secret', { NEXTAUTH_SECRET: 'change-me-change-me-change-me-change-me' }, /NEXTAUTH_SECRET is an example/],
     ['a port that is none', { PORT: 'http' }, /PORT must be a number/],
     ['a folder that cannot be', { DATA_DIR: '/dev/null/kilnward' }, /cannot write to \/dev\/null\/kilnward/],
   ])('refuses %s in one line', async (_what, settings, line) => {
@@ -151,4 +157,101 @@ describe('npm start', () => {
     expect(program.output()).toMatch(line)
     expect(program.output()).not.toMatch(/\n\s+at /)
   })
+
+  it('refuses records of a newer version, and a file that is none, in one line', async () => {
+    const newer = await makeDataDir()
+    folders.push(newer)
+    await run(join(newer, 'kilnward.sqlite'), "INSERT INTO migrations (name) VALUES ('9999-kiln-on-the-moon.sql')")
+    const folderForFile = newFolder()
+    mkdirSync(join(folderForFile, 'kilnward.sqlite'))
+    for (const [dataDir, line] of [
+      [newer, /newer version/],
+      [folderForFile, /unable to open database file/],
+    ] as const) {
+      const program = start(dataDir, await freePort())
+      expect(await program.exited).toBe(1)
+      expect(program.output()).toMatch(line)
+      expect(program.output()).not.toMatch(/\n\s+at /)
+    }
+  })
 })
+
+/** One statement on a file of records. */
+function run(file: string, sql: string): Promise<void> {
+  return new Promise((resolve, reject) => {
+    const handle = new sqlite3.Database(file)
+    handle.exec(sql, (error) => handle.close(() => (error ? reject(error) : resolve())))
+  })
+}
+
+describe('the web server alone', () => {
+  it.each([
+    ['an example for a secret', { NEXTAUTH_SECRET: 'change-me-change-me-change-me-change-me' }, 'NEXTAUTH_SECRET is an example'],
+    ['keys of two pairs', { VAPID_PUBLIC_KEY: 'B'.repeat(87) }, 'does not belong to VAPID_PRIVATE_KEY'],
+    ['a folder that cannot be', { DATA_DIR: '/dev/null/kilnward' }, 'cannot be written'],
+  ])('refuses %s in one line', async (_what, env, sentence) => {
+    const { code, output } = await startRefused(env)
+    expect(code).toBe(1)
+    const lines = output.split('\n').filter((line) => line.includes('"start.refused"'))
+    expect(lines).toHaveLength(1)
+    expect(lines[0]).toContain(sentence)
+  })
+
+  it('refuses records of a newer version', async () => {
+    const dataDir = await makeDataDir()
+    folders.push(dataDir)
+    await run(join(dataDir, 'kilnward.sqlite'), "INSERT INTO migrations (name) VALUES ('9999-kiln-on-the-moon.sql')")
+    const { code, output } = await startRefused({ DATA_DIR: dataDir })
+    expect(code).toBe(1)
+    expect(output).toContain('written by another version of Kilnward')
+  })
+
+  it('is ready within five seconds, or what this machine makes of them', async () => {
+    // How long the framework alone takes to load here: about a sixth of a second on a machine that does nothing else.
+    const floorMs = await milliseconds(() => promisify(execFile)(process.execPath, ['node_modules/next/dist/bin/next', '--version']))
+    const readyMs = await milliseconds(async () => {
+      const server = await startServer()
+      running.push(server)
+    })
+    expect(readyMs, `ready after ${Math.round(readyMs)} ms, floor ${Math.round(floorMs)} ms`).toBeLessThan(Math.max(5000, 15 * floorMs))
+  })
+
+  it('ends within five seconds of SIGTERM while eight tablets write, and loses nothing that it acknowledged', async () => {
+    const server = await startServer()
+    running.push(server)
+    const { buildFoundry } = await import('@/tests/factories/shell-room')
+    const { Operation, Reading } = await import('@/models')
+    const foundry = await buildFoundry()
+    const member = await seedMember('operator')
+    const client = await signIn(server.baseUrl, member.email, member.password)
+    const acknowledged: string[] = []
+    const load = { isOver: false }
+    const lane = async () => {
+      while (!load.isOver) {
+        const operationId = randomUUID()
+        const body = { operationId, sensorId: foundry.sensorId, airTempC: 21, relHumidityPct: 50 }
+        const answer = await client.send('POST', '/api/v1/readings/typed', body).catch(() => null)
+        if (answer?.status === 201 && (await answer.text().catch(() => null))) acknowledged.push(operationId)
+        if (answer === null) return
+      }
+    }
+    const lanes = Array.from({ length: 8 }, lane)
+    await until(() => acknowledged.length > 40, 'Forty answers')
+    const began = performance.now()
+    server.process.kill('SIGTERM')
+    await server.exited
+    const tookMs = performance.now() - began
+    load.isOver = true
+    await Promise.all(lanes)
+    expect(tookMs).toBeLessThan(5000)
+    const kept = new Set((await Operation.findAll({ attributes: ['operationId'] })).map((row) => row.operationId))
+    expect(acknowledged.filter((id) => !kept.has(id))).toEqual([])
+    expect(await Reading.count()).toBeGreaterThan(0)
+  })
+})
+
+async function milliseconds(work: () => Promise<unknown>): Promise<number> {
+  const began = performance.now()
+  await work()
+  return performance.now() - began
+}

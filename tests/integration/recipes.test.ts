@@ -1,8 +1,17 @@
 import { beforeAll, describe, expect, it } from 'vitest'
-import { createRecipe } from '@/lib/commands/save-recipe'
+import { addRecipeVersion, createRecipe, renameRecipe, retireRecipe } from '@/lib/commands/save-recipe'
 import { newId } from '@/lib/core/ids'
 import type { Actor } from '@/lib/members/actor'
-import { recipeInput, type RecipeCoatInput, type RecipeInput } from '@/lib/recipes/recipe-input'
+import { loadRecipeDetail } from '@/lib/queries/recipe-detail'
+import { loadRecipeList } from '@/lib/queries/recipe-list'
+import { loadTreeForm } from '@/lib/queries/tree-form'
+import {
+  recipeInput,
+  recipeVersionInput,
+  type RecipeCoatInput,
+  type RecipeInput,
+  type RecipeVersionInput,
+} from '@/lib/recipes/recipe-input'
 import { Bath, FoundryEvent, Recipe, RecipeCoat, RecipeVersion } from '@/models'
 import { buildFoundry, buildMember, NOW, stoppedClock, type TestFoundry } from '@/tests/factories/shell-room'
 
@@ -82,5 +91,139 @@ describe('a new recipe', () => {
     const own = await createRecipe(input(), by())
     expect((await Recipe.findByPk(demo.recipeId))!.isDemo).toBe(true)
     expect((await Recipe.findByPk(own.recipeId))!.isDemo).toBe(false)
+  })
+})
+
+const versionInput = (overrides: Partial<RecipeVersionInput> = {}): RecipeVersionInput =>
+  recipeVersionInput.parse({
+    from: 1,
+    follows: 1,
+    note: 'Coat 2 was never dry in time.',
+    coats: [face(), coat({ needReferenceHours: 4.5 }), seal()],
+    ...overrides,
+  })
+const eventsOf = (recipeId: string) =>
+  FoundryEvent.findAll({ where: { subjectType: 'recipe', subjectId: recipeId }, order: [['id', 'ASC']] })
+const calibrate = (versionId: string) => RecipeVersion.update({ calibratedAt: NOW }, { where: { id: versionId } })
+
+describe('a further version', () => {
+  it('leaves the one before as it was, and writes down both', async () => {
+    const { recipeId, versionId } = await createRecipe(input(), by())
+    const made = await addRecipeVersion(recipeId, versionInput(), by())
+    expect(made).toMatchObject({ version: 2, isCalibrated: false })
+    const needs = async (id: string) =>
+      (await RecipeCoat.findAll({ where: { recipeVersionId: id }, order: [['number', 'ASC']] })).map((each) => each.needReferenceHours)
+    expect(await needs(versionId)).toEqual([4, 4, 12])
+    expect(await needs(made.versionId)).toEqual([4, 4.5, 12])
+    const event = (await eventsOf(recipeId)).at(-1)!
+    expect(event).toMatchObject({ kind: 'recipe version added', memberId: ines.id })
+    expect(event.detail).toMatchObject({
+      text: expect.stringMatching(/^Version 2 of .*: 1 changed\. Coat 2 was never dry in time\.$/),
+      before: { version: 1, coats: [{}, { number: 2, needReferenceHours: 4, bath: 'Backup slurry' }, {}] },
+      after: { version: 2, coats: [{}, { number: 2, needReferenceHours: 4.5 }, {}] },
+    })
+  })
+
+  it('can never be changed or taken away afterwards', async () => {
+    const { versionId } = await createRecipe(input(), by())
+    const where = { recipeVersionId: versionId, number: 1 }
+    const refused = { parent: { message: 'SQLITE_CONSTRAINT: a recipe version never changes' } }
+    await expect(RecipeCoat.update({ needReferenceHours: 9 }, { where })).rejects.toMatchObject(refused)
+    await expect(RecipeCoat.destroy({ where })).rejects.toMatchObject(refused)
+  })
+
+  it('stays calibrated while nothing changes that a need rests on', async () => {
+    const { recipeId, versionId } = await createRecipe(input(), by())
+    await calibrate(versionId)
+    const coats = [face(), coat({ drainSeconds: 55, guard: 'safe', longestWaitHours: 48, readAloud: 'Turn it once.' }), seal()]
+    const second = await addRecipeVersion(recipeId, versionInput({ coats }), by())
+    expect(second.isCalibrated).toBe(true)
+    const third = await addRecipeVersion(recipeId, versionInput({ from: 2, follows: 2 }), by())
+    expect(third.isCalibrated).toBe(false)
+    // Back to the needs of an old calibrated one.
+    const fourth = await addRecipeVersion(recipeId, versionInput({ from: 2, follows: 3, coats }), by())
+    expect(fourth.isCalibrated).toBe(true)
+    expect((await RecipeVersion.findByPk(fourth.versionId))!.calibratedAt).toBe(NOW)
+  })
+
+  it('is refused when it differs in nothing, and when somebody made one meanwhile', async () => {
+    const { recipeId } = await createRecipe(input(), by())
+    await expect(addRecipeVersion(recipeId, versionInput({ coats: [face(), coat(), seal()] }), by())).rejects.toMatchObject({
+      code: 'conflict',
+      message: 'Nothing differs from version 1: a new version needs a difference.',
+    })
+    await addRecipeVersion(recipeId, versionInput(), by())
+    await expect(addRecipeVersion(recipeId, versionInput({ note: 'Mine.' }), by())).rejects.toMatchObject({
+      code: 'conflict',
+      message: expect.stringContaining('Ines made version 2 meanwhile'),
+    })
+    expect(await RecipeVersion.count({ where: { recipeId } })).toBe(2)
+  })
+
+  it('is refused for a version or a recipe that is not there, and for a retired bath', async () => {
+    const { recipeId } = await createRecipe(input(), by())
+    await expect(addRecipeVersion(newId(), versionInput(), by())).rejects.toMatchObject({ code: 'not_found' })
+    await expect(addRecipeVersion(recipeId, versionInput({ from: 7 }), by())).rejects.toMatchObject({ code: 'not_found' })
+    const old = await Bath.create({ id: newId(), name: 'Third slurry', kind: 'backup', retiredAt: NOW, createdAt: NOW })
+    const coats = [face(), coat({ bathId: old.id }), seal()]
+    await expect(addRecipeVersion(recipeId, versionInput({ coats }), by())).rejects.toMatchObject({
+      extra: { fields: [{ path: 'coats.1.bathId' }] },
+    })
+  })
+})
+
+describe('a recipe', () => {
+  it('of the demo becomes the foundry’s own when somebody changes it, unless it is one of the demo’s people', async () => {
+    const asDemo = { member: { ...ines, isDemo: true }, clock: stoppedClock() }
+    const { recipeId } = await createRecipe(input({ name: 'Shown' }), asDemo)
+    await renameRecipe(recipeId, 'Shown to guests', asDemo)
+    expect((await Recipe.findByPk(recipeId))!.isDemo).toBe(true)
+    await renameRecipe(recipeId, 'Ours', by())
+    expect((await Recipe.findByPk(recipeId))!.isDemo).toBe(false)
+  })
+
+  it('takes another name, but not one that is taken', async () => {
+    const one = await createRecipe(input({ name: 'Reliefs' }), by())
+    const other = await createRecipe(input({ name: 'Busts' }), by())
+    await expect(renameRecipe(other.recipeId, 'reliefs', by())).rejects.toMatchObject({ extra: { fields: [{ path: 'name' }] } })
+    await renameRecipe(other.recipeId, 'busts', by())
+    await renameRecipe(one.recipeId, 'Reliefs', by())
+    expect((await Recipe.findByPk(other.recipeId))!.name).toBe('busts')
+    expect((await eventsOf(other.recipeId)).at(-1)).toMatchObject({
+      kind: 'recipe renamed',
+      detail: { before: { name: 'Busts' }, after: { name: 'busts' } },
+    })
+    expect(await eventsOf(one.recipeId)).toHaveLength(1)
+  })
+
+  it('is offered to new trees with its newest version while it is in use', async () => {
+    const { recipeId } = await createRecipe(input({ name: 'Offered' }), by())
+    const { versionId } = await addRecipeVersion(recipeId, versionInput(), by())
+    const offered = async () => (await loadTreeForm()).recipes.filter(({ label }) => label.startsWith('Offered'))
+    expect(await offered()).toEqual([{ versionId, label: 'Offered, version 2', coatCount: 3, isCalibrated: false }])
+    await retireRecipe(recipeId, true, by())
+    expect(await offered()).toEqual([])
+    expect((await loadRecipeList()).find(({ id }) => id === recipeId)).toMatchObject({ isRetired: true, version: 2 })
+    await retireRecipe(recipeId, true, by())
+    await retireRecipe(recipeId, false, by())
+    expect(await offered()).toHaveLength(1)
+    expect((await eventsOf(recipeId)).map(({ kind }) => kind)).toEqual([
+      'recipe added',
+      'recipe version added',
+      'recipe retired',
+      'recipe taken into use',
+    ])
+  })
+
+  it('tells each version with its maker, and null for one that is not there', async () => {
+    const { recipeId } = await createRecipe(input({ note: 'First.' }), by())
+    await addRecipeVersion(recipeId, versionInput(), by())
+    const detail = await loadRecipeDetail(recipeId)
+    expect(detail!.versions.map(({ version, note, by: maker, coats }) => [version, note, maker, coats.length])).toEqual([
+      [2, 'Coat 2 was never dry in time.', 'Ines', 3],
+      [1, 'First.', 'Ines', 3],
+    ])
+    expect(detail!.versions[0]!.coats[0]).toMatchObject({ number: 1, bathName: 'Face slurry', isPrewet: false })
+    expect(await loadRecipeDetail(newId())).toBeNull()
   })
 })

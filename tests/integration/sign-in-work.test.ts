@@ -1,3 +1,4 @@
+import type * as nodeCrypto from 'node:crypto'
 import { beforeEach, expect, it, vi } from 'vitest'
 import { signIn } from '@/lib/commands/sign-in'
 import { Member, SignInWait } from '@/models'
@@ -7,7 +8,7 @@ import { seedMember, type SeededMember } from '@/tests/setup/server'
 /** Every hash that is worked out: with which N. */
 const hashed = vi.hoisted((): number[] => [])
 vi.mock('node:crypto', async (importOriginal) => {
-  const original = await importOriginal<typeof import('node:crypto')>()
+  const original = await importOriginal<typeof nodeCrypto>()
   const scrypt = (...args: unknown[]) => {
     const [, , , options] = args
     if (typeof options === 'object' && options !== null && 'N' in options) hashed.push(Number(options.N))

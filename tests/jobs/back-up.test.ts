@@ -167,31 +167,30 @@ it('copies under load: no write fails, and the copy is one moment of the records
      SELECT :sensorId, :now - i * 300000, 21, 50, 1, 'sensor', :now FROM n`,
     { type: QueryTypes.INSERT, replacements: { count: READINGS, sensorId: foundry.sensorId, now: NOW } },
   )
-  let isOver = false
-  let writes = 0
+  const load = { isOver: false, writes: 0 }
   const errors: unknown[] = []
   // Two rows of one transaction: a copy that holds one of them is torn.
   const lane = async () => {
-    while (!isOver) {
+    while (!load.isOver) {
       try {
         await inTransaction(async () => {
           for (const bathId of [foundry.faceBathId, foundry.backupBathId]) {
             await BathStir.create({ id: newId(), bathId, stirredAt: NOW, memberId: owner.id })
           }
         })
-        writes += 1
+        load.writes += 1
       } catch (error) {
         errors.push(error)
       }
     }
   }
   const lanes = Array.from({ length: 8 }, lane)
-  while (writes < 20) await new Promise((resolve) => setTimeout(resolve, 5))
-  const before = writes
+  while (load.writes < 20) await new Promise((resolve) => setTimeout(resolve, 5))
+  const before = load.writes
   const copies = []
   for (const kind of ['hourly', 'daily', 'by hand'] as const) copies.push(await makeBackup(kind, { member: null, clock }))
-  const during = writes - before
-  isOver = true
+  const during = load.writes - before
+  load.isOver = true
   await Promise.all(lanes)
   expect(errors).toEqual([])
   expect(during).toBeGreaterThan(0)

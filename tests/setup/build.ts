@@ -25,14 +25,15 @@ export function builtDoors(): string[] {
   })
 }
 
-/** Every server action of the build as its file and exported name. */
-export function builtActions(): { file: string; name: string }[] {
+/** Every server action of the build: its file, its exported name, and the id that a browser calls it by. */
+export function builtActions(): { file: string; name: string; id: string }[] {
   const entry = z.looseObject({ filename: z.string(), exportedName: z.string() })
   const manifest = z.looseObject({ node: z.record(z.string(), entry), edge: z.record(z.string(), entry) })
   const { node, edge } = manifest.parse(readBuild('server/server-reference-manifest.json'))
-  const seen = [...Object.values(node), ...Object.values(edge)].map(({ filename, exportedName }) => ({
+  const seen = [...Object.entries(node), ...Object.entries(edge)].map(([id, { filename, exportedName }]) => ({
     file: filename,
     name: exportedName,
+    id,
   }))
   return seen.filter((one, index) => seen.findIndex((other) => other.file === one.file && other.name === one.name) === index)
 }

@@ -1,4 +1,6 @@
 import { randomUUID } from 'node:crypto'
+import { mkdirSync, writeFileSync } from 'node:fs'
+import { join } from 'node:path'
 import type * as Factories from '@/tests/factories/shell-room'
 import type { FakePushService } from '@/tests/setup/fake-push-service'
 import type { Client } from '@/tests/setup/client'
@@ -8,6 +10,8 @@ export type Scene = {
   factories: typeof Factories
   service: FakePushService
   operator: Client
+  owner: Client
+  dataDir: string
   anonymous: Client
   sensorToken: string
   /** Asks a door by its operation id; the answer is checked against the description. */
@@ -67,6 +71,19 @@ export const SCENES: Record<string, (scene: Scene) => Promise<void>> = {
       const etag = (await ask(operator, 'readQueue')).headers.get('etag') ?? ''
       ;({ status } = await ask(operator, 'readQueue', { headers: { 'if-none-match': etag } }))
     }
+  },
+  estimateDrying: async ({ ask, operator }) => {
+    const body = { airSpeedMps: 1, altitudeM: 0, need: { referenceHours: 4 }, dippedAt: Date.now() }
+    await ask(operator, 'estimateDrying', { body: { ...body, climate: { constant: { airTempC: 21, relHumidityPct: 50 } } } })
+    await ask(operator, 'estimateDrying', { body: { ...body, climate: {} } })
+  },
+  exportClimate: async ({ ask, operator, foundry }) => {
+    await ask(operator, 'exportClimate', { params: { sensorId: String(foundry.sensorId) } })
+    await ask(operator, 'exportClimate', { params: { sensorId: '4040' } })
+  },
+  exportTrees: async ({ ask, operator, factories, foundry }) => {
+    await factories.buildTree(foundry)
+    await ask(operator, 'exportTrees')
   },
   logDips: async (scene) => {
     const { body } = await dippedTree(scene)
@@ -131,6 +148,17 @@ export const SCENES: Record<string, (scene: Scene) => Promise<void>> = {
     await database.query('ALTER TABLE job_runs RENAME TO job_runs_away')
     await ask(anonymous, 'readHealth')
     await database.query('ALTER TABLE job_runs_away RENAME TO job_runs')
+  },
+  downloadNewestBackup: async ({ ask, owner, operator, dataDir }) => {
+    await ask(owner, 'downloadNewestBackup')
+    const { Backup } = await import('@/models')
+    const now = Date.now()
+    const fileName = 'kilnward-test.sqlite'
+    mkdirSync(join(dataDir, 'backups'), { recursive: true })
+    writeFileSync(join(dataDir, 'backups', fileName), 'SQLite format 3')
+    await Backup.create({ id: randomUUID(), fileName, kind: 'by hand', startedAt: now, finishedAt: now, outcome: 'done', sizeBytes: 15 })
+    await ask(owner, 'downloadNewestBackup')
+    await ask(operator, 'downloadNewestBackup')
   },
   describeApi: async ({ ask, anonymous }) => {
     await ask(anonymous, 'describeApi')

@@ -48,8 +48,8 @@ export async function makeDataDir(): Promise<string> {
 }
 
 /** Starts a Node program in its own process group, which ends with this process at the latest. */
-export function startProgram(args: string[], env: NodeJS.ProcessEnv): Program {
-  const child = spawn(process.execPath, args, { env, detached: true, stdio: ['ignore', 'pipe', 'pipe'] })
+export function startProgram(args: string[], env: NodeJS.ProcessEnv, cwd = process.cwd()): Program {
+  const child = spawn(process.execPath, args, { env, cwd, detached: true, stdio: ['ignore', 'pipe', 'pipe'] })
   let text = ''
   for (const stream of [child.stdout, child.stderr]) stream.on('data', (chunk: Buffer) => (text += chunk.toString()))
   const exited = new Promise<number | null>((resolve) => child.on('exit', resolve))
@@ -71,7 +71,7 @@ export function startProgram(args: string[], env: NodeJS.ProcessEnv): Program {
   return { process: child, output: () => text, exited, stop }
 }
 
-function freePort(): Promise<number> {
+export function freePort(): Promise<number> {
   return new Promise((resolve, reject) => {
     const probe = createServer()
     probe.on('error', reject)

@@ -3,6 +3,13 @@ import { FLOOR_DOORS } from '@/lib/server/doors/floor'
 import { NOTICE_DOORS } from '@/lib/server/doors/notices'
 import { PROGRAM_DOORS } from '@/lib/server/doors/program'
 import { READING_DOORS } from '@/lib/server/doors/readings'
+import { ROOM_DOORS } from '@/lib/server/doors/room'
 
 /** Every method of every route under /api/v1, and /api/health. A test fails on one that is missing, and on one that is gone. */
-export const DESCRIBED_DOORS: readonly DoorDescription[] = [...READING_DOORS, ...FLOOR_DOORS, ...NOTICE_DOORS, ...PROGRAM_DOORS]
+export const DESCRIBED_DOORS: readonly DoorDescription[] = [
+  ...READING_DOORS,
+  ...ROOM_DOORS,
+  ...FLOOR_DOORS,
+  ...NOTICE_DOORS,
+  ...PROGRAM_DOORS,
+]

@@ -2,8 +2,14 @@ import type { z } from 'zod'
 import type { ErrorCode } from '@/lib/core/errors'
 import type { Act } from '@/lib/members/roles'
 
-/** What a door answers when all is well. Without a schema the answer has no body. */
-export type DoorAnswer = { text: string; schema?: z.ZodType; example?: unknown; headers?: Readonly<Record<string, string>> }
+/** What a door answers when all is well. Without a schema the answer has no body; `type` is its media type, JSON unless it says so. */
+export type DoorAnswer = {
+  text: string
+  schema?: z.ZodType
+  type?: string
+  example?: unknown
+  headers?: Readonly<Record<string, string>>
+}
 
 /**
  * One method of one route, as the API's description tells it. The problems that follow from `who`, `body` and `limit` are added by

@@ -2,6 +2,8 @@ import { z } from 'zod'
 import { dipRefusal, dipRun, dipRunAnswer, undoDips, undoDipsAnswer } from '@/lib/coats/dip-contract'
 import { queue } from '@/lib/queue/contract'
 import type { DoorDescription } from '@/lib/server/doors/door'
+import { TREE_GROUPS } from '@/lib/trees/tree-groups'
+import { POUR_FILTERS, TREE_SORTS } from '@/lib/trees/tree-view'
 import { holdAnswer, holdInput, lookAnswer, lookInput, placeAnswer, placeInput, stirAnswer, stirInput } from '@/lib/trees/tablet-input'
 
 const OPERATION =
@@ -39,6 +41,25 @@ export const FLOOR_DOORS: readonly DoorDescription[] = [
       200: { text: 'The floor.', schema: queue, headers: { ETag: 'Changes with the floor, and with each minute.' } },
       304: { text: 'Nothing has changed since that ETag.', headers: { ETag: 'The same as was sent.' } },
     },
+  },
+  {
+    operationId: 'exportTrees',
+    method: 'GET',
+    path: '/api/v1/trees.csv',
+    group: 'Floor',
+    summary: 'The list of trees as a file',
+    text: 'All pages of what the list of trees shows with the same words in its address. Words that it does not know are left out, never refused.',
+    who: 'see',
+    query: {
+      q: { schema: z.string().max(80).optional(), text: 'Tag, piece or place to find.' },
+      state: { schema: z.enum(TREE_GROUPS.map(({ key }) => key)).optional(), text: 'A group of states; all open trees without it.' },
+      recipe: { schema: z.string().max(60).optional(), text: 'Name of a recipe.' },
+      place: { schema: z.string().max(40).optional(), text: 'Name of a place.' },
+      pour: { schema: z.enum(POUR_FILTERS.map(({ key }) => key)).optional(), text: 'By the pour date.' },
+      sort: { schema: z.enum(TREE_SORTS).optional(), text: 'What asks for a hand first, without it.' },
+      order: { schema: z.enum(['desc']).optional(), text: 'The other way round.' },
+    },
+    answers: { 200: { text: 'One line a tree, names of the columns in the first.', type: 'text/csv', schema: z.string() } },
   },
   {
     operationId: 'logDips',

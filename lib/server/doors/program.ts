@@ -19,6 +19,24 @@ export const PROGRAM_DOORS: readonly DoorDescription[] = [
     },
   },
   {
+    operationId: 'downloadNewestBackup',
+    method: 'GET',
+    path: '/api/v1/backups/newest',
+    group: 'Program',
+    summary: 'The newest backup as a file',
+    text: 'An SQLite database: all the records as they were then. Keep it as safe as the server.',
+    who: 'upkeep',
+    answers: {
+      200: {
+        text: 'The file.',
+        type: 'application/vnd.sqlite3',
+        schema: z.string(),
+        headers: { 'Content-Disposition': 'Its name, with the moment at which it was made.' },
+      },
+    },
+    problems: ['not_found'],
+  },
+  {
     operationId: 'describeApi',
     method: 'GET',
     path: '/api/v1/openapi.json',

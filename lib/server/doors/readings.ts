@@ -40,7 +40,7 @@ export const READING_DOORS: readonly DoorDescription[] = [
     path: '/api/v1/readings/typed',
     group: 'Readings',
     summary: 'Enter a reading of the wall hygrometer',
-    text: 'It counts from now on and holds until the next reading, 12 hours at most.',
+    text: 'It counts from now on, or from `measuredAt`, and holds until the next reading, 12 hours at most. `measuredAt` may be 31 days back and 2 minutes ahead.',
     who: 'read',
     body: {
       schema: typedReading,

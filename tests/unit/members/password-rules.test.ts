@@ -28,7 +28,7 @@ describe('a new password', () => {
   })
 
   it('does not only repeat itself', () => {
-    for (const weak of ['aaaaaaaaaaaa', 'abcabcabcabc', 'PasswordPassword', '------------', 'otter gate otter gate ']) {
+    for (const weak of ['aaaaaaaaaaaa', 'abcabcabcabc', 'PasswordPassword', '------------', 'otter gate, Otter Gate']) {
       expect(passwordProblem(weak)).toMatch(/only repeats itself/)
     }
     expect(passwordProblem('gull gull otter')).toBeNull()
@@ -53,7 +53,7 @@ describe('the list of the commonest', () => {
   it('holds only what the rule of length lets through, in small letters', () => {
     expect(COMMON_PASSWORDS.size).toBeGreaterThan(250)
     for (const common of COMMON_PASSWORDS) {
-      expect([...common].length, common).toBeGreaterThanOrEqual(12)
+      expect(common.length, common).toBeGreaterThanOrEqual(12)
       expect(common).toBe(common.toLowerCase())
     }
   })

@@ -41,7 +41,8 @@ describe('the description of the API', () => {
     expect(validator.version).toBe('3.1')
     const broken = await new Validator().validate({ ...structuredClone(document), paths: { '/x': { get: { responses: [] } } } })
     expect(broken.valid).toBe(false)
-  })
+    // It compiles the schemas of OpenAPI first.
+  }, 30_000)
 
   it('gives each operation its own id, a summary and a group', () => {
     const ids = DESCRIBED_DOORS.map(({ operationId }) => operationId)

@@ -74,7 +74,7 @@ describe('fixedFields', () => {
 })
 
 describe('a known tree in its form', () => {
-  const known = {
+  const known: Parameters<typeof formValuesOf>[0] = {
     tree: { tag: 'T-122', place: { id: whole.placeId, name: 'Rack B 5' }, pourDate: null },
     recipe: { versionId: whole.recipeVersionId },
     waxMassKg: 3.2,

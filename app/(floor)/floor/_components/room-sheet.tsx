@@ -6,9 +6,10 @@ import { Icon } from '@/app/_components/icons'
 import { Key } from '@/app/_components/key'
 import { useUnits } from '@/app/_components/units-context'
 import { checkDial, type DialErrors } from '@/lib/floor/dip-draft'
-import { PULL_WORDS, readingAge, roomsByWorry } from '@/lib/floor/strip'
+import { readingAge, roomsByWorry } from '@/lib/floor/strip'
 import { formatKelvin, formatPercent, formatTemperature, UNIT_SIGNS } from '@/lib/format/units'
 import type { Queue, QueueRoom } from '@/lib/queue/contract'
+import { PULL_WORDS } from '@/lib/room/drying-pull'
 import { newOperationId } from '../_queries/operation-id'
 import { refusalWords } from '../_queries/request-json'
 import { postTypedReading } from '../_queries/writes'
@@ -125,7 +126,7 @@ function TypedReading({ room, onSaid }: { room: QueueRoom; onSaid: (words: strin
 
   const wrong = [errors.airTempC, errors.relHumidityPct].filter((error) => error !== undefined)
   const errorId = `typed-${room.sensorId}-error`
-  const dial = (label: string, unit: string, value: string, isWrong: boolean, onChange: (text: string) => void) => (
+  const dial = (label: string, sign: string, value: string, isWrong: boolean, onChange: (text: string) => void) => (
     <label className="wall-dial" data-wrong={isWrong}>
       <span>{label}</span>
       <span>
@@ -137,7 +138,7 @@ function TypedReading({ room, onSaid }: { room: QueueRoom; onSaid: (words: strin
           aria-describedby={errorId}
           onChange={(event) => onChange(event.target.value)}
         />
-        <small className="num">{unit}</small>
+        <small className="num">{sign}</small>
       </span>
     </label>
   )

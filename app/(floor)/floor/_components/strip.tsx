@@ -2,11 +2,12 @@ import type { ReactNode } from 'react'
 import { Icon } from '@/app/_components/icons'
 import { useUnits } from '@/app/_components/units-context'
 import { usePress } from '@/app/_components/use-press'
-import { bathsByNeed, PULL_WORDS, readingAge, mainRoom, shortBathName } from '@/lib/floor/strip'
+import { bathsByNeed, readingAge, mainRoom, shortBathName } from '@/lib/floor/strip'
 import { formatClock, formatDate, formatMoment } from '@/lib/format/local-time'
 import { splitName } from '@/lib/format/person-name'
 import { formatKelvin, formatPercent, fromSi, oneDecimal, UNIT_SIGNS, wholeNumber } from '@/lib/format/units'
 import type { Queue } from '@/lib/queue/contract'
+import { PULL_WORDS } from '@/lib/room/drying-pull'
 
 const BATH_LINES = 2
 

@@ -1,12 +1,4 @@
-import { z } from 'zod'
-
-/** A problem document of the server, as far as the floor reads it. */
-const problemDocument = z.object({
-  detail: z.string().catch('The server refused this.'),
-  fields: z.array(z.object({ path: z.string(), message: z.string() })).catch([]),
-  trees: z.unknown().optional(),
-})
-export type Problem = z.infer<typeof problemDocument>
+import { readProblem, type Problem } from './shapes'
 
 /**
  * How a write ended. 'unreachable' covers everything after which nobody knows whether the server has written it down: no network,
@@ -20,7 +12,7 @@ export type Outcome<T> =
 const ANSWER_WITHIN_MS = 12_000
 
 /** Sends a write and reads the answer; never throws. */
-export async function postJson<T>(path: string, body: unknown, answer: z.ZodType<T>): Promise<Outcome<T>> {
+export async function postJson<T>(path: string, body: unknown, isAnswer: (json: unknown) => json is T): Promise<Outcome<T>> {
   try {
     const response = await fetch(path, {
       method: 'POST',
@@ -30,16 +22,11 @@ export async function postJson<T>(path: string, body: unknown, answer: z.ZodType
     })
     const json: unknown = await response.json().catch(() => null)
     if (response.ok) {
-      const parsed = answer.safeParse(json)
-      return parsed.success
-        ? { kind: 'done', data: parsed.data }
-        : { kind: 'unreachable', detail: 'The answer of the server was not understood.' }
+      return isAnswer(json) ? { kind: 'done', data: json } : { kind: 'unreachable', detail: 'The answer of the server was not understood.' }
     }
-    const problem = problemDocument.safeParse(json)
-    if (!problem.success || response.status >= 500) {
-      return { kind: 'unreachable', detail: problem.success ? problem.data.detail : 'The server could not answer.' }
-    }
-    return { kind: 'refused', status: response.status, problem: problem.data }
+    const problem = readProblem(json)
+    if (!problem || response.status >= 500) return { kind: 'unreachable', detail: problem?.detail ?? 'The server could not answer.' }
+    return { kind: 'refused', status: response.status, problem }
   } catch {
     return { kind: 'unreachable', detail: 'The server does not answer.' }
   }

@@ -1,7 +1,8 @@
 'use client'
 
 import { useQuery, useQueryClient, type QueryClient } from '@tanstack/react-query'
-import { queue as queueContract, type Queue } from '@/lib/queue/contract'
+import type { Queue } from '@/lib/queue/contract'
+import { isQueue } from './shapes'
 
 export const floorQueueKey = ['queue'] as const
 
@@ -36,7 +37,9 @@ async function fetchQueue(client: QueryClient, signal: AbortSignal): Promise<See
   if (response.status === 304 && known) return known.clockGap === clockGap ? known : { ...known, clockGap }
   if (response.status === 401) throw new SignedOut('The session has ended.')
   if (!response.ok) throw new Error(`The queue was not given: ${response.status}.`)
-  return { etag: response.headers.get('etag') ?? '', queue: queueContract.parse(await response.json()), clockGap }
+  const queue: unknown = await response.json()
+  if (!isQueue(queue)) throw new Error('The answer of the server was not understood.')
+  return { etag: response.headers.get('etag') ?? '', queue, clockGap }
 }
 
 export type FloorQueue = SeenQueue & {
@@ -56,7 +59,7 @@ export function useFloorQueue(initial: { etag: string; queue: Queue; serverNow: 
     initialData: () => ({ etag: initial.etag, queue: initial.queue, clockGap: initial.serverNow - Date.now() }),
     refetchInterval: POLL_MS,
     refetchIntervalInBackground: true,
-    // Zod makes new objects each time; equal parts keep their identity, so that only what changed is drawn anew.
+    // Each answer is made of new objects; equal parts keep their identity, so that only what changed is drawn anew.
     structuralSharing: true,
     retry: false,
     staleTime: 0,

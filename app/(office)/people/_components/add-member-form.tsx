@@ -12,7 +12,7 @@ import { addMemberAction } from '@/app/(office)/people/actions'
 export function AddMemberForm() {
   const said = useRef<HTMLDivElement>(null)
   const form = useKeptForm(addMemberAction, () => {
-    form.formProps.ref.current?.reset()
+    said.current?.closest('form')?.reset()
     said.current?.focus()
   })
   return (

@@ -31,17 +31,17 @@ export function MemberFields({ values, errorOf }: MemberFieldsProps) {
           error={errorOf('email')}
         />
       </div>
-      <fieldset className="role-choice" aria-describedby={roleError ? errorId : undefined}>
+      <fieldset
+        className="role-choice"
+        role="radiogroup"
+        tabIndex={-1}
+        aria-invalid={roleError ? true : undefined}
+        aria-describedby={roleError ? errorId : undefined}
+      >
         <legend className="label">What they may do</legend>
         {ROLE_ORDER.map((role) => (
           <label key={role} className="role-line">
-            <input
-              type="radio"
-              name="role"
-              value={role}
-              defaultChecked={values.role === role}
-              aria-invalid={roleError ? true : undefined}
-            />
+            <input type="radio" name="role" value={role} defaultChecked={values.role === role} />
             <span>
               <b>{role}</b>
               {ROLE_WORDS[role]}

@@ -1,6 +1,6 @@
 'use client'
 
-import { useState, type ReactNode } from 'react'
+import { useEffect, useRef, useState, type ReactNode } from 'react'
 import { Icon } from '@/app/_components/icons'
 import { Key } from '@/app/_components/key'
 import { Plate } from '@/app/_components/plate'
@@ -12,16 +12,22 @@ export type AddPlateProps = {
   /** What stands there while the list is empty; null once it is not. */
   empty: { title: string; text: string } | null
   /** The form; `onDone` is called once it has added one. */
-  form: (onDone: () => void) => ReactNode
+  renderForm: (onDone: () => void) => ReactNode
 }
 
 /** The key that adds the first or another row, and its form. After each one the form closes and the list shows it. */
-export function AddPlate({ words, empty, form }: AddPlateProps) {
+export function AddPlate({ words, empty, renderForm }: AddPlateProps) {
   const [isOpen, setIsOpen] = useState(false)
   const [isAdded, setIsAdded] = useState(false)
+  const ref = useRef<HTMLButtonElement>(null)
+  // The form that had the focus is gone.
+  useEffect(() => {
+    if (isAdded) ref.current?.focus()
+  }, [isAdded])
   const key = (
     <Key
-      tone="go"
+      ref={ref}
+      tone={isOpen ? 'quiet' : 'go'}
       icon={isOpen ? 'minus' : 'plus'}
       aria-expanded={isOpen}
       onPress={() => {
@@ -53,7 +59,7 @@ export function AddPlate({ words, empty, form }: AddPlateProps) {
       )}
       {isOpen && (
         <Plate title={words}>
-          {form(() => {
+          {renderForm(() => {
             setIsOpen(false)
             setIsAdded(true)
           })}

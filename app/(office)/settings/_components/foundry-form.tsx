@@ -46,7 +46,9 @@ export function FoundryForm({ values, shown, zones, onDone }: FoundryFormProps) 
             />
             <datalist id={zonesId}>
               {zones.map((zone) => (
-                <option key={zone} value={zone} />
+                <option key={zone} value={zone}>
+                  {zone}
+                </option>
               ))}
             </datalist>
           </div>
@@ -58,7 +60,7 @@ export function FoundryForm({ values, shown, zones, onDone }: FoundryFormProps) 
             defaultValue={values.altitudeM}
             onInput={(event) => setAltitude(event.currentTarget.value)}
             error={form.errorOf('altitudeM')}
-            hint={`${pressureWords(altitude)} The drying clock works out new readings with it; those that are stored stay as they are.`}
+            hint={`${pressureWords(altitude)} New readings are worked out with it; stored ones stay as they are. How fast moving air dries follows at once.`}
             autoComplete="off"
           />
         </div>
@@ -79,7 +81,12 @@ export function FoundryForm({ values, shown, zones, onDone }: FoundryFormProps) 
           </SelectField>
         </div>
       </Plate>
-      <Plate title="The room that the recipes were made for" line="shown beside the air of the room; the drying clock does not use it">
+      {/* With another unit the fields begin anew: 20 is not the same in both. */}
+      <Plate
+        key={shown}
+        title="The room that the recipes were made for"
+        line="shown beside the air of the room; the drying clock does not use it"
+      >
         <div className="form-grid-4">
           <Field
             name="bandLowTempC"
@@ -133,5 +140,5 @@ export function FoundryForm({ values, shown, zones, onDone }: FoundryFormProps) 
 function pressureWords(typed: string): string {
   const altitudeM = Number(typed.trim().replace(',', '.').replace('−', '-'))
   const isAltitude = typed.trim() !== '' && altitudeM >= LOWEST_ALTITUDE_M && altitudeM <= HIGHEST_ALTITUDE_M
-  return isAltitude ? `The air presses with about ${Math.round(stationPressurePa(altitudeM) / 100)}\u00A0hPa there.` : ''
+  return isAltitude ? `Standard air pressure there: about ${Math.round(stationPressurePa(altitudeM) / 100)}\u00A0hPa.` : ''
 }

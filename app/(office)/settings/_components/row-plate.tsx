@@ -14,12 +14,14 @@ export type RowPlateProps = {
   children: ReactNode
   /** The form that 'Change' opens; a row without stands. */
   form?: ReactNode
+  /** What the key says that opens the form. */
+  verb?: string
   /** Other keys of the row. */
   keys?: ReactNode
 }
 
 /** One row of the settings: what is known of it, its keys, and its form where somebody changes it. */
-export function RowPlate({ title, isDemo = false, line, children, form, keys }: RowPlateProps) {
+export function RowPlate({ title, isDemo = false, line, children, form, verb = 'Change', keys }: RowPlateProps) {
   const [isOpen, setIsOpen] = useState(false)
   return (
     <li className="plate settings-row">
@@ -34,8 +36,8 @@ export function RowPlate({ title, isDemo = false, line, children, form, keys }: 
           <div className="settings-row-facts">{children}</div>
           <div className="settings-row-keys">
             {form !== undefined && (
-              <Key aria-label={`Change ${title}`} aria-expanded={isOpen} onPress={() => setIsOpen(!isOpen)}>
-                {isOpen ? 'Close the form' : 'Change'}
+              <Key aria-label={`${verb} ${title}`} aria-expanded={isOpen} onPress={() => setIsOpen(!isOpen)}>
+                {isOpen ? 'Close the form' : verb}
               </Key>
             )}
             {keys}

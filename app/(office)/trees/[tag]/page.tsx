@@ -36,6 +36,7 @@ import { typedWords } from '@/lib/format/typed-units'
 import { formatSeconds, formatShare, type MassUnit } from '@/lib/format/units'
 import { may } from '@/lib/members/roles'
 import { loadFoundry } from '@/lib/queries/load-foundry'
+import { loadNewerVersions } from '@/lib/queries/newer-versions'
 import { loadTreeDetail } from '@/lib/queries/tree-detail'
 import { loadTreeForm } from '@/lib/queries/tree-form'
 import { requireMemberPage } from '@/lib/server/auth'
@@ -60,6 +61,7 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
     loadTreeForm(),
   ])
   if (detail === null) notFound()
+  const newerVersions = may(member.role, 'recipes') ? await loadNewerVersions(detail.tree.id) : []
 
   const { tree, recipe, coats, curve, intake, holds, lookOvers, release } = detail
   const moment = { now, timeZone }
@@ -173,6 +175,8 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
           nextDip={tree.next === null ? null : { number: tree.next.number, isDue }}
           places={places}
           placeId={tree.place.id}
+          newerVersions={newerVersions}
+          coatsOn={tree.coatsOn}
         />
       </header>
 

@@ -2,15 +2,18 @@
 
 import { useId, useRef, useState, type ReactNode } from 'react'
 import { Field, SelectField } from '@/app/_components/field'
+import { Icon } from '@/app/_components/icons'
 import { Key, KeyLink } from '@/app/_components/key'
 import { useUnits } from '@/app/_components/units-context'
 import { FormMessage } from '@/app/(office)/_components/form-message'
 import { useKeptForm, type KeptForm } from '@/app/(office)/_components/use-kept-form'
 import { CROWDED_UNDER_MM, RECESS_CLASSES, SPACINGS, type RecessClass, type Spacing } from '@/lib/coats/vocabulary'
+import { isSameName } from '@/lib/format/same-name'
 import { formatLength, UNIT_SIGNS, type LengthUnit } from '@/lib/format/units'
 import type { TreeForm as TreeChoices } from '@/lib/queries/tree-form'
 import type { FormState } from '@/lib/server/form-state'
 import type { FixedFields } from '@/lib/trees/fixed-fields'
+import { openCast } from '@/lib/trees/open-cast'
 import type { PieceValues, TreeFormValues } from '@/lib/trees/tree-form-values'
 import { CUP_KINDS } from '@/lib/trees/tree-input'
 
@@ -114,7 +117,7 @@ export function TreeForm({ action, values, choices, fixed, submitWords, cancelPa
       </section>
 
       {fixed.pieces === undefined ? (
-        <Pieces pieces={values.pieces} works={choices.works} form={form} />
+        <Pieces pieces={values.pieces} choices={choices} form={form} />
       ) : (
         <section className="plate">
           <header>
@@ -244,7 +247,7 @@ function FixedField({ label, value, why }: { label: string; value: ReactNode; wh
   )
 }
 
-function Pieces({ pieces, works, form }: { pieces: PieceValues[]; works: TreeChoices['works']; form: KeptForm }) {
+function Pieces({ pieces, choices, form }: { pieces: PieceValues[]; choices: TreeChoices; form: KeptForm }) {
   const nextKey = useRef(pieces.length)
   const [rows, setRows] = useState(() => (pieces.length === 0 ? [NO_PIECE] : pieces).map((piece, key) => ({ key, piece })))
   const worksId = useId()
@@ -263,7 +266,7 @@ function Pieces({ pieces, works, form }: { pieces: PieceValues[]; works: TreeCho
       </header>
       <div className="plate-body grid gap-4">
         <datalist id={worksId}>
-          {works.map((work) => (
+          {choices.works.map((work) => (
             <option key={work.title} value={work.title}>
               {work.title}
             </option>
@@ -274,7 +277,7 @@ function Pieces({ pieces, works, form }: { pieces: PieceValues[]; works: TreeCho
             key={key}
             index={index}
             piece={piece}
-            works={works}
+            choices={choices}
             worksId={worksId}
             errorOf={form.errorOf}
             onRemove={rows.length === 1 ? null : () => setRows(rows.filter((row) => row.key !== key))}
@@ -296,21 +299,24 @@ function Pieces({ pieces, works, form }: { pieces: PieceValues[]; works: TreeCho
 function PieceRow({
   index,
   piece,
-  works,
+  choices,
   worksId,
   errorOf,
   onRemove,
 }: {
   index: number
   piece: PieceValues
-  works: TreeChoices['works']
+  choices: TreeChoices
   worksId: string
   errorOf: KeptForm['errorOf']
   onRemove: (() => void) | null
 }) {
-  const [title, setTitle] = useState(piece.workTitle)
+  const [typed, setTyped] = useState(piece)
   const sectionsId = useId()
-  const sections = works.find((work) => work.title.toLocaleLowerCase() === title.trim().toLocaleLowerCase())?.sections ?? []
+  const note = (changes: Partial<PieceValues>) => setTyped((before) => ({ ...before, ...changes }))
+  const work = choices.works.find(({ title }) => isSameName(title, typed.workTitle))
+  const sections = work?.sections ?? []
+  const stillOpen = openCast(typed, choices.openCasts)
   const name = (field: keyof PieceValues) => `pieces.${index}.${field}`
   return (
     <fieldset className="piece-row">
@@ -319,7 +325,7 @@ function PieceRow({
         name={name('workTitle')}
         label="Work"
         defaultValue={piece.workTitle}
-        onInput={(event) => setTitle(event.currentTarget.value)}
+        onInput={(event) => note({ workTitle: event.currentTarget.value })}
         list={worksId}
         maxLength={80}
         autoComplete="off"
@@ -329,6 +335,7 @@ function PieceRow({
         name={name('sectionName')}
         label="Section"
         defaultValue={piece.sectionName}
+        onInput={(event) => note({ sectionName: event.currentTarget.value })}
         list={sectionsId}
         maxLength={60}
         autoComplete="off"
@@ -347,12 +354,19 @@ function PieceRow({
         label="Edition"
         inputMode="numeric"
         defaultValue={piece.editionNumber}
+        onInput={(event) => note({ editionNumber: event.currentTarget.value })}
+        hint={work?.editionSize == null ? undefined : `of ${work.editionSize}`}
         maxLength={4}
         autoComplete="off"
         error={errorOf(name('editionNumber'))}
       />
       <label className="tick">
-        <input type="checkbox" name={name('isRecast')} defaultChecked={piece.isRecast} />
+        <input
+          type="checkbox"
+          name={name('isRecast')}
+          defaultChecked={piece.isRecast}
+          onChange={(event) => note({ isRecast: event.currentTarget.checked })}
+        />
         <span>Recast</span>
       </label>
       {onRemove !== null && (
@@ -360,6 +374,16 @@ function PieceRow({
           Remove
         </Key>
       )}
+      <p role="status" className="piece-note">
+        {typed.isRecast && stillOpen !== null && (
+          <span className="flex gap-2 text-ochre-ink">
+            <Icon name="warning" />
+            <span>
+              Edition {typed.editionNumber.trim()} still hangs on {stillOpen}, which is open: cast it again only if that shell is given up.
+            </span>
+          </span>
+        )}
+      </p>
     </fieldset>
   )
 }

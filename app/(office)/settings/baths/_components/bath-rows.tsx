@@ -29,7 +29,7 @@ export function BathRows({ baths: { inUse, retired }, now, timeZone }: { baths: 
                 text: 'Every slurry that trees are dipped in stands here. Recipes name the bath of each coat, so a bath comes before a recipe.',
               }
         }
-        form={(onDone) => <BathForm onDone={onDone} />}
+        renderForm={(onDone) => <BathForm onDone={onDone} />}
       />
       <ul className="settings-rows">
         {inUse.map((bath) => (

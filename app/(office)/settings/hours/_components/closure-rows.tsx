@@ -31,7 +31,7 @@ export function ClosureRows({ upcoming, past, mayChange }: { upcoming: ClosureRo
                   text: 'Holidays and days on which nobody dips stand here. No dip is foreseen on them, and every time that is promised takes them into account.',
                 }
           }
-          form={(onDone) => <ClosureForm onDone={onDone} />}
+          renderForm={(onDone) => <ClosureForm onDone={onDone} />}
         />
       )}
       {!mayChange && upcoming.length === 0 && <p>No closed days ahead.</p>}

@@ -70,7 +70,7 @@ export function FanWeek({ fans, errorOf }: { fans: PlaceFormValues['fans']; erro
               )}
               {weekday === 1 && monday.length > 0 && (
                 <Key tone="quiet" onPress={copyMonday}>
-                  Every day so
+                  Same every day
                 </Key>
               )}
             </div>

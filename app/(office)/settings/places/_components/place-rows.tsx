@@ -25,7 +25,7 @@ export function PlaceRows({ places: { inUse, retired, sensors } }: { places: Pla
                 text: 'Every rack, rail and corner where trees hang stands here, with its air. The drying clock needs to know how fast the air is where a shell dries.',
               }
         }
-        form={(onDone) => <PlaceForm sensors={sensors} onDone={onDone} />}
+        renderForm={(onDone) => <PlaceForm sensors={sensors} onDone={onDone} />}
       />
       <ul className="settings-rows">
         {inUse.map((place) => (
@@ -78,7 +78,9 @@ function PlaceWords({ place }: { place: PlaceRow }) {
       <div>
         <dt>Air speed</dt>
         <dd>
-          {place.airSpeedFansOnMps} m/s with fans, {place.airSpeedFansOffMps} m/s without
+          {fans.length === 0
+            ? `${place.airSpeedFansOffMps} m/s`
+            : `${place.airSpeedFansOnMps} m/s with the fans on, ${place.airSpeedFansOffMps} m/s with them off`}
         </dd>
       </div>
       <div>

@@ -38,7 +38,7 @@ export function SensorRows({
                 text: 'Every logger that sends the air of the room stands here, and every hygrometer that you read off the wall. Without readings the drying clock knows nothing.',
               }
         }
-        form={(onDone) => <SensorForm onDone={onDone} />}
+        renderForm={(onDone) => <SensorForm onDone={onDone} />}
       />
       <ul className="settings-rows">
         {inUse.map((sensor) => (
@@ -48,6 +48,7 @@ export function SensorRows({
             isDemo={sensor.isDemo}
             line={KIND_LINES[sensor.kind]}
             form={<SensorForm sensor={sensor} />}
+            verb="Rename"
             keys={
               <ActForm action={() => retireSensorAction(sensor.id)} label={`Retire ${sensor.name}`}>
                 Retire

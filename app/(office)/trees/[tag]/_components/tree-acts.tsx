@@ -4,10 +4,12 @@ import { useEffect, useRef, useState } from 'react'
 import { SelectField } from '@/app/_components/field'
 import { Icon } from '@/app/_components/icons'
 import { Key, KeyLink } from '@/app/_components/key'
+import { RecipeMoveForm } from '@/app/(office)/trees/[tag]/_components/recipe-move-form'
 import { holdAction, liftHoldAction, moveAction, scrapAction } from '@/app/(office)/trees/[tag]/actions'
 import { ReasonForm } from '@/app/(office)/_components/reason-form'
 import { FormMessage } from '@/app/(office)/_components/form-message'
 import { useKeptForm } from '@/app/(office)/_components/use-kept-form'
+import type { NewerVersion } from '@/lib/queries/newer-versions'
 
 export type TreeActsProps = {
   treeId: string
@@ -18,12 +20,15 @@ export type TreeActsProps = {
   nextDip: { number: number; isDue: boolean } | null
   places: { id: string; name: string }[]
   placeId: string
+  /** Of its recipe, newest first; empty where it may not be moved. */
+  newerVersions: readonly NewerVersion[]
+  coatsOn: number
 }
 
-type Panel = 'hold' | 'lift' | 'move' | 'scrap'
+type Panel = 'hold' | 'lift' | 'move' | 'recipe' | 'scrap'
 
 /** The keys of a tree, and the little form that each of them opens under the head. */
-export function TreeActs({ treeId, tag, isHeld, may, nextDip, places, placeId }: TreeActsProps) {
+export function TreeActs({ treeId, tag, isHeld, may, nextDip, places, placeId, newerVersions, coatsOn }: TreeActsProps) {
   const [panel, setPanel] = useState<Panel | null>(null)
   // With the hold as it is after the act: words of a hold that was lifted since are not true any more.
   const [said, setSaid] = useState<{ words: string; isHeld: boolean } | null>(null)
@@ -62,7 +67,7 @@ export function TreeActs({ treeId, tag, isHeld, may, nextDip, places, placeId }:
           </KeyLink>
         )}
       </div>
-      {(may.move || may.edit || may.scrap) && (
+      {(may.move || may.edit || may.scrap || newerVersions.length > 0) && (
         <div className="tree-acts-more">
           {may.move && (
             <Key tone="quiet" aria-expanded={panel === 'move'} onPress={toggle('move')}>
@@ -73,6 +78,11 @@ export function TreeActs({ treeId, tag, isHeld, may, nextDip, places, placeId }:
             <KeyLink tone="quiet" href={`${path}/edit`}>
               Edit
             </KeyLink>
+          )}
+          {newerVersions.length > 0 && (
+            <Key tone="quiet" aria-expanded={panel === 'recipe'} onPress={toggle('recipe')}>
+              Newer recipe
+            </Key>
           )}
           {may.scrap && (
             <Key tone="quiet" aria-expanded={panel === 'scrap'} onPress={toggle('scrap')}>
@@ -112,6 +122,9 @@ export function TreeActs({ treeId, tag, isHeld, may, nextDip, places, placeId }:
               />
             )}
             {panel === 'move' && <MoveForm treeId={treeId} places={places} placeId={placeId} onDone={done('Moved.')} />}
+            {panel === 'recipe' && (
+              <RecipeMoveForm treeId={treeId} versions={newerVersions} coatsOn={coatsOn} onDone={done('Moved to the newer version.')} />
+            )}
             {panel === 'scrap' && (
               <ReasonForm
                 isOpenedByKey
@@ -130,7 +143,13 @@ export function TreeActs({ treeId, tag, isHeld, may, nextDip, places, placeId }:
   )
 }
 
-const PANEL_TITLES: Record<Panel, string> = { hold: 'Hold', lift: 'Lift the hold', move: 'Move', scrap: 'Scrap' }
+const PANEL_TITLES: Record<Panel, string> = {
+  hold: 'Hold',
+  lift: 'Lift the hold',
+  move: 'Move',
+  recipe: 'Move to a newer version of the recipe',
+  scrap: 'Scrap',
+}
 
 function MoveForm({
   treeId,

@@ -1,0 +1,38 @@
+import { QueryTypes } from 'sequelize'
+import { loadVersionCoats } from '@/lib/queries/version-coats'
+import type { VersionCoat } from '@/lib/recipes/coat-cells'
+import { database } from '@/models'
+
+export type RecipeListRow = {
+  id: string
+  name: string
+  isRetired: boolean
+  /** Of the newest version. */
+  version: number
+  versionId: string
+  isCalibrated: boolean
+  coats: VersionCoat[]
+  /** On any of its versions. */
+  openTrees: number
+}
+
+/** Every recipe with its newest version, by name. */
+export async function loadRecipeList(): Promise<RecipeListRow[]> {
+  const rows = await database.query<
+    Omit<RecipeListRow, 'coats' | 'isRetired' | 'isCalibrated'> & { isRetired: number; isCalibrated: number }
+  >(
+    `SELECT r.id, r.name, r.retired_at IS NOT NULL AS isRetired, v.version, v.id AS versionId, v.calibrated_at IS NOT NULL AS isCalibrated,
+            (SELECT count(*) FROM trees t JOIN recipe_versions tv ON tv.id = t.recipe_version_id
+              WHERE tv.recipe_id = r.id AND t.released_at IS NULL AND t.scrapped_at IS NULL) AS openTrees
+       FROM recipes r JOIN recipe_versions v ON v.recipe_id = r.id
+      WHERE v.version = (SELECT max(version) FROM recipe_versions WHERE recipe_id = r.id) ORDER BY r.name COLLATE NOCASE`,
+    { type: QueryTypes.SELECT },
+  )
+  const coats = await loadVersionCoats(rows.map((row) => row.versionId))
+  return rows.map((row) => ({
+    ...row,
+    isRetired: row.isRetired === 1,
+    isCalibrated: row.isCalibrated === 1,
+    coats: coats.get(row.versionId) ?? [],
+  }))
+}

@@ -1,0 +1,60 @@
+import type { QueueRoom, QueueTree } from '@/lib/queue/contract'
+import type { Headline } from '@/lib/room/room-words'
+import type { RoomPoint } from '@/lib/room/series'
+import type { ShiftSpeed } from '@/lib/room/shift-speeds'
+import type { Thing } from '@/lib/room/things-to-do'
+import type { Pair } from '@/lib/room/tonight'
+
+/** A line of the table: what the night does to one tree. */
+export type EffectRow = {
+  tree: QueueTree
+  /** Negative where the air is faster than the recipe's room; null where nothing is known. */
+  lostMs: number | null
+  wonBackMs: number | null
+  asItStands: Pair | null
+  withDryer: Pair | null
+  toDo: string
+}
+
+/** A coat in progress under the charts. */
+export type CoatBar = { tag: string; coatNumber: number; dippedAt: number; likelyAt: number | null; safeAt: number | null }
+
+/** A coat that was dipped over in this room's air, or came dry in it and waits. */
+export type DriedCoat = {
+  tag: string
+  coatNumber: number
+  placeName: string
+  dippedAt: number
+  /** When it was dipped over; null while it waits. */
+  coveredAt: number | null
+  /** Share of its water left at the next dip; null where it was not known, or while it waits. */
+  moistureRatio: number | null
+  meanRelHumidityPct: number | null
+}
+
+/** Everything the Room page shows. Temperatures degC, instants epoch milliseconds, speeds as shares of the reference speed. */
+export type RoomPage = {
+  now: number
+  timeZone: string
+  band: { lowTempC: number; highTempC: number; lowRhPct: number; highRhPct: number }
+  pressurePa: number
+  headline: Headline
+  /** The dryer that the table reckons with. */
+  dryerPct: number | null
+  wonBackMs: number
+  rows: EffectRow[]
+  things: Thing[]
+  rooms: QueueRoom[]
+  /** The room whose charts are drawn; null where there is no sensor. */
+  room: QueueRoom | null
+  points: RoomPoint[]
+  from: number
+  to: number
+  closed: { from: number; to: number }[]
+  bars: CoatBar[]
+  shiftSpeeds: ShiftSpeed[]
+  dried: { since: number; coats: DriedCoat[]; isCut: boolean }
+  /** Where the what-if begins: places of this room, and the lowest temperature at coat 1 of the trees that hang in it. */
+  places: { name: string; airSpeedMps: number }[]
+  coolestCoat1C: number | null
+}

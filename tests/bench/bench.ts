@@ -1,0 +1,202 @@
+// `npm run bench`: how fast the floor is, always as a ratio to what the framework itself does in the same run on the same machine.
+// Prints one table; everything it makes is taken away again. Minutes: it builds twice and makes ten years of readings.
+import { mkdtempSync, rmSync } from 'node:fs'
+import { loadavg, tmpdir } from 'node:os'
+import { join } from 'node:path'
+import { openPlainHandle } from '@/db/plain-handle'
+import { launchBrowser } from '@/tests/setup/browser'
+import { signIn } from '@/tests/setup/client'
+import { makeBuilds, NEXT } from '@/tests/bench/builds'
+import { ask, median, rate } from '@/tests/bench/load'
+import { pageCost, type PageCost } from '@/tests/bench/pages'
+import { makeRecords, type Bench } from '@/tests/bench/records'
+import { freePort, startProgram, testEnv } from '@/tests/setup/server'
+
+const ROUNDS = 3
+const REBUILDS = 15
+const GZIP = { 'accept-encoding': 'gzip' }
+
+type Row = { what: string; value: string; ratio: number; aim: string; isMet: boolean; load: number }
+const rows: Row[] = []
+
+async function serve(folder: string, dataDir: string) {
+  const port = await freePort()
+  const baseUrl = `http://127.0.0.1:${port}`
+  const env = testEnv(dataDir, { NEXTAUTH_URL: baseUrl })
+  const program = startProgram([NEXT, 'start', '-H', '127.0.0.1', '-p', String(port)], env, folder)
+  for (;;) {
+    if (program.process.exitCode !== null) throw new Error(`The server ended:\n${program.output()}`)
+    const isUp = await fetch(baseUrl, { redirect: 'manual' }).then(
+      () => true,
+      () => false,
+    )
+    if (isUp) return { ...program, baseUrl }
+    await new Promise((resolve) => setTimeout(resolve, 100))
+  }
+}
+
+type SignIn = { email: string; password: string }
+type Door = {
+  bench: Bench
+  queue: string
+  empty: string
+  headers: Record<string, string>
+  touch: () => Promise<void>
+  stop: () => Promise<void>
+}
+
+/** One foundry behind its own server, warm, with somebody signed in. */
+async function openDoor(bench: Bench, product: string, signInAs: SignIn): Promise<Door> {
+  const server = await serve(product, bench.dataDir)
+  const handle = await openPlainHandle(join(bench.dataDir, 'kilnward.sqlite'))
+  const { cookies } = await signIn(server.baseUrl, signInAs.email, signInAs.password)
+  const headers = { ...GZIP, cookie: [...cookies].map(([name, value]) => `${name}=${value}`).join('; ') }
+  const [queue, empty] = [`${server.baseUrl}/api/v1/queue`, `${server.baseUrl}/api/empty`]
+  for (const url of [empty, queue]) await rate({ url, headers, milliseconds: 2000, status: 200 })
+  return {
+    bench,
+    queue,
+    empty,
+    headers,
+    // Another process writes, as the worker does.
+    touch: () => handle.exec('UPDATE foundry SET created_at = created_at'),
+    stop: async () => {
+      await handle.close()
+      await server.stop()
+    },
+  }
+}
+
+/** The queue door against the empty route beside it. */
+async function measureDoor({ bench: { trees, history }, queue, empty, headers }: Door): Promise<void> {
+  const rates = { empty: [] as number[], whole: [] as number[], unchanged: [] as number[] }
+  for (let round = 0; round < ROUNDS; round += 1) {
+    rates.empty.push(await rate({ url: empty, headers, status: 200 }))
+    rates.whole.push(await rate({ url: queue, headers, status: 200 }))
+    rates.unchanged.push(await unchangedRate(queue, headers))
+  }
+  const floor = median(rates.empty)
+  for (const [way, words] of [
+    ['whole', 'whole answer'],
+    ['unchanged', 'If-None-Match'],
+  ] as const) {
+    const ratio = median(rates[way]) / floor
+    add(
+      `${trees} trees, ${history}: queue, ${words}`,
+      `${median(rates[way]).toFixed(0)}/s of ${floor.toFixed(0)}/s`,
+      ratio,
+      '>= 0.5',
+      ratio >= 0.5,
+    )
+  }
+}
+
+/** How long a queue takes to be made anew after a change, with ten years of readings behind it and with two weeks, in turns. */
+async function measureRebuild(short: Door, long: Door): Promise<void> {
+  const times = { short: [] as number[], long: [] as number[] }
+  for (let round = 0; round < REBUILDS; round += 1) {
+    for (const [name, door] of [
+      ['short', short],
+      ['long', long],
+    ] as const) {
+      await door.touch()
+      times[name].push((await ask(door.queue, door.headers)).milliseconds)
+    }
+  }
+  const ratio = median(times.long) / median(times.short)
+  const value = `${median(times.long).toFixed(0)} ms to ${median(times.short).toFixed(0)} ms`
+  add(`${short.bench.trees} trees: queue made anew, ten years to two weeks`, value, ratio, '<= 1.2', ratio <= 1.2)
+}
+
+/** As tablets poll: each with the ETag of its last answer; a new minute brings one whole answer. */
+async function unchangedRate(url: string, headers: Record<string, string>): Promise<number> {
+  for (;;) {
+    const { etag } = await ask(url, headers)
+    try {
+      return await rate({ url, headers: { ...headers, 'if-none-match': etag }, status: 304 })
+    } catch {
+      // The minute changed in the middle.
+    }
+  }
+}
+
+function add(what: string, value: string, ratio: number, aim: string, isMet: boolean): void {
+  rows.push({ what, value, ratio, aim, isMet, load: loadavg()[0]! })
+}
+
+async function measurePages(
+  { dataDir }: Bench,
+  product: string,
+  bare: string,
+  signInAs: { email: string; password: string },
+): Promise<void> {
+  const [server, other, browser] = [await serve(product, dataDir), await serve(bare, dataDir), await launchBrowser()]
+  try {
+    const { cookies } = await signIn(server.baseUrl, signInAs.email, signInAs.password)
+    const costs = { floor: [] as PageCost[], bare: [] as PageCost[] }
+    // The first of each is not counted.
+    for (let round = 0; round <= ROUNDS; round += 1) {
+      const bareCost = await pageCost(browser, `${other.baseUrl}/`, new Map())
+      const floorCost = await pageCost(browser, `${server.baseUrl}/floor`, cookies)
+      if (round === 0) continue
+      costs.bare.push(bareCost)
+      costs.floor.push(floorCost)
+    }
+    const of = (which: keyof typeof costs, key: keyof PageCost) => median(costs[which].map((cost) => cost[key]))
+    const bytes = of('floor', 'scriptBytes') / of('bare', 'scriptBytes')
+    const kilobytes = (which: keyof typeof costs) => `${(of(which, 'scriptBytes') / 1000).toFixed(0)} kB`
+    add('Floor: JavaScript sent', `${kilobytes('floor')} to ${kilobytes('bare')}`, bytes, '<= 1.6', bytes <= 1.6)
+    const paint = of('floor', 'firstPaintMs') / of('bare', 'firstPaintMs')
+    const milliseconds = (which: keyof typeof costs) => `${of(which, 'firstPaintMs').toFixed(0)} ms`
+    add('Floor: first paint', `${milliseconds('floor')} to ${milliseconds('bare')}`, paint, '<= 1.6', paint <= 1.6)
+  } finally {
+    await Promise.all([browser.close(), server.stop(), other.stop()])
+  }
+}
+
+function print(): void {
+  const head = { what: 'What', value: 'Measured', ratio: 'Ratio', aim: 'Aim', met: 'Met', load: 'Load' }
+  const lines = [
+    head,
+    ...rows.map(({ what, value, ratio, aim, isMet, load }) => ({
+      what,
+      value,
+      ratio: ratio.toFixed(2),
+      aim,
+      met: isMet ? 'yes' : 'no',
+      load: load.toFixed(1),
+    })),
+  ]
+  const columns = ['what', 'value', 'ratio', 'aim', 'met', 'load'] as const
+  const widths = columns.map((column) => Math.max(...lines.map((line) => line[column].length)))
+  for (const line of lines) {
+    process.stdout.write(
+      `${columns
+        .map((column, index) => line[column].padEnd(widths[index]!))
+        .join('  ')
+        .trimEnd()}\n`,
+    )
+  }
+}
+
+const folder = mkdtempSync(join(tmpdir(), 'kilnward-bench-'))
+Object.assign(process.env, testEnv(join(folder, 'live')))
+const builds = makeBuilds()
+try {
+  const { cases, member } = await makeRecords(folder)
+  for (const trees of [30, 300]) {
+    const doors: Door[] = []
+    for (const bench of cases.filter((each) => each.trees === trees)) doors.push(await openDoor(bench, builds.product, member))
+    try {
+      for (const door of doors) await measureDoor(door)
+      await measureRebuild(doors[0]!, doors[1]!)
+    } finally {
+      for (const door of doors) await door.stop()
+    }
+  }
+  await measurePages(cases[0]!, builds.product, builds.bare, member)
+  print()
+} finally {
+  builds.remove()
+  rmSync(folder, { recursive: true, force: true })
+}
