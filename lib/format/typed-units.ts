@@ -34,10 +34,12 @@ export function typedText(si: number, unit: Unit): string {
 }
 
 /**
- * A stored number with its unit, as exact as it was typed: for facts that a person entered.
+ * A stored number with its unit: for facts and limits that a person has typed. As exact as it was in SI, to two decimals in other units.
  *
  * @example typedWords(0.35, 'kg') // => '0.35 kg'
+ * @example typedWords(3.4, 'lb') // => '7.5 lb'
  */
 export function typedWords(si: number, unit: Unit): string {
-  return `${typedText(si, unit)}\u00A0${UNIT_SIGNS[unit]}`
+  const shown = DECIMALS[unit] === undefined ? si : roundTo(fromSi(si, unit), 2)
+  return `${shown}\u00A0${UNIT_SIGNS[unit]}`
 }

@@ -3,7 +3,8 @@ import { z } from 'zod'
 import { typedNumber } from '@/lib/format/typed-number'
 import { readTyped } from '@/lib/format/typed-units'
 import { fromSi, UNIT_SIGNS, wholeNumber, type TempUnit } from '@/lib/format/units'
-import { AIR_TEMP_LIMITS_C, relHumidityPct } from '@/lib/room/reading-contract'
+import { AIR_TEMP_LIMITS_C } from '@/lib/room/air-limits'
+import { relHumidityPct } from '@/lib/room/reading-contract'
 
 /**
  * An instant from the wall clock of a zone, as a form's field of day and time gives it: '2026-10-13T15:10'. In the hour that a clock

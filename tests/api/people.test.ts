@@ -1,4 +1,3 @@
-import { setTimeout as sleep } from 'node:timers/promises'
 import { afterAll, beforeAll, beforeEach, describe, expect, it } from 'vitest'
 import type { Role } from '@/lib/members/roles'
 import { DOORS } from '@/tests/api/authorisation-table'
@@ -121,7 +120,7 @@ const ENDS: Record<string, (client: Client, member: SeededMember) => Promise<unk
 }
 
 describe('a copied cookie', () => {
-  it.each(Object.keys(ENDS))('is refused within a second after %s, each of fifty times', async (name) => {
+  it.each(Object.keys(ENDS))('is refused from the moment of %s, each of fifty times', async (name) => {
     const member = await fresh('supervisor')
     secrets.push(member.password)
     const client = await enter(member)
@@ -129,15 +128,13 @@ describe('a copied cookie', () => {
     const replay = async (path: string) => (await newClient(server.baseUrl, new Map([[COOKIE, copy]])).fetch(path)).status
     expect([await replay('/api/v1/queue'), await replay('/me')]).toEqual([200, 200])
     await ENDS[name]!(client, member)
-    await sleep(200)
-    const started = Date.now()
+    // At once, not a second later.
     const statuses = await Promise.all(Array.from({ length: 25 }, async () => [await replay('/api/v1/queue'), await replay('/me')]))
     expect(statuses.flat().filter((status) => status === 200)).toEqual([])
     expect(new Set(statuses.map(([route]) => route))).toEqual(new Set([401]))
     // The sign-in page says that a session has ended.
     const page = await newClient(server.baseUrl, new Map([[COOKIE, copy]])).fetch('/me')
     expect(page.headers.get('location')).toBe('/sign-in?callbackUrl=%2Fme&ended=1')
-    expect(Date.now() - started).toBeLessThan(30_000)
   })
 })
 

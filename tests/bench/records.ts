@@ -1,4 +1,3 @@
-import type { TestFoundry } from '@/tests/factories/shell-room'
 import { copyFileSync, mkdirSync, writeFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { openPlainHandle } from '@/db/plain-handle'

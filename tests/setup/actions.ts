@@ -28,7 +28,7 @@ export async function callAction(
   const action = builtActions().find((candidate) => candidate.name === name)
   if (!action) throw new Error(`There is no action ${name} in the build.`)
   const all = fields ? [...args, { status: 'idle' }, '$K1'] : args
-  const form = Object.entries(fields ?? {}).map(([field, value]) => part(`1_${field}`, value))
+  const form = Object.entries(fields ?? {}).map(([field, value]) => part(`_1_${field}`, value))
   const response = await client.fetch(path, {
     method: 'POST',
     headers: { 'next-action': action.id, 'content-type': `multipart/form-data; boundary=${BOUNDARY}` },

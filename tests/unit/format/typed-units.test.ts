@@ -17,6 +17,8 @@ describe('a typed number', () => {
     expect(typedText(-10, 'degF')).toBe('14')
     expect(typedText(38.1, 'inch')).toBe('1.5')
     expect(typedWords(0.35, 'kg')).toBe('0.35\u00A0kg')
+    expect(typedWords(3.4, 'lb')).toBe('7.5\u00A0lb')
+    expect(typedWords(-10, 'degF')).toBe('14\u00A0°F')
   })
 
   it('changes nothing when a form is saved as it was opened', () => {
