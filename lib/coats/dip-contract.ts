@@ -4,6 +4,9 @@ import { airTempC, relHumidityPct } from '@/lib/room/reading-contract'
 
 const instant = z.int().min(0).describe('Epoch milliseconds, UTC.')
 
+/** No foundry had this program before; a tablet whose clock was reset says 1970. */
+const EARLIEST_DIP = Date.UTC(2020, 0, 1)
+
 /** Body of `POST /api/v1/dips`: one run of one or more trees through one bath. */
 export const dipRun = z.strictObject({
   operationId: z.uuid('The operation id is not a UUID.'),
@@ -11,7 +14,7 @@ export const dipRun = z.strictObject({
   stucco: z.enum(STUCCOS),
   way: z.enum(COATING_WAYS),
   drainSeconds: z.int('Drain is whole seconds.').min(0, 'Drain cannot be under 0 s.').max(600, 'Drain cannot be over 600 s.'),
-  dippedAt: instant,
+  dippedAt: instant.min(EARLIEST_DIP, 'The dip lies before the year 2020: check the clock of this tablet.'),
   /** Half width of a rough time, minutes: 'about 20 min ago' is 10. */
   roughTime: z.int().min(0).max(240).optional(),
   /** Read from the wall hygrometer, for places that no sensor serves. */

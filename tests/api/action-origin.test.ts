@@ -32,7 +32,7 @@ async function hold(client: Client, headers: Record<string, string>): Promise<{ 
   const { Hold } = await import('@/models')
   const { id, tag } = await factories.buildTree(foundry)
   const body = new FormData()
-  body.append('1_reason', 'Crack at the cup')
+  body.append('_1_reason', 'Crack at the cup')
   body.append('0', JSON.stringify([id, { status: 'idle' }, '$K1']))
   const cookie = [...client.cookies].map(([name, value]) => `${name}=${value}`).join('; ')
   const response = await fetch(`${server.baseUrl}/trees/${tag}`, {

@@ -97,6 +97,12 @@ describe('signing in', () => {
     },
   )
 
+  it('takes an address to come back to that is none for a mistake of the asker', async () => {
+    const response = await newClient(server.baseUrl).fetch(`/api/auth/signin?callbackUrl=${encodeURIComponent('>;')}`)
+    expect(response.status).toBe(400)
+    expect(response.headers.get('content-type')).toBe('application/problem+json')
+  })
+
   it('keeps strangers from writing into the log', async () => {
     const body = new URLSearchParams({ level: 'error', code: 'PLANTED', message: 'planted line' }).toString()
     const headers = { 'content-type': 'application/x-www-form-urlencoded' }

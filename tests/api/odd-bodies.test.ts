@@ -57,7 +57,7 @@ afterAll(() => server.stop())
 const bodied = DESCRIBED_DOORS.filter(({ body }) => body)
 
 /** What no answer may hold: a stack, a path of the program, the words of the database. */
-const INSIDES = /\n\s+at |node_modules|\.(?:ts|js|mjs):\d+|SQLITE_|[Ss]equelize|ZodError|at Object\./
+const INSIDES = /\n\s+at \S+ \(|node_modules|\.(?:ts|js|mjs):\d+|SQLITE_|[Ss]equelize|ZodError|at Object\./
 
 async function misfit(response: Response): Promise<string | null> {
   const text = await response.text()
@@ -142,10 +142,17 @@ describe('the server', () => {
     await inLanes(asked, async (path) => {
       const response = await owner.fetch(path)
       const text = await response.text()
-      if (response.status >= 500 || /\n\s+at |SQLITE_|sequelize/i.test(text)) wrong.push(`${path.slice(0, 200)}: ${response.status}`)
+      if (response.status >= 500 || INSIDES.test(text)) wrong.push(`${path.slice(0, 200)}: ${response.status}`)
     })
     expect(wrong).toEqual([])
   }, 120_000)
+
+  it('shows nothing where the framework itself gives up: an address that cannot be decoded', async () => {
+    // It answers before any code of ours; 400 would be right.
+    const response = await owner.fetch('/api/v1/trees/%E0%A4%A/holds')
+    expect([400, 404, 500]).toContain(response.status)
+    expect((await response.text()).length).toBeLessThan(100)
+  })
 
   it('is well afterwards: the records are whole and it answers', async () => {
     const { database } = await import('@/models')
