@@ -4,9 +4,11 @@ import { databaseFile } from '@/db/connection'
 import { migrate, shippedMigrations } from '@/db/migrator'
 import { examineDatabase, type Examination } from '@/db/snapshot'
 import type { BackupManifest } from '@/lib/backups/manifest'
+import { keepBackups } from '@/lib/commands/keep-backups'
 import { noteRestore } from '@/lib/commands/note-restore'
 import type { Clock } from '@/lib/core/clock'
 import { backupDir, dataDir } from '@/lib/core/env'
+import { log } from '@/lib/core/log'
 import { formatBytes } from '@/lib/format/bytes'
 import { checkBackup, DamagedBackupError, listBackupFiles, readManifest, SECRETS_FILE } from '@/lib/server/backup-files'
 import { freeBytesOf, processesWithOpen, sizeOf, syncToDisk } from '@/lib/server/disk'
@@ -93,6 +95,8 @@ export async function restoreBackup(
     const areSecretsRestored = await restoreSecrets()
     const migrated = await migrate(target)
     await noteRestore({ fileName: basename(file), backupAt: manifest?.startedAt ?? null }, { clock })
+    // The records know of the copy that they come from only as begun. The worker does the same; it need not be done twice.
+    await keepBackups({ clock }).catch((error: unknown) => log('backup.list-not-kept', { error: String(error) }))
     const { faults, brokenReferences } = await examineDatabase(target)
     if (faults.length > 0 || brokenReferences > 0) throw new Error(faults[0] ?? `${brokenReferences} references lead nowhere.`)
     return { file: target, setAside, counts: found.counts, newestEventAt: found.newestEventAt, migrated, areSecretsRestored }

@@ -149,7 +149,7 @@ function backups({
   const lines = [
     newest === null
       ? 'There is none yet.'
-      : `The newest is of ${formatMoment(newest.at, now, timeZone)}, ${formatBytes(newest.sizeBytes)}. ${standing} lie in ${folder}.`,
+      : `The newest is of ${formatMoment(newest.at, now, timeZone)}, ${formatBytes(newest.sizeBytes)}. ${standing} ${standing === 1 ? 'lies' : 'lie'} in ${folder}.`,
   ]
   if (failed) lines.push(`${formatMoment(failed.at, now, timeZone)}: ${failed.error}`)
   if (isSameDisk) lines.push('They lie on the same disk as the records, and would be lost with it. BACKUP_DIR names a folder on another.')

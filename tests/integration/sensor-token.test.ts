@@ -1,11 +1,12 @@
 import { NextRequest } from 'next/server'
-import { beforeEach, describe, expect, it } from 'vitest'
+import { beforeAll, beforeEach, describe, expect, it } from 'vitest'
 import { z } from 'zod'
 import { issueSensorToken } from '@/lib/commands/issue-sensor-token'
 import { revokeSensorToken } from '@/lib/commands/revoke-sensor-token'
 import { sensorRoute } from '@/lib/server/api'
 import { readJson } from '@/lib/server/read-json'
 import { Sensor, SensorToken } from '@/models'
+import { buildMember } from '@/tests/factories/shell-room'
 
 const clock = { now: () => Date.UTC(2026, 10, 30, 6) }
 const body = z.strictObject({ airTempC: z.number() })
@@ -15,6 +16,8 @@ const route = sensorRoute(async ({ request, sensor }) =>
 
 let sensor: Sensor
 let count = 0
+// While nobody is a member every door says so instead.
+beforeAll(() => buildMember('owner'))
 beforeEach(async () => {
   count += 1
   sensor = await Sensor.create({ name: `Drying room ${count}`, kind: 'logger', createdAt: clock.now() })

@@ -124,6 +124,7 @@ describe('a session', () => {
       sessionId,
       device: 'Unknown browser',
       isDemo: false,
+      isFoundrySetUp: false,
       mustChangePassword: false,
       units: SI_UNITS,
     })

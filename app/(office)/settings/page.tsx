@@ -17,13 +17,13 @@ export default async function SettingsPage() {
   const unit = member.units.temp
   return (
     <>
+      <FoundryNav role={member.role} />
       <div className="page-head">
         <div>
           <h1>{foundry.name}</h1>
           <p>What holds for the whole foundry. Each change stands in the history, with what was before.</p>
         </div>
       </div>
-      <FoundryNav role={member.role} />
       {may(member.role, 'settings') ? (
         <FoundryForm values={foundryFormValues(foundry, unit)} shown={unit} zones={timeZones()} />
       ) : (

@@ -35,7 +35,7 @@ export default async function UpkeepPage() {
       <div className="page-head">
         <div className="min-w-0 grow">
           <h1>{upkeepHeadline(checks)}</h1>
-          <p>What Kilnward needs to go on: its worker, its air, its disk and its backups. Read {formatMoment(now, now, timeZone)}.</p>
+          <p>What Kilnward needs to go on: its worker, its air, its disk and its backups. As of {formatMoment(now, now, timeZone)}.</p>
         </div>
       </div>
       <div className="upkeep">

@@ -15,13 +15,13 @@ export default async function BathsPage() {
   const [baths, { timeZone }] = await Promise.all([loadBathList(), loadFoundry()])
   return (
     <>
+      <FoundryNav role={member.role} />
       <div className="page-head">
         <div>
           <h1>Baths</h1>
           <p>The slurries that trees are dipped in. The floor groups its dips by them.</p>
         </div>
       </div>
-      <FoundryNav role={member.role} />
       <BathRows baths={baths} now={systemClock.now()} timeZone={timeZone} />
     </>
   )

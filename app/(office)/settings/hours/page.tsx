@@ -20,13 +20,13 @@ export default async function HoursPage() {
   const spans = hours.map(({ weekday, opensMinute, closesMinute }) => ({ weekday, fromMinute: opensMinute, toMinute: closesMinute }))
   return (
     <>
+      <FoundryNav role={member.role} />
       <div className="page-head">
         <div>
           <h1>Hours and closed days</h1>
           <p>Coats dry round the clock; dips are foreseen in the shifts only. Fans keep their own timetables, on closed days too.</p>
         </div>
       </div>
-      <FoundryNav role={member.role} />
       <div className="settings-page">
         <Plate title="Shift hours" line={mayChange ? 'wall-clock time, also when the clocks change' : 'an owner can change them'}>
           {mayChange ? <HoursForm hours={hours} /> : <p className="text-18">{weekWords(spans, 'Around the clock: no hours are set.')}</p>}

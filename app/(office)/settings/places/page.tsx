@@ -15,13 +15,13 @@ export default async function PlacesPage() {
   const places = await loadPlaceList()
   return (
     <>
+      <FoundryNav role={member.role} />
       <div className="page-head">
         <div>
           <h1>Places</h1>
           <p>Where trees hang. The air there decides how fast a coat dries.</p>
         </div>
       </div>
-      <FoundryNav role={member.role} />
       {places.sensors.length === 0 && places.inUse.length === 0 ? (
         <EmptyState
           title="No place yet"

@@ -15,13 +15,13 @@ export default async function SensorsPage() {
   const [sensors, { timeZone }] = await Promise.all([loadSensorList(), loadFoundry()])
   return (
     <>
+      <FoundryNav role={member.role} />
       <div className="page-head">
         <div>
           <h1>Sensors</h1>
           <p>What reads the air of the room. A logger sends with a token of its own.</p>
         </div>
       </div>
-      <FoundryNav role={member.role} />
       <SensorRows sensors={sensors} reading={{ now: systemClock.now(), timeZone, units: member.units }} />
     </>
   )

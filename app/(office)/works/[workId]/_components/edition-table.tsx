@@ -47,7 +47,7 @@ export function EditionTable({ rows, sections, now }: EditionTableProps) {
                     <Icon name="warning" />{' '}
                     {row.missing.length === sections.length
                       ? 'nothing here'
-                      : `missing: ${row.missing.map((id) => nameOf.get(id)).join(', ')}`}
+                      : `missing: ${row.missing.map((id) => nameOf.get(id)).join('; ')}`}
                   </span>
                 )}
               </th>
