@@ -17,6 +17,7 @@ const BUILD_SOURCES = [
   'public',
   'fonts',
   'instrumentation.ts',
+  'instrumentation-client.ts',
   'proxy.ts',
   'next.config.mjs',
   'postcss.config.mjs',

@@ -1,27 +1,18 @@
-import { promisify } from 'node:util'
-import { gzip } from 'node:zlib'
 import { processWide } from '@/lib/server/process-wide'
 
-const pack = promisify(gzip)
-
-type Body = { json: string; packed: Promise<Buffer<ArrayBuffer>> | null }
-
 /** Goes with the value that it was made of. */
-const bodies = processWide('shared bodies', () => new WeakMap<object, Body>())
+const texts = processWide('shared texts', () => new WeakMap<object, string>())
 
 /**
- * A JSON answer of a value that many ask for: written and packed once, however many get it. The value must not change.
+ * A JSON answer of a value that many ask for: written once, however many get it. The value must not change.
  *
- * @param headers those of the answer; the length and the encoding are added.
+ * It is packed by the framework, for each answer: that takes `content-encoding` off a route's own answer and would pack it again.
  */
-export async function sharedJson(value: object, request: Request, headers: Record<string, string>): Promise<Response> {
-  let body = bodies.get(value)
-  if (!body) {
-    body = { json: JSON.stringify(value), packed: null }
-    bodies.set(value, body)
+export function sharedJson(value: object, headers: Record<string, string>): Response {
+  let text = texts.get(value)
+  if (text === undefined) {
+    text = JSON.stringify(value)
+    texts.set(value, text)
   }
-  const common = { ...headers, 'content-type': 'application/json', vary: 'accept-encoding' }
-  if (!/\bgzip\b/.test(request.headers.get('accept-encoding') ?? '')) return new Response(body.json, { headers: common })
-  const packed = await (body.packed ??= pack(body.json))
-  return new Response(packed, { headers: { ...common, 'content-encoding': 'gzip', 'content-length': String(packed.length) } })
+  return new Response(text, { headers: { ...headers, 'content-type': 'application/json' } })
 }

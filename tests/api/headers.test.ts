@@ -114,6 +114,18 @@ describe('an answer carries the headers of its kind:', () => {
   })
 })
 
+describe('an answer is packed once', () => {
+  it.each(['/api/v1/queue', '/api/v1/openapi.json', '/floor'])('%s', async (path) => {
+    const [plain, packed] = await Promise.all(
+      ['identity', 'gzip, deflate, br'].map((encoding) => owner.fetch(path, { headers: { 'accept-encoding': encoding } })),
+    )
+    expect(packed!.headers.get('content-encoding')).toMatch(/^(?:gzip|br)$/)
+    const start = (await plain!.text()).slice(0, 5)
+    expect((await packed!.text()).slice(0, 5)).toBe(start)
+    expect(start).toMatch(/^[{<]/)
+  })
+})
+
 describe('the nonce', () => {
   it('is another one for each answer, and on every script and style sheet of a page', async () => {
     const nonces = new Set<string>()

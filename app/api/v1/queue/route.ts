@@ -7,5 +7,5 @@ export const GET = memberRoute('see', async ({ request, clock }) => {
   const { etag, queue } = await loadQueue({ clock })
   const headers = { etag, 'cache-control': 'private, no-cache' }
   if (request.headers.get('if-none-match') === etag) return new Response(null, { status: 304, headers })
-  return sharedJson(queue, request, headers)
+  return sharedJson(queue, headers)
 })
