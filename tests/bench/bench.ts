@@ -58,8 +58,8 @@ async function openDoor(bench: Bench, product: string, signInAs: SignIn): Promis
     queue,
     empty,
     headers,
-    // Another process writes, as the worker does.
-    touch: () => handle.exec('UPDATE foundry SET created_at = created_at'),
+    // Another process writes, as the worker does. A value that stays the same would not be written at all.
+    touch: () => handle.exec('UPDATE foundry SET created_at = created_at + 1'),
     stop: async () => {
       await handle.close()
       await server.stop()
