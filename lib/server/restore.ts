@@ -10,7 +10,7 @@ import type { Clock } from '@/lib/core/clock'
 import { backupDir, dataDir } from '@/lib/core/env'
 import { log } from '@/lib/core/log'
 import { formatBytes } from '@/lib/format/bytes'
-import { checkBackup, DamagedBackupError, listBackupFiles, readManifest, SECRETS_FILE } from '@/lib/server/backup-files'
+import { checkBackup, DamagedBackupError, listBackupFiles, readManifest, KEPT_SECRETS_FILE, SECRETS_FILE } from '@/lib/server/backup-files'
 import { freeBytesOf, processesWithOpen, sizeOf, syncToDisk } from '@/lib/server/disk'
 
 /** Nothing was changed; the message says why and what to do. */
@@ -145,7 +145,7 @@ async function moveAll(files: readonly string[], folder: string): Promise<void> 
 
 /** A data folder that has lost its secrets gets those of the backups; its own are left as they are. */
 async function restoreSecrets(): Promise<boolean> {
-  const [own, kept] = [join(dataDir(), SECRETS_FILE), join(backupDir(), SECRETS_FILE)]
+  const [own, kept] = [join(dataDir(), SECRETS_FILE), join(backupDir(), KEPT_SECRETS_FILE)]
   if ((await sizeOf(own)) > 0 || (await sizeOf(kept)) === 0) return false
   await copyFile(kept, own)
   await chmod(own, 0o600)
