@@ -27,7 +27,7 @@ let owner: SeededMember
 let foundry: TestFoundry
 
 const by = (member: Actor = owner) => ({ member, clock })
-const attempt = (email: string, password: string) => signIn({ email, password, userAgent: 'test' }, { clock })
+const attempt = (email: string, password: string) => signIn({ email, password, userAgent: 'test', device: null }, { clock })
 
 async function enter({ email, password }: Pick<SeededMember, 'email' | 'password'>): Promise<SessionMember> {
   const result = await attempt(email, password)
@@ -135,7 +135,7 @@ describe('a change of password', () => {
     const session = await enter(await person('operator'))
     const change = () => changePassword({ currentPassword: 'not this', newPassword: NEW }, { member: session, clock })
     for (let index = 0; index < 5; index += 1) {
-      await expect(change()).rejects.toMatchObject({ code: 'unprocessable', extra: { fields: [{ path: 'currentPassword' }] } })
+      await expect(change()).rejects.toMatchObject({ code: 'conflict', extra: { fields: [{ path: 'currentPassword' }] } })
     }
     await expect(change()).rejects.toMatchObject({ code: 'too_many_requests', extra: { retryAfterSeconds: 30 } })
     expect(await isIn(session)).toBe(true)
@@ -146,7 +146,7 @@ describe('a change of password', () => {
     const session = await enter(member)
     const change = (newPassword: string) => changePassword({ currentPassword: member.password, newPassword }, { member: session, clock })
     for (const wrong of ['too short', 'password1234', member.name.repeat(2), member.email, member.password]) {
-      await expect(change(wrong), wrong).rejects.toMatchObject({ code: 'unprocessable', extra: { fields: [{ path: 'newPassword' }] } })
+      await expect(change(wrong), wrong).rejects.toMatchObject({ code: 'conflict', extra: { fields: [{ path: 'newPassword' }] } })
     }
     expect(await attempt(member.email, member.password)).toMatchObject({ outcome: 'signed in' })
   })

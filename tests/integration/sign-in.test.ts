@@ -14,7 +14,7 @@ const clock = { now: () => now }
 let member: SeededMember
 let count = 0
 
-const attempt = (email: string, password: string) => signIn({ email, password, userAgent: 'test' }, { clock })
+const attempt = (email: string, password: string) => signIn({ email, password, userAgent: 'test', device: null }, { clock })
 const fail = async (times: number, email = member.email) => {
   for (let index = 0; index < times; index += 1) expect(await attempt(email, 'wrong')).toEqual({ outcome: 'refused' })
 }
