@@ -3,6 +3,7 @@ import { basename, dirname, join } from 'node:path'
 import { databaseFile } from '@/db/connection'
 import { migrate, shippedMigrations } from '@/db/migrator'
 import { examineDatabase, type Examination } from '@/db/snapshot'
+import { formerRecords } from '@/lib/backups/former-records'
 import type { BackupManifest } from '@/lib/backups/manifest'
 import { keepBackups } from '@/lib/commands/keep-backups'
 import { noteRestore } from '@/lib/commands/note-restore'
@@ -101,7 +102,8 @@ export async function restoreBackup(
     if (faults.length > 0 || brokenReferences > 0) throw new Error(faults[0] ?? `${brokenReferences} references lead nowhere.`)
     return { file: target, setAside, counts: found.counts, newestEventAt: found.newestEventAt, migrated, areSecretsRestored }
   } catch (error) {
-    const where = setAside ? ` The records of before lie in ${setAside}, all of them.` : ''
+    await rm(arriving, { force: true }).catch(() => {})
+    const where = setAside === null ? '' : ` ${await formerWords(present, setAside)}`
     throw new Error(`The restore stopped: ${error instanceof Error ? error.message : String(error)}.${where} The backup was not touched.`, {
       cause: error,
     })
@@ -141,6 +143,13 @@ async function moveAll(files: readonly string[], folder: string): Promise<void> 
   await mkdir(folder, { mode: 0o700 })
   for (const file of files) await rename(file, join(folder, basename(file)))
   await syncToDisk(folder)
+}
+
+async function formerWords(present: readonly string[], aside: string): Promise<string> {
+  const there = await readdir(aside).catch(() => [])
+  const names = present.map((file) => basename(file))
+  const [moved, left] = [names.filter((name) => there.includes(name)), names.filter((name) => !there.includes(name))]
+  return formerRecords({ moved, left, folder: dirname(present[0]!), aside })
 }
 
 /** A data folder that has lost its secrets gets those of the backups; its own are left as they are. */

@@ -130,6 +130,45 @@ describe('a first password', () => {
   })
 })
 
+describe('the way back in', () => {
+  const isOwn = async (id: string) => (await Member.findByPk(id))?.firstPasswordUntil === null
+
+  it('is made by one owner for another, once more too, but two at once leave one with a password of their own', async () => {
+    const other = await person('owner')
+    await renewFirstPassword(other.id, by())
+    await renewFirstPassword(other.id, by())
+    await Member.update({ firstPasswordUntil: null }, { where: { id: other.id } })
+    const outcomes = await Promise.allSettled([renewFirstPassword(other.id, by()), renewFirstPassword(owner.id, by(other))])
+    expect(outcomes.map(({ status }) => status).toSorted()).toEqual(['fulfilled', 'rejected'])
+    expect([await isOwn(owner.id), await isOwn(other.id)].toSorted()).toEqual([false, true])
+  })
+
+  it('is made on the machine itself for a sole owner, and the history says so', async () => {
+    const { firstPassword } = await renewFirstPassword(owner.id, { member: null, clock })
+    expect((await enter({ email: owner.email, password: firstPassword })).mustChangePassword).toBe(true)
+    const event = await FoundryEvent.findOne({ where: { subjectId: owner.id, kind: 'first password made' }, rejectOnEmpty: true })
+    expect(event.memberId).toBeNull()
+    expect(JSON.stringify(event)).toContain('made on the machine itself')
+    expect(JSON.stringify(event)).not.toContain(firstPassword)
+  })
+
+  it('is closed to the people of a demo laid over the foundry, and open to those of a demo foundry', async () => {
+    const demo = await person('owner')
+    await Member.update({ isDemo: true, disabledAt: START }, { where: { id: demo.id } })
+    await expect(enableMember(demo.id, by())).rejects.toThrow(/belongs to the demo data/)
+    await expect(renewFirstPassword(demo.id, by())).rejects.toThrow(/belongs to the demo data/)
+    expect((await Member.findByPk(demo.id))?.disabledAt).toBe(START)
+    await Foundry.update({ isDemo: true }, { where: {} })
+    try {
+      await enableMember(demo.id, by())
+      await renewFirstPassword(demo.id, by())
+    } finally {
+      await Foundry.update({ isDemo: false }, { where: {} })
+    }
+    expect((await Member.findByPk(demo.id))?.disabledAt).toBeNull()
+  })
+})
+
 describe('a change of password', () => {
   it('asks for the present one, and growing waits follow wrong tries', async () => {
     const session = await enter(await person('operator'))
