@@ -13,6 +13,7 @@ import { loadOwnUnits } from '@/lib/queries/own-units'
 import { ownSessions } from '@/lib/queries/own-sessions'
 import { loadPeople, loadPerson } from '@/lib/queries/people'
 import { sessionMember, type SessionMember } from '@/lib/queries/session-member'
+import { hashPassword } from '@/lib/server/password'
 import { Delivery, Foundry, FoundryEvent, Member, Notice, PushSubscription, Session, SignInWait, TreeWatch } from '@/models'
 import { buildFoundry, buildRecipe, buildTree, type TestFoundry } from '@/tests/factories/shell-room'
 import { seedMember, type SeededMember } from '@/tests/setup/server'
@@ -153,8 +154,9 @@ describe('the way back in', () => {
   })
 
   it('is closed to the people of a demo laid over the foundry, and open to those of a demo foundry', async () => {
-    const demo = await person('owner')
-    await Member.update({ isDemo: true, disabledAt: START }, { where: { id: demo.id } })
+    // The mark is there from the first insert.
+    const demo = { id: newId(), name: 'Dora Demo', email: 'dora@kilnward.example', role: 'owner' as const, isDemo: true }
+    await Member.create({ ...demo, passwordHash: await hashPassword('nobody knows', 16), disabledAt: START, createdAt: START })
     await expect(enableMember(demo.id, by())).rejects.toThrow(/belongs to the demo data/)
     await expect(renewFirstPassword(demo.id, by())).rejects.toThrow(/belongs to the demo data/)
     expect((await Member.findByPk(demo.id))?.disabledAt).toBe(START)
