@@ -10,8 +10,9 @@ async function renew(typed: string | undefined): Promise<void> {
   // Before what opens the records, which then asks where they lie.
   if (existsSync('.env')) process.loadEnvFile('.env')
   const { databaseFile } = await import('@/db/connection')
-  if (!existsSync(databaseFile()))
+  if (!existsSync(databaseFile())) {
     throw new AppError('not_found', `There are no records in ${databaseFile()}. DATA_DIR says where they lie.`)
+  }
   const { Member } = await import('@/models')
   const { renewFirstPassword } = await import('@/lib/commands/renew-first-password')
   const { closeRecords } = await import('@/lib/server/records')

@@ -146,7 +146,7 @@ async function moveAll(files: readonly string[], folder: string): Promise<void> 
 }
 
 async function formerWords(present: readonly string[], aside: string): Promise<string> {
-  const there = await readdir(aside).catch(() => [])
+  const there = await readdir(aside).catch((): string[] => [])
   const names = present.map((file) => basename(file))
   const [moved, left] = [names.filter((name) => there.includes(name)), names.filter((name) => !there.includes(name))]
   return formerRecords({ moved, left, folder: dirname(present[0]!), aside })
