@@ -157,7 +157,10 @@ async function removeShop(): Promise<void> {
 async function removePeople(now: number): Promise<KeptThing[]> {
   const members = DEMO('members')
   await run('DELETE FROM foundry_events WHERE is_demo = 1')
-  await run(`DELETE FROM sign_in_waits WHERE subject IN (SELECT 'member:' || email FROM members WHERE is_demo = 1)`)
+  await run(
+    `DELETE FROM sign_in_waits WHERE EXISTS (SELECT 1 FROM members
+      WHERE is_demo = 1 AND (subject = 'member:' || email OR substr(subject, 1, length(email) + 8) = 'member:' || email || ':'))`,
+  )
   for (const table of ['sessions', 'push_subscriptions', 'tree_watches']) await run(`DELETE FROM ${table} WHERE member_id IN ${members}`)
   const naming = await database.query<{ table: string; column: string }>(
     `SELECT t.name AS "table", f."from" AS "column" FROM sqlite_schema t JOIN pragma_foreign_key_list(t.name) f

@@ -50,7 +50,7 @@ describe('a first run', () => {
     expect(member).toMatchObject({ role: 'owner', isDemo: false, disabledAt: null, firstPasswordUntil: null })
     owner = { id: member!.id, name: member!.name, role: 'owner' }
     const { email, password } = visitor(member!.name)
-    expect(await signIn({ email, password, userAgent: '' }, { clock })).toMatchObject({ outcome: 'signed in' })
+    expect(await signIn({ email, password, userAgent: '', device: null }, { clock })).toMatchObject({ outcome: 'signed in' })
     expect((await loadFoundry()).timeZone).toBe('America/Denver')
   })
 
