@@ -1,5 +1,6 @@
 import { addFoundryEvent } from '@/lib/commands/foundry-event'
 import { refuseField } from '@/lib/commands/refuse-field'
+import { stopBeingDemo } from '@/lib/commands/stop-being-demo'
 import type { Clock } from '@/lib/core/clock'
 import { AppError } from '@/lib/core/errors'
 import { newId } from '@/lib/core/ids'
@@ -142,11 +143,6 @@ async function findRecipe(recipeId: string): Promise<Recipe> {
   const recipe = await Recipe.findByPk(recipeId)
   if (!recipe) throw new AppError('not_found', 'There is no such recipe.')
   return recipe
-}
-
-/** Whoever changes a demo recipe itself makes it the foundry's own; what is built on it the demo's removal finds by itself. */
-async function stopBeingDemo(recipe: Recipe, member: Actor): Promise<void> {
-  if (recipe.isDemo && !member.isDemo) await recipe.update({ isDemo: false })
 }
 
 async function requireFreeName(name: string, ofRecipeId?: string): Promise<void> {
