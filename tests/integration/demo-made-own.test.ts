@@ -1,15 +1,24 @@
 import { beforeAll, beforeEach, describe, expect, it } from 'vitest'
 import { issueSensorToken } from '@/lib/commands/issue-sensor-token'
+import { logDips } from '@/lib/commands/log-dips'
 import { changeBath, retireBath, reuseBath } from '@/lib/commands/save-bath'
 import { changePlace, retirePlace, reusePlace } from '@/lib/commands/save-place'
 import { renameSensor, retireSensor, reuseSensor } from '@/lib/commands/save-sensor'
+import { createTree } from '@/lib/commands/save-tree'
 import { openShop, type DemoShop } from '@/lib/demo/open-shop'
 import { DEMO_PEOPLE } from '@/lib/demo/people'
 import { removeDemo } from '@/lib/demo/remove-demo'
 import type { Actor } from '@/lib/members/actor'
+import { loadRecipeDetail } from '@/lib/queries/recipe-detail'
+import { loadRecipeList } from '@/lib/queries/recipe-list'
+import { loadRoomPage } from '@/lib/queries/room'
 import { sensorOfToken } from '@/lib/queries/sensor-of-token'
-import { Bath, FoundryEvent, inTransaction, Place, Recipe, Sensor } from '@/models'
-import { buildFoundry, buildMember, NOW, stoppedClock, type TestFoundry } from '@/tests/factories/shell-room'
+import { loadTreeDetail } from '@/lib/queries/tree-detail'
+import { loadWorkDetail } from '@/lib/queries/work-detail'
+import { loadWorkList } from '@/lib/queries/work-list'
+import { treeInput } from '@/lib/trees/tree-input'
+import { Bath, Foundry, FoundryEvent, inTransaction, Place, Recipe, RecipeVersion, Sensor } from '@/models'
+import { buildAir, buildFoundry, buildMember, dipBody, HOUR, NOW, stoppedClock, type TestFoundry } from '@/tests/factories/shell-room'
 
 const clock = stoppedClock()
 let foundry: TestFoundry
@@ -41,8 +50,9 @@ describe('what somebody of the foundry changed of the demo stays when it goes', 
     await Place.update({ retiredAt: NOW }, { where: { id: shop.placeIds.netLoft } })
     await reusePlace(shop.placeIds.netLoft, by())
     await removeDemo(by())
-    for (const key of ['boatShed', 'longRack', 'netLoft'] as const)
+    for (const key of ['boatShed', 'longRack', 'netLoft'] as const) {
       expect([key, await isThere('place', shop.placeIds[key])]).toEqual([key, true])
+    }
     expect(await Place.findByPk(shop.placeIds.boatShed)).toMatchObject({ name: 'Own rack', airSpeedFansOnMps: 2 })
     expect(await isThere('sensor', shop.wallSensorId)).toBe(true)
     expect(await Place.findByPk(shop.placeIds.stillCorner)).toBeNull()
@@ -97,5 +107,53 @@ describe('tokens, when the demo goes', () => {
     expect(await sensorOfToken(own.token)).toMatchObject({ sensorId: foundry.sensorId })
     const lines = await FoundryEvent.findAll({ where: { kind: 'token issued' } })
     expect(lines.map(({ subjectId }) => subjectId)).toEqual([String(foundry.sensorId)])
+  })
+})
+
+describe('the mark of the demo', () => {
+  it('stands on its recipes, works and the room’s coats, but not where the whole foundry is the demo', async () => {
+    await buildAir(foundry.sensorId, NOW - 4 * HOUR, NOW + 12 * HOUR)
+    const recipeVersionId = shop.recipeVersionIds.six
+    const ines = shop.people.get('ines')!
+    const form = treeInput.parse({
+      tag: 'T-700',
+      recipeVersionId,
+      placeId: foundry.placeId,
+      pieces: [{ workTitle: 'Gate Post', sectionName: '', editionNumber: '1', isRecast: false }],
+      waxMassKg: '2',
+      cupKind: 'wax',
+      cupVolumeL: '0.3',
+      recessClass: 'none',
+      spacing: 'open',
+      hungMassKg: '',
+      pourDate: '',
+    })
+    const tree = { id: (await createTree(form, { member: ines, clock })).treeId, tag: form.tag }
+    const detail = (await loadTreeDetail({ tag: tree.tag, viewer: owner, clock }))!
+    // The tree's page links to both.
+    const workId = detail.pieces[0]!.workId
+    const recipeId = detail.recipe.id
+    expect(recipeId).toBe((await RecipeVersion.findByPk(recipeVersionId))!.recipeId)
+    const dip = (coatNumber: number, dippedAt: number) =>
+      logDips(dipBody(foundry, [{ treeId: tree.id, coatNumber, reason: 'In a test.' }], { dippedAt, bathId: shop.bathIds.face }), {
+        member: owner,
+        clock: stoppedClock(dippedAt),
+      })
+    await dip(1, NOW)
+    await dip(2, NOW + 8 * HOUR)
+    const marks = async () => {
+      const room = await loadRoomPage({ sensorId: foundry.sensorId, tempUnit: 'degC', clock: stoppedClock(NOW + 9 * HOUR) })
+      return [
+        (await loadRecipeList()).find(({ id }) => id === recipeId)?.isDemo,
+        (await loadRecipeDetail(recipeId))?.isDemo,
+        (await loadWorkList()).find(({ id }) => id === workId)?.isDemo,
+        (await loadWorkDetail({ workId, clock }))?.isDemo,
+        room.rows.find((row) => row.tree.tag === tree.tag)?.tree.isDemo,
+        room.dried.coats.find((coat) => coat.tag === tree.tag)?.isDemo,
+      ]
+    }
+    expect(await marks()).toEqual([true, true, true, true, true, true])
+    await Foundry.update({ isDemo: true }, { where: { id: 1 } })
+    expect(await marks()).toEqual([false, false, false, false, false, false])
   })
 })
