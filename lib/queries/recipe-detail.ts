@@ -2,7 +2,7 @@ import { QueryTypes } from 'sequelize'
 import { loadMovingTrees, type RecipeTree } from '@/lib/queries/moving-trees'
 import { loadVersionCoats } from '@/lib/queries/version-coats'
 import type { VersionCoat } from '@/lib/recipes/coat-cells'
-import { Bath, database, Recipe } from '@/models'
+import { Bath, database, Foundry, Recipe } from '@/models'
 
 export type RecipeVersionRow = {
   id: string
@@ -22,6 +22,8 @@ export type RecipeDetail = {
   id: string
   name: string
   isRetired: boolean
+  /** Of the demo, in a foundry that is not the demo itself. */
+  isDemo: boolean
   /** Newest first; a recipe has at least one. */
   versions: RecipeVersionRow[]
 }
@@ -30,7 +32,7 @@ export type RecipeDetail = {
 export async function loadRecipeDetail(recipeId: string): Promise<RecipeDetail | null> {
   const recipe = await Recipe.findByPk(recipeId)
   if (!recipe) return null
-  const [rows, trees] = await Promise.all([
+  const [rows, trees, foundry] = await Promise.all([
     database.query<{
       id: string
       version: number
@@ -46,12 +48,14 @@ export async function loadRecipeDetail(recipeId: string): Promise<RecipeDetail |
       { type: QueryTypes.SELECT, replacements: { recipeId } },
     ),
     loadMovingTrees({ recipeId }),
+    Foundry.findByPk(1),
   ])
   const coats = await loadVersionCoats(rows.map((row) => row.id))
   return {
     id: recipe.id,
     name: recipe.name,
     isRetired: recipe.retiredAt !== null,
+    isDemo: recipe.isDemo && foundry?.isDemo !== true,
     versions: rows.map(({ calibratedAt, ...row }) => ({
       ...row,
       isCalibrated: calibratedAt !== null,

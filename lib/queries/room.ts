@@ -185,8 +185,8 @@ function mondayOf(now: number, timeZone: string): number {
 
 /** Coats that were dipped over since, and those that came dry and wait, of trees that hung in this room's air; newest first. */
 async function driedCoats({ context, trees }: Floor, sensorId: number, since: number): Promise<DriedCoat[]> {
-  const covered = await database.query<DriedCoat>(
-    `SELECT t.tag, c.number AS coatNumber, p.name AS placeName, c.dipped_at AS dippedAt, c.covered_at AS coveredAt,
+  const covered = await database.query<Omit<DriedCoat, 'isDemo'> & { isDemo: number }>(
+    `SELECT t.tag, t.is_demo AND NOT (SELECT is_demo FROM foundry) AS isDemo, c.number AS coatNumber, p.name AS placeName, c.dipped_at AS dippedAt, c.covered_at AS coveredAt,
             c.moisture_ratio_at_redip AS moistureRatio, c.mean_rel_humidity_pct AS meanRelHumidityPct
        FROM coats c JOIN trees t ON t.id = c.tree_id JOIN places p ON p.id = c.place_id
       WHERE c.withdrawn_at IS NULL AND c.covered_at >= :since AND p.sensor_id = :sensorId
@@ -199,6 +199,7 @@ async function driedCoats({ context, trees }: Floor, sensorId: number, since: nu
     return [
       {
         tag: facts.tag,
+        isDemo: facts.isDemo,
         coatNumber: newest.number,
         placeName: place.name,
         dippedAt: newest.dippedAt,
@@ -208,5 +209,5 @@ async function driedCoats({ context, trees }: Floor, sensorId: number, since: nu
       },
     ]
   })
-  return [...waiting, ...covered]
+  return [...waiting, ...covered.map((coat) => ({ ...coat, isDemo: coat.isDemo === 1 }))]
 }

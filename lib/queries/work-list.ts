@@ -5,6 +5,8 @@ export type WorkListRow = {
   id: string
   title: string
   editionSize: number | null
+  /** Of the demo, in a foundry that is not the demo itself. */
+  isDemo: boolean
   sections: string[]
   /** Pieces that were ever cast, and those on trees that are still open. */
   castCount: number
@@ -15,8 +17,8 @@ export type WorkListRow = {
 
 /** Every work with its sections and how much of it hangs in the room, by title. */
 export async function loadWorkList(): Promise<WorkListRow[]> {
-  const rows = await database.query<Omit<WorkListRow, 'sections'> & { sections: string }>(
-    `SELECT w.id, w.title, w.edition_size AS editionSize,
+  const rows = await database.query<Omit<WorkListRow, 'sections' | 'isDemo'> & { sections: string; isDemo: number }>(
+    `SELECT w.id, w.title, w.edition_size AS editionSize, w.is_demo AND NOT (SELECT is_demo FROM foundry) AS isDemo,
             (SELECT json_group_array(name) FROM (SELECT name FROM sections WHERE work_id = w.id ORDER BY name)) AS sections,
             count(p.id) AS castCount, count(t.id) AS openCount, min(t.pour_date) AS nextPour
        FROM works w LEFT JOIN sections s ON s.work_id = w.id LEFT JOIN pieces p ON p.section_id = s.id
@@ -25,7 +27,7 @@ export async function loadWorkList(): Promise<WorkListRow[]> {
       GROUP BY w.id ORDER BY w.title COLLATE NOCASE`,
     { type: QueryTypes.SELECT },
   )
-  return rows.map(({ sections, ...row }) => ({ ...row, sections: stringsOf(sections) }))
+  return rows.map(({ sections, isDemo, ...row }) => ({ ...row, isDemo: isDemo === 1, sections: stringsOf(sections) }))
 }
 
 function stringsOf(json: string): string[] {

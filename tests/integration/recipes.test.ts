@@ -205,6 +205,12 @@ describe('a recipe', () => {
     expect(await offered()).toEqual([])
     expect((await loadRecipeList()).find(({ id }) => id === recipeId)).toMatchObject({ isRetired: true, version: 2 })
     await retireRecipe(recipeId, true, by())
+    await Bath.update({ retiredAt: NOW }, { where: { id: foundry.backupBathId } })
+    await expect(retireRecipe(recipeId, false, by())).rejects.toMatchObject({
+      code: 'conflict',
+      message: 'Backup slurry is retired: take it into use again first.',
+    })
+    await Bath.update({ retiredAt: null }, { where: { id: foundry.backupBathId } })
     await retireRecipe(recipeId, false, by())
     expect(await offered()).toHaveLength(1)
     expect((await eventsOf(recipeId)).map(({ kind }) => kind)).toEqual([

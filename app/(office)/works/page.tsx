@@ -1,5 +1,6 @@
 import type { Metadata } from 'next'
 import Link from 'next/link'
+import { DemoMark } from '@/app/_components/demo-mark'
 import { KeyLink } from '@/app/_components/key'
 import { EmptyState } from '@/app/(office)/_components/empty-state'
 import { formatDay } from '@/lib/format/local-time'
@@ -96,6 +97,7 @@ function WorkRow({ work }: { work: WorkListRow }) {
           {work.title}
         </Link>
         <span className="text-soot">
+          {work.isDemo && <DemoMark />}{' '}
           {named.length === 0 ? 'cast in one' : named.length === 1 ? named[0] : `${named.length} sections: ${named.join(', ')}`}
         </span>
       </div>
