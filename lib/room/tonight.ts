@@ -113,6 +113,10 @@ function highestFactor(context: FloorContext, placeId: string, { from, to }: Ton
 
 const placeIdOf = (tree: DryingTree) => tree.facts.stays.at(-1)?.placeId ?? ''
 
+/** The highest place factor of a tree's own place until the next opening. */
+export const placeFactorTonight = (tree: DryingTree, context: FloorContext, tonight: Tonight): number =>
+  highestFactor(context, placeIdOf(tree), tonight)
+
 /** Face coats are not dried under this. Common practice, no source. */
 export const LOWEST_TARGET_PCT = 45
 const TARGET_STEP_PCT = 5
@@ -136,7 +140,7 @@ export function dryerFor(
   band: { lowRhPct: number; highRhPct: number },
 ): Dryer | null {
   const hours = nightHours(climate, tonight, context.timeZone)
-  const wet = trees.map((tree) => wetCoat(tree, highestFactor(context, placeIdOf(tree), tonight)))
+  const wet = trees.map((tree) => wetCoat(tree, placeFactorTonight(tree, context, tonight)))
   const middle = Math.round((band.lowRhPct + band.highRhPct) / 2 / TARGET_STEP_PCT) * TARGET_STEP_PCT
   const driest = Math.max(LOWEST_TARGET_PCT, middle)
   for (let targetPct = driest; targetPct <= Math.max(driest, band.highRhPct); targetPct += TARGET_STEP_PCT) {
