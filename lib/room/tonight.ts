@@ -83,9 +83,9 @@ export function nightHours(climate: RoomClimate, tonight: Tonight, timeZone: str
 /** A wet coat in the air of a place, as far as the limits ask: `airTempAtCoat1C` is what its tree's wax was dipped in. */
 type WetCoat = { coatNumber: number; placeFactor: number; airTempAtCoat1C: number | null }
 
-const wetCoat = (tree: DryingTree, placeFactor: number): WetCoat => ({
+const wetCoat = (tree: DryingTree, factor: number): WetCoat => ({
   coatNumber: tree.newest.number,
-  placeFactor,
+  placeFactor: factor,
   airTempAtCoat1C: tree.facts.coats[0]?.airTempC ?? null,
 })
 

@@ -256,7 +256,8 @@ describe('a mild humidity for a face coat', () => {
     const pct = mildHumidityPct(23, placeFactor, 101_325)!
     const speedAt = (relHumidityPct: number) => placeFactor * roomFactor({ airTempC: 23, relHumidityPct }, 101_325)
     expect(speedAt(pct)).toBeLessThanOrEqual(1.4)
-    if (pct > 45) expect(speedAt(pct - 5)).toBeGreaterThan(1.4)
+    // No damper than it has to be.
+    expect(pct === 45 || speedAt(pct - 5) > 1.4).toBe(true)
   })
 
   it('is that of the windiest near-wax tree of the room', () => {

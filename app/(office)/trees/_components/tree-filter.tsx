@@ -19,7 +19,8 @@ const show = (event: ChangeEvent<HTMLSelectElement>) => event.currentTarget.form
 
 /** Keeps the address to what differs from the plain list. */
 function leaveOutPlain({ formData }: FormDataEvent): void {
-  for (const [name, value] of [...formData]) if (value === '' || (name === 'sort' && value === 'due')) formData.delete(name)
+  const plain = [...formData].filter(([name, value]) => value === '' || (name === 'sort' && value === 'due'))
+  for (const [name] of plain) formData.delete(name)
 }
 
 /** Finds, filters and sorts the list; all of it goes into the address bar, so that a view can be kept, sent and gone back to. */
