@@ -109,10 +109,10 @@ describe('a work', () => {
   it('stands on its page of the list, found by title or section', async () => {
     for (const name of ['Kelp Bowl A', 'Kelp Bowl B', 'Kelp Bowl C']) await treeOf([{ workTitle: name, sectionName: 'rim' }])
     const list = (page: number, query = 'kelp rim') => loadWorkList({ query, page, size: 2 })
-    const titles = ({ rows }: Awaited<ReturnType<typeof list>>) => rows.map((work) => work.title)
+    const titlesOf = ({ rows }: Awaited<ReturnType<typeof list>>) => rows.map((work) => work.title)
     const [first, second, beyond] = await Promise.all([list(1), list(2), list(9)])
     expect(first).toMatchObject({ page: 1, pages: 2, total: await Work.count() })
-    expect(titles(first)).toEqual(['Kelp Bowl A', 'Kelp Bowl B'])
+    expect(titlesOf(first)).toEqual(['Kelp Bowl A', 'Kelp Bowl B'])
     expect(second.rows).toMatchObject([{ title: 'Kelp Bowl C', castCount: 1, openCount: 1 }])
     expect(beyond).toEqual(second)
     expect(await list(1, 'no such work')).toMatchObject({ rows: [], page: 1, pages: 1 })
