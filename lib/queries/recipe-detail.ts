@@ -42,8 +42,13 @@ export async function loadRecipeDetail(recipeId: string): Promise<RecipeDetail |
       calibratedAt: number | null
       leftTrees: number
     }>(
-      `SELECT v.id, v.version, v.note, m.name AS "by", v.created_at AS at, v.calibrated_at AS calibratedAt,
-              (SELECT count(*) FROM trees t WHERE t.recipe_version_id = v.id AND (t.released_at IS NOT NULL OR t.scrapped_at IS NOT NULL)) AS leftTrees
+      // Counted within the indexes of the versions and of the floor; no tree that has left is read.
+      `WITH open AS MATERIALIZED (
+         SELECT recipe_version_id, count(*) AS trees FROM trees INDEXED BY trees_on_floor
+          WHERE released_at IS NULL AND scrapped_at IS NULL GROUP BY recipe_version_id)
+       SELECT v.id, v.version, v.note, m.name AS "by", v.created_at AS at, v.calibrated_at AS calibratedAt,
+              (SELECT count(*) FROM trees t WHERE t.recipe_version_id = v.id)
+                - coalesce((SELECT o.trees FROM open o WHERE o.recipe_version_id = v.id), 0) AS leftTrees
          FROM recipe_versions v LEFT JOIN members m ON m.id = v.created_by WHERE v.recipe_id = :recipeId ORDER BY v.version DESC`,
       { type: QueryTypes.SELECT, replacements: { recipeId } },
     ),

@@ -146,7 +146,7 @@ describe('the mark of the demo', () => {
       return [
         (await loadRecipeList()).find(({ id }) => id === recipeId)?.isDemo,
         (await loadRecipeDetail(recipeId))?.isDemo,
-        (await loadWorkList()).find(({ id }) => id === workId)?.isDemo,
+        (await loadWorkList({ query: '', page: 1, size: 50 })).rows.find(({ id }) => id === workId)?.isDemo,
         (await loadWorkDetail({ workId, clock }))?.isDemo,
         room.rows.find((row) => row.tree.tag === tree.tag)?.tree.isDemo,
         room.dried.coats.find((coat) => coat.tag === tree.tag)?.isDemo,

@@ -12,8 +12,9 @@ import {
   type RecipeInput,
   type RecipeVersionInput,
 } from '@/lib/recipes/recipe-input'
-import { Bath, FoundryEvent, Recipe, RecipeCoat, RecipeVersion } from '@/models'
-import { buildFoundry, buildMember, NOW, stoppedClock, type TestFoundry } from '@/tests/factories/shell-room'
+import { Bath, database, FoundryEvent, Recipe, RecipeCoat, RecipeVersion } from '@/models'
+import { buildFoundry, buildMember, buildTree, NOW, stoppedClock, type TestFoundry } from '@/tests/factories/shell-room'
+import { statementsOf } from '@/tests/factories/statements'
 
 let foundry: TestFoundry
 let ines: Actor
@@ -231,5 +232,34 @@ describe('a recipe', () => {
     ])
     expect(detail!.versions[0]!.coats[0]).toMatchObject({ number: 1, bathName: 'Face slurry', isPrewet: false })
     expect(await loadRecipeDetail(newId())).toBeNull()
+  })
+})
+
+describe('what stands on a recipe', () => {
+  it('is counted: open trees on any version, those that left on theirs', async () => {
+    const { recipeId, versionId } = await createRecipe(input(), by())
+    const next = await addRecipeVersion(recipeId, versionInput(), by())
+    const on = (recipeVersionId: string) => buildTree(foundry, { recipeVersionId })
+    const [open, released, scrapped] = [await on(versionId), await on(versionId), await on(versionId)]
+    await on(next.versionId)
+    await released.update({ releasedAt: NOW })
+    await scrapped.update({ releasedAt: NOW - 1, scrappedAt: NOW })
+    expect((await loadRecipeList()).find(({ id }) => id === recipeId)).toMatchObject({ openTrees: 2 })
+    const [newest, first] = (await loadRecipeDetail(recipeId))!.versions
+    expect(newest).toMatchObject({ leftTrees: 0, openTrees: [{ version: 2 }] })
+    expect(first).toMatchObject({ leftTrees: 2, openTrees: [{ tag: open.tag }] })
+  })
+
+  it('is found by the index of the floor, whatever has left', async () => {
+    const { recipeId } = await createRecipe(input(), by())
+    const asked = [...(await statementsOf(loadRecipeList)), ...(await statementsOf(() => loadRecipeDetail(recipeId)))]
+    const ofTrees = asked.filter((sql) => sql.includes('FROM trees'))
+    expect(ofTrees).toHaveLength(3)
+    for (const sql of ofTrees) {
+      const [plan] = await database.query(`EXPLAIN QUERY PLAN ${sql}`)
+      const steps = JSON.stringify(plan)
+      expect(steps).toContain('trees_on_floor')
+      expect(steps.replaceAll(/COVERING INDEX trees_recipe_version/g, '')).not.toContain('trees_recipe_version')
+    }
   })
 })
