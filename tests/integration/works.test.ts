@@ -10,8 +10,8 @@ import { loadWorkDetail } from '@/lib/queries/work-detail'
 import { loadWorkList } from '@/lib/queries/work-list'
 import { treeInput } from '@/lib/trees/tree-input'
 import { editionTable } from '@/lib/works/edition-table'
-import { database, FoundryEvent, RecipeVersion, Section, Work } from '@/models'
-import { statementsOf } from '@/tests/factories/statements'
+import { FoundryEvent, RecipeVersion, Section, Work } from '@/models'
+import { plansOf } from '@/tests/factories/plans'
 import { buildFoundry, buildMember, buildRecipe, NOW, stoppedClock, type TestFoundry } from '@/tests/factories/shell-room'
 
 let foundry: TestFoundry
@@ -119,11 +119,10 @@ describe('a work', () => {
   })
 
   it('costs the list the pieces of the works that are shown', async () => {
-    const asked = await statementsOf(() => loadWorkList({ query: 'kelp', page: 1, size: 2 }))
-    const counting = asked.find((sql) => sql.includes('JOIN pieces'))!
-    const [plan] = await database.query(`EXPLAIN QUERY PLAN ${counting}`)
-    expect(JSON.stringify(plan)).toContain('pieces_section')
-    expect(JSON.stringify(plan)).not.toMatch(/SCAN (?:s|p|tp|t)\b/)
+    const plans = await plansOf(() => loadWorkList({ query: 'kelp', page: 1, size: 2 }))
+    const { plan } = plans.find(({ sql }) => sql.includes('JOIN pieces'))!
+    expect(plan).toContain('pieces_section')
+    expect(plan).not.toMatch(/SCAN (?:s|p|tp|t)\b/)
   })
 
   it('is not there under another address', async () => {
