@@ -76,7 +76,7 @@ function StarterWords({ recipe: { name, coats }, line }: { recipe: StarterRecipe
         isDecoration
       />
       <span>
-        {line} {coatWords(coats)}. <em>Needs {NOT_CALIBRATED}.</em>
+        {line} {coatWords(coats)}. <em>Its hours are {NOT_CALIBRATED}.</em>
       </span>
     </span>
   )
