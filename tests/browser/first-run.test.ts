@@ -93,7 +93,7 @@ it('leads from nothing to the first dip', async () => {
   await press(page, 'Add hours on Monday')
   await page.getByLabel('Monday, fans on from').fill('06:00')
   await page.getByLabel('Monday, fans on to').fill('18:00')
-  await press(page, 'Every day so')
+  await press(page, 'Same every day')
   await press(page, 'Add the place')
   await heading(page, 'Rack A')
   await press(page, 'Go on')
