@@ -127,7 +127,7 @@ describe('npm start', () => {
     const program = start(dataDir, port, {}, ['--empty'])
     await opens(program)
     expect(program.output()).toContain(`Open http://localhost:${port} to set up your foundry.`)
-    expect(program.output()).not.toMatch(/Sign in as|demo|setup code/i)
+    expect(program.output()).not.toMatch(/Sign in as|demo foundry|setup code/i)
     const response = await fetch(`http://127.0.0.1:${port}/floor`, { redirect: 'manual' })
     expect(response.headers.get('location')).toBe('/first-run')
     // The worker has nothing to watch yet, and lives.
