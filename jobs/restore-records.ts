@@ -51,6 +51,7 @@ async function restore(name: string, maySetAside: boolean): Promise<void> {
   if (restored.migrated.length > 0) say(`Brought up to this version: ${restored.migrated.join(', ')}.`)
   if (restored.areSecretsRestored) say('The secrets were put back from beside the backups.')
   if (restored.setAside) say(`The records of before lie in ${restored.setAside}. Delete them when you are sure.`)
+  say('Tokens revoked, members disabled and passwords changed after this backup are as they were then. Do again what must hold.')
   say(`Restored and proved: ${restored.file}. Start Kilnward; everybody signs in again.`)
 }
 

@@ -90,6 +90,8 @@ export const ShellSection = memo(function ShellSection({
     const columns = Math.max(1, Math.round((b - a - pad * 2) / p) + 1)
     const rows = Math.max(2, Math.floor((h - pad * 2) / (p * 0.94)) + 1)
     const jitter = h >= 30 ? 0.2 : 0.06
+    // Coarse grains are angular, not round, where that can be seen.
+    const isAngular = grade === 'coarse' && h >= 30
     let d = ''
     for (let column = 0; column < columns; column += 1) {
       for (let row = 0; row < rows; row += 1) {
@@ -98,8 +100,7 @@ export const ShellSection = memo(function ShellSection({
         const y = y0 + pad + (h - pad * 2) * ((row + offset) / Math.max(1, rows - 1)) + (random() - 0.5) * p * jitter
         const x =
           (columns === 1 ? (a + b) / 2 : a + pad + ((b - a - pad * 2) * column) / (columns - 1)) + bowAt(y) + (random() - 0.5) * p * jitter
-        if (grade === 'coarse') {
-          // Coarse grains are angular, not round.
+        if (isAngular) {
           const start = random() * 6.28
           const corners: string[] = []
           for (let corner = 0; corner < 5; corner += 1) {
@@ -109,11 +110,12 @@ export const ShellSection = memo(function ShellSection({
           }
           d += `M${corners.join('L')}Z`
         } else {
-          d += `M${round(x - r)} ${round(y)}a${round(r)} ${round(r)} 0 1 0 ${round(2 * r)} 0a${round(r)} ${round(r)} 0 1 0 ${round(-2 * r)} 0`
+          d += `M${round(x)} ${round(y)}h0`
         }
       }
     }
-    return <path className={kind} d={d} />
+    // A line of no length with round ends is a dot in a fifth of the letters: a floor shows thousands of them.
+    return isAngular ? <path className={kind} d={d} /> : <path className={`${kind} ss-dots`} d={d} strokeWidth={round(r * 2)} />
   }
 
   // Core: solid wax, cut flat on the left.

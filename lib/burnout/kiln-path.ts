@@ -1,6 +1,7 @@
 import { pourVerdict, type PourContext, type PourVerdict } from '@/lib/burnout/pour-verdict'
+import { localDay } from '@/lib/format/local-time'
 import type { QueueTree } from '@/lib/queue/contract'
-import { localDay, shiftsFrom, startOfLocalDay } from '@/lib/schedule/shifts'
+import { shiftsFrom, startOfLocalDay } from '@/lib/schedule/shifts'
 
 /** Width of one open day and of one closed day, px, before the path is fitted. */
 const OPEN_DAY = 255

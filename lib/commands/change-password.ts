@@ -1,6 +1,7 @@
-import { countTry, forgetTries } from '@/lib/commands/count-try'
+import { countTry, forgetMemberTries } from '@/lib/commands/count-try'
 import { endMemberSessions } from '@/lib/commands/end-member-sessions'
 import { addFoundryEvent } from '@/lib/commands/foundry-event'
+import { refuseField } from '@/lib/commands/refuse-field'
 import { SESSION_MS } from '@/lib/commands/sign-in'
 import type { Clock } from '@/lib/core/clock'
 import { AppError } from '@/lib/core/errors'
@@ -12,17 +13,12 @@ import { inTransaction, Member, Session } from '@/models'
 
 export type PasswordChange = { currentPassword: string; newPassword: string }
 
-/** A refusal that belongs beside one field of the form. */
-function refuseField(field: keyof PasswordChange, reason: string): never {
-  throw new AppError('unprocessable', reason, { fields: [{ path: field, message: reason }] })
-}
-
 /**
  * Changes the member's own password. Every session ends, the one that asked too, so that a copied cookie is worth nothing
  * afterwards; a new one is opened in its place. Wrong tries at the present password wait as those of the sign-in do.
  *
  * @returns the new session, for the browser that asked.
- * @throws {AppError} unprocessable with `fields`; too_many_requests; conflict when it was changed elsewhere meanwhile.
+ * @throws {AppError} conflict, with `fields` for a wrong one; too_many_requests.
  */
 export async function changePassword(
   { currentPassword, newPassword }: PasswordChange,
@@ -50,7 +46,7 @@ export async function changePassword(
     const asking = await Session.findByPk(member.sessionId)
     const isFirst = row.firstPasswordUntil !== null
     await row.update({ passwordHash: newHash, firstPasswordUntil: null })
-    await forgetTries(subject)
+    await forgetMemberTries(row)
     await endMemberSessions(member.id, { clock })
     const sessionId = newId(now)
     await Session.create({

@@ -1,5 +1,5 @@
 import { Op } from 'sequelize'
-import { FORGET_FAILURES_AFTER_MS, waitAfterFailuresMs } from '@/lib/members/sign-in-waits'
+import { FORGET_FAILURES_AFTER_MS, signInSubject, waitAfterFailuresMs } from '@/lib/members/sign-in-waits'
 import { inTransaction, SignInWait } from '@/models'
 
 /**
@@ -22,5 +22,14 @@ export function countTry(subject: string, now: number): Promise<number> {
 
 /** Takes the count away after the right password. Takes part in the caller's transaction. */
 export async function forgetTries(subject: string): Promise<void> {
+  await inTransaction(() => SignInWait.destroy({ where: { subject } }))
+}
+
+/** Takes every count of a member away, at the sign-in from wherever and at the change of password. Takes part in the caller's transaction. */
+export async function forgetMemberTries({ id, email }: { id: string; email: string }): Promise<void> {
+  const strangers = signInSubject(email, null)
+  // ';' follows ':', so between them lies what begins with the e-mail and a device. A LIKE would take '_' for any letter.
+  const devices = { [Op.gte]: `${strangers}:`, [Op.lt]: `${strangers};` }
+  const subject = { [Op.or]: [{ [Op.in]: [strangers, `password:${id}`] }, devices] }
   await inTransaction(() => SignInWait.destroy({ where: { subject } }))
 }

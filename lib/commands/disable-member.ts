@@ -1,6 +1,7 @@
 import { endMemberSessions } from '@/lib/commands/end-member-sessions'
 import { addFoundryEvent } from '@/lib/commands/foundry-event'
 import { keepAnOwner } from '@/lib/commands/last-owner'
+import { refuseDemoPerson } from '@/lib/commands/refuse-demo-person'
 import type { Clock } from '@/lib/core/clock'
 import { AppError } from '@/lib/core/errors'
 import type { Actor } from '@/lib/members/actor'
@@ -35,12 +36,13 @@ export function disableMember(memberId: string, { member, clock }: By): Promise<
 /**
  * Lets a disabled member in again, with the password they had. Without effect on one who is not disabled.
  *
- * @throws {AppError} not_found.
+ * @throws {AppError} not_found; conflict for one of the people of a demo that was laid over this foundry.
  */
 export function enableMember(memberId: string, { member, clock }: By): Promise<void> {
   return inTransaction(async () => {
     const row = await findMember(memberId)
     if (row.disabledAt === null) return
+    await refuseDemoPerson(row)
     await row.update({ disabledAt: null })
     await addFoundryEvent(
       { type: 'member', id: memberId, name: row.name },

@@ -15,6 +15,7 @@ export type EventSubject = {
  *
  * @param event.kind what happened, in a few plain words ('place changed'); the history is filtered by it.
  * @param event.text what a person reads, one sentence.
+ * @param event.isDemo where nobody did it: whether its subject is the demo's, so that the line goes with it. What somebody did is theirs.
  * @param event.before and `after`: only the fields that changed. Never a password, a token or a hash.
  */
 export async function addFoundryEvent(
@@ -24,11 +25,12 @@ export async function addFoundryEvent(
     by: Actor | null
     at: number
     text: string
+    isDemo?: boolean
     before?: Record<string, unknown>
     after?: Record<string, unknown>
   },
 ): Promise<void> {
-  const { kind, by, at, ...detail } = event
+  const { kind, by, at, isDemo = false, ...detail } = event
   await FoundryEvent.create({
     kind,
     subjectType: subject.type,
@@ -38,6 +40,6 @@ export async function addFoundryEvent(
     device: by?.device ?? '',
     at,
     detail,
-    isDemo: by?.isDemo ?? false,
+    isDemo: by === null ? isDemo : (by.isDemo ?? false),
   })
 }

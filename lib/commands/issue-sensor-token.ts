@@ -27,7 +27,7 @@ export async function issueSensorToken(
     await SensorToken.create({ id, sensorId: sensor.id, secretSha256, createdBy: member?.id ?? null, createdAt: now })
     await addFoundryEvent(
       { type: 'sensor', id: String(sensor.id), name: sensor.name },
-      { kind: 'token issued', by: member, at: now, text: `Token ${id} issued for ${sensor.name}.` },
+      { kind: 'token issued', by: member, at: now, text: `Token ${id} issued for ${sensor.name}.`, isDemo: sensor.isDemo },
     )
   })
   return { id, token }

@@ -1,3 +1,4 @@
+import { retiredBaths } from '@/lib/commands/retired-baths'
 import { addTreeEvent } from '@/lib/commands/tree-event'
 import type { Clock } from '@/lib/core/clock'
 import { AppError } from '@/lib/core/errors'
@@ -10,7 +11,8 @@ import { inTransaction, Recipe, RecipeCoat, RecipeVersion, Tree } from '@/models
  * Moves trees to a newer version of their recipe: all of them, or none. Coats that are on stay as they are, with their own need,
  * target, guard and longest wait; the version's coat n applies to the coats not on yet.
  *
- * @throws {AppError} not_found for the version or a tree; conflict that names each tree that cannot move, and why.
+ * @throws {AppError} not_found for the version or a tree; conflict that names each tree that cannot move, and why, or a bath of the
+ *   version that is retired.
  */
 export function moveTreesToVersion(
   { versionId, treeIds }: { versionId: string; treeIds: readonly string[] },
@@ -25,6 +27,8 @@ export function moveTreesToVersion(
     if (trees.length < new Set(treeIds).size) throw new AppError('not_found', 'There is no such tree.')
     const refusals = trees.flatMap((tree) => moveRefusal(tree, { recipeId: to.recipeId, version: to.version, coatCount }) ?? [])
     if (refusals.length > 0) throw new AppError('conflict', ['Nothing was moved.', ...refusals].join(' '))
+    const bathRefusal = await retiredBaths(versionId)
+    if (bathRefusal !== null) throw new AppError('conflict', `Nothing was moved. ${bathRefusal}`)
     const { name } = await Recipe.findByPk(to.recipeId, { rejectOnEmpty: true })
     for (const tree of trees) {
       await Tree.update({ recipeVersionId: versionId, updatedAt: now }, { where: { id: tree.id } })

@@ -1,7 +1,8 @@
 import { QueryTypes } from 'sequelize'
 import type { BathInput } from '@/lib/coats/bath-input'
 import { addFoundryEvent } from '@/lib/commands/foundry-event'
-import { refuseField } from '@/lib/commands/refuse-field'
+import { requireFreeName } from '@/lib/commands/require-free-name'
+import { stopBeingDemo } from '@/lib/commands/stop-being-demo'
 import type { Clock } from '@/lib/core/clock'
 import { AppError } from '@/lib/core/errors'
 import { newId } from '@/lib/core/ids'
@@ -16,7 +17,7 @@ type By = { member: Actor; clock: Clock }
 export function createBath(input: BathInput, { member, clock }: By): Promise<{ bathId: string }> {
   return inTransaction(async () => {
     const now = clock.now()
-    await requireFreeName(input.name, null)
+    requireFreeName(input.name, { among: await Bath.findAll(), kind: 'bath', ownId: null })
     const bathId = newId(now)
     await Bath.create({ ...input, id: bathId, isDemo: member.isDemo ?? false, createdAt: now })
     await addFoundryEvent(
@@ -31,10 +32,11 @@ export function createBath(input: BathInput, { member, clock }: By): Promise<{ b
 export function changeBath(bathId: string, input: BathInput, { member, clock }: By): Promise<void> {
   return inTransaction(async () => {
     const bath = await bathInUse(bathId)
-    await requireFreeName(input.name, bathId)
+    requireFreeName(input.name, { among: await Bath.findAll(), kind: 'bath', ownId: bathId })
     const changed = changedFields({ name: bath.name, kind: bath.kind }, input)
     if (Object.keys(changed.after).length === 0) return
     await bath.update(input)
+    await stopBeingDemo(bath, member)
     await addFoundryEvent(
       { type: 'bath', id: bathId, name: input.name },
       { kind: 'bath changed', by: member, at: clock.now(), text: `Bath ${input.name} changed.`, ...changed },
@@ -64,6 +66,7 @@ export function retireBath(bathId: string, { member, clock }: By): Promise<void>
       throw new AppError('conflict', `${nameList(tags)} still ${tags.length === 1 ? 'has' : 'have'} a coat to come from ${bath.name}.`)
     }
     await bath.update({ retiredAt: now })
+    await stopBeingDemo(bath, member)
     await addFoundryEvent(
       { type: 'bath', id: bathId, name: bath.name },
       { kind: 'bath retired', by: member, at: now, text: `Bath ${bath.name} retired.` },
@@ -78,6 +81,7 @@ export function reuseBath(bathId: string, { member, clock }: By): Promise<void> 
     if (!bath) throw new AppError('not_found', 'There is no such bath.')
     if (bath.retiredAt === null) return
     await bath.update({ retiredAt: null })
+    await stopBeingDemo(bath, member)
     await addFoundryEvent(
       { type: 'bath', id: bathId, name: bath.name },
       { kind: 'bath in use again', by: member, at: clock.now(), text: `Bath ${bath.name} taken into use again.` },
@@ -90,17 +94,6 @@ async function bathInUse(bathId: string): Promise<Bath> {
   if (!bath) throw new AppError('not_found', 'There is no such bath.')
   if (bath.retiredAt !== null) throw new AppError('conflict', `${bath.name} is retired.`)
   return bath
-}
-
-async function requireFreeName(name: string, ownId: string | null): Promise<void> {
-  const other = await Bath.findOne({ where: { name } })
-  if (!other || other.id === ownId) return
-  refuseField(
-    'name',
-    other.retiredAt === null
-      ? `There is a ${name} already.`
-      : `A retired bath is called ${name}. Take it into use again, or choose another name.`,
-  )
 }
 
 async function recipesThatNeed(bathId: string): Promise<string[]> {

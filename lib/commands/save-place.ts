@@ -1,5 +1,7 @@
 import { addFoundryEvent } from '@/lib/commands/foundry-event'
 import { refuseField } from '@/lib/commands/refuse-field'
+import { requireFreeName } from '@/lib/commands/require-free-name'
+import { stopBeingDemo } from '@/lib/commands/stop-being-demo'
 import type { Clock } from '@/lib/core/clock'
 import { AppError } from '@/lib/core/errors'
 import { newId } from '@/lib/core/ids'
@@ -22,7 +24,7 @@ type By = { member: Actor; clock: Clock }
 export function createPlace(input: PlaceInput, { member, clock }: By): Promise<{ placeId: string }> {
   return inTransaction(async () => {
     const now = clock.now()
-    await requireFreeName(input.name, null)
+    requireFreeName(input.name, { among: await Place.findAll(), kind: 'place', ownId: null })
     const sensor = await requireSensor(input.sensorId)
     const { fans, ...columns } = input
     const placeId = newId(now)
@@ -46,7 +48,7 @@ export function changePlace(placeId: string, input: PlaceInput, since: AirSince,
   return inTransaction(async () => {
     const now = clock.now()
     const place = await placeInUse(placeId)
-    await requireFreeName(input.name, placeId)
+    requireFreeName(input.name, { among: await Place.findAll(), kind: 'place', ownId: placeId })
     const sensor = await requireSensor(input.sensorId)
     const formerSensor = await Sensor.findByPk(place.sensorId, { rejectOnEmpty: true })
     const formerFans = await FanHours.findAll({ where: { placeId } })
@@ -56,6 +58,7 @@ export function changePlace(placeId: string, input: PlaceInput, since: AirSince,
     const isOtherAir = Object.keys(changed.after).some((field) => field !== 'name')
     if (isOtherAir && since === 'now') await keepFormerAir(place, formerFans, now)
     await place.update(columns)
+    await stopBeingDemo(place, member)
     await FanHours.destroy({ where: { placeId } })
     await FanHours.bulkCreate(fans.map((row) => ({ ...row, placeId })))
     await addFoundryEvent(
@@ -80,6 +83,7 @@ export function retirePlace(placeId: string, { member, clock }: By): Promise<voi
       throw new AppError('conflict', `${nameList(tags)} ${verb} at ${place.name}. Move ${them} first.`)
     }
     await place.update({ retiredAt: now })
+    await stopBeingDemo(place, member)
     await addFoundryEvent(
       { type: 'place', id: placeId, name: place.name },
       { kind: 'place retired', by: member, at: now, text: `Place ${place.name} retired.` },
@@ -101,6 +105,7 @@ export function reusePlace(placeId: string, { member, clock }: By): Promise<void
       throw new AppError('conflict', `Its sensor, ${place.sensor?.name ?? 'unknown'}, is retired. Take that into use again first.`)
     }
     await place.update({ retiredAt: null })
+    await stopBeingDemo(place, member)
     await addFoundryEvent(
       { type: 'place', id: placeId, name: place.name },
       { kind: 'place in use again', by: member, at: clock.now(), text: `Place ${place.name} taken into use again.` },
@@ -124,17 +129,6 @@ async function placeInUse(placeId: string): Promise<Place> {
   if (!place) throw new AppError('not_found', 'There is no such place.')
   if (place.retiredAt !== null) throw new AppError('conflict', `${place.name} is retired.`)
   return place
-}
-
-async function requireFreeName(name: string, ownId: string | null): Promise<void> {
-  const other = await Place.findOne({ where: { name } })
-  if (!other || other.id === ownId) return
-  refuseField(
-    'name',
-    other.retiredAt === null
-      ? `There is a ${name} already.`
-      : `A retired place is called ${name}. Take it into use again, or choose another name.`,
-  )
 }
 
 async function requireSensor(sensorId: number): Promise<Sensor> {

@@ -1,5 +1,7 @@
 import { addFoundryEvent } from '@/lib/commands/foundry-event'
 import { refuseField } from '@/lib/commands/refuse-field'
+import { retiredBaths } from '@/lib/commands/retired-baths'
+import { stopBeingDemo } from '@/lib/commands/stop-being-demo'
 import type { Clock } from '@/lib/core/clock'
 import { AppError } from '@/lib/core/errors'
 import { newId } from '@/lib/core/ids'
@@ -115,12 +117,17 @@ export function renameRecipe(recipeId: string, name: string, { member, clock }: 
   })
 }
 
-/** Retires a recipe, or takes it into use again. New trees are not offered a retired one; those that stand on it go on. */
+/**
+ * Retires a recipe, or takes it into use again. New trees are not offered a retired one; those that stand on it go on.
+ *
+ * @throws {AppError} not_found; conflict when one that would be used again needs a bath that is retired.
+ */
 export function retireRecipe(recipeId: string, isRetired: boolean, { member, clock }: By): Promise<void> {
   return inTransaction(async () => {
     const recipe = await findRecipe(recipeId)
     if ((recipe.retiredAt !== null) === isRetired) return
     const now = clock.now()
+    if (!isRetired) await requireBathsOfNewest(recipeId)
     const before = recipe.retiredAt
     await recipe.update({ retiredAt: isRetired ? now : null })
     await stopBeingDemo(recipe, member)
@@ -144,9 +151,10 @@ async function findRecipe(recipeId: string): Promise<Recipe> {
   return recipe
 }
 
-/** Whoever changes a demo recipe itself makes it the foundry's own; what is built on it the demo's removal finds by itself. */
-async function stopBeingDemo(recipe: Recipe, member: Actor): Promise<void> {
-  if (recipe.isDemo && !member.isDemo) await recipe.update({ isDemo: false })
+async function requireBathsOfNewest(recipeId: string): Promise<void> {
+  const newest = await RecipeVersion.findOne({ where: { recipeId }, order: [['version', 'DESC']], rejectOnEmpty: true })
+  const refusal = await retiredBaths(newest.id)
+  if (refusal !== null) throw new AppError('conflict', refusal)
 }
 
 async function requireFreeName(name: string, ofRecipeId?: string): Promise<void> {

@@ -1,6 +1,7 @@
 import { addFoundryEvent } from '@/lib/commands/foundry-event'
-import { refuseField } from '@/lib/commands/refuse-field'
+import { requireFreeName } from '@/lib/commands/require-free-name'
 import { revokeSensorToken } from '@/lib/commands/revoke-sensor-token'
+import { stopBeingDemo } from '@/lib/commands/stop-being-demo'
 import type { Clock } from '@/lib/core/clock'
 import { AppError } from '@/lib/core/errors'
 import { nameList } from '@/lib/format/name-list'
@@ -15,7 +16,7 @@ type By = { member: Actor; clock: Clock }
 export function createSensor(input: SensorInput, { member, clock }: By): Promise<{ sensorId: number }> {
   return inTransaction(async () => {
     const now = clock.now()
-    await requireFreeName(input.name, null)
+    requireFreeName(input.name, { among: await Sensor.findAll(), kind: 'sensor', ownId: null })
     const sensor = await Sensor.create({ ...input, isDemo: member.isDemo ?? false, createdAt: now })
     await addFoundryEvent(
       { type: 'sensor', id: String(sensor.id), name: input.name },
@@ -29,10 +30,11 @@ export function createSensor(input: SensorInput, { member, clock }: By): Promise
 export function renameSensor(sensorId: number, input: SensorRename, { member, clock }: By): Promise<void> {
   return inTransaction(async () => {
     const sensor = await sensorInUse(sensorId)
-    await requireFreeName(input.name, sensorId)
+    requireFreeName(input.name, { among: await Sensor.findAll(), kind: 'sensor', ownId: sensorId })
     const changed = changedFields({ name: sensor.name }, input)
     if (Object.keys(changed.after).length === 0) return
     await sensor.update(input)
+    await stopBeingDemo(sensor, member)
     await addFoundryEvent(
       { type: 'sensor', id: String(sensorId), name: input.name },
       { kind: 'sensor renamed', by: member, at: clock.now(), text: `Sensor ${input.name} renamed.`, ...changed },
@@ -60,6 +62,7 @@ export function retireSensor(sensorId: number, { member, clock }: By): Promise<v
       await revokeSensorToken({ tokenId: token.id }, { member, clock: { now: () => now } })
     }
     await sensor.update({ retiredAt: now })
+    await stopBeingDemo(sensor, member)
     await addFoundryEvent(
       { type: 'sensor', id: String(sensorId), name: sensor.name },
       { kind: 'sensor retired', by: member, at: now, text: `Sensor ${sensor.name} retired.` },
@@ -74,6 +77,7 @@ export function reuseSensor(sensorId: number, { member, clock }: By): Promise<vo
     if (!sensor) throw new AppError('not_found', 'There is no such sensor.')
     if (sensor.retiredAt === null) return
     await sensor.update({ retiredAt: null })
+    await stopBeingDemo(sensor, member)
     await addFoundryEvent(
       { type: 'sensor', id: String(sensorId), name: sensor.name },
       { kind: 'sensor in use again', by: member, at: clock.now(), text: `Sensor ${sensor.name} taken into use again.` },
@@ -86,15 +90,4 @@ async function sensorInUse(sensorId: number): Promise<Sensor> {
   if (!sensor) throw new AppError('not_found', 'There is no such sensor.')
   if (sensor.retiredAt !== null) throw new AppError('conflict', `${sensor.name} is retired.`)
   return sensor
-}
-
-async function requireFreeName(name: string, ownId: number | null): Promise<void> {
-  const other = await Sensor.findOne({ where: { name } })
-  if (!other || other.id === ownId) return
-  refuseField(
-    'name',
-    other.retiredAt === null
-      ? `There is a ${name} already.`
-      : `A retired sensor is called ${name}. Take it into use again, or choose another name.`,
-  )
 }

@@ -1,10 +1,12 @@
 import { moveTree } from '@/lib/commands/move-tree'
 import { openTree } from '@/lib/commands/open-tree'
 import { refuseField } from '@/lib/commands/refuse-field'
+import { retiredBaths } from '@/lib/commands/retired-baths'
 import { addTreeEvent } from '@/lib/commands/tree-event'
 import type { Clock } from '@/lib/core/clock'
 import { newId } from '@/lib/core/ids'
 import { RECESS_FACTOR, SECTION_FACTOR } from '@/lib/drying/need'
+import { isSameName } from '@/lib/format/same-name'
 import type { Actor } from '@/lib/members/actor'
 import type { TreeInput } from '@/lib/trees/tree-input'
 import { Coat, inTransaction, Piece, Place, RecipeVersion, Section, Tree, TreePiece, TreePlace, Work } from '@/models'
@@ -14,7 +16,7 @@ type By = { member: Actor; clock: Clock }
 /**
  * Adds a tree with its pieces, hung at its place.
  *
- * @throws {AppError} conflict with `fields` when the tag was used before or an edition is taken; not_found for recipe or place.
+ * @throws {AppError} conflict with `fields` when the tag was used before, an edition is taken, or recipe, bath or place is not in use.
  */
 export function createTree(input: TreeInput, { member, clock }: By): Promise<{ treeId: string; tag: string }> {
   return inTransaction(async () => {
@@ -59,7 +61,7 @@ export function editTree(treeId: string, input: TreeInput, { member, clock }: By
     const before = Object.fromEntries(Object.keys(columns).map((key) => [key, tree.get(key)]))
     await tree.update({ ...columns, updatedAt: now })
     await moveTree(treeId, placeId, { member, clock })
-    if (coatsOn === 0) await replacePieces(treeId, pieces, { member, now })
+    if (coatsOn === 0) await changePieces(treeId, pieces, { member, now })
     await addTreeEvent(treeId, 'tree edited', { by: member, at: now, text: 'Tree edited.', before, after: columns })
   })
 }
@@ -73,25 +75,47 @@ async function correctNeeds(tree: Tree, { recessClass, spacing }: TreeInput): Pr
   }
 }
 
-/** A tree keeps the version that it stands on, also when its recipe is retired; a retired one is not chosen anew. */
+/** A tree keeps the version that it stands on, also when its recipe is retired; a retired one, or one with a retired bath, is not chosen anew. */
 async function requireRecipeAndPlace(input: TreeInput, standsOn: string | null): Promise<void> {
   const version = await RecipeVersion.findByPk(input.recipeVersionId, { include: { association: 'recipe' } })
   if (!version?.recipe) refuseField('recipeVersionId', 'There is no such recipe.')
-  if (version.id !== standsOn && version.recipe.retiredAt !== null) {
-    refuseField('recipeVersionId', `${version.recipe.name} is retired: choose a recipe in use.`)
+  if (version.id !== standsOn) {
+    if (version.recipe.retiredAt !== null) refuseField('recipeVersionId', `${version.recipe.name} is retired: choose a recipe in use.`)
+    const refusal = await retiredBaths(version.id)
+    if (refusal !== null) refuseField('recipeVersionId', refusal)
   }
   const place = await Place.findByPk(input.placeId)
   if (!place || place.retiredAt !== null) refuseField('placeId', 'There is no such place.')
 }
 
-async function replacePieces(treeId: string, pieces: TreeInput['pieces'], by: { member: Actor; now: number }): Promise<void> {
-  const before = await TreePiece.findAll({ where: { treeId } })
-  await TreePiece.destroy({ where: { treeId } })
-  for (const { pieceId } of before) {
-    const recasts = await Piece.count({ where: { recastOf: pieceId } })
-    if (recasts === 0) await Piece.destroy({ where: { id: pieceId } })
+/** A piece that did not change stays the casting it is: it may have been recast since, and then it could not be made anew. */
+async function changePieces(treeId: string, pieces: TreeInput['pieces'], by: { member: Actor; now: number }): Promise<void> {
+  const rows = await TreePiece.findAll({ where: { treeId } })
+  const former = await Piece.findAll({
+    where: { id: rows.map(({ pieceId }) => pieceId) },
+    include: { association: 'section', include: [{ association: 'work' }] },
+  })
+  const added: [TreeInput['pieces'][number], number][] = []
+  for (const [index, piece] of pieces.entries()) {
+    const same = former.findIndex((candidate) => isSamePiece(candidate, piece))
+    if (same === -1) added.push([piece, index])
+    else former.splice(same, 1)
   }
-  for (const [index, piece] of pieces.entries()) await TreePiece.create({ treeId, pieceId: await addPiece(piece, index, by) })
+  for (const { id } of former) {
+    await TreePiece.destroy({ where: { treeId, pieceId: id } })
+    const recasts = await Piece.count({ where: { recastOf: id } })
+    if (recasts === 0) await Piece.destroy({ where: { id } })
+  }
+  for (const [piece, index] of added) await TreePiece.create({ treeId, pieceId: await addPiece(piece, index, by) })
+}
+
+function isSamePiece({ section, editionNumber, recastOf }: Piece, input: TreeInput['pieces'][number]): boolean {
+  return (
+    isSameName(section?.work?.title ?? '', input.workTitle) &&
+    isSameName(section?.name ?? '', input.sectionName) &&
+    editionNumber === input.editionNumber &&
+    (recastOf !== null) === input.isRecast
+  )
 }
 
 /** One casting of a section; the work and the section are made when they are new. */
@@ -100,16 +124,14 @@ async function addPiece(
   index: number,
   { member, now }: { member: Actor; now: number },
 ): Promise<string> {
-  const [work] = await Work.findOrCreate({
-    where: { title: input.workTitle },
-    defaults: { id: newId(now), title: input.workTitle, isDemo: member.isDemo ?? false, createdAt: now },
-  })
-  const [section] = await Section.findOrCreate({
-    where: { workId: work.id, name: input.sectionName },
-    defaults: { id: newId(now), workId: work.id, name: input.sectionName },
-  })
+  const work =
+    (await Work.findAll()).find(({ title }) => isSameName(title, input.workTitle)) ??
+    (await Work.create({ id: newId(now), title: input.workTitle, isDemo: member.isDemo ?? false, createdAt: now }))
+  const section =
+    (await Section.findAll({ where: { workId: work.id } })).find(({ name }) => isSameName(name, input.sectionName)) ??
+    (await Section.create({ id: newId(now), workId: work.id, name: input.sectionName }))
   const casts = await Piece.findAll({ where: { sectionId: section.id, editionNumber: input.editionNumber }, order: [['createdAt', 'ASC']] })
-  const title = [input.workTitle, input.sectionName].filter(Boolean).join(', ')
+  const title = [work.title, section.name].filter(Boolean).join(', ')
   const field = `pieces.${index}.editionNumber`
   if (work.editionSize !== null && input.editionNumber > work.editionSize) {
     refuseField(field, `${work.title} is an edition of ${work.editionSize}: there is no number ${input.editionNumber}.`)

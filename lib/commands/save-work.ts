@@ -1,5 +1,6 @@
 import { addFoundryEvent } from '@/lib/commands/foundry-event'
 import { refuseField } from '@/lib/commands/refuse-field'
+import { stopBeingDemo } from '@/lib/commands/stop-being-demo'
 import type { Clock } from '@/lib/core/clock'
 import { AppError } from '@/lib/core/errors'
 import { newId } from '@/lib/core/ids'
@@ -108,9 +109,4 @@ async function requireRoom(workId: string, editionSize: number): Promise<void> {
   if (highest !== null && highest > editionSize) {
     refuseField('editionSize', `Number ${highest} was cast already: the edition has at least that many.`)
   }
-}
-
-/** Whoever changes a demo work itself makes it the foundry's own; what is built on it the demo's removal finds by itself. */
-async function stopBeingDemo(work: Work, member: Actor): Promise<void> {
-  if (work.isDemo && !member.isDemo) await work.update({ isDemo: false })
 }

@@ -8,7 +8,8 @@ import { planTree, type PlannedTree } from '@/lib/demo/plan-trees'
 import { seededRandom } from '@/lib/demo/random'
 import { DEMO_CALENDAR, type DemoSetting } from '@/lib/demo/shop'
 import { workHours, type WorkHours } from '@/lib/demo/work-hours'
-import { localDay, pourDeadline } from '@/lib/schedule/shifts'
+import { localDay } from '@/lib/format/local-time'
+import { pourDeadline } from '@/lib/schedule/shifts'
 
 export const DEMO_SEED = 20
 /** Two weeks of readings before the start, and half a day so that the first dips have air around them. */

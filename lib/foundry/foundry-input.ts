@@ -32,7 +32,7 @@ export const foundryInput = (shown: TempUnit) =>
   z
     .strictObject({
       name: z.string().trim().min(1, 'Name the foundry.').max(80, 'A name has at most 80 letters.'),
-      timeZone: z.string().refine(isTimeZone, 'Choose a time zone of the list, such as Europe/London.'),
+      timeZone: z.string().refine(isTimeZone, 'Choose a time zone from the list, such as Europe/London.'),
       altitudeM: typedNumber('Altitude').pipe(
         z
           .number()

@@ -1,5 +1,6 @@
 import { z } from 'zod'
-import { localDay, startOfLocalDay } from '@/lib/schedule/shifts'
+import { localDay } from '@/lib/format/local-time'
+import { startOfLocalDay } from '@/lib/schedule/shifts'
 import { readTag } from '@/lib/trees/read-tag'
 
 /** Kilnward itself, as the member of a filter. */

@@ -16,3 +16,11 @@ export function waitAfterFailuresMs(failures: number): number {
   if (failures < FREE_FAILURES) return 0
   return Math.min(FIRST_WAIT_MS * 2 ** (failures - FREE_FAILURES), LONGEST_WAIT_MS)
 }
+
+/**
+ * Whose tries are counted together at the sign-in: all strangers to one e-mail, and each known device by itself.
+ *
+ * @example signInSubject('ada@foundry.example', null) // => 'member:ada@foundry.example'
+ */
+export const signInSubject = (email: string, device: string | null): string =>
+  device === null ? `member:${email}` : `member:${email}:${device}`

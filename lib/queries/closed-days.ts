@@ -1,6 +1,7 @@
 import type { Clock } from '@/lib/core/clock'
+import { localDay } from '@/lib/format/local-time'
 import { loadFoundry } from '@/lib/queries/load-foundry'
-import { localDay, type ShiftHours } from '@/lib/schedule/shifts'
+import type { ShiftHours } from '@/lib/schedule/shifts'
 import { Closure } from '@/models'
 
 export type ClosureRow = { id: string; name: string; firstDay: string; lastDay: string; isNow: boolean }

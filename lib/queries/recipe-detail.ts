@@ -2,7 +2,7 @@ import { QueryTypes } from 'sequelize'
 import { loadMovingTrees, type RecipeTree } from '@/lib/queries/moving-trees'
 import { loadVersionCoats } from '@/lib/queries/version-coats'
 import type { VersionCoat } from '@/lib/recipes/coat-cells'
-import { Bath, database, Recipe } from '@/models'
+import { Bath, database, Foundry, Recipe } from '@/models'
 
 export type RecipeVersionRow = {
   id: string
@@ -22,6 +22,8 @@ export type RecipeDetail = {
   id: string
   name: string
   isRetired: boolean
+  /** Of the demo, in a foundry that is not the demo itself. */
+  isDemo: boolean
   /** Newest first; a recipe has at least one. */
   versions: RecipeVersionRow[]
 }
@@ -30,7 +32,7 @@ export type RecipeDetail = {
 export async function loadRecipeDetail(recipeId: string): Promise<RecipeDetail | null> {
   const recipe = await Recipe.findByPk(recipeId)
   if (!recipe) return null
-  const [rows, trees] = await Promise.all([
+  const [rows, trees, foundry] = await Promise.all([
     database.query<{
       id: string
       version: number
@@ -40,18 +42,25 @@ export async function loadRecipeDetail(recipeId: string): Promise<RecipeDetail |
       calibratedAt: number | null
       leftTrees: number
     }>(
-      `SELECT v.id, v.version, v.note, m.name AS "by", v.created_at AS at, v.calibrated_at AS calibratedAt,
-              (SELECT count(*) FROM trees t WHERE t.recipe_version_id = v.id AND (t.released_at IS NOT NULL OR t.scrapped_at IS NOT NULL)) AS leftTrees
+      // Counted within the indexes of the versions and of the floor; no tree that has left is read.
+      `WITH open AS MATERIALIZED (
+         SELECT recipe_version_id, count(*) AS trees FROM trees INDEXED BY trees_on_floor
+          WHERE released_at IS NULL AND scrapped_at IS NULL GROUP BY recipe_version_id)
+       SELECT v.id, v.version, v.note, m.name AS "by", v.created_at AS at, v.calibrated_at AS calibratedAt,
+              (SELECT count(*) FROM trees t WHERE t.recipe_version_id = v.id)
+                - coalesce((SELECT o.trees FROM open o WHERE o.recipe_version_id = v.id), 0) AS leftTrees
          FROM recipe_versions v LEFT JOIN members m ON m.id = v.created_by WHERE v.recipe_id = :recipeId ORDER BY v.version DESC`,
       { type: QueryTypes.SELECT, replacements: { recipeId } },
     ),
     loadMovingTrees({ recipeId }),
+    Foundry.findByPk(1),
   ])
   const coats = await loadVersionCoats(rows.map((row) => row.id))
   return {
     id: recipe.id,
     name: recipe.name,
     isRetired: recipe.retiredAt !== null,
+    isDemo: recipe.isDemo && foundry?.isDemo !== true,
     versions: rows.map(({ calibratedAt, ...row }) => ({
       ...row,
       isCalibrated: calibratedAt !== null,

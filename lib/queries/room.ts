@@ -17,6 +17,7 @@ import {
   dryerFor,
   dryingTrees,
   fansLeftOn,
+  placeFactorTonight,
   soonerMs,
   tonightOf,
   treeEffects,
@@ -26,6 +27,7 @@ import {
   type TreeEffect,
 } from '@/lib/room/tonight'
 import { shiftsFrom } from '@/lib/schedule/shifts'
+import { airOf } from '@/lib/trees/spans'
 import { database } from '@/models'
 
 const MOST_BARS = 12
@@ -114,6 +116,7 @@ export async function loadRoomPage({ sensorId, tempUnit, clock }: RoomInput): Pr
       dryer,
       fans,
       sensorOf: (effect) => sensorOf(effect.tree),
+      placeFactorOf: (effect) => placeFactorTonight(effect.tree, context, tonight),
       tonight,
       now,
       timeZone,
@@ -185,20 +188,25 @@ function mondayOf(now: number, timeZone: string): number {
 
 /** Coats that were dipped over since, and those that came dry and wait, of trees that hung in this room's air; newest first. */
 async function driedCoats({ context, trees }: Floor, sensorId: number, since: number): Promise<DriedCoat[]> {
-  const covered = await database.query<DriedCoat>(
-    `SELECT t.tag, c.number AS coatNumber, p.name AS placeName, c.dipped_at AS dippedAt, c.covered_at AS coveredAt,
+  const covered = await database.query<Omit<DriedCoat, 'isDemo'> & { isDemo: number }>(
+    `SELECT t.tag, t.is_demo AND NOT (SELECT is_demo FROM foundry) AS isDemo, c.number AS coatNumber, p.name AS placeName, c.dipped_at AS dippedAt, c.covered_at AS coveredAt,
             c.moisture_ratio_at_redip AS moistureRatio, c.mean_rel_humidity_pct AS meanRelHumidityPct
        FROM coats c JOIN trees t ON t.id = c.tree_id JOIN places p ON p.id = c.place_id
-      WHERE c.withdrawn_at IS NULL AND c.covered_at >= :since AND p.sensor_id = :sensorId
+      WHERE c.withdrawn_at IS NULL AND c.covered_at >= :since
+        -- A place may have had another sensor then, as airOf has it.
+        AND coalesce((SELECT f.sensor_id FROM former_airs f WHERE f.place_id = p.id AND f.until > c.covered_at ORDER BY f.until LIMIT 1),
+                     p.sensor_id) = :sensorId
       ORDER BY c.covered_at DESC LIMIT ${MOST_DRIED + 1}`,
     { type: QueryTypes.SELECT, replacements: { since, sensorId } },
   )
   const waiting = trees.flatMap(({ facts, newest, call }): DriedCoat[] => {
     const place = context.places.get(facts.stays.at(-1)?.placeId ?? '')
-    if (!newest || !call || call.guardReachedAt === null || call.guardReachedAt < since || place?.sensorId !== sensorId) return []
+    if (!newest || !call || !place || call.guardReachedAt === null || call.guardReachedAt < since) return []
+    if (airOf(place, call.guardReachedAt).sensorId !== sensorId) return []
     return [
       {
         tag: facts.tag,
+        isDemo: facts.isDemo,
         coatNumber: newest.number,
         placeName: place.name,
         dippedAt: newest.dippedAt,
@@ -208,5 +216,5 @@ async function driedCoats({ context, trees }: Floor, sensorId: number, since: nu
       },
     ]
   })
-  return [...waiting, ...covered]
+  return [...waiting, ...covered.map((coat) => ({ ...coat, isDemo: coat.isDemo === 1 }))]
 }

@@ -62,8 +62,8 @@ export async function loadTreeDetail({
         WHERE e.tree_id = :treeId ORDER BY e.at DESC, e.id DESC LIMIT 200`,
       tree.id,
     ),
-    select<{ id: string; workTitle: string; sectionName: string; editionNumber: number; isRecast: number }>(
-      `SELECT p.id, w.title AS workTitle, s.name AS sectionName, p.edition_number AS editionNumber, p.recast_of IS NOT NULL AS isRecast
+    select<{ id: string; workId: string; workTitle: string; sectionName: string; editionNumber: number; isRecast: number }>(
+      `SELECT p.id, w.id AS workId, w.title AS workTitle, s.name AS sectionName, p.edition_number AS editionNumber, p.recast_of IS NOT NULL AS isRecast
          FROM tree_pieces tp JOIN pieces p ON p.id = tp.piece_id JOIN sections s ON s.id = p.section_id JOIN works w ON w.id = s.work_id
         WHERE tp.tree_id = :treeId ORDER BY w.title, s.name, p.edition_number`,
       tree.id,
@@ -79,6 +79,7 @@ export async function loadTreeDetail({
   return {
     tree: queueTree(derived, floor.context.places),
     recipe: {
+      id: version.recipeId,
       versionId: version.id,
       name: derived.facts.recipe.name,
       version: version.version,

@@ -14,8 +14,13 @@ export async function loadTreeList({ clock }: At): Promise<TreeListRow[]> {
 
 /** Those that were released to burnout since an instant, newest first, and still are. */
 export async function loadReleasedSince({ since, most }: { since: number; most: number }, { clock }: At): Promise<TreeListRow[]> {
-  const { rows } = await loadGoneTrees({ words: [], page: 1, size: most }, { clock })
-  return rows.filter((tree) => tree.state === 'released' && (tree.stateSince ?? 0) > since)
+  const found = await database.query<{ id: string }>(
+    `SELECT id FROM trees
+      WHERE coalesce(scrapped_at, released_at) > :since AND coalesce(scrapped_at, released_at) IS NOT NULL AND scrapped_at IS NULL
+      ORDER BY coalesce(scrapped_at, released_at) DESC, id DESC LIMIT :most`,
+    { type: QueryTypes.SELECT, replacements: { since, most } },
+  )
+  return inOrder(found, clock)
 }
 
 /**
@@ -28,26 +33,56 @@ export async function loadGoneTrees(
   { words, page, size }: { words: readonly string[]; page: number; size: number },
   { clock }: At,
 ): Promise<{ rows: TreeListRow[]; hasMore: boolean }> {
-  const found = await database.query<{ id: string }>(
+  const found = await findGone({ words, behind: NEWEST, limit: size + 1, offset: (page - 1) * size })
+  return { rows: await inOrder(found.slice(0, size), clock), hasMore: found.length > size }
+}
+
+/** Where a tree stands among those that left: by the instant it left, then its id. */
+export type GoneKey = { leftAt: number; id: string }
+
+/**
+ * The trees that left before the one of a key, as loadGoneTrees orders and finds them. A list that is taken key by key costs the same
+ * for every part, and has each tree once however many leave meanwhile.
+ *
+ * @param behind null for the first part.
+ * @returns the part, and the key that the next one lies behind; null at the end.
+ */
+export async function loadGoneBehind(
+  { words, behind, most }: { words: readonly string[]; behind: GoneKey | null; most: number },
+  { clock }: At,
+): Promise<{ rows: TreeListRow[]; next: GoneKey | null }> {
+  const found = await findGone({ words, behind: behind ?? NEWEST, limit: most + 1, offset: 0 })
+  const part = found.slice(0, most)
+  return { rows: await inOrder(part, clock), next: found.length > most ? (part.at(-1) ?? null) : null }
+}
+
+/** Before every tree. */
+const NEWEST: GoneKey = { leftAt: Number.MAX_SAFE_INTEGER, id: '' }
+
+function findGone(asked: { words: readonly string[]; behind: GoneKey; limit: number; offset: number }): Promise<GoneKey[]> {
+  const { words, behind, limit, offset } = asked
+  return database.query<GoneKey>(
     // The index holds them in this order; without words no more is read than what is skipped and shown.
-    `SELECT t.id FROM trees t
+    `SELECT t.id, coalesce(t.scrapped_at, t.released_at) AS leftAt FROM trees t
       WHERE coalesce(t.scrapped_at, t.released_at) IS NOT NULL
+        AND coalesce(t.scrapped_at, t.released_at) <= :leftAt AND (coalesce(t.scrapped_at, t.released_at) < :leftAt OR t.id < :id)
         AND NOT EXISTS (
           SELECT 1 FROM json_each(:words) w
            WHERE t.tag NOT LIKE w.value ESCAPE '!'
              AND NOT EXISTS (
                SELECT 1 FROM tree_pieces tp JOIN pieces p ON p.id = tp.piece_id JOIN sections s ON s.id = p.section_id JOIN works k ON k.id = s.work_id
                 WHERE tp.tree_id = t.id AND (k.title || ', ' || s.name) LIKE w.value ESCAPE '!'))
-      ORDER BY coalesce(t.scrapped_at, t.released_at) DESC LIMIT :limit OFFSET :offset`,
-    {
-      type: QueryTypes.SELECT,
-      replacements: { words: JSON.stringify(words.map(likePattern)), limit: size + 1, offset: (page - 1) * size },
-    },
+      ORDER BY coalesce(t.scrapped_at, t.released_at) DESC, t.id DESC LIMIT :limit OFFSET :offset`,
+    { type: QueryTypes.SELECT, replacements: { words: JSON.stringify(words.map(likePattern)), ...behind, limit, offset } },
   )
-  const ids = found.slice(0, size).map(({ id }) => id)
-  if (ids.length === 0) return { rows: [], hasMore: false }
+}
+
+async function inOrder(found: readonly { id: string }[], clock: Clock): Promise<TreeListRow[]> {
+  if (found.length === 0) return []
+  const ids = found.map(({ id }) => id)
+  const place = new Map(ids.map((id, index) => [id, index]))
   const rows = await rowsOf({ ids }, clock)
-  return { rows: rows.toSorted((one, other) => ids.indexOf(one.id) - ids.indexOf(other.id)), hasMore: found.length > size }
+  return rows.toSorted((one, other) => (place.get(one.id) ?? 0) - (place.get(other.id) ?? 0))
 }
 
 function likePattern(word: string): string {

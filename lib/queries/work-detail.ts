@@ -4,7 +4,7 @@ import { loadFloor } from '@/lib/queries/floor'
 import { queueTree } from '@/lib/queue/assemble'
 import type { QueueTree } from '@/lib/queue/contract'
 import type { Cast } from '@/lib/works/edition-table'
-import { database, Work } from '@/models'
+import { database, Foundry, Work } from '@/models'
 
 /** A casting with the whole tree that carries it. */
 export type WorkCast = Omit<Cast, 'tree'> & { recastOf: string | null; tree: QueueTree | null }
@@ -13,6 +13,8 @@ export type WorkDetail = {
   id: string
   title: string
   editionSize: number | null
+  /** Of the demo, in a foundry that is not the demo itself. */
+  isDemo: boolean
   /** By name, panel 2 before panel 10. */
   sections: { id: string; name: string }[]
   /** Oldest first. */
@@ -26,7 +28,7 @@ export async function loadWorkDetail({ workId, clock }: { workId: string; clock:
   const work = await Work.findByPk(workId)
   if (!work) return null
   const replacements = { workId }
-  const [sections, rows] = await Promise.all([
+  const [sections, rows, foundry] = await Promise.all([
     database.query<{ id: string; name: string }>('SELECT id, name FROM sections WHERE work_id = :workId', {
       type: QueryTypes.SELECT,
       replacements,
@@ -38,6 +40,7 @@ export async function loadWorkDetail({ workId, clock }: { workId: string; clock:
         WHERE s.work_id = :workId ORDER BY p.created_at, p.id`,
       { type: QueryTypes.SELECT, replacements },
     ),
+    Foundry.findByPk(1),
   ])
   const treeIds = [...new Set(rows.flatMap(({ treeId }) => treeId ?? []))]
   const floor = await loadFloor({ now: clock.now(), trees: { ids: treeIds } })
@@ -46,6 +49,7 @@ export async function loadWorkDetail({ workId, clock }: { workId: string; clock:
     id: work.id,
     title: work.title,
     editionSize: work.editionSize,
+    isDemo: work.isDemo && foundry?.isDemo !== true,
     sections: sections.toSorted((one, other) => one.name.localeCompare(other.name, 'en', { numeric: true })),
     casts: rows.map(({ treeId, ...row }) => ({
       ...row,

@@ -1,10 +1,11 @@
 import { TZDate } from '@date-fns/tz'
 import { wetBulbDepressionK } from '@/lib/drying/room-factor'
 import { DEFAULT_MOISTURE_TARGET } from '@/lib/drying/recipe-defaults'
+import { localDay } from '@/lib/format/local-time'
 import type { Queue, QueueBath, QueueRoom, QueueTree } from '@/lib/queue/contract'
 import type { RoomClimate } from '@/lib/room/climate'
 import { dryingPull } from '@/lib/room/drying-pull'
-import { localDay, nextOpenInstant, type Shift } from '@/lib/schedule/shifts'
+import { nextOpenInstant, type Shift } from '@/lib/schedule/shifts'
 import type { DerivedTree } from '@/lib/trees/derive'
 import type { PlaceFacts } from '@/lib/trees/facts'
 

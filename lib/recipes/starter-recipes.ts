@@ -18,19 +18,19 @@ export type StarterRecipe = { key: StarterKey; name: string; forWhat: string; co
 export const STARTER_RECIPES: readonly StarterRecipe[] = [
   {
     key: 'small',
-    name: 'Small shell, 6 coats',
+    name: 'Small shell',
     forWhat: 'For pieces that one hand holds.',
     coats: startingCoats([FIRST_FACE, SECOND_FACE, MEDIUM, ...times(2, COARSE), SEAL]),
   },
   {
     key: 'usual',
-    name: 'Usual shell, 8 coats',
+    name: 'Usual shell',
     forWhat: 'For most of the work.',
     coats: startingCoats([FIRST_FACE, SECOND_FACE, ...times(2, MEDIUM), ...times(3, COARSE), SEAL]),
   },
   {
     key: 'heavy',
-    name: 'Heavy shell, 10 coats',
+    name: 'Heavy shell',
     forWhat: 'For large, flat or thick pieces.',
     coats: startingCoats([FIRST_FACE, SECOND_FACE, ...times(2, MEDIUM), ...times(5, COARSE), SEAL]),
   },

@@ -22,6 +22,8 @@ export type CoatBar = { tag: string; coatNumber: number; dippedAt: number; likel
 /** A coat that was dipped over in this room's air, or came dry in it and waits. */
 export type DriedCoat = {
   tag: string
+  /** Of a demo tree, in a foundry that is not the demo itself. */
+  isDemo: boolean
   coatNumber: number
   placeName: string
   dippedAt: number

@@ -13,20 +13,23 @@ const LONGEST_NIGHT_MS = 20 * millisecondsInHour
 /**
  * How fast the room dried by day and by night: shifts and the closed times between them that touch [from, to).
  *
- * @param shifts in order, from before `from` to after `to`.
+ * @param shifts in order, all that touch the time; none before the first or behind the last.
  */
 export function shiftSpeeds(
   curve: RoomCurve,
   shifts: readonly Shift[],
   { from, to, now, timeZone }: { from: number; to: number; now: number; timeZone: string },
 ): ShiftSpeed[] {
+  const [first] = shifts
+  const before = first && first.opensAt > from ? [{ name: untilName(first.opensAt, timeZone), from, to: first.opensAt }] : []
   const stretches = shifts.flatMap((shift, index) => {
-    const next = shifts[index + 1]
     const day = { name: `${formatWeekday(shift.opensAt, timeZone)} day`, from: shift.opensAt, to: shift.closesAt }
-    if (!next || next.opensAt <= shift.closesAt) return [day]
-    return [day, { name: closedName(shift.closesAt, next.opensAt, timeZone), from: shift.closesAt, to: next.opensAt }]
+    // Behind the last of them the doors stay closed.
+    const opensAgain = shifts[index + 1]?.opensAt ?? to
+    if (opensAgain <= shift.closesAt) return [day]
+    return [day, { name: closedName(shift.closesAt, opensAgain, timeZone), from: shift.closesAt, to: opensAgain }]
   })
-  return stretches
+  return [...before, ...stretches]
     .filter((stretch) => stretch.to > from && stretch.from < to)
     .map((stretch) => ({
       ...stretch,
@@ -34,6 +37,9 @@ export function shiftSpeeds(
       when: stretch.to <= now ? 'past' : stretch.from >= now ? 'forecast' : 'now',
     }))
 }
+
+/** A closed time of which no beginning is in sight. */
+const untilName = (to: number, timeZone: string) => `closed until ${formatWeekday(to, timeZone)} ${formatClock(to, timeZone)}`
 
 function closedName(from: number, to: number, timeZone: string): string {
   if (to - from <= LONGEST_NIGHT_MS) return `${formatWeekday(from, timeZone)} night`

@@ -1,5 +1,5 @@
 import { millisecondsInMinute } from 'date-fns/constants'
-import { DEFAULT_FLAG_LIMITS } from '@/lib/drying/flags'
+import { chillFlag, DEFAULT_FLAG_LIMITS } from '@/lib/drying/flags'
 import { roomFactor, wetBulbDepressionK } from '@/lib/drying/room-factor'
 import { formatMoment } from '@/lib/format/local-time'
 import { formatKelvin, formatTemperature, oneDecimal, wholeNumber, type TempUnit } from '@/lib/format/units'
@@ -22,6 +22,8 @@ type ThingsInput = {
   /** Places whose fans would help, with what all their trees gain, most first. */
   fans: readonly { fansOn: FansOn; gainMs: number }[]
   sensorOf: (effect: TreeEffect) => number | undefined
+  /** The highest place factor of where a tree hangs, until the next opening. */
+  placeFactorOf: (effect: TreeEffect) => number
   tonight: Tonight
   now: number
   timeZone: string
@@ -85,20 +87,19 @@ function dryRooms(input: ThingsInput): Thing[] {
   return input.rooms.flatMap((room): Thing[] => {
     const wet = nearWax(inRoom(input, room.sensorId)).filter((effect) => !effect.tree.call.isUnknown)
     if (isSilent(room) || room.airTempC === null || room.pull !== 'too dry for face coats' || wet.length === 0) return []
-    const targetPct = mildHumidityPct(room.airTempC, input.pressurePa)
+    const targetPct = mildHumidityPct(room.airTempC, Math.max(...wet.map(input.placeFactorOf)), input.pressurePa)
     if (targetPct === null) return []
     const why = `the wet bulb lies ${formatKelvin(room.wetBulbGapK, input.tempUnit)} under the room and chills the wax of ${tags(wet)}.`
     return [{ title: `Raise the humidity to ${wholeNumber(targetPct)} % RH`, text: `At ${wholeNumber(room.relHumidityPct ?? 0)} % ${why}` }]
   })
 }
 
-/** The lowest humidity, in fives, at which an air of this temperature does a face coat no harm; null where none does. */
-export function mildHumidityPct(airTempC: number, pressurePa: number): number | null {
+/** The lowest humidity, in fives, at which an air of this temperature does a face coat in this place no harm; null where none does. */
+export function mildHumidityPct(airTempC: number, placeFactor: number, pressurePa: number): number | null {
   for (let relHumidityPct = LOWEST_TARGET_PCT; relHumidityPct <= 75; relHumidityPct += 5) {
     const air = { airTempC, relHumidityPct }
-    const isMild =
-      wetBulbDepressionK(air, pressurePa) <= DEFAULT_FLAG_LIMITS.chillWarnK && roomFactor(air, pressurePa) <= DEFAULT_FLAG_LIMITS.chillSpeed
-    if (isMild) return relHumidityPct
+    const chill = { wetBulbDepressionK: wetBulbDepressionK(air, pressurePa), roomFactor: roomFactor(air, pressurePa), placeFactor }
+    if (chillFlag({ coatNumber: 1, ...chill }) === null) return relHumidityPct
   }
   return null
 }

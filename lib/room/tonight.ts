@@ -80,17 +80,28 @@ export function nightHours(climate: RoomClimate, tonight: Tonight, timeZone: str
   })
 }
 
-/** Wax-near and other limits that no advice may break while wax is in the shell: chill for each wet coat, heat for all. */
+/** A wet coat in the air of a place, as far as the limits ask: `airTempAtCoat1C` is what its tree's wax was dipped in. */
+type WetCoat = { coatNumber: number; placeFactor: number; airTempAtCoat1C: number | null }
+
+const wetCoat = (tree: DryingTree, factor: number): WetCoat => ({
+  coatNumber: tree.newest.number,
+  placeFactor: factor,
+  airTempAtCoat1C: tree.facts.coats[0]?.airTempC ?? null,
+})
+
+/** Limits that no advice may break while wax is in the shell: chill of each wet coat, heat of the wax below it. */
 function breaksLimits(
   hour: NightHour,
   air: { relHumidityPct: number; roomFactor: number },
-  wet: readonly { coatNumber: number; placeFactor: number }[],
+  wet: readonly WetCoat[],
   pressurePa: number,
 ): boolean {
-  const depressionK = wetBulbDepressionK({ airTempC: hour.airTempC, relHumidityPct: air.relHumidityPct }, pressurePa)
-  return (
-    heatFlag({ airTempC: hour.airTempC, airTempAtCoat1C: null, hasWax: true }) !== null ||
-    wet.some((coat) => chillFlag({ ...coat, wetBulbDepressionK: depressionK, roomFactor: air.roomFactor }) !== null)
+  const { airTempC } = hour
+  const depressionK = wetBulbDepressionK({ airTempC, relHumidityPct: air.relHumidityPct }, pressurePa)
+  return wet.some(
+    ({ airTempAtCoat1C, ...coat }) =>
+      heatFlag({ airTempC, airTempAtCoat1C, hasWax: true }) !== null ||
+      chillFlag({ ...coat, wetBulbDepressionK: depressionK, roomFactor: air.roomFactor }) !== null,
   )
 }
 
@@ -101,6 +112,10 @@ function highestFactor(context: FloorContext, placeId: string, { from, to }: Ton
 }
 
 const placeIdOf = (tree: DryingTree) => tree.facts.stays.at(-1)?.placeId ?? ''
+
+/** The highest place factor of a tree's own place until the next opening. */
+export const placeFactorTonight = (tree: DryingTree, context: FloorContext, tonight: Tonight): number =>
+  highestFactor(context, placeIdOf(tree), tonight)
 
 /** Face coats are not dried under this. Common practice, no source. */
 export const LOWEST_TARGET_PCT = 45
@@ -125,7 +140,7 @@ export function dryerFor(
   band: { lowRhPct: number; highRhPct: number },
 ): Dryer | null {
   const hours = nightHours(climate, tonight, context.timeZone)
-  const wet = trees.map((tree) => ({ coatNumber: tree.newest.number, placeFactor: highestFactor(context, placeIdOf(tree), tonight) }))
+  const wet = trees.map((tree) => wetCoat(tree, placeFactorTonight(tree, context, tonight)))
   const middle = Math.round((band.lowRhPct + band.highRhPct) / 2 / TARGET_STEP_PCT) * TARGET_STEP_PCT
   const driest = Math.max(LOWEST_TARGET_PCT, middle)
   for (let targetPct = driest; targetPct <= Math.max(driest, band.highRhPct); targetPct += TARGET_STEP_PCT) {
@@ -154,7 +169,7 @@ export function fansLeftOn(context: FloorContext, place: PlaceFacts, trees: read
   const climate = context.climates.get(place.sensorId)
   if (!climate || place.fanHours.length === 0 || place.airSpeedFansOnMps <= place.airSpeedFansOffMps) return null
   const factor = placeFactor(place.airSpeedFansOnMps, context.pressurePa)
-  const wet = trees.map((tree) => ({ coatNumber: tree.newest.number, placeFactor: factor }))
+  const wet = trees.map((tree) => wetCoat(tree, factor))
   const hours = nightHours(climate, tonight, context.timeZone)
   if (hours.length === 0 || hours.some((hour) => breaksLimits(hour, hour, wet, context.pressurePa))) return null
   const spans = context.placeSpans.get(place.id) ?? []
@@ -180,7 +195,7 @@ const WORTHWHILE_SHARE = 1.1
 
 /**
  * The place with the most drying until the next opening, if it beats the tree's own and harms nothing: no chill for the coat,
- * no room whose temperature has swung from that of the dip, no heat.
+ * no room whose temperature has swung from that of the dip or will, no heat.
  */
 export function betterPlace(tree: DryingTree, context: FloorContext, places: readonly PlaceFacts[], tonight: Tonight): Move | null {
   const doseAt = (placeId: string) =>
@@ -201,11 +216,21 @@ export function betterPlace(tree: DryingTree, context: FloorContext, places: rea
 function isSafePlace(tree: DryingTree, place: PlaceFacts, context: FloorContext, tonight: Tonight): boolean {
   const climate = context.climates.get(place.sensorId)
   if (!climate?.newest || climate.isStale) return false
-  const { number, airTempC: atDipC } = tree.newest
-  const isNearWax = number <= 2
-  if (isNearWax && atDipC !== null && Math.abs(climate.newest.airTempC - atDipC) > DEFAULT_FLAG_LIMITS.swingK) return false
-  const wet = [{ coatNumber: number, placeFactor: highestFactor(context, place.id, tonight) }]
-  return !nightHours(climate, tonight, context.timeZone).some((hour) => breaksLimits(hour, hour, wet, context.pressurePa))
+  const hours = nightHours(climate, tonight, context.timeZone)
+  const wet = [wetCoat(tree, highestFactor(context, place.id, tonight))]
+  return (
+    !hours.some((hour) => breaksLimits(hour, hour, wet, context.pressurePa)) &&
+    holdsTemperature(
+      tree.newest,
+      [climate.newest, ...hours].map(({ airTempC }) => airTempC),
+    )
+  )
+}
+
+/** Whether temperatures of a place stay by that of the dip, which coats 1 and 2 ask for; no place is known to where the dip's is not known. */
+function holdsTemperature({ number, airTempC: atDipC }: CoatFacts, tempsC: readonly number[]): boolean {
+  if (number > 2) return true
+  return atDipC !== null && tempsC.every((tempC) => Math.abs(tempC - atDipC) <= DEFAULT_FLAG_LIMITS.swingK)
 }
 
 /** What the night does to one tree: hours lost against the recipe's room, and won back by the dryer where one is proposed. */

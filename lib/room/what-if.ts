@@ -1,6 +1,6 @@
 import type { EstimateAnswer, EstimateFlag } from '@/lib/drying/estimate-contract'
 import { formatDuration } from '@/lib/format/duration'
-import { formatKelvin, formatTemperature, fromSi, oneDecimal, toSi, UNIT_SIGNS, wholeNumber, type TempUnit } from '@/lib/format/units'
+import { formatKelvin, formatTemperature, fromSi, toSi, wholeNumber, type TempUnit } from '@/lib/format/units'
 
 /** What a person may turn in the what-if. Temperature in degC; need in reference hours. */
 export type WhatIf = { airTempC: number; relHumidityPct: number; airSpeedMps: number; referenceHours: number; isFaceCoat: boolean }
@@ -28,9 +28,6 @@ export const shownTemp = (airTempC: number, unit: TempUnit): number => onDial(fr
 
 /** A temperature from its dial. */
 export const dialledTemp = (shown: number, unit: TempUnit): number => Math.round(toSi(shown, unit) * 1000) / 1000
-
-/** The words on a temperature's dial. */
-export const tempWords = (airTempC: number, unit: TempUnit): string => `${oneDecimal(shownTemp(airTempC, unit))}\u00A0${UNIT_SIGNS[unit]}`
 
 export type WhatIfRoom = {
   pressurePa: number

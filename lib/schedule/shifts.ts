@@ -66,11 +66,6 @@ const pad = (value: number) => String(value).padStart(2, '0')
 
 const dayOf = (local: TZDate) => `${local.getFullYear()}-${pad(local.getMonth() + 1)}-${pad(local.getDate())}`
 
-/** The local calendar day of an instant, 'YYYY-MM-DD'. */
-export function localDay(at: number, timeZone: string): string {
-  return dayOf(new TZDate(at, timeZone))
-}
-
 /**
  * The moment by which a shell has to be dried out to be poured on a day: when that day's shift opens, or local midnight on a closed day.
  * Common practice, no source: burnout and the second heat take the morning of the pour.

@@ -57,7 +57,7 @@ export const authOptions: NextAuthOptions = {
           throw new Error(`WAIT:${Math.ceil(refusal.msBeforeNext / 1000)}`)
         })
         const result = await signIn(
-          { ...parsed.data, userAgent: String(request.headers?.['user-agent'] ?? '') },
+          { ...parsed.data, userAgent: String(request.headers?.['user-agent'] ?? ''), device },
           { clock: systemClock },
         ).catch((error: unknown) => {
           log('sign-in.failed', { error: error instanceof Error ? error.stack : String(error) })

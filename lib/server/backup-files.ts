@@ -11,9 +11,13 @@ import { freeBytesOf, sha256OfFile, sizeOf, syncToDisk } from '@/lib/server/disk
 import { storageTrouble } from '@/lib/server/problem'
 
 /** Beside the copies: without it a restored foundry has other push keys, and every device has to turn its notices on again. */
+export const KEPT_SECRETS_FILE = 'kilnward-secrets.json'
+/** The same in the data folder, where the start script makes it. */
 export const SECRETS_FILE = 'secrets.json'
 const UNFINISHED = '.tmp'
-const PROOF = 'proof-'
+const PROOF = 'kilnward-proof-'
+/** Names that only Kilnward gives: the folder may hold other people's files. */
+const LEFTOVER = /^kilnward-(?:[\w-]+\.sqlite\.[\w-]+\.tmp(?:-journal)?|secrets\.json\.tmp|proof-[A-Za-z0-9]{6})$/
 const LEFTOVER_AFTER_MS = 3_600_000
 
 /** A copy could not be made or tried; the message is a sentence for the owner. */
@@ -130,7 +134,7 @@ export async function removeBackupFile(folder: string, fileName: string): Promis
 /** Takes away what a copy or a proof left behind when the program was ended in the middle. */
 export async function sweepBackupFolder(folder: string, now: number): Promise<void> {
   for (const name of await namesIn(folder)) {
-    if (!name.endsWith(UNFINISHED) && !name.startsWith(PROOF)) continue
+    if (!LEFTOVER.test(name)) continue
     const { mtimeMs } = await stat(join(folder, name))
     if (now - mtimeMs > LEFTOVER_AFTER_MS) await removeQuietly(join(folder, name))
   }
@@ -140,8 +144,8 @@ export async function sweepBackupFolder(folder: string, now: number): Promise<vo
 export async function keepSecrets(dataFolder: string, folder: string): Promise<void> {
   const secrets = await readFile(join(dataFolder, SECRETS_FILE), 'utf8').catch(() => null)
   if (secrets === null) return
-  const kept = await readFile(join(folder, SECRETS_FILE), 'utf8').catch(() => null)
-  if (kept !== secrets) await writeWhole(join(folder, SECRETS_FILE), secrets)
+  const kept = await readFile(join(folder, KEPT_SECRETS_FILE), 'utf8').catch(() => null)
+  if (kept !== secrets) await writeWhole(join(folder, KEPT_SECRETS_FILE), secrets)
 }
 
 /**

@@ -10,8 +10,6 @@ export type FormState =
   | { status: 'invalid'; fields: FieldErrors }
   | { status: 'refused'; text: string }
 
-export const IDLE: FormState = { status: 'idle' }
-
 /** A refusal that names the fields it is about, as the API's problem documents do. */
 const refusedFields = z.array(z.object({ path: z.string(), message: z.string() })).min(1)
 

@@ -3,6 +3,7 @@ import { basename, dirname, join } from 'node:path'
 import { databaseFile } from '@/db/connection'
 import { migrate, shippedMigrations } from '@/db/migrator'
 import { examineDatabase, type Examination } from '@/db/snapshot'
+import { formerRecords } from '@/lib/backups/former-records'
 import type { BackupManifest } from '@/lib/backups/manifest'
 import { keepBackups } from '@/lib/commands/keep-backups'
 import { noteRestore } from '@/lib/commands/note-restore'
@@ -10,7 +11,7 @@ import type { Clock } from '@/lib/core/clock'
 import { backupDir, dataDir } from '@/lib/core/env'
 import { log } from '@/lib/core/log'
 import { formatBytes } from '@/lib/format/bytes'
-import { checkBackup, DamagedBackupError, listBackupFiles, readManifest, SECRETS_FILE } from '@/lib/server/backup-files'
+import { checkBackup, DamagedBackupError, listBackupFiles, readManifest, KEPT_SECRETS_FILE, SECRETS_FILE } from '@/lib/server/backup-files'
 import { freeBytesOf, processesWithOpen, sizeOf, syncToDisk } from '@/lib/server/disk'
 
 /** Nothing was changed; the message says why and what to do. */
@@ -101,7 +102,8 @@ export async function restoreBackup(
     if (faults.length > 0 || brokenReferences > 0) throw new Error(faults[0] ?? `${brokenReferences} references lead nowhere.`)
     return { file: target, setAside, counts: found.counts, newestEventAt: found.newestEventAt, migrated, areSecretsRestored }
   } catch (error) {
-    const where = setAside ? ` The records of before lie in ${setAside}, all of them.` : ''
+    await rm(arriving, { force: true }).catch(() => {})
+    const where = setAside === null ? '' : ` ${await formerWords(present, setAside)}`
     throw new Error(`The restore stopped: ${error instanceof Error ? error.message : String(error)}.${where} The backup was not touched.`, {
       cause: error,
     })
@@ -143,9 +145,16 @@ async function moveAll(files: readonly string[], folder: string): Promise<void> 
   await syncToDisk(folder)
 }
 
+async function formerWords(present: readonly string[], aside: string): Promise<string> {
+  const there = await readdir(aside).catch((): string[] => [])
+  const names = present.map((file) => basename(file))
+  const [moved, left] = [names.filter((name) => there.includes(name)), names.filter((name) => !there.includes(name))]
+  return formerRecords({ moved, left, folder: dirname(present[0]!), aside })
+}
+
 /** A data folder that has lost its secrets gets those of the backups; its own are left as they are. */
 async function restoreSecrets(): Promise<boolean> {
-  const [own, kept] = [join(dataDir(), SECRETS_FILE), join(backupDir(), SECRETS_FILE)]
+  const [own, kept] = [join(dataDir(), SECRETS_FILE), join(backupDir(), KEPT_SECRETS_FILE)]
   if ((await sizeOf(own)) > 0 || (await sizeOf(kept)) === 0) return false
   await copyFile(kept, own)
   await chmod(own, 0o600)

@@ -42,7 +42,7 @@ export type CurvePoint = { at: number; likelyPct: number; lowPct: number; highPc
 
 export type TreeDetail = {
   tree: QueueTree
-  recipe: { versionId: string; name: string; version: number; isCalibrated: boolean }
+  recipe: { id: string; versionId: string; name: string; version: number; isCalibrated: boolean }
   waxMassKg: number
   cupKind: CupKind
   cupVolumeL: number
@@ -51,7 +51,7 @@ export type TreeDetail = {
   hungMassKg: number | null
   createdAt: number
   createdBy: string | null
-  pieces: { id: string; workTitle: string; sectionName: string; editionNumber: number; isRecast: boolean }[]
+  pieces: { id: string; workId: string; workTitle: string; sectionName: string; editionNumber: number; isRecast: boolean }[]
   intake: {
     waxSurface: WaxSurface | null
     isWaxAtRoomTemp: boolean

@@ -125,9 +125,13 @@ function dayAfter(day: string, days: number): string {
   return new Date(Date.parse(`${day}T00:00:00Z`) + days * 86_400_000).toISOString().slice(0, 10)
 }
 
-/** One page of a list and how many there are. A page beyond the last gives the last. */
-export function cutPage<Row>(rows: readonly Row[], page: number, size: number): { rows: Row[]; page: number; pages: number } {
+/** One page of a list, how many pages and how many rows there are. A page beyond the last gives the last. */
+export function cutPage<Row>(
+  rows: readonly Row[],
+  page: number,
+  size: number,
+): { rows: Row[]; page: number; pages: number; total: number } {
   const pages = Math.max(1, Math.ceil(rows.length / size))
   const shown = Math.min(page, pages)
-  return { rows: rows.slice((shown - 1) * size, shown * size), page: shown, pages }
+  return { rows: rows.slice((shown - 1) * size, shown * size), page: shown, pages, total: rows.length }
 }

@@ -61,7 +61,7 @@ describe('until the first run is ended', () => {
     const ada = { name: 'Ada', email: 'ada@kilnward.example', password: 'a hare and two otters', setupCode: '', timeZone: 'Europe/Rome' }
     // The command is the server's own; here it runs beside it, on the same records.
     const env = {
-      NEXTAUTH_SECRET: 's'.repeat(40),
+      NEXTAUTH_SECRET: 'what this file alone knows, and long enough',
       NEXTAUTH_URL: server.baseUrl,
       UV_THREADPOOL_SIZE: '16',
       VAPID_SUBJECT: 'mailto:a@b.example',

@@ -10,8 +10,8 @@ const NOT_DOMAIN = /^lib\/(core|commands|queries|server|demo)\//
 const isDomain = (path: string) => path.startsWith('lib/') && !NOT_DOMAIN.test(path)
 const DOMAIN_PACKAGE = /^package:(?:zod|psychrolib|date-fns(?:\/constants)?|@date-fns\/tz)$/
 
-/** Run once by a script of plain Node and not by the worker: they make or restore the records, and tell a person on the terminal. */
-const START_SCRIPTS = ['jobs/seed-demo.ts', 'jobs/demo-sign-ins.ts', 'jobs/restore-records.ts']
+/** Run once from the terminal and not by the worker: they make, restore or mend the records, and tell a person there. */
+const START_SCRIPTS = ['jobs/seed-demo.ts', 'jobs/demo-sign-ins.ts', 'jobs/restore-records.ts', 'jobs/first-password.ts']
 
 /** Inner layers know nothing of outer ones. The first prefix that fits decides; 'domain' is every folder of values and rules in lib/. */
 const LAYERS: readonly (readonly [prefix: string, mayImport: readonly string[]])[] = [

@@ -6,7 +6,7 @@ import { join } from 'node:path'
 import { openPlainHandle } from '@/db/plain-handle'
 import { launchBrowser } from '@/tests/setup/browser'
 import { signIn } from '@/tests/setup/client'
-import { makeBuilds, NEXT } from '@/tests/bench/builds'
+import { makeBuilds } from '@/tests/bench/builds'
 import { ask, median, rate } from '@/tests/bench/load'
 import { pageCost, type PageCost } from '@/tests/bench/pages'
 import { makeRecords, type Bench } from '@/tests/bench/records'
@@ -23,7 +23,7 @@ async function serve(folder: string, dataDir: string) {
   const port = await freePort()
   const baseUrl = `http://127.0.0.1:${port}`
   const env = testEnv(dataDir, { NEXTAUTH_URL: baseUrl })
-  const program = startProgram([NEXT, 'start', '-H', '127.0.0.1', '-p', String(port)], env, folder)
+  const program = startProgram(['node_modules/next/dist/bin/next', 'start', '-H', '127.0.0.1', '-p', String(port)], env, folder)
   for (;;) {
     if (program.process.exitCode !== null) throw new Error(`The server ended:\n${program.output()}`)
     const isUp = await fetch(baseUrl, { redirect: 'manual' }).then(
@@ -58,8 +58,8 @@ async function openDoor(bench: Bench, product: string, signInAs: SignIn): Promis
     queue,
     empty,
     headers,
-    // Another process writes, as the worker does.
-    touch: () => handle.exec('UPDATE foundry SET created_at = created_at'),
+    // Another process writes, as the worker does. A value that stays the same would not be written at all.
+    touch: () => handle.exec('UPDATE foundry SET created_at = created_at + 1'),
     stop: async () => {
       await handle.close()
       await server.stop()

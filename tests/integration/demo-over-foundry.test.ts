@@ -82,7 +82,7 @@ describe('the demo over a foundry of one’s own', () => {
     expect(await loadDemoSignIns()).toEqual([])
     const tryAll = async () => {
       for (const { email, password } of DEMO_SIGN_INS) {
-        expect(await signIn({ email, password, userAgent: '' }, { clock })).toEqual({ outcome: 'refused' })
+        expect(await signIn({ email, password, userAgent: '', device: null }, { clock })).toEqual({ outcome: 'refused' })
       }
     }
     await tryAll()

@@ -50,7 +50,7 @@ describe('a first run', () => {
     expect(member).toMatchObject({ role: 'owner', isDemo: false, disabledAt: null, firstPasswordUntil: null })
     owner = { id: member!.id, name: member!.name, role: 'owner' }
     const { email, password } = visitor(member!.name)
-    expect(await signIn({ email, password, userAgent: '' }, { clock })).toMatchObject({ outcome: 'signed in' })
+    expect(await signIn({ email, password, userAgent: '', device: null }, { clock })).toMatchObject({ outcome: 'signed in' })
     expect((await loadFoundry()).timeZone).toBe('America/Denver')
   })
 
@@ -92,8 +92,8 @@ describe('a first run', () => {
 
   it('takes starter recipes, not calibrated, the seal last, and each once', async () => {
     const by = { member: owner, clock }
-    expect(await takeStarterRecipes(['small', 'heavy'], by)).toEqual(['Small shell, 6 coats', 'Heavy shell, 10 coats'])
-    expect(await takeStarterRecipes(['small', 'usual'], by)).toEqual(['Usual shell, 8 coats'])
+    expect(await takeStarterRecipes(['small', 'heavy'], by)).toEqual(['Small shell', 'Heavy shell'])
+    expect(await takeStarterRecipes(['small', 'usual'], by)).toEqual(['Usual shell'])
     const { recipes } = await loadTreeForm()
     expect(recipes.map(({ coatCount }) => coatCount).toSorted((one, other) => one - other)).toEqual([6, 8, 10])
     expect(recipes.every(({ isCalibrated }) => !isCalibrated)).toBe(true)

@@ -9,7 +9,7 @@ import type { Actor } from '@/lib/members/actor'
 import { loadFloor } from '@/lib/queries/floor'
 import { loadNewerVersions } from '@/lib/queries/newer-versions'
 import { queueTree } from '@/lib/queue/assemble'
-import { Coat, Recipe, RecipeCoat, RecipeVersion, Tree, TreeEvent } from '@/models'
+import { Bath, Coat, Recipe, RecipeCoat, RecipeVersion, Tree, TreeEvent } from '@/models'
 import {
   buildAir,
   buildFoundry,
@@ -34,7 +34,13 @@ beforeAll(async () => {
 
 const by = () => ({ member: ines, clock: stoppedClock() })
 
-type Changes = Partial<{ needReferenceHours: number; moistureTarget: number; guard: 'likely' | 'safe'; longestWaitHours: number }>
+type Changes = Partial<{
+  bathId: string
+  needReferenceHours: number
+  moistureTarget: number
+  guard: 'likely' | 'safe'
+  longestWaitHours: number
+}>
 
 /** The next version of a recipe: the coats of the one before, cut to a length, some of them changed. */
 async function nextVersion(
@@ -169,6 +175,20 @@ describe('moving a tree to a newer version', () => {
     await expect(move(newId(), tree.id)).rejects.toMatchObject({ code: 'not_found' })
     await expect(move(second, newId())).rejects.toMatchObject({ code: 'not_found' })
     expect((await Tree.findByPk(tree.id))!.recipeVersionId).toBe(fourOn)
+  })
+
+  it('is not to a version with a bath that is retired', async () => {
+    const first = await buildRecipe(foundry)
+    const tree = await buildTree(foundry, { recipeVersionId: first })
+    const bath = await Bath.create({ id: newId(), name: 'Old slurry', kind: 'backup', retiredAt: NOW, createdAt: NOW })
+    const second = await nextVersion(first, { count: 4, changes: { 2: { bathId: bath.id } } })
+    const move = () => moveTreesToVersion({ versionId: second, treeIds: [tree.id] }, by())
+    await expect(move()).rejects.toMatchObject({
+      code: 'conflict',
+      message: 'Nothing was moved. Old slurry is retired: take it into use again first.',
+    })
+    await bath.update({ retiredAt: null })
+    expect((await move()).version).toBe(2)
   })
 
   it('is not for a tree that was released', async () => {

@@ -13,6 +13,7 @@ import { loadOwnUnits } from '@/lib/queries/own-units'
 import { ownSessions } from '@/lib/queries/own-sessions'
 import { loadPeople, loadPerson } from '@/lib/queries/people'
 import { sessionMember, type SessionMember } from '@/lib/queries/session-member'
+import { hashPassword } from '@/lib/server/password'
 import { Delivery, Foundry, FoundryEvent, Member, Notice, PushSubscription, Session, SignInWait, TreeWatch } from '@/models'
 import { buildFoundry, buildRecipe, buildTree, type TestFoundry } from '@/tests/factories/shell-room'
 import { seedMember, type SeededMember } from '@/tests/setup/server'
@@ -27,7 +28,7 @@ let owner: SeededMember
 let foundry: TestFoundry
 
 const by = (member: Actor = owner) => ({ member, clock })
-const attempt = (email: string, password: string) => signIn({ email, password, userAgent: 'test' }, { clock })
+const attempt = (email: string, password: string) => signIn({ email, password, userAgent: 'test', device: null }, { clock })
 
 async function enter({ email, password }: Pick<SeededMember, 'email' | 'password'>): Promise<SessionMember> {
   const result = await attempt(email, password)
@@ -130,12 +131,52 @@ describe('a first password', () => {
   })
 })
 
+describe('the way back in', () => {
+  const isOwn = async (id: string) => (await Member.findByPk(id))?.firstPasswordUntil === null
+
+  it('is made by one owner for another, once more too, but two at once leave one with a password of their own', async () => {
+    const other = await person('owner')
+    await renewFirstPassword(other.id, by())
+    await renewFirstPassword(other.id, by())
+    await Member.update({ firstPasswordUntil: null }, { where: { id: other.id } })
+    const outcomes = await Promise.allSettled([renewFirstPassword(other.id, by()), renewFirstPassword(owner.id, by(other))])
+    expect(outcomes.map(({ status }) => status).toSorted()).toEqual(['fulfilled', 'rejected'])
+    expect(await isOwn(owner.id)).not.toBe(await isOwn(other.id))
+  })
+
+  it('is made on the machine itself for a sole owner, and the history says so', async () => {
+    const { firstPassword } = await renewFirstPassword(owner.id, { member: null, clock })
+    expect((await enter({ email: owner.email, password: firstPassword })).mustChangePassword).toBe(true)
+    const event = await FoundryEvent.findOne({ where: { subjectId: owner.id, kind: 'first password made' }, rejectOnEmpty: true })
+    expect(event.memberId).toBeNull()
+    expect(JSON.stringify(event)).toContain('made on the machine itself')
+    expect(JSON.stringify(event)).not.toContain(firstPassword)
+  })
+
+  it('is closed to the people of a demo laid over the foundry, and open to those of a demo foundry', async () => {
+    // The mark is there from the first insert.
+    const demo = { id: newId(), name: 'Dora Demo', email: 'dora@kilnward.example', role: 'owner' as const, isDemo: true }
+    await Member.create({ ...demo, passwordHash: await hashPassword('nobody knows', 16), disabledAt: START, createdAt: START })
+    await expect(enableMember(demo.id, by())).rejects.toThrow(/belongs to the demo data/)
+    await expect(renewFirstPassword(demo.id, by())).rejects.toThrow(/belongs to the demo data/)
+    expect((await Member.findByPk(demo.id))?.disabledAt).toBe(START)
+    await Foundry.update({ isDemo: true }, { where: {} })
+    try {
+      await enableMember(demo.id, by())
+      await renewFirstPassword(demo.id, by())
+    } finally {
+      await Foundry.update({ isDemo: false }, { where: {} })
+    }
+    expect((await Member.findByPk(demo.id))?.disabledAt).toBeNull()
+  })
+})
+
 describe('a change of password', () => {
   it('asks for the present one, and growing waits follow wrong tries', async () => {
     const session = await enter(await person('operator'))
     const change = () => changePassword({ currentPassword: 'not this', newPassword: NEW }, { member: session, clock })
     for (let index = 0; index < 5; index += 1) {
-      await expect(change()).rejects.toMatchObject({ code: 'unprocessable', extra: { fields: [{ path: 'currentPassword' }] } })
+      await expect(change()).rejects.toMatchObject({ code: 'conflict', extra: { fields: [{ path: 'currentPassword' }] } })
     }
     await expect(change()).rejects.toMatchObject({ code: 'too_many_requests', extra: { retryAfterSeconds: 30 } })
     expect(await isIn(session)).toBe(true)
@@ -146,7 +187,7 @@ describe('a change of password', () => {
     const session = await enter(member)
     const change = (newPassword: string) => changePassword({ currentPassword: member.password, newPassword }, { member: session, clock })
     for (const wrong of ['too short', 'password1234', member.name.repeat(2), member.email, member.password]) {
-      await expect(change(wrong), wrong).rejects.toMatchObject({ code: 'unprocessable', extra: { fields: [{ path: 'newPassword' }] } })
+      await expect(change(wrong), wrong).rejects.toMatchObject({ code: 'conflict', extra: { fields: [{ path: 'newPassword' }] } })
     }
     expect(await attempt(member.email, member.password)).toMatchObject({ outcome: 'signed in' })
   })

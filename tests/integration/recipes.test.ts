@@ -13,7 +13,8 @@ import {
   type RecipeVersionInput,
 } from '@/lib/recipes/recipe-input'
 import { Bath, FoundryEvent, Recipe, RecipeCoat, RecipeVersion } from '@/models'
-import { buildFoundry, buildMember, NOW, stoppedClock, type TestFoundry } from '@/tests/factories/shell-room'
+import { buildFoundry, buildMember, buildTree, NOW, stoppedClock, type TestFoundry } from '@/tests/factories/shell-room'
+import { plansOf } from '@/tests/factories/plans'
 
 let foundry: TestFoundry
 let ines: Actor
@@ -205,6 +206,12 @@ describe('a recipe', () => {
     expect(await offered()).toEqual([])
     expect((await loadRecipeList()).find(({ id }) => id === recipeId)).toMatchObject({ isRetired: true, version: 2 })
     await retireRecipe(recipeId, true, by())
+    await Bath.update({ retiredAt: NOW }, { where: { id: foundry.backupBathId } })
+    await expect(retireRecipe(recipeId, false, by())).rejects.toMatchObject({
+      code: 'conflict',
+      message: 'Backup slurry is retired: take it into use again first.',
+    })
+    await Bath.update({ retiredAt: null }, { where: { id: foundry.backupBathId } })
     await retireRecipe(recipeId, false, by())
     expect(await offered()).toHaveLength(1)
     expect((await eventsOf(recipeId)).map(({ kind }) => kind)).toEqual([
@@ -225,5 +232,32 @@ describe('a recipe', () => {
     ])
     expect(detail!.versions[0]!.coats[0]).toMatchObject({ number: 1, bathName: 'Face slurry', isPrewet: false })
     expect(await loadRecipeDetail(newId())).toBeNull()
+  })
+})
+
+describe('what stands on a recipe', () => {
+  it('is counted: open trees on any version, those that left on theirs', async () => {
+    const { recipeId, versionId } = await createRecipe(input(), by())
+    const next = await addRecipeVersion(recipeId, versionInput(), by())
+    const on = (recipeVersionId: string) => buildTree(foundry, { recipeVersionId })
+    const [open, released, scrapped] = [await on(versionId), await on(versionId), await on(versionId)]
+    await on(next.versionId)
+    await released.update({ releasedAt: NOW })
+    await scrapped.update({ releasedAt: NOW - 1, scrappedAt: NOW })
+    expect((await loadRecipeList()).find(({ id }) => id === recipeId)).toMatchObject({ openTrees: 2 })
+    const [newest, first] = (await loadRecipeDetail(recipeId))!.versions
+    expect(newest).toMatchObject({ leftTrees: 0, openTrees: [{ version: 2 }] })
+    expect(first).toMatchObject({ leftTrees: 2, openTrees: [{ tag: open.tag }] })
+  })
+
+  it('is found by the index of the floor, whatever has left', async () => {
+    const { recipeId } = await createRecipe(input(), by())
+    const plans = [...(await plansOf(loadRecipeList)), ...(await plansOf(() => loadRecipeDetail(recipeId)))]
+    const ofTrees = plans.filter(({ sql }) => sql.includes('FROM trees'))
+    expect(ofTrees).toHaveLength(3)
+    for (const { plan } of ofTrees) {
+      expect(plan).toContain('trees_on_floor')
+      expect(plan.replaceAll('COVERING INDEX trees_recipe_version', '')).not.toContain('trees_recipe_version')
+    }
   })
 })

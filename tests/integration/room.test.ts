@@ -9,7 +9,7 @@ import { loadRoomPage } from '@/lib/queries/room'
 import { loadTreeDetail } from '@/lib/queries/tree-detail'
 import { climateRange } from '@/lib/room/climate-csv'
 import { csvText } from '@/lib/server/csv'
-import { DoseHour, Reading, Sensor, TreePlace } from '@/models'
+import { DoseHour, FormerAir, Reading, Sensor, TreePlace } from '@/models'
 import {
   buildAir,
   buildFoundry,
@@ -98,6 +98,34 @@ describe('the Room page', () => {
     expect(await toDo()).not.toContain('Old fan rack')
     await tree.update({ scrappedAt: NOW })
   })
+})
+
+it('the coats that dried here are those of the sensor that the place had then', async () => {
+  const [before, after] = await Promise.all(['Before', 'After'].map((name) => Sensor.create({ name, kind: 'logger', createdAt: NOW })))
+  const place = await buildPlace({ sensorId: after!.id })
+  const air = { placeId: place.id, airSpeedFansOnMps: 1, airSpeedFansOffMps: 1, fanHours: [] }
+  await FormerAir.create({ id: newId(), until: NOW - 2 * HOUR, sensorId: before!.id, ...air })
+  await buildAir(before!.id, NOW - 30 * HOUR, NOW)
+  await buildAir(after!.id, NOW - 30 * HOUR, NOW)
+  const tree = await buildTree(foundry, { placeId: place.id })
+  const dip = (coatNumber: number, hoursAgo: number) =>
+    logDips(dipBody(foundry, [{ treeId: tree.id, coatNumber, placeId: place.id }], DIPS[coatNumber - 1]!(NOW - hoursAgo * HOUR)), {
+      member,
+      clock,
+    })
+  const DIPS = [
+    (dippedAt: number) => ({ dippedAt }),
+    (dippedAt: number) => ({ dippedAt, bathId: foundry.backupBathId, stucco: 'medium' as const }),
+    (dippedAt: number) => ({ dippedAt, bathId: foundry.backupBathId, stucco: 'coarse' as const }),
+  ]
+  await dip(1, 20)
+  await dip(2, 12)
+  await dip(3, 1)
+  const dried = async (sensorId: number) =>
+    (await page(sensorId)).dried.coats.filter((coat) => coat.tag === tree.tag).map((coat) => coat.coatNumber)
+  expect(await dried(before!.id)).toEqual([1])
+  expect(await dried(after!.id)).toEqual([2])
+  await tree.update({ scrappedAt: NOW })
 })
 
 describe('a typed reading', () => {

@@ -2,12 +2,13 @@ import { beforeAll, describe, expect, it } from 'vitest'
 import { dipRunAnswer } from '@/lib/coats/dip-contract'
 import { logDips } from '@/lib/commands/log-dips'
 import { createTree, editTree } from '@/lib/commands/save-tree'
+import { editWork } from '@/lib/commands/save-work'
 import { undoDips } from '@/lib/commands/undo-dips'
 import { newId } from '@/lib/core/ids'
 import type { Actor } from '@/lib/members/actor'
 import { loadFacts } from '@/lib/queries/load-facts'
 import { treeInput, type TreeInput } from '@/lib/trees/tree-input'
-import { Coat, Piece, Tree, TreePiece } from '@/models'
+import { Bath, Coat, Piece, Recipe, RecipeVersion, Section, Tree, TreePiece, Work } from '@/models'
 import {
   buildAir,
   buildFoundry,
@@ -77,7 +78,76 @@ describe('adding a tree', () => {
   })
 })
 
+const piece = (workTitle: string, sectionName: string, editionNumber: number, isRecast = false) => ({
+  workTitle,
+  sectionName,
+  editionNumber,
+  isRecast,
+})
+const pieceIdsOf = async (treeId: string) => (await TreePiece.findAll({ where: { treeId } })).map(({ pieceId }) => pieceId)
+
+describe('the work of a piece', () => {
+  it('is found in whatever capitals, and so is its section: its edition keeps its size', async () => {
+    await createTree(input({ pieces: [piece('The Swimmer', 'Left arm', 1)] }), by())
+    await createTree(input({ pieces: [piece('the swimmer', 'left ARM', 2)] }), by())
+    const works = (await Work.findAll()).filter(({ title }) => title.toLowerCase() === 'the swimmer')
+    expect(works.map(({ title }) => title)).toEqual(['The Swimmer'])
+    expect(await Section.count({ where: { workId: works[0]!.id } })).toBe(1)
+    await editWork(works[0]!.id, { title: 'The Swimmer', editionSize: 2 }, by())
+    await expect(createTree(input({ pieces: [piece('THE SWIMMER', 'Left arm', 3)] }), by())).rejects.toThrow(/edition of 2/)
+    await expect(createTree(input({ pieces: [piece('the swimmer', 'left arm', 1)] }), by())).rejects.toThrow(
+      /Edition 1 of The Swimmer, Left arm/,
+    )
+  })
+})
+
+describe('the recipe of a tree', () => {
+  it('is not one that is retired, nor one with a retired bath, unless the tree stands on it', async () => {
+    const bath = await Bath.create({ id: newId(), name: 'Old slurry', kind: 'backup', createdAt: NOW })
+    const onIt = await buildRecipe({ ...foundry, backupBathId: bath.id })
+    const first = input({ recipeVersionId: onIt })
+    const { treeId } = await createTree(first, by())
+    const other = await createTree(input(), by())
+    await bath.update({ retiredAt: NOW })
+    const refusal = {
+      extra: { fields: [{ path: 'recipeVersionId', message: 'Old slurry is retired: take it into use again first.' }] },
+    }
+    await expect(createTree(input({ recipeVersionId: onIt }), by())).rejects.toMatchObject(refusal)
+    const { tag } = (await Tree.findByPk(other.treeId))!
+    await expect(editTree(other.treeId, input({ tag, recipeVersionId: onIt }), by())).rejects.toMatchObject(refusal)
+    await editTree(treeId, { ...first, waxMassKg: 3 }, by())
+
+    await bath.update({ retiredAt: null })
+    const { recipeId } = (await RecipeVersion.findByPk(onIt))!
+    await Recipe.update({ retiredAt: NOW }, { where: { id: recipeId } })
+    await expect(createTree(input({ recipeVersionId: onIt }), by())).rejects.toThrow(/is retired: choose a recipe in use/)
+    await editTree(treeId, { ...first, waxMassKg: 4 }, by())
+    expect(await Tree.findByPk(treeId)).toMatchObject({ waxMassKg: 4 })
+  })
+})
+
 describe('editing a tree', () => {
+  it('leaves the pieces that did not change, also one that was recast elsewhere', async () => {
+    const first = input({ pieces: [piece('Tide Bell', 'clapper', 1), piece('Tide Bell', 'crown', 1)] })
+    const { treeId } = await createTree(first, by())
+    const before = await pieceIdsOf(treeId)
+    const recast = await createTree(input({ pieces: [piece('Tide Bell', 'clapper', 1, true)] }), by())
+    await editTree(treeId, { ...first, waxMassKg: 5 }, by())
+    expect(await Tree.findByPk(treeId)).toMatchObject({ waxMassKg: 5 })
+    expect((await pieceIdsOf(treeId)).toSorted()).toEqual(before.toSorted())
+
+    // One piece goes, another comes; the recast one stays what it is.
+    await editTree(treeId, { ...first, pieces: [piece('Tide Bell', 'clapper', 1), piece('Tide Bell', 'mouth', 1)] }, by())
+    const after = await pieceIdsOf(treeId)
+    expect(after.filter((id) => before.includes(id))).toHaveLength(1)
+    const [recastId] = await pieceIdsOf(recast.treeId)
+    expect(after).toContain((await Piece.findByPk(recastId))!.recastOf)
+    expect(await Piece.count({ where: { id: before } })).toBe(1)
+    await expect(
+      editTree(treeId, { ...first, pieces: [piece('Tide Bell', 'mouth', 1), piece('Tide Bell', 'clapper', 9, true)] }, by()),
+    ).rejects.toMatchObject({ extra: { fields: [{ path: 'pieces.1.editionNumber' }] } })
+  })
+
   it('keeps its tag, and its recipe once a coat is on', async () => {
     const first = input()
     const { treeId } = await createTree(first, by())

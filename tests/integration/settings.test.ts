@@ -90,7 +90,7 @@ describe('a place', () => {
 
   it('has a name of its own, also among retired ones', async () => {
     const { placeId } = await createPlace(placeInput({ name: 'Rack B' }), by())
-    await expect(createPlace(placeInput({ name: 'Rack B' }), by())).rejects.toMatchObject(fieldRefusal('name', /already/))
+    await expect(createPlace(placeInput({ name: 'rack b' }), by())).rejects.toMatchObject(fieldRefusal('name', /a Rack B already/))
     await retirePlace(placeId, by())
     await expect(createPlace(placeInput({ name: 'Rack B' }), by())).rejects.toMatchObject(fieldRefusal('name', /retired/))
     await changePlace((await createPlace(placeInput({ name: 'Rack C' }), by())).placeId, placeInput({ name: 'Rack C' }), 'now', by())
@@ -243,7 +243,7 @@ describe('a bath', () => {
         after: { name: 'Zircon', kind: 'backup' },
       },
     ])
-    await expect(createBath({ name: 'Zircon', kind: 'face' }, by())).rejects.toMatchObject(fieldRefusal('name', /already/))
+    await expect(createBath({ name: 'ZIRCON', kind: 'face' }, by())).rejects.toMatchObject(fieldRefusal('name', /a Zircon already/))
     await expect(changeBath(newId(), { name: 'X', kind: 'face' }, by())).rejects.toMatchObject({ code: 'not_found' })
   })
 
@@ -300,7 +300,9 @@ describe('a sensor', () => {
     await expect(retireSensor(sensorId, by())).rejects.toMatchObject({ code: 'conflict', message: expect.stringContaining('Loft rail') })
     await retirePlace(placeId, by())
     await retireSensor(sensorId, by())
-    await expect(createSensor({ name: 'Net loft', kind: 'logger' }, by())).rejects.toMatchObject(fieldRefusal('name', /retired/))
+    await expect(createSensor({ name: 'net Loft', kind: 'logger' }, by())).rejects.toMatchObject(
+      fieldRefusal('name', /retired sensor is called Net loft/),
+    )
     await expect(renameSensor(sensorId, { name: 'X' }, by())).rejects.toMatchObject({ code: 'conflict' })
   })
 

@@ -30,7 +30,7 @@ beforeEach(async () => {
   hashed.length = 0
 })
 
-const attempt = (email: string, password: string) => signIn({ email, password, userAgent: 'test' }, { clock })
+const attempt = (email: string, password: string) => signIn({ email, password, userAgent: 'test', device: null }, { clock })
 
 it('a wrong password, an unknown e-mail, a disabled member and a first password that ran out cost the same one hash', async () => {
   await attempt(member.email, 'wrong')

@@ -1,8 +1,11 @@
 import { beforeEach, describe, expect, it } from 'vitest'
+import { forgetMemberTries } from '@/lib/commands/count-try'
 import { endMemberSessions } from '@/lib/commands/end-member-sessions'
 import { endSession } from '@/lib/commands/end-session'
 import { SESSION_MS, signIn } from '@/lib/commands/sign-in'
+import { newId } from '@/lib/core/ids'
 import { SI_UNITS } from '@/lib/format/units'
+import { signInSubject } from '@/lib/members/sign-in-waits'
 import { sessionMember } from '@/lib/queries/session-member'
 import { Member, Session, SignInWait } from '@/models'
 import { seedMember, type SeededMember } from '@/tests/setup/server'
@@ -14,7 +17,8 @@ const clock = { now: () => now }
 let member: SeededMember
 let count = 0
 
-const attempt = (email: string, password: string) => signIn({ email, password, userAgent: 'test' }, { clock })
+const attempt = (email: string, password: string) => signIn({ email, password, userAgent: 'test', device: null }, { clock })
+const attemptFrom = (device: string, password: string) => signIn({ email: member.email, password, userAgent: 'test', device }, { clock })
 const fail = async (times: number, email = member.email) => {
   for (let index = 0; index < times; index += 1) expect(await attempt(email, 'wrong')).toEqual({ outcome: 'refused' })
 }
@@ -80,6 +84,29 @@ describe('waits', () => {
     const results = await Promise.all(Array.from({ length: 40 }, () => attempt(member.email, 'wrong')))
     expect(results.filter(({ outcome }) => outcome === 'refused')).toHaveLength(5)
     expect(results.filter(({ outcome }) => outcome === 'wait')).toHaveLength(35)
+  })
+
+  it('of strangers do not hold for a known device, nor those of one device for another', async () => {
+    await fail(5)
+    expect(await attempt(member.email, member.password)).toMatchObject({ outcome: 'wait' })
+    expect(await attemptFrom('tablet', member.password)).toMatchObject({ outcome: 'signed in' })
+    // The stranger gains nothing by it.
+    expect(await attempt(member.email, 'wrong')).toMatchObject({ outcome: 'wait' })
+    for (let index = 0; index < 5; index += 1) expect(await attemptFrom('tablet', 'wrong')).toEqual({ outcome: 'refused' })
+    expect(await attemptFrom('tablet', member.password)).toEqual({ outcome: 'wait', waitSeconds: 30 })
+    expect(await attemptFrom('phone', member.password)).toMatchObject({ outcome: 'signed in' })
+  })
+
+  it('of one member alone are forgotten with a new password, from wherever they came', async () => {
+    const id = newId()
+    const subjects = (email: string) => [signInSubject(email, null), signInSubject(email, 'tablet'), signInSubject(email, 'phone')]
+    const others = [...subjects('axb@kilnward.example'), ...subjects('a_b@kilnward.example.net'), ...subjects('_@kilnward.example')]
+    for (const subject of [...subjects('a_b@kilnward.example'), `password:${id}`, ...others]) {
+      await SignInWait.create({ subject, failures: 1, lastFailedAt: now, waitUntil: now })
+    }
+    await forgetMemberTries({ id, email: 'a_b@kilnward.example' })
+    const left = (await SignInWait.findAll()).map(({ subject }) => subject)
+    expect(left.toSorted()).toEqual(others.toSorted())
   })
 
   it('live in the records, so that a restart forgives nobody', async () => {

@@ -1,7 +1,7 @@
 import { beforeAll, describe, expect, it } from 'vitest'
-import { loadGoneTrees, loadReleasedSince, loadTreeList } from '@/lib/queries/tree-list'
+import { loadGoneBehind, loadGoneTrees, loadReleasedSince, loadTreeList, type GoneKey } from '@/lib/queries/tree-list'
 import { wordsOf } from '@/lib/trees/tree-view'
-import { database, TreePiece, Work } from '@/models'
+import { database, Tree, TreePiece, Work } from '@/models'
 import { buildFoundry, buildRecipe, buildTree, HOUR, NOW, stoppedClock } from '@/tests/factories/shell-room'
 
 const clock = stoppedClock()
@@ -55,8 +55,62 @@ describe('loadGoneTrees', () => {
   })
 })
 
+describe('loadGoneBehind', () => {
+  const parts = async (most: number, between: (index: number) => Promise<unknown> = async () => null, query = '') => {
+    const found: string[][] = []
+    let behind: GoneKey | null = null
+    do {
+      const part: Awaited<ReturnType<typeof loadGoneBehind>> = await loadGoneBehind({ words: wordsOf(query), behind, most }, { clock })
+      found.push(tags(part.rows))
+      behind = part.next
+      await between(found.length)
+    } while (behind !== null)
+    return found
+  }
+
+  it('gives the same trees in the same order as the pages, part by part', async () => {
+    expect(await parts(3)).toEqual([
+      ['T-1', 'T-2', 'T-3'],
+      ['T-4', 'T-5', 'T-6'],
+    ])
+    expect(await parts(4, undefined, 'work')).toEqual([['T-1', 'T-2', 'T-3', 'T-5'], ['T-6']])
+    expect(await parts(3, undefined, 'nothing of the kind')).toEqual([[]])
+  })
+
+  it('has every tree once, those that left at one instant too', async () => {
+    const trees = await Tree.findAll({ where: { tag: ['T-2', 'T-3', 'T-4'] } })
+    const then = trees.map((tree) => tree.releasedAt)
+    for (const tree of trees) await tree.update({ releasedAt: NOW - 2 * HOUR })
+    expect((await parts(2)).flat().toSorted()).toEqual(['T-1', 'T-2', 'T-3', 'T-4', 'T-5', 'T-6'])
+    for (const [index, tree] of trees.entries()) await tree.update({ releasedAt: then[index]! })
+  })
+
+  it('doubles and skips none when a tree leaves meanwhile', async () => {
+    const leaving = await Tree.findOne({ where: { tag: 'T-8' }, rejectOnEmpty: true })
+    const found = await parts(2, (index) => (index === 1 ? leaving.update({ releasedAt: NOW }) : Promise.resolve()))
+    await leaving.update({ releasedAt: null })
+    expect(found.flat()).toEqual(['T-1', 'T-2', 'T-3', 'T-4', 'T-5', 'T-6'])
+  })
+
+  it('begins behind its key in the index', async () => {
+    const [plan] = await database.query(
+      `EXPLAIN QUERY PLAN SELECT id FROM trees t WHERE coalesce(t.scrapped_at, t.released_at) IS NOT NULL
+          AND coalesce(t.scrapped_at, t.released_at) <= 9 AND (coalesce(t.scrapped_at, t.released_at) < 9 OR t.id < 'a')
+        ORDER BY coalesce(t.scrapped_at, t.released_at) DESC, t.id DESC LIMIT 3`,
+    )
+    expect(JSON.stringify(plan)).toContain('SEARCH t USING INDEX trees_gone (<expr>')
+  })
+})
+
 describe('loadReleasedSince', () => {
   it('leaves out what was scrapped and what is longer ago', async () => {
     expect(tags(await loadReleasedSince({ since: NOW - 3.5 * HOUR, most: 20 }, { clock }))).toEqual(['T-1', 'T-2', 'T-3'])
+  })
+
+  it('loses none to the trees that were scrapped since', async () => {
+    const scrapped = await Tree.findAll({ where: { tag: ['T-1', 'T-2'] } })
+    for (const tree of scrapped) await tree.update({ scrappedAt: NOW })
+    expect(tags(await loadReleasedSince({ since: NOW - 6 * HOUR, most: 2 }, { clock }))).toEqual(['T-3', 'T-4'])
+    for (const tree of scrapped) await tree.update({ scrappedAt: null })
   })
 })

@@ -11,6 +11,7 @@ import { loadWorkList } from '@/lib/queries/work-list'
 import { treeInput } from '@/lib/trees/tree-input'
 import { editionTable } from '@/lib/works/edition-table'
 import { FoundryEvent, RecipeVersion, Section, Work } from '@/models'
+import { plansOf } from '@/tests/factories/plans'
 import { buildFoundry, buildMember, buildRecipe, NOW, stoppedClock, type TestFoundry } from '@/tests/factories/shell-room'
 
 let foundry: TestFoundry
@@ -95,8 +96,33 @@ describe('a work', () => {
       ],
       { pourDate: '2026-10-20' },
     )
-    const row = (await loadWorkList()).find((work) => work.title === workTitle)
-    expect(row).toMatchObject({ sections: ['', 'base'], castCount: 4, openCount: 3, nextPour: '2026-10-20', editionSize: null })
+    const { rows } = await loadWorkList({ query: workTitle, page: 1, size: 50 })
+    expect(rows.find((work) => work.title === workTitle)).toMatchObject({
+      sections: ['', 'base'],
+      castCount: 4,
+      openCount: 3,
+      nextPour: '2026-10-20',
+      editionSize: null,
+    })
+  })
+
+  it('stands on its page of the list, found by title or section', async () => {
+    for (const name of ['Kelp Bowl A', 'Kelp Bowl B', 'Kelp Bowl C']) await treeOf([{ workTitle: name, sectionName: 'rim' }])
+    const list = (page: number, query = 'kelp rim') => loadWorkList({ query, page, size: 2 })
+    const titlesOf = ({ rows }: Awaited<ReturnType<typeof list>>) => rows.map((work) => work.title)
+    const [first, second, beyond] = await Promise.all([list(1), list(2), list(9)])
+    expect(first).toMatchObject({ page: 1, pages: 2, total: await Work.count() })
+    expect(titlesOf(first)).toEqual(['Kelp Bowl A', 'Kelp Bowl B'])
+    expect(second.rows).toMatchObject([{ title: 'Kelp Bowl C', castCount: 1, openCount: 1 }])
+    expect(beyond).toEqual(second)
+    expect(await list(1, 'no such work')).toMatchObject({ rows: [], page: 1, pages: 1 })
+  })
+
+  it('costs the list the pieces of the works that are shown', async () => {
+    const plans = await plansOf(() => loadWorkList({ query: 'kelp', page: 1, size: 2 }))
+    const { plan } = plans.find(({ sql }) => sql.includes('JOIN pieces'))!
+    expect(plan).toContain('pieces_section')
+    expect(plan).not.toMatch(/SCAN (?:s|p|tp|t)\b/)
   })
 
   it('is not there under another address', async () => {

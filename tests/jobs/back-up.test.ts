@@ -1,5 +1,16 @@
-import { existsSync, mkdirSync, readdirSync, readFileSync, rmSync, statSync, truncateSync, utimesSync, writeFileSync } from 'node:fs'
-import { join } from 'node:path'
+import {
+  existsSync,
+  mkdirSync,
+  mkdtempSync,
+  readdirSync,
+  readFileSync,
+  rmSync,
+  statSync,
+  truncateSync,
+  utimesSync,
+  writeFileSync,
+} from 'node:fs'
+import { basename, join } from 'node:path'
 import { QueryTypes } from 'sequelize'
 import { beforeAll, beforeEach, describe, expect, it } from 'vitest'
 import type { Clock } from '@/lib/core/clock'
@@ -24,7 +35,7 @@ const folder = join(dataDir, 'backups')
 let now = NOW
 const clock: Clock = { now: () => now }
 const pass = () => backUp.run({ clock, isStopping: () => false })
-const names = () => (existsSync(folder) ? readdirSync(folder).filter((name) => name !== 'secrets.json') : [])
+const names = () => (existsSync(folder) ? readdirSync(folder).filter((name) => name !== 'kilnward-secrets.json') : [])
 const rows = () => Backup.findAll({ order: ['startedAt'] })
 
 let owner: Awaited<ReturnType<typeof buildMember>>
@@ -80,8 +91,22 @@ describe('the job', () => {
     await pass()
     now += HOUR
     await pass()
-    expect(readFileSync(join(folder, 'secrets.json'), 'utf8')).toBe('{"a":1}')
-    expect(statSync(join(folder, 'secrets.json')).mode & 0o777).toBe(0o600)
+    expect(readFileSync(join(folder, 'kilnward-secrets.json'), 'utf8')).toBe('{"a":1}')
+    expect(statSync(join(folder, 'kilnward-secrets.json')).mode & 0o777).toBe(0o600)
+    rmSync(join(dataDir, 'secrets.json'))
+  })
+
+  it('leaves other people’s files in the folder as they are', async () => {
+    writeFileSync(join(dataDir, 'secrets.json'), '{"a":1}')
+    mkdirSync(join(folder, 'proof-of-purchase'), { recursive: true })
+    mkdirSync(join(folder, 'kilnward-proof-reading'))
+    const others = ['letter.tmp', 'kilnward-notes.tmp', 'kilnward-plan.sqlite', 'secrets.json', 'proof-of-purchase/a.pdf']
+    for (const name of others) writeFileSync(join(folder, name), 'theirs')
+    for (const name of readdirSync(folder)) utimesSync(join(folder, name), NOW / 1000, NOW / 1000)
+    now = NOW + DAY
+    await pass()
+    for (const name of others) expect(readFileSync(join(folder, name), 'utf8')).toBe('theirs')
+    expect(existsSync(join(folder, 'kilnward-proof-reading'))).toBe(true)
     rmSync(join(dataDir, 'secrets.json'))
   })
 })
@@ -115,9 +140,12 @@ describe('a copy that fails', () => {
 
   it('is swept up when the program was ended in the middle', async () => {
     await pass()
-    const leftover = join(folder, 'kilnward-2026-10-13T08-00-00Z-hourly.sqlite.x.tmp')
-    writeFileSync(leftover, 'half')
-    utimesSync(leftover, NOW / 1000, NOW / 1000)
+    const copy = 'kilnward-2026-10-13T08-00-00Z-hourly.sqlite'
+    const leftovers = [`${copy}.${newId(NOW)}.tmp`, `${copy}.${newId(NOW)}.tmp-journal`, `${copy}.json.tmp`, 'kilnward-secrets.json.tmp']
+    for (const name of leftovers) writeFileSync(join(folder, name), 'half')
+    const proof = mkdtempSync(join(folder, 'kilnward-proof-'))
+    writeFileSync(join(proof, 'kilnward.sqlite'), 'half')
+    for (const name of [...leftovers, basename(proof)]) utimesSync(join(folder, name), NOW / 1000, NOW / 1000)
     await Backup.create({ id: newId(NOW), fileName: 'kilnward-2026-10-13T08-00-00Z-hourly.sqlite', kind: 'hourly', startedAt: NOW - HOUR })
     now = NOW + 2 * HOUR
     await keepBackups({ clock })

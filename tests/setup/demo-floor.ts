@@ -202,7 +202,7 @@ export function describeDemoAt(name: string, iso: string): void {
       expect(signIns.map(({ role }) => role).toSorted()).toEqual(['crew', 'operator', 'owner', 'supervisor'])
       for (const { email, password } of signIns) {
         expect(password.length).toBeGreaterThanOrEqual(12)
-        expect(await signIn({ email, password, userAgent: 'test' }, { clock })).toMatchObject({ outcome: 'signed in' })
+        expect(await signIn({ email, password, userAgent: 'test', device: null }, { clock })).toMatchObject({ outcome: 'signed in' })
       }
     })
 

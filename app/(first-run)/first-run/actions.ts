@@ -13,6 +13,7 @@ import { firstOwnerInput } from '@/lib/members/first-owner-input'
 import { STARTER_KEYS } from '@/lib/recipes/starter-recipes'
 import { moveToSession, requireMember, requireNobody } from '@/lib/server/auth'
 import { answerForm, type FormState } from '@/lib/server/form-state'
+import { requireOwnHost } from '@/lib/server/origin'
 import { fieldErrors } from '@/lib/trees/tree-form-values'
 
 /** Makes the owner's account, and signs them in with it. */
@@ -27,8 +28,10 @@ export async function makeFirstOwnerAction(_previous: FormState, form: FormData)
     timeZone: text('timeZone'),
   })
   if (!parsed.success) return { status: 'invalid', fields: fieldErrors(parsed.error) }
-  const userAgent = (await headers()).get('user-agent') ?? ''
+  const sent = await headers()
+  const userAgent = sent.get('user-agent') ?? ''
   return answerForm(async () => {
+    requireOwnHost(sent.get('host'))
     const { memberId, sessionId } = await makeFirstOwner(parsed.data, { userAgent, clock })
     await moveToSession(memberId, sessionId)
     redirect('/first-run')

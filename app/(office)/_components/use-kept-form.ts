@@ -8,7 +8,13 @@ export type KeptForm = {
   state: FormState
   isPending: boolean
   errorOf: (field: string) => string | undefined
-  formProps: { ref: RefObject<HTMLFormElement | null>; onSubmit: (event: FormEvent<HTMLFormElement>) => void; noValidate: true }
+  formProps: {
+    ref: RefObject<HTMLFormElement | null>
+    /** Sent before the page has woken, a form without it would put what was typed, passwords too, into the address. */
+    method: 'post'
+    onSubmit: (event: FormEvent<HTMLFormElement>) => void
+    noValidate: true
+  }
   /** For keys that are not submit keys, such as one that is held. */
   submit: () => void
 }
@@ -46,6 +52,7 @@ export function useKeptForm(action: (previous: FormState, form: FormData) => Pro
     errorOf: (field) => (state.status === 'invalid' ? state.fields[field] : undefined),
     formProps: {
       ref,
+      method: 'post',
       noValidate: true,
       onSubmit: (event) => {
         event.preventDefault()

@@ -1,5 +1,6 @@
 import type { Metadata } from 'next'
 import Link from 'next/link'
+import { DemoMark } from '@/app/_components/demo-mark'
 import { KeyLink } from '@/app/_components/key'
 import { EmptyState } from '@/app/(office)/_components/empty-state'
 import { NOT_CALIBRATED } from '@/app/(office)/_components/due-words'
@@ -77,7 +78,7 @@ function RecipeRows({ recipes }: { recipes: readonly RecipeListRow[] }) {
               {recipe.name}
             </Link>
             <span className="text-soot">
-              version {recipe.version}, {recipe.isCalibrated ? 'calibrated' : NOT_CALIBRATED}
+              {recipe.isDemo && <DemoMark />} version {recipe.version}, {recipe.isCalibrated ? 'calibrated' : NOT_CALIBRATED}
             </span>
           </div>
           <div className="recipe-row-shell">

@@ -42,13 +42,7 @@ export default async function TreesPage({ searchParams }: PageProps<'/trees'>) {
       <KeepFresh />
       <div className="page-head">
         <div className="min-w-0 grow">
-          <h1>
-            {trees.length === 0
-              ? 'No tree on the floor'
-              : trees.length === 1
-                ? '1 tree on the floor'
-                : `${trees.length} trees on the floor`}
-          </h1>
+          <h1>{headline(isFiltered ? (shown?.total ?? null) : null, trees.length)}</h1>
           <p>What asks for a hand first, then what dries, by its time.</p>
         </div>
         <span className="no-print flex flex-wrap gap-2">
@@ -89,6 +83,13 @@ export default async function TreesPage({ searchParams }: PageProps<'/trees'>) {
       <Pager view={{ ...view, page: shown?.page ?? view.page }} pages={shown?.pages ?? null} hasMore={gone?.hasMore ?? false} />
     </>
   )
+}
+
+/** How many stand on the floor, and how many of them are shown; null where all are, or where nobody counts. */
+function headline(shownCount: number | null, floorCount: number): string {
+  if (shownCount !== null) return `${shownCount} of ${floorCount === 1 ? '1 tree' : `${floorCount} trees`} on the floor`
+  if (floorCount === 0) return 'No tree on the floor'
+  return floorCount === 1 ? '1 tree on the floor' : `${floorCount} trees on the floor`
 }
 
 function GroupLink({ word, view, group, count }: { word: string; view: TreeView; group: TreeView['group']; count: number | undefined }) {

@@ -1,22 +1,24 @@
 import type { Metadata } from 'next'
 import Link from 'next/link'
+import { DemoMark } from '@/app/_components/demo-mark'
 import { KeyLink } from '@/app/_components/key'
 import { EmptyState } from '@/app/(office)/_components/empty-state'
 import { formatDay } from '@/lib/format/local-time'
 import { may } from '@/lib/members/roles'
 import { loadWorkList, type WorkListRow } from '@/lib/queries/work-list'
 import { requireMemberPage } from '@/lib/server/auth'
-import { filterWorks } from '@/lib/works/filter-works'
 import '@/app/(office)/works/works.css'
 
 export const metadata: Metadata = { title: 'Works' }
 
+const WORKS_A_PAGE = 50
+
 export default async function WorksPage({ searchParams }: PageProps<'/works'>) {
   const member = await requireMemberPage('see', '/works')
-  const { q } = await searchParams
+  const { q, page: asked } = await searchParams
   const query = (typeof q === 'string' ? q : '').trim().slice(0, 80)
-  const works = await loadWorkList()
-  if (works.length === 0) {
+  const { total, rows, page, pages } = await loadWorkList({ query, page: readPage(asked), size: WORKS_A_PAGE })
+  if (total === 0) {
     return (
       <EmptyState
         title="No work yet"
@@ -35,12 +37,11 @@ export default async function WorksPage({ searchParams }: PageProps<'/works'>) {
       </EmptyState>
     )
   }
-  const rows = filterWorks(works, query)
   return (
     <>
       <div className="page-head">
         <div className="min-w-0 grow">
-          <h1>{works.length === 1 ? '1 work' : `${works.length} works`}</h1>
+          <h1>{total === 1 ? '1 work' : `${total} works`}</h1>
           <p>Open a work to see whether every section of an edition is here, and how far.</p>
         </div>
       </div>
@@ -82,9 +83,30 @@ export default async function WorksPage({ searchParams }: PageProps<'/works'>) {
           </ul>
         </section>
       )}
+      {pages > 1 && (
+        <nav className="pager no-print" aria-label="Pages of the list">
+          {page > 1 && (
+            <KeyLink icon="back" href={pageAddress(query, page - 1)}>
+              Page before
+            </KeyLink>
+          )}
+          <span className="num">
+            Page {page} of {pages}
+          </span>
+          {page < pages && <KeyLink href={pageAddress(query, page + 1)}>Next page</KeyLink>}
+        </nav>
+      )}
     </>
   )
 }
+
+function readPage(asked: string | string[] | undefined): number {
+  const page = Number(asked)
+  return Number.isInteger(page) && page >= 1 ? page : 1
+}
+
+const pageAddress = (query: string, page: number) =>
+  `/works?${new URLSearchParams({ ...(query === '' ? {} : { q: query }), page: String(page) })}`
 
 function WorkRow({ work }: { work: WorkListRow }) {
   const named = work.sections.filter(Boolean)
@@ -96,6 +118,7 @@ function WorkRow({ work }: { work: WorkListRow }) {
           {work.title}
         </Link>
         <span className="text-soot">
+          {work.isDemo && <DemoMark />}{' '}
           {named.length === 0 ? 'cast in one' : named.length === 1 ? named[0] : `${named.length} sections: ${named.join(', ')}`}
         </span>
       </div>

@@ -1,9 +1,10 @@
 import { describe, expect, it } from 'vitest'
+import { roomFactor } from '@/lib/drying/room-factor'
 import type { QueueRoom } from '@/lib/queue/contract'
 import { queueRoom } from '@/lib/queue/assemble'
 import { roomHeadline, roughDuration, treeAdvice } from '@/lib/room/room-words'
 import { mildHumidityPct, thingsToDo } from '@/lib/room/things-to-do'
-import { betterPlace, dryerFor, dryingTrees, fansLeftOn, tonightOf, treeEffects } from '@/lib/room/tonight'
+import { betterPlace, dryerFor, dryingTrees, fansLeftOn, placeFactorTonight, tonightOf, treeEffects } from '@/lib/room/tonight'
 import { shiftsFrom } from '@/lib/schedule/shifts'
 import {
   buildContext,
@@ -67,12 +68,21 @@ function scene({
       ),
     ),
     things: (fans: Parameters<typeof thingsToDo>[0]['fans'] = []) =>
-      thingsToDo({ rooms, effects, dryer, fans, sensorOf: () => 1, tonight, tempUnit: 'degC', pressurePa: 101_325, ...words }).map(
-        (thing) => ({
-          title: plain(thing.title),
-          text: plain(thing.text),
-        }),
-      ),
+      thingsToDo({
+        rooms,
+        effects,
+        dryer,
+        fans,
+        sensorOf: () => 1,
+        placeFactorOf: (effect) => placeFactorTonight(effect.tree, context, tonight),
+        tonight,
+        tempUnit: 'degC',
+        pressurePa: 101_325,
+        ...words,
+      }).map((thing) => ({
+        title: plain(thing.title),
+        text: plain(thing.text),
+      })),
     tonight,
   }
 }
@@ -223,6 +233,7 @@ describe('things to do', () => {
       dryer: null,
       fans: [],
       sensorOf: () => 1,
+      placeFactorOf: () => 1,
       tonight,
       now: NOW,
       timeZone: TIME_ZONE,
@@ -236,9 +247,29 @@ describe('things to do', () => {
 
 describe('a mild humidity for a face coat', () => {
   it('rises with the temperature and is never under 45 %', () => {
-    expect(mildHumidityPct(20, 101_325)).toBe(45)
-    expect(mildHumidityPct(26, 101_325)).toBe(50)
-    expect(mildHumidityPct(32, 101_325)).toBeGreaterThan(50)
+    expect(mildHumidityPct(20, 1, 101_325)).toBe(45)
+    expect(mildHumidityPct(26, 1, 101_325)).toBe(50)
+    expect(mildHumidityPct(32, 1, 101_325)).toBeGreaterThan(50)
+  })
+
+  it.each([1, 1.157, 1.5, 2])('keeps room times place factor within 1.4 at a place factor of %s', (placeFactor) => {
+    const pct = mildHumidityPct(23, placeFactor, 101_325)!
+    const speedAt = (relHumidityPct: number) => placeFactor * roomFactor({ airTempC: 23, relHumidityPct }, 101_325)
+    expect(speedAt(pct)).toBeLessThanOrEqual(1.4)
+    // No damper than it has to be.
+    expect(pct === 45 || speedAt(pct - 5) > 1.4).toBe(true)
+  })
+
+  it('is that of the windiest near-wax tree of the room', () => {
+    const dry: Air = { airTempC: 23, relHumidityPct: 36 }
+    const places = [buildPlaceFacts('Rack'), buildPlaceFacts('Fan rack', { airSpeedFansOnMps: 2.5, airSpeedFansOffMps: 2.5 })]
+    const [calm, windy] = [
+      { coat: 1, airTempAtDipC: 23 },
+      { coat: 2, airTempAtDipC: 23, placeId: 'Fan rack' },
+    ]
+    const title = (trees: TreeSpec[]) => scene({ airAt: () => dry, places, trees }).things()[0]!.title
+    expect(title([calm])).toBe('Raise the humidity to 45 % RH')
+    expect(title([calm, windy])).toBe('Raise the humidity to 55 % RH')
   })
 })
 

@@ -202,6 +202,27 @@ describe('speed by shift', () => {
     for (const { speed } of speeds) expect(speed).toBeCloseTo(1, 2)
   })
 
+  it('goes on to the next opening over a closure longer than the shifts that are looked up', () => {
+    const closures = [{ firstDay: '2026-10-14', lastDay: '2026-11-06' }]
+    const calendar = { ...WEEK, closures }
+    const opening = shiftsFrom(NOW, calendar, TIME_ZONE)[1]!.opensAt
+    expect(opening).toBe(Date.parse('2026-11-09T07:00:00Z'))
+    const before = shiftsFrom(NOW - 4 * 24 * HOUR, calendar, TIME_ZONE)
+    expect(before.at(-1)!.closesAt).toBeLessThan(opening)
+    const speeds = shiftSpeeds(buildRoom(() => RECIPE_AIR).curve, before, { from: NOW - 24 * HOUR, to: opening, ...WHERE })
+    expect(speeds.at(-2)).toMatchObject({ name: 'Tue day', when: 'now' })
+    expect(speeds.at(-1)).toMatchObject({ name: 'closed Tue 17:00 to Mon 07:00', to: opening, when: 'forecast' })
+  })
+
+  it('is that of the closure too, in the middle of a long one', () => {
+    const calendar = { ...WEEK, closures: [{ firstDay: '2026-10-01', lastDay: '2026-11-06' }] }
+    const around = shiftsFrom(NOW - 4 * 24 * HOUR, calendar, TIME_ZONE)
+    const to = around[0]!.opensAt
+    expect(shiftSpeeds(buildRoom(() => RECIPE_AIR).curve, around, { from: NOW - 24 * HOUR, to, ...WHERE })).toMatchObject([
+      { name: 'closed until Mon 07:00', from: NOW - 24 * HOUR, to, when: 'now' },
+    ])
+  })
+
   it('is not known where under half of the time is', () => {
     const { curve } = buildRoom(() => RECIPE_AIR, { days: 1 })
     expect(meanSpeed(curve, NOW - 60 * HOUR, NOW - 56 * HOUR)).toBeNull()

@@ -126,14 +126,20 @@ describe('the dryer', () => {
 
   it('is milder where a face coat would dry too fast', () => {
     const warm: Air = { airTempC: 25.5, relHumidityPct: 75 }
-    expect(dryer(() => warm, { coat: 3 })?.targetPct).toBe(50)
+    expect(dryer(() => warm, { coat: 3, airTempAtDipC: 25.5 })?.targetPct).toBe(50)
     expect(dryer(() => warm, { coat: 1, airTempAtDipC: 25.5 }, { lowRhPct: 40, highRhPct: 55 }, 1.5)?.targetPct).toBe(50)
-    expect(dryer(() => warm, { coat: 3 }, { lowRhPct: 40, highRhPct: 55 }, 1.5)?.targetPct).toBe(50)
+    expect(dryer(() => warm, { coat: 3, airTempAtDipC: 25.5 }, { lowRhPct: 40, highRhPct: 55 }, 1.5)?.targetPct).toBe(50)
     expect(dryer(() => warm, { coat: 1, airTempAtDipC: 25.5 }, BAND, 2)?.targetPct).toBe(55)
   })
 
   it('is not proposed in a room too hot for the wax, which it would heat on', () => {
     expect(dryer(() => ({ airTempC: 26.5, relHumidityPct: 75 }))?.targetPct).toBeUndefined()
+  })
+
+  it('is not proposed in a room more than 3 K above coat 1, which it would heat on', () => {
+    const warm: Air = { airTempC: 24.5, relHumidityPct: 75 }
+    expect(dryer(() => warm, { airTempAtDipC: 21 })?.targetPct).toBeUndefined()
+    expect(dryer(() => warm, { airTempAtDipC: 22 })?.targetPct).toBe(50)
   })
 
   it('keeps every limit, whatever the air and the coat', () => {
@@ -192,8 +198,14 @@ describe('a better place', () => {
   const calm = buildPlaceFacts('Rack', { airSpeedFansOnMps: 0.1, airSpeedFansOffMps: 0.1 })
   const windy = buildPlaceFacts('Fan rack', { airSpeedFansOnMps: 1.5, airSpeedFansOffMps: 1.5 })
   const loft = buildPlaceFacts('Loft', { sensorId: 2, airSpeedFansOnMps: 1.5, airSpeedFansOffMps: 1.5 })
-  const better = (places: (typeof calm)[], spec: Parameters<typeof buildDerived>[1] = {}, loftAir: Air = RECIPE_AIR, silentHours = 0) => {
-    const climates = [buildRoom(() => RECIPE_AIR), buildRoom(() => loftAir, { sensorId: 2, silentHours })]
+  const better = (
+    places: (typeof calm)[],
+    spec: Parameters<typeof buildDerived>[1] = {},
+    loftAir: Air | ((at: number) => Air) = RECIPE_AIR,
+    silentHours = 0,
+  ) => {
+    const loftAirAt = typeof loftAir === 'function' ? loftAir : () => loftAir
+    const climates = [buildRoom(() => RECIPE_AIR), buildRoom(loftAirAt, { sensorId: 2, silentHours })]
     const context = buildContext({ climates, places })
     const [tree] = dryingTrees([buildDerived(context, spec)])
     const move = betterPlace(tree!, context, places, tonightOf(context, true))
@@ -222,8 +234,23 @@ describe('a better place', () => {
     expect(better([calm, loft], { coat: 1 }, { airTempC: 22, relHumidityPct: 42 }).name).toBeNull()
   })
 
-  it('is not one too hot for the wax', () => {
+  it('is not one that will swing in the night, though it holds now', () => {
+    const coldNight = (at: number): Air => ({ airTempC: dampNight(at) === DAMP ? 18 : 21, relHumidityPct: 50 })
+    expect(better([calm, loft], { coat: 2 }, coldNight).name).toBeNull()
+    expect(better([calm, loft], { coat: 3 }, coldNight).name).toBe('Loft')
+    expect(better([calm, loft], { coat: 2 }).name).toBe('Loft')
+  })
+
+  it('is none for a coat close to the wax whose air at the dip is not known', () => {
+    expect(better([calm, loft], { coat: 2, airTempAtDipC: null }).name).toBeNull()
+    expect(better([calm, loft], { coat: 3, airTempAtDipC: null }).name).toBe('Loft')
+  })
+
+  it('is not one too hot for the wax, or more than 3 K above coat 1', () => {
     expect(better([calm, loft], { coat: 3 }, { airTempC: 27, relHumidityPct: 40 }).name).toBeNull()
+    const warm: Air = { airTempC: 24.5, relHumidityPct: 50 }
+    expect(better([calm, loft], { coat: 3, airTempAtDipC: 21 }, warm).name).toBeNull()
+    expect(better([calm, loft], { coat: 3, airTempAtDipC: 22 }, warm).name).toBe('Loft')
   })
 })
 

@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest'
-import { isClosedDay, localDay, nextOpenInstant, pourDeadline, shiftsFrom, startOfLocalDay, type WorkCalendar } from '@/lib/schedule/shifts'
+import { localDay } from '@/lib/format/local-time'
+import { isClosedDay, nextOpenInstant, pourDeadline, shiftsFrom, startOfLocalDay, type WorkCalendar } from '@/lib/schedule/shifts'
 
 const LONDON = 'Europe/London'
 // Monday to Friday 07:00 to 17:00.

@@ -83,7 +83,7 @@ describe('a known tree in its form', () => {
     recessClass: 'closed core' as const,
     spacing: 'open' as const,
     hungMassKg: null,
-    pieces: [{ id: 'x', workTitle: 'Otter Gate', sectionName: 'panel 2', editionNumber: 1, isRecast: false }],
+    pieces: [{ id: 'x', workId: 'w', workTitle: 'Otter Gate', sectionName: 'panel 2', editionNumber: 1, isRecast: false }],
   }
   const stored = formValuesOf(known, 'kg')
 

@@ -66,8 +66,8 @@ describe('viewTrees', () => {
 describe('cutPage', () => {
   it('cuts, and gives the last page for one beyond it', () => {
     const rows = Array.from({ length: 101 }, (_, index) => index)
-    expect(cutPage(rows, 2, 50)).toEqual({ rows: rows.slice(50, 100), page: 2, pages: 3 })
-    expect(cutPage(rows, 9, 50)).toEqual({ rows: [100], page: 3, pages: 3 })
-    expect(cutPage([], 1, 50)).toEqual({ rows: [], page: 1, pages: 1 })
+    expect(cutPage(rows, 2, 50)).toEqual({ rows: rows.slice(50, 100), page: 2, pages: 3, total: 101 })
+    expect(cutPage(rows, 9, 50)).toEqual({ rows: [100], page: 3, pages: 3, total: 101 })
+    expect(cutPage([], 1, 50)).toEqual({ rows: [], page: 1, pages: 1, total: 0 })
   })
 })

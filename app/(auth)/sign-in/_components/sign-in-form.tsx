@@ -55,7 +55,8 @@ export function SignInForm({ goTo, demoSignIns, hasEnded }: { goTo: string; demo
 
   return (
     <>
-      <form className="sign-in-form" onSubmit={submit} noValidate>
+      {/* Sent before the page has woken, a form without a method would put the password into the address. */}
+      <form className="sign-in-form" method="post" onSubmit={submit} noValidate>
         <Field
           label="E-mail"
           name="email"

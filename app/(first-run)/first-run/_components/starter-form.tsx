@@ -76,14 +76,14 @@ function StarterWords({ recipe: { name, coats }, line }: { recipe: StarterRecipe
         isDecoration
       />
       <span>
-        {line} {coatWords(coats)}. <em>Needs {NOT_CALIBRATED}.</em>
+        {line} {coatWords(coats)}. <em>Its hours are {NOT_CALIBRATED}.</em>
       </span>
     </span>
   )
 }
 
-/** '2 face, 3 backup, the seal'. */
+/** '6 coats: 2 face, 3 backup, the seal last'. */
 function coatWords(coats: StarterRecipe['coats']): string {
   const count = (kind: string) => coats.filter((coat) => coat.kind === kind).length
-  return `${count('face')} face coats, ${count('backup')} backup coats, the seal last`
+  return `${coats.length} coats: ${count('face')} face, ${count('backup')} backup, the seal last`
 }

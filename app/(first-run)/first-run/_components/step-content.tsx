@@ -129,7 +129,7 @@ function Recipes({ firstRun: { recipeNames } }: StepProps) {
   return (
     <>
       <Head title="Recipes to begin with">
-        Three shells on your baths. How long their coats need are starting values, marked ‘not calibrated yet’ wherever a time rests on
+        Three recipes for your baths. How long their coats need are starting values, marked ‘not calibrated yet’ wherever a time rests on
         them, until you have checked them against your own first twenty to thirty coats.
       </Head>
       <Plate>

@@ -1,7 +1,6 @@
 import { kilnPath, type PathStand } from '@/lib/burnout/kiln-path'
 import type { PourContext } from '@/lib/burnout/pour-verdict'
-import { localDay } from '@/lib/schedule/shifts'
-import { formatDay } from '@/lib/format/local-time'
+import { formatDay, localDay } from '@/lib/format/local-time'
 import { timePairWords } from '@/lib/format/time-pair'
 import type { QueueTree } from '@/lib/queue/contract'
 

@@ -20,10 +20,12 @@ export const metadata: Metadata = { title: 'Member' }
 export default async function PersonPage({ params }: PageProps<'/people/[memberId]'>) {
   const id = z.uuid().safeParse((await params).memberId)
   const member = await requireMemberPage('people', id.success ? `/people/${id.data}` : '/people')
-  const [{ timeZone }, person] = await Promise.all([loadFoundry(), id.success ? loadPerson(id.data) : null])
+  const [foundry, person] = await Promise.all([loadFoundry(), id.success ? loadPerson(id.data) : null])
   if (person === null) notFound()
+  const { timeZone } = foundry
   const now = systemClock.now()
   const isSelf = person.id === member.id
+  const maySignIn = !person.isDemo || foundry.isDemo
   const lastSignedIn =
     person.lastSignedInAt === null ? 'never signed in' : `last signed in ${formatMoment(person.lastSignedInAt, now, timeZone)}`
   return (
@@ -58,21 +60,25 @@ export default async function PersonPage({ params }: PageProps<'/people/[memberI
           </Plate>
         ) : (
           <>
-            {person.disabledAt === null && (
+            {person.disabledAt === null && maySignIn && (
               <Plate title="Forgotten password" line="signs them out everywhere; the new one is good for a day and for making their own">
                 <RenewForm memberId={person.id} />
               </Plate>
             )}
-            <Plate
-              title={person.disabledAt === null ? 'Shut out' : 'Let in again'}
-              line={
-                person.disabledAt === null
-                  ? 'ends their sessions and their notices at once; what they have done stays under their name'
-                  : 'with the password they had; notices they turn on again themselves'
-              }
-            >
-              <AccessForm memberId={person.id} isDisabled={person.disabledAt !== null} />
-            </Plate>
+            {person.disabledAt === null || maySignIn ? (
+              <Plate
+                title={person.disabledAt === null ? 'Shut out' : 'Let in again'}
+                line={
+                  person.disabledAt === null
+                    ? 'ends their sessions and their notices at once; what they have done stays under their name'
+                    : 'with the password they had; notices they turn on again themselves'
+                }
+              >
+                <AccessForm memberId={person.id} isDisabled={person.disabledAt !== null} />
+              </Plate>
+            ) : (
+              <p className="text-17 text-soot">Belongs to the demo data: nobody signs in as {person.name}.</p>
+            )}
           </>
         )}
       </div>

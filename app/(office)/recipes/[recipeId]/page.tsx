@@ -1,6 +1,7 @@
 import type { Metadata } from 'next'
 import Link from 'next/link'
 import { notFound } from 'next/navigation'
+import { DemoMark } from '@/app/_components/demo-mark'
 import { Icon } from '@/app/_components/icons'
 import { fittedTagHeight, Tag } from '@/app/_components/tag'
 import { NOT_CALIBRATED } from '@/app/(office)/_components/due-words'
@@ -46,7 +47,9 @@ export default async function RecipePage({ params, searchParams }: PageProps<'/r
     <article className="recipe-page">
       <div className="page-head">
         <div className="min-w-0 grow">
-          <h1 className="[overflow-wrap:anywhere]">{recipe.name}</h1>
+          <h1 className="[overflow-wrap:anywhere]">
+            {recipe.name} {recipe.isDemo && <DemoMark />}
+          </h1>
           <p>
             Version {shown.version}
             {shown === newest ? ', the newest' : ` of ${newest.version}`} · {shown.isCalibrated ? 'calibrated' : NOT_CALIBRATED} · made{' '}

@@ -1,4 +1,5 @@
 import Link from 'next/link'
+import { DemoMark } from '@/app/_components/demo-mark'
 import { Fold } from '@/app/(office)/room/_components/fold'
 import { formatDuration } from '@/lib/format/duration'
 import { formatDate, formatMoment } from '@/lib/format/local-time'
@@ -43,7 +44,7 @@ export function DriedFold({ page }: { page: RoomPage }) {
                     <Link href={`/trees/${encodeURIComponent(coat.tag)}`} prefetch={false}>
                       {coat.tag}
                     </Link>{' '}
-                    coat {coat.coatNumber}
+                    coat {coat.coatNumber} {coat.isDemo && <DemoMark />}
                   </th>
                   <td>{coat.placeName}</td>
                   <td className="whitespace-nowrap">{formatMoment(coat.dippedAt, now, timeZone)}</td>

@@ -1,4 +1,5 @@
 import Link from 'next/link'
+import { DemoMark } from '@/app/_components/demo-mark'
 import { fittedTagHeight, Tag } from '@/app/_components/tag'
 import { TimePair } from '@/app/_components/time-pair'
 import { TreeSection } from '@/app/(office)/_components/tree-section'
@@ -49,7 +50,8 @@ export function EffectTable({
             <th role="rowheader" scope="row" className="c-piece">
               <Link className="row-link" href={`/trees/${encodeURIComponent(row.tree.tag)}`} prefetch={false}>
                 {row.tree.title}
-              </Link>
+              </Link>{' '}
+              {row.tree.isDemo && <DemoMark />}
               <span className="block text-14 font-normal text-soot">{row.tree.place.name}</span>
             </th>
             <td role="cell" className="c-shell">

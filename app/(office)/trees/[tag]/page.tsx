@@ -150,8 +150,8 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
             {tree.title} {tree.isDemo && <DemoMark />}
           </h1>
           <p className="tree-facts">
+            Recipe <RecipeLink recipe={recipe}>{recipe.name}</RecipeLink> ·{' '}
             {[
-              `Recipe ${recipe.name}`,
               `treed ${formatDate(detail.createdAt, timeZone)}${detail.createdBy === null ? '' : ` by ${detail.createdBy}`}`,
               `${typedWords(detail.waxMassKg, member.units.mass)} wax`,
               tree.place.name,
@@ -413,14 +413,36 @@ function IntakeLines({ intake }: { intake: Detail['intake'] }) {
   )
 }
 
+/** To the very version that the tree stands on, which may not be the newest. */
+function RecipeLink({ recipe, children }: { recipe: Detail['recipe']; children: ReactNode }) {
+  return (
+    <Link className="underline underline-offset-4" href={`/recipes/${recipe.id}?version=${recipe.version}`} prefetch={false}>
+      {children}
+    </Link>
+  )
+}
+
 function About({ detail, massUnit, now, timeZone }: { detail: Detail; massUnit: MassUnit; now: number; timeZone: string }) {
   const { intake } = detail
   const facts: [string, ReactNode][] = [
     ...detail.pieces.map((piece, index): [string, ReactNode] => [
       detail.pieces.length === 1 ? 'Piece' : `Piece ${index + 1}`,
-      `${piece.workTitle}${piece.sectionName === '' ? '' : `, ${piece.sectionName}`}, edition ${piece.editionNumber}${piece.isRecast ? ', recast' : ''}`,
+      <>
+        <Link className="underline underline-offset-4" href={`/works/${piece.workId}`} prefetch={false}>
+          {piece.workTitle}
+        </Link>
+        {`${piece.sectionName === '' ? '' : `, ${piece.sectionName}`}, edition ${piece.editionNumber}${piece.isRecast ? ', recast' : ''}`}
+      </>,
     ]),
-    ['Recipe', `${detail.recipe.name}, version ${detail.recipe.version}${detail.recipe.isCalibrated ? '' : `, ${NOT_CALIBRATED}`}`],
+    [
+      'Recipe',
+      <>
+        <RecipeLink recipe={detail.recipe}>
+          {detail.recipe.name}, version {detail.recipe.version}
+        </RecipeLink>
+        {detail.recipe.isCalibrated ? '' : `, ${NOT_CALIBRATED}`}
+      </>,
+    ],
     ['Treed', `${formatDate(detail.createdAt, timeZone)}${detail.createdBy === null ? '' : ` by ${detail.createdBy}`}`],
     ['Place', detail.tree.place.name],
     ['Pour date', detail.tree.pourDate === null ? 'none set' : formatDay(detail.tree.pourDate)],

@@ -17,12 +17,21 @@ const SORT_WORDS: Record<TreeSort, string> = {
 
 const show = (event: ChangeEvent<HTMLSelectElement>) => event.currentTarget.form?.requestSubmit()
 
+/** Keeps the address to what differs from the plain list. */
+function leaveOutPlain({ formData }: FormDataEvent): void {
+  const plain = [...formData].filter(([name, value]) => value === '' || (name === 'sort' && value === 'due'))
+  for (const [name] of plain) formData.delete(name)
+}
+
 /** Finds, filters and sorts the list; all of it goes into the address bar, so that a view can be kept, sent and gone back to. */
 export function TreeFilter({ view, recipes, places }: { view: TreeView; recipes: readonly string[]; places: readonly string[] }) {
   const find = useRef<HTMLInputElement>(null)
   useEffect(() => {
     // Where '/' led here from a page without a field to find in.
     if (location.hash === '#find-tree') find.current?.focus()
+    const form = find.current?.form
+    form?.addEventListener('formdata', leaveOutPlain)
+    return () => form?.removeEventListener('formdata', leaveOutPlain)
   }, [])
   const isGone = view.group === 'gone'
   return (

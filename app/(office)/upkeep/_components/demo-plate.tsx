@@ -53,7 +53,7 @@ const LINES: Record<DemoStanding, string> = {
 
 const WORDS: Record<DemoStanding, string> = {
   none: 'Invented people, trees, places and two weeks of air, to see how a full floor looks. Its people cannot sign in, everything of it is marked ‘Demo’, and it goes away again in one step.',
-  'has trees': 'Demo data is only for a floor without trees. Yours has some.',
+  'has trees': 'Demo data is only for a foundry that never had a tree. Yours has, if only a scrapped one.',
   'laid over':
     'Removing it takes every row that it brought, and what was done on it. Your own rows stay as they are; what of the demo your own trees stand on stays too, without its mark, and is named.',
   'all demo':

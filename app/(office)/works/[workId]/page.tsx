@@ -1,5 +1,6 @@
 import type { Metadata } from 'next'
 import { notFound } from 'next/navigation'
+import { DemoMark } from '@/app/_components/demo-mark'
 import { StateMark } from '@/app/_components/state-mark'
 import { fittedTagHeight, Tag } from '@/app/_components/tag'
 import { KeepFresh } from '@/app/(office)/_components/keep-fresh'
@@ -31,7 +32,9 @@ export default async function WorkPage({ params }: PageProps<'/works/[workId]'>)
       <KeepFresh />
       <div className="page-head">
         <div className="min-w-0 grow">
-          <h1 className="[overflow-wrap:anywhere]">{work.title}</h1>
+          <h1 className="[overflow-wrap:anywhere]">
+            {work.title} {work.isDemo && <DemoMark />}
+          </h1>
           <p>
             {[
               work.sections.length === 1 ? sectionWord(work.sections[0]?.name ?? '') : `${work.sections.length} sections`,

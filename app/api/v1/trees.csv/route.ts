@@ -1,7 +1,7 @@
 import { memberRoute } from '@/lib/server/api'
 import { csvResponse } from '@/lib/server/csv'
 import { loadFoundry } from '@/lib/queries/load-foundry'
-import { loadGoneTrees, loadTreeList } from '@/lib/queries/tree-list'
+import { loadGoneBehind, loadTreeList, type GoneKey } from '@/lib/queries/tree-list'
 import { localDay } from '@/lib/format/local-time'
 import { treeColumns } from '@/lib/trees/tree-columns'
 import { readTreeView, viewTrees, wordsOf } from '@/lib/trees/tree-view'
@@ -16,9 +16,12 @@ export const GET = memberRoute('see', async ({ request, clock }) => {
   const columns = treeColumns(timeZone)
   const fileName = `trees-${localDay(context.now, timeZone)}.csv`
   if (view.group === 'gone') {
+    let behind: GoneKey | null = null
     return csvResponse(fileName, columns, async (index) => {
-      const { rows } = await loadGoneTrees({ words: wordsOf(view.query), page: index + 1, size: ROWS_A_PART }, { clock })
-      return rows
+      if (index > 0 && behind === null) return []
+      const part = await loadGoneBehind({ words: wordsOf(view.query), behind, most: ROWS_A_PART }, { clock })
+      behind = part.next
+      return part.rows
     })
   }
   const trees = viewTrees(await loadTreeList({ clock }), view, context)

@@ -29,7 +29,7 @@ export function BathForm({ bath, proposal, onDone }: BathFormProps) {
           label="Name"
           defaultValue={bath?.name ?? proposal?.name ?? ''}
           error={form.errorOf('name')}
-          hint="As it is called over the room: Face slurry."
+          hint="As it is called over the room."
           maxLength={40}
           autoComplete="off"
         />

@@ -85,7 +85,12 @@ function PlaceWords({ place }: { place: PlaceRow }) {
       </div>
       <div>
         <dt>Fans run</dt>
-        <dd>{weekWords(fans, 'never')}</dd>
+        <dd>
+          {weekWords(fans, 'never')}
+          {fans.length === 0 && place.airSpeedFansOnMps !== place.airSpeedFansOffMps && (
+            <>, so the {place.airSpeedFansOnMps} m/s with the fans on are not used: give them hours if they run.</>
+          )}
+        </dd>
       </div>
       <div>
         <dt>Hanging now</dt>
