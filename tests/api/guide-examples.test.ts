@@ -44,6 +44,7 @@ function untilAnswer(command: string, args: string[]): Promise<string> {
   return new Promise((resolve, reject) => {
     const child = spawn(command, args, { cwd: folder, detached: true })
     let text = ''
+    let isAnswered = false
     const end = () => {
       if (child.pid) process.kill(-child.pid, 'SIGKILL')
     }
@@ -55,7 +56,8 @@ function untilAnswer(command: string, args: string[]): Promise<string> {
     for (const stream of [child.stdout, child.stderr]) {
       stream.on('data', (chunk: Buffer) => {
         text += chunk.toString()
-        if (!/accepted|not sent|curl:/.test(text)) return
+        if (isAnswered || !/accepted|not sent|curl:/.test(text)) return
+        isAnswered = true
         clearTimeout(timer)
         // The shell empties its file after the answer.
         setTimeout(() => {
