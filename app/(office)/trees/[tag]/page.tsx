@@ -1,7 +1,6 @@
 import type { Metadata } from 'next'
 import Link from 'next/link'
 import { notFound } from 'next/navigation'
-import type { ReactNode } from 'react'
 import { DemoMark } from '@/app/_components/demo-mark'
 import { Icon } from '@/app/_components/icons'
 import { LiveClock } from '@/app/_components/live-clock'
@@ -10,30 +9,32 @@ import { StateGlyph } from '@/app/_components/state-mark'
 import { Tag } from '@/app/_components/tag'
 import { TellMeKey } from '@/app/_components/tell-me-key'
 import { TimePair } from '@/app/_components/time-pair'
-import { Caution } from '@/app/(office)/_components/caution'
 import { NOT_CALIBRATED } from '@/app/(office)/_components/due-words'
 import { KeepFresh } from '@/app/(office)/_components/keep-fresh'
 import { TreeSection } from '@/app/(office)/_components/tree-section'
 import { WarningList } from '@/app/(office)/_components/warning-list'
 import { withdrawReleaseAction } from '@/app/(office)/burnout/actions'
-import { liftHoldAction } from '@/app/(office)/trees/[tag]/actions'
+import { About, RecipeLink } from '@/app/(office)/trees/[tag]/_components/about'
 import { BigSection } from '@/app/(office)/trees/[tag]/_components/big-section'
 import { CoatLog } from '@/app/(office)/trees/[tag]/_components/coat-log'
 import { DryingCharts } from '@/app/(office)/trees/[tag]/_components/drying-charts'
 import { History } from '@/app/(office)/trees/[tag]/_components/history'
+import { Holds } from '@/app/(office)/trees/[tag]/_components/holds'
 import { IntakeForm } from '@/app/(office)/trees/[tag]/_components/intake-form'
+import { IntakeLines } from '@/app/(office)/trees/[tag]/_components/intake-lines'
 import { LookKeys } from '@/app/(office)/trees/[tag]/_components/look-keys'
-import { LookOverForm } from '@/app/(office)/trees/[tag]/_components/look-over-form'
+import { LookOvers } from '@/app/(office)/trees/[tag]/_components/look-overs'
+import { Outlook } from '@/app/(office)/trees/[tag]/_components/outlook'
 import { PhonePair } from '@/app/(office)/trees/[tag]/_components/phone-pair'
 import { ReasonForm } from '@/app/(office)/_components/reason-form'
 import { TakeBack } from '@/app/(office)/trees/[tag]/_components/take-back'
 import { TreeActs } from '@/app/(office)/trees/[tag]/_components/tree-acts'
-import { pourSentence, pourVerdict } from '@/lib/burnout/pour-verdict'
+import { pourVerdict } from '@/lib/burnout/pour-verdict'
 import { systemClock } from '@/lib/core/clock'
 import { stateTone } from '@/lib/format/state-words'
 import { formatDate, formatDay, formatMoment } from '@/lib/format/local-time'
 import { typedWords } from '@/lib/format/typed-units'
-import { formatSeconds, formatShare, type MassUnit } from '@/lib/format/units'
+import { formatSeconds, formatShare } from '@/lib/format/units'
 import { may } from '@/lib/members/roles'
 import { loadFoundry } from '@/lib/queries/load-foundry'
 import { loadNewerVersions } from '@/lib/queries/newer-versions'
@@ -99,30 +100,6 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
         {isDryNow ? ', by the clock' : ''}
         {tree.isUncalibrated && <span className="text-soot"> ({NOT_CALIBRATED})</span>}.{' '}
       </>
-    ) : null
-  const outlook =
-    tree.driedOut !== null || pour !== null ? (
-      <p className="outlook">
-        {tree.driedOut !== null && tree.next !== null && (
-          <>
-            Dried out{' '}
-            {tree.driedOut.likelyAt === null ? (
-              'further off than the forecast'
-            ) : (
-              <>
-                <TimePair pair={tree.driedOut} now={now} timeZone={timeZone} />
-                {tree.isUncalibrated && <span> ({NOT_CALIBRATED})</span>}
-              </>
-            )}
-            {pour === null || tree.pourDate === null ? '.' : ': '}
-          </>
-        )}
-        {pour !== null && tree.pourDate !== null && (
-          <span className={pour === 'will miss' || pour === 'passed' ? 'text-furnace-ink' : pour === 'tight' ? 'text-ochre-ink' : ''}>
-            {pour !== 'holds' && pour !== 'not in sight' && <Icon name="warning" />} {sentence(pourSentence(pour, tree.pourDate), tree)}.
-          </span>
-        )}
-      </p>
     ) : null
   const takeBack = detail.takeBack !== null && newestRow !== undefined && (
     <TakeBack key={detail.takeBack.coatId} takeBack={detail.takeBack} coatNumber={newestRow.number} now={now} />
@@ -228,7 +205,7 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
         <WarningList warnings={tree.warnings.filter((warning) => !SAID_ELSEWHERE.has(warning.code))} />
         <BigSection detail={detail} {...moment} />
         <div className="verdict-foot">
-          {outlook}
+          <Outlook tree={tree} pour={pour} {...moment} />
           {takeBack}
         </div>
       </section>
@@ -300,80 +277,8 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
           </Plate>
         </div>
         <div className="tree-column">
-          <section className="plate" id="look-over">
-            <header>
-              <h2>Look-overs</h2>
-              <p>{lookOvers.length === 0 ? 'none yet' : lookOvers.length}</p>
-            </header>
-            {lookOvers.length > 0 && (
-              <ul className="notes">
-                {lookOvers
-                  .toSorted((left, right) => right.at - left.at)
-                  .map((look) => (
-                    <li key={look.id}>
-                      <Icon name="check" className="text-verdigris-ink" />
-                      <div>
-                        <b>{look.note === '' ? 'Nothing to note' : look.note}</b>
-                        <span>
-                          Looked over at coat {look.coatNumber}. {look.by}, {formatMoment(look.at, now, timeZone)}.
-                        </span>
-                      </div>
-                    </li>
-                  ))}
-              </ul>
-            )}
-            {!hasLeft && tree.next !== null && (
-              <p className="plate-body text-soot">Looked over when the last coat is on. A fault before that is a reason to hold.</p>
-            )}
-            {!hasLeft && tree.next === null && tree.newestCoat !== null && canDo('look over') && (
-              <div className="plate-body grid gap-3">
-                <LookOverForm
-                  treeId={tree.id}
-                  isDue={tree.state === 'dried out'}
-                  warning={
-                    tree.state === 'dried out' || tree.state === 'ready for burnout' || tree.state === 'held'
-                      ? null
-                      : 'Not dried out yet by the clock: what is wet hides cracks. Look again when it is dry.'
-                  }
-                />
-                <Caution about="dust" />
-              </div>
-            )}
-          </section>
-          <section className="plate">
-            <header>
-              <h2>Holds</h2>
-              <p>{holds.length === 0 ? 'none' : openHold === null ? `${holds.length}, lifted` : 'held now'}</p>
-            </header>
-            {holds.length > 0 && (
-              <ul className="notes">
-                {holds
-                  .toSorted((left, right) => right.at - left.at)
-                  .map((hold) => (
-                    <li key={hold.id}>
-                      <Icon name="hold" className={hold.liftedAt === null ? 'text-furnace-ink' : 'text-soot'} />
-                      <div>
-                        <b>{hold.reason}</b>
-                        <span>
-                          Held by {hold.by}, {formatMoment(hold.at, now, timeZone)}.
-                          {hold.liftedAt !== null &&
-                            ` Lifted by ${hold.liftedBy ?? 'somebody'}, ${formatMoment(hold.liftedAt, now, timeZone)}: ${hold.liftReason ?? ''}`}
-                        </span>
-                      </div>
-                    </li>
-                  ))}
-              </ul>
-            )}
-            {openHold !== null && (
-              <div className="plate-body">
-                {canDo('lift hold') ? (
-                  <ReasonForm action={liftHoldAction.bind(null, tree.id)} label="Why the hold is lifted" confirm="Lift the hold" />
-                ) : (
-                  <p className="text-soot">A supervisor lifts holds.</p>
-                )}
-              </div>
-            )}
-          </section>
+          <LookOvers detail={detail} mayLookOver={canDo('look over')} {...moment} />
+          <Holds treeId={tree.id} holds={holds} mayLift={canDo('lift hold')} {...moment} />
           <section className="plate">
             <header>
               <h2>History</h2>
@@ -383,89 +288,5 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
         </div>
       </div>
     </article>
-  )
-}
-
-function sentence(words: string, tree: { driedOut: unknown; next: unknown }): string {
-  // After the pair the verdict is the second half of a sentence; alone it begins one.
-  return tree.driedOut !== null && tree.next !== null ? words : words.charAt(0).toUpperCase() + words.slice(1)
-}
-
-type Detail = NonNullable<Awaited<ReturnType<typeof loadTreeDetail>>>
-
-function IntakeLines({ intake }: { intake: Detail['intake'] }) {
-  const lines = [
-    [intake.waxSurface !== null, intake.waxSurface === 'etched' ? 'Wax etched' : 'Wax washed'],
-    [intake.isWaxAtRoomTemp, 'At room temperature'],
-    [intake.isCupFirm, 'Cup and handle firm'],
-    [intake.areVentsAndCorePinsIn, 'Vents and core pins in'],
-  ] as const
-  return (
-    <ul className="grid gap-2">
-      {lines.map(([isDone, word]) => (
-        <li key={word} className="flex gap-2">
-          <Icon name={isDone ? 'check' : 'minus'} className={isDone ? 'text-verdigris-ink' : 'text-soot'} />
-          {word}: {isDone ? 'yes' : 'open'}
-        </li>
-      ))}
-      <li className="text-soot">A supervisor passes the intake.</li>
-    </ul>
-  )
-}
-
-/** To the very version that the tree stands on, which may not be the newest. */
-function RecipeLink({ recipe, children }: { recipe: Detail['recipe']; children: ReactNode }) {
-  return (
-    <Link className="underline underline-offset-4" href={`/recipes/${recipe.id}?version=${recipe.version}`} prefetch={false}>
-      {children}
-    </Link>
-  )
-}
-
-function About({ detail, massUnit, now, timeZone }: { detail: Detail; massUnit: MassUnit; now: number; timeZone: string }) {
-  const { intake } = detail
-  const facts: [string, ReactNode][] = [
-    ...detail.pieces.map((piece, index): [string, ReactNode] => [
-      detail.pieces.length === 1 ? 'Piece' : `Piece ${index + 1}`,
-      <>
-        <Link className="underline underline-offset-4" href={`/works/${piece.workId}`} prefetch={false}>
-          {piece.workTitle}
-        </Link>
-        {`${piece.sectionName === '' ? '' : `, ${piece.sectionName}`}, edition ${piece.editionNumber}${piece.isRecast ? ', recast' : ''}`}
-      </>,
-    ]),
-    [
-      'Recipe',
-      <>
-        <RecipeLink recipe={detail.recipe}>
-          {detail.recipe.name}, version {detail.recipe.version}
-        </RecipeLink>
-        {detail.recipe.isCalibrated ? '' : `, ${NOT_CALIBRATED}`}
-      </>,
-    ],
-    ['Treed', `${formatDate(detail.createdAt, timeZone)}${detail.createdBy === null ? '' : ` by ${detail.createdBy}`}`],
-    ['Place', detail.tree.place.name],
-    ['Pour date', detail.tree.pourDate === null ? 'none set' : formatDay(detail.tree.pourDate)],
-    ['Wax', typedWords(detail.waxMassKg, massUnit)],
-    ['Cup', `${detail.cupKind}, ${detail.cupVolumeL} L`],
-    ['Deepest recess', detail.recessClass],
-    ['Spacing', detail.spacing],
-    ...(detail.hungMassKg === null ? [] : [['Weight as hung', typedWords(detail.hungMassKg, massUnit)] as [string, ReactNode]]),
-    [
-      'Intake',
-      intake.passedAt === null
-        ? 'open'
-        : `passed by ${intake.passedBy ?? 'somebody'}, ${formatMoment(intake.passedAt, now, timeZone)}; wax ${intake.waxSurface ?? 'not said'}`,
-    ],
-  ]
-  return (
-    <dl className="facts">
-      {facts.map(([term, words]) => (
-        <div key={term}>
-          <dt>{term}</dt>
-          <dd>{words}</dd>
-        </div>
-      ))}
-    </dl>
   )
 }
