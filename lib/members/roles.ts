@@ -54,6 +54,16 @@ export function may(role: Role, act: Act): boolean {
 }
 
 /**
+ * For whom something is that needs a role: 'a supervisor or the owner'.
+ *
+ * @example roleWords('owner') // => 'the owner'
+ */
+export function roleWords(lowest: Role): string {
+  if (lowest === 'owner') return 'the owner'
+  return lowest === 'supervisor' ? 'a supervisor or the owner' : `those with the role ${lowest} or one above it`
+}
+
+/**
  * The roles that may do this act, lowest first; for sentences such as 'This needs a supervisor.'
  *
  * @example rolesFor('release') // => ['supervisor', 'owner']

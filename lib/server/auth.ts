@@ -161,7 +161,8 @@ export async function requireMemberPage(act: Act, path: string): Promise<Member>
   }
   if (member.mustChangePassword && act !== 'own password') redirect('/me/password')
   if (!member.isFoundrySetUp && act !== 'own password') redirect('/first-run')
-  if (!may(member.role, act)) redirect('/floor')
+  // The floor says for whom the page is.
+  if (!may(member.role, act)) redirect(`/floor?for=${rolesFor(act)[0]}`)
   return member
 }
 

@@ -49,7 +49,8 @@ export function useKeptForm(action: (previous: FormState, form: FormData) => Pro
   return {
     state,
     isPending,
-    errorOf: (field) => (state.status === 'invalid' ? state.fields[field] : undefined),
+    // A new try is under way: what was wrong with the last one is not said of it.
+    errorOf: (field) => (state.status === 'invalid' && !isPending ? state.fields[field] : undefined),
     formProps: {
       ref,
       method: 'post',

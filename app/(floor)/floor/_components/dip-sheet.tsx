@@ -344,7 +344,7 @@ function wallWords(draft: DipDraft, trees: readonly QueueTree[], queue: Queue): 
       candidate.needsTypedReading &&
       (draft.placeId === null ? trees.some((tree) => tree.place.id === candidate.id) : candidate.id === draft.placeId),
   )
-  return `No sensor serves ${place?.name ?? 'this place'}. Read the dial there.`
+  return `The air at ${place?.name ?? 'this place'} is read by hand. Read the dial there.`
 }
 
 /** What the recipe says to do before the dip. */

@@ -9,7 +9,7 @@ import { foldDipNow, type DipNowChoice } from '@/lib/floor/fold-dip-now'
 import type { SetUpLine } from '@/lib/floor/set-up'
 import { tideScale } from '@/lib/floor/tide-scale'
 import { NOT_CALIBRATED, timePairWords } from '@/lib/format/time-pair'
-import { may, type Role } from '@/lib/members/roles'
+import { may, roleWords, type Role } from '@/lib/members/roles'
 import type { Queue, QueueTree } from '@/lib/queue/contract'
 import { refusalWords } from '../_queries/request-json'
 import { useFloorQueue } from '../_queries/use-floor-queue'
@@ -36,6 +36,8 @@ export type FloorBoardProps = {
   member: { name: string; role: Role }
   /** What the room has and lacks before its first tree; empty where there are trees, or for somebody who cannot bring it about. */
   setUp: readonly SetUpLine[]
+  /** Set where somebody was led here from a page that is for this role and those above it. */
+  neededRole: Role | null
 }
 
 /** `sheet` tells one sheet from the next; within one the trees may change. */
@@ -47,7 +49,7 @@ const ROWS_FIRST = 30
 const NO_IDS: ReadonlySet<string> = new Set()
 
 /** The floor on the wall: what to dip now, what dries, what is done with. */
-export function FloorBoard({ initial, serverNow, member, setUp }: FloorBoardProps) {
+export function FloorBoard({ initial, serverNow, member, setUp, neededRole }: FloorBoardProps) {
   const floor = useFloorQueue({ ...initial, serverNow })
   const { queue, refresh } = floor
   const { timeZone } = queue.foundry
@@ -61,7 +63,9 @@ export function FloorBoard({ initial, serverNow, member, setUp }: FloorBoardProp
   const [groupChoice, setGroupChoice] = useState<DipNowChoice>({ openKey: null, page: 0 })
   const [tidePage, setTidePage] = useState(0)
   const [stirringBathId, setStirringBathId] = useState<string | null>(null)
-  const [footWord, setFootWord] = useState<FootWord | null>(null)
+  const [footWord, setFootWord] = useState<FootWord | null>(
+    neededRole === null ? null : { id: 0, at: serverNow, kind: 'note', words: `That page is for ${roleWords(neededRole)}.` },
+  )
   /** Sheets that closed by themselves, with their numbers, by the first tree. */
   const kept = useRef(new Map<string, DipDraft>())
   const returnTo = useRef<HTMLElement | null>(null)

@@ -1,4 +1,4 @@
-import { useId } from 'react'
+import { useEffect, useId, useRef } from 'react'
 import { Icon } from '@/app/_components/icons'
 import { useUnits } from '@/app/_components/units-context'
 import type { DialErrors } from '@/lib/floor/dip-draft'
@@ -19,8 +19,13 @@ export function WallReading({ temp, humidity, errors, words, onTemp, onHumidity 
   const { temp: unit } = useUnits()
   const wrong = [errors.airTempC, errors.relHumidityPct].filter((error) => error !== undefined)
   const errorId = `${id}-error`
+  const frame = useRef<HTMLFieldSetElement>(null)
+  useEffect(() => {
+    // Focus brings it into view too, where the sheet is fuller than the screen.
+    if (errors.airTempC ?? errors.relHumidityPct) frame.current?.querySelector<HTMLElement>('[aria-invalid]')?.focus()
+  }, [errors])
   return (
-    <fieldset className="wall" aria-label="Wall hygrometer">
+    <fieldset ref={frame} className="wall" aria-label="Wall hygrometer">
       <span className="choice-label">Wall hygro&shy;meter</span>
       <Dial
         id={`${id}-t`}
