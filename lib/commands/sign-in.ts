@@ -13,7 +13,7 @@ export type SignInInput = {
   email: string
   password: string
   userAgent: string
-  /** A device from which somebody has signed in before; null for a stranger's. */
+  /** A device from which this member has signed in before; null for any other. */
   device: string | null
 }
 

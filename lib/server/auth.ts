@@ -25,7 +25,7 @@ export type Member = SessionMember
 const credentials = z.object({ email: z.string().min(1).max(254), password: z.string().min(1).max(1000) })
 
 // Behind the waits of each e-mail: nobody tries a thousand e-mails with one password, and hashing stays cheap to offer.
-// Strangers share one allowance; a device from which somebody has signed in before has its own, which they cannot use up.
+// Strangers share one allowance; a device from which this member has signed in before has its own, which they cannot use up.
 const signInTries = processWide('sign-in tries', () => new RateLimiterMemory({ points: 60, duration: 60 }))
 
 /** next-auth's own name for it. It holds two ids, so it is never split over several cookies. */
@@ -52,7 +52,7 @@ export const authOptions: NextAuthOptions = {
       authorize: async (input, request) => {
         const parsed = credentials.safeParse(input)
         if (!parsed.success) return null
-        const device = await knownDevice()
+        const device = await knownDevice(parsed.data.email)
         await signInTries.consume(device === null ? 'strangers' : `device:${device}`).catch((refusal: RateLimiterRes) => {
           throw new Error(`WAIT:${Math.ceil(refusal.msBeforeNext / 1000)}`)
         })
@@ -67,7 +67,7 @@ export const authOptions: NextAuthOptions = {
         if (result.outcome === 'wait') throw new Error(`WAIT:${result.waitSeconds}`)
         if (result.outcome === 'refused') return null
         if (result.outcome === 'first password over') throw new Error('FIRST_PASSWORD_OVER')
-        await rememberDevice()
+        await rememberDevice(result.member.email)
         log('sign-in.done', { memberId: result.member.id, sessionId: result.sessionId })
         return { id: result.member.id, sessionId: result.sessionId }
       },
