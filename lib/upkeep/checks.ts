@@ -152,7 +152,7 @@ function backups({
       : `The newest is of ${formatMoment(newest.at, now, timeZone)}, ${formatBytes(newest.sizeBytes)}. ${standing} ${standing === 1 ? 'lies' : 'lie'} in ${folder}.`,
   ]
   if (failed) lines.push(`${formatMoment(failed.at, now, timeZone)}: ${failed.error}`)
-  if (isSameDisk) lines.push('They lie on the same disk as the records, and would be lost with it. BACKUP_DIR names a folder on another.')
+  if (isSameDisk) lines.push('If the disk of the records dies, these die with it: set BACKUP_DIR to a folder on another disk.')
   const isLate = now - (newest?.at ?? 0) > BACKUP_LATE_MS && now - openSince > STARTED_LATELY_MS
   const todo = failed
     ? 'Mend what stands above, then press ‘Back up now’.'
@@ -170,7 +170,7 @@ function proof({ backups: { provenAt }, program: { openSince }, now, timeZone }:
   ]
   const isInOrder = now - (provenAt ?? 0) <= PROOF_LATE_MS || now - openSince <= STARTED_LATELY_MS
   const todo = isInOrder ? '' : 'It is done once a day while the worker runs. Do not rely on the backups until it has gone well.'
-  return { key: 'proof', title: 'Restore, for a try', isInOrder, lines, todo }
+  return { key: 'proof', title: 'Trial restore', isInOrder, lines, todo }
 }
 
 function pushes({ pushes: { waiting, dueSince, failingDevices, refusing }, now, timeZone }: UpkeepFacts): UpkeepCheck {
@@ -200,8 +200,8 @@ function records({ records: { sizeBytes, walBytes } }: UpkeepFacts): UpkeepCheck
     key: 'records',
     title: 'Records',
     isInOrder,
-    lines: [`The database is ${formatBytes(sizeBytes)}, with ${formatBytes(walBytes)} in its write-ahead log.`],
-    todo: isInOrder ? '' : 'The log cannot be brought into the database: something reads it without end. Start Kilnward again.',
+    lines: [`The records take ${formatBytes(sizeBytes)}, and ${formatBytes(walBytes)} more that are not folded in yet.`],
+    todo: isInOrder ? '' : 'What is new is not folded in: something reads the records without end. Start Kilnward again.',
   }
 }
 

@@ -86,7 +86,7 @@ export default async function UpkeepPage() {
                 <li>Start Kilnward. Everybody signs in again.</li>
               </ol>
               <p>
-                A backup holds everything: people, passwords as hashes, every line of history. Keep it as you keep the keys of the house.
+                A backup holds everything: people, every line of history, and what a thief would need to guess passwords at leisure. Keep it as you keep the keys of the house.
               </p>
             </div>
           </section>

@@ -66,8 +66,9 @@ const hasRemarks = (coat: Dipped) => coat.deviations.length > 0 || coat.reason !
 function Planned({ row, now, timeZone }: { row: CoatRow } & Moment) {
   if (row.planned === null || row.planned.likelyAt === null) return <>to come, not in sight yet</>
   // Where the dip before it or the shift decides, and not how this coat dries, there is no band to show.
-  if (row.planned.likelyAt === row.planned.safeAt)
+  if (row.planned.likelyAt === row.planned.safeAt) {
     return <>planned from {formatMoment(row.planned.likelyAt, now, timeZone)} at the earliest</>
+  }
   return (
     <>
       planned <TimePair pair={row.planned} now={now} timeZone={timeZone} />
