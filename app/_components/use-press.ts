@@ -3,7 +3,7 @@
 import { useCallback, useRef, type MouseEvent as ReactMouseEvent, type PointerEvent } from 'react'
 
 /** A wet glove bounces: a second touch of the same spot within this time is the same touch. */
-export const PRESS_DEAF_MS = 400
+const PRESS_DEAF_MS = 400
 /** How far a bounce lands from the first touch, px. Far wider than a finger trembles, narrower than two keys. */
 const PRESS_SPOT_PX = 56
 

@@ -3,7 +3,7 @@ import type { QueueTree } from '@/lib/queue/contract'
 import { pourDeadline, startOfLocalDay, type WorkCalendar } from '@/lib/schedule/shifts'
 
 /** 'tight': half of such shells make it, not nine of ten. 'passed': the day is over and the tree still hangs here. */
-export const POUR_VERDICTS = ['holds', 'tight', 'will miss', 'passed', 'not in sight'] as const
+const POUR_VERDICTS = ['holds', 'tight', 'will miss', 'passed', 'not in sight'] as const
 export type PourVerdict = (typeof POUR_VERDICTS)[number]
 
 /** The moment and the calendar of the foundry against which a pour is judged. */

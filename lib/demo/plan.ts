@@ -11,7 +11,7 @@ import { workHours, type WorkHours } from '@/lib/demo/work-hours'
 import { localDay } from '@/lib/format/local-time'
 import { pourDeadline } from '@/lib/schedule/shifts'
 
-export const DEMO_SEED = 20
+const DEMO_SEED = 20
 /** Two weeks of readings before the start, and half a day so that the first dips have air around them. */
 export const DEMO_HISTORY_MS = 14.5 * millisecondsInDay
 

@@ -2,11 +2,11 @@ import { millisecondsInMinute } from 'date-fns/constants'
 import type { CoatCall, Instant } from '@/lib/drying/types'
 
 /** How far along a coat is, from the dip on. 'unknown' is never shown as dry. */
-export const COAT_PHASES = ['wet', 'drying', 'nearly dry', 'dry', 'unknown'] as const
+const COAT_PHASES = ['wet', 'drying', 'nearly dry', 'dry', 'unknown'] as const
 export type CoatPhase = (typeof COAT_PHASES)[number]
 
 /** Above this moisture ratio a coat is wet. Our own starting value. */
-export const WET_MOISTURE_RATIO = 0.5
+const WET_MOISTURE_RATIO = 0.5
 
 const NEARLY_DRY_MS = 30 * millisecondsInMinute
 

@@ -117,7 +117,7 @@ const airNow = z.object({
 })
 
 /** What may be wrong with the air, with the number that says so and the limit it crossed. */
-export const estimateFlag = z.discriminatedUnion('code', [
+const estimateFlag = z.discriminatedUnion('code', [
   z.object({ code: z.literal('damp'), at: z.enum(['likely', 'safe']), relHumidityPct: z.number(), limitPct: z.number() }),
   z.object({ code: z.literal('chill'), level: z.enum(['warn', 'stop']), wetBulbGapK: z.number(), limitK: z.number() }),
   z.object({ code: z.literal('too fast'), speed: z.number(), limit: z.number() }),

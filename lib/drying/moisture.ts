@@ -1,7 +1,7 @@
 import { assertWithin } from '@/lib/drying/guards'
 
 /** Page's exponent: a flat start, then a tail. Our own starting value, to be calibrated. */
-export const DEFAULT_PAGE_EXPONENT = 1.1
+const DEFAULT_PAGE_EXPONENT = 1.1
 
 /**
  * Page's rate constant for a coat that reaches `target` at its need: k = -ln MR* / need^n.
@@ -23,14 +23,4 @@ export function pageK(need: number, target: number, n: number = DEFAULT_PAGE_EXP
 export function moistureRatio(dose: number, need: number, target: number, n: number = DEFAULT_PAGE_EXPONENT): number {
   assertWithin('Dose in reference hours', dose, 0, Infinity)
   return Math.exp(-pageK(need, target, n) * dose ** n)
-}
-
-/**
- * Dose at which a moisture ratio is reached: (-ln MR / k)^(1/n). Half-dry at MR 0.5.
- *
- * @source Page 1949, solved for time.
- */
-export function doseAtMoistureRatio(k: number, n: number, ratio: number): number {
-  assertWithin('Moisture ratio', ratio, 1e-12, 1)
-  return (-Math.log(ratio) / k) ** (1 / n)
 }

@@ -3,7 +3,7 @@ import { assertWithin } from '@/lib/drying/guards'
 import type { Dose, NeedInput } from '@/lib/drying/types'
 
 /** Thickness of the wet layer by stucco. Our own starting values, to be calibrated. */
-export const STUCCO_FACTOR: Record<Stucco, number> = { none: 1, fine: 0.9, medium: 1, coarse: 1.15 }
+const STUCCO_FACTOR: Record<Stucco, number> = { none: 1, fine: 0.9, medium: 1, coarse: 1.15 }
 
 /** Smallest wall-to-wall gap of the tree. Our own starting values, to be calibrated. */
 export const SECTION_FACTOR: Record<Spacing, number> = { open: 1, crowded: 1.25 }

@@ -159,7 +159,7 @@ export function needsWallReading(draft: DipDraft, trees: readonly QueueTree[], p
 }
 
 /** '19,5' and '19.5' are the same dial. Null when nothing was typed, NaN when it is no number. */
-export function parseDial(text: string): number | null {
+function parseDial(text: string): number | null {
   const trimmed = text.trim().replace(',', '.').replace('−', '-')
   return trimmed === '' ? null : Number(trimmed)
 }
@@ -196,7 +196,7 @@ export function checkDial(
 }
 
 /** When the dip was made, epoch milliseconds, and the half width of a rough time in minutes. */
-export function dippedAtOf(done: DipDone, now: number): { dippedAt: number; roughTime?: number } {
+function dippedAtOf(done: DipDone, now: number): { dippedAt: number; roughTime?: number } {
   if (done.kind === 'now') return { dippedAt: now }
   if (done.kind === 'ago') return { dippedAt: now - done.minutes * MINUTE_MS, roughTime: ROUGH_MINUTES[done.minutes] }
   return { dippedAt: Math.min(done.at, now), roughTime: SET_CLOCK_ROUGH_MINUTES }

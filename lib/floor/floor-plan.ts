@@ -11,19 +11,19 @@ export function floorMode(width: number, height: number): FloorMode {
 }
 
 /** Heights shared with floor.css, px. */
-export const COLUMN_HEAD = 50
-export const TIDE_AXIS = 52
-export const TIDE_ROW_LEAST = 77
-export const TIDE_ROW_MOST = 104
-export const PAGE_KEY = 64
-export const BARE_WAX_LINE = 66
-export const HOOK = 64
+const COLUMN_HEAD = 50
+const TIDE_AXIS = 52
+const TIDE_ROW_LEAST = 77
+const TIDE_ROW_MOST = 104
+const PAGE_KEY = 64
+const BARE_WAX_LINE = 66
+const HOOK = 64
 /** Three rails with their headings, the gaps between them and the feet. */
 export const RAILS = 127
-export const RACK_HEAD = 44
-export const HELD_HEAD = 40
-export const HELD_TREE = 104
-export const COMPACT_RACK = 126
+const RACK_HEAD = 44
+const HELD_HEAD = 40
+const HELD_TREE = 104
+const COMPACT_RACK = 126
 
 export const DIP_NOW_SIZES: Record<Exclude<FloorMode, 'list'>, DipNowSizes> = {
   wide: { row: 84, denseRow: 77, rowGap: 10, head: 46, groupEdge: 13, runKey: 108, stirKey: 64, keyGap: 10, pageKey: 64, fold: 66 },

@@ -9,7 +9,7 @@ export const NOBODY = 'kilnward'
 /** A place between two lines: the line named here is the last one of the page before. */
 export type HistoryCursor = { at: number; source: HistorySource; id: number }
 /** Of two lines of one moment, the tree's comes later. */
-export const HISTORY_SOURCES = ['foundry', 'tree'] as const
+const HISTORY_SOURCES = ['foundry', 'tree'] as const
 export type HistorySource = (typeof HISTORY_SOURCES)[number]
 
 export type HistoryFilter = {

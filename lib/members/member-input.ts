@@ -11,7 +11,7 @@ export const memberEmail = z
   .max(254, 'An e-mail has at most 254 letters.')
   .pipe(z.email('An e-mail looks like ines@foundry.example.'))
 
-export const memberRole = z.enum(ROLES, 'Choose what they may do.')
+const memberRole = z.enum(ROLES, 'Choose what they may do.')
 
 /** A new member, as the owner types them. */
 export const memberInput = z.strictObject({ name: memberName, email: memberEmail, role: memberRole })

@@ -1,7 +1,7 @@
 import { COMMON_PASSWORDS } from '@/lib/members/common-passwords'
 
-export const LEAST_PASSWORD_LETTERS = 12
-export const MOST_PASSWORD_LETTERS = 200
+const LEAST_PASSWORD_LETTERS = 12
+const MOST_PASSWORD_LETTERS = 200
 
 /** Small letters and digits only, so that 'Otter-Gate' and 'ottergate' are the same. */
 const folded = (text: string) =>

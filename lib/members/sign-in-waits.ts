@@ -1,5 +1,5 @@
 /** Wrong passwords that cost nothing but the try. */
-export const FREE_FAILURES = 5
+const FREE_FAILURES = 5
 const FIRST_WAIT_MS = 30_000
 const LONGEST_WAIT_MS = 15 * 60_000
 /** A count this old is forgotten. */

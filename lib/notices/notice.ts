@@ -13,7 +13,7 @@ export const NOTICE_KINDS = [
 ] as const
 export type NoticeKind = (typeof NOTICE_KINDS)[number]
 
-export const NOTICE_SUBJECTS = ['coat', 'tree', 'sensor', 'floor', 'member'] as const
+const NOTICE_SUBJECTS = ['coat', 'tree', 'sensor', 'floor', 'member'] as const
 export type NoticeSubject = (typeof NOTICE_SUBJECTS)[number]
 
 const MINUTE_S = 60

@@ -1,7 +1,7 @@
 import { z } from 'zod'
 
 /** Which trees a device hears of. */
-export const PUSH_SCOPES = ['every tree', 'watched trees'] as const
+const PUSH_SCOPES = ['every tree', 'watched trees'] as const
 export type PushScope = (typeof PUSH_SCOPES)[number]
 
 const endpoint = z.string().min(1).max(2048)
@@ -23,7 +23,7 @@ export const subscribeAnswer = z.object({ id: z.uuid() })
 export const deviceInput = z.union([z.strictObject({ endpoint }), z.strictObject({ id: z.uuid() })])
 export type DeviceInput = z.infer<typeof deviceInput>
 
-export const pushDevice = z.object({
+const pushDevice = z.object({
   id: z.uuid(),
   label: z.string(),
   scope: z.enum(PUSH_SCOPES),

@@ -44,7 +44,7 @@ export async function loadHours(sensorId: number, from: number, to: number): Pro
 }
 
 /** The newest reading of a sensor at or before an instant. */
-export async function loadNewestReading(sensorId: number, at: number): Promise<RoomReading | null> {
+async function loadNewestReading(sensorId: number, at: number): Promise<RoomReading | null> {
   const [row] = await database.query<RoomReading & { source: ReadingSource }>(
     `SELECT ${READING_COLUMNS} FROM readings r WHERE r.sensor_id = :sensorId AND r.measured_at <= :at ORDER BY r.measured_at DESC LIMIT 1`,
     { type: QueryTypes.SELECT, replacements: { sensorId, at } },

@@ -1,4 +1,3 @@
-import type { Clock } from '@/lib/core/clock'
 import { browserName } from '@/lib/format/browser-name'
 import type { Units } from '@/lib/format/units'
 import type { Role } from '@/lib/members/roles'
@@ -57,9 +56,4 @@ export function memberAt(session: KnownSession | null, now: number): SessionMemb
   if (!session || session.expiresAt <= now) return null
   // A first password that has run out opens nothing any more, not even through the session it has opened.
   return session.firstPasswordUntil !== null && session.firstPasswordUntil <= now ? null : session.member
-}
-
-/** The member behind a session as the database knows them now; null once it has ended, run out, or its member was disabled. */
-export async function sessionMember(sessionId: string, { clock }: { clock: Clock }): Promise<SessionMember | null> {
-  return memberAt(await loadSession(sessionId), clock.now())
 }

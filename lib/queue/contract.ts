@@ -84,7 +84,7 @@ export const queueTree = z.object({
 })
 export type QueueTree = z.infer<typeof queueTree>
 
-export const DRYING_PULLS = ['slow', 'good', 'too dry for face coats', 'not known'] as const
+const DRYING_PULLS = ['slow', 'good', 'too dry for face coats', 'not known'] as const
 
 export const queueRoom = z.object({
   sensorId: z.int(),

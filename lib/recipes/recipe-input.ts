@@ -8,7 +8,7 @@ const within = (field: string, unit: string, min: number, max: number) =>
   typedNumber(field).pipe(z.number().min(min, `${field} is at least ${min} ${unit}.`).max(max, `${field} is at most ${max} ${unit}.`))
 
 /** One coat of a recipe, inner coat first; its number is its place in the list. Hours are reference hours, the target a share of the coat's water. */
-export const recipeCoatInput = z.strictObject({
+const recipeCoatInput = z.strictObject({
   kind: z.enum(COAT_KINDS, 'Choose the kind of coat.'),
   bathId: z.uuid('Choose a bath.'),
   stucco: z.enum(STUCCOS, 'Choose the stucco.'),

@@ -38,7 +38,7 @@ export type PlaceInput = z.infer<typeof placeInput>
  * From when on a change of a place's air counts. 'now': the fans were turned, a sensor was moved; what has dried so far stands.
  * 'always': the figures were wrong; what hangs there is worked out again, back to the change before.
  */
-export const AIR_SINCE = ['now', 'always'] as const
+const AIR_SINCE = ['now', 'always'] as const
 export const airSince = z.enum(AIR_SINCE, 'Say whether it was so before.')
 export type AirSince = z.infer<typeof airSince>
 

@@ -54,7 +54,7 @@ function withAir(climate: RoomClimate, segments: readonly RoomSegment[], { from,
 }
 
 /** The same floor in the recipe's room through the night: 21 degC and 50 %, each tree in the air of its own place. */
-export function inRecipeRoom(context: FloorContext, tonight: Tonight): FloorContext {
+function inRecipeRoom(context: FloorContext, tonight: Tonight): FloorContext {
   const steady = [constantSegment(tonight.from, tonight.to, 'forecast', 1)]
   return withClimates(
     context,

@@ -14,7 +14,7 @@ export type OpenApiDocument = {
 } & Json
 export type Operation = { operationId: string; summary: string; tags: string[] } & Json
 
-export const API_VERSION = '1'
+const API_VERSION = '1'
 
 /**
  * The description of the API, made from the schemas that the doors check with.
@@ -52,7 +52,7 @@ export function openApiDocument(doors: readonly DoorDescription[], { address }: 
 }
 
 /** Statuses that a door can answer with a problem, and the codes behind each. */
-export function problemsOf(door: DoorDescription): Map<number, ProblemCode[]> {
+function problemsOf(door: DoorDescription): Map<number, ProblemCode[]> {
   const codes: ProblemCode[] = [
     ...(door.body ? (['malformed', 'too_large', 'unsupported_media_type', 'invalid_input'] as const) : []),
     ...(door.who === 'anybody' ? [] : (['unauthenticated', 'unavailable'] as const)),

@@ -124,7 +124,7 @@ for (const [network, bits] of [
 }
 
 /** True for an address that no push service has. IPv4 inside IPv6 counts as the IPv4 that it is. */
-export function isPrivateAddress(address: string): boolean {
+function isPrivateAddress(address: string): boolean {
   const mapped = /^::ffff:(\d+\.\d+\.\d+\.\d+)$/i.exec(address)?.[1]
   if (mapped !== undefined) return PRIVATE.check(mapped, 'ipv4')
   return PRIVATE.check(address, isIPv6(address) ? 'ipv6' : 'ipv4')

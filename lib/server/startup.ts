@@ -10,7 +10,7 @@ import { log } from '@/lib/core/log'
  *
  * @throws {Error} with one line that says what to mend.
  */
-export async function prepareProcess(): Promise<void> {
+async function prepareProcess(): Promise<void> {
   const { VAPID_PUBLIC_KEY: publicKey, VAPID_PRIVATE_KEY: privateKey } = env()
   if (publicKeyOf(privateKey) !== publicKey) throw new Error('VAPID_PUBLIC_KEY does not belong to VAPID_PRIVATE_KEY.')
   await requireWritableRecords()

@@ -74,7 +74,7 @@ export function treeVerdict(tree: VerdictTree, now: number): TreeVerdict {
 }
 
 /** Who said 'looks dry' while the clock's own guard still lies ahead; null where the clock says it too. */
-export function seenDryBy(tree: Pick<QueueTree, 'dry' | 'guard' | 'look'>, now: number): string | null {
+function seenDryBy(tree: Pick<QueueTree, 'dry' | 'guard' | 'look'>, now: number): string | null {
   if (tree.look?.verdict !== 'looks dry') return null
   const guardAt = tree.guard === 'likely' ? tree.dry?.likelyAt : tree.dry?.safeAt
   return guardAt != null && guardAt <= now ? null : tree.look.by

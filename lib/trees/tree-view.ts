@@ -54,7 +54,7 @@ export function readTreeView(words: Words): TreeView {
  *
  * @example treeViewWords({ ...readTreeView({}), query: 'otter', page: 2 }).toString() // => 'q=otter&page=2'
  */
-export function treeViewWords(view: TreeView): URLSearchParams {
+function treeViewWords(view: TreeView): URLSearchParams {
   const words = new URLSearchParams()
   const set = (name: string, value: string, isPlain: boolean) => {
     if (!isPlain) words.set(name, value)

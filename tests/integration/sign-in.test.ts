@@ -6,7 +6,7 @@ import { SESSION_MS, signIn } from '@/lib/commands/sign-in'
 import { newId } from '@/lib/core/ids'
 import { SI_UNITS } from '@/lib/format/units'
 import { signInSubject } from '@/lib/members/sign-in-waits'
-import { sessionMember } from '@/lib/queries/session-member'
+import { sessionMember } from '@/tests/factories/session-member'
 import { Member, Session, SignInWait } from '@/models'
 import { seedMember, type SeededMember } from '@/tests/setup/server'
 

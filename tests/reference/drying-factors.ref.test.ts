@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest'
 import { stationPressurePa } from '@/lib/drying/air'
-import { doseAtMoistureRatio, moistureRatio, pageK } from '@/lib/drying/moisture'
+import { moistureRatio, pageK } from '@/lib/drying/moisture'
 import { needBand, sigma } from '@/lib/drying/need'
 import { placeFactor } from '@/lib/drying/place-factor'
 import { heatOfEvaporationKjKg, roomFactor, wetBulbDepressionK } from '@/lib/drying/room-factor'
@@ -119,7 +119,7 @@ describe('spread of the need', () => {
   })
 })
 
-// Source: closed forms of Page 1949, MR = exp(-k t^n). Tolerance 1e-9 on the times.
+// Source: closed forms of Page 1949, MR = exp(-k t^n). Tolerance 1e-9 on the ratio.
 describe('Page', () => {
   it.each([
     { k: 0.6, n: 1.1 },
@@ -127,8 +127,9 @@ describe('Page', () => {
     { k: 1.3, n: 0.8 },
     { k: 0.05, n: 1 },
   ])('has the half time and the 5 % time of k $k and n $n', ({ k, n }) => {
-    expect(Math.abs(doseAtMoistureRatio(k, n, 0.5) - (Math.LN2 / k) ** (1 / n))).toBeLessThan(1e-9)
-    expect(Math.abs(doseAtMoistureRatio(k, n, 0.05) - (Math.log(20) / k) ** (1 / n))).toBeLessThan(1e-9)
+    const need = (Math.log(10) / k) ** (1 / n)
+    expect(Math.abs(moistureRatio((Math.LN2 / k) ** (1 / n), need, 0.1, n) - 0.5)).toBeLessThan(1e-9)
+    expect(Math.abs(moistureRatio((Math.log(20) / k) ** (1 / n), need, 0.1, n) - 0.05)).toBeLessThan(1e-9)
   })
 
   it('has k 0.50113 for a need of 4.0 and 0.84039 for 2.5', () => {
@@ -145,7 +146,7 @@ describe('Page', () => {
     [3, 0.1341],
     [4, 0.0635],
   ])('has dried after %d reference hours to %d', (dose, expected) => {
-    const need = doseAtMoistureRatio(0.6, 1.1, 0.1)
+    const need = (Math.log(10) / 0.6) ** (1 / 1.1)
     expect(Math.abs(moistureRatio(dose, need, 0.1, 1.1) - expected)).toBeLessThan(6e-5)
   })
 })

@@ -26,7 +26,7 @@ export function PourWords({ pourDate, verdict }: { pourDate: string | null; verd
   )
 }
 
-export function PourVerdictMark({ verdict }: { verdict: PourVerdict }) {
+function PourVerdictMark({ verdict }: { verdict: PourVerdict }) {
   const isMissed = verdict === 'will miss' || verdict === 'passed'
   const tone = isMissed
     ? 'text-furnace-ink'

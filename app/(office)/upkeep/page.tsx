@@ -86,7 +86,8 @@ export default async function UpkeepPage() {
                 <li>Start Kilnward. Everybody signs in again.</li>
               </ol>
               <p>
-                A backup holds everything: people, every line of history, and what a thief would need to guess passwords at leisure. Keep it as you keep the keys of the house.
+                A backup holds everything: people, every line of history, and what a thief would need to guess passwords at leisure. Keep it
+                as you keep the keys of the house.
               </p>
             </div>
           </section>

@@ -4,7 +4,7 @@ import { useQuery, useQueryClient, type QueryClient } from '@tanstack/react-quer
 import type { Queue } from '@/lib/queue/contract'
 import { isQueue } from './shapes'
 
-export const floorQueueKey = ['queue'] as const
+const floorQueueKey = ['queue'] as const
 
 const POLL_MS = 3000
 const ANSWER_WITHIN_MS = 8000
@@ -13,7 +13,7 @@ const ANSWER_WITHIN_MS = 8000
 export type SeenQueue = { etag: string; queue: Queue; clockGap: number }
 
 /** Thrown by the poll when the session has ended. */
-export class SignedOut extends Error {
+class SignedOut extends Error {
   override readonly name = 'SignedOut'
 }
 
