@@ -51,14 +51,15 @@ const STEP: readonly WorkedAir[] = [
   ...[1.6, ...Array.from({ length: 25 }, (_, index) => 2 + index / 2)].map((hours): WorkedAir => [hours, 20, 70]),
 ]
 
-const EARLY: readonly WorkedAir[] = [
+/** Readings with a gap of three and a half hours, and those that come late into it. */
+export const EARLY: readonly WorkedAir[] = [
   [0, 21, 50],
   [0.5, 21.2, 49],
   [4, 20, 62],
   [4.5, 20, 61],
   [5, 20.2, 60],
 ]
-const LATE: readonly WorkedAir[] = [
+export const LATE: readonly WorkedAir[] = [
   [1, 21.2, 49],
   [1.5, 21, 51],
   [2, 20.8, 54],

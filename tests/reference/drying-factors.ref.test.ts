@@ -4,48 +4,25 @@ import { moistureRatio, pageK } from '@/lib/drying/moisture'
 import { needBand, sigma } from '@/lib/drying/need'
 import { placeFactor } from '@/lib/drying/place-factor'
 import { heatOfEvaporationKjKg, roomFactor, wetBulbDepressionK } from '@/lib/drying/room-factor'
+import { PLACE_FACTORS, ROOM_FACTORS } from '@/tests/factories/drying-tables'
 
 const SEA_LEVEL_PA = 101_325
 
 // Source of the whole file unless said otherwise: our own model, its numbers recomputed with psychrolib and an independent
 // implementation. Tolerances: 3e-4 on room factors (psychrolib stops 0.0005 K short of the wet bulb), half the last digit elsewhere.
 describe('roomFactor', () => {
-  it.each([
-    { airTempC: 21, relHumidityPct: 50, altitudeM: 0, expected: 1 },
-    { airTempC: 18, relHumidityPct: 50, altitudeM: 0, expected: 0.9141 },
-    { airTempC: 24, relHumidityPct: 40, altitudeM: 0, expected: 1.3395 },
-    { airTempC: 24, relHumidityPct: 50, altitudeM: 0, expected: 1.0865 },
-    { airTempC: 27, relHumidityPct: 50, altitudeM: 0, expected: 1.1729 },
-    { airTempC: 21, relHumidityPct: 30, altitudeM: 0, expected: 1.4703 },
-    { airTempC: 21, relHumidityPct: 65, altitudeM: 0, expected: 0.6761 },
-    { airTempC: 18, relHumidityPct: 75, altitudeM: 0, expected: 0.4345 },
-    { airTempC: 16, relHumidityPct: 85, altitudeM: 0, expected: 0.2412 },
-    { airTempC: 25, relHumidityPct: 60, altitudeM: 0, expected: 0.8686 },
-    { airTempC: 21, relHumidityPct: 50, altitudeM: 1600, expected: 1.0724 },
-    { airTempC: 24, relHumidityPct: 30, altitudeM: 1600, expected: 1.7281 },
-  ])('is $expected at $airTempC degC, $relHumidityPct %, $altitudeM m', ({ airTempC, relHumidityPct, altitudeM, expected }) => {
-    const factor = roomFactor({ airTempC, relHumidityPct }, stationPressurePa(altitudeM))
-    expect(Math.abs(factor - expected)).toBeLessThan(3e-4)
-  })
+  it.each(ROOM_FACTORS)(
+    'is $expected at $airTempC degC, $relHumidityPct %, $altitudeM m',
+    ({ airTempC, relHumidityPct, altitudeM, expected }) => {
+      const factor = roomFactor({ airTempC, relHumidityPct }, stationPressurePa(altitudeM))
+      expect(Math.abs(factor - expected)).toBeLessThan(3e-4)
+    },
+  )
 })
 
 describe('placeFactor', () => {
-  it.each([
-    { speedMps: 0, altitudeM: 0, expected: 0.5214 },
-    { speedMps: 0.1, altitudeM: 0, expected: 0.5214 },
-    { speedMps: 0.25, altitudeM: 0, expected: 0.65 },
-    { speedMps: 0.5, altitudeM: 0, expected: 0.795 },
-    { speedMps: 0.75, altitudeM: 0, expected: 0.9062 },
-    { speedMps: 1, altitudeM: 0, expected: 1 },
-    { speedMps: 1.5, altitudeM: 0, expected: 1.1573 },
-    { speedMps: 2, altitudeM: 0, expected: 1.2899 },
-    { speedMps: 3, altitudeM: 0, expected: 1.5124 },
-    { speedMps: 0.1, altitudeM: 1600, expected: 0.501 },
-    { speedMps: 0.5, altitudeM: 1600, expected: 0.7494 },
-    { speedMps: 1, altitudeM: 1600, expected: 0.9355 },
-    { speedMps: 2, altitudeM: 1600, expected: 1.1988 },
-  ])('is $expected at $speedMps m/s and $altitudeM m', ({ speedMps, altitudeM, expected }) => {
-    expect(Math.abs(placeFactor(speedMps, stationPressurePa(altitudeM)) - expected)).toBeLessThan(6e-5)
+  it.each(PLACE_FACTORS)('is $expected at $airSpeedMps m/s and $altitudeM m', ({ airSpeedMps, altitudeM, expected }) => {
+    expect(Math.abs(placeFactor(airSpeedMps, stationPressurePa(altitudeM)) - expected)).toBeLessThan(6e-5)
   })
 })
 

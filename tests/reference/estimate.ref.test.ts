@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest'
 import { estimate } from '@/lib/drying/estimate'
 import { estimateInput } from '@/lib/drying/estimate-contract'
+import { PLACE_FACTORS, ROOM_FACTORS } from '@/tests/factories/drying-tables'
 import { DOSE_TOLERANCE, MOISTURE_TOLERANCE, TIME_TOLERANCE_H, WORKED_DAYS, workedBody, WORKED_START } from '@/tests/factories/worked-days'
 import { estimateOf } from '@/tests/unit/drying/build-estimate'
 import { hour } from '@/tests/unit/drying/build-readings'
@@ -37,20 +38,7 @@ describe.each(WORKED_DAYS)('the estimate of $name', (day) => {
 // Our own model, its numbers recomputed with psychrolib and an independent implementation. Tolerance 3e-4: psychrolib stops
 // 0.0005 K short of the wet bulb.
 describe('room factor, place factor and speed through the estimate', () => {
-  it.each([
-    { airTempC: 21, relHumidityPct: 50, altitudeM: 0, expected: 1 },
-    { airTempC: 18, relHumidityPct: 50, altitudeM: 0, expected: 0.9141 },
-    { airTempC: 24, relHumidityPct: 40, altitudeM: 0, expected: 1.3395 },
-    { airTempC: 24, relHumidityPct: 50, altitudeM: 0, expected: 1.0865 },
-    { airTempC: 27, relHumidityPct: 50, altitudeM: 0, expected: 1.1729 },
-    { airTempC: 21, relHumidityPct: 30, altitudeM: 0, expected: 1.4703 },
-    { airTempC: 21, relHumidityPct: 65, altitudeM: 0, expected: 0.6761 },
-    { airTempC: 18, relHumidityPct: 75, altitudeM: 0, expected: 0.4345 },
-    { airTempC: 16, relHumidityPct: 85, altitudeM: 0, expected: 0.2412 },
-    { airTempC: 25, relHumidityPct: 60, altitudeM: 0, expected: 0.8686 },
-    { airTempC: 21, relHumidityPct: 50, altitudeM: 1600, expected: 1.0724 },
-    { airTempC: 24, relHumidityPct: 30, altitudeM: 1600, expected: 1.7281 },
-  ])('B is $expected at $airTempC degC, $relHumidityPct %, $altitudeM m', ({ expected, altitudeM, ...constant }) => {
+  it.each(ROOM_FACTORS)('B is $expected at $airTempC degC, $relHumidityPct %, $altitudeM m', ({ expected, altitudeM, ...constant }) => {
     const [point] = estimateOf({ climate: { constant }, pressurePa: undefined, altitudeM, until: hour(1) }).points
     expect(Math.abs(point!.roomFactor! - expected)).toBeLessThan(3e-4)
     expect(point!.dose.likely).toBeCloseTo(point!.speed!, 9)
@@ -64,21 +52,7 @@ describe('room factor, place factor and speed through the estimate', () => {
     expect(Math.abs(point!.speed! - expected)).toBeLessThan(3e-4)
   })
 
-  it.each([
-    { airSpeedMps: 0, altitudeM: 0, expected: 0.5214 },
-    { airSpeedMps: 0.1, altitudeM: 0, expected: 0.5214 },
-    { airSpeedMps: 0.25, altitudeM: 0, expected: 0.65 },
-    { airSpeedMps: 0.5, altitudeM: 0, expected: 0.795 },
-    { airSpeedMps: 0.75, altitudeM: 0, expected: 0.9062 },
-    { airSpeedMps: 1, altitudeM: 0, expected: 1 },
-    { airSpeedMps: 1.5, altitudeM: 0, expected: 1.1573 },
-    { airSpeedMps: 2, altitudeM: 0, expected: 1.2899 },
-    { airSpeedMps: 3, altitudeM: 0, expected: 1.5124 },
-    { airSpeedMps: 0.1, altitudeM: 1600, expected: 0.501 },
-    { airSpeedMps: 0.5, altitudeM: 1600, expected: 0.7494 },
-    { airSpeedMps: 1, altitudeM: 1600, expected: 0.9355 },
-    { airSpeedMps: 2, altitudeM: 1600, expected: 1.1988 },
-  ])('phi is $expected at $airSpeedMps m/s and $altitudeM m', ({ expected, ...place }) => {
+  it.each(PLACE_FACTORS)('phi is $expected at $airSpeedMps m/s and $altitudeM m', ({ expected, ...place }) => {
     const [point] = estimateOf({ pressurePa: undefined, ...place }).points
     expect(Math.abs(point!.placeFactor - expected)).toBeLessThan(6e-5)
   })

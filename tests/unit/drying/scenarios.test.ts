@@ -7,13 +7,11 @@ import { placeSpans } from '@/lib/drying/place-spans'
 import { roomSegments } from '@/lib/drying/room-segments'
 import { doseOverSpans, instantWhenDose } from '@/lib/drying/tree-dose'
 import type { CoatForClock, DryingSpan, FanHours, RoomReading } from '@/lib/drying/types'
+import { DOSE_TOLERANCE, EARLY, HUMID_NIGHT, LATE, MOISTURE_TOLERANCE, TIME_TOLERANCE_H } from '@/tests/factories/worked-days'
 import { buildCoat, buildCurve, buildReading, buildSpan, hour, hoursAfterStart, SEA_LEVEL_PA, START } from './build-readings'
 
 // Worked days of our own, at sea level. The expected numbers were computed twice, by prefix sums and by a fine quadrature
 // in another language. Tolerances: dose 0.2 %, moisture ratio 0.002, time 1 min.
-const DOSE_TOLERANCE = 0.002
-const MOISTURE_TOLERANCE = 0.002
-const TIME_TOLERANCE_H = 1 / 60
 
 const relativeError = (actual: number, expected: number) => Math.abs(actual / expected - 1)
 const error = (actual: number, expected: number) => Math.abs(actual - expected)
@@ -79,28 +77,7 @@ describe('a dehumidifier that trips after an hour and a half', () => {
 })
 
 describe('a humid night on the rack, 18:00 to noon', () => {
-  const airs: [number, number][] = [
-    [22, 50],
-    [21.5, 53],
-    [21, 57],
-    [20, 62],
-    [19, 67],
-    [18.5, 71],
-    [18, 75],
-    [17.5, 78],
-    [17, 81],
-    [16.5, 83],
-    [16, 85],
-    [16, 86],
-    [16.5, 84],
-    [18, 76],
-    [20, 64],
-    [22, 54],
-    [23, 48],
-    [23.5, 46],
-    [24, 44],
-  ]
-  const readings = airs.map(([airTempC, relHumidityPct], index) => buildReading(index, airTempC, relHumidityPct))
+  const readings = HUMID_NIGHT.map((air) => buildReading(...air))
   const span = buildSpan(buildCurve(readings), placeFactor(0.5, SEA_LEVEL_PA))
 
   it('has the room factors of the table', () => {
@@ -150,21 +127,8 @@ describe('a humid night on the rack, 18:00 to noon', () => {
 })
 
 describe('readings that are missing, then come late', () => {
-  const early = [
-    buildReading(0, 21, 50),
-    buildReading(0.5, 21.2, 49),
-    buildReading(4, 20, 62),
-    buildReading(4.5, 20, 61),
-    buildReading(5, 20.2, 60),
-  ]
-  const late = [
-    buildReading(1, 21.2, 49),
-    buildReading(1.5, 21, 51),
-    buildReading(2, 20.8, 54),
-    buildReading(2.5, 20.6, 56),
-    buildReading(3, 20.4, 58),
-    buildReading(3.5, 20.2, 60),
-  ]
+  const early = EARLY.map((air) => buildReading(...air))
+  const late = LATE.map((air) => buildReading(...air))
   const coat = buildCoat({ needReferenceHours: 3.5 })
 
   it('credits a gap low, bounds it both ways and is likely dry at 4.65 h', () => {
