@@ -14,16 +14,19 @@ export type ReadingsInput = {
   source: ReadingSource
   /** The member who typed it; null from a sensor. */
   enteredBy: string | null
-  rows: readonly (Air & { measuredAt: number })[]
+  /** `pressurePa`: of a barometer beside it, where there is one. */
+  rows: readonly (Air & { measuredAt: number; pressurePa?: number | undefined })[]
 }
 
-/**
- * Stores readings of one sensor and rewrites the hours they touch; rows already known change nothing.
- *
- * @returns how many rows were new.
- */
-export function recordReadings({ sensorId, source, enteredBy, rows }: ReadingsInput, { clock }: { clock: Clock }): Promise<number> {
-  if (rows.length === 0) return Promise.resolve(0)
+/** What became of the rows: added and repeated are all of them; marked ones are kept, and count for nothing in the clock. */
+export type ReadingsOutcome = { added: number; repeated: number; marked: number }
+
+/** Stores readings of one sensor and rewrites the hours they touch; rows already known change nothing. */
+export function recordReadings(
+  { sensorId, source, enteredBy, rows }: ReadingsInput,
+  { clock }: { clock: Clock },
+): Promise<ReadingsOutcome> {
+  if (rows.length === 0) return Promise.resolve({ added: 0, repeated: 0, marked: 0 })
   return inTransaction(async () => {
     const foundry = await Foundry.findByPk(1, { rejectOnEmpty: true })
     const pressurePa = stationPressurePa(foundry.altitudeM)
@@ -42,7 +45,7 @@ export function recordReadings({ sensorId, source, enteredBy, rows }: ReadingsIn
         instants.reduce((a, b) => Math.max(a, b)),
       )
     }
-    return inserted
+    return { added: inserted, repeated: rows.length - inserted, marked: 0 }
   })
 }
 

@@ -142,7 +142,7 @@ export async function buildTree(foundry: TestFoundry, overrides: TreeOverrides =
 }
 
 /** Steady air of a sensor between two instants, a reading every five minutes; 21 °C and 50 % is one reference hour an hour. */
-export function buildAir(sensorId: number, from: number, to: number, air = { airTempC: 21, relHumidityPct: 50 }): Promise<number> {
+export function buildAir(sensorId: number, from: number, to: number, air = { airTempC: 21, relHumidityPct: 50 }) {
   const rows = []
   for (let measuredAt = from; measuredAt <= to; measuredAt += 5 * MINUTE) rows.push({ measuredAt, ...air })
   return recordReadings({ sensorId, source: 'sensor', enteredBy: null, rows }, { clock: { now: () => to } })

@@ -77,8 +77,8 @@ describe('the hourly table', () => {
 
   it('counts a row that is known already only once', async () => {
     const sensorId = await freshSensor()
-    expect(await record(sensorId, [row(0), row(5)])).toBe(2)
-    expect(await record(sensorId, [row(5, 70), row(10)])).toBe(1)
+    expect(await record(sensorId, [row(0), row(5)])).toMatchObject({ added: 2, repeated: 0 })
+    expect(await record(sensorId, [row(5, 70), row(10)])).toMatchObject({ added: 1, repeated: 1 })
     expect(await Reading.findOne({ where: { sensorId, measuredAt: NOW + 5 * MINUTE } })).toMatchObject({ relHumidityPct: 50 })
   })
 
