@@ -29,6 +29,7 @@ import { isBatteryLow } from '@/lib/room/sensor-warnings'
 import type { ShiftSpeed } from '@/lib/room/shift-speeds'
 import { requireMemberPage } from '@/lib/server/auth'
 import './room.css'
+import './sensor-note.css'
 
 export const metadata: Metadata = { title: 'Room' }
 
