@@ -5,6 +5,7 @@ const resolve = { alias: { '@': import.meta.dirname } }
 // Three floors of tests. 'server' starts the production build, so `npm test` builds first.
 export default defineConfig({
   test: {
+    maxWorkers: '100%',
     projects: [
       { resolve, test: { name: 'pure', include: ['tests/{unit,reference,architecture}/**/*.test.ts'] } },
       {
@@ -23,7 +24,9 @@ export default defineConfig({
           include: ['tests/{api,browser}/**/*.test.ts'],
           testTimeout: 120_000,
           hookTimeout: 120_000,
-          fileParallelism: false,
+          // Each file has its own server, port and records. More side by side, and they would wait for each other's browsers.
+          maxWorkers: 2,
+          sequence: { groupOrder: 1 },
         },
       },
     ],

@@ -1,4 +1,4 @@
-import { millisecondsInDay, millisecondsInHour, millisecondsInMinute } from 'date-fns/constants'
+import { millisecondsInDay, millisecondsInHour, millisecondsInMinute, millisecondsInSecond } from 'date-fns/constants'
 import { COATING_WAYS, STUCCOS } from '@/lib/coats/vocabulary'
 import type { PlannedCoat } from '@/lib/demo/plan-coats'
 import type { DemoPlan, TaggedTree } from '@/lib/demo/plan'
@@ -18,6 +18,7 @@ export type Happening =
   | Of<'stir', { bath: 'face' | 'backup' }>
   | Of<'reading', { room: Air }>
 
+const SECOND = millisecondsInSecond
 const MINUTE = millisecondsInMinute
 const OPERATORS = ['maud', 'halvard', 'oona'] as const
 const SUPERVISOR = 'ines'
@@ -54,7 +55,9 @@ function ofTree(tree: TaggedTree, { now, hours }: DemoPlan): Happening[] {
   }
   if (story?.kind === 'looked at') {
     const [from, to] = longestWait(tree)
-    const at = story.verdict === 'looks dry' ? to - 4 * MINUTE : (lastAtWork(hours, from + (to - from) / 3, MINUTE) ?? from)
+    // To the second: an instant is stored as a whole number.
+    const third = Math.floor((to - from) / 3 / SECOND) * SECOND
+    const at = story.verdict === 'looks dry' ? to - 4 * MINUTE : (lastAtWork(hours, from + third, MINUTE) ?? from)
     if (at > from + 10 * MINUTE) list.push({ at, kind: 'look', by: operatorAt(at, 2), tree, verdict: story.verdict })
   }
   return list

@@ -1,7 +1,6 @@
 import { execFile } from 'node:child_process'
 import { randomUUID } from 'node:crypto'
 import { mkdirSync, mkdtempSync, readFileSync, rmSync, statSync } from 'node:fs'
-import { createServer } from 'node:net'
 import { tmpdir } from 'node:os'
 import { join } from 'node:path'
 import { setTimeout as sleep } from 'node:timers/promises'
@@ -9,7 +8,7 @@ import { promisify } from 'node:util'
 import sqlite3 from 'sqlite3'
 import { afterEach, describe, expect, it } from 'vitest'
 import { signIn } from '@/tests/setup/client'
-import { makeDataDir, seedMember, startProgram, startRefused, startServer, type Program } from '@/tests/setup/server'
+import { freePort, makeDataDir, seedMember, startProgram, startRefused, startServer, type Program } from '@/tests/setup/server'
 
 const running: Program[] = []
 const folders: string[] = []
@@ -24,15 +23,6 @@ const newFolder = () => {
   folders.push(folder)
   return folder
 }
-
-const freePort = (): Promise<number> =>
-  new Promise((resolve) => {
-    const probe = createServer()
-    probe.listen(0, '127.0.0.1', () => {
-      const address = probe.address()
-      probe.close(() => resolve(typeof address === 'object' && address ? address.port : 0))
-    })
-  })
 
 const OWN_SETTINGS = /^(NEXTAUTH_|VAPID_|PUSH_|DATA_DIR|HOST|PORT|UV_THREADPOOL_SIZE|NODE_ENV|NODE_OPTIONS|VITEST)/
 
@@ -108,14 +98,14 @@ describe('npm start', () => {
 
   it('keeps its secrets, and clears away what a killed start left running', async () => {
     const [dataDir, port] = [newFolder(), await freePort()]
-    const first = start(dataDir, port)
+    const first = start(dataDir, port, {}, ['--empty'])
     await opens(first)
     const secrets = readFileSync(join(dataDir, 'secrets.json'), 'utf8')
     const { children } = lockOf(dataDir)
     first.process.kill('SIGKILL')
     await until(() => !isAlive(children.worker), 'The end of the orphaned worker', 10_000)
     const began = performance.now()
-    const second = start(dataDir, port)
+    const second = start(dataDir, port, {}, ['--empty'])
     await opens(second)
     expect(performance.now() - began).toBeLessThan(30_000)
     expect(isAlive(children.web)).toBe(false)
