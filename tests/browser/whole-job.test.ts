@@ -141,12 +141,27 @@ it('does the whole job: dip, dry, be told, dip again, look over, release', async
   expect([...tablet.errors, ...laptop.errors]).toEqual([])
 }, 240_000)
 
-/** Hands a decrypted push to the real service worker, as the browser's push client would, and tells what it shows. */
+/**
+ * Hands a decrypted push to the real service worker, as the browser's push client would, and tells what it shows. Asked is the worker:
+ * the browser's own list of notifications forgets one that is asked for while it is on its way to the screen.
+ */
 async function shownByServiceWorker(page: Page, data: string): Promise<string[]> {
-  await page.context().grantPermissions(['notifications'], { origin: server.baseUrl })
+  const context = page.context()
+  await context.grantPermissions(['notifications'], { origin: server.baseUrl })
   await page.goto('/me')
   await page.evaluate(() => navigator.serviceWorker.register('/sw.js').then(() => navigator.serviceWorker.ready))
-  const cdp = await page.context().newCDPSession(page)
+  const serviceWorker = context.serviceWorkers()[0] ?? (await context.waitForEvent('serviceworker'))
+  await serviceWorker.evaluate(() => {
+    // oxlint-disable-next-line typescript/no-unsafe-type-assertion -- runs in the worker, whose types are not the page's
+    const self = globalThis as unknown as { registration: ServiceWorkerRegistration; shown: string[] }
+    const show = self.registration.showNotification.bind(self.registration)
+    self.shown = []
+    self.registration.showNotification = async (title, options) => {
+      await show(title, options)
+      self.shown.push(title)
+    }
+  })
+  const cdp = await context.newCDPSession(page)
   const registered = new Promise<string>((resolve) => {
     cdp.on('ServiceWorker.workerRegistrationUpdated', ({ registrations }) => {
       const [registration] = registrations
@@ -155,11 +170,8 @@ async function shownByServiceWorker(page: Page, data: string): Promise<string[]>
   })
   await cdp.send('ServiceWorker.enable')
   await cdp.send('ServiceWorker.deliverPushMessage', { origin: server.baseUrl, registrationId: await registered, data })
-  const titles = () =>
-    page.evaluate(async () => {
-      const registration = await navigator.serviceWorker.ready
-      return (await registration.getNotifications()).map((notification) => notification.title)
-    })
-  await expect.poll(titles, SOON).not.toEqual([])
-  return titles()
+  // oxlint-disable-next-line typescript/no-unsafe-type-assertion -- set above
+  const shown = () => serviceWorker.evaluate(() => (globalThis as unknown as { shown: string[] }).shown)
+  await expect.poll(shown, SOON).not.toEqual([])
+  return shown()
 }
