@@ -24,6 +24,8 @@ export default defineConfig({
           include: ['tests/{api,browser}/**/*.test.ts'],
           testTimeout: 120_000,
           hookTimeout: 120_000,
+          // A page on a busy machine takes more than the second that is usual for values.
+          expect: { poll: { timeout: 20_000 } },
           // Each file has its own server, port and records. More side by side, and they would wait for each other's browsers.
           maxWorkers: 2,
           sequence: { groupOrder: 1 },

@@ -2,7 +2,7 @@ import type { Browser, Locator, Page } from 'playwright-core'
 import { afterAll, beforeAll, expect, it } from 'vitest'
 import { pushDevices } from '@/lib/notices/push-contract'
 import type { Role } from '@/lib/members/roles'
-import { LAPTOP, launchBrowser, newDevice, signInOn } from '@/tests/setup/browser'
+import { LAPTOP, launchBrowser, newDevice, open, signInOn } from '@/tests/setup/browser'
 import { newClient, signIn } from '@/tests/setup/client'
 import { startFakePushService, type FakePushService } from '@/tests/setup/fake-push-service'
 import { seedMembers, startServer, startWorker, type Program, type SeededMember, type TestServer } from '@/tests/setup/server'
@@ -121,11 +121,11 @@ it('does the whole job: dip, dry, be told, dip again, look over, release', async
     .waitFor()
 
   // The supervisor looks it over and releases it; it leaves the floor.
-  await laptop.page.goto(`/trees/${first.tag}`)
+  await open(laptop.page, `/trees/${first.tag}`)
   await expect.poll(() => laptop.page.textContent('main'), SOON).toMatch(/Dried out/)
   await laptop.page.getByRole('button', { name: 'Looked over' }).click()
   await expect.poll(() => laptop.page.textContent('main'), SOON).toMatch(/Ready for burnout/)
-  await laptop.page.goto('/burnout')
+  await open(laptop.page, '/burnout')
   const tagsOnFloor = (tag: string) => tablet.page.getByText(tag, { exact: true }).count()
   await expect.poll(() => tagsOnFloor(first.tag), SOON).toBe(1)
   await laptop.page.getByRole('checkbox', { name: `Release ${first.tag}` }).check()
@@ -136,7 +136,7 @@ it('does the whole job: dip, dry, be told, dip again, look over, release', async
   await laptop.page.keyboard.up('Enter')
   await expect.poll(() => tagsOnFloor(first.tag), SOON).toBe(0)
   expect(await tagsOnFloor(second.tag)).toBe(1)
-  await laptop.page.goto(`/trees/${first.tag}`)
+  await open(laptop.page, `/trees/${first.tag}`)
   expect(await laptop.page.textContent('main')).toMatch(/Released/)
   expect([...tablet.errors, ...laptop.errors]).toEqual([])
 }, 240_000)
@@ -148,7 +148,7 @@ it('does the whole job: dip, dry, be told, dip again, look over, release', async
 async function shownByServiceWorker(page: Page, data: string): Promise<string[]> {
   const context = page.context()
   await context.grantPermissions(['notifications'], { origin: server.baseUrl })
-  await page.goto('/me')
+  await open(page, '/me')
   await page.evaluate(() => navigator.serviceWorker.register('/sw.js').then(() => navigator.serviceWorker.ready))
   const serviceWorker = context.serviceWorkers()[0] ?? (await context.waitForEvent('serviceworker'))
   await serviceWorker.evaluate(() => {
