@@ -45,7 +45,7 @@ async function until(isTrue: () => boolean | Promise<boolean>, what: string, wit
   }
 }
 
-type Lock = { pid: number; port: number; children: { web: number; worker: number } }
+type Lock = { pid: number; port: number; children: { web: number; worker: number; 'jobs/seed-demo.ts'?: number } }
 // oxlint-disable-next-line typescript/no-unsafe-type-assertion -- written by the start script
 const lockOf = (dataDir: string) => JSON.parse(readFileSync(join(dataDir, 'running.json'), 'utf8')) as Lock
 
@@ -63,10 +63,19 @@ const opens = (program: Program) => until(() => /Stop with Ctrl-C/.test(program.
 const health = (port: number) => fetch(`http://127.0.0.1:${port}/api/health`).then((response) => response.json())
 
 describe('npm start', () => {
-  it('opens, brings a killed worker back, refuses a second start, and ends without a trace', async () => {
+  it('opens after a killed start, brings a killed worker back, refuses a second start, and ends without a trace', async () => {
     const [dataDir, port] = [newFolder(), await freePort()]
+    // One that is killed while it makes the demo leaves nothing in the way of the next.
+    const killed = start(dataDir, port)
+    const maker = () => (/making the demo/.test(killed.output()) ? lockOf(dataDir).children['jobs/seed-demo.ts'] : undefined)
+    await until(() => maker() !== undefined, 'The making of the demo')
+    const orphan = maker() ?? 0
+    killed.process.kill('SIGKILL')
+    await killed.exited
+
     const first = start(dataDir, port)
     await opens(first)
+    expect(isAlive(orphan)).toBe(false)
     expect(first.output()).toContain(`Kilnward is open: http://localhost:${port}`)
     expect(first.output()).toContain(join(dataDir, 'kilnward.sqlite'))
     expect(first.output()).toMatch(/Sign in as:\n {2}\w+ +\S+@\S+ +\S+\n/)
