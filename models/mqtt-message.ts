@@ -10,7 +10,6 @@ export class MqttMessage extends Model<InferAttributes<MqttMessage>, InferCreati
   declare sha256: string
   declare outcome: MessageOutcome
   declare reason: string
-  declare batteryPct: number | null
 
   static initialize(sequelize: Sequelize): typeof MqttMessage {
     return MqttMessage.init(
@@ -21,7 +20,6 @@ export class MqttMessage extends Model<InferAttributes<MqttMessage>, InferCreati
         sha256: { type: DataTypes.TEXT, allowNull: false },
         outcome: { type: DataTypes.TEXT, allowNull: false },
         reason: { type: DataTypes.TEXT, allowNull: false, defaultValue: '' },
-        batteryPct: { type: DataTypes.DOUBLE },
       },
       { sequelize, modelName: 'MqttMessage', tableName: 'mqtt_messages', underscored: true, timestamps: false },
     )

@@ -20,6 +20,7 @@ export class MqttTopic extends Model<InferAttributes<MqttTopic>, InferCreationAt
   /** Null: its messages do not tell this. */
   declare tempPath: string | null
   declare rhPath: string | null
+  declare pressurePath: string | null
   declare timePath: string | null
   declare batteryPath: string | null
   declare tempUnit: TempUnit
@@ -37,6 +38,7 @@ export class MqttTopic extends Model<InferAttributes<MqttTopic>, InferCreationAt
         sensorId: { type: DataTypes.INTEGER, allowNull: false },
         tempPath: { type: DataTypes.TEXT },
         rhPath: { type: DataTypes.TEXT },
+        pressurePath: { type: DataTypes.TEXT },
         timePath: { type: DataTypes.TEXT },
         batteryPath: { type: DataTypes.TEXT },
         tempUnit: { type: DataTypes.TEXT, allowNull: false },

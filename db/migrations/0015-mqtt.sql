@@ -28,6 +28,8 @@ CREATE TABLE mqtt_topics (
   -- Null: it does not tell this.
   temp_path TEXT CHECK (length(temp_path) BETWEEN 1 AND 120),
   rh_path TEXT CHECK (length(rh_path) BETWEEN 1 AND 120),
+  -- Of a barometer, in Pa, hPa or kPa, told apart by size.
+  pressure_path TEXT CHECK (length(pressure_path) BETWEEN 1 AND 120),
   time_path TEXT CHECK (length(time_path) BETWEEN 1 AND 120),
   battery_path TEXT CHECK (length(battery_path) BETWEEN 1 AND 120),
   temp_unit TEXT NOT NULL CHECK (temp_unit IN ('degC', 'degF')),
@@ -48,9 +50,8 @@ CREATE TABLE mqtt_messages (
   -- Its beginning.
   text TEXT NOT NULL CHECK (length(text) <= 500),
   sha256 TEXT NOT NULL CHECK (length(sha256) = 64),
-  outcome TEXT NOT NULL CHECK (outcome IN ('taken', 'waiting', 'repeated', 'passed over', 'refused')),
-  reason TEXT NOT NULL DEFAULT '' CHECK (length(reason) <= 500),
-  battery_pct REAL CHECK (battery_pct BETWEEN 0 AND 100)
+  outcome TEXT NOT NULL CHECK (outcome IN ('taken', 'set aside', 'waiting', 'repeated', 'passed over', 'refused')),
+  reason TEXT NOT NULL DEFAULT '' CHECK (length(reason) <= 500)
 ) STRICT;
 CREATE INDEX mqtt_messages_received ON mqtt_messages (received_at);
 

@@ -19,7 +19,8 @@ export function addMqttTopic(input: TopicInput, { member, clock }: By): Promise<
   return inTransaction(async () => {
     const now = clock.now()
     const sensor = await fedSensor(input, null)
-    if ((await MqttTopic.count()) >= MOST_TOPICS) throw new AppError('conflict', `There are ${MOST_TOPICS} topics, and no more can be kept.`)
+    if ((await MqttTopic.count()) >= MOST_TOPICS)
+      throw new AppError('conflict', `There are ${MOST_TOPICS} topics, and no more can be kept.`)
     const topicId = newId(now)
     await MqttTopic.create({ ...input, id: topicId, isDemo: member.isDemo ?? false, createdAt: now })
     await addFoundryEvent(
@@ -82,6 +83,6 @@ async function fedSensor({ sensorId, filter }: TopicInput, ownId: string | null)
 
 /** What the history tells of a topic. */
 function told(topic: TopicInput, sensor: { name: string } | undefined) {
-  const { filter, tempPath, rhPath, timePath, batteryPath, tempUnit, timeForm } = topic
-  return { topic: filter, sensor: sensor?.name ?? '', tempPath, rhPath, timePath, batteryPath, tempUnit, timeForm }
+  const { filter, tempPath, rhPath, pressurePath, timePath, batteryPath, tempUnit, timeForm } = topic
+  return { topic: filter, sensor: sensor?.name ?? '', tempPath, rhPath, pressurePath, timePath, batteryPath, tempUnit, timeForm }
 }

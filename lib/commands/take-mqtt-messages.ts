@@ -2,8 +2,8 @@ import { millisecondsInDay, millisecondsInHour } from 'date-fns/constants'
 import { Op, QueryTypes } from 'sequelize'
 import { recordReadings } from '@/lib/commands/record-readings'
 import type { Clock } from '@/lib/core/clock'
-import type { SortedMessage } from '@/lib/mqtt/sort-messages'
-import type { ReadingRow } from '@/lib/room/reading-contract'
+import type { MqttRow, SortedMessage } from '@/lib/mqtt/sort-messages'
+import { REASON_SENTENCES, type SetAsideReason } from '@/lib/room/reading-marks'
 import { database, inTransaction, MqttHour, MqttMessage, Sensor } from '@/models'
 
 const LONGEST_TEXT = 500
@@ -24,47 +24,67 @@ export function takeMqttMessages(
 ): Promise<number> {
   if (messages.length === 0 && dropped === 0) return Promise.resolve(0)
   return inTransaction(async () => {
-    const added = await recordAll(messages, clock)
-    await keepLast(messages, added)
-    const readings = [...added.values()].reduce((sum, count) => sum + count, 0)
+    const recorded = await recordAll(messages, clock)
+    await noteBatteries(messages)
+    await keepLast(messages, recorded)
+    const readings = [...recorded.values()].reduce((sum, { added }) => sum + added, 0)
     await countHour({ messages, readings, dropped }, clock.now())
     return readings
   })
 }
 
-/** @returns how many rows were new, by sensor. */
-async function recordAll(messages: readonly SortedMessage[], clock: Clock): Promise<Map<number, number>> {
-  const bySensor = new Map<number, Map<number, ReadingRow>>()
+/** What became of the rows of one sensor: how many were new, and which are kept and not counted, by their instant. */
+type Recorded = { added: number; marks: ReadonlyMap<number, SetAsideReason> }
+
+async function recordAll(messages: readonly SortedMessage[], clock: Clock): Promise<Map<number, Recorded>> {
+  const bySensor = new Map<number, Map<number, MqttRow>>()
   for (const { sensorId, row } of messages.flatMap(({ rows }) => rows)) {
     // Of several in one moment the last: what waited at the broker comes oldest first.
-    bySensor.set(sensorId, (bySensor.get(sensorId) ?? new Map<number, ReadingRow>()).set(row.measuredAt, row))
+    bySensor.set(sensorId, (bySensor.get(sensorId) ?? new Map<number, MqttRow>()).set(row.measuredAt, row))
   }
-  const added = new Map<number, number>()
-  if (bySensor.size === 0) return added
+  const recorded = new Map<number, Recorded>()
+  if (bySensor.size === 0) return recorded
   // One that was retired or removed in this second takes nothing any more.
   for (const { id } of await Sensor.findAll({ where: { id: [...bySensor.keys()], retiredAt: null } })) {
     const rows = [...(bySensor.get(id)?.values() ?? [])]
-    added.set(id, await recordReadings({ sensorId: id, source: 'sensor', enteredBy: null, rows }, { clock }))
+    const { added, marks } = await recordReadings({ sensorId: id, source: 'sensor', enteredBy: null, rows }, { clock })
+    const marked = rows.flatMap(({ measuredAt }, index) => (marks[index] ? [[measuredAt, marks[index]] as const] : []))
+    recorded.set(id, { added, marks: new Map(marked) })
   }
-  return added
+  return recorded
 }
 
-async function keepLast(messages: readonly SortedMessage[], added: ReadonlyMap<number, number>): Promise<void> {
+async function noteBatteries(messages: readonly SortedMessage[]): Promise<void> {
+  const newest = new Map(
+    messages.flatMap(({ batteries, arrival }) => batteries.map(({ sensorId, pct }) => [sensorId, { pct, at: arrival.arrivedAt }] as const)),
+  )
+  for (const [id, { pct, at }] of newest) await Sensor.update({ batteryPct: pct, batteryAt: at }, { where: { id } })
+}
+
+/** The outcome that is known only once the rows are in. */
+function outcomeOf({ outcome, reason, rows }: SortedMessage, recorded: ReadonlyMap<number, Recorded>) {
+  if (outcome !== 'taken') return { outcome, reason }
+  const mark = rows.map(({ sensorId, row }) => recorded.get(sensorId)?.marks.get(row.measuredAt)).find((each) => each !== undefined)
+  if (mark !== undefined) return { outcome: 'set aside' as const, reason: REASON_SENTENCES[mark] }
+  const isKnown = rows.every(({ sensorId }) => (recorded.get(sensorId)?.added ?? 0) === 0)
+  return isKnown ? { outcome: 'repeated' as const, reason: 'There is a reading of this moment already.' } : { outcome, reason }
+}
+
+async function keepLast(messages: readonly SortedMessage[], recorded: ReadonlyMap<number, Recorded>): Promise<void> {
   const last = new Map(messages.map((message) => [message.arrival.topic, message]))
-  const rows = [...last.values()].map(({ arrival, outcome, reason, rows: readings, batteryPct }) => {
-    const isKnown = outcome === 'taken' && readings.every(({ sensorId }) => (added.get(sensorId) ?? 0) === 0)
+  const rows = [...last.values()].map((message) => {
+    const { outcome, reason } = outcomeOf(message, recorded)
     return {
-      topic: arrival.topic,
-      receivedAt: arrival.arrivedAt,
-      text: arrival.text.slice(0, LONGEST_TEXT),
-      sha256: arrival.sha256,
-      outcome: isKnown ? ('repeated' as const) : outcome,
-      reason: (isKnown ? 'There is a reading of this moment already.' : reason).slice(0, LONGEST_REASON),
-      batteryPct,
+      topic: message.arrival.topic,
+      receivedAt: message.arrival.arrivedAt,
+      text: message.arrival.text.slice(0, LONGEST_TEXT),
+      sha256: message.arrival.sha256,
+      outcome,
+      reason: reason.slice(0, LONGEST_REASON),
     }
   })
   if (rows.length === 0) return
-  await MqttMessage.bulkCreate(rows, { updateOnDuplicate: ['receivedAt', 'text', 'sha256', 'outcome', 'reason', 'batteryPct'] })
+  await MqttMessage.bulkCreate(rows, { updateOnDuplicate: ['receivedAt', 'text', 'sha256', 'outcome', 'reason'] })
   await database.query(
     `DELETE FROM mqtt_messages WHERE topic NOT IN (SELECT topic FROM mqtt_messages ORDER BY received_at DESC LIMIT ${MOST_MESSAGES})`,
     { type: QueryTypes.BULKDELETE },

@@ -5,7 +5,7 @@ import { formatMoment } from '@/lib/format/local-time'
 export const statusTopic = (clientId: string): string => `kilnward/${clientId}/status`
 
 /** What is known of a failed connection: the code of the system or of TLS, and the number of the broker's refusal (MQTT 3.1.1, table 3.1). */
-export type ConnectionFault = { code: string; refusal: number | null; message: string }
+export type ConnectionFault = { code: string; refusal: number | null }
 
 const REFUSALS: Readonly<Record<number, string>> = {
   1: 'The broker does not speak MQTT 3.1.1.',
@@ -46,7 +46,10 @@ export type ConnectionState = {
 }
 
 /** How the connection stands in a few words, and whether that is as it should be. */
-export function connectionWords(state: ConnectionState, { now, timeZone }: { now: number; timeZone: string }): { isGood: boolean; text: string } {
+export function connectionWords(
+  state: ConnectionState,
+  { now, timeZone }: { now: number; timeZone: string },
+): { isGood: boolean; text: string } {
   if (!state.isOn) return { isGood: true, text: 'Switched off.' }
   if (!state.isWorkerAlive) return { isGood: false, text: 'Kilnward’s worker stands still, and with it the connection. Upkeep says more.' }
   if (state.connectedSince !== null) {

@@ -31,8 +31,8 @@ export function readJsonPath(text: string): JsonPath | null {
 export function valueAtPath(message: unknown, path: JsonPath): unknown {
   let value = message
   for (const step of path) {
-    // Only what the message itself holds: `constructor` is a path to nothing.
-    if (value === null || typeof value !== 'object' || !Object.hasOwn(value, step)) return undefined
+    // Only what the message itself holds: `constructor` is a path to nothing, nor is a list's `length` in it.
+    if (value === null || typeof value !== 'object' || !Object.prototype.propertyIsEnumerable.call(value, step)) return undefined
     value = (value as Record<string, unknown>)[step]
   }
   return value

@@ -7,22 +7,27 @@ import { instant } from '@/lib/room/reading-contract'
 export type MessageForm = {
   tempPath: string | null
   rhPath: string | null
+  pressurePath: string | null
   timePath: string | null
   batteryPath: string | null
   tempUnit: TempUnit
   timeForm: TimeForm
 }
 
-/** What one message tells: °C, % and epoch milliseconds. Null: this topic does not tell it. */
+/** What one message tells: °C, %, Pa and epoch milliseconds. Null: this topic does not tell it. */
 export type MessageValues = {
   airTempC: number | null
   relHumidityPct: number | null
+  pressurePa: number | null
   measuredAt: number | null
   batteryPct: number | null
 }
 
 /** Loggers' messages are a few hundred bytes; a camera's picture is not read. */
 export const LARGEST_MESSAGE_BYTES = 16_384
+/** From far above the highest town to the Dead Sea. */
+const LEAST_PRESSURE_PA = 50_000
+const MOST_PRESSURE_PA = 110_000
 const PATHS_TOLD = 6
 
 /** A message that cannot be read; the sentence is for the person who set the paths. */
@@ -42,6 +47,7 @@ export function readMessage(text: string, form: MessageForm): { values: MessageV
       values: {
         airTempC: airTemp === null ? null : toSi(airTemp, form.tempUnit),
         relHumidityPct: numberAt(message, form.rhPath, 'humidity'),
+        pressurePa: pressureAt(message, form.pressurePath),
         measuredAt: timeAt(message, form),
         batteryPct: batteryAt(message, form.batteryPath),
       },
@@ -84,6 +90,14 @@ function timeAt(message: unknown, { timePath, timeForm }: MessageForm): number |
   const count = asNumber(value)
   if (count === null || count < 0) throw new Unreadable(`What stands at ${timePath} is not a count since 1970.`)
   return Math.round(timeForm === 'epoch s' ? count * 1000 : count)
+}
+
+/** In Pa, hPa (millibar) or kPa: where people live no figure of one can be meant in another. Like the battery, it keeps no reading away. */
+function pressureAt(message: unknown, path: string | null): number | null {
+  const figure = path === null ? null : asNumber(valueAtPath(message, readJsonPath(path) ?? []))
+  const factor =
+    figure === null ? undefined : [1, 100, 1000].find((each) => figure * each >= LEAST_PRESSURE_PA && figure * each <= MOST_PRESSURE_PA)
+  return figure === null || factor === undefined ? null : figure * factor
 }
 
 /** Beside the point: a battery that cannot be read keeps no reading away. */

@@ -23,19 +23,22 @@ export type Arrival = {
   isSentAgain: boolean
 }
 
+/** A row of readings, with the pressure of a barometer beside the sensor. */
+export type MqttRow = ReadingRow & { pressurePa?: number | undefined }
+
 /**
- * What became of a message. 'waiting': it tells one half of a reading; 'passed over': nobody knows how old it is;
- * 'repeated': known already.
+ * What became of a message. 'set aside': kept, and not counted by the clock; 'waiting': it tells one half of a reading;
+ * 'passed over': nobody knows how old it is; 'repeated': known already.
  */
-export type MessageOutcome = 'taken' | 'waiting' | 'repeated' | 'passed over' | 'refused'
+export type MessageOutcome = 'taken' | 'set aside' | 'waiting' | 'repeated' | 'passed over' | 'refused'
 
 export type SortedMessage = {
   arrival: Arrival
   outcome: MessageOutcome
   /** A sentence where it gave no reading. */
   reason: string
-  rows: { sensorId: number; row: ReadingRow }[]
-  batteryPct: number | null
+  rows: { sensorId: number; row: MqttRow }[]
+  batteries: { sensorId: number; pct: number }[]
 }
 
 /** A message without a time counts from its arrival, to the full ten seconds: what comes twice in a moment is one reading. */
@@ -58,7 +61,7 @@ export function messageSorter(): Sorter {
   const waiting = new Map<number, Halves>()
 
   /** The reading that a half completes, each half counting once; null while the other is missing or too old. */
-  function pair(sensorId: number, { airTempC, relHumidityPct }: MessageValues, measuredAt: number): ReadingRow | null {
+  function pair(sensorId: number, { airTempC, relHumidityPct }: MessageValues, measuredAt: number): Omit<MqttRow, 'pressurePa'> | null {
     const halves = waiting.get(sensorId) ?? { airTempC: null, relHumidityPct: null }
     if (airTempC !== null) halves.airTempC = { value: airTempC, measuredAt }
     if (relHumidityPct !== null) halves.relHumidityPct = { value: relHumidityPct, measuredAt }
@@ -73,32 +76,33 @@ export function messageSorter(): Sorter {
   }
 
   function apply(arrival: Arrival, rule: TopicRule): Omit<SortedMessage, 'arrival'> {
-    const none = { rows: [], batteryPct: null }
     const read = readMessage(arrival.text, rule)
-    if ('refusal' in read) return { ...none, outcome: 'refused', reason: read.refusal }
+    if ('refusal' in read) return { rows: [], batteries: [], outcome: 'refused', reason: read.refusal }
     const { values } = read
-    const { batteryPct } = values
+    const none = { rows: [], batteries: values.batteryPct === null ? [] : [{ sensorId: rule.sensorId, pct: values.batteryPct }] }
     if (values.measuredAt === null) {
       const reason = ageUnknown(arrival)
-      if (reason !== null) return { ...none, batteryPct, outcome: 'passed over', reason }
+      if (reason !== null) return { ...none, outcome: 'passed over', reason }
     }
     const isWhole = values.airTempC !== null && values.relHumidityPct !== null
     // A whole reading with its own time is known by it; a half that came again would be laid to the next other half.
     if ((values.measuredAt === null || !isWhole) && repeats.isRepeat(arrival)) {
-      return { ...none, batteryPct, outcome: 'repeated', reason: 'The same message again.' }
+      return { ...none, outcome: 'repeated', reason: 'The same message again.' }
     }
     const measuredAt = values.measuredAt ?? Math.floor(arrival.arrivedAt / ARRIVAL_STEP_MS) * ARRIVAL_STEP_MS
     const row = isWhole ? { ...values, measuredAt } : pair(rule.sensorId, values, measuredAt)
     if (row === null) {
       const missing = values.airTempC === null ? 'temperature' : 'humidity'
-      return { ...none, batteryPct, outcome: 'waiting', reason: `Waits for the ${missing}, for 2 min at most.` }
+      return { ...none, outcome: 'waiting', reason: `Waits for the ${missing}, for 2 min at most.` }
     }
     const { rows, rejected } = checkRows(
       [{ measuredAt: row.measuredAt, airTempC: row.airTempC, relHumidityPct: row.relHumidityPct }],
       arrival.arrivedAt,
     )
-    if (rejected[0]) return { ...none, batteryPct, outcome: 'refused', reason: rejected[0].reason }
-    return { rows: rows.map((good) => ({ sensorId: rule.sensorId, row: good })), batteryPct, outcome: 'taken', reason: '' }
+    if (rejected[0]) return { ...none, outcome: 'refused', reason: rejected[0].reason }
+    const { pressurePa } = values
+    const told = rows.map((good) => ({ sensorId: rule.sensorId, row: pressurePa === null ? good : { ...good, pressurePa } }))
+    return { ...none, rows: told, outcome: 'taken', reason: '' }
   }
 
   return {
@@ -108,7 +112,7 @@ export function messageSorter(): Sorter {
       if (fitting.length === 0) return null
       if (arrival.sizeBytes > LARGEST_MESSAGE_BYTES) {
         const reason = `The message has ${arrival.sizeBytes} bytes; more than ${LARGEST_MESSAGE_BYTES} are not read.`
-        return { arrival, outcome: 'refused', reason, rows: [], batteryPct: null }
+        return { arrival, outcome: 'refused', reason, rows: [], batteries: [] }
       }
       const parts = fitting.map((rule) => ({ rule, ...apply(arrival, rule) }))
       repeats.note(arrival)
@@ -119,13 +123,13 @@ export function messageSorter(): Sorter {
         outcome: worst.outcome,
         reason: worst.reason !== '' && parts.length > 1 ? `${worst.rule.sensorName}: ${worst.reason}` : worst.reason,
         rows: parts.flatMap(({ rows }) => rows),
-        batteryPct: parts.find(({ batteryPct }) => batteryPct !== null)?.batteryPct ?? null,
+        batteries: parts.flatMap(({ batteries }) => batteries),
       }
     },
   }
 }
 
-const GRAVITY: readonly MessageOutcome[] = ['refused', 'passed over', 'waiting', 'taken', 'repeated']
+const GRAVITY: readonly MessageOutcome[] = ['refused', 'passed over', 'waiting', 'set aside', 'taken', 'repeated']
 
 function ageUnknown({ isRetained, isHeldBack }: Arrival): string | null {
   if (isRetained) return 'The broker kept it, and it does not say when it was measured. Nobody knows how old it is.'

@@ -9,7 +9,10 @@ const path = z
   .string()
   .trim()
   .max(120, 'A path has at most 120 letters.')
-  .refine((text) => text === '' || readJsonPath(text) !== null, 'A path is written like data.temp, $.probes[0].temp, or $ for the whole message.')
+  .refine(
+    (text) => text === '' || readJsonPath(text) !== null,
+    'A path is written like data.temp, $.probes[0].temp, or $ for the whole message.',
+  )
   .transform((text) => (text === '' ? null : text))
 
 /** A topic as typed. An empty path is a figure that the topic does not tell. */
@@ -25,6 +28,7 @@ export const topicInput = z
     sensorId: z.preprocess((value) => (value === '' ? undefined : Number(value)), z.int('Choose the sensor that it feeds.').positive()),
     tempPath: path,
     rhPath: path,
+    pressurePath: path,
     timePath: path,
     batteryPath: path,
     tempUnit: z.enum(TEMP_UNITS, 'Choose a unit.'),
@@ -52,6 +56,7 @@ export function topicFormValues(topic: TopicInput): TopicFormValues {
     sensorId: String(topic.sensorId),
     tempPath: topic.tempPath ?? '',
     rhPath: topic.rhPath ?? '',
+    pressurePath: topic.pressurePath ?? '',
     timePath: topic.timePath ?? '',
     batteryPath: topic.batteryPath ?? '',
     tempUnit: topic.tempUnit,
@@ -66,6 +71,7 @@ export function readTopicForm(form: FormData): TopicFormValues {
     sensorId: formText(form, 'sensorId'),
     tempPath: formText(form, 'tempPath'),
     rhPath: formText(form, 'rhPath'),
+    pressurePath: formText(form, 'pressurePath'),
     timePath: formText(form, 'timePath'),
     batteryPath: formText(form, 'batteryPath'),
     tempUnit: formText(form, 'tempUnit'),

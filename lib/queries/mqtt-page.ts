@@ -26,7 +26,6 @@ export type MqttMessageRow = {
   text: string
   outcome: MessageOutcome
   reason: string
-  batteryPct: number | null
 }
 
 export type MqttPage = {
@@ -97,6 +96,7 @@ export async function loadMqttPage({ clock }: { clock: Clock }): Promise<MqttPag
       sensorId: topic.sensorId,
       tempPath: topic.tempPath,
       rhPath: topic.rhPath,
+      pressurePath: topic.pressurePath,
       timePath: topic.timePath,
       batteryPath: topic.batteryPath,
       tempUnit: topic.tempUnit,
@@ -106,13 +106,12 @@ export async function loadMqttPage({ clock }: { clock: Clock }): Promise<MqttPag
       isDemo: topic.isDemo && !foundry.isDemo,
     })),
     sensors: sensors.map(({ id, name }) => ({ id, name })),
-    messages: messages.map(({ topic, receivedAt, text, outcome, reason, batteryPct }) => ({
+    messages: messages.map(({ topic, receivedAt, text, outcome, reason }) => ({
       topic,
       receivedAt,
       text,
       outcome,
       reason,
-      batteryPct,
     })),
   }
 }

@@ -24,7 +24,7 @@ export async function loadMqttPlan(): Promise<MqttPlan | null> {
   const [broker, rules] = await Promise.all([
     MqttBroker.findByPk(1),
     database.query<TopicRule>(
-      `SELECT t.filter, t.sensor_id AS sensorId, s.name AS sensorName, t.temp_path AS tempPath, t.rh_path AS rhPath,
+      `SELECT t.filter, t.sensor_id AS sensorId, s.name AS sensorName, t.temp_path AS tempPath, t.rh_path AS rhPath, t.pressure_path AS pressurePath,
               t.time_path AS timePath, t.battery_path AS batteryPath, t.temp_unit AS tempUnit, t.time_form AS timeForm
          FROM mqtt_topics t JOIN sensors s ON s.id = t.sensor_id WHERE s.retired_at IS NULL ORDER BY t.filter, t.sensor_id`,
       { type: QueryTypes.SELECT },
