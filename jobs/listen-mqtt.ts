@@ -157,6 +157,7 @@ export function listenMqtt(parts: ListenParts): () => Promise<void> {
   }
 
   async function look() {
+    if (isStopping) return
     const former = plan
     let next = await loadMqttPlan()
     if (isStopping) return
@@ -167,7 +168,7 @@ export function listenMqtt(parts: ListenParts): () => Promise<void> {
       await noteMqttConnection({ connectedSince: null, awaySince: null, trouble: '', heldFilters: [] })
       next = next && { ...next, heldFilters: [], awaySince: null }
     }
-    if (next?.isOn && next.isPasswordLost) await noteMqttConnection({ connectedSince: null, trouble: PASSWORD_LOST })
+    if (isLost(next) && !isLost(former)) await noteMqttConnection({ connectedSince: null, trouble: PASSWORD_LOST })
     if (next && isWanted && !link) open(next)
     else if (link && connection.isOpen && former !== null && filtersOf(former) !== filtersOf(next)) await agreeOnFilters(link)
   }
@@ -188,7 +189,10 @@ export function listenMqtt(parts: ListenParts): () => Promise<void> {
     connection.isOpen = false
     await former?.close()
     await keepInTurn(flush)
-    if (wasOpen) await inTurn(() => noteMqttConnection({ connectedSince: null, awaySince: clock.now() }))
+    // After whatever was under way, so that nothing touches the records once this has ended.
+    await inTurn(async () => {
+      if (wasOpen) await noteMqttConnection({ connectedSince: null, awaySince: clock.now() })
+    })
   }
 }
 
@@ -202,6 +206,8 @@ function oneAtATime(): (act: () => Promise<void>) => Promise<void> {
 }
 
 const PASSWORD_LOST = 'The stored password cannot be read with this NEXTAUTH_SECRET: an owner types it again.'
+
+const isLost = (plan: MqttPlan | null) => plan !== null && plan.isOn && plan.isPasswordLost
 
 /** What a connection stands on: with another of these it is a new one. */
 const doorOf = (plan: MqttPlan | null): string =>

@@ -42,6 +42,8 @@ export const DOORS: readonly Door[] = [
   page('/settings/places', 'supervisor'),
   page('/settings/baths', 'supervisor'),
   page('/settings/sensors', 'supervisor'),
+  // The broker of loggers.
+  page('/settings/mqtt', 'supervisor'),
   // People and one's own page.
   page('/people', 'owner'),
   page('/people/[memberId]', 'owner'),
@@ -128,6 +130,11 @@ export const ACTIONS: readonly ActionRow[] = [
   { file: 'app/(office)/settings/sensors/actions.ts', name: 'reuseSensorAction', act: 'sensors', who: 'supervisor' },
   { file: 'app/(office)/settings/sensors/actions.ts', name: 'issueTokenAction', act: 'sensors', who: 'supervisor' },
   { file: 'app/(office)/settings/sensors/actions.ts', name: 'revokeTokenAction', act: 'sensors', who: 'supervisor' },
+  // The broker of loggers.
+  { file: 'app/(office)/settings/mqtt/actions.ts', name: 'saveBrokerAction', act: 'settings', who: 'owner' },
+  { file: 'app/(office)/settings/mqtt/actions.ts', name: 'addTopicAction', act: 'sensors', who: 'supervisor' },
+  { file: 'app/(office)/settings/mqtt/actions.ts', name: 'changeTopicAction', act: 'sensors', who: 'supervisor' },
+  { file: 'app/(office)/settings/mqtt/actions.ts', name: 'removeTopicAction', act: 'sensors', who: 'supervisor' },
   // People and one's own page.
   { file: 'app/(office)/people/actions.ts', name: 'addMemberAction', act: 'people', who: 'owner' },
   { file: 'app/(office)/people/actions.ts', name: 'editMemberAction', act: 'people', who: 'owner' },
