@@ -15,6 +15,10 @@ import { Hold } from '@/models/hold'
 import { JobRun } from '@/models/job-run'
 import { LookOver } from '@/models/look-over'
 import { Member } from '@/models/member'
+import { MqttBroker } from '@/models/mqtt-broker'
+import { MqttHour } from '@/models/mqtt-hour'
+import { MqttMessage } from '@/models/mqtt-message'
+import { MqttTopic } from '@/models/mqtt-topic'
 import { Notice } from '@/models/notice'
 import { Operation } from '@/models/operation'
 import { Piece } from '@/models/piece'
@@ -85,6 +89,10 @@ const models = [
   JobRun,
   FoundryEvent,
   Backup,
+  MqttBroker,
+  MqttTopic,
+  MqttMessage,
+  MqttHour,
 ]
 for (const model of models) model.initialize(database)
 
@@ -147,6 +155,7 @@ Notice.belongsTo(Tree, { as: 'tree', foreignKey: 'treeId' })
 Notice.hasMany(Delivery, { as: 'deliveries', foreignKey: 'noticeId' })
 Delivery.belongsTo(Notice, { as: 'notice', foreignKey: 'noticeId' })
 PushSubscription.belongsTo(Member, { as: 'member', foreignKey: 'memberId' })
+MqttTopic.belongsTo(Sensor, { as: 'sensor', foreignKey: 'sensorId' })
 Member.hasMany(PushSubscription, { as: 'pushSubscriptions', foreignKey: 'memberId' })
 
 export {
@@ -193,4 +202,8 @@ export {
   JobRun,
   FoundryEvent,
   Backup,
+  MqttBroker,
+  MqttTopic,
+  MqttMessage,
+  MqttHour,
 }
