@@ -36,6 +36,7 @@ import { TreeEvent } from '@/models/tree-event'
 import { TreePiece } from '@/models/tree-piece'
 import { TreePlace } from '@/models/tree-place'
 import { TreeWatch } from '@/models/tree-watch'
+import { Upload } from '@/models/upload'
 import { Work } from '@/models/work'
 
 // Each names itself: a production build shortens class names, and of two models with one name the later replaces the earlier.
@@ -79,6 +80,7 @@ const models = [
   JobRun,
   FoundryEvent,
   Backup,
+  Upload,
 ]
 for (const model of models) model.initialize(database)
 
@@ -140,6 +142,8 @@ Notice.belongsTo(Tree, { as: 'tree', foreignKey: 'treeId' })
 Notice.hasMany(Delivery, { as: 'deliveries', foreignKey: 'noticeId' })
 Delivery.belongsTo(Notice, { as: 'notice', foreignKey: 'noticeId' })
 PushSubscription.belongsTo(Member, { as: 'member', foreignKey: 'memberId' })
+Upload.belongsTo(Sensor, { as: 'sensor', foreignKey: 'sensorId' })
+Upload.belongsTo(Member, { as: 'author', foreignKey: 'createdBy' })
 Member.hasMany(PushSubscription, { as: 'pushSubscriptions', foreignKey: 'memberId' })
 
 export {
@@ -183,4 +187,5 @@ export {
   JobRun,
   FoundryEvent,
   Backup,
+  Upload,
 }
