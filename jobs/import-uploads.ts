@@ -149,8 +149,7 @@ function chunksOf(upload: ClaimedUpload, errors: ErrorsWriter, { clock, monotoni
     ;[lines, rejected, errorsText] = [0, 0, '']
   }
 
-  const refuse = (line: FileLine, reason: string) => {
-    rejected += 1
+  const complain = (line: FileLine, reason: string) => {
     const written = errorsBytes + errorsText.length
     if (written > MOST_ERRORS_BYTES) return
     if (written === 0) errorsText = errorsHead
@@ -162,14 +161,15 @@ function chunksOf(upload: ClaimedUpload, errors: ErrorsWriter, { clock, monotoni
   const take = async (line: FileLine) => {
     const outcome = isData(line, settings.linesBefore)
       ? line.cells === null
-        ? { reason: 'This line cannot be split into columns: it is too long, or a quotation mark is not closed.' }
+        ? { row: null, reason: 'This line cannot be split into columns: it is too long, or a quotation mark is not closed.' }
         : readRow(line.cells, { settings, order, timeZone, lastAt: place.lastAt, now: clock.now() })
       : null
     const at = outcome?.row?.measuredAt
     if (at !== undefined && Math.max(last, at) - Math.min(first, at) > LONGEST_SPAN_MS) await record()
     place = { bytesDone: line.end, linesDone: line.number, lastAt: at ?? place.lastAt }
     lines += 1
-    if (outcome?.reason !== undefined) refuse(line, outcome.reason)
+    if (outcome?.row === null) rejected += 1
+    if (outcome && outcome.reason !== null) complain(line, outcome.reason)
     if (outcome?.row) {
       rows.push(outcome.row)
       ;[first, last] = [Math.min(first, outcome.row.measuredAt), Math.max(last, outcome.row.measuredAt)]

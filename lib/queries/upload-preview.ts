@@ -64,7 +64,7 @@ export async function loadUploadPreview(
   const rows = [...first.map(({ cells }) => cells), ...spread]
   const order = rowOrder(rows, { settings: chosen, timeZone, now: clock.now() })
   const outcomes = readAll(rows, { settings: chosen, timeZone, order, now: clock.now() })
-  const good = outcomes.flatMap(({ row }) => row ?? [])
+  const good = goodOf(outcomes)
   const instants = good.map(({ measuredAt }) => measuredAt)
   const times = timesOf(rows, chosen)
   const guess = guessDateForm(
@@ -120,11 +120,14 @@ function shown(line: number, cells: readonly string[], outcome: RowOutcome | und
   }
 }
 
+/** Readings that count. */
+const goodOf = (outcomes: readonly RowOutcome[]) => outcomes.flatMap(({ row, reason }) => (row && reason === null ? [row] : []))
+
 /** Reasons that differ in what the row says are of one kind. */
 function reasonsOf(outcomes: readonly RowOutcome[]): UploadPreview['reasons'] {
   const kinds = new Map<string, { reason: string; count: number }>()
   for (const { reason } of outcomes) {
-    if (reason === undefined) continue
+    if (reason === null) continue
     const kind = reason.replaceAll(/‘.*?’|says .*/g, '')
     const known = kinds.get(kind)
     if (known) known.count += 1
@@ -143,5 +146,5 @@ export async function readUploadOrder(
   const { first, spread } = dataOf(sample, settings)
   const rows = [...first.map(({ cells }) => cells), ...spread]
   const order = rowOrder(rows, { settings, timeZone, now: clock.now() })
-  return { order, good: readAll(rows, { settings, timeZone, order, now: clock.now() }).filter(({ row }) => row).length }
+  return { order, good: goodOf(readAll(rows, { settings, timeZone, order, now: clock.now() })).length }
 }

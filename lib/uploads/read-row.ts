@@ -1,8 +1,7 @@
 import { millisecondsInMinute } from 'date-fns/constants'
 import { toSi } from '@/lib/format/units'
-import { AIR_TEMP_LIMITS_C, REL_HUMIDITY_LIMITS_PCT } from '@/lib/room/air-limits'
 import { FUTURE_LIMIT_MS } from '@/lib/room/check-rows'
-import { airTempC as airTempSchema, relHumidityPct as relHumiditySchema } from '@/lib/room/reading-contract'
+import { isWithinRange, REASON_SENTENCES } from '@/lib/room/reading-marks'
 import { readMoment, readOffset } from '@/lib/uploads/read-moment'
 import { readNumber } from '@/lib/uploads/read-number'
 import type { RowOrder, UploadSettings } from '@/lib/uploads/upload-settings'
@@ -10,7 +9,8 @@ import { inOrder, instantsOf } from '@/lib/uploads/wall-clock'
 
 /** One good row, in SI. */
 export type UploadedRow = { measuredAt: number; airTempC: number; relHumidityPct: number; pressurePa?: number }
-export type RowOutcome = { row: UploadedRow; reason?: undefined } | { row?: undefined; reason: string }
+/** A reading, with the reason where it is kept and not counted; or none, with the reason. */
+export type RowOutcome = { row: UploadedRow; reason: string | null } | { row: null; reason: string }
 
 export type RowContext = {
   settings: UploadSettings
@@ -41,34 +41,23 @@ const CELSIUS_DECIMALS = 1000
 export function readRow(cells: readonly string[], context: RowContext): RowOutcome {
   const { settings } = context
   const moment = measuredAtOf(cells, context)
-  if (typeof moment === 'string') return { reason: moment }
-
+  if (typeof moment === 'string') return { row: null, reason: moment }
   const temperature = numberOf(cells, settings.tempColumn, settings.hasDecimalComma, 'temperature')
-  if (typeof temperature === 'string') return { reason: temperature }
+  if (typeof temperature === 'string') return { row: null, reason: temperature }
   const airTempC =
     settings.tempUnit === 'degC' ? temperature : Math.round(toSi(temperature, settings.tempUnit) * CELSIUS_DECIMALS) / CELSIUS_DECIMALS
-  if (airTempC < AIR_TEMP_LIMITS_C.least || airTempC > AIR_TEMP_LIMITS_C.most) {
-    return {
-      reason: `${airTempSchema.safeParse(airTempC).error?.issues[0]?.message ?? ''} This row says ${cellOf(cells, settings.tempColumn)}.`,
+  const relHumidityPct = numberOf(cells, settings.humidityColumn, settings.hasDecimalComma, 'humidity')
+  if (typeof relHumidityPct === 'string') return { row: null, reason: relHumidityPct }
+  const row: UploadedRow = { measuredAt: moment, airTempC, relHumidityPct }
+  if (settings.pressureColumn !== null && cellOf(cells, settings.pressureColumn) !== '') {
+    const pressure = numberOf(cells, settings.pressureColumn, settings.hasDecimalComma, 'pressure')
+    if (typeof pressure === 'string') return { row: null, reason: pressure }
+    row.pressurePa = settings.pressureUnit === 'hPa' ? pressure * 100 : pressure
+    if (row.pressurePa < PRESSURE_LIMITS_PA.least || row.pressurePa > PRESSURE_LIMITS_PA.most) {
+      return { row: null, reason: `Air pressure lies between 500 and 1100 hPa. This row says ${cellOf(cells, settings.pressureColumn)}.` }
     }
   }
-
-  const relHumidityPct = numberOf(cells, settings.humidityColumn, settings.hasDecimalComma, 'humidity')
-  if (typeof relHumidityPct === 'string') return { reason: relHumidityPct }
-  if (relHumidityPct < REL_HUMIDITY_LIMITS_PCT.least || relHumidityPct > REL_HUMIDITY_LIMITS_PCT.most) {
-    const words = relHumiditySchema.safeParse(relHumidityPct).error?.issues[0]?.message ?? ''
-    return { reason: `${words} This row says ${cellOf(cells, settings.humidityColumn)}.` }
-  }
-
-  const row: UploadedRow = { measuredAt: moment, airTempC, relHumidityPct }
-  if (settings.pressureColumn === null || cellOf(cells, settings.pressureColumn) === '') return { row }
-  const pressure = numberOf(cells, settings.pressureColumn, settings.hasDecimalComma, 'pressure')
-  if (typeof pressure === 'string') return { reason: pressure }
-  const pressurePa = settings.pressureUnit === 'hPa' ? pressure * 100 : pressure
-  if (pressurePa < PRESSURE_LIMITS_PA.least || pressurePa > PRESSURE_LIMITS_PA.most) {
-    return { reason: `Air pressure lies between 500 and 1100 hPa. This row says ${cellOf(cells, settings.pressureColumn)}.` }
-  }
-  return { row: { ...row, pressurePa } }
+  return { row, reason: isWithinRange(row) ? null : `Kept, and not counted: ${REASON_SENTENCES['out of range']}` }
 }
 
 const LONGEST_SHOWN = 40

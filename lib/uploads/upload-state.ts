@@ -29,7 +29,7 @@ export function countWords({ added, repeated, marked, rejected }: UploadCounts):
   return [
     `${countText(added)} new`,
     ...(repeated > 0 ? [`${countText(repeated)} known already`] : []),
-    ...(marked > 0 ? [`${countText(marked)} marked as doubtful`] : []),
+    ...(marked > 0 ? [`${countText(marked)} kept and not counted`] : []),
     ...(rejected > 0 ? [`${countText(rejected)} not read`] : []),
   ].join(', ')
 }

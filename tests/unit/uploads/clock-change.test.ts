@@ -47,7 +47,7 @@ const SETTINGS: UploadSettings = {
   pressureUnit: 'hPa',
 }
 
-function readAll(times: readonly string[], order: RowOrder): (string | undefined)[] {
+function readAll(times: readonly string[], order: RowOrder): (string | null)[] {
   let lastAt: number | null = null
   return times.map((time) => {
     const { row, reason } = readRow([time, '21', '50'], {

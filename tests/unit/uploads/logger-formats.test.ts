@@ -24,10 +24,9 @@ function readFile(bytes: Uint8Array, { timeZone = LISBON, change = {} }: { timeZ
   let lastAt: number | null = null
   for (const row of data) {
     const outcome = readRow(row, { settings, timeZone, order, lastAt, now: NOW })
-    if (outcome.row) {
-      rows.push(outcome.row)
-      lastAt = outcome.row.measuredAt
-    } else reasons.push(outcome.reason)
+    lastAt = outcome.row?.measuredAt ?? lastAt
+    if (outcome.reason === null) rows.push(outcome.row)
+    else reasons.push(outcome.reason)
   }
   return { ...guess, settings, rows, reasons, order }
 }
@@ -139,8 +138,8 @@ describe('files as loggers write them', () => {
     expect(reasons).toEqual([
       'No temperature in this row.',
       'No humidity in this row.',
-      'A shell room is not hotter than 60 °C. This row says 214.',
-      'Humidity cannot be over 105 %. This row says 150.',
+      'Kept, and not counted: No shell room is like this: −10 to 60 °C, 0 to 105 % RH.',
+      'Kept, and not counted: No shell room is like this: −10 to 60 °C, 0 to 105 % RH.',
       'The time ‘End of data’ cannot be read.',
       'This row has only 2 columns.',
     ])

@@ -9,6 +9,9 @@ import { readJson } from '@/lib/server/read-json'
 export const POST = sensorRoute(async ({ request, sensor, clock }) => {
   const { readings } = await readJson(request, readingBatch, { maxBytes: LARGEST_READINGS_BYTES })
   const { rows, rejected } = checkRows(readings, clock.now())
-  const accepted = await recordReadings({ sensorId: sensor.sensorId, source: 'sensor', enteredBy: null, rows }, { clock })
-  return Response.json({ accepted, repeated: rows.length - accepted, rejected } satisfies ReadingBatchAnswer)
+  const { added: accepted, repeated } = await recordReadings(
+    { sensorId: sensor.sensorId, source: 'sensor', enteredBy: null, rows },
+    { clock },
+  )
+  return Response.json({ accepted, repeated, rejected } satisfies ReadingBatchAnswer)
 })
