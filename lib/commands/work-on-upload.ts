@@ -3,11 +3,10 @@ import { addFoundryEvent } from '@/lib/commands/foundry-event'
 import { recordReadings } from '@/lib/commands/record-readings'
 import type { Clock } from '@/lib/core/clock'
 import { newId } from '@/lib/core/ids'
-import { loadFoundry } from '@/lib/queries/load-foundry'
 import type { UploadedRow } from '@/lib/uploads/read-row'
 import { keptSettings, type RowOrder, type UploadSettings } from '@/lib/uploads/upload-settings'
 import { countWords } from '@/lib/uploads/upload-state'
-import { database, inTransaction, Sensor, Upload } from '@/models'
+import { database, Foundry, inTransaction, Sensor, Upload } from '@/models'
 
 /** Longer than any chunk may take; a worker that died is forgotten after it. */
 const LEASE_MS = 30_000
@@ -48,7 +47,7 @@ export function claimUpload({ clock }: { clock: Clock }): Promise<ClaimedUpload 
     await upload.update({ state: 'running', leaseId, leaseUntil: now + LEASE_MS, startedAt: upload.startedAt ?? now })
     const { id, sensorId, fileName, createdBy, bytesDone, linesDone, lastAt, errorsBytes } = upload
     const { order, settings } = keptSettings.parse(upload.settings)
-    const { timeZone } = await loadFoundry()
+    const { timeZone } = await Foundry.findByPk(1, { rejectOnEmpty: true })
     return { id, leaseId, sensorId, fileName, settings, order, timeZone, createdBy, bytesDone, linesDone, lastAt, errorsBytes }
   })
 }

@@ -1,6 +1,6 @@
 import { QueryTypes } from 'sequelize'
 import type { UploadState } from '@/lib/uploads/upload-state'
-import { database, Sensor, Upload } from '@/models'
+import { database, Upload } from '@/models'
 
 export type UploadLine = {
   id: string
@@ -54,10 +54,4 @@ export async function loadUploadDetail(uploadId: string): Promise<UploadDetail |
     ),
   ])
   return line ? { ...line, sensorId: upload.sensorId, repeatOf: earlier[0] ?? null } : null
-}
-
-/** Sensors in use, by name: for whom a file can be brought. */
-export async function loadUploadSensors(): Promise<{ id: number; name: string }[]> {
-  const sensors = await Sensor.findAll({ where: { retiredAt: null }, order: [['name', 'ASC']] })
-  return sensors.map(({ id, name }) => ({ id, name }))
 }

@@ -19,6 +19,12 @@ export const MOST_COLUMNS = 60
 
 /** 'rows': each time carries its own offset. A fixed offset is what a logger keeps that knows no summer time. */
 const FIXED_OFFSET = /^[+-](?:0\d|1[0-4]):[0-5]\d$/
+/** Every whole hour from the far west to the far east. */
+export const FIXED_OFFSETS: readonly string[] = Array.from({ length: 27 }, (_, index) => {
+  const hours = index - 12
+  return `${hours < 0 ? '-' : '+'}${String(Math.abs(hours)).padStart(2, '0')}:00`
+})
+
 const zone = z
   .union([z.enum(['foundry', 'UTC', 'rows']), z.string().regex(FIXED_OFFSET)], 'Choose in which time zone the times are.')
   .describe('Zone of the times: the foundry’s, UTC, as each row says, or a fixed offset such as +01:00.')

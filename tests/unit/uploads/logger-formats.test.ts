@@ -25,8 +25,8 @@ function readFile(bytes: Uint8Array, { timeZone = LISBON, change = {} }: { timeZ
   for (const row of data) {
     const outcome = readRow(row, { settings, timeZone, order, lastAt, now: NOW })
     lastAt = outcome.row?.measuredAt ?? lastAt
-    if (outcome.reason === null) rows.push(outcome.row)
-    else reasons.push(outcome.reason)
+    if (outcome.row && outcome.reason === null) rows.push(outcome.row)
+    else reasons.push(outcome.reason ?? '')
   }
   return { ...guess, settings, rows, reasons, order }
 }
