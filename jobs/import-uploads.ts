@@ -35,7 +35,8 @@ const AGAIN_AFTER_MS = 10_000
  */
 const HOLD_MS = 40
 const FREE_MS = 30
-const FEWEST_ROWS = 25
+/** Fewer cost more by their number than they hold the lock shorter. */
+const FEWEST_ROWS = 100
 const MOST_ROWS = 2000
 const FIRST_ROWS = 200
 /** All hours between the first and the last row of a chunk are looked at, so that one from another year would be dear. */

@@ -70,7 +70,8 @@ function refusalOf(error: unknown): unknown {
   const code = error instanceof Error && 'code' in error ? String(error.code) : ''
   if (code === 'ENOSPC')
     return new AppError('unavailable', 'The disk of the server is full. Nothing was saved. Free some space, then try again.')
-  if (code === 'ECONNRESET' || code === 'ABORT_ERR') return new AppError('malformed', 'The file did not come through to its end.')
+  const isGone = error instanceof Error && (error.name === 'AbortError' || error.name === 'ResponseAborted')
+  if (isGone || code === 'ECONNRESET') return new AppError('malformed', 'The file did not come through to its end.')
   return error
 }
 
