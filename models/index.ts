@@ -43,6 +43,7 @@ import { TreeEvent } from '@/models/tree-event'
 import { TreePiece } from '@/models/tree-piece'
 import { TreePlace } from '@/models/tree-place'
 import { TreeWatch } from '@/models/tree-watch'
+import { Upload } from '@/models/upload'
 import { Work } from '@/models/work'
 
 // Each names itself: a production build shortens class names, and of two models with one name the later replaces the earlier.
@@ -93,6 +94,7 @@ const models = [
   MqttTopic,
   MqttMessage,
   MqttHour,
+  Upload,
 ]
 for (const model of models) model.initialize(database)
 
@@ -156,6 +158,8 @@ Notice.hasMany(Delivery, { as: 'deliveries', foreignKey: 'noticeId' })
 Delivery.belongsTo(Notice, { as: 'notice', foreignKey: 'noticeId' })
 PushSubscription.belongsTo(Member, { as: 'member', foreignKey: 'memberId' })
 MqttTopic.belongsTo(Sensor, { as: 'sensor', foreignKey: 'sensorId' })
+Upload.belongsTo(Sensor, { as: 'sensor', foreignKey: 'sensorId' })
+Upload.belongsTo(Member, { as: 'author', foreignKey: 'createdBy' })
 Member.hasMany(PushSubscription, { as: 'pushSubscriptions', foreignKey: 'memberId' })
 
 export {
@@ -206,4 +210,5 @@ export {
   MqttTopic,
   MqttMessage,
   MqttHour,
+  Upload,
 }

@@ -14,7 +14,7 @@ export const PROBLEMS: Readonly<Record<ProblemCode, { status: number; text: stri
   not_found: { status: 404, text: 'What the path or the body names is not there.' },
   conflict: { status: 409, text: 'It does not go with what is there now. Read it again before you send anew.' },
   too_large: { status: 413, text: 'The body is too large. Send less at once.' },
-  unsupported_media_type: { status: 415, text: 'The body must be sent as application/json.' },
+  unsupported_media_type: { status: 415, text: 'The body must be sent as application/json, or as the kind that the door names.' },
   invalid_input: { status: 422, text: 'Fields are missing or wrong; `fields` says which, and why.' },
   unprocessable: { status: 422, text: 'The fields are right by themselves, but cannot be true together or at this moment.' },
   too_many_requests: { status: 429, text: 'Wait as many seconds as Retry-After says.' },

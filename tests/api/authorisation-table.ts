@@ -78,6 +78,13 @@ export const DOORS: readonly Door[] = [
   page('/room', 'crew'),
   door('POST', '/api/v1/drying/estimate', 'crew'),
   door('GET', '/api/v1/rooms/[sensorId]/climate.csv', 'crew', '/api/v1/rooms/1/climate.csv'),
+  // Files of readings.
+  page('/room/upload', 'supervisor'),
+  page('/room/upload/[uploadId]', 'supervisor'),
+  door('POST', '/api/v1/uploads', 'supervisor'),
+  door('GET', '/api/v1/uploads/[uploadId]', 'supervisor'),
+  door('GET', '/api/v1/uploads/[uploadId]/preview', 'supervisor'),
+  door('GET', '/api/v1/uploads/[uploadId]/errors.csv', 'supervisor'),
   // The API's description, how to use it, and the history of every change.
   door('GET', '/api/v1/openapi.json', 'anybody'),
   page('/api-guide', 'supervisor'),
@@ -161,4 +168,7 @@ export const ACTIONS: readonly ActionRow[] = [
   { file: 'app/(office)/upkeep/demo-actions.ts', name: 'removeDemoAction', act: 'upkeep', who: 'owner' },
   // The room and its drying.
   { file: 'app/(office)/room/actions.ts', name: 'typedReadingAction', act: 'read', who: 'operator' },
+  // Files of readings.
+  { file: 'app/(office)/room/upload/actions.ts', name: 'importUploadAction', act: 'sensors', who: 'supervisor' },
+  { file: 'app/(office)/room/upload/actions.ts', name: 'cancelUploadAction', act: 'sensors', who: 'supervisor' },
 ]

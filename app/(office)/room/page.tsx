@@ -170,6 +170,11 @@ export default async function RoomPageView({ searchParams }: PageProps<'/room'>)
         {page.points.length > 0 && <AirFolds page={page} room={room} frame={frame} tempUnit={tempUnit} />}
         <Fold title="Sensors" line={<SensorsLine rooms={page.rooms} now={now} timeZone={timeZone} />}>
           <SensorList rooms={page.rooms} notes={page.notes} now={now} timeZone={timeZone} tempUnit={tempUnit} />
+          {may(member.role, 'sensors') && (
+            <p className="fold-key">
+              <KeyLink href={`/room/upload?sensor=${room.sensorId}`}>Readings from a file</KeyLink>
+            </p>
+          )}
           {may(member.role, 'read') && (
             <>
               <h3 className="fold-title">Type a reading</h3>
