@@ -1,6 +1,7 @@
 import { millisecondsInDay } from 'date-fns/constants'
 import { hourStartOf } from '@/lib/drying/dose-hours'
 import { loadClimateRows } from '@/lib/queries/load-climate'
+import { loadFanSwitches, type FanSwitches } from '@/lib/queries/load-fan-switches'
 import { loadFacts, type TreeSelection } from '@/lib/queries/load-facts'
 import { loadFoundry, type FoundryFacts } from '@/lib/queries/load-foundry'
 import { buildClimate, type ClimateRows, type RoomClimate } from '@/lib/room/climate'
@@ -10,7 +11,7 @@ import { deriveTree, type DerivedTree } from '@/lib/trees/derive'
 import { clockStart, type TreeFacts } from '@/lib/trees/facts'
 import { floorContext, withClimates, type FloorContext } from '@/lib/trees/spans'
 
-export type Floor = { foundry: FoundryFacts; context: FloorContext; trees: DerivedTree[] }
+export type Floor = { foundry: FoundryFacts; context: FloorContext; trees: DerivedTree[]; fanSwitches: FanSwitches }
 
 /** The forecast looks back a fortnight, so the hours of that time are always at hand. */
 const FORECAST_HISTORY_MS = 14 * millisecondsInDay
@@ -58,6 +59,7 @@ export async function deriveFloor(
       }),
     )
 
+  const fanSwitches = await loadFanSwitches(hourStartOf(from))
   // Twice: the hourly table finds the hours in which coats came dry, their exact readings then give the minute.
   const coarse = floorContext({
     now,
@@ -65,6 +67,7 @@ export async function deriveFloor(
     pressurePa: foundry.pressurePa,
     climates: await loadClimates(),
     places: foundry.places,
+    fanSwitches,
     shifts: shiftsFrom(now, foundry.calendar, foundry.timeZone),
     from: hourStartOf(from),
   })
@@ -80,5 +83,5 @@ export async function deriveFloor(
     }
   }
   const context = needed.size > before ? withClimates(coarse, await loadClimates()) : coarse
-  return { foundry, context, trees: facts.map((tree) => deriveTree(tree, context, foundry.calendar)) }
+  return { foundry, context, fanSwitches, trees: facts.map((tree) => deriveTree(tree, context, foundry.calendar)) }
 }

@@ -112,6 +112,14 @@ export const SCENES: Record<string, (scene: Scene) => Promise<void>> = {
     const place = await factories.buildPlace({ sensorId: foundry.sensorId })
     await ask(operator, 'moveTree', { params, body: operation({ placeId: place.id }) })
   },
+  switchFans: async ({ ask, operator, factories, foundry }) => {
+    const place = await factories.buildPlace({ sensorId: foundry.sensorId, airSpeedFansOffMps: 0.1 })
+    const params = { placeId: place.id }
+    for (const state of ['on', 'on', 'timetable']) await ask(operator, 'switchFans', { params, body: operation({ state }) })
+    await ask(operator, 'switchFans', { params, body: operation({ state: 'fast' }) })
+    await ask(operator, 'switchFans', { params: { placeId: foundry.placeId }, body: operation({ state: 'on' }) })
+    await ask(operator, 'switchFans', { params: { placeId: randomUUID() }, body: operation({ state: 'on' }) })
+  },
   stirBath: async ({ ask, operator, foundry }) => {
     const body = operation()
     await ask(operator, 'stirBath', { params: { bathId: foundry.faceBathId }, body })
