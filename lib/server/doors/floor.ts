@@ -147,7 +147,7 @@ export const FLOOR_DOORS: readonly DoorDescription[] = [
     path: '/api/v1/trees/{treeId}/place',
     group: 'Floor',
     summary: 'Hang a tree somewhere else',
-    text: `From now on; its drying follows the air of the new place. ${OPERATION}`,
+    text: `From now on, or since \`movedAt\`: after the newest dip, and at most an hour back unless a supervisor says so. Its drying follows the air of the new place from that moment; moves told for later than that are taken back. ${OPERATION}`,
     who: 'move',
     params: { treeId },
     body: { schema: placeInput, example: { operationId: OPERATION_ID, placeId: PLACE_ID } },

@@ -1,4 +1,5 @@
 import type { DipRefusal, DipRun } from '@/lib/coats/dip-contract'
+import type { FanState } from '@/lib/drying/types'
 import { newOperationId } from './operation-id'
 import { postJson } from './request-json'
 import { areRefusals, isDipRunAnswer } from './shapes'
@@ -11,6 +12,9 @@ export const postUndo = (operationId: string, coatIds: string[]) => postJson('/a
 
 export const postStir = (bathId: string, operationId = newOperationId()) =>
   postJson(`/api/v1/baths/${bathId}/stirs`, { operationId }, anyAnswer)
+
+export const postFans = (placeId: string, operationId: string, state: FanState) =>
+  postJson(`/api/v1/places/${placeId}/fans`, { operationId, state }, anyAnswer)
 
 export const postWatch = (treeId: string) => postJson(`/api/v1/trees/${treeId}/watch`, { operationId: newOperationId() }, anyAnswer)
 
