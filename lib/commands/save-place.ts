@@ -161,8 +161,9 @@ async function requirePastDay(day: string | null, now: number): Promise<void> {
 type Air = AirMeasured & { name: string; airSpeedFansOnMps: number; airSpeedFansOffMps: number; fanDuty: number }
 
 /** A place as the history tells it. */
-function inWords({ fanDuty, ...air }: Air, fans: readonly Fans[], sensor: string) {
-  const { name, airSpeedFansOnMps, airSpeedFansOffMps, airMeasuredOn, airMeasuredWith, airMeasuredBy } = air
+function inWords(air: Air, fans: readonly Fans[], sensor: string) {
+  // A row keeps its columns behind getters, which a spread would not see.
+  const { name, airSpeedFansOnMps, airSpeedFansOffMps, fanDuty, airMeasuredOn, airMeasuredWith, airMeasuredBy } = air
   const spans = fans.map(({ weekday, onMinute, offMinute }) => ({ weekday, fromMinute: onMinute, toMinute: offMinute }))
   return {
     name,

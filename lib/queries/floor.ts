@@ -49,6 +49,12 @@ export async function deriveFloor(
       .filter((at) => at >= from - 2 * 3_600_000),
   )
 
+  const fanSwitches = await loadFanSwitches(hourStartOf(from))
+  // A dose is split to the minute where a person has moved the tree or switched its fans.
+  for (const at of facts.flatMap((tree) => splitsOf(tree, foundry, fanSwitches))) {
+    if (at >= from && at <= now) needed.add(hourStartOf(at))
+  }
+
   const rowsOf = new Map<number, ClimateRows>()
   const loadClimates = () =>
     Promise.all(
@@ -59,7 +65,6 @@ export async function deriveFloor(
       }),
     )
 
-  const fanSwitches = await loadFanSwitches(hourStartOf(from))
   // Twice: the hourly table finds the hours in which coats came dry, their exact readings then give the minute.
   const coarse = floorContext({
     now,
@@ -84,4 +89,16 @@ export async function deriveFloor(
   }
   const context = needed.size > before ? withClimates(coarse, await loadClimates()) : coarse
   return { foundry, context, fanSwitches, trees: facts.map((tree) => deriveTree(tree, context, foundry.calendar)) }
+}
+
+/** Moments since the dip of the newest coat at which somebody gave it another air. */
+function splitsOf({ coats, stays }: TreeFacts, { places }: FoundryFacts, fanSwitches: FanSwitches): number[] {
+  const newest = coats.at(-1)
+  if (!newest) return []
+  const start = clockStart(newest)
+  const hungAt = new Set([newest.placeId, ...stays.filter(({ since }) => since > start).map(({ placeId }) => placeId)])
+  const atPlaces = places
+    .filter(({ id }) => hungAt.has(id))
+    .flatMap(({ id, formerAirs }) => [...formerAirs.map(({ until }) => until), ...(fanSwitches.get(id) ?? []).map(({ at }) => at)])
+  return [...stays.map(({ since }) => since), ...atPlaces].filter((at) => at > start)
 }

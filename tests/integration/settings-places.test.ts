@@ -40,7 +40,17 @@ describe('a place', () => {
         at: NOW,
         detail: {
           text: 'Place Rack A added.',
-          after: { name: 'Rack A', airSpeedFansOnMps: 1, airSpeedFansOffMps: 0.1, sensor: 'Shell room', fans: 'Mon to Tue 06:00–18:00' },
+          after: {
+            name: 'Rack A',
+            airSpeedFansOnMps: 1,
+            airSpeedFansOffMps: 0.1,
+            fanDutyPct: 100,
+            airMeasuredOn: null,
+            airMeasuredWith: null,
+            airMeasuredBy: null,
+            sensor: 'Shell room',
+            fans: 'Mon to Tue 06:00–18:00',
+          },
         },
       },
     ])
