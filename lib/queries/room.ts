@@ -17,16 +17,21 @@ import {
   dryerFor,
   dryingTrees,
   fansLeftOn,
+  limitedCoat,
   placeFactorTonight,
+  placeIdOf,
+  shelledTrees,
   soonerMs,
   tonightOf,
   treeEffects,
   type Dryer,
   type DryingTree,
+  type ShelledTree,
   type Tonight,
   type TreeEffect,
 } from '@/lib/room/tonight'
 import { shiftsFrom } from '@/lib/schedule/shifts'
+import type { DerivedTree } from '@/lib/trees/derive'
 import { airOf } from '@/lib/trees/spans'
 import { database } from '@/models'
 
@@ -51,20 +56,22 @@ export async function loadRoomPage({ sensorId, tempUnit, clock }: RoomInput): Pr
   const { foundry, context } = floor
   const { timeZone, pressurePa } = foundry
   const places = foundry.places.filter((place) => !place.isRetired)
-  const sensorOf = (tree: DryingTree) => context.places.get(tree.facts.stays.at(-1)?.placeId ?? '')?.sensorId
+  const sensorOf = (tree: DerivedTree) => context.places.get(placeIdOf(tree))?.sensorId
   const rooms = foundry.sensors.flatMap((sensor) => {
     const climate = context.climates.get(sensor.id)
     return climate ? [queueRoom(climate, sensor, pressurePa)] : []
   })
 
   const drying = dryingTrees(floor.trees)
+  const shelled = shelledTrees(floor.trees)
   const tonight = tonightOf(context, foundry.calendar.hours.length > 0)
-  const dryer = bestDryer(floor, drying, tonight, sensorOf)
+  const dryer = bestDryer(floor, drying, shelled, tonight, sensorOf)
   const effects = treeEffects(drying, context, tonight, dryer)
   const fans = places
     .flatMap((place) => {
-      const there = drying.filter((tree) => tree.facts.stays.at(-1)?.placeId === place.id && !tree.call.isUnknown)
-      const fansOn = there.length === 0 ? null : fansLeftOn(context, place, there, tonight)
+      const there = drying.filter((tree) => placeIdOf(tree) === place.id && !tree.call.isUnknown)
+      const inAir = shelled.filter((tree) => placeIdOf(tree) === place.id)
+      const fansOn = there.length === 0 ? null : fansLeftOn(context, place, inAir, tonight)
       return fansOn ? [{ fansOn, gainMs: gainOf(there, (tree) => callIn(tree, fansOn.context)) }] : []
     })
     .toSorted((a, b) => b.gainMs - a.gainMs)
@@ -83,7 +90,7 @@ export async function loadRoomPage({ sensorId, tempUnit, clock }: RoomInput): Pr
   const here = room ? places.filter((place) => place.sensorId === room.sensorId) : []
   const coat1Temps = floor.trees.flatMap((tree) => {
     const tempC = tree.facts.coats[0]?.airTempC
-    const isHere = context.places.get(tree.facts.stays.at(-1)?.placeId ?? '')?.sensorId === room?.sensorId
+    const isHere = context.places.get(placeIdOf(tree))?.sensorId === room?.sensorId
     return isHere && tempC !== null && tempC !== undefined ? [tempC] : []
   })
 
@@ -116,6 +123,10 @@ export async function loadRoomPage({ sensorId, tempUnit, clock }: RoomInput): Pr
       dryer,
       fans,
       sensorOf: (effect) => sensorOf(effect.tree),
+      coatsOf: (id) =>
+        shelled
+          .filter((tree) => sensorOf(tree) === id)
+          .map((tree) => limitedCoat(tree, placeFactorTonight(tree, context, tonight), context.climates.get(id)?.newest?.airTempC ?? null)),
       placeFactorOf: (effect) => placeFactorTonight(effect.tree, context, tonight),
       tonight,
       now,
@@ -146,12 +157,14 @@ function gainOf(trees: readonly DryingTree[], callOf: (tree: DryingTree) => Dryi
 function bestDryer(
   { context, foundry }: Floor,
   drying: readonly DryingTree[],
+  shelled: readonly ShelledTree[],
   tonight: Tonight,
-  sensorOf: (tree: DryingTree) => number | undefined,
+  sensorOf: (tree: DerivedTree) => number | undefined,
 ): Dryer | null {
   const dryers = [...context.climates.values()].flatMap((climate) => {
-    const there = drying.filter((tree) => sensorOf(tree) === climate.sensorId && !tree.call.isUnknown)
-    const dryer = there.length === 0 ? null : dryerFor(context, climate, there, tonight, foundry.band)
+    const isThere = (tree: DerivedTree) => sensorOf(tree) === climate.sensorId
+    const there = drying.filter((tree) => isThere(tree) && !tree.call.isUnknown)
+    const dryer = there.length === 0 ? null : dryerFor(context, climate, shelled.filter(isThere), tonight, foundry.band)
     return dryer ? [{ dryer, gainMs: gainOf(there, (tree) => callIn(tree, dryer.context)) }] : []
   })
   const best = dryers.toSorted((a, b) => b.gainMs - a.gainMs)[0]

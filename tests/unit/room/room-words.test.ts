@@ -4,7 +4,7 @@ import type { QueueRoom } from '@/lib/queue/contract'
 import { queueRoom } from '@/lib/queue/assemble'
 import { roomHeadline, roughDuration, treeAdvice } from '@/lib/room/room-words'
 import { mildHumidityPct, thingsToDo } from '@/lib/room/things-to-do'
-import { betterPlace, dryerFor, dryingTrees, fansLeftOn, placeFactorTonight, tonightOf, treeEffects } from '@/lib/room/tonight'
+import { betterPlace, dryerFor, dryingTrees, fansLeftOn, limitedCoat, placeFactorTonight, tonightOf, treeEffects } from '@/lib/room/tonight'
 import { shiftsFrom } from '@/lib/schedule/shifts'
 import {
   buildContext,
@@ -74,6 +74,7 @@ function scene({
         dryer,
         fans,
         sensorOf: () => 1,
+        coatsOf: () => drying.map((tree) => limitedCoat(tree, 1, null)),
         placeFactorOf: (effect) => placeFactorTonight(effect.tree, context, tonight),
         tonight,
         tempUnit: 'degC',
@@ -233,6 +234,7 @@ describe('things to do', () => {
       dryer: null,
       fans: [],
       sensorOf: () => 1,
+      coatsOf: () => [],
       placeFactorOf: () => 1,
       tonight,
       now: NOW,
