@@ -5,7 +5,7 @@ import { formatMoment } from '@/lib/format/local-time'
 import { formatKelvin, formatTemperature, oneDecimal, wholeNumber, type TempUnit } from '@/lib/format/units'
 import type { QueueRoom } from '@/lib/queue/contract'
 import { isNearWax, steadyTempsC, type LimitedCoat } from '@/lib/room/limits'
-import { roughDuration } from '@/lib/room/room-words'
+import { roughDuration } from '@/lib/format/duration'
 import { LOWEST_TARGET_PCT, type Dryer, type FansOn, type Tonight, type TreeEffect } from '@/lib/room/tonight'
 
 /** One thing to do about the air, and why. */

@@ -1,6 +1,7 @@
 import { z } from 'zod'
 import { estimateAnswer, estimateInput } from '@/lib/drying/estimate-contract'
 import { TEMP_UNITS } from '@/lib/format/units'
+import { roomWhatIf, roomWhatIfAnswer } from '@/lib/room/room-what-if-contract'
 import type { DoorDescription } from '@/lib/server/doors/door'
 import { LARGEST_READINGS_BYTES } from '@/lib/server/limits'
 
@@ -28,6 +29,19 @@ export const ROOM_DOORS: readonly DoorDescription[] = [
       },
     },
     answers: { 200: { text: 'What the clock makes of it.', schema: estimateAnswer } },
+  },
+  {
+    operationId: 'weighRoomAir',
+    method: 'POST',
+    path: '/api/v1/rooms/{sensorId}/what-if',
+    group: 'Readings',
+    summary: 'What another air would do to a room',
+    text: 'Times of every drying tree in the room of one sensor as things stand (`before`) and in another air from now on (`after`), both by the drying clock itself; how many trees are ready before the doors close and before they open next; and what that air would do to the wax. What is left out of the body stays as it is forecast. With `harms` the times are told all the same, and the air is never to be proposed. Nothing is written.',
+    who: 'see',
+    params: { sensorId: { schema: z.string(), text: 'Number of the sensor.' } },
+    body: { schema: roomWhatIf, example: { until: 'opening', relHumidityPct: 50, airSpeedMps: 1.2 } },
+    answers: { 200: { text: 'Before and after.', schema: roomWhatIfAnswer } },
+    problems: ['not_found', 'unprocessable'],
   },
   {
     operationId: 'exportClimate',
