@@ -35,6 +35,8 @@ function turnedWords({ choice, relHumidityNowPct, placeNames }: Turned, tempUnit
   return parts.join(', ').replace(/^./, (first) => first.toUpperCase())
 }
 
+const gained = (count: { before: number; after: number } | null): number => (count === null ? 0 : count.after - count.before)
+
 /**
  * An air as a proposal: 'Dehumidifier to 45 %: 6 more trees dry before closing (18:00).' Null where it wins nothing, makes any
  * count smaller, or breaks a limit of chill, swing or heat for any shell in the room: such an air is never proposed.
@@ -42,7 +44,6 @@ function turnedWords({ choice, relHumidityNowPct, placeNames }: Turned, tempUnit
 export function proposalWords(turned: Turned, answer: RoomWhatIfAnswer, { tempUnit, timeZone }: Words): string | null {
   const { beforeClosing, beforeOpening, closesAt, opensAt, soonerMs, now } = answer
   if (!isTurned(turned.choice) || answer.harms.length > 0 || soonerMs < 0) return null
-  const gained = (count: { before: number; after: number } | null) => (count === null ? 0 : count.after - count.before)
   if (gained(beforeClosing) < 0 || gained(beforeOpening) < 0) return null
   const head = turnedWords(turned, tempUnit)
   const more = (count: number) => `${head}: ${count} more ${count === 1 ? 'tree' : 'trees'} dry before`

@@ -7,6 +7,7 @@ import { isNearWax, limitsBroken, type AirHour } from '@/lib/room/limits'
 import type { Harm, SharedHarm, RoomWhatIf, RoomWhatIfAnswer, Slot, WhatIfTree } from '@/lib/room/room-what-if-contract'
 import {
   callIn,
+  closingOf,
   dryingTrees,
   highestFactor,
   limitedCoat,
@@ -43,8 +44,7 @@ export function weighAir(room: WeighedRoom, choice: RoomWhatIf): RoomWhatIfAnswe
   const { context, climate } = room
   const { now } = context
   const opensAt = tonightOf(context, room.hasHours).to
-  const [shift] = context.shifts
-  const closesAt = room.hasHours && shift && shift.opensAt <= now ? shift.closesAt : null
+  const closesAt = closingOf(context, room.hasHours)
   const stretch = { from: now, to: choice.until === 'closing' ? (closesAt ?? opensAt) : opensAt }
   const hours = airHours(climate, choice, stretch, context)
   const other = contextWith(room, choice, hours, stretch)

@@ -35,6 +35,12 @@ export function tonightOf(context: FloorContext, hasHours: boolean): Tonight {
   return { from: now, to, name: to - now > DAY_MS ? `Until ${formatWeekday(to, timeZone)} ${formatClock(to, timeZone)}` : 'Tonight' }
 }
 
+/** When the doors close; null while they are closed, and where a foundry keeps no hours of its own. */
+export function closingOf({ now, shifts }: FloorContext, hasHours: boolean): number | null {
+  const [shift] = shifts
+  return hasHours && shift && shift.opensAt <= now ? shift.closesAt : null
+}
+
 /** A tree whose newest coat dries, with the clock's call on it. */
 export type DryingTree = DerivedTree & { newest: CoatFacts; call: CoatCall }
 
@@ -106,6 +112,7 @@ export function highestFactor(context: FloorContext, placeId: string, { from, to
   return spans.reduce((highest, span) => Math.max(highest, span.placeFactor), 0)
 }
 
+/** Where a tree hangs. */
 export const placeIdOf = (tree: DerivedTree) => tree.facts.stays.at(-1)?.placeId ?? ''
 
 /** The highest place factor of a tree's own place until the next opening. */

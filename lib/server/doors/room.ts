@@ -2,6 +2,7 @@ import { z } from 'zod'
 import { estimateAnswer, estimateInput } from '@/lib/drying/estimate-contract'
 import { TEMP_UNITS } from '@/lib/format/units'
 import { roomWhatIf, roomWhatIfAnswer } from '@/lib/room/room-what-if-contract'
+import { ROOM_RANGES } from '@/lib/room/range'
 import type { DoorDescription } from '@/lib/server/doors/door'
 import { LARGEST_READINGS_BYTES } from '@/lib/server/limits'
 
@@ -48,16 +49,23 @@ export const ROOM_DOORS: readonly DoorDescription[] = [
     method: 'GET',
     path: '/api/v1/rooms/{sensorId}/climate.csv',
     group: 'Readings',
-    summary: 'The hourly climate of one sensor as a file',
-    text: 'One line an hour: means and ends of temperature and humidity, dew point, vapour-pressure deficit, drying speed and dose. Without days the 24 hours behind and the forecast of the 24 ahead, as the page of the room draws them; with `from` and `to` whole local days, 31 at most.',
+    summary: 'The climate of one sensor as a file',
+    text: 'One line an hour: means and ends of temperature and humidity, dew point, vapour-pressure deficit, drying speed and dose. `range` is what the page of the room draws: the 24 hours behind and the forecast of the 24 ahead without it, a fortnight of hours (`14d`), or a year (`1y`) with one line a local day, from the least to the most and with the minutes outside the foundry’s band. With `from` and `to` hours of whole local days, 31 at most.',
     who: 'see',
     params: { sensorId: { schema: z.string(), text: 'Number of the sensor.' } },
     query: {
       from: { schema: z.iso.date().optional(), text: 'First local day.' },
       to: { schema: z.iso.date().optional(), text: 'Last local day.' },
+      range: { schema: z.enum(ROOM_RANGES).optional(), text: 'What is drawn; not together with days.' },
       temp: { schema: z.enum(TEMP_UNITS).optional(), text: 'Unit of the temperatures; degC without it.' },
     },
-    answers: { 200: { text: 'One line an hour, names and units of the columns in the first.', type: 'text/csv', schema: z.string() } },
+    answers: {
+      200: {
+        text: 'One line an hour, or a day for a year; names and units of the columns in the first.',
+        type: 'text/csv',
+        schema: z.string(),
+      },
+    },
     problems: ['not_found', 'invalid_input'],
   },
 ]

@@ -24,7 +24,7 @@ import type { DerivedTree } from '@/lib/trees/derive'
 import { buildContext, buildDerived, buildPlaceFacts, buildRoom, HOUR, NOW, TIME_ZONE, type Air } from './build-room'
 
 const PRESSURE_PA = 101_325
-const RUNS = 60
+const RUNS = 50
 const WEEKDAY_FANS = [1, 2, 3, 4, 5].map((weekday) => ({ weekday, onMinute: 420, offMinute: 1080 }))
 
 type Hour = { from: number; to: number; airTempC: number; relHumidityPct: number }
@@ -105,7 +105,7 @@ function holds<Value>(arbitrary: fc.Arbitrary<Value>, isAdviceGiven: (value: Val
   expect(given).toBeGreaterThanOrEqual(least)
 }
 
-describe('no advice harms the wax, whatever the air, the night and the coats', () => {
+describe('no advice harms the wax, whatever the air, the night and the coats', { timeout: 60_000 }, () => {
   it('a dryer', () => {
     holds(rooms, (room) => {
       const { here, context, drying, shelled, tonight } = scene(room)
@@ -175,7 +175,7 @@ describe('no advice harms the wax, whatever the air, the night and the coats', (
             ? placeFactorTonight(tree, context, { ...tonight, ...stretch })
             : placeFactor(choice.airSpeedMps, PRESSURE_PA)
         const found = new Set(harms(tree, hours, factor, wet))
-        if (proposal !== null) expect(found).toEqual(new Set())
+        expect(proposal === null || found.size === 0).toBe(true)
         // And no harm goes unsaid where none is proposed.
         const said = answer.harms.flatMap(({ harm, tags }) =>
           tags.includes(tree.facts.tag) && harm.code !== 'too dry' ? [harm.code === 'too fast' ? 'chill' : harm.code] : [],
@@ -215,22 +215,17 @@ describe('no advice harms the wax, whatever the air, the night and the coats', (
           expect(harms(tree, inside, 1, wetUntil(tree, drying))).toEqual([])
         }
       }
-      const raised = things.find((thing) => thing.title.startsWith('Raise'))
-      if (raised) {
-        const factor = Math.max(
-          ...effects.filter(({ tree }) => tree.newest.number <= 2).map(({ tree }) => placeFactorTonight(tree, context, tonight)),
-        )
-        const { airTempC } = here.newest!
-        const air = { airTempC, relHumidityPct: mildHumidityPct(airTempC, factor, PRESSURE_PA)! }
-        expect(
-          chillFlag({
-            coatNumber: 1,
-            wetBulbDepressionK: wetBulbDepressionK(air, PRESSURE_PA),
-            roomFactor: roomFactor(air, PRESSURE_PA),
-            placeFactor: factor,
-          }),
-        ).toBeNull()
+      const nearWax = effects.filter(({ tree }) => tree.newest.number <= 2).map(({ tree }) => placeFactorTonight(tree, context, tonight))
+      const { airTempC } = here.newest!
+      const isRaised = things.some((thing) => thing.title.startsWith('Raise'))
+      const air = { airTempC, relHumidityPct: isRaised ? mildHumidityPct(airTempC, Math.max(...nearWax), PRESSURE_PA)! : 100 }
+      const chill = {
+        coatNumber: 1,
+        wetBulbDepressionK: wetBulbDepressionK(air, PRESSURE_PA),
+        roomFactor: roomFactor(air, PRESSURE_PA),
+        placeFactor: Math.max(0, ...nearWax),
       }
+      expect(chillFlag(chill)).toBeNull()
       return steady !== null
     })
   })

@@ -51,9 +51,11 @@ function scene({
   const dryer = dryerFor(context, climate, drying, tonight, BAND)
   const effects = treeEffects(drying, context, tonight, dryer)
   const rooms = [queueRoom(climate, { name: 'Shell room logger', kind }, 101_325)]
+  const coats = drying.map((tree) => limitedCoat(tree, 1, null))
   const words = { now, timeZone: TIME_ZONE }
   return {
     context,
+    coats,
     effects,
     rooms,
     headline: roomHeadline({ rooms, effects, tonight, ...words }),
@@ -75,7 +77,7 @@ function scene({
         dryer,
         fans,
         sensorOf: () => 1,
-        coatsOf: () => drying.map((tree) => limitedCoat(tree, 1, null)),
+        coatsOf: () => coats,
         placeFactorOf: (effect) => placeFactorTonight(effect.tree, context, tonight),
         tonight,
         tempUnit: 'degC',
@@ -222,7 +224,7 @@ describe('things to do', () => {
 
   it('are three at the most', () => {
     const given: Scene = { airAt: () => DAMP, trees: [{ coat: 1, airTempAtDipC: 20 }, { need: 8 }] }
-    const { rooms, effects, tonight } = scene(given)
+    const { rooms, effects, tonight, coats } = scene(given)
     const many: QueueRoom[] = [
       rooms[0]!,
       { ...rooms[0]!, sensorId: 2, isStale: true },
@@ -235,7 +237,7 @@ describe('things to do', () => {
       dryer: null,
       fans: [],
       sensorOf: () => 1,
-      coatsOf: () => [],
+      coatsOf: () => coats,
       placeFactorOf: () => 1,
       tonight,
       now: NOW,
