@@ -86,6 +86,7 @@ export const DOORS: readonly Door[] = [
   door('GET', '/api/v1/uploads/[uploadId]', 'supervisor'),
   door('GET', '/api/v1/uploads/[uploadId]/preview', 'supervisor'),
   door('GET', '/api/v1/uploads/[uploadId]/errors.csv', 'supervisor'),
+  door('POST', '/api/v1/rooms/[sensorId]/what-if', 'crew', '/api/v1/rooms/1/what-if'),
   // The API's description, how to use it, and the history of every change.
   door('GET', '/api/v1/openapi.json', 'anybody'),
   page('/api-guide', 'supervisor'),
