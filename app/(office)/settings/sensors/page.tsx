@@ -13,7 +13,7 @@ export const metadata: Metadata = { title: 'Sensors' }
 /** What reads the air, and the tokens with which loggers send. */
 export default async function SensorsPage() {
   const member = await requireMemberPage('sensors', '/settings/sensors')
-  const [sensors, { timeZone }] = await Promise.all([loadSensorList(), loadFoundry()])
+  const [sensors, { timeZone }] = await Promise.all([loadSensorList({ clock: systemClock }), loadFoundry()])
   return (
     <>
       <FoundryNav role={member.role} />
@@ -24,7 +24,7 @@ export default async function SensorsPage() {
         </div>
         <KeyLink href="/room/upload">Readings from a file</KeyLink>
       </div>
-      <SensorRows sensors={sensors} reading={{ now: systemClock.now(), timeZone, units: member.units }} />
+      <SensorRows sensors={sensors} reading={{ now: systemClock.now(), timeZone, units: member.units }} hasOwnPages />
     </>
   )
 }
