@@ -2,6 +2,7 @@ import { performance } from 'node:perf_hooks'
 import { setTimeout as sleep } from 'node:timers/promises'
 import { importUploads } from '@/jobs/import-uploads'
 import { allJobs } from '@/jobs/registry'
+import { listenMqtt } from '@/jobs/listen-mqtt'
 import { runPass } from '@/jobs/run-pass'
 import { startSchedule } from '@/jobs/schedule'
 import { systemClock } from '@/lib/core/clock'
@@ -25,6 +26,7 @@ const jobs = allJobs({
   random: Math.random,
 })
 const stopSchedule = startSchedule(jobs, context)
+const stopListening = listenMqtt({ clock: systemClock })
 log('worker.started', { jobs: jobs.map(({ name }) => name) })
 
 // At once, and not at the next full minute: the floor may have waited for a while. The tick claimed here is not run again.
@@ -42,7 +44,7 @@ async function stop(reason: string): Promise<void> {
   log('worker.stopping', { reason })
   // A send that hangs is left to its lease; the next worker takes it up.
   const patience = setTimeout(() => process.exit(0), STOP_WITHIN_MS)
-  await Promise.all([stopSchedule(), firstPass, imports])
+  await Promise.all([stopSchedule(), stopListening(), firstPass, imports])
   await closeRecords()
   clearTimeout(patience)
   log('worker.stopped')

@@ -1,5 +1,5 @@
 import { z } from 'zod'
-import { AppError, type ErrorCode } from '@/lib/core/errors'
+import { AppError, traceOf, type ErrorCode } from '@/lib/core/errors'
 import { log } from '@/lib/core/log'
 
 const MOST_FIELDS = 50
@@ -88,7 +88,7 @@ export function problemOf(error: unknown, request: { method: string; url: string
     log('request.unavailable', { ...where, trouble })
     return problem('unavailable', TROUBLE[trouble], {}, { 'retry-after': trouble === 'busy' ? '1' : '30' })
   }
-  log('request.failed', { ...where, error: error instanceof Error ? error.stack : String(error) })
+  log('request.failed', { ...where, error: traceOf(error) })
   return problem('internal', 'The server could not finish this request.')
 }
 

@@ -43,6 +43,8 @@ export const DOORS: readonly Door[] = [
   page('/settings/baths', 'supervisor'),
   page('/settings/sensors', 'supervisor'),
   page('/settings/sensors/[sensorId]', 'supervisor', '/settings/sensors/1'),
+  // The broker of loggers.
+  page('/settings/mqtt', 'supervisor'),
   // People and one's own page.
   page('/people', 'owner'),
   page('/people/[memberId]', 'owner'),
@@ -63,6 +65,7 @@ export const DOORS: readonly Door[] = [
   door('POST', '/api/v1/evidence/[evidenceId]/withdrawal', 'operator'),
   door('POST', '/api/v1/trees/[treeId]/place', 'operator'),
   door('POST', '/api/v1/baths/[bathId]/stirs', 'operator'),
+  door('POST', '/api/v1/places/[placeId]/fans', 'operator'),
   door('GET', '/api/v1/push/subscriptions', 'crew'),
   door('POST', '/api/v1/push/subscriptions', 'crew'),
   door('DELETE', '/api/v1/push/subscriptions', 'crew'),
@@ -141,6 +144,11 @@ export const ACTIONS: readonly ActionRow[] = [
   { file: 'app/(office)/settings/sensors/actions.ts', name: 'saveOffsetAction', act: 'sensors', who: 'supervisor' },
   { file: 'app/(office)/settings/sensors/actions.ts', name: 'removeOffsetAction', act: 'sensors', who: 'supervisor' },
   { file: 'app/(office)/settings/sensors/actions.ts', name: 'replaceDeviceAction', act: 'sensors', who: 'supervisor' },
+  // The broker of loggers.
+  { file: 'app/(office)/settings/mqtt/actions.ts', name: 'saveBrokerAction', act: 'settings', who: 'owner' },
+  { file: 'app/(office)/settings/mqtt/actions.ts', name: 'addTopicAction', act: 'sensors', who: 'supervisor' },
+  { file: 'app/(office)/settings/mqtt/actions.ts', name: 'changeTopicAction', act: 'sensors', who: 'supervisor' },
+  { file: 'app/(office)/settings/mqtt/actions.ts', name: 'removeTopicAction', act: 'sensors', who: 'supervisor' },
   // People and one's own page.
   { file: 'app/(office)/people/actions.ts', name: 'addMemberAction', act: 'people', who: 'owner' },
   { file: 'app/(office)/people/actions.ts', name: 'editMemberAction', act: 'people', who: 'owner' },
