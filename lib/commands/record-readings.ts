@@ -51,9 +51,13 @@ export async function recordReadings(
     added += await inTransaction(async () => {
       const foundry = await Foundry.findByPk(1, { rejectOnEmpty: true })
       const altitudePressurePa = stationPressurePa(foundry.altitudeM)
+      const received = { source, enteredBy, altitudePressurePa, receivedAt: clock.now() }
       const told = piece.map(({ measuredAt, airTempC, relHumidityPct, pressurePa = null }): Told => ({
-        ...{ measuredAt, airTempC, relHumidityPct, source, enteredBy },
-        ...{ pressurePa, altitudePressurePa, receivedAt: clock.now() },
+        measuredAt,
+        airTempC,
+        relHumidityPct,
+        pressurePa,
+        ...received,
       }))
       const within = await addWithinRange(sensorId, told.filter(isWithinRange), altitudePressurePa)
       return within + (await addOutOfRange(sensorId, oneForEachInstant(told.filter((row) => !isWithinRange(row)))))
@@ -64,7 +68,7 @@ export async function recordReadings(
 }
 
 type Told = Omit<KnownReading, 'setAside'>
-/** `isNew` is of this batch; `stood` is how it stood before, undefined where there was none or another one. */
+/** `isChanged`: by this batch. `stood`: how it was kept before; undefined where its instant was not known. */
 type Entry = { reading: Told; isChanged: boolean; stood: KnownReading['setAside'] | undefined }
 
 function oneForEachInstant(rows: readonly Told[]): Told[] {
@@ -147,8 +151,15 @@ async function remove(table: 'readings' | 'set_aside_readings', sensorId: number
 async function setAside(sensorId: number, rows: readonly (Told & { reason: SetAsideReason })[]): Promise<void> {
   if (rows.length === 0) return
   const values = rows.map((row) => [
-    ...[row.measuredAt, row.reason, row.airTempC, row.relHumidityPct, row.pressurePa],
-    ...[row.altitudePressurePa, row.source, row.enteredBy, row.receivedAt],
+    row.measuredAt,
+    row.reason,
+    row.airTempC,
+    row.relHumidityPct,
+    row.pressurePa,
+    row.altitudePressurePa,
+    row.source,
+    row.enteredBy,
+    row.receivedAt,
   ])
   await database.query(
     `INSERT INTO set_aside_readings (sensor_id, measured_at, reason, air_temp_c, rel_humidity_pct, pressure_pa, altitude_pressure_pa, source, entered_by, received_at)

@@ -24,12 +24,14 @@ async function rewriteBetween(sensorId: number, first: number, last: number): Pr
   const touched = await loadReadingsInRange(sensorId, first, last + 1)
   const [oldest, newest] = [touched[0], touched.at(-1)]
   // Before the first reading and after the last one no hour has a row, whichever way the readings came and went.
-  if (!oldest || oldest.measuredAt >= first)
-    await removeHours(sensorId, { before: oldest ? hourStartOf(oldest.measuredAt) : Number.MAX_SAFE_INTEGER })
-  if (!oldest || !newest) return
+  if (!oldest || !newest) {
+    await DoseHour.destroy({ where: { sensorId } })
+    return
+  }
   const fromHour = hourStartOf(oldest.measuredAt)
   const toHour = hourStartOf(newest.measuredAt) + millisecondsInHour
-  if (newest.measuredAt <= last) await removeHours(sensorId, { from: toHour })
+  if (oldest.measuredAt >= first) await DoseHour.destroy({ where: { sensorId, hourStart: { [Op.lt]: fromHour } } })
+  if (newest.measuredAt <= last) await DoseHour.destroy({ where: { sensorId, hourStart: { [Op.gte]: toHour } } })
   const readings = await loadReadingsInRange(sensorId, fromHour, toHour)
   const curve = roomSegments(readings, { now: readings.at(-1)?.measuredAt ?? last })
   const inHour = new Map<number, RoomReading[]>()
@@ -67,13 +69,6 @@ async function rewriteBetween(sensorId: number, first: number, last: number): Pr
       'maxRelHumidityPct',
     ],
   })
-}
-
-function removeHours(
-  sensorId: number,
-  { from = 0, before = Number.MAX_SAFE_INTEGER }: { from?: number; before?: number },
-): Promise<number> {
-  return DoseHour.destroy({ where: { sensorId, hourStart: { [Op.gte]: from, [Op.lt]: before } } })
 }
 
 const mean = (values: readonly number[]) => values.reduce((sum, value) => sum + value, 0) / values.length

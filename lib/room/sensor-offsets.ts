@@ -1,4 +1,5 @@
 import type { Air } from '@/lib/drying/types'
+import type { TempUnit } from '@/lib/format/units'
 import { AIR_TEMP_LIMITS_C } from '@/lib/room/air-limits'
 
 /** What is added to the readings of a sensor from an instant on, until the next one. */
@@ -28,3 +29,21 @@ export function correctedAir({ airTempC, relHumidityPct }: Air, offset: SensorOf
     relHumidityPct: relHumidityOffsetPct === 0 ? relHumidityPct : clamp(tidy(relHumidityPct + relHumidityOffsetPct), COUNTED_RH_PCT),
   }
 }
+
+/**
+ * What an offset adds, in the unit of whoever reads it: as exact as it was typed.
+ *
+ * @example offsetWords({ airTempOffsetK: -0.4, relHumidityOffsetPct: 3 }) // => '−0.4 K, +3 points RH'
+ */
+export function offsetWords(
+  { airTempOffsetK, relHumidityOffsetPct }: Pick<SensorOffset, 'airTempOffsetK' | 'relHumidityOffsetPct'>,
+  unit: TempUnit = 'degC',
+): string {
+  const parts = [
+    ...(airTempOffsetK === 0 ? [] : [unit === 'degF' ? `${signed(airTempOffsetK * 1.8)}\u00A0°F` : `${signed(airTempOffsetK)}\u00A0K`]),
+    ...(relHumidityOffsetPct === 0 ? [] : [`${signed(relHumidityOffsetPct)}\u00A0points RH`]),
+  ]
+  return parts.length === 0 ? 'nothing' : parts.join(', ')
+}
+
+const signed = (value: number) => `${value < 0 ? '−' : '+'}${Number(Math.abs(value).toFixed(2))}`

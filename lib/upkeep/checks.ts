@@ -5,6 +5,8 @@ import { formatBytes } from '@/lib/format/bytes'
 import { formatDuration } from '@/lib/format/duration'
 import { formatMoment } from '@/lib/format/local-time'
 import { connectionWords, type ConnectionState } from '@/lib/mqtt/connection-words'
+import { formatPercent } from '@/lib/format/units'
+import { isBatteryLow } from '@/lib/room/sensor-warnings'
 
 /** What was measured, for the page of upkeep. Instants in epoch milliseconds, sizes in bytes. */
 export type UpkeepFacts = {
@@ -19,9 +21,9 @@ export type UpkeepFacts = {
     failing: readonly { job: string; at: number; error: string }[]
     failedPasses: number
   }
-  sensors: readonly { name: string; source: ReadingSource; newestAt: number | null }[]
   /** The broker of loggers, counts of the last day; null where none is switched on. */
   mqtt: (ConnectionState & { readings: number; refused: number; dropped: number }) | null
+  sensors: readonly { name: string; source: ReadingSource; newestAt: number | null; batteryPct: number | null }[]
   records: { sizeBytes: number; walBytes: number }
   disks: readonly { of: 'records' | 'backups'; freeBytes: number }[]
   pushes: {
@@ -72,6 +74,7 @@ const JOB_WORDS: Record<string, string> = {
   'send-pushes': 'Sending notices',
   prune: 'Tidying up',
   'back-up': 'The backup',
+  'correct-readings': 'Bringing readings to their offsets',
   'demo-feed': 'The demo’s sensors',
 }
 
@@ -130,13 +133,17 @@ function sensors({ sensors: all, now, timeZone }: UpkeepFacts): UpkeepCheck {
   })
   if (all.length === 0) lines.push('There is no sensor yet.')
   const silent = all.filter(isSilent)
-  const todo =
-    silent.length === 0
-      ? ''
+  const empty = all.filter(({ batteryPct }) => isBatteryLow(batteryPct))
+  lines.push(...empty.map(({ name, batteryPct }) => `${name}: battery ${formatPercent(batteryPct)}.`))
+  const todo = [
+    ...(silent.length === 0
+      ? []
       : silent.every(({ source }) => source === 'typed')
-        ? 'Read the wall hygrometer and type it in on the floor.'
-        : 'Look at the sensor, its network and its token. Until it sends again, trees in its air turn unknown.'
-  return { key: 'sensors', title: 'Sensors', isInOrder: silent.length === 0, lines, todo }
+        ? ['Read the wall hygrometer and type it in on the floor.']
+        : ['Look at the sensor, its network and its token. Until it sends again, trees in its air turn unknown.']),
+    ...(empty.length === 0 ? [] : ['Change the battery before the sensor falls silent.']),
+  ].join(' ')
+  return { key: 'sensors', title: 'Sensors', isInOrder: todo === '', lines, todo }
 }
 
 /** Only where a broker is switched on. A connection that broke a moment ago comes back by itself. */

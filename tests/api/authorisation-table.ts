@@ -44,6 +44,7 @@ export const DOORS: readonly Door[] = [
   page('/settings/sensors', 'supervisor'),
   // The broker of loggers.
   page('/settings/mqtt', 'supervisor'),
+  page('/settings/sensors/[sensorId]', 'supervisor', '/settings/sensors/1'),
   // People and one's own page.
   page('/people', 'owner'),
   page('/people/[memberId]', 'owner'),
@@ -60,7 +61,8 @@ export const DOORS: readonly Door[] = [
   door('POST', '/api/v1/dips', 'operator'),
   door('POST', '/api/v1/dips/undo', 'operator'),
   door('POST', '/api/v1/trees/[treeId]/holds', 'operator'),
-  door('POST', '/api/v1/trees/[treeId]/looks', 'operator'),
+  door('POST', '/api/v1/trees/[treeId]/evidence', 'operator'),
+  door('POST', '/api/v1/evidence/[evidenceId]/withdrawal', 'operator'),
   door('POST', '/api/v1/trees/[treeId]/place', 'operator'),
   door('POST', '/api/v1/baths/[bathId]/stirs', 'operator'),
   door('GET', '/api/v1/push/subscriptions', 'crew'),
@@ -135,6 +137,10 @@ export const ACTIONS: readonly ActionRow[] = [
   { file: 'app/(office)/settings/mqtt/actions.ts', name: 'addTopicAction', act: 'sensors', who: 'supervisor' },
   { file: 'app/(office)/settings/mqtt/actions.ts', name: 'changeTopicAction', act: 'sensors', who: 'supervisor' },
   { file: 'app/(office)/settings/mqtt/actions.ts', name: 'removeTopicAction', act: 'sensors', who: 'supervisor' },
+  // Offsets and devices of a sensor.
+  { file: 'app/(office)/settings/sensors/actions.ts', name: 'saveOffsetAction', act: 'sensors', who: 'supervisor' },
+  { file: 'app/(office)/settings/sensors/actions.ts', name: 'removeOffsetAction', act: 'sensors', who: 'supervisor' },
+  { file: 'app/(office)/settings/sensors/actions.ts', name: 'replaceDeviceAction', act: 'sensors', who: 'supervisor' },
   // People and one's own page.
   { file: 'app/(office)/people/actions.ts', name: 'addMemberAction', act: 'people', who: 'owner' },
   { file: 'app/(office)/people/actions.ts', name: 'editMemberAction', act: 'people', who: 'owner' },

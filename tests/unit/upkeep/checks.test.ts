@@ -12,8 +12,8 @@ const inOrder: UpkeepFacts = {
   timeZone: 'Europe/London',
   worker: { pulseAt: NOW - 20_000, isAlive: true, missedMinutes: 0, failing: [], failedPasses: 0 },
   sensors: [
-    { name: 'Shell room', source: 'sensor', newestAt: NOW - 4 * MINUTE },
-    { name: 'Boat shed', source: 'typed', newestAt: NOW - 11 * HOUR },
+    { name: 'Shell room', source: 'sensor', newestAt: NOW - 4 * MINUTE, batteryPct: 80 },
+    { name: 'Boat shed', source: 'typed', newestAt: NOW - 11 * HOUR, batteryPct: null },
   ],
   mqtt: {
     isOn: true,
@@ -64,10 +64,9 @@ describe('upkeep', () => {
     [
       'sensors',
       'a silent logger',
-      { sensors: [{ name: 'Shell room', source: 'sensor', newestAt: NOW - 31 * MINUTE }] },
+      { sensors: [{ name: 'Shell room', source: 'sensor', newestAt: NOW - 31 * MINUTE, batteryPct: null }] },
       /no reading since 09:29/,
     ],
-    ['sensors', 'a sensor that never sent', { sensors: [{ name: 'Loft', source: 'sensor', newestAt: null }] }, /Loft: no reading yet/],
     [
       'mqtt',
       'a broker that is away for long',
@@ -75,6 +74,18 @@ describe('upkeep', () => {
       /Not connected since 09:54\. No broker answers\./,
     ],
     ['mqtt', 'a topic that the broker keeps to itself', { mqtt: { ...inOrder.mqtt!, trouble: 'Not shop/#.' } }, /Not shop/],
+    [
+      'sensors',
+      'a sensor that never sent',
+      { sensors: [{ name: 'Loft', source: 'sensor', newestAt: null, batteryPct: null }] },
+      /Loft: no reading yet/,
+    ],
+    [
+      'sensors',
+      'a battery that runs out',
+      { sensors: [{ name: 'Shell room', source: 'sensor', newestAt: NOW, batteryPct: 15 }] },
+      /Shell room: battery 15.%\./,
+    ],
     ['disk', 'under 1 GB', { disks: [{ of: 'backups', freeBytes: 999_000_000 }] }, /999.MB free for the backups/],
     ['records', 'a log that only grows', { records: { sizeBytes: 1e9, walBytes: 400e6 } }, /400.MB/],
     ['backups', 'a late backup', { backups: { ...inOrder.backups, newest: { at: NOW - 4 * HOUR, sizeBytes: 1 } } }, /06:00/],
