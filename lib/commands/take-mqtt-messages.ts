@@ -1,5 +1,6 @@
 import { millisecondsInDay, millisecondsInHour } from 'date-fns/constants'
 import { Op, QueryTypes } from 'sequelize'
+import { noteSender } from '@/lib/commands/note-sender'
 import { recordReadings } from '@/lib/commands/record-readings'
 import type { Clock } from '@/lib/core/clock'
 import type { MqttRow, SortedMessage } from '@/lib/mqtt/sort-messages'
@@ -25,7 +26,7 @@ export function takeMqttMessages(
   if (messages.length === 0 && dropped === 0) return Promise.resolve(0)
   return inTransaction(async () => {
     const recorded = await recordAll(messages, clock)
-    await noteBatteries(messages)
+    await noteBatteries(messages, clock)
     await keepLast(messages, recorded)
     const readings = [...recorded.values()].reduce((sum, { added }) => sum + added, 0)
     await countHour({ messages, readings, dropped }, clock.now())
@@ -54,11 +55,12 @@ async function recordAll(messages: readonly SortedMessage[], clock: Clock): Prom
   return recorded
 }
 
-async function noteBatteries(messages: readonly SortedMessage[]): Promise<void> {
-  const newest = new Map(
-    messages.flatMap(({ batteries, arrival }) => batteries.map(({ sensorId, pct }) => [sensorId, { pct, at: arrival.arrivedAt }] as const)),
-  )
-  for (const [id, { pct, at }] of newest) await Sensor.update({ batteryPct: pct, batteryAt: at }, { where: { id } })
+async function noteBatteries(messages: readonly SortedMessage[], clock: Clock): Promise<void> {
+  const newest = new Map(messages.flatMap(({ batteries }) => batteries.map(({ sensorId, pct }) => [sensorId, pct] as const)))
+  if (newest.size === 0) return
+  for (const { id } of await Sensor.findAll({ where: { id: [...newest.keys()] } })) {
+    await noteSender(id, { batteryPct: newest.get(id), clockOffsetSeconds: undefined }, { clock })
+  }
 }
 
 /** The outcome that is known only once the rows are in. */

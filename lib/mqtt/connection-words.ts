@@ -56,6 +56,7 @@ export function connectionWords(
     const since = `Connected since ${formatMoment(state.connectedSince, now, timeZone)}.`
     return { isGood: state.trouble === '', text: state.trouble === '' ? since : `${since} ${state.trouble}` }
   }
-  if (state.awaySince === null) return { isGood: false, text: `Not connected yet. ${state.trouble}`.trim() }
+  if (state.awaySince === null && state.trouble === '') return { isGood: true, text: 'Connecting.' }
+  if (state.awaySince === null) return { isGood: false, text: `Not connected. ${state.trouble}` }
   return { isGood: false, text: `Not connected since ${formatMoment(state.awaySince, now, timeZone)}. ${state.trouble}`.trim() }
 }

@@ -99,7 +99,8 @@ export function messageSorter(): Sorter {
       [{ measuredAt: row.measuredAt, airTempC: row.airTempC, relHumidityPct: row.relHumidityPct }],
       arrival.arrivedAt,
     )
-    if (rejected[0]) return { ...none, outcome: 'refused', reason: rejected[0].reason }
+    // The field's name is that of the door for readings.
+    if (rejected[0]) return { ...none, outcome: 'refused', reason: rejected[0].reason.replace(/^measuredAt /, 'Its time ') }
     const { pressurePa } = values
     const told = rows.map((good) => ({ sensorId: rule.sensorId, row: pressurePa === null ? good : { ...good, pressurePa } }))
     return { ...none, rows: told, outcome: 'taken', reason: '' }

@@ -87,7 +87,8 @@ describe('how the connection stands', () => {
       isGood: false,
       text: 'Not connected since 10:00. Gone.',
     })
-    expect(words({ connectedSince: null })).toEqual({ isGood: false, text: 'Not connected yet.' })
+    expect(words({ connectedSince: null })).toEqual({ isGood: true, text: 'Connecting.' })
+    expect(words({ connectedSince: null, trouble: 'No key.' })).toEqual({ isGood: false, text: 'Not connected. No key.' })
     expect(words({ isWorkerAlive: false }).isGood).toBe(false)
     expect(words({ isOn: false })).toEqual({ isGood: true, text: 'Switched off.' })
   })

@@ -83,11 +83,12 @@ export default async function MqttPage() {
 function BrokerState({ page: { broker, state, counts, now, timeZone } }: { page: MqttPage }) {
   if (broker === null) return <p>No broker is set: Kilnward listens to none.</p>
   const { isGood, text } = connectionWords(state, { now, timeZone })
-  const tone = !state.isOn ? 'state-soot' : isGood ? 'state-verdigris' : 'state-furnace'
+  const isConnected = state.isOn && state.connectedSince !== null
+  const tone = !isGood ? 'state-furnace' : isConnected ? 'state-verdigris' : 'state-soot'
   return (
     <div className="mqtt-state">
       <p className={`state ${tone}`} role="status">
-        <Icon name={!state.isOn ? 'minus' : isGood ? 'check' : 'warning'} />
+        <Icon name={!isGood ? 'warning' : isConnected ? 'check' : 'minus'} />
         <span>{text}</span>
       </p>
       <dl className="facts">
