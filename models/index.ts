@@ -16,6 +16,10 @@ import { Hold } from '@/models/hold'
 import { JobRun } from '@/models/job-run'
 import { LookOver } from '@/models/look-over'
 import { Member } from '@/models/member'
+import { MqttBroker } from '@/models/mqtt-broker'
+import { MqttHour } from '@/models/mqtt-hour'
+import { MqttMessage } from '@/models/mqtt-message'
+import { MqttTopic } from '@/models/mqtt-topic'
 import { Notice } from '@/models/notice'
 import { Operation } from '@/models/operation'
 import { Piece } from '@/models/piece'
@@ -28,8 +32,11 @@ import { RecipeVersion } from '@/models/recipe-version'
 import { Release } from '@/models/release'
 import { Section } from '@/models/section'
 import { Sensor } from '@/models/sensor'
+import { SensorDevice } from '@/models/sensor-device'
+import { SensorOffset } from '@/models/sensor-offset'
 import { SensorToken } from '@/models/sensor-token'
 import { Session } from '@/models/session'
+import { SetAsideReading } from '@/models/set-aside-reading'
 import { ShiftHours } from '@/models/shift-hours'
 import { SignInWait } from '@/models/sign-in-wait'
 import { Tree } from '@/models/tree'
@@ -37,6 +44,7 @@ import { TreeEvent } from '@/models/tree-event'
 import { TreePiece } from '@/models/tree-piece'
 import { TreePlace } from '@/models/tree-place'
 import { TreeWatch } from '@/models/tree-watch'
+import { Upload } from '@/models/upload'
 import { Work } from '@/models/work'
 
 // Each names itself: a production build shortens class names, and of two models with one name the later replaces the earlier.
@@ -50,7 +58,10 @@ const models = [
   SignInWait,
   Sensor,
   SensorToken,
+  SensorDevice,
+  SensorOffset,
   Reading,
+  SetAsideReading,
   DoseHour,
   Place,
   FanHours,
@@ -81,6 +92,11 @@ const models = [
   JobRun,
   FoundryEvent,
   Backup,
+  MqttBroker,
+  MqttTopic,
+  MqttMessage,
+  MqttHour,
+  Upload,
 ]
 for (const model of models) model.initialize(database)
 
@@ -143,6 +159,9 @@ Notice.belongsTo(Tree, { as: 'tree', foreignKey: 'treeId' })
 Notice.hasMany(Delivery, { as: 'deliveries', foreignKey: 'noticeId' })
 Delivery.belongsTo(Notice, { as: 'notice', foreignKey: 'noticeId' })
 PushSubscription.belongsTo(Member, { as: 'member', foreignKey: 'memberId' })
+MqttTopic.belongsTo(Sensor, { as: 'sensor', foreignKey: 'sensorId' })
+Upload.belongsTo(Sensor, { as: 'sensor', foreignKey: 'sensorId' })
+Upload.belongsTo(Member, { as: 'author', foreignKey: 'createdBy' })
 Member.hasMany(PushSubscription, { as: 'pushSubscriptions', foreignKey: 'memberId' })
 
 export {
@@ -156,7 +175,10 @@ export {
   SignInWait,
   Sensor,
   SensorToken,
+  SensorDevice,
+  SensorOffset,
   Reading,
+  SetAsideReading,
   DoseHour,
   Place,
   FanHours,
@@ -187,4 +209,9 @@ export {
   JobRun,
   FoundryEvent,
   Backup,
+  MqttBroker,
+  MqttTopic,
+  MqttMessage,
+  MqttHour,
+  Upload,
 }
