@@ -114,9 +114,9 @@ export async function loadRoomPage({ sensorId, range, tempUnit, clock }: RoomInp
     dryerPct: dryer?.targetPct ?? null,
     wonBackMs: effects.reduce((sum, effect) => sum + (effect.wonBackMs ?? 0), 0),
     placesNow: places.map((place) => {
-      const fans = placeFansOf(place, context, fanSwitches)
+      const stand = placeFansOf(place, context, fanSwitches)
       const treeCount = floor.trees.filter(({ facts }) => facts.stays.at(-1)?.placeId === place.id).length
-      return { id: place.id, name: place.name, treeCount, speed: speedWords(place, fans?.isOn ?? false), fans }
+      return { id: place.id, name: place.name, treeCount, speed: speedWords(place, stand?.isOn ?? false), fans: stand }
     }),
     rows: effects.map((effect) => ({
       tree: queueTree(effect.tree, context.places),

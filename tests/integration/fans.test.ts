@@ -115,7 +115,7 @@ describe('the fans of a place', () => {
         after: { fans: 'on, by the timetable' },
       },
     ])
-    expect(lines.map(({ kind, memberId }) => [kind, memberId])).toEqual(Array(2).fill(['fans switched', maud.id]))
+    expect(lines.map(({ kind, memberId }) => [kind, memberId])).toEqual([1, 2].map(() => ['fans switched', maud.id]))
   })
 
   it('are no matter where the air is the same, the place is retired or unknown', async () => {
