@@ -64,7 +64,7 @@ export function weighAir(room: WeighedRoom, choice: RoomWhatIf): RoomWhatIfAnswe
       placeName: context.places.get(placeIdOf(tree))?.name ?? '',
       coatNumber: tree.newest.number,
       guard: tree.guard ?? 'likely',
-      isUncalibrated: !tree.facts.recipe.isCalibrated,
+      isUncalibrated: !tree.newest.isCalibrated,
       before: pairOf(tree.call),
       after: pairOf(call),
       readyBefore: slotOf(tree.call, tree),
