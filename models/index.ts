@@ -4,9 +4,9 @@ import { Bath } from '@/models/bath'
 import { BathStir } from '@/models/bath-stir'
 import { Closure } from '@/models/closure'
 import { Coat } from '@/models/coat'
-import { CoatLook } from '@/models/coat-look'
 import { Delivery } from '@/models/delivery'
 import { DoseHour } from '@/models/dose-hour'
+import { Evidence } from '@/models/evidence'
 import { FanHours } from '@/models/fan-hours'
 import { Foundry } from '@/models/foundry'
 import { FormerAir } from '@/models/former-air'
@@ -67,7 +67,7 @@ const models = [
   TreePlace,
   Operation,
   Coat,
-  CoatLook,
+  Evidence,
   Hold,
   LookOver,
   Release,
@@ -120,9 +120,10 @@ Coat.belongsTo(Place, { as: 'place', foreignKey: 'placeId' })
 Coat.belongsTo(Member, { as: 'author', foreignKey: 'loggedBy' })
 Coat.belongsTo(Operation, { as: 'operation', foreignKey: 'operationId' })
 Operation.hasMany(Coat, { as: 'coats', foreignKey: 'operationId' })
-Coat.hasMany(CoatLook, { as: 'looks', foreignKey: 'coatId' })
-CoatLook.belongsTo(Coat, { as: 'coat', foreignKey: 'coatId' })
-CoatLook.belongsTo(Member, { as: 'member', foreignKey: 'memberId' })
+Coat.hasMany(Evidence, { as: 'evidence', foreignKey: 'coatId' })
+Evidence.belongsTo(Coat, { as: 'coat', foreignKey: 'coatId' })
+Evidence.belongsTo(Tree, { as: 'tree', foreignKey: 'treeId' })
+Evidence.belongsTo(Member, { as: 'member', foreignKey: 'memberId' })
 Hold.belongsTo(Tree, { as: 'tree', foreignKey: 'treeId' })
 Hold.belongsTo(Member, { as: 'holder', foreignKey: 'heldBy' })
 Hold.belongsTo(Member, { as: 'lifter', foreignKey: 'liftedBy' })
@@ -171,7 +172,7 @@ export {
   TreePlace,
   Operation,
   Coat,
-  CoatLook,
+  Evidence,
   Hold,
   LookOver,
   Release,

@@ -116,7 +116,7 @@ async function removeTrees(): Promise<void> {
     OR (subject_type = 'member' AND subject_id IN ${DEMO('members')}))`
   await run(`DELETE FROM deliveries WHERE notice_id IN ${notices} OR member_id IN ${DEMO('members')}`)
   await run(`DELETE FROM notices WHERE id IN ${notices}`)
-  await run(`DELETE FROM coat_looks WHERE coat_id IN ${coats}`)
+  await run(`DELETE FROM evidence WHERE tree_id IN ${trees}`)
   await run(`DELETE FROM look_overs WHERE tree_id IN ${trees}`)
   // Marked by their missing coats: an operation whose run was on demo trees alone goes with them.
   await run(`CREATE TEMP TABLE demo_operations AS SELECT DISTINCT operation_id FROM coats WHERE tree_id IN ${trees}`)

@@ -80,6 +80,10 @@ export type CoatForClock = {
   airTempAtDipC: number | null
   /** Spread of ln(need) before recess and typed readings are added; 0.25 (DEFAULT_SIGMA) until evidence narrows it. */
   baseSigma?: number
+  /** What damp air adds to the spread; 0 where it is not said. */
+  airSigma?: number
+  /** Page's exponent where weighings of this coat tell it. */
+  pageExponent?: number
 }
 
 /** A reading's time and source, without its air. */

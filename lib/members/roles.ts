@@ -18,8 +18,8 @@ const LOWEST_ROLE = {
   undo: 'operator',
   hold: 'operator',
   move: 'operator',
-  /** 'Looks dry' and 'not yet': evidence on the newest coat. */
-  look: 'operator',
+  /** What one weighs, feels and sees on the newest coat; withdrawing one's own within ten minutes. */
+  evidence: 'operator',
   /** A reading typed from the wall hygrometer. */
   read: 'operator',
   stir: 'operator',

@@ -42,8 +42,9 @@ export async function deriveFloor(
     ]),
   ]
   // An hour before each instant too: the damp flag and the room at the dip look back from it.
+  const seenAt = facts.flatMap((tree) => (tree.coats.at(-1)?.evidence ?? []).map(({ takenAt }) => takenAt))
   const needed = new Set(
-    [...starts, ...extraInstants, now]
+    [...starts, ...seenAt, ...extraInstants, now]
       .flatMap((at) => [hourStartOf(at), hourStartOf(at) - 3_600_000])
       .filter((at) => at >= from - 2 * 3_600_000),
   )

@@ -6,6 +6,7 @@ import type { Queue, QueueBath, QueueRoom, QueueTree } from '@/lib/queue/contrac
 import type { RoomClimate } from '@/lib/room/climate'
 import { dryingPull } from '@/lib/room/drying-pull'
 import { nextOpenInstant, type Shift } from '@/lib/schedule/shifts'
+import { SPOTS_OF } from '@/lib/trees/coat-evidence'
 import type { DerivedTree } from '@/lib/trees/derive'
 import type { PlaceFacts } from '@/lib/trees/facts'
 
@@ -43,11 +44,14 @@ export function queueTree(tree: DerivedTree, places: ReadonlyMap<string, PlaceFa
     guard: tree.guard,
     dry: call && !call.isUnknown ? { earliestAt: call.earliestAt, likelyAt: call.likelyAt, safeAt: call.safeAt } : null,
     driedOut: tree.driedOut,
-    isUncalibrated: !facts.recipe.isCalibrated,
+    isUncalibrated: newest !== null && !newest.isCalibrated,
+    isPlanUncalibrated:
+      facts.recipe.coats.some((coat) => coat.number > facts.coats.length && !coat.isCalibrated) || newest?.isCalibrated === false,
     pourDate: facts.pourDate,
     willMissPour: tree.willMissPour,
     hold: facts.hold,
-    look: facts.look,
+    word: facts.word,
+    spots: [...SPOTS_OF[facts.recessClass]],
     warnings: tree.warnings,
   }
 }

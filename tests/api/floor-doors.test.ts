@@ -112,8 +112,8 @@ describe('GET /api/v1/queue', () => {
 })
 
 describe('small writes of the tablet', () => {
-  it('hold, look, move, stir and read once, however often they are sent', async () => {
-    const { BathStir, CoatLook, Hold, Reading, TreePlace } = await import('@/models')
+  it('hold, touch, move, stir and read once, however often they are sent', async () => {
+    const { BathStir, Evidence, Hold, Reading, TreePlace } = await import('@/models')
     const { id } = await factories.buildTree(foundry)
     const elsewhere = await factories.buildPlace({ sensorId: foundry.sensorId })
     await maud.send('POST', '/api/v1/dips', dip(id))
@@ -122,12 +122,12 @@ describe('small writes of the tablet', () => {
       const answers = [await maud.send('POST', path, whole), await maud.send('POST', path, whole)]
       expect(answers.map((answer) => answer.status < 300)).toEqual([true, true])
     }
-    await twice(`/api/v1/trees/${id}/looks`, { verdict: 'looks dry' })
+    await twice(`/api/v1/trees/${id}/evidence`, { coatNumber: 1, kind: 'touch', spot: 'outside', verdict: 'dry' })
     await twice(`/api/v1/trees/${id}/place`, { placeId: elsewhere.id })
     await twice(`/api/v1/trees/${id}/holds`, { reason: 'Crack at the cup' })
     await twice(`/api/v1/baths/${foundry.backupBathId}/stirs`, {})
     await twice('/api/v1/readings/typed', { sensorId: foundry.sensorId, airTempC: 20.5, relHumidityPct: 55 })
-    expect(await CoatLook.count()).toBe(1)
+    expect(await Evidence.count()).toBe(1)
     expect(await TreePlace.count({ where: { treeId: id } })).toBe(2)
     expect(await Hold.count({ where: { treeId: id } })).toBe(1)
     expect(await BathStir.count()).toBe(1)

@@ -119,7 +119,9 @@ export function queueTreeFixture({ state, placeIndex, likelyIn, safeIn, since, .
     pourDate: '2026-10-20',
     willMissPour: false,
     hold: null,
-    look: null,
+    word: null,
+    spots: ['outside'],
+    isPlanUncalibrated: false,
     warnings: [],
     ...overrides,
   }

@@ -45,7 +45,9 @@ export function buildQueueTree(overrides: Partial<QueueTree> = {}): QueueTree {
     pourDate: null,
     willMissPour: false,
     hold: null,
-    look: null,
+    word: null,
+    spots: ['outside'],
+    isPlanUncalibrated: false,
     warnings: [],
     ...overrides,
   }

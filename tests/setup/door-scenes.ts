@@ -103,9 +103,20 @@ export const SCENES: Record<string, (scene: Scene) => Promise<void>> = {
     await ask(operator, 'holdTree', { params, body: operation({ reason: '' }) })
     await ask(operator, 'holdTree', { params: { treeId: randomUUID() }, body: operation({ reason: 'Crack at the cup' }) })
   },
-  lookAtTree: async (scene) => {
+  addEvidence: async (scene) => {
     const { id } = await dippedTree(scene)
-    await scene.ask(scene.operator, 'lookAtTree', { params: { treeId: id }, body: operation({ verdict: 'looks dry' }) })
+    const body = operation({ coatNumber: 1, kind: 'touch', spot: 'outside', verdict: 'dry' })
+    await scene.ask(scene.operator, 'addEvidence', { params: { treeId: id }, body })
+    const weighing = operation({ coatNumber: 1, kind: 'weighing', moment: 'after stucco', massKg: 4.2 })
+    await scene.ask(scene.operator, 'addEvidence', { params: { treeId: id }, body: weighing })
+  },
+  withdrawEvidence: async (scene) => {
+    const { id } = await dippedTree(scene)
+    const body = operation({ coatNumber: 1, kind: 'touch', spot: 'outside', verdict: 'not yet' })
+    await scene.ask(scene.operator, 'addEvidence', { params: { treeId: id }, body })
+    const { Evidence } = await import('@/models')
+    const evidence = await Evidence.findOne({ where: { treeId: id }, rejectOnEmpty: true })
+    await scene.ask(scene.operator, 'withdrawEvidence', { params: { evidenceId: evidence.id }, body: operation() })
   },
   moveTree: async ({ ask, operator, factories, foundry }) => {
     const params = { treeId: (await factories.buildTree(foundry)).id }

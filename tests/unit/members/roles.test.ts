@@ -15,7 +15,7 @@ const WHO_MAY: Record<Act, Role[]> = {
   undo: FLOOR,
   hold: FLOOR,
   move: FLOOR,
-  look: FLOOR,
+  evidence: FLOOR,
   read: FLOOR,
   stir: FLOOR,
   trees: OFFICE,

@@ -134,7 +134,6 @@ export function buildDerived(context: FloorContext, spec: TreeSpec = {}): Derive
       versionId: 'v',
       name: 'Recipe',
       version: 1,
-      isCalibrated: true,
       coats: RECIPE.map((line, index) => ({
         number: index + 1,
         kind: line.kind,
@@ -148,6 +147,8 @@ export function buildDerived(context: FloorContext, spec: TreeSpec = {}): Derive
         longestWaitHours: 72,
         isPrewet: false,
         readAloud: '',
+        needSpread: 0.25,
+        isCalibrated: true,
       })),
     },
     coats: RECIPE.slice(0, coat).map((line, index) => ({
@@ -165,10 +166,16 @@ export function buildDerived(context: FloorContext, spec: TreeSpec = {}): Derive
       moistureTarget: 0.1,
       guard: 'likely' as const,
       longestWaitHours: 72,
+      needSpread: 0.25,
+      isCalibrated: true,
+      coveredAt: null,
+      moistureRatioAtRedip: null,
+      evidence: [],
     })),
     stays: [{ placeId, since: newestAt - 200 * HOUR }],
     hold: spec.hold ?? null,
-    look: null,
+    waxWeighings: [],
+    word: null,
     lookedOverAt: null,
   }
   return deriveTree(facts, context, WEEK)

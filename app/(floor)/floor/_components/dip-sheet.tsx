@@ -32,7 +32,7 @@ import type { Queue, QueueTree } from '@/lib/queue/contract'
 import { sectionOf } from '@/lib/trees/section'
 import { newOperationId } from '../_queries/operation-id'
 import { refusalWords } from '../_queries/request-json'
-import { postDips, postLook, postWatch, refusedTrees } from '../_queries/writes'
+import { postDips, postTouch, postWatch, refusedTrees } from '../_queries/writes'
 import { DipChoices, draftSummary, PlaceChooser } from './dip-choices'
 import { DipRefusals, type RefusalAnswer } from './dip-refusals'
 import { DipWarnings, warningsOf } from './dip-warnings'
@@ -284,10 +284,7 @@ export function DipSheet({ queue, draft, trees, now, memberName, onChange, onTre
                     size={64}
                     icon="hand"
                     onPress={() =>
-                      void sayForAll(
-                        (tree) => postLook(tree.id, 'looks dry'),
-                        `Noted: ${early.map((tree) => tree.tag).join(', ')} feels dry.`,
-                      )
+                      void sayForAll((tree) => postTouch(tree, 'dry'), `Noted: ${early.map((tree) => tree.tag).join(', ')} feels dry.`)
                     }
                   >
                     Feels dry: say so

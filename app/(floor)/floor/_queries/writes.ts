@@ -1,4 +1,6 @@
 import type { DipRefusal, DipRun } from '@/lib/coats/dip-contract'
+import type { Verdict } from '@/lib/coats/vocabulary'
+import type { QueueTree } from '@/lib/queue/contract'
 import { newOperationId } from './operation-id'
 import { postJson } from './request-json'
 import { areRefusals, isDipRunAnswer } from './shapes'
@@ -14,8 +16,13 @@ export const postStir = (bathId: string, operationId = newOperationId()) =>
 
 export const postWatch = (treeId: string) => postJson(`/api/v1/trees/${treeId}/watch`, { operationId: newOperationId() }, anyAnswer)
 
-export const postLook = (treeId: string, verdict: 'looks dry' | 'not yet') =>
-  postJson(`/api/v1/trees/${treeId}/looks`, { operationId: newOperationId(), verdict }, anyAnswer)
+/** How the newest coat feels at the spot that dries last. */
+export const postTouch = ({ id, coatsOn, spots }: QueueTree, verdict: Verdict) =>
+  postJson(
+    `/api/v1/trees/${id}/evidence`,
+    { operationId: newOperationId(), coatNumber: coatsOn, kind: 'touch', spot: spots.at(-1) ?? 'outside', verdict },
+    anyAnswer,
+  )
 
 export const postHold = (treeId: string, operationId: string, reason: string) =>
   postJson(`/api/v1/trees/${treeId}/holds`, { operationId, reason }, anyAnswer)

@@ -43,6 +43,7 @@ import { loadTreeForm } from '@/lib/queries/tree-form'
 import { requireMemberPage } from '@/lib/server/auth'
 import { readTag } from '@/lib/trees/read-tag'
 import { nextDipWords, treeVerdict } from '@/lib/trees/tree-verdict'
+import { saidWords } from '@/lib/trees/word'
 
 /** Said elsewhere on this page: in the verdict, the pour's line, the hold and the intake. */
 const SAID_ELSEWHERE = new Set(['still wet', 'held', 'pour at risk', 'intake open'])
@@ -73,7 +74,7 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
   const isCoatOpen = tree.newestCoat !== null && !hasLeft && tree.state !== 'ready for burnout'
   const openHold = holds.find((hold) => hold.liftedAt === null) ?? null
   const canDo = (act: Parameters<typeof may>[1]) => may(member.role, act)
-  const mayLook = isCoatOpen && canDo('look')
+  const mayLook = isCoatOpen && canDo('evidence')
   const mayWatch =
     canDo('subscribe') && (['wet', 'drying', 'nearly dry', 'unknown', 'last coat on'].includes(tree.state) || detail.isWatched) && !hasLeft
   // Without a reading nobody can tell: then no figure of the clock is shown as if it held.
@@ -82,7 +83,7 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
   const targetPct = Math.round((1 - tree.openTarget) * 100)
   const isLookedOver = lookOvers.some((look) => look.coatNumber === tree.newestCoat?.number)
   const isReleasable = tree.state === 'ready for burnout' || (tree.state === 'dried out' && isLookedOver)
-  const said = tree.look === null ? null : `${tree.look.by}, ${formatMoment(tree.look.at, now, timeZone)}: ${tree.look.verdict}.`
+  const said = tree.word === null ? null : `${saidWords(tree.word)}, ${formatMoment(tree.word.at, now, timeZone)}.`
   const isCoatDrying = tree.moistureRatio !== null && ['wet', 'drying', 'nearly dry', 'last coat on'].includes(tree.state)
   const isDue = ['dip now', 'waiting', 'overdue', 'wax ready'].includes(tree.state)
 
@@ -174,7 +175,13 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
           )}
           {mayLook && (
             <div className="verdict-look">
-              <LookKeys key={tree.newestCoat?.id} treeId={tree.id} said={said} />
+              <LookKeys
+                key={tree.newestCoat?.id}
+                treeId={tree.id}
+                coatNumber={tree.coatsOn}
+                spot={tree.spots.at(-1) ?? 'outside'}
+                said={said}
+              />
             </div>
           )}
         </div>
