@@ -4,8 +4,9 @@ import { openPlainHandle } from '@/db/plain-handle'
 import { allJobs } from '@/jobs/registry'
 import { logDips } from '@/lib/commands/log-dips'
 import { lookOver } from '@/lib/commands/look-over'
-import { recordLook } from '@/lib/commands/record-look'
+import { recordEvidence } from '@/lib/commands/record-evidence'
 import { releaseTrees } from '@/lib/commands/release-trees'
+import { newId } from '@/lib/core/ids'
 import type { Actor } from '@/lib/members/actor'
 import { loadQueue } from '@/lib/queries/queue'
 import { loadRoomPage } from '@/lib/queries/room'
@@ -62,7 +63,8 @@ beforeAll(async () => {
   formerTreeId = former.id
   for (const coatNumber of [1, 2, 3, 4]) {
     await dip(former.id, coatNumber, NOW - (9 - coatNumber) * DAY)
-    await recordLook(former.id, 'looks dry', { member, clock: { now: () => NOW - (9 - coatNumber) * DAY + 20 * HOUR } })
+    const felt = { operationId: newId(), coatNumber, kind: 'touch', spot: 'outside', verdict: 'dry' } as const
+    await recordEvidence(former.id, felt, { member, clock: { now: () => NOW - (9 - coatNumber) * DAY + 20 * HOUR } })
   }
   const released = { now: () => NOW - 3 * DAY }
   await lookOver(former.id, '', { member, clock: released })

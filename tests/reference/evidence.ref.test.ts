@@ -11,7 +11,7 @@ import {
 } from '@/lib/drying/evidence'
 import { moistureRatio } from '@/lib/drying/moisture'
 import { needBand } from '@/lib/drying/need'
-import { lnNormalCdf, normalPdf } from '@/lib/drying/normal'
+import { lnNormalCdf } from '@/lib/drying/normal'
 
 // Source of the whole file unless said otherwise: our own model, with constructed cases; the numbers were computed by closed forms, by a
 // numeric quadrature and by an independent implementation, which agree. Tolerance: half the last printed digit.
@@ -89,7 +89,8 @@ describe('felt dry, or not yet', () => {
     const variance = PRIOR.sd ** 2 + 0.15 ** 2
     const z = Math.log(dose / NEED) / Math.sqrt(variance)
     const side = verdict === 'dry' ? 1 : -1
-    const hazard = normalPdf(z) / Math.exp(lnNormalCdf(side * z))
+    const density = Math.exp(-0.5 * z * z) / Math.sqrt(2 * Math.PI)
+    const hazard = density / Math.exp(lnNormalCdf(side * z))
     const mean = (-side * PRIOR.sd ** 2 * hazard) / Math.sqrt(variance)
     const left = PRIOR.sd ** 2 - (PRIOR.sd ** 4 / variance) * hazard * (hazard + side * z)
     const posterior = thetaPosterior(PRIOR, [verdictAt(dose, verdict)])
