@@ -75,6 +75,7 @@ export const DOORS: readonly Door[] = [
   page('/room', 'crew'),
   door('POST', '/api/v1/drying/estimate', 'crew'),
   door('GET', '/api/v1/rooms/[sensorId]/climate.csv', 'crew', '/api/v1/rooms/1/climate.csv'),
+  door('POST', '/api/v1/rooms/[sensorId]/what-if', 'crew', '/api/v1/rooms/1/what-if'),
   // The API's description, how to use it, and the history of every change.
   door('GET', '/api/v1/openapi.json', 'anybody'),
   page('/api-guide', 'supervisor'),
