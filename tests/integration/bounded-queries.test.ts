@@ -2,18 +2,15 @@ import { beforeAll, describe, expect, it } from 'vitest'
 import { databaseFile } from '@/db/connection'
 import { openPlainHandle } from '@/db/plain-handle'
 import { allJobs } from '@/jobs/registry'
-import { logDips } from '@/lib/commands/log-dips'
-import { lookOver } from '@/lib/commands/look-over'
-import { recordEvidence } from '@/lib/commands/record-evidence'
-import { releaseTrees } from '@/lib/commands/release-trees'
-import { newId } from '@/lib/core/ids'
 import type { Actor } from '@/lib/members/actor'
 import { loadQueue } from '@/lib/queries/queue'
 import { loadRoomPage } from '@/lib/queries/room'
+import { loadRoomWhatIf } from '@/lib/queries/room-what-if'
 import { loadTreeDetail } from '@/lib/queries/tree-detail'
 import { database } from '@/models'
+import { buildFormerTree, dipOne } from '@/tests/factories/former-tree'
 import { addFormerReadings, addFormerTrees } from '@/tests/factories/long-history'
-import { buildAir, buildFoundry, buildMember, buildTree, dipBody, HOUR, MINUTE, NOW, type TestFoundry } from '@/tests/factories/shell-room'
+import { buildAir, buildFoundry, buildMember, buildTree, HOUR, MINUTE, NOW, type TestFoundry } from '@/tests/factories/shell-room'
 
 const DAY = 24 * HOUR
 
@@ -45,35 +42,16 @@ let member: Actor
 let tag: string
 let formerTreeId: string
 
-const dip = (treeId: string, coatNumber: number, dippedAt: number) =>
-  logDips(
-    dipBody(foundry, [{ treeId, coatNumber, reason: 'Dipped for the test.' }], {
-      dippedAt,
-      bathId: coatNumber === 1 ? foundry.faceBathId : foundry.backupBathId,
-      stucco: coatNumber === 1 ? 'fine' : coatNumber === 3 ? 'coarse' : coatNumber === 4 ? 'none' : 'medium',
-    }),
-    { member, clock: { now: () => dippedAt } },
-  )
-
 beforeAll(async () => {
   foundry = await buildFoundry()
   member = await buildMember('supervisor')
   await buildAir(foundry.sensorId, NOW - 15 * DAY, NOW)
-  const former = await buildTree(foundry, { since: NOW - 9 * DAY })
-  formerTreeId = former.id
-  for (const coatNumber of [1, 2, 3, 4]) {
-    await dip(former.id, coatNumber, NOW - (9 - coatNumber) * DAY)
-    const felt = { operationId: newId(), coatNumber, kind: 'touch', spot: 'outside', verdict: 'dry' } as const
-    await recordEvidence(former.id, felt, { member, clock: { now: () => NOW - (9 - coatNumber) * DAY + 20 * HOUR } })
-  }
-  const released = { now: () => NOW - 3 * DAY }
-  await lookOver(former.id, '', { member, clock: released })
-  await releaseTrees([former.id], { confirmations: {} }, { member, clock: released })
+  formerTreeId = await buildFormerTree(foundry, member, NOW)
   for (let index = 0; index < 6; index += 1) {
     const tree = await buildTree(foundry, { since: NOW - 9 * DAY })
     tag = tree.tag
-    if (index > 0) await dip(tree.id, 1, NOW - 2 * DAY - index * MINUTE)
-    if (index > 2) await dip(tree.id, 2, NOW - index * HOUR)
+    if (index > 0) await dipOne(foundry, member, { treeId: tree.id, coatNumber: 1, at: NOW - 2 * DAY - index * MINUTE })
+    if (index > 2) await dipOne(foundry, member, { treeId: tree.id, coatNumber: 2, at: NOW - index * HOUR })
   }
 }, 60_000)
 
@@ -83,7 +61,9 @@ const WORK: Record<string, () => Promise<unknown>> = {
     globalThis.kilnwardQueueCache = undefined
     return loadQueue({ clock })
   },
-  'the room page': () => loadRoomPage({ sensorId: foundry.sensorId, tempUnit: 'degC', clock }),
+  'the room page': () => loadRoomPage({ sensorId: foundry.sensorId, range: '48h', tempUnit: 'degC', clock }),
+  'the room page over a fortnight': () => loadRoomPage({ sensorId: foundry.sensorId, range: '14d', tempUnit: 'degC', clock }),
+  'what another air would do': () => loadRoomWhatIf(foundry.sensorId, { until: 'opening', relHumidityPct: 45 }, { clock }),
   'the page of a tree': () => loadTreeDetail({ tag, viewer: member, clock }),
   "the worker's pass": async () => {
     globalThis.kilnwardQueueCache = undefined
