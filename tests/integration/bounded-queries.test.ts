@@ -53,7 +53,7 @@ beforeAll(async () => {
     if (index > 0) await dipOne(foundry, member, { treeId: tree.id, coatNumber: 1, at: NOW - 2 * DAY - index * MINUTE })
     if (index > 2) await dipOne(foundry, member, { treeId: tree.id, coatNumber: 2, at: NOW - index * HOUR })
   }
-}, 60_000)
+}, 180_000)
 
 /** What a tablet, a page or the worker asks for again and again. */
 const WORK: Record<string, () => Promise<unknown>> = {
@@ -75,11 +75,15 @@ const WORK: Record<string, () => Promise<unknown>> = {
 /** The SQL that some work sends, its values in place. */
 async function statementsOf(work: () => Promise<unknown>): Promise<string[]> {
   const statements = new Set<string>()
-  database.options.logging = (line) => statements.add(line.replace(/^Executing \([^)]*\): /, ''))
+  const log = (line: unknown) => statements.add(String(line).replace(/^Executing \([^)]*\): /, ''))
+  // Sequelize's types do not tell of it, but it is where each query looks.
+  const options: unknown = Reflect.get(database, 'options')
+  if (typeof options !== 'object' || options === null) throw new Error('Sequelize keeps its options elsewhere now.')
+  Reflect.set(options, 'logging', log)
   try {
     await work()
   } finally {
-    database.options.logging = false
+    Reflect.set(options, 'logging', false)
   }
   return [...statements].filter((sql) => /^\s*(select|with|update|delete|insert)/i.test(sql))
 }
@@ -100,6 +104,8 @@ async function growingSteps(sql: string, tables: ReadonlySet<string>): Promise<s
   const plan = (await handle.all(`EXPLAIN QUERY PLAN ${sql.replaceAll(/\$\d+/g, '?')}`)) as { detail: string }[]
   await handle.close()
   const names = namesIn(sql)
+  // The first or the last of a sensor is one step into the index.
+  const isFirstOrLast = /^\s*select (?:min|max)\((?:measured_at|hour_start)\)(?: as \w+)? from \w+ where sensor_id = \d+$/i.test(sql)
   return plan
     .map(({ detail }) => detail)
     .filter((detail) => {
@@ -107,7 +113,7 @@ async function growingSteps(sql: string, tables: ReadonlySet<string>): Promise<s
       const table = names.get(name) ?? name
       if (!way || !tables.has(table) || READ_WHOLE.has(table)) return false
       if (way === 'SCAN') return !SMALL_INDEXES.has(index ?? '')
-      return ['readings', 'dose_hours'].includes(table) && !/measured_at|hour_start/.test(detail)
+      return ['readings', 'dose_hours'].includes(table) && !isFirstOrLast && !/measured_at|hour_start/.test(detail)
     })
 }
 
@@ -167,5 +173,5 @@ describe('what is asked for again and again', () => {
     expect(coats).toMatchObject({ count: 4 * 201 + 8 })
     const grown = [...after].filter(([shape, rows]) => rows > (before.get(shape) ?? 0))
     expect(grown).toEqual([])
-  })
+  }, 120_000)
 })
