@@ -3,12 +3,12 @@ import { QueryTypes } from 'sequelize'
 import { hourStartOf } from '@/lib/drying/dose-hours'
 import { loadClimateSpans } from '@/lib/queries/climate-spans'
 import type { RoomClimate } from '@/lib/room/climate'
-import { addBandHours, bandOfThisHour, type Band, type BandHours } from '@/lib/room/out-of-band'
+import { addBandHours, bandByReadings, type Band, type BandHours } from '@/lib/room/out-of-band'
 import { database } from '@/models'
 
 /**
  * How long a room was outside the foundry's band, and unread, from some instants up to now; null where nothing of that time has been
- * read yet. Counts from the room's first reading on, whole hours by the hourly table and this hour by its readings.
+ * read yet. Counts from the room's first reading on, whole hours by the hourly table and the newest by their readings.
  */
 export async function loadBandHours(
   climate: RoomClimate,
@@ -17,18 +17,22 @@ export async function loadBandHours(
 ): Promise<(BandHours | null)[]> {
   const first = await firstHourOf(climate.sensorId)
   if (first === null) return froms.map(() => null)
-  const spans = froms.map((from) => ({ from: Math.max(hourStartOf(from), first), to: hourStartOf(now) }))
-  const rows = await loadClimateSpans(climate.sensorId, spans, band)
-  const present = bandOfThisHour(climate.exact, band, now)
-  return rows.map((row): BandHours => {
-    const elapsedMs = Math.max(0, row.to - row.from)
+  // How long the newest reading holds stands in no row yet.
+  const tailFrom = hourStartOf(climate.newest?.measuredAt ?? now)
+  const starts = froms.map((from) => Math.max(hourStartOf(from), first))
+  const rows = await loadClimateSpans(
+    climate.sensorId,
+    starts.map((from) => ({ from, to: Math.max(from, tailFrom) })),
+    band,
+  )
+  return rows.map(({ from, to, coveredMinutes, gapMinutes, outOfTempMinutes, outOfRhMinutes }): BandHours => {
     const whole = {
-      elapsedMs,
-      outOfTempMs: row.outOfTempMinutes * millisecondsInMinute,
-      outOfRhMs: row.outOfRhMinutes * millisecondsInMinute,
-      unreadMs: Math.max(0, elapsedMs - (row.coveredMinutes - row.gapMinutes) * millisecondsInMinute),
+      elapsedMs: to - from,
+      outOfTempMs: outOfTempMinutes * millisecondsInMinute,
+      outOfRhMs: outOfRhMinutes * millisecondsInMinute,
+      unreadMs: Math.max(0, to - from - (coveredMinutes - gapMinutes) * millisecondsInMinute),
     }
-    return addBandHours(whole, present)
+    return addBandHours(whole, bandByReadings(climate.exact, band, { from: to, to: now }))
   })
 }
 

@@ -1,4 +1,3 @@
-import { hourStartOf } from '@/lib/drying/dose-hours'
 import { holdsUntil, LONGEST_INTERVAL_MS } from '@/lib/drying/room-segments'
 import type { Air, RoomReading } from '@/lib/drying/types'
 
@@ -12,24 +11,24 @@ const isOutOfTemp = ({ airTempC }: Air, band: Band): boolean => airTempC < band.
 const isOutOfRh = ({ relHumidityPct }: Air, band: Band): boolean => relHumidityPct < band.lowRhPct || relHumidityPct > band.highRhPct
 
 /**
- * The hour that is not over, by its readings: each speaks until the next one, or for as long as it holds.
+ * The newest hours, of which the hourly table does not tell all yet, by their readings: each speaks until the next one, or for as long
+ * as it holds.
  *
- * @param readings in order, with the nearest one before the hour.
+ * @param readings in order, with the nearest one before `from`.
  */
-export function bandOfThisHour(readings: readonly RoomReading[], band: Band, now: number): BandHours {
-  const from = hourStartOf(now)
-  const past = readings.filter((reading) => reading.measuredAt <= now)
+export function bandByReadings(readings: readonly RoomReading[], band: Band, { from, to }: { from: number; to: number }): BandHours {
+  const past = readings.filter((reading) => reading.measuredAt <= to)
   let readMs = 0
   let outOfTempMs = 0
   let outOfRhMs = 0
   for (const [index, reading] of past.entries()) {
     const start = Math.max(from, reading.measuredAt)
-    const ms = Math.max(0, Math.min(now, speaksUntil(reading, past[index + 1])) - start)
+    const ms = Math.max(0, Math.min(to, speaksUntil(reading, past[index + 1])) - start)
     readMs += ms
     if (isOutOfTemp(reading, band)) outOfTempMs += ms
     if (isOutOfRh(reading, band)) outOfRhMs += ms
   }
-  return { elapsedMs: now - from, outOfTempMs, outOfRhMs, unreadMs: now - from - readMs }
+  return { elapsedMs: to - from, outOfTempMs, outOfRhMs, unreadMs: to - from - readMs }
 }
 
 function speaksUntil(reading: RoomReading, next: RoomReading | undefined): number {
@@ -39,7 +38,7 @@ function speaksUntil(reading: RoomReading, next: RoomReading | undefined): numbe
   return next.measuredAt - reading.measuredAt > LONGEST_INTERVAL_MS ? reading.measuredAt : next.measuredAt
 }
 
-/** Whole hours and this one together. */
+/** Two stretches of time together. */
 export const addBandHours = (one: BandHours, other: BandHours): BandHours => ({
   elapsedMs: one.elapsedMs + other.elapsedMs,
   outOfTempMs: one.outOfTempMs + other.outOfTempMs,

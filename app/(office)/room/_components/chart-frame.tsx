@@ -84,8 +84,11 @@ export function TimeFoot({ frame }: { frame: Frame }) {
   )
 }
 
-function ticksOf({ range, from, to, timeZone }: Frame): (RangeTick & { day?: string })[] {
-  if (range !== '48h') return rangeTicks(range, { from, to }, timeZone)
+function ticksOf(frame: Frame): (RangeTick & { day?: string })[] {
+  const { range, from, to, timeZone } = frame
+  // A first midnight at the very edge would stand in the words of the second.
+  if (range === '14d') return rangeTicks(range, { from, to }, timeZone).filter(({ at }) => shareOf(frame, at) > 0.03)
+  if (range === '1y') return rangeTicks(range, { from, to }, timeZone)
   return hourTicks(from, to, timeZone, 8).map((at) => {
     const clock = formatClock(at, timeZone)
     if (clock !== '00:00') return { at, words: clock, isMajor: clock === '12:00' }

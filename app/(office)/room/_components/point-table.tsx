@@ -18,7 +18,10 @@ export function PointTable({
   timeZone: string
   tempUnit: TempUnit
 }) {
-  if (points.length === 0) return <p className="text-soot">Nothing has been read yet.</p>
+  // Days from before anybody read this room say nothing.
+  const first = points.findIndex((point) => point.readMinutes !== 0)
+  const read = first === -1 ? [] : points.slice(first)
+  if (read.length === 0) return <p className="text-soot">Nothing has been read yet.</p>
   return (
     <div className="point-table">
       <table className="table">
@@ -35,14 +38,15 @@ export function PointTable({
           </tr>
         </thead>
         <tbody>
-          {points.map((point) => (
+          {read.map((point) => (
             <tr key={`${point.kind}${point.at}`}>
               <th scope="row" className="whitespace-nowrap">
                 {point.kind === 'day' ? formatDateOfYear(point.at, timeZone) : formatMoment(point.at, now, timeZone)}
               </th>
               <td className="whitespace-nowrap">
                 {KIND_WORDS[point.kind]}
-                {point.readMinutes !== null && `, ${formatDuration(point.readMinutes * 60_000)} read`}
+                {point.readMinutes !== null &&
+                  (point.readMinutes === 0 ? ', not read' : `, ${formatDuration(point.readMinutes * 60_000)} read`)}
                 {point.isTyped && ', typed'}
                 {point.isGap && ', readings missing'}
               </td>

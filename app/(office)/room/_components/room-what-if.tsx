@@ -9,7 +9,7 @@ import { useResting } from '@/app/(office)/room/_components/use-resting'
 import { WhatIfTable } from '@/app/(office)/room/_components/what-if-table'
 import { TIMES_NOT_CALIBRATED } from '@/lib/format/time-pair'
 import { formatMoment } from '@/lib/format/local-time'
-import { UNIT_SIGNS, oneDecimal, wholeNumber, type TempUnit } from '@/lib/format/units'
+import { UNIT_SIGNS, formatTemperature, oneDecimal, wholeNumber, type TempUnit } from '@/lib/format/units'
 import { AIR_DIAL, dialledTemp, HUMIDITY_DIAL, shownTemp, tempDial } from '@/lib/room/coat-what-if'
 import { roomWhatIfAnswer, type RoomWhatIf as Choice, type RoomWhatIfAnswer } from '@/lib/room/room-what-if-contract'
 import { harmWords, isTurned, proposalWords } from '@/lib/room/room-what-if-words'
@@ -54,7 +54,6 @@ export function RoomWhatIf({ sensorId, air, places, closesAt, opensAt, now, time
   })
   const set = (change: Partial<Choice>) => setChoice((before) => ({ ...before, ...change }))
   const isAsItComes = !isTurned(choice)
-  const words = (shown: string, isTurnedDial: boolean) => (isTurnedDial ? shown : `${shown} now`)
   const dialled = shownTemp(choice.airTempC ?? air.airTempC, tempUnit)
   const fans = places.filter((place) => place.hasFansToLeaveOn)
   const speeds = places.map((place) => `${place.name} ${oneDecimal(place.airSpeedMps)}`).join(', ')
@@ -77,14 +76,18 @@ export function RoomWhatIf({ sensorId, air, places, closesAt, opensAt, now, time
           name="Temperature"
           dial={tempDial(tempUnit)}
           value={dialled}
-          words={words(`${oneDecimal(dialled)} ${UNIT_SIGNS[tempUnit]}`, choice.airTempC !== undefined)}
+          words={
+            choice.airTempC === undefined
+              ? `${formatTemperature(air.airTempC, tempUnit)} now`
+              : `${oneDecimal(dialled)} ${UNIT_SIGNS[tempUnit]}`
+          }
           onChange={(shown) => set({ airTempC: dialledTemp(shown, tempUnit) })}
         />
         <DialKeys
           name="Humidity"
           dial={HUMIDITY_DIAL}
           value={choice.relHumidityPct ?? air.relHumidityPct}
-          words={words(`${wholeNumber(choice.relHumidityPct ?? air.relHumidityPct)} % RH`, choice.relHumidityPct !== undefined)}
+          words={`${wholeNumber(choice.relHumidityPct ?? air.relHumidityPct)} % RH${choice.relHumidityPct === undefined ? ' now' : ''}`}
           onChange={(relHumidityPct) => set({ relHumidityPct })}
         />
         <DialKeys
