@@ -8,6 +8,7 @@ import { Delivery } from '@/models/delivery'
 import { DoseHour } from '@/models/dose-hour'
 import { Evidence } from '@/models/evidence'
 import { FanHours } from '@/models/fan-hours'
+import { FanSwitch } from '@/models/fan-switch'
 import { Foundry } from '@/models/foundry'
 import { FormerAir } from '@/models/former-air'
 import { FoundryEvent } from '@/models/foundry-event'
@@ -43,6 +44,7 @@ import { TreeEvent } from '@/models/tree-event'
 import { TreePiece } from '@/models/tree-piece'
 import { TreePlace } from '@/models/tree-place'
 import { TreeWatch } from '@/models/tree-watch'
+import { Upload } from '@/models/upload'
 import { Work } from '@/models/work'
 
 // Each names itself: a production build shortens class names, and of two models with one name the later replaces the earlier.
@@ -63,6 +65,7 @@ const models = [
   DoseHour,
   Place,
   FanHours,
+  FanSwitch,
   FormerAir,
   Bath,
   BathStir,
@@ -93,6 +96,7 @@ const models = [
   MqttTopic,
   MqttMessage,
   MqttHour,
+  Upload,
 ]
 for (const model of models) model.initialize(database)
 
@@ -156,6 +160,8 @@ Notice.hasMany(Delivery, { as: 'deliveries', foreignKey: 'noticeId' })
 Delivery.belongsTo(Notice, { as: 'notice', foreignKey: 'noticeId' })
 PushSubscription.belongsTo(Member, { as: 'member', foreignKey: 'memberId' })
 MqttTopic.belongsTo(Sensor, { as: 'sensor', foreignKey: 'sensorId' })
+Upload.belongsTo(Sensor, { as: 'sensor', foreignKey: 'sensorId' })
+Upload.belongsTo(Member, { as: 'author', foreignKey: 'createdBy' })
 Member.hasMany(PushSubscription, { as: 'pushSubscriptions', foreignKey: 'memberId' })
 
 export {
@@ -176,6 +182,7 @@ export {
   DoseHour,
   Place,
   FanHours,
+  FanSwitch,
   FormerAir,
   Bath,
   BathStir,
@@ -206,4 +213,5 @@ export {
   MqttTopic,
   MqttMessage,
   MqttHour,
+  Upload,
 }

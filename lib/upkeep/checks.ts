@@ -7,6 +7,9 @@ import { formatMoment } from '@/lib/format/local-time'
 import { connectionWords, type ConnectionState } from '@/lib/mqtt/connection-words'
 import { formatPercent } from '@/lib/format/units'
 import { isBatteryLow } from '@/lib/room/sensor-warnings'
+import { formatPercent } from '@/lib/format/units'
+import { isBatteryLow } from '@/lib/room/sensor-warnings'
+import { connectionWords, type ConnectionState } from '@/lib/mqtt/connection-words'
 
 /** What was measured, for the page of upkeep. Instants in epoch milliseconds, sizes in bytes. */
 export type UpkeepFacts = {
@@ -24,6 +27,9 @@ export type UpkeepFacts = {
   /** The broker of loggers, counts of the last day; null where none is switched on. */
   mqtt: (ConnectionState & { readings: number; refused: number; dropped: number }) | null
   sensors: readonly { name: string; source: ReadingSource; newestAt: number | null; batteryPct: number | null }[]
+  sensors: readonly { name: string; source: ReadingSource; newestAt: number | null; batteryPct: number | null }[]
+  /** The broker of loggers, counts of the last day; null where none is switched on. */
+  mqtt: (ConnectionState & { readings: number; refused: number; dropped: number }) | null
   records: { sizeBytes: number; walBytes: number }
   disks: readonly { of: 'records' | 'backups'; freeBytes: number }[]
   pushes: {

@@ -45,6 +45,9 @@ export const DOORS: readonly Door[] = [
   // The broker of loggers.
   page('/settings/mqtt', 'supervisor'),
   page('/settings/sensors/[sensorId]', 'supervisor', '/settings/sensors/1'),
+  page('/settings/sensors/[sensorId]', 'supervisor', '/settings/sensors/1'),
+  // The broker of loggers.
+  page('/settings/mqtt', 'supervisor'),
   // People and one's own page.
   page('/people', 'owner'),
   page('/people/[memberId]', 'owner'),
@@ -65,6 +68,7 @@ export const DOORS: readonly Door[] = [
   door('POST', '/api/v1/evidence/[evidenceId]/withdrawal', 'operator'),
   door('POST', '/api/v1/trees/[treeId]/place', 'operator'),
   door('POST', '/api/v1/baths/[bathId]/stirs', 'operator'),
+  door('POST', '/api/v1/places/[placeId]/fans', 'operator'),
   door('GET', '/api/v1/push/subscriptions', 'crew'),
   door('POST', '/api/v1/push/subscriptions', 'crew'),
   door('DELETE', '/api/v1/push/subscriptions', 'crew'),
@@ -78,6 +82,13 @@ export const DOORS: readonly Door[] = [
   page('/room', 'crew'),
   door('POST', '/api/v1/drying/estimate', 'crew'),
   door('GET', '/api/v1/rooms/[sensorId]/climate.csv', 'crew', '/api/v1/rooms/1/climate.csv'),
+  // Files of readings.
+  page('/room/upload', 'supervisor'),
+  page('/room/upload/[uploadId]', 'supervisor'),
+  door('POST', '/api/v1/uploads', 'supervisor'),
+  door('GET', '/api/v1/uploads/[uploadId]', 'supervisor'),
+  door('GET', '/api/v1/uploads/[uploadId]/preview', 'supervisor'),
+  door('GET', '/api/v1/uploads/[uploadId]/errors.csv', 'supervisor'),
   // The API's description, how to use it, and the history of every change.
   door('GET', '/api/v1/openapi.json', 'anybody'),
   page('/api-guide', 'supervisor'),
@@ -132,6 +143,10 @@ export const ACTIONS: readonly ActionRow[] = [
   { file: 'app/(office)/settings/sensors/actions.ts', name: 'reuseSensorAction', act: 'sensors', who: 'supervisor' },
   { file: 'app/(office)/settings/sensors/actions.ts', name: 'issueTokenAction', act: 'sensors', who: 'supervisor' },
   { file: 'app/(office)/settings/sensors/actions.ts', name: 'revokeTokenAction', act: 'sensors', who: 'supervisor' },
+  // Offsets and devices of a sensor.
+  { file: 'app/(office)/settings/sensors/actions.ts', name: 'saveOffsetAction', act: 'sensors', who: 'supervisor' },
+  { file: 'app/(office)/settings/sensors/actions.ts', name: 'removeOffsetAction', act: 'sensors', who: 'supervisor' },
+  { file: 'app/(office)/settings/sensors/actions.ts', name: 'replaceDeviceAction', act: 'sensors', who: 'supervisor' },
   // The broker of loggers.
   { file: 'app/(office)/settings/mqtt/actions.ts', name: 'saveBrokerAction', act: 'settings', who: 'owner' },
   { file: 'app/(office)/settings/mqtt/actions.ts', name: 'addTopicAction', act: 'sensors', who: 'supervisor' },
@@ -161,4 +176,7 @@ export const ACTIONS: readonly ActionRow[] = [
   { file: 'app/(office)/upkeep/demo-actions.ts', name: 'removeDemoAction', act: 'upkeep', who: 'owner' },
   // The room and its drying.
   { file: 'app/(office)/room/actions.ts', name: 'typedReadingAction', act: 'read', who: 'operator' },
+  // Files of readings.
+  { file: 'app/(office)/room/upload/actions.ts', name: 'importUploadAction', act: 'sensors', who: 'supervisor' },
+  { file: 'app/(office)/room/upload/actions.ts', name: 'cancelUploadAction', act: 'sensors', who: 'supervisor' },
 ]

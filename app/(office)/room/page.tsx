@@ -8,6 +8,7 @@ import { AirFolds } from '@/app/(office)/room/_components/air-folds'
 import type { Frame } from '@/app/(office)/room/_components/chart-frame'
 import { DriedFold } from '@/app/(office)/room/_components/dried-coats'
 import { EffectTable } from '@/app/(office)/room/_components/effect-table'
+import { FansNow } from '@/app/(office)/room/_components/fans-now'
 import { Fold } from '@/app/(office)/room/_components/fold'
 import { PointTable } from '@/app/(office)/room/_components/point-table'
 import { ReadingForm } from '@/app/(office)/room/_components/reading-form'
@@ -86,6 +87,8 @@ export default async function RoomPageView({ searchParams }: PageProps<'/room'>)
           )}
         </p>
       </div>
+
+      {page.placesNow.length > 0 && <FansNow places={page.placesNow} maySwitch={may(member.role, 'fans')} now={now} timeZone={timeZone} />}
 
       <section className="plate">
         <header>
@@ -170,6 +173,11 @@ export default async function RoomPageView({ searchParams }: PageProps<'/room'>)
         {page.points.length > 0 && <AirFolds page={page} room={room} frame={frame} tempUnit={tempUnit} />}
         <Fold title="Sensors" line={<SensorsLine rooms={page.rooms} now={now} timeZone={timeZone} />}>
           <SensorList rooms={page.rooms} notes={page.notes} now={now} timeZone={timeZone} tempUnit={tempUnit} />
+          {may(member.role, 'sensors') && (
+            <p className="fold-key">
+              <KeyLink href={`/room/upload?sensor=${room.sensorId}`}>Readings from a file</KeyLink>
+            </p>
+          )}
           {may(member.role, 'read') && (
             <>
               <h3 className="fold-title">Type a reading</h3>

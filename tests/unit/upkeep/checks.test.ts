@@ -86,6 +86,13 @@ describe('upkeep', () => {
       { sensors: [{ name: 'Shell room', source: 'sensor', newestAt: NOW, batteryPct: 15 }] },
       /Shell room: battery 15.%\./,
     ],
+    [
+      'mqtt',
+      'a broker that is away for long',
+      { mqtt: { ...inOrder.mqtt!, connectedSince: null, awaySince: NOW - 6 * MINUTE, trouble: 'No broker answers.' } },
+      /Not connected since 09:54\. No broker answers\./,
+    ],
+    ['mqtt', 'a topic that the broker keeps to itself', { mqtt: { ...inOrder.mqtt!, trouble: 'Not shop/#.' } }, /Not shop/],
     ['disk', 'under 1 GB', { disks: [{ of: 'backups', freeBytes: 999_000_000 }] }, /999.MB free for the backups/],
     ['records', 'a log that only grows', { records: { sizeBytes: 1e9, walBytes: 400e6 } }, /400.MB/],
     ['backups', 'a late backup', { backups: { ...inOrder.backups, newest: { at: NOW - 4 * HOUR, sizeBytes: 1 } } }, /06:00/],
