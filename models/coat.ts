@@ -8,9 +8,9 @@ import {
   type Sequelize,
 } from 'sequelize'
 import type { CoatKind, CoatingWay, Guard, Stucco } from '@/lib/coats/vocabulary'
-import { json } from '@/models/columns'
+import { flag, json } from '@/models/columns'
 import type { Bath } from '@/models/bath'
-import type { CoatLook } from '@/models/coat-look'
+import type { Evidence } from '@/models/evidence'
 import type { Member } from '@/models/member'
 import type { Operation } from '@/models/operation'
 import type { Place } from '@/models/place'
@@ -41,6 +41,9 @@ export class Coat extends Model<InferAttributes<Coat>, InferCreationAttributes<C
   declare moistureTarget: CreationOptional<number>
   declare guard: CreationOptional<Guard>
   declare longestWaitHours: CreationOptional<number>
+  declare needSpread: CreationOptional<number>
+  declare isCalibrated: CreationOptional<boolean>
+  declare recipeReferenceHours: CreationOptional<number | null>
   declare forecastP10At: CreationOptional<number | null>
   declare forecastP50At: CreationOptional<number | null>
   declare forecastP90At: CreationOptional<number | null>
@@ -48,6 +51,11 @@ export class Coat extends Model<InferAttributes<Coat>, InferCreationAttributes<C
   declare meanRelHumidityPct: CreationOptional<number | null>
   declare worstRelHumidityPct: CreationOptional<number | null>
   declare moistureRatioAtRedip: CreationOptional<number | null>
+  declare outcomeTheta: CreationOptional<number | null>
+  declare outcomeSd: CreationOptional<number | null>
+  declare outcomeDryAt: CreationOptional<number | null>
+  declare outcomeGapShare: CreationOptional<number | null>
+  declare airChangedAt: CreationOptional<number | null>
   declare withdrawnAt: CreationOptional<number | null>
   declare withdrawnBy: CreationOptional<string | null>
   declare withdrawnReason: CreationOptional<string | null>
@@ -57,7 +65,7 @@ export class Coat extends Model<InferAttributes<Coat>, InferCreationAttributes<C
   declare place?: NonAttribute<Place>
   declare author?: NonAttribute<Member>
   declare operation?: NonAttribute<Operation>
-  declare looks?: NonAttribute<CoatLook[]>
+  declare evidence?: NonAttribute<Evidence[]>
 
   static initialize(sequelize: Sequelize): typeof Coat {
     return Coat.init(
@@ -85,6 +93,9 @@ export class Coat extends Model<InferAttributes<Coat>, InferCreationAttributes<C
         moistureTarget: { type: DataTypes.DOUBLE, allowNull: false, defaultValue: 0.1 },
         guard: { type: DataTypes.TEXT, allowNull: false, defaultValue: 'safe' },
         longestWaitHours: { type: DataTypes.DOUBLE, allowNull: false, defaultValue: 72 },
+        needSpread: { type: DataTypes.DOUBLE, allowNull: false, defaultValue: 0.25 },
+        isCalibrated: { ...flag('isCalibrated'), defaultValue: false },
+        recipeReferenceHours: { type: DataTypes.DOUBLE },
         forecastP10At: { type: DataTypes.INTEGER },
         forecastP50At: { type: DataTypes.INTEGER },
         forecastP90At: { type: DataTypes.INTEGER },
@@ -92,6 +103,11 @@ export class Coat extends Model<InferAttributes<Coat>, InferCreationAttributes<C
         meanRelHumidityPct: { type: DataTypes.DOUBLE },
         worstRelHumidityPct: { type: DataTypes.DOUBLE },
         moistureRatioAtRedip: { type: DataTypes.DOUBLE },
+        outcomeTheta: { type: DataTypes.DOUBLE },
+        outcomeSd: { type: DataTypes.DOUBLE },
+        outcomeDryAt: { type: DataTypes.INTEGER },
+        outcomeGapShare: { type: DataTypes.DOUBLE },
+        airChangedAt: { type: DataTypes.INTEGER },
         withdrawnAt: { type: DataTypes.INTEGER },
         withdrawnBy: { type: DataTypes.TEXT },
         withdrawnReason: { type: DataTypes.TEXT },

@@ -4,10 +4,11 @@ import { Bath } from '@/models/bath'
 import { BathStir } from '@/models/bath-stir'
 import { Closure } from '@/models/closure'
 import { Coat } from '@/models/coat'
-import { CoatLook } from '@/models/coat-look'
 import { Delivery } from '@/models/delivery'
 import { DoseHour } from '@/models/dose-hour'
+import { Evidence } from '@/models/evidence'
 import { FanHours } from '@/models/fan-hours'
+import { FanSwitch } from '@/models/fan-switch'
 import { Foundry } from '@/models/foundry'
 import { FormerAir } from '@/models/former-air'
 import { FoundryEvent } from '@/models/foundry-event'
@@ -15,6 +16,10 @@ import { Hold } from '@/models/hold'
 import { JobRun } from '@/models/job-run'
 import { LookOver } from '@/models/look-over'
 import { Member } from '@/models/member'
+import { MqttBroker } from '@/models/mqtt-broker'
+import { MqttHour } from '@/models/mqtt-hour'
+import { MqttMessage } from '@/models/mqtt-message'
+import { MqttTopic } from '@/models/mqtt-topic'
 import { Notice } from '@/models/notice'
 import { Operation } from '@/models/operation'
 import { Piece } from '@/models/piece'
@@ -27,8 +32,11 @@ import { RecipeVersion } from '@/models/recipe-version'
 import { Release } from '@/models/release'
 import { Section } from '@/models/section'
 import { Sensor } from '@/models/sensor'
+import { SensorDevice } from '@/models/sensor-device'
+import { SensorOffset } from '@/models/sensor-offset'
 import { SensorToken } from '@/models/sensor-token'
 import { Session } from '@/models/session'
+import { SetAsideReading } from '@/models/set-aside-reading'
 import { ShiftHours } from '@/models/shift-hours'
 import { SignInWait } from '@/models/sign-in-wait'
 import { Tree } from '@/models/tree'
@@ -36,6 +44,7 @@ import { TreeEvent } from '@/models/tree-event'
 import { TreePiece } from '@/models/tree-piece'
 import { TreePlace } from '@/models/tree-place'
 import { TreeWatch } from '@/models/tree-watch'
+import { Upload } from '@/models/upload'
 import { Work } from '@/models/work'
 
 // Each names itself: a production build shortens class names, and of two models with one name the later replaces the earlier.
@@ -49,10 +58,14 @@ const models = [
   SignInWait,
   Sensor,
   SensorToken,
+  SensorDevice,
+  SensorOffset,
   Reading,
+  SetAsideReading,
   DoseHour,
   Place,
   FanHours,
+  FanSwitch,
   FormerAir,
   Bath,
   BathStir,
@@ -67,7 +80,7 @@ const models = [
   TreePlace,
   Operation,
   Coat,
-  CoatLook,
+  Evidence,
   Hold,
   LookOver,
   Release,
@@ -79,6 +92,11 @@ const models = [
   JobRun,
   FoundryEvent,
   Backup,
+  MqttBroker,
+  MqttTopic,
+  MqttMessage,
+  MqttHour,
+  Upload,
 ]
 for (const model of models) model.initialize(database)
 
@@ -120,9 +138,10 @@ Coat.belongsTo(Place, { as: 'place', foreignKey: 'placeId' })
 Coat.belongsTo(Member, { as: 'author', foreignKey: 'loggedBy' })
 Coat.belongsTo(Operation, { as: 'operation', foreignKey: 'operationId' })
 Operation.hasMany(Coat, { as: 'coats', foreignKey: 'operationId' })
-Coat.hasMany(CoatLook, { as: 'looks', foreignKey: 'coatId' })
-CoatLook.belongsTo(Coat, { as: 'coat', foreignKey: 'coatId' })
-CoatLook.belongsTo(Member, { as: 'member', foreignKey: 'memberId' })
+Coat.hasMany(Evidence, { as: 'evidence', foreignKey: 'coatId' })
+Evidence.belongsTo(Coat, { as: 'coat', foreignKey: 'coatId' })
+Evidence.belongsTo(Tree, { as: 'tree', foreignKey: 'treeId' })
+Evidence.belongsTo(Member, { as: 'member', foreignKey: 'memberId' })
 Hold.belongsTo(Tree, { as: 'tree', foreignKey: 'treeId' })
 Hold.belongsTo(Member, { as: 'holder', foreignKey: 'heldBy' })
 Hold.belongsTo(Member, { as: 'lifter', foreignKey: 'liftedBy' })
@@ -140,6 +159,9 @@ Notice.belongsTo(Tree, { as: 'tree', foreignKey: 'treeId' })
 Notice.hasMany(Delivery, { as: 'deliveries', foreignKey: 'noticeId' })
 Delivery.belongsTo(Notice, { as: 'notice', foreignKey: 'noticeId' })
 PushSubscription.belongsTo(Member, { as: 'member', foreignKey: 'memberId' })
+MqttTopic.belongsTo(Sensor, { as: 'sensor', foreignKey: 'sensorId' })
+Upload.belongsTo(Sensor, { as: 'sensor', foreignKey: 'sensorId' })
+Upload.belongsTo(Member, { as: 'author', foreignKey: 'createdBy' })
 Member.hasMany(PushSubscription, { as: 'pushSubscriptions', foreignKey: 'memberId' })
 
 export {
@@ -153,10 +175,14 @@ export {
   SignInWait,
   Sensor,
   SensorToken,
+  SensorDevice,
+  SensorOffset,
   Reading,
+  SetAsideReading,
   DoseHour,
   Place,
   FanHours,
+  FanSwitch,
   FormerAir,
   Bath,
   BathStir,
@@ -171,7 +197,7 @@ export {
   TreePlace,
   Operation,
   Coat,
-  CoatLook,
+  Evidence,
   Hold,
   LookOver,
   Release,
@@ -183,4 +209,9 @@ export {
   JobRun,
   FoundryEvent,
   Backup,
+  MqttBroker,
+  MqttTopic,
+  MqttMessage,
+  MqttHour,
+  Upload,
 }

@@ -1,4 +1,12 @@
-import { DataTypes, Model, type InferAttributes, type InferCreationAttributes, type NonAttribute, type Sequelize } from 'sequelize'
+import {
+  DataTypes,
+  Model,
+  type CreationOptional,
+  type InferAttributes,
+  type InferCreationAttributes,
+  type NonAttribute,
+  type Sequelize,
+} from 'sequelize'
 import type { CoatKind, Guard, Stucco } from '@/lib/coats/vocabulary'
 import { flag } from '@/models/columns'
 import type { Bath } from '@/models/bath'
@@ -18,6 +26,8 @@ export class RecipeCoat extends Model<InferAttributes<RecipeCoat>, InferCreation
   declare longestWaitHours: number
   declare isPrewet: boolean
   declare readAloud: string
+  declare needSpread: CreationOptional<number>
+  declare calibratedByCoats: CreationOptional<number | null>
 
   declare recipeVersion?: NonAttribute<RecipeVersion>
   declare bath?: NonAttribute<Bath>
@@ -37,6 +47,8 @@ export class RecipeCoat extends Model<InferAttributes<RecipeCoat>, InferCreation
         longestWaitHours: { type: DataTypes.DOUBLE, allowNull: false },
         isPrewet: flag('isPrewet'),
         readAloud: { type: DataTypes.TEXT, allowNull: false },
+        needSpread: { type: DataTypes.DOUBLE, allowNull: false, defaultValue: 0.25 },
+        calibratedByCoats: { type: DataTypes.INTEGER },
       },
       { sequelize, modelName: 'RecipeCoat', tableName: 'recipe_coats', underscored: true, timestamps: false },
     )

@@ -23,3 +23,18 @@ export type Spacing = (typeof SPACINGS)[number]
 /** Which of the two promised times lets a coat be dipped over: half of such coats dry, or nine of ten. */
 export const GUARDS = ['likely', 'safe'] as const
 export type Guard = (typeof GUARDS)[number]
+
+/** What a person can measure or feel on a coat. */
+export const EVIDENCE_KINDS = ['weighing', 'touch', 'colour', 'surface temperature'] as const
+export type EvidenceKind = (typeof EVIDENCE_KINDS)[number]
+
+/** Where on the shell it was taken; an outside that looks dry tells nothing of a core. */
+export const SPOTS = ['outside', 'recess', 'core'] as const
+export type Spot = (typeof SPOTS)[number]
+
+export const VERDICTS = ['dry', 'not yet'] as const
+export type Verdict = (typeof VERDICTS)[number]
+
+/** When a tree hangs on the scale: before a dip and after its stucco tell what the coat weighs, between them what has left it. */
+export const WEIGHING_MOMENTS = ['before dip', 'after stucco', 'now'] as const
+export type WeighingMoment = (typeof WEIGHING_MOMENTS)[number]

@@ -88,7 +88,7 @@ async function putCoatsOn(run: DipRun, member: Actor, now: number): Promise<DipR
   for (const { facts: tree, place, coatNumber, placeId, reason } of chosen) {
     const below = tree.coats.at(-1) ?? null
     const belowCall = below ? callOf(tree, below, context, run.dippedAt) : null
-    const saidDry = tree.look?.verdict === 'looks dry'
+    const saidDry = tree.word?.verdict === 'dry'
     const isBelowDry = below === null || belowCall === null || belowCall.moistureRatio <= below.moistureTarget || saidDry
     // Early is before the guard, as on the sheet: likely dry is not safe under a face coat or in a recess.
     const isEarly = belowCall !== null && belowCall.guardReachedAt === null && !saidDry
@@ -108,7 +108,7 @@ async function putCoatsOn(run: DipRun, member: Actor, now: number): Promise<DipR
       ...asList(planned !== null && planned.stucco !== run.stucco, 'other stucco'),
       ...asList(asPlanned.kind === 'face' && air !== null && isTooDryForFace(coatNumber, air, context, placeId), 'too dry for face'),
     ]
-    if (below && belowCall) await closeCoat(below, tree, context, { at: run.dippedAt, call: belowCall })
+    const closed = below && belowCall ? await closeCoat(below, tree, context, { at: run.dippedAt, call: belowCall }) : null
     const coat: CoatFacts = {
       id: newId(now),
       number: coatNumber,
@@ -131,7 +131,12 @@ async function putCoatsOn(run: DipRun, member: Actor, now: number): Promise<DipR
       moistureTarget: last.moistureTarget,
       guard: last.guard,
       longestWaitHours: last.longestWaitHours,
+      needSpread: asPlanned.needSpread,
+      isCalibrated: asPlanned.isCalibrated,
       airTempC: air?.airTempC ?? null,
+      coveredAt: null,
+      moistureRatioAtRedip: null,
+      evidence: [],
     }
     // A dip told late may lie before a later move: what counts is where the tree hung then.
     const hungAt = tree.stays.findLast((stay) => stay.since <= run.dippedAt) ?? tree.stays.at(-1)
@@ -139,12 +144,12 @@ async function putCoatsOn(run: DipRun, member: Actor, now: number): Promise<DipR
     if (hasMoved) await TreePlace.create({ id: newId(now), treeId: tree.id, placeId, since: run.dippedAt, memberId: member.id })
     const after: TreeFacts = {
       ...tree,
-      coats: [...tree.coats, coat],
+      coats: [...(closed ? [...tree.coats.slice(0, -1), closed] : tree.coats), coat],
       stays: hasMoved ? [...tree.stays, { placeId, since: run.dippedAt }].toSorted((a, b) => a.since - b.since) : tree.stays,
-      look: null,
+      word: null,
     }
     const call = callOf(after, coat, context, Math.max(now, clockStart(coat)))
-    const { needReferenceHours: need, ...stored } = coat
+    const { needReferenceHours: need, evidence: _evidence, ...stored } = coat
     await Coat.create({
       ...stored,
       treeId: tree.id,
@@ -156,6 +161,7 @@ async function putCoatsOn(run: DipRun, member: Actor, now: number): Promise<DipR
       reason: reason ?? null,
       relHumidityPct: air?.relHumidityPct ?? null,
       needReferenceHours: need,
+      recipeReferenceHours: asPlanned.needReferenceHours,
       moistureRatioBelow,
       forecastP10At: call.earliestAt,
       forecastP50At: call.likelyAt,

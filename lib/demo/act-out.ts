@@ -2,7 +2,7 @@ import { holdTree, liftHold } from '@/lib/commands/hold-tree'
 import { logDips } from '@/lib/commands/log-dips'
 import { lookOver } from '@/lib/commands/look-over'
 import { passIntake } from '@/lib/commands/pass-intake'
-import { recordLook } from '@/lib/commands/record-look'
+import { recordEvidence } from '@/lib/commands/record-evidence'
 import { recordStir } from '@/lib/commands/record-stir'
 import { recordTypedReading } from '@/lib/commands/record-typed-reading'
 import { releaseTrees } from '@/lib/commands/release-trees'
@@ -45,8 +45,8 @@ export async function actOut(list: readonly Happening[], shop: DemoShop): Promis
       case 'run':
         await logDips(dipRun(happening, idOf, shop), as)
         break
-      case 'look':
-        await recordLook(idOf(happening.tree), happening.verdict, as)
+      case 'evidence':
+        await recordEvidence(idOf(happening.tree), { operationId: newId(at), coatNumber: happening.coatNumber, ...happening.evidence }, as)
         break
       case 'hold':
         await holdTree(idOf(happening.tree), happening.reason, as)

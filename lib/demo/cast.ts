@@ -1,4 +1,4 @@
-import type { CoatingWay, RecessClass, Spacing } from '@/lib/coats/vocabulary'
+import type { CoatingWay, RecessClass, Spacing, Verdict } from '@/lib/coats/vocabulary'
 import type { DemoRecipe } from '@/lib/demo/shop'
 import type { CupKind } from '@/lib/trees/tree-input'
 
@@ -27,7 +27,7 @@ export type Story =
   | { kind: 'dipped early'; overCoat?: number; reason: string }
   | { kind: 'other stucco'; coat: number; reason: string }
   | { kind: 'held overnight'; reason: string; lifted: string }
-  | { kind: 'looked at'; verdict: 'looks dry' | 'not yet' }
+  | { kind: 'felt'; verdict: Verdict }
   | { kind: 'rough time'; coat: number }
 
 export type DemoPiece = { workTitle: string; sectionName?: string; editionNumber: number; isRecast?: boolean }
@@ -134,7 +134,7 @@ export const CAST: readonly CastTree[] = [
     waxMassKg: 2.2,
     cup: waxCup,
     pour: 'planned',
-    story: { kind: 'looked at', verdict: 'looks dry' },
+    story: { kind: 'felt', verdict: 'dry' },
   },
   {
     ...anyShape,
@@ -258,7 +258,7 @@ export const CAST: readonly CastTree[] = [
     waxMassKg: 0.8,
     cup: paperCup,
     pour: 'planned',
-    story: { kind: 'looked at', verdict: 'not yet' },
+    story: { kind: 'felt', verdict: 'not yet' },
   },
   {
     ...anyShape,

@@ -1,11 +1,20 @@
-import { millisecondsInDay, millisecondsInHour, millisecondsInMinute } from 'date-fns/constants'
+import { millisecondsInDay, millisecondsInHour, millisecondsInMinute, millisecondsInSecond } from 'date-fns/constants'
 import { COATING_WAYS, STUCCOS } from '@/lib/coats/vocabulary'
 import type { PlannedCoat } from '@/lib/demo/plan-coats'
 import type { DemoPlan, TaggedTree } from '@/lib/demo/plan'
 import type { DemoPersonKey } from '@/lib/demo/people'
 import { unitOf } from '@/lib/demo/random'
 import { lastAtWork, shiftAt } from '@/lib/demo/work-hours'
+import { slowestSpot } from '@/lib/trees/coat-evidence'
+import type { EvidenceInput } from '@/lib/trees/evidence-input'
 import type { Air } from '@/lib/drying/types'
+
+/** What somebody took, without what its moment and its tree tell. */
+type TakenEvidence = EvidenceInput extends infer Input
+  ? Input extends EvidenceInput
+    ? Omit<Input, 'operationId' | 'coatNumber' | 'takenAt'>
+    : never
+  : never
 
 type Of<Kind extends string, Detail> = { at: number; kind: Kind; by: DemoPersonKey } & Detail
 
@@ -13,11 +22,12 @@ type Of<Kind extends string, Detail> = { at: number; kind: Kind; by: DemoPersonK
 export type Happening =
   | Of<'tree added' | 'intake' | 'intake begun' | 'look-over' | 'release', { tree: TaggedTree }>
   | Of<'run', { dips: { tree: TaggedTree; coat: PlannedCoat }[]; room?: Air }>
-  | Of<'look', { tree: TaggedTree; verdict: 'looks dry' | 'not yet' }>
+  | Of<'evidence', { tree: TaggedTree; coatNumber: number; evidence: TakenEvidence }>
   | Of<'hold' | 'lift' | 'scrap', { tree: TaggedTree; reason: string }>
   | Of<'stir', { bath: 'face' | 'backup' }>
   | Of<'reading', { room: Air }>
 
+const SECOND = millisecondsInSecond
 const MINUTE = millisecondsInMinute
 const OPERATORS = ['maud', 'halvard', 'oona'] as const
 const SUPERVISOR = 'ines'
@@ -52,10 +62,14 @@ function ofTree(tree: TaggedTree, { now, hours }: DemoPlan): Happening[] {
     list.push({ at, kind: 'hold', by: operatorAt(at, 1), tree, reason: story.reason })
     list.push({ at: to - 6 * MINUTE, kind: 'lift', by: SUPERVISOR, tree, reason: story.lifted })
   }
-  if (story?.kind === 'looked at') {
+  if (story?.kind === 'felt') {
     const [from, to] = longestWait(tree)
-    const at = story.verdict === 'looks dry' ? to - 4 * MINUTE : (lastAtWork(hours, from + (to - from) / 3, MINUTE) ?? from)
-    if (at > from + 10 * MINUTE) list.push({ at, kind: 'look', by: operatorAt(at, 2), tree, verdict: story.verdict })
+    // To the second: an instant is stored as a whole number.
+    const third = Math.floor((to - from) / 3 / SECOND) * SECOND
+    const at = story.verdict === 'dry' ? to - 4 * MINUTE : (lastAtWork(hours, from + third, MINUTE) ?? from)
+    const coatNumber = tree.coats.find((coat) => coat.dippedAt === from)?.number ?? 1
+    const evidence = { kind: 'touch' as const, spot: slowestSpot(tree.recessClass), verdict: story.verdict }
+    if (at > from + 10 * MINUTE) list.push({ at, kind: 'evidence', by: operatorAt(at, 2), tree, coatNumber, evidence })
   }
   return list
 }

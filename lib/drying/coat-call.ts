@@ -26,9 +26,9 @@ export type CallCoatInput = {
  */
 export function callCoat({ coat, spans, now, readings }: CallCoatInput): CoatCall {
   const { hasTyped, needsConfirmation, hasUsable } = evidenceOf(coat, readings)
-  const spread = sigma({ recessClass: coat.recessClass, hasTyped, baseSigma: coat.baseSigma })
+  const spread = sigma({ recessClass: coat.recessClass, hasTyped, baseSigma: coat.baseSigma, airSigma: coat.airSigma })
   const need = needBand(coat.needReferenceHours, spread)
-  const from = creditFrom(coat, now, readings)
+  const from = creditedFrom(coat, now, readings)
   const roughMs = coat.roughMinutes * millisecondsInMinute
 
   const dose = doseOverSpans(spans, from, now)
@@ -44,7 +44,7 @@ export function callCoat({ coat, spans, now, readings }: CallCoatInput): CoatCal
     creditedFrom: from,
     dose,
     need,
-    moistureRatio: moistureRatio(dose.likely, need.likely, coat.moistureTarget),
+    moistureRatio: moistureRatio(dose.likely, need.likely, coat.moistureTarget, coat.pageExponent),
     earliestAt,
     likelyAt,
     safeAt,
@@ -71,11 +71,12 @@ export function windowReadings(readings: readonly RoomReading[], clockStartsAt: 
 }
 
 /** Whether a reading from before the start still held at the start, and so counts for the window. */
-function heldAtStart({ clockStartsAt }: CoatForClock, { lastBeforeStart }: WindowReadings): boolean {
+function heldAtStart({ clockStartsAt }: Pick<CoatForClock, 'clockStartsAt'>, { lastBeforeStart }: WindowReadings): boolean {
   return lastBeforeStart !== null && holdsUntil(lastBeforeStart) >= clockStartsAt
 }
 
-function creditFrom(coat: CoatForClock, now: Instant, readings: WindowReadings): Instant {
+/** From when on a coat is credited: its clock's start where a reading still held then, else the first reading after it. */
+export function creditedFrom(coat: Pick<CoatForClock, 'clockStartsAt'>, now: Instant, readings: WindowReadings): Instant {
   if (heldAtStart(coat, readings)) return coat.clockStartsAt
   return readings.firstInWindowAt ?? Math.max(now, coat.clockStartsAt)
 }

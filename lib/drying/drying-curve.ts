@@ -20,6 +20,7 @@ export function dryingCurve({
   until,
   now,
   moistureTarget,
+  pageExponent,
   count,
 }: {
   spans: readonly DryingSpan[]
@@ -28,6 +29,7 @@ export function dryingCurve({
   until: number
   now: number
   moistureTarget: number
+  pageExponent?: number | undefined
   count: number
 }): MoisturePoint[] {
   if (!(until > start)) return []
@@ -39,9 +41,9 @@ export function dryingCurve({
       const dose = doseOverSpans(spans, call.creditedFrom, at)
       return {
         at,
-        likely: moistureRatio(dose.likely, call.need.likely, moistureTarget),
-        low: moistureRatio(dose.high, call.need.low, moistureTarget),
-        high: moistureRatio(dose.low, call.need.high, moistureTarget),
+        likely: moistureRatio(dose.likely, call.need.likely, moistureTarget, pageExponent),
+        low: moistureRatio(dose.high, call.need.low, moistureTarget, pageExponent),
+        high: moistureRatio(dose.low, call.need.high, moistureTarget, pageExponent),
         isForecast: at > now,
       }
     })

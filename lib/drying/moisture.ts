@@ -1,7 +1,7 @@
 import { assertWithin } from '@/lib/drying/guards'
 
 /** Page's exponent: a flat start, then a tail. Our own starting value, to be calibrated. */
-const DEFAULT_PAGE_EXPONENT = 1.1
+export const DEFAULT_PAGE_EXPONENT = 1.1
 
 /**
  * Page's rate constant for a coat that reaches `target` at its need: k = -ln MR* / need^n.

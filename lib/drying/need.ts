@@ -46,13 +46,14 @@ export function needReferenceHours(input: NeedInput): number {
 /** Spread of ln(need) before anything is measured: recipe, tree and sensor together. Our own starting value, to be calibrated. */
 export const DEFAULT_SIGMA = 0.25
 
-const RECESS_SIGMA = 0.1
+/** How far a recess may be off, ln scale. Our own starting value. */
+export const RECESS_SIGMA = 0.1
 
 /** Total spread where a person read the air instead of a sensor, no recess. Our own starting value. */
 const TYPED_SIGMA = 0.35
 
 /**
- * Spread of ln(need): the base, a recess and typed readings added in quadrature. 0.25; 0.269 with a recess; 0.35 when typed.
+ * Spread of ln(need): the base, a recess, typed readings and damp air added in quadrature. 0.25; 0.269 with a recess; 0.35 when typed.
  *
  * @source our own model, to be calibrated.
  */
@@ -60,14 +61,32 @@ export function sigma({
   recessClass,
   hasTyped,
   baseSigma = DEFAULT_SIGMA,
+  airSigma = 0,
 }: {
   recessClass: RecessClass
   hasTyped: boolean
   baseSigma?: number
+  airSigma?: number
 }): number {
   const recess = recessClass === 'none' ? 0 : RECESS_SIGMA
   const typedSquared = hasTyped ? TYPED_SIGMA ** 2 - DEFAULT_SIGMA ** 2 : 0
-  return Math.sqrt(baseSigma ** 2 + recess ** 2 + typedSquared)
+  return Math.sqrt(baseSigma ** 2 + recess ** 2 + typedSquared + airSigma ** 2)
+}
+
+/** Above this the sensor's error is taken as it is here: at saturation the speed is nothing and its relative error has no end. */
+const DAMPEST_PCT = 96
+
+/**
+ * What damp air adds to the spread: the relative error of the drying speed that a hygrometer of +-2 % leaves grows as the air comes
+ * near saturation. At 50 % RH and below it is in the base spread already.
+ *
+ * @returns 0 to 50 %, 0.08 at 75 %, 0.14 at 85 %.
+ * @source derivative of the wet-bulb depression by humidity, 0.045 at 21 degC and 50 % RH; rounded to 0.0225 / (1 - RH). Our own model.
+ */
+export function dampAirSigma(relHumidityPct: number): number {
+  assertWithin('Relative humidity in percent', relHumidityPct, 0, 105)
+  const share = (pct: number) => 0.0225 / (1 - Math.min(pct, DAMPEST_PCT) / 100)
+  return Math.sqrt(Math.max(0, share(relHumidityPct) ** 2 - share(50) ** 2))
 }
 
 /** 90 % point of the standard normal distribution. */

@@ -18,11 +18,13 @@ const LOWEST_ROLE = {
   undo: 'operator',
   hold: 'operator',
   move: 'operator',
-  /** 'Looks dry' and 'not yet': evidence on the newest coat. */
-  look: 'operator',
+  /** What one weighs, feels and sees on the newest coat; withdrawing one's own within ten minutes. */
+  evidence: 'operator',
   /** A reading typed from the wall hygrometer. */
   read: 'operator',
   stir: 'operator',
+  /** Saying that the fans of a place are on or off now. */
+  fans: 'operator',
   trees: 'supervisor',
   intake: 'supervisor',
   'lift hold': 'supervisor',

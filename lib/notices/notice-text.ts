@@ -18,8 +18,8 @@ export function coatDryText(tree: NoticeTree, context: TextContext): NoticeText 
   }
   const guardAt = tree.guard === 'likely' ? tree.dry?.likelyAt : tree.dry?.safeAt
   // A person's word can be ahead of the clock.
-  const isByEye = typeof guardAt === 'number' && guardAt > context.now
-  const dry = isByEye ? 'looks dry' : tree.guard === 'likely' ? 'likely dry' : 'dry'
+  const isByWord = typeof guardAt === 'number' && guardAt > context.now
+  const dry = isByWord ? 'said dry' : tree.guard === 'likely' ? 'likely dry' : 'dry'
   return { title: `${named(tree)} ${dry}: dip ${tree.next.number}`, body: sentences(slurry(tree.next), tree.place.name, tree.title, times) }
 }
 

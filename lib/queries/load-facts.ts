@@ -1,7 +1,9 @@
 import { QueryTypes } from 'sequelize'
 import type { RecessClass, Spacing } from '@/lib/coats/vocabulary'
 import { treeTitle, type PieceName } from '@/lib/trees/title'
-import type { CoatFacts, RecipeCoatFacts, TreeFacts } from '@/lib/trees/facts'
+import { slowestSpot } from '@/lib/trees/coat-evidence'
+import type { CoatFacts, EvidenceFacts, RecipeCoatFacts, TreeFacts } from '@/lib/trees/facts'
+import { wordOf } from '@/lib/trees/word'
 import { database } from '@/models'
 
 /** Which trees: those on the floor, or some by id. */
@@ -20,7 +22,6 @@ type TreeRow = {
   versionId: string
   recipeName: string
   version: number
-  calibratedAt: number | null
 }
 type OfTree<Row> = Row & { treeId: string }
 
@@ -37,18 +38,19 @@ export async function loadFacts(selection: TreeSelection): Promise<TreeFacts[]> 
   const { where, replacements } = condition(selection)
   const trees = await select<TreeRow>(
     `SELECT t.id, t.tag, t.is_demo AND NOT (SELECT is_demo FROM foundry) AS isDemo, t.recess_class AS recessClass, t.spacing, t.pour_date AS pourDate, t.intake_passed_at AS intakePassedAt,
-            t.released_at AS releasedAt, t.scrapped_at AS scrappedAt, v.id AS versionId, v.version, v.calibrated_at AS calibratedAt, r.name AS recipeName
+            t.released_at AS releasedAt, t.scrapped_at AS scrappedAt, v.id AS versionId, v.version, r.name AS recipeName
        FROM trees t JOIN recipe_versions v ON v.id = t.recipe_version_id JOIN recipes r ON r.id = v.recipe_id
       WHERE ${where} ORDER BY t.tag`,
     replacements,
   )
   if (trees.length === 0) return []
   const ids = JSON.stringify(trees.map((tree) => tree.id))
-  const [coats, stays, holds, looks, lookOvers, pieces, recipeCoats] = await Promise.all([
-    select<OfTree<CoatFacts>>(
+  const [coats, stays, holds, evidence, lookOvers, pieces, recipeCoats] = await Promise.all([
+    select<OfTree<CoatRow>>(
       `SELECT tree_id AS treeId, id, number, kind, stucco, way, place_id AS placeId, dipped_at AS dippedAt, drain_seconds AS drainSeconds,
               rough_minutes AS roughMinutes, need_reference_hours AS needReferenceHours, moisture_target AS moistureTarget, guard,
-              longest_wait_hours AS longestWaitHours, air_temp_c AS airTempC
+              longest_wait_hours AS longestWaitHours, need_spread AS needSpread, is_calibrated AS isCalibrated, air_temp_c AS airTempC,
+              covered_at AS coveredAt, moisture_ratio_at_redip AS moistureRatioAtRedip
          FROM coats WHERE withdrawn_at IS NULL AND tree_id IN (SELECT value FROM json_each(:ids)) ORDER BY tree_id, number`,
       { ids },
     ),
@@ -62,10 +64,12 @@ export async function loadFacts(selection: TreeSelection): Promise<TreeFacts[]> 
         WHERE h.lifted_at IS NULL AND h.tree_id IN (SELECT value FROM json_each(:ids))`,
       { ids },
     ),
-    select<{ coatId: string; verdict: 'looks dry' | 'not yet'; by: string; at: number }>(
-      `SELECT l.coat_id AS coatId, l.verdict, m.name AS "by", l.looked_at AS at FROM coats c
-         JOIN coat_looks l ON l.coat_id = c.id JOIN members m ON m.id = l.member_id
-        WHERE c.withdrawn_at IS NULL AND c.covered_at IS NULL AND c.tree_id IN (SELECT value FROM json_each(:ids)) ORDER BY l.looked_at, l.id`,
+    select<OfTree<EvidenceFacts & { coatId: string | null }>>(
+      `SELECT e.tree_id AS treeId, e.coat_id AS coatId, e.id, e.kind, e.spot, e.verdict, e.moment, e.mass_kg AS massKg,
+              e.surface_temp_c AS surfaceTempC, e.air_temp_c AS airTempC, e.rel_humidity_pct AS relHumidityPct, e.taken_at AS takenAt,
+              m.name AS "by", e.member_id AS memberId, e.dose_reference_hours AS doseReferenceHours
+         FROM evidence e JOIN members m ON m.id = e.member_id
+        WHERE e.withdrawn_at IS NULL AND e.tree_id IN (SELECT value FROM json_each(:ids)) ORDER BY e.tree_id, e.taken_at, e.id`,
       { ids },
     ),
     select<{ coatId: string; at: number }>(
@@ -82,8 +86,9 @@ export async function loadFacts(selection: TreeSelection): Promise<TreeFacts[]> 
     select<RecipeCoatRow>(
       `SELECT c.recipe_version_id AS versionId, c.number, c.kind, c.bath_id AS bathId, b.name AS bathName, c.stucco,
               c.need_reference_hours AS needReferenceHours, c.moisture_target AS moistureTarget, c.guard, c.drain_seconds AS drainSeconds,
-              c.longest_wait_hours AS longestWaitHours, c.is_prewet AS isPrewet, c.read_aloud AS readAloud
-         FROM recipe_coats c JOIN baths b ON b.id = c.bath_id
+              c.longest_wait_hours AS longestWaitHours, c.is_prewet AS isPrewet, c.read_aloud AS readAloud, c.need_spread AS needSpread,
+              c.calibrated_by_coats IS NOT NULL OR v.calibrated_at IS NOT NULL AS isCalibrated
+         FROM recipe_coats c JOIN baths b ON b.id = c.bath_id JOIN recipe_versions v ON v.id = c.recipe_version_id
         WHERE c.recipe_version_id IN (SELECT value FROM json_each(:versions)) ORDER BY c.recipe_version_id, c.number`,
       { versions: JSON.stringify([...new Set(trees.map((tree) => tree.versionId))]) },
     ),
@@ -93,11 +98,17 @@ export async function loadFacts(selection: TreeSelection): Promise<TreeFacts[]> 
   const piecesOf = groupBy(pieces, (row) => row.treeId)
   const recipeOf = groupBy(recipeCoats, (row) => row.versionId)
   const holdOf = new Map(holds.map(({ treeId, ...hold }) => [treeId, hold]))
-  const lookOf = new Map(looks.map(({ coatId, ...look }) => [coatId, look]))
+  const evidenceOf = groupBy(evidence, (row) => row.treeId)
   const lookedOverOf = new Map(lookOvers.map((row) => [row.coatId, row.at]))
   return trees.map((tree): TreeFacts => {
-    const own = coatsOf.get(tree.id) ?? []
-    const newestId = own.at(-1)?.id ?? ''
+    const seen = evidenceOf.get(tree.id) ?? []
+    const seenOn = (coatId: string | null) => seen.filter((row) => row.coatId === coatId).map(plain)
+    const own = (coatsOf.get(tree.id) ?? []).map(({ treeId: _treeId, isCalibrated, ...row }): CoatFacts => ({
+      ...row,
+      isCalibrated: isCalibrated === 1,
+      evidence: seenOn(row.id),
+    }))
+    const newest = own.at(-1)
     return {
       id: tree.id,
       tag: tree.tag,
@@ -113,14 +124,18 @@ export async function loadFacts(selection: TreeSelection): Promise<TreeFacts[]> 
         versionId: tree.versionId,
         name: tree.recipeName,
         version: tree.version,
-        isCalibrated: tree.calibratedAt !== null,
-        coats: (recipeOf.get(tree.versionId) ?? []).map((row) => ({ ...row, isPrewet: row.isPrewet === 1 })),
+        coats: (recipeOf.get(tree.versionId) ?? []).map((row) => ({
+          ...row,
+          isPrewet: row.isPrewet === 1,
+          isCalibrated: row.isCalibrated === 1,
+        })),
       },
       coats: own,
       stays: staysOf.get(tree.id) ?? [],
       hold: holdOf.get(tree.id) ?? null,
-      look: lookOf.get(newestId) ?? null,
-      lookedOverAt: lookedOverOf.get(newestId) ?? null,
+      waxWeighings: seenOn(null),
+      word: newest ? wordOf(newest.evidence, slowestSpot(tree.recessClass)) : null,
+      lookedOverAt: lookedOverOf.get(newest?.id ?? '') ?? null,
     }
   })
 }
@@ -136,4 +151,8 @@ function groupBy<Row>(rows: readonly Row[], keyOf: (row: Row) => string): Map<st
   return groups
 }
 
-type RecipeCoatRow = Omit<RecipeCoatFacts, 'isPrewet'> & { versionId: string; isPrewet: number }
+type RecipeCoatRow = Omit<RecipeCoatFacts, 'isPrewet' | 'isCalibrated'> & { versionId: string; isPrewet: number; isCalibrated: number }
+
+type CoatRow = Omit<CoatFacts, 'isCalibrated' | 'evidence'> & { isCalibrated: number }
+
+const plain = ({ treeId: _treeId, coatId: _coatId, ...row }: OfTree<EvidenceFacts & { coatId: string | null }>): EvidenceFacts => row

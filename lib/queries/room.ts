@@ -6,7 +6,9 @@ import { loadBandHours } from '@/lib/queries/band-hours'
 import { loadClimateSpans } from '@/lib/queries/climate-spans'
 import { loadFloor, type Floor } from '@/lib/queries/floor'
 import { loadReadingsInRange } from '@/lib/queries/load-climate'
-import { queueRoom, queueTree } from '@/lib/queue/assemble'
+import { loadSensorNotes } from '@/lib/queries/sensor-notes'
+import { placeFansOf, queueRoom, queueTree } from '@/lib/queue/assemble'
+import { speedWords } from '@/lib/room/place-air'
 import { roomHeadline, treeAdvice } from '@/lib/room/room-words'
 import type { BandTable, CoatBar, DriedCoat, RoomPage } from '@/lib/room/room-contract'
 import { dayPoint, hourSeries } from '@/lib/room/climate-days'
@@ -60,7 +62,7 @@ type RoomInput = {
 export async function loadRoomPage({ sensorId, range, tempUnit, clock }: RoomInput): Promise<RoomPage> {
   const now = clock.now()
   const floor = await loadFloor({ now, trees: { on: 'floor' } })
-  const { foundry, context } = floor
+  const { foundry, context, fanSwitches } = floor
   const { timeZone, pressurePa } = foundry
   const places = foundry.places.filter((place) => !place.isRetired)
   const sensorOf = (tree: DerivedTree) => context.places.get(placeIdOf(tree))?.sensorId
@@ -90,7 +92,8 @@ export async function loadRoomPage({ sensorId, range, tempUnit, clock }: RoomInp
   // From three days back, so that the shift or night in which the charts begin is a whole one.
   const shifts = shiftsFrom(dayBack - 3 * millisecondsInDay, foundry.calendar, timeZone)
   const since = todayAndMonday(now, timeZone).monday
-  const [points, bandTable, dried] = await Promise.all([
+  const [notes, points, bandTable, dried] = await Promise.all([
+    loadSensorNotes({ now }),
     climate ? drawnPoints(climate, range, floor) : [],
     loadBandTable(floor, rooms, range),
     room ? driedCoats(floor, room.sensorId, since) : [],
@@ -110,6 +113,11 @@ export async function loadRoomPage({ sensorId, range, tempUnit, clock }: RoomInp
     headline: roomHeadline({ rooms, effects, tonight, now, timeZone }),
     dryerPct: dryer?.targetPct ?? null,
     wonBackMs: effects.reduce((sum, effect) => sum + (effect.wonBackMs ?? 0), 0),
+    placesNow: places.map((place) => {
+      const stand = placeFansOf(place, context, fanSwitches)
+      const treeCount = floor.trees.filter(({ facts }) => facts.stays.at(-1)?.placeId === place.id).length
+      return { id: place.id, name: place.name, treeCount, speed: speedWords(place, stand?.isOn ?? false), fans: stand }
+    }),
     rows: effects.map((effect) => ({
       tree: queueTree(effect.tree, context.places),
       lostMs: effect.lostMs,
@@ -143,6 +151,7 @@ export async function loadRoomPage({ sensorId, range, tempUnit, clock }: RoomInp
       pressurePa,
     }),
     rooms,
+    notes,
     room: room ?? null,
     range,
     points,

@@ -11,7 +11,8 @@ import { loadReadingsInRange } from '@/lib/queries/load-climate'
 import { queueTree } from '@/lib/queue/assemble'
 import { humidityOf, type AirStretch } from '@/lib/room/climate'
 import type { DerivedTree } from '@/lib/trees/derive'
-import type { CoatRow, TreeDetail } from '@/lib/trees/detail-contract'
+import { whyOf } from '@/lib/trees/why'
+import type { CoatEvidence, CoatRow, TreeDetail } from '@/lib/trees/detail-contract'
 import { clockStart } from '@/lib/trees/facts'
 import { airAround, dryingSpans } from '@/lib/trees/spans'
 import { Coat, database, Member, RecipeVersion, Tree } from '@/models'
@@ -83,7 +84,7 @@ export async function loadTreeDetail({
       versionId: version.id,
       name: derived.facts.recipe.name,
       version: version.version,
-      isCalibrated: version.calibratedAt !== null,
+      isCalibrated: derived.facts.recipe.coats.every((coat) => coat.isCalibrated),
     },
     waxMassKg: tree.waxMassKg,
     cupKind: tree.cupKind,
@@ -104,6 +105,7 @@ export async function loadTreeDetail({
     },
     coats,
     curve: curveOf(derived, floor, now),
+    why: whyOf(derived, floor.context),
     climate,
     holds,
     lookOvers,
@@ -142,11 +144,11 @@ type StoredCoat = {
   reason: string | null
 }
 
-type StoredLook = { coatId: string; verdict: 'looks dry' | 'not yet'; by: string; at: number; moistureRatio: number }
+type StoredEvidence = CoatEvidence & { coatId: string }
 
 async function coatRows(derived: DerivedTree, floor: Floor, now: number): Promise<CoatRow[]> {
   const { facts, call, newest } = derived
-  const [stored, looks] = await Promise.all([
+  const [stored, evidence] = await Promise.all([
     select<StoredCoat>(
       `SELECT c.id, c.number, c.way, c.dipped_at AS dippedAt, c.rough_minutes AS roughMinutes, c.drain_seconds AS drainSeconds, m.name AS "by",
               p.name AS placeName, b.name AS bathName, c.air_temp_c AS airTempC, c.rel_humidity_pct AS relHumidityPct,
@@ -157,10 +159,12 @@ async function coatRows(derived: DerivedTree, floor: Floor, now: number): Promis
         WHERE c.tree_id = :treeId AND c.withdrawn_at IS NULL ORDER BY c.number DESC`,
       facts.id,
     ),
-    select<StoredLook>(
-      `SELECT l.coat_id AS coatId, l.verdict, m.name AS "by", l.looked_at AS at, l.moisture_ratio AS moistureRatio
-         FROM coats c JOIN coat_looks l ON l.coat_id = c.id JOIN members m ON m.id = l.member_id
-        WHERE c.tree_id = :treeId AND c.withdrawn_at IS NULL ORDER BY l.looked_at`,
+    select<StoredEvidence>(
+      `SELECT e.coat_id AS coatId, e.id, e.kind, e.spot, e.verdict, e.moment, e.mass_kg AS massKg, e.surface_temp_c AS surfaceTempC,
+              e.air_temp_c AS airTempC, e.taken_at AS at, m.name AS "by", e.member_id AS memberId, e.logged_at AS loggedAt, e.moisture_ratio AS moistureRatio,
+              e.withdrawn_at AS withdrawnAt, w.name AS withdrawnBy, e.withdrawn_reason AS withdrawnReason
+         FROM evidence e JOIN coats c ON c.id = e.coat_id JOIN members m ON m.id = e.member_id LEFT JOIN members w ON w.id = e.withdrawn_by
+        WHERE e.tree_id = :treeId AND c.withdrawn_at IS NULL ORDER BY e.taken_at, e.id`,
       facts.id,
     ),
   ])
@@ -208,7 +212,7 @@ async function coatRows(derived: DerivedTree, floor: Floor, now: number): Promis
         forecast: { p10At: row.p10At, p50At: row.p50At, p90At: row.p90At },
         deviations: z.array(z.string()).parse(JSON.parse(row.deviations)),
         reason: row.reason,
-        looks: looks.filter((look) => look.coatId === row.id).map(({ coatId: _coatId, ...look }) => look),
+        evidence: evidence.filter((piece) => piece.coatId === row.id).map(({ coatId: _coatId, ...piece }) => piece),
       },
     }
   })
@@ -217,7 +221,7 @@ async function coatRows(derived: DerivedTree, floor: Floor, now: number): Promis
 
 /** From the dip to a little after the safe time; a coat that dried long ago is shown to a little after it was dry. */
 function curveOf(derived: DerivedTree, floor: Floor, now: number): TreeDetail['curve'] {
-  const { facts, newest, call } = derived
+  const { facts, newest, call, belief } = derived
   if (!newest || !call) return null
   const { moistureTarget } = newest
   const start = clockStart(newest)
@@ -230,6 +234,7 @@ function curveOf(derived: DerivedTree, floor: Floor, now: number): TreeDetail['c
     until,
     now,
     moistureTarget,
+    pageExponent: belief?.pageExponent ?? undefined,
     count: CURVE_POINTS,
   }).map(({ at, likely, low, high, isForecast }) => ({
     at,

@@ -1,5 +1,6 @@
 import { z } from 'zod'
-import { COAT_KINDS, GUARDS, STUCCOS } from '@/lib/coats/vocabulary'
+import { COAT_KINDS, GUARDS, SPOTS, STUCCOS, VERDICTS } from '@/lib/coats/vocabulary'
+import { placeFans } from '@/lib/room/fans-contract'
 import { TREE_STATES } from '@/lib/trees/states'
 
 /** Instants travel as epoch milliseconds (UTC); the browser shows them in the foundry's zone. */
@@ -75,11 +76,17 @@ export const queueTree = z.object({
   driedOut: pair.nullable(),
   /** True while the recipe's coat still runs on starting values nobody has calibrated. */
   isUncalibrated: z.boolean(),
+  /** The same of the coats behind `driedOut`. */
+  isPlanUncalibrated: z.boolean(),
   pourDate: z.iso.date().nullable(),
   willMissPour: z.boolean(),
   hold: z.object({ id: z.uuid(), reason: z.string(), by: z.string(), at: instant }).nullable(),
   /** Newest word of a person on the newest coat: 'Looks dry' or 'Not yet'. */
-  look: z.object({ verdict: z.enum(['looks dry', 'not yet']), by: z.string(), at: instant }).nullable(),
+  word: z
+    .object({ verdict: z.enum(VERDICTS), kind: z.enum(['touch', 'colour']), spot: z.enum(SPOTS), by: z.string(), at: instant })
+    .nullable(),
+  /** Where on this shell something can be taken, the spot that dries last at the end. */
+  spots: z.array(z.enum(SPOTS)),
   warnings: z.array(warning),
 })
 export type QueueTree = z.infer<typeof queueTree>
@@ -122,7 +129,16 @@ export const queue = z.object({
   shift: z.object({ isOpen: z.boolean(), endsAt: instant, nextStartsAt: instant, nextEndsAt: instant }),
   rooms: z.array(queueRoom),
   baths: z.array(queueBath),
-  places: z.array(z.object({ id: z.uuid(), name: z.string(), sensorId: z.int(), needsTypedReading: z.boolean() })),
+  places: z.array(
+    z.object({
+      id: z.uuid(),
+      name: z.string(),
+      sensorId: z.int(),
+      needsTypedReading: z.boolean(),
+      /** Null where the air is the same with and without fans. */
+      fans: placeFans.nullable(),
+    }),
+  ),
   worker: z.object({ pulseAt: instant.nullable(), isAlive: z.boolean() }),
   trees: z.array(queueTree),
 })

@@ -1,4 +1,5 @@
 import type { QueueRoom, QueueTree } from '@/lib/queue/contract'
+import type { PlaceFans } from '@/lib/room/fans-contract'
 import type { Band, BandHours } from '@/lib/room/out-of-band'
 import type { RoomRange } from '@/lib/room/range'
 import type { Headline } from '@/lib/room/room-words'
@@ -36,6 +37,8 @@ export type DriedCoat = {
   meanRelHumidityPct: number | null
 }
 
+/** The air at a place as the clock counts it now; `fans` is null where there is nothing to switch. */
+export type PlaceNow = { id: string; name: string; treeCount: number; speed: string; fans: PlaceFans | null }
 /** How long each room was outside its band and unread: today, since Monday, and over the drawn range where that is longer. */
 export type BandTable = {
   monday: number
@@ -53,9 +56,13 @@ export type RoomPage = {
   /** The dryer that the table reckons with. */
   dryerPct: number | null
   wonBackMs: number
+  /** Of every room, in order of name. */
+  placesNow: PlaceNow[]
   rows: EffectRow[]
   things: Thing[]
   rooms: QueueRoom[]
+  /** What their sensors told beside the air: % and Pa. */
+  notes: { sensorId: number; batteryPct: number | null; pressurePa: number | null }[]
   /** The room whose charts are drawn; null where there is no sensor. */
   room: QueueRoom | null
   range: RoomRange

@@ -1,6 +1,6 @@
 import { millisecondsInHour } from 'date-fns/constants'
 import { forecastHours } from '@/lib/drying/forecast'
-import { placeFactor } from '@/lib/drying/place-factor'
+import { fanFactors } from '@/lib/drying/place-factor'
 import { cutCurve } from '@/lib/drying/room-curve'
 import { roomFactor } from '@/lib/drying/room-factor'
 import { constantSegment } from '@/lib/drying/room-segments'
@@ -175,7 +175,7 @@ export type FansOn = { place: PlaceFacts; context: FloorContext }
 export function fansLeftOn(context: FloorContext, place: PlaceFacts, trees: readonly ShelledTree[], tonight: Tonight): FansOn | null {
   const climate = context.climates.get(place.sensorId)
   if (!climate || !hasFansToLeaveOn(place)) return null
-  const factor = placeFactor(place.airSpeedFansOnMps, context.pressurePa)
+  const factor = fanFactors(place, context.pressurePa).on
   const coats = trees.map((tree) => limitedCoat(tree, factor, climate.newest?.airTempC ?? null))
   const hours = nightHours(climate, tonight, context.timeZone)
   if (hours.length === 0 || breaksLimits(hours, coats, context.pressurePa)) return null

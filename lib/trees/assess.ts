@@ -1,12 +1,15 @@
 import { millisecondsInHour, millisecondsInMinute } from 'date-fns/constants'
 import type { Guard } from '@/lib/coats/vocabulary'
-import { callCoat } from '@/lib/drying/coat-call'
+import { callCoat, creditedFrom } from '@/lib/drying/coat-call'
 import { coatPhase } from '@/lib/drying/coat-phase'
 import { dampInStoreFlag, isOverdue } from '@/lib/drying/flags'
-import { guardFor } from '@/lib/drying/need'
+import { dampAirSigma, guardFor } from '@/lib/drying/need'
+import { doseOverSpans } from '@/lib/drying/tree-dose'
 import type { CoatCall } from '@/lib/drying/types'
+import { humidityOf } from '@/lib/room/climate'
+import { beliefOf, type CoatBelief } from '@/lib/trees/coat-evidence'
 import { clockStart, type CoatFacts, type RecipeCoatFacts, type TreeFacts } from '@/lib/trees/facts'
-import { dryingSpans, readingsAround, readingsBehind, type FloorContext } from '@/lib/trees/spans'
+import { airAround, dryingSpans, readingsAround, readingsBehind, type FloorContext } from '@/lib/trees/spans'
 import type { TreeState } from '@/lib/trees/states'
 
 /** For this long after its guard a coat is 'dip now'; then it is 'waiting'. Our own choice. */
@@ -23,6 +26,8 @@ export type Assessment = {
   newest: CoatFacts | null
   /** The clock's call on the newest coat; null on bare wax and on trees that left the floor. */
   call: CoatCall | null
+  /** What is believed of its need, and the evidence behind it; null where there is no call. */
+  belief: CoatBelief | null
   guard: Guard | null
   /** The coat to dip next; null when every coat is on. */
   next: RecipeCoatFacts | null
@@ -49,25 +54,44 @@ export function guardOf(facts: TreeFacts, coat: Pick<CoatFacts, 'number' | 'kind
   })
 }
 
-/** The drying clock's call on one coat of a tree, as it stands at `at`. */
+/** The drying clock's call on one coat of a tree, as it stands at `at`, by the air and by what people weighed, felt and saw until then. */
 export function callOf(facts: TreeFacts, coat: CoatFacts, context: FloorContext, at: number = context.now): CoatCall {
+  return judge(facts, coat, context, at).call
+}
+
+/** The call with what is believed of the coat's need. */
+export function judge(
+  facts: TreeFacts,
+  coat: CoatFacts,
+  context: FloorContext,
+  at: number = context.now,
+): { call: CoatCall; belief: CoatBelief } {
   const start = Math.max(clockStart(coat), context.now - LONGEST_WINDOW_MS)
-  return callCoat({
+  const spans = dryingSpans(context, facts.stays, start)
+  const readings = readingsBehind(context, facts.stays, start, at)
+  const from = creditedFrom({ clockStartsAt: start }, at, readings)
+  const belief = beliefOf(facts, coat, context.pressurePa, at, ({ takenAt }) => doseOverSpans(spans, from, Math.min(takenAt, at)).likely)
+  const humidity = humidityOf(airAround(context, facts.stays, start, at))
+  const call = callCoat({
     coat: {
       number: coat.number,
       kind: coat.kind,
       clockStartsAt: start,
       roughMinutes: coat.roughMinutes,
-      needReferenceHours: coat.needReferenceHours,
+      needReferenceHours: coat.needReferenceHours * Math.exp(belief.theta.mean),
       moistureTarget: coat.moistureTarget,
       guard: guardOf(facts, coat),
       recessClass: facts.recessClass,
       airTempAtDipC: coat.airTempC,
+      baseSigma: belief.theta.sd,
+      airSigma: humidity === null ? 0 : dampAirSigma(humidity.meanPct),
+      ...(belief.pageExponent === null ? {} : { pageExponent: belief.pageExponent }),
     },
-    spans: dryingSpans(context, facts.stays, start),
+    spans,
     now: at,
-    readings: readingsBehind(context, facts.stays, start, at),
+    readings,
   })
+  return { call, belief }
 }
 
 /** Derives everything of one tree at the context's moment. First match wins, in the order of TREE_STATES. */
@@ -76,12 +100,14 @@ export function assessTree(facts: TreeFacts, context: FloorContext): Assessment 
   const coatCount = facts.recipe.coats.length
   const isLastOn = facts.coats.length >= coatCount
   const hasLeft = facts.scrappedAt !== null || facts.releasedAt !== null
-  const call = newest && !hasLeft ? callOf(facts, newest, context) : null
+  const judged = newest && !hasLeft ? judge(facts, newest, context) : null
+  const call = judged?.call ?? null
   const dippableSince = hasLeft ? null : dippableFrom(facts, call)
   const base = {
     facts,
     newest,
     call,
+    belief: judged?.belief ?? null,
     guard: newest ? guardOf(facts, newest) : null,
     next: isLastOn || hasLeft ? null : recipeCoatOf(facts, facts.coats.length + 1),
     isLastOn,
@@ -95,9 +121,9 @@ type Base = Omit<Assessment, 'state' | 'stateSince'>
 
 function dippableFrom(facts: TreeFacts, call: CoatCall | null): number | null {
   if (call === null) return facts.intakePassedAt
-  const byEye = facts.look?.verdict === 'looks dry' ? facts.look.at : null
-  if (call.guardReachedAt === null) return byEye
-  return byEye === null ? call.guardReachedAt : Math.min(byEye, call.guardReachedAt)
+  const byWord = facts.word?.verdict === 'dry' ? facts.word.at : null
+  if (call.guardReachedAt === null) return byWord
+  return byWord === null ? call.guardReachedAt : Math.min(byWord, call.guardReachedAt)
 }
 
 function stateOf(base: Base, context: FloorContext): { state: TreeState; stateSince: number | null } {
@@ -126,15 +152,15 @@ function overdueFrom({ dippedAt, longestWaitHours }: CoatFacts, context: FloorCo
   return isOverdue(hours, longestWaitHours) ? dippedAt + longestWaitHours * millisecondsInHour : null
 }
 
-/** A dry last coat: by the safe time, or by the likely one and a person's 'looks dry'. A hold does not make it wet. */
+/** A dry last coat: by the safe time, or by the likely one and a person's 'dry'. A hold does not make it wet. */
 export function isDriedOut(facts: TreeFacts, call: CoatCall): boolean {
-  return call.isSafeDry || (call.isLikelyDry && facts.look?.verdict === 'looks dry')
+  return call.isSafeDry || (call.isLikelyDry && facts.word?.verdict === 'dry')
 }
 
 function finishedState(base: Base, call: CoatCall, context: FloorContext): { state: TreeState; stateSince: number | null } {
   const { facts } = base
   if (!isDriedOut(facts, call)) return { state: 'last coat on', stateSince: null }
-  const dryAt = call.isSafeDry ? call.safeAt : (facts.look?.at ?? null)
+  const dryAt = call.isSafeDry ? call.safeAt : (facts.word?.at ?? null)
   const isLookedOver = facts.lookedOverAt !== null
   if (!isLookedOver || dampInStore(base.facts, call, context) !== null) return { state: 'dried out', stateSince: dryAt }
   return { state: 'ready for burnout', stateSince: Math.max(facts.lookedOverAt ?? 0, dryAt ?? 0) }

@@ -1,6 +1,38 @@
-import type { CoatingWay, CoatKind, RecessClass, Spacing, Stucco } from '@/lib/coats/vocabulary'
+import type {
+  CoatingWay,
+  CoatKind,
+  EvidenceKind,
+  RecessClass,
+  Spacing,
+  Spot,
+  Stucco,
+  Verdict,
+  WeighingMoment,
+} from '@/lib/coats/vocabulary'
 import type { QueueTree } from '@/lib/queue/contract'
 import type { CupKind, WaxSurface } from '@/lib/trees/tree-input'
+import type { Why } from '@/lib/trees/why'
+
+/** One piece of evidence as it was kept; a withdrawn one stays in sight. */
+export type CoatEvidence = {
+  id: string
+  kind: EvidenceKind
+  spot: Spot | null
+  verdict: Verdict | null
+  moment: WeighingMoment | null
+  massKg: number | null
+  surfaceTempC: number | null
+  airTempC: number | null
+  at: number
+  by: string
+  memberId: string
+  loggedAt: number
+  /** By the clock at that moment, without it. */
+  moistureRatio: number | null
+  withdrawnAt: number | null
+  withdrawnBy: string | null
+  withdrawnReason: string | null
+}
 
 /** One line of the coat log: a coat that is on, or one still to come. */
 export type CoatRow = {
@@ -31,7 +63,7 @@ export type CoatRow = {
     forecast: { p10At: number | null; p50At: number | null; p90At: number | null }
     deviations: string[]
     reason: string | null
-    looks: { verdict: 'looks dry' | 'not yet'; by: string; at: number; moistureRatio: number }[]
+    evidence: CoatEvidence[]
   } | null
   /** Played forward for a coat to come; null where it cannot be foreseen. */
   planned: { likelyAt: number | null; safeAt: number | null } | null
@@ -62,6 +94,8 @@ export type TreeDetail = {
   }
   /** Newest and coats to come first, as on the page. */
   coats: CoatRow[]
+  /** Why the newest coat's time stands where it does; null where nothing has moved it. */
+  why: Why | null
   curve: { points: CurvePoint[]; targetPct: number; likelyAt: number | null; safeAt: number | null } | null
   /** Bounded: at most some 300 points over the newest coat's drying. */
   climate: { at: number; airTempC: number; relHumidityPct: number }[]

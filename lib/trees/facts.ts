@@ -1,4 +1,15 @@
-import type { CoatingWay, CoatKind, Guard, RecessClass, Spacing, Stucco } from '@/lib/coats/vocabulary'
+import type {
+  CoatingWay,
+  CoatKind,
+  EvidenceKind,
+  Guard,
+  RecessClass,
+  Spacing,
+  Spot,
+  Stucco,
+  Verdict,
+  WeighingMoment,
+} from '@/lib/coats/vocabulary'
 import type { PlaceAir } from '@/lib/drying/types'
 
 /** A coat as the recipe asks for it. */
@@ -15,7 +26,32 @@ export type RecipeCoatFacts = {
   longestWaitHours: number
   isPrewet: boolean
   readAloud: string
+  /** Spread of ln(need): 0.25 for starting values, less once finished coats stand behind it. */
+  needSpread: number
+  isCalibrated: boolean
 }
+
+/** What somebody weighed, felt or saw on a coat; withdrawn rows are left out. */
+export type EvidenceFacts = {
+  id: string
+  kind: EvidenceKind
+  /** Null for a weighing. */
+  spot: Spot | null
+  verdict: Verdict | null
+  moment: WeighingMoment | null
+  massKg: number | null
+  surfaceTempC: number | null
+  airTempC: number | null
+  relHumidityPct: number | null
+  takenAt: number
+  by: string
+  memberId: string
+  /** Dose of the coat at that moment, once the coat is covered; until then it follows the readings. */
+  doseReferenceHours: number | null
+}
+
+/** A person's newest word on how dry a coat is. */
+export type Word = { verdict: Verdict; kind: 'touch' | 'colour'; spot: Spot; by: string; at: number }
 
 /** A coat that is on, not withdrawn. */
 export type CoatFacts = {
@@ -33,7 +69,13 @@ export type CoatFacts = {
   moistureTarget: number
   guard: Guard
   longestWaitHours: number
+  needSpread: number
+  isCalibrated: boolean
   airTempC: number | null
+  coveredAt: number | null
+  moistureRatioAtRedip: number | null
+  /** In order of `takenAt`. */
+  evidence: readonly EvidenceFacts[]
 }
 
 /** What is stored of a tree; every state and time is derived from it. */
@@ -49,14 +91,16 @@ export type TreeFacts = {
   intakePassedAt: number | null
   releasedAt: number | null
   scrappedAt: number | null
-  recipe: { versionId: string; name: string; version: number; isCalibrated: boolean; coats: readonly RecipeCoatFacts[] }
+  recipe: { versionId: string; name: string; version: number; coats: readonly RecipeCoatFacts[] }
   /** In order of number. */
   coats: readonly CoatFacts[]
   /** Where it hung and from when, in order; the last one is where it hangs. */
   stays: readonly { placeId: string; since: number }[]
   hold: { id: string; reason: string; by: string; at: number } | null
-  /** Newest look at the newest coat. */
-  look: { verdict: 'looks dry' | 'not yet'; by: string; at: number } | null
+  /** Weighings before coat 1. */
+  waxWeighings: readonly EvidenceFacts[]
+  /** The newest word on the newest coat, of the spot that dries last: 'dry' lets a person dip. */
+  word: Word | null
   /** Newest look-over of the newest coat that was made when the shell was dried out; earlier ones do not count. */
   lookedOverAt: number | null
 }

@@ -1,7 +1,10 @@
+import { learnFromCoat, priorOf, sharedBefore, type Theta } from '@/lib/drying/evidence'
 import { needBand, needReferenceHours, sigma } from '@/lib/drying/need'
 import { instantWhenDose } from '@/lib/drying/tree-dose'
 import { nextOpenInstant } from '@/lib/schedule/shifts'
 import { guardOf, type Assessment } from '@/lib/trees/assess'
+import { sharedOf } from '@/lib/trees/coat-evidence'
+import type { RecipeCoatFacts } from '@/lib/trees/facts'
 import { dryingSpans, type FloorContext } from '@/lib/trees/spans'
 
 export type TimePair = { earliestAt: number | null; likelyAt: number | null; safeAt: number | null }
@@ -38,11 +41,16 @@ export function playForward(assessment: Assessment, context: FloorContext): Play
   return { plannedDips, driedOut: { earliestAt: likely.earliestAt, likelyAt: likely.likelyAt, safeAt: safe.safeAt } }
 }
 
+/** What is believed of a coat to come, by what the tree's coats so far have told. */
+function thetaToCome({ facts, newest, belief }: Assessment, coat: RecipeCoatFacts, { pressurePa }: FloorContext): Theta {
+  if (newest === null || belief === null || newest.isCalibrated !== coat.isCalibrated) return priorOf(sharedBefore(coat.needSpread))
+  return priorOf(learnFromCoat(sharedOf(facts, newest, pressurePa), belief.prior, belief.theta))
+}
+
 type Chain = TimePair & { dips: (number | null)[] }
 
 function chain(assessment: Assessment, context: FloorContext, start: number | null, by: 'guard' | 'safe'): Chain {
   const { facts } = assessment
-  const spread = sigma({ recessClass: facts.recessClass, hasTyped: false })
   const toCome = facts.recipe.coats.filter((coat) => coat.number > facts.coats.length)
   const dips: (number | null)[] = []
   let dryAt: TimePair = { earliestAt: null, likelyAt: start, safeAt: start }
@@ -56,6 +64,7 @@ function chain(assessment: Assessment, context: FloorContext, start: number | nu
       continue
     }
     const from = dippedAt + coat.drainSeconds * 1000
+    const theta = thetaToCome(assessment, coat, context)
     const need = needBand(
       needReferenceHours({
         recipeReferenceHours: coat.needReferenceHours,
@@ -64,9 +73,9 @@ function chain(assessment: Assessment, context: FloorContext, start: number | nu
         spacing: facts.spacing,
         recessClass: facts.recessClass,
         moistureRatioBelow: 0,
-        treeTheta: 0,
+        treeTheta: theta.mean,
       }),
-      spread,
+      sigma({ recessClass: facts.recessClass, hasTyped: false, baseSigma: theta.sd }),
     )
     const spans = dryingSpans(context, facts.stays, from)
     dryAt = {

@@ -11,7 +11,7 @@ export type TreeVerdict = {
 
 type VerdictTree = Pick<
   QueueTree,
-  'state' | 'stateSince' | 'coats' | 'coatsOn' | 'newestCoat' | 'next' | 'dry' | 'guard' | 'look' | 'hold' | 'moistureRatio'
+  'state' | 'stateSince' | 'coats' | 'coatsOn' | 'newestCoat' | 'next' | 'dry' | 'guard' | 'word' | 'hold' | 'moistureRatio'
 >
 
 /** 'dip 6: Backup slurry, coarse stucco', or 'dip 8, seal: Backup slurry, no stucco'. */
@@ -73,11 +73,11 @@ export function treeVerdict(tree: VerdictTree, now: number): TreeVerdict {
   }
 }
 
-/** Who said 'looks dry' while the clock's own guard still lies ahead; null where the clock says it too. */
-function seenDryBy(tree: Pick<QueueTree, 'dry' | 'guard' | 'look'>, now: number): string | null {
-  if (tree.look?.verdict !== 'looks dry') return null
+/** Who said 'dry' while the clock's own guard still lies ahead; null where the clock says it too. */
+function seenDryBy(tree: Pick<QueueTree, 'dry' | 'guard' | 'word'>, now: number): string | null {
+  if (tree.word?.verdict !== 'dry') return null
   const guardAt = tree.guard === 'likely' ? tree.dry?.likelyAt : tree.dry?.safeAt
-  return guardAt != null && guardAt <= now ? null : tree.look.by
+  return guardAt != null && guardAt <= now ? null : tree.word.by
 }
 
 function capital(text: string): string {

@@ -6,6 +6,7 @@ import type { Warning } from '@/lib/queue/contract'
 import type { RoomClimate } from '@/lib/room/climate'
 import { dampInStore, type Assessment } from '@/lib/trees/assess'
 import { readingsAround, type FloorContext } from '@/lib/trees/spans'
+import { saidWords } from '@/lib/trees/word'
 
 const one = (value: number) => value.toFixed(1)
 /** A sentence that holds temperatures, in both units. */
@@ -59,12 +60,12 @@ function beforeDip({ facts, state, call, newest, isLastOn, dippableSince }: Asse
       text: 'One typed reading stands behind this call: likely dry, confirm by touch or read the hygrometer again.',
     })
   }
-  if (facts.look?.verdict === 'looks dry' && call.guardReachedAt === null && !isLastOn) {
+  if (facts.word?.verdict === 'dry' && call.guardReachedAt === null && !isLastOn) {
     const left = call.isUnknown ? 'the clock knows nothing of it' : `by the clock ${whole(call.moistureRatio * 100)} % of its water is left`
-    warnings.push({ code: 'said dry', level: 'warn', text: `${facts.look.by} looked at it and said: looks dry; ${left}.` })
+    warnings.push({ code: 'said dry', level: 'warn', text: `${saidWords(facts.word)}; ${left}.` })
   }
-  if (facts.look?.verdict === 'not yet' && state !== 'wet' && state !== 'drying') {
-    warnings.push({ code: 'said not yet', level: 'warn', text: `${facts.look.by} looked at it and said: not yet.` })
+  if (facts.word?.verdict === 'not yet' && state !== 'wet' && state !== 'drying') {
+    warnings.push({ code: 'said not yet', level: 'warn', text: `${saidWords(facts.word)}.` })
   }
   return warnings
 }

@@ -4,6 +4,9 @@ import type { ReadingSource } from '@/lib/drying/types'
 import { formatBytes } from '@/lib/format/bytes'
 import { formatDuration } from '@/lib/format/duration'
 import { formatMoment } from '@/lib/format/local-time'
+import { formatPercent } from '@/lib/format/units'
+import { isBatteryLow } from '@/lib/room/sensor-warnings'
+import { connectionWords, type ConnectionState } from '@/lib/mqtt/connection-words'
 
 /** What was measured, for the page of upkeep. Instants in epoch milliseconds, sizes in bytes. */
 export type UpkeepFacts = {
@@ -18,7 +21,9 @@ export type UpkeepFacts = {
     failing: readonly { job: string; at: number; error: string }[]
     failedPasses: number
   }
-  sensors: readonly { name: string; source: ReadingSource; newestAt: number | null }[]
+  sensors: readonly { name: string; source: ReadingSource; newestAt: number | null; batteryPct: number | null }[]
+  /** The broker of loggers, counts of the last day; null where none is switched on. */
+  mqtt: (ConnectionState & { readings: number; refused: number; dropped: number }) | null
   records: { sizeBytes: number; walBytes: number }
   disks: readonly { of: 'records' | 'backups'; freeBytes: number }[]
   pushes: {
@@ -43,7 +48,7 @@ export type UpkeepFacts = {
 
 /** One thing of upkeep: how it stands, and what to do where a person has to. */
 export type UpkeepCheck = {
-  key: 'worker' | 'sensors' | 'records' | 'disk' | 'pushes' | 'backups' | 'proof' | 'clock' | 'program'
+  key: 'worker' | 'sensors' | 'mqtt' | 'records' | 'disk' | 'pushes' | 'backups' | 'proof' | 'clock' | 'program'
   title: string
   isInOrder: boolean
   /** How it stands, a sentence each. */
@@ -59,6 +64,8 @@ const LONG_WAL_BYTES = 128_000_000
 const PUSH_LATE_MS = 5 * millisecondsInMinute
 const BACKUP_LATE_MS = 3 * millisecondsInHour
 const PROOF_LATE_MS = 2 * millisecondsInDay
+/** A broker that is started again is back by then. */
+const BROKER_AWAY_MS = 5 * millisecondsInMinute
 /** After a start the worker needs its ten minutes before there can be a copy of today. */
 const STARTED_LATELY_MS = 30 * millisecondsInMinute
 
@@ -67,6 +74,7 @@ const JOB_WORDS: Record<string, string> = {
   'send-pushes': 'Sending notices',
   prune: 'Tidying up',
   'back-up': 'The backup',
+  'correct-readings': 'Bringing readings to their offsets',
   'demo-feed': 'The demo’s sensors',
 }
 
@@ -75,6 +83,7 @@ export function upkeepChecks(facts: UpkeepFacts): UpkeepCheck[] {
   return [
     worker(facts),
     sensors(facts),
+    ...mqtt(facts),
     disk(facts),
     backups(facts),
     proof(facts),
@@ -124,13 +133,33 @@ function sensors({ sensors: all, now, timeZone }: UpkeepFacts): UpkeepCheck {
   })
   if (all.length === 0) lines.push('There is no sensor yet.')
   const silent = all.filter(isSilent)
-  const todo =
-    silent.length === 0
-      ? ''
+  const empty = all.filter(({ batteryPct }) => isBatteryLow(batteryPct))
+  lines.push(...empty.map(({ name, batteryPct }) => `${name}: battery ${formatPercent(batteryPct)}.`))
+  const todo = [
+    ...(silent.length === 0
+      ? []
       : silent.every(({ source }) => source === 'typed')
-        ? 'Read the wall hygrometer and type it in on the floor.'
-        : 'Look at the sensor, its network and its token. Until it sends again, trees in its air turn unknown.'
-  return { key: 'sensors', title: 'Sensors', isInOrder: silent.length === 0, lines, todo }
+        ? ['Read the wall hygrometer and type it in on the floor.']
+        : ['Look at the sensor, its network and its token. Until it sends again, trees in its air turn unknown.']),
+    ...(empty.length === 0 ? [] : ['Change the battery before the sensor falls silent.']),
+  ].join(' ')
+  return { key: 'sensors', title: 'Sensors', isInOrder: todo === '', lines, todo }
+}
+
+/** Only where a broker is switched on. A connection that broke a moment ago comes back by itself. */
+function mqtt({ mqtt: facts, now, timeZone }: UpkeepFacts): UpkeepCheck[] {
+  if (facts === null) return []
+  const { isGood, text } = connectionWords(facts, { now, timeZone })
+  const { readings, refused, dropped, awaySince } = facts
+  const lines = [
+    text,
+    `In the last day ${readings} new ${readings === 1 ? 'reading' : 'readings'}; ${refused} ${refused === 1 ? 'message' : 'messages'} refused.`,
+  ]
+  if (dropped > 0) lines.push(`${dropped} ${dropped === 1 ? 'message' : 'messages'} came too fast and were dropped.`)
+  const isBrief = facts.isWorkerAlive && awaySince !== null && now - awaySince < BROKER_AWAY_MS
+  const todo =
+    isGood || isBrief ? '' : 'Look at the broker and its network, and at MQTT under Foundry. Until then its loggers are not heard.'
+  return [{ key: 'mqtt', title: 'MQTT', isInOrder: todo === '', lines, todo }]
 }
 
 function disk({ disks }: UpkeepFacts): UpkeepCheck {

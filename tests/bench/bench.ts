@@ -1,5 +1,6 @@
 // `npm run bench`: how fast the floor is, always as a ratio to what the framework itself does in the same run on the same machine.
 // Prints one table; everything it makes is taken away again. Minutes: it builds twice and makes ten years of readings.
+import { execFileSync } from 'node:child_process'
 import { mkdtempSync, rmSync } from 'node:fs'
 import { loadavg, tmpdir } from 'node:os'
 import { join } from 'node:path'
@@ -154,6 +155,14 @@ async function measurePages(
   }
 }
 
+/** A million readings out of a file, while dips are logged. In a process of its own, since it has records of its own. */
+function measureUploads(): void {
+  const args = ['--import', 'tsx', 'tests/bench/uploads.ts', '1000000']
+  const env = { ...process.env, UV_THREADPOOL_SIZE: '16' }
+  const text = execFileSync(process.execPath, args, { env, encoding: 'utf8', stdio: ['ignore', 'pipe', 'inherit'] })
+  rows.push(...(JSON.parse(text.trim().split('\n').at(-1) ?? '[]') as Row[]))
+}
+
 function print(): void {
   const head = { what: 'What', value: 'Measured', ratio: 'Ratio', aim: 'Aim', met: 'Met', load: 'Load' }
   const lines = [
@@ -195,6 +204,7 @@ try {
     }
   }
   await measurePages(cases[0]!, builds.product, builds.bare, member)
+  measureUploads()
   print()
 } finally {
   builds.remove()

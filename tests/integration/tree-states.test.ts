@@ -3,9 +3,10 @@ import { holdTree, liftHold } from '@/lib/commands/hold-tree'
 import { logDips } from '@/lib/commands/log-dips'
 import { lookOver } from '@/lib/commands/look-over'
 import { moveTree } from '@/lib/commands/move-tree'
-import { recordLook } from '@/lib/commands/record-look'
+import { recordEvidence } from '@/lib/commands/record-evidence'
 import { recordReadings } from '@/lib/commands/record-readings'
 import { releaseTrees, withdrawRelease } from '@/lib/commands/release-trees'
+import { newId } from '@/lib/core/ids'
 import type { Actor } from '@/lib/members/actor'
 import { loadFloor } from '@/lib/queries/floor'
 import { Coat, Sensor } from '@/models'
@@ -43,6 +44,9 @@ const at = async (treeId: string, now: number) => {
 const by = (member: Actor, now: number) => ({ member, clock: stoppedClock(now) })
 const dip = (treeId: string, coatNumber: number, dippedAt: number, overrides: Parameters<typeof dipBody>[2] = {}) =>
   logDips(dipBody(foundry, [{ treeId, coatNumber }], { dippedAt, ...overrides }), by(maud, dippedAt))
+
+const touch = (treeId: string, verdict: 'dry' | 'not yet', as: ReturnType<typeof by>) =>
+  recordEvidence(treeId, { operationId: newId(), coatNumber: 1, kind: 'touch', spot: 'outside', verdict }, as)
 
 const ONE_BACKUP = [
   { kind: 'backup', stucco: 'medium', need: 4 },
@@ -93,17 +97,17 @@ describe('states of a tree over a drying', () => {
     expect((await at(tree.id, NOW + 5 * HOUR)).state).toBe('waiting')
   })
 
-  it("takes a person's word: 'looks dry' lets it be dipped, 'not yet' takes that back", async () => {
+  it("takes a person's word: 'dry' lets it be dipped, 'not yet' takes that back", async () => {
     const tree = await buildTree(foundry)
     await dip(tree.id, 1, NOW)
-    await recordLook(tree.id, 'looks dry', by(maud, NOW + 2 * HOUR))
+    await touch(tree.id, 'dry', by(maud, NOW + 2 * HOUR))
     expect(await at(tree.id, NOW + 2.1 * HOUR)).toMatchObject({ state: 'dip now', mayDip: true, dippableSince: NOW + 2 * HOUR })
     const seen = await at(tree.id, NOW + 2.1 * HOUR)
     expect(seen.warnings.find((warning) => warning.code === 'said dry')?.text).toMatch(
       /^Maud .* by the clock \d+ % of its water is left\.$/,
     )
     expect((await at(tree.id, NOW + 4 * HOUR)).warnings.map((warning) => warning.code)).not.toContain('said dry')
-    await recordLook(tree.id, 'not yet', by(maud, NOW + 2.2 * HOUR))
+    await touch(tree.id, 'not yet', by(maud, NOW + 2.2 * HOUR))
     expect((await at(tree.id, NOW + 2.3 * HOUR)).mayDip).toBe(false)
     const dry = await at(tree.id, NOW + 4 * HOUR)
     expect(dry.warnings.map((warning) => warning.code)).toContain('said not yet')
@@ -218,7 +222,7 @@ describe('what the air does not tell', () => {
     expect(unknown).toMatchObject({ state: 'unknown', mayDip: false })
     expect(unknown.warnings.map((warning) => warning.code)).toContain('unknown')
     // The warning asks for a touch: after it the tree is dipped like any other.
-    await recordLook(tree.id, 'looks dry', by(maud, NOW + 30 * HOUR))
+    await touch(tree.id, 'dry', by(maud, NOW + 30 * HOUR))
     const felt = await at(tree.id, NOW + 30 * HOUR)
     expect(felt).toMatchObject({ mayDip: true, dippableSince: NOW + 30 * HOUR })
     expect(felt.warnings.map((warning) => warning.code)).not.toContain('unknown')

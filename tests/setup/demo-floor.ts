@@ -105,7 +105,7 @@ export function describeDemoAt(name: string, iso: string): void {
       expect(queue.trees.filter(({ willMissPour }) => willMissPour).map(({ title }) => title)).toEqual(['The Ferryman, figure'])
       expect(queue.trees.filter(({ title }) => title.startsWith('Otter Gate, panel'))).toHaveLength(4)
       expect(queue.trees.filter(({ title }) => title.endsWith('pieces')).length).toBeGreaterThanOrEqual(1)
-      expect(queue.trees.every(({ isUncalibrated }) => isUncalibrated)).toBe(true)
+      expect(queue.trees.every(({ isPlanUncalibrated }) => isPlanUncalibrated)).toBe(true)
     })
 
     it('has a tree with a recess', async () => {
@@ -119,12 +119,12 @@ export function describeDemoAt(name: string, iso: string): void {
       const [past] = await select<Record<string, number>>(
         `SELECT (SELECT count(*) FROM releases) AS releases, (SELECT count(*) FROM trees WHERE scrapped_at IS NOT NULL) AS scrapped,
                 (SELECT count(*) FROM pieces WHERE recast_of IS NOT NULL) AS recast, (SELECT count(*) FROM holds WHERE lifted_at IS NOT NULL) AS lifted,
-                (SELECT count(*) FROM coat_looks) AS looks, (SELECT count(DISTINCT stirred_at / 86400000) FROM bath_stirs) AS stirredDays,
+                (SELECT count(*) FROM evidence) AS evidence, (SELECT count(DISTINCT stirred_at / 86400000) FROM bath_stirs) AS stirredDays,
                 (SELECT count(*) FROM coats WHERE rough_minutes > 0) AS rough`,
       )
       expect(past).toMatchObject({ scrapped: 1, recast: 1, lifted: 1, rough: 1 })
       expect(past?.['releases']).toBeGreaterThanOrEqual(5)
-      expect(past?.['looks']).toBeGreaterThanOrEqual(1)
+      expect(past?.['evidence']).toBeGreaterThanOrEqual(1)
       expect(past?.['stirredDays']).toBeGreaterThanOrEqual(11)
       const odd = coats.filter(({ deviations }) => deviations !== '[]')
       expect(odd.map(({ deviations }) => deviations).toSorted()).toEqual(['["other stucco"]', '["still wet"]'])

@@ -5,7 +5,7 @@ import { FoundryNav } from '@/app/(office)/_components/foundry-nav'
 import { CodeBlock } from '@/app/(office)/api-guide/_components/code-block'
 import { DoorList } from '@/app/(office)/api-guide/_components/door-list'
 import { env } from '@/lib/core/env'
-import { curlManyReadings, curlOneReading, pythonLoop, shellLoop, TOKEN_LINE } from '@/lib/room/sending-examples'
+import { curlManyReadings, curlOneReading, publishOneReading, pythonLoop, shellLoop, TOKEN_LINE } from '@/lib/room/sending-examples'
 import { requireMemberPage } from '@/lib/server/auth'
 import { LARGEST_READINGS_BYTES, SENSOR_REQUESTS_PER_MINUTE } from '@/lib/server/limits'
 import { PROBLEMS, problemType, type ProblemCode } from '@/lib/server/problem'
@@ -20,7 +20,11 @@ const ANSWER = `{
   "repeated": 1,
   "rejected": [
     { "index": 3, "reason": "measuredAt lies more than 2 min ahead: check the clock of the sensor." }
-  ]
+  ],
+  "marked": [
+    { "index": 1, "reason": "No shell room is like this: −10 to 60 °C, 0 to 105 % RH." }
+  ],
+  "clockOffsetSeconds": 420
 }`
 
 const PROBLEM = `{
@@ -74,8 +78,10 @@ export default async function ApiGuidePage() {
 
         <Plate title="2. Send one reading">
           <p>
-            Temperature in °C (−10 to 60), relative humidity in % (0 to 105), and the moment at which they were measured: ISO 8601 with a
-            zone, or milliseconds since 1970 (UTC). Every two to five minutes is enough.
+            Temperature in °C, relative humidity in %, and the moment at which they were measured: ISO 8601 with a zone, or milliseconds
+            since 1970 (UTC). Every two to five minutes is enough. A row may also carry <code>pressurePa</code> of a barometer (Pa, not
+            reduced to sea level), and beside the list may stand <code>batteryPct</code> and <code>sentAt</code>, the time by the
+            sender&apos;s own clock.
           </p>
           <CodeBlock label="One reading" code={curlOneReading(address)} />
         </Plate>
@@ -91,7 +97,10 @@ export default async function ApiGuidePage() {
           <p>
             Status 200 means that the server has looked at every row. <b>Accepted</b> rows are new and kept. <b>Repeated</b> rows were known
             already, by sensor and moment, and changed nothing: if an answer gets lost, send the same rows again. <b>Rejected</b> rows were
-            not kept; each comes with its place in your list, counted from 0, and the reason. Do not send rejected rows again.
+            not kept; each comes with its place in your list, counted from 0, and the reason. Do not send rejected rows again. <b>Marked</b>{' '}
+            rows are kept and shown on the page Sensors and count for nothing in the drying times: air that no shell room has, a jump that
+            is gone with the next reading, a sensor that has not moved for more than 6 hours. <b>clockOffsetSeconds</b> is how far the
+            sender&apos;s clock is ahead, where it is off by more than 2 minutes; Kilnward does not shift any time by it.
           </p>
           <CodeBlock label="An answer" code={ANSWER} />
         </Plate>
@@ -152,7 +161,32 @@ export default async function ApiGuidePage() {
           <CodeBlock label="Python loop" code={pythonLoop(address)} />
         </Plate>
 
-        <Plate title="9. Every door">
+        <Plate title="9. Through a broker">
+          <p>
+            A logger that speaks MQTT needs no token: Kilnward listens to the broker on your network. An owner sets it on the page{' '}
+            <Link href="/settings/mqtt" prefetch={false}>
+              MQTT
+            </Link>
+            , and there you say which topic feeds which sensor and where in its messages the figures stand. For the line below: topic{' '}
+            <code>shellroom/loft/air</code>, temperature <code>temp</code>, humidity <code>rh</code>, time <code>at</code> in seconds since
+            1970.
+          </p>
+          <CodeBlock label="One reading, published" code={publishOneReading()} />
+          <ul className="plain-list">
+            <li>
+              <b>Send the time along</b>, and publish with QoS 1 (<code>-q 1</code>): then what comes while Kilnward is away waits at the
+              broker and counts for its own moment, and a message that comes twice is one reading.
+            </li>
+            <li>
+              Without a time the moment of arrival counts, to ten seconds. A kept (retained) message, and one that has waited for more than
+              2 minutes, is then passed over: nobody knows how old it is.
+            </li>
+            <li>The rest is as for the door above: the same limits for each row, and rows known by sensor and moment.</li>
+            <li>The page shows the last message on each topic and why it was refused.</li>
+          </ul>
+        </Plate>
+
+        <Plate title="10. Every door">
           <p>
             This list comes from the{' '}
             <a href={DESCRIPTION} target="_blank" rel="noreferrer">

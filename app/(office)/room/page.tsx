@@ -12,6 +12,7 @@ import { AirFolds } from '@/app/(office)/room/_components/air-folds'
 import type { Frame } from '@/app/(office)/room/_components/chart-frame'
 import { DriedFold } from '@/app/(office)/room/_components/dried-coats'
 import { EffectTable } from '@/app/(office)/room/_components/effect-table'
+import { FansNow } from '@/app/(office)/room/_components/fans-now'
 import { Fold } from '@/app/(office)/room/_components/fold'
 import { PointTable } from '@/app/(office)/room/_components/point-table'
 import { ReadingForm } from '@/app/(office)/room/_components/reading-form'
@@ -20,17 +21,20 @@ import { RangeForm } from '@/app/(office)/room/_components/range-form'
 import { systemClock } from '@/lib/core/clock'
 import { localDay } from '@/lib/format/local-time'
 import { TIMES_NOT_CALIBRATED } from '@/lib/format/time-pair'
-import { formatPercent, formatShare, formatTemperature, wholeNumber, type TempUnit } from '@/lib/format/units'
+import { formatPercent, formatPressure, formatShare, formatTemperature, wholeNumber, type TempUnit } from '@/lib/format/units'
 import { readingAge } from '@/lib/floor/strip'
 import { may } from '@/lib/members/roles'
 import { loadRoomPage } from '@/lib/queries/room'
 import type { QueueRoom } from '@/lib/queue/contract'
 import { RANGE_NAMES, rangeOf, type RoomRange } from '@/lib/room/range'
 import { PULL_WORDS } from '@/lib/room/drying-pull'
+import type { RoomPage } from '@/lib/room/room-contract'
+import { isBatteryLow } from '@/lib/room/sensor-warnings'
 import { roughDuration } from '@/lib/format/duration'
 import type { ShiftSpeed } from '@/lib/room/shift-speeds'
 import { requireMemberPage } from '@/lib/server/auth'
 import './room.css'
+import './sensor-note.css'
 
 export const metadata: Metadata = { title: 'Room' }
 
@@ -94,6 +98,8 @@ export default async function RoomPageView({ searchParams }: PageProps<'/room'>)
           )}
         </p>
       </div>
+
+      {page.placesNow.length > 0 && <FansNow places={page.placesNow} maySwitch={may(member.role, 'fans')} now={now} timeZone={timeZone} />}
 
       <section className="plate">
         <header>
@@ -206,7 +212,12 @@ export default async function RoomPageView({ searchParams }: PageProps<'/room'>)
       <section className="plate folds">
         {page.points.length > 0 && <AirFolds page={page} room={room} frame={frame} tempUnit={tempUnit} />}
         <Fold title="Sensors" line={<SensorsLine rooms={page.rooms} now={now} timeZone={timeZone} />}>
-          <SensorList rooms={page.rooms} now={now} timeZone={timeZone} tempUnit={tempUnit} />
+          <SensorList rooms={page.rooms} notes={page.notes} now={now} timeZone={timeZone} tempUnit={tempUnit} />
+          {may(member.role, 'sensors') && (
+            <p className="fold-key">
+              <KeyLink href={`/room/upload?sensor=${room.sensorId}`}>Readings from a file</KeyLink>
+            </p>
+          )}
           {may(member.role, 'read') && (
             <>
               <h3 className="fold-title">Type a reading</h3>
@@ -293,11 +304,13 @@ function SensorsLine({ rooms, now, timeZone }: { rooms: readonly QueueRoom[]; no
 
 function SensorList({
   rooms,
+  notes,
   now,
   timeZone,
   tempUnit,
 }: {
   rooms: readonly QueueRoom[]
+  notes: RoomPage['notes']
   now: number
   timeZone: string
   tempUnit: TempUnit
@@ -316,8 +329,25 @@ function SensorList({
             {room.pull === 'not known' ? 'its trees are unknown' : `${PULL_WORDS[room.pull]}, ${formatPercent(room.speedPct)}`}
           </span>
           <span className="text-soot">{room.isTypedOnly ? 'read by people' : room.source === 'typed' ? 'last one typed' : 'logger'}</span>
+          <SensorNoteWords note={notes.find(({ sensorId }) => sensorId === room.sensorId)} />
         </li>
       ))}
     </ul>
+  )
+}
+
+function SensorNoteWords({ note }: { note: RoomPage['notes'][number] | undefined }) {
+  if (!note || (note.pressurePa === null && note.batteryPct === null)) return null
+  const isLow = isBatteryLow(note.batteryPct)
+  return (
+    <span className="sensor-note">
+      {note.pressurePa !== null && <span>barometer {formatPressure(note.pressurePa)}</span>}
+      {note.batteryPct !== null && (
+        <span className={isLow ? 'text-ochre-ink' : 'text-soot'}>
+          {isLow && <Icon name="warning" />} battery {formatPercent(note.batteryPct)}
+          {isLow && ': change it'}
+        </span>
+      )}
+    </span>
   )
 }

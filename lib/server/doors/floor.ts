@@ -1,10 +1,12 @@
 import { z } from 'zod'
 import { dipRefusal, dipRun, dipRunAnswer, undoDips, undoDipsAnswer } from '@/lib/coats/dip-contract'
 import { queue } from '@/lib/queue/contract'
+import { fansAnswer, fansInput } from '@/lib/room/fans-contract'
 import type { DoorDescription } from '@/lib/server/doors/door'
 import { TREE_GROUPS } from '@/lib/trees/tree-groups'
 import { POUR_FILTERS, TREE_SORTS } from '@/lib/trees/tree-view'
-import { holdAnswer, holdInput, lookAnswer, lookInput, placeAnswer, placeInput, stirAnswer, stirInput } from '@/lib/trees/tablet-input'
+import { evidenceAnswer, evidenceInput, withdrawEvidenceAnswer, withdrawEvidenceInput } from '@/lib/trees/evidence-input'
+import { holdAnswer, holdInput, placeAnswer, placeInput, stirAnswer, stirInput } from '@/lib/trees/tablet-input'
 
 const OPERATION =
   'The operation id is made once by the sender and kept through every retry: the same id with the same body gets the first answer again.'
@@ -128,17 +130,46 @@ export const FLOOR_DOORS: readonly DoorDescription[] = [
     problems: ['not_found', 'conflict', 'unprocessable'],
   },
   {
-    operationId: 'lookAtTree',
+    operationId: 'addEvidence',
     method: 'POST',
-    path: '/api/v1/trees/{treeId}/looks',
+    path: '/api/v1/trees/{treeId}/evidence',
     group: 'Floor',
-    summary: "Say 'looks dry' or 'not yet'",
-    text: `A person's word on the newest coat, beside the clock's. ${OPERATION}`,
-    who: 'look',
+    summary: 'Say what was weighed, felt or seen on the newest coat',
+    text: `A touch, a binder's colour, a weighing or a surface temperature, with the spot where it was taken. It moves the time of the coat. ${OPERATION}`,
+    who: 'evidence',
     params: { treeId },
-    body: { schema: lookInput, example: { operationId: OPERATION_ID, verdict: 'looks dry' } },
-    answers: { 201: { text: 'Kept.', schema: lookAnswer, example: { treeId: TREE_ID, verdict: 'looks dry' } } },
+    body: {
+      schema: evidenceInput,
+      example: { operationId: OPERATION_ID, coatNumber: 5, kind: 'touch', spot: 'recess', verdict: 'not yet' },
+    },
+    answers: {
+      201: {
+        text: 'Kept.',
+        schema: evidenceAnswer,
+        example: {
+          treeId: TREE_ID,
+          evidenceId: COAT_ID,
+          kind: 'touch',
+          before: { likelyAt: 1_764_594_600_000, safeAt: 1_764_600_000_000 },
+          after: { likelyAt: 1_764_596_400_000, safeAt: 1_764_600_900_000 },
+          unheard: null,
+        },
+      },
+    },
     problems: ['not_found', 'conflict', 'unprocessable'],
+  },
+  {
+    operationId: 'withdrawEvidence',
+    method: 'POST',
+    path: '/api/v1/evidence/{evidenceId}/withdrawal',
+    group: 'Floor',
+    summary: 'Withdraw wrong evidence',
+    text: `It stays in the history and moves nothing any more. One's own within ten minutes; a supervisor any, with a reason. ${OPERATION}`,
+    who: 'evidence',
+    params: { evidenceId: { schema: z.uuid(), text: 'Id of the evidence.' } },
+    body: { schema: withdrawEvidenceInput, example: { operationId: OPERATION_ID } },
+    answers: { 200: { text: 'Withdrawn.', schema: withdrawEvidenceAnswer, example: { evidenceId: COAT_ID, treeId: TREE_ID } } },
+    problems: ['not_found', 'conflict', 'forbidden', 'unprocessable'],
   },
   {
     operationId: 'moveTree',
@@ -146,11 +177,30 @@ export const FLOOR_DOORS: readonly DoorDescription[] = [
     path: '/api/v1/trees/{treeId}/place',
     group: 'Floor',
     summary: 'Hang a tree somewhere else',
-    text: `From now on; its drying follows the air of the new place. ${OPERATION}`,
+    text: `From now on, or since \`movedAt\`: after the newest dip, and at most an hour back unless a supervisor says so. Its drying follows the air of the new place from that moment; moves told for later than that are taken back. ${OPERATION}`,
     who: 'move',
     params: { treeId },
     body: { schema: placeInput, example: { operationId: OPERATION_ID, placeId: PLACE_ID } },
     answers: { 200: { text: 'Moved.', schema: placeAnswer, example: { treeId: TREE_ID, placeId: PLACE_ID } } },
+    problems: ['not_found', 'conflict', 'unprocessable'],
+  },
+  {
+    operationId: 'switchFans',
+    method: 'POST',
+    path: '/api/v1/places/{placeId}/fans',
+    group: 'Floor',
+    summary: "Say 'fans on' or 'fans off'",
+    text: `What a person sees at a place, from this moment until the timetable's own next switch; 'timetable' takes it back. What dries there is split at the moment of the touch. What is so already changes nothing. ${OPERATION}`,
+    who: 'fans',
+    params: { placeId: { schema: z.uuid(), text: 'Id of the place, as the queue names it.' } },
+    body: { schema: fansInput, example: { operationId: OPERATION_ID, state: 'off' } },
+    answers: {
+      200: {
+        text: 'Taken in: how the fans stand now, and until when.',
+        schema: fansAnswer,
+        example: { placeId: PLACE_ID, isOn: false, until: 1_791_900_000_000 },
+      },
+    },
     problems: ['not_found', 'conflict', 'unprocessable'],
   },
   {

@@ -37,9 +37,9 @@ describe('the words of a push', () => {
     const dry = { earliestAt: null, likelyAt: NOW, safeAt: null }
     expect(coatDryText(buildDryTree(1, { guard: 'likely', dry }), context).body).toMatch(/Otter Gate, panel 2\. Likely since 14:00\.$/)
   })
-  it('says looks dry where a person was ahead of the clock', () => {
+  it('says so where a person was ahead of the clock', () => {
     expect(coatDryText(buildQueueTree({ state: 'dip now' }), context)).toMatchObject({
-      title: 'T-122 looks dry: dip 6',
+      title: 'T-122 said dry: dip 6',
       body: expect.stringContaining('Safe from 15:50, likely from 15:00.'),
     })
   })

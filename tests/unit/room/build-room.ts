@@ -1,5 +1,5 @@
 import { roomFactor } from '@/lib/drying/room-factor'
-import type { RoomReading } from '@/lib/drying/types'
+import type { FanSwitch, RoomReading } from '@/lib/drying/types'
 import type { CoatKind, RecessClass, Stucco } from '@/lib/coats/vocabulary'
 import { buildClimate, type ClimateHour, type RoomClimate } from '@/lib/room/climate'
 import { shiftsFrom, type WorkCalendar } from '@/lib/schedule/shifts'
@@ -80,6 +80,7 @@ export function buildPlaceFacts(id: string, overrides: Partial<PlaceFacts> = {})
     isTypedOnly: false,
     airSpeedFansOnMps: 1,
     airSpeedFansOffMps: 1,
+    fanDuty: 1,
     fanHours: [],
     formerAirs: [],
     isRetired: false,
@@ -92,13 +93,21 @@ export function buildContext({
   places = [buildPlaceFacts('Rack')],
   now = NOW,
   calendar = WEEK,
-}: { climates?: RoomClimate[]; places?: PlaceFacts[]; now?: number; calendar?: WorkCalendar } = {}): FloorContext {
+  fanSwitches = new Map(),
+}: {
+  climates?: RoomClimate[]
+  places?: PlaceFacts[]
+  now?: number
+  calendar?: WorkCalendar
+  fanSwitches?: ReadonlyMap<string, readonly FanSwitch[]>
+} = {}): FloorContext {
   return floorContext({
     now,
     timeZone: TIME_ZONE,
     pressurePa: PRESSURE_PA,
     climates,
     places,
+    fanSwitches,
     shifts: shiftsFrom(now, calendar, TIME_ZONE),
     from: now - 14 * 24 * HOUR,
   })
@@ -143,7 +152,6 @@ export function buildDerived(context: FloorContext, spec: TreeSpec = {}): Derive
       versionId: 'v',
       name: 'Recipe',
       version: 1,
-      isCalibrated: true,
       coats: RECIPE.map((line, index) => ({
         number: index + 1,
         kind: line.kind,
@@ -157,6 +165,8 @@ export function buildDerived(context: FloorContext, spec: TreeSpec = {}): Derive
         longestWaitHours: 72,
         isPrewet: false,
         readAloud: '',
+        needSpread: 0.25,
+        isCalibrated: true,
       })),
     },
     coats: RECIPE.slice(0, coat).map((line, index) => ({
@@ -174,10 +184,16 @@ export function buildDerived(context: FloorContext, spec: TreeSpec = {}): Derive
       moistureTarget: 0.1,
       guard: 'likely' as const,
       longestWaitHours: 72,
+      needSpread: 0.25,
+      isCalibrated: true,
+      coveredAt: null,
+      moistureRatioAtRedip: null,
+      evidence: [],
     })),
     stays: [{ placeId, since: newestAt - 200 * HOUR }],
     hold: spec.hold ?? null,
-    look: null,
+    waxWeighings: [],
+    word: null,
     lookedOverAt: null,
   }
   return deriveTree(facts, context, WEEK)

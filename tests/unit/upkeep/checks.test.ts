@@ -12,9 +12,19 @@ const inOrder: UpkeepFacts = {
   timeZone: 'Europe/London',
   worker: { pulseAt: NOW - 20_000, isAlive: true, missedMinutes: 0, failing: [], failedPasses: 0 },
   sensors: [
-    { name: 'Shell room', source: 'sensor', newestAt: NOW - 4 * MINUTE },
-    { name: 'Boat shed', source: 'typed', newestAt: NOW - 11 * HOUR },
+    { name: 'Shell room', source: 'sensor', newestAt: NOW - 4 * MINUTE, batteryPct: 80 },
+    { name: 'Boat shed', source: 'typed', newestAt: NOW - 11 * HOUR, batteryPct: null },
   ],
+  mqtt: {
+    isOn: true,
+    connectedSince: NOW - HOUR,
+    awaySince: null,
+    trouble: '',
+    isWorkerAlive: true,
+    readings: 288,
+    refused: 0,
+    dropped: 0,
+  },
   records: { sizeBytes: 63_700_000, walBytes: 4_000_000 },
   disks: [{ of: 'records', freeBytes: 12e9 }],
   pushes: { waiting: 0, dueSince: null, failingDevices: [], refusing: [] },
@@ -38,6 +48,11 @@ describe('upkeep', () => {
     expect(checks.filter(({ isInOrder, todo }) => !isInOrder || todo !== '')).toEqual([])
   })
 
+  it('says nothing of a broker where none is switched on, and waits a little for one that is started again', () => {
+    expect(upkeepChecks({ ...inOrder, mqtt: null }).map(({ key }) => key)).not.toContain('mqtt')
+    expect(lookAt({ mqtt: { ...inOrder.mqtt!, connectedSince: null, awaySince: NOW - MINUTE } })).toEqual([])
+  })
+
   it.each<[string, string, Partial<UpkeepFacts>, RegExp]>([
     ['worker', 'a worker that stands', { worker: { ...inOrder.worker, isAlive: false, pulseAt: NOW - 10 * MINUTE } }, /10.min ago/],
     [
@@ -49,10 +64,28 @@ describe('upkeep', () => {
     [
       'sensors',
       'a silent logger',
-      { sensors: [{ name: 'Shell room', source: 'sensor', newestAt: NOW - 31 * MINUTE }] },
+      { sensors: [{ name: 'Shell room', source: 'sensor', newestAt: NOW - 31 * MINUTE, batteryPct: null }] },
       /no reading since 09:29/,
     ],
-    ['sensors', 'a sensor that never sent', { sensors: [{ name: 'Loft', source: 'sensor', newestAt: null }] }, /Loft: no reading yet/],
+    [
+      'sensors',
+      'a sensor that never sent',
+      { sensors: [{ name: 'Loft', source: 'sensor', newestAt: null, batteryPct: null }] },
+      /Loft: no reading yet/,
+    ],
+    [
+      'sensors',
+      'a battery that runs out',
+      { sensors: [{ name: 'Shell room', source: 'sensor', newestAt: NOW, batteryPct: 15 }] },
+      /Shell room: battery 15.%\./,
+    ],
+    [
+      'mqtt',
+      'a broker that is away for long',
+      { mqtt: { ...inOrder.mqtt!, connectedSince: null, awaySince: NOW - 6 * MINUTE, trouble: 'No broker answers.' } },
+      /Not connected since 09:54\. No broker answers\./,
+    ],
+    ['mqtt', 'a topic that the broker keeps to itself', { mqtt: { ...inOrder.mqtt!, trouble: 'Not shop/#.' } }, /Not shop/],
     ['disk', 'under 1 GB', { disks: [{ of: 'backups', freeBytes: 999_000_000 }] }, /999.MB free for the backups/],
     ['records', 'a log that only grows', { records: { sizeBytes: 1e9, walBytes: 400e6 } }, /400.MB/],
     ['backups', 'a late backup', { backups: { ...inOrder.backups, newest: { at: NOW - 4 * HOUR, sizeBytes: 1 } } }, /06:00/],

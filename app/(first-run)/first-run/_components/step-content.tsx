@@ -99,7 +99,7 @@ async function Baths({ firstRun: { stock } }: StepProps) {
 }
 
 async function SensorStep({ firstRun: { stock }, member }: StepProps) {
-  const [sensors, { timeZone }] = await Promise.all([loadSensorList(), loadFoundry()])
+  const [sensors, { timeZone }] = await Promise.all([loadSensorList({ clock: systemClock }), loadFoundry()])
   return (
     <>
       <Head title="What reads the air?">
@@ -113,7 +113,7 @@ async function SensorStep({ firstRun: { stock }, member }: StepProps) {
 }
 
 async function Places({ firstRun: { stock } }: StepProps) {
-  const places = await loadPlaceList()
+  const places = await loadPlaceList({ clock: systemClock })
   return (
     <>
       <Head title="Where do trees hang?">

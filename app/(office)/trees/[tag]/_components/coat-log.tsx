@@ -6,6 +6,7 @@ import { stuccoWord } from '@/lib/format/coat-words'
 import { formatDuration } from '@/lib/format/duration'
 import { formatClock, formatDate, formatMoment } from '@/lib/format/local-time'
 import { formatPercent, formatSeconds, formatShare, fromSi, oneDecimal, UNIT_SIGNS, wholeNumber, type TempUnit } from '@/lib/format/units'
+import { evidenceWords } from '@/lib/trees/evidence-words'
 import type { CoatRow } from '@/lib/trees/detail-contract'
 
 type Dipped = NonNullable<CoatRow['on']>
@@ -49,11 +50,13 @@ function Remarks({ coat, now, timeZone }: { coat: Dipped } & Moment) {
         </li>
       )}
       {coat.deviations.length === 0 && coat.reason !== null && <li>Reason: {coat.reason}</li>}
-      {coat.looks.map((look) => (
-        <li key={look.at}>
-          <Icon name={look.verdict === 'looks dry' ? 'check' : 'drop'} />
+      {coat.evidence.map((piece) => (
+        <li key={piece.id}>
+          <Icon name={piece.verdict === 'dry' ? 'check' : 'drop'} />
           <span>
-            {look.by}, {formatMoment(look.at, now, timeZone)}: {look.verdict}, at {formatShare(look.moistureRatio)} by the clock
+            {piece.by}, {formatMoment(piece.at, now, timeZone)}: {evidenceWords(piece)}
+            {piece.moistureRatio !== null && `, at ${formatShare(piece.moistureRatio)} by the clock`}
+            {piece.withdrawnAt !== null && ' (withdrawn)'}
           </span>
         </li>
       ))}
@@ -61,7 +64,7 @@ function Remarks({ coat, now, timeZone }: { coat: Dipped } & Moment) {
   )
 }
 
-const hasRemarks = (coat: Dipped) => coat.deviations.length > 0 || coat.reason !== null || coat.looks.length > 0
+const hasRemarks = (coat: Dipped) => coat.deviations.length > 0 || coat.reason !== null || coat.evidence.length > 0
 
 function Planned({ row, now, timeZone }: { row: CoatRow } & Moment) {
   if (row.planned === null || row.planned.likelyAt === null) return <>to come, not in sight yet</>
