@@ -8,6 +8,7 @@ import { Delivery } from '@/models/delivery'
 import { DoseHour } from '@/models/dose-hour'
 import { Evidence } from '@/models/evidence'
 import { FanHours } from '@/models/fan-hours'
+import { FanSwitch } from '@/models/fan-switch'
 import { Foundry } from '@/models/foundry'
 import { FormerAir } from '@/models/former-air'
 import { FoundryEvent } from '@/models/foundry-event'
@@ -15,6 +16,10 @@ import { Hold } from '@/models/hold'
 import { JobRun } from '@/models/job-run'
 import { LookOver } from '@/models/look-over'
 import { Member } from '@/models/member'
+import { MqttBroker } from '@/models/mqtt-broker'
+import { MqttHour } from '@/models/mqtt-hour'
+import { MqttMessage } from '@/models/mqtt-message'
+import { MqttTopic } from '@/models/mqtt-topic'
 import { Notice } from '@/models/notice'
 import { Operation } from '@/models/operation'
 import { Piece } from '@/models/piece'
@@ -39,6 +44,7 @@ import { TreeEvent } from '@/models/tree-event'
 import { TreePiece } from '@/models/tree-piece'
 import { TreePlace } from '@/models/tree-place'
 import { TreeWatch } from '@/models/tree-watch'
+import { Upload } from '@/models/upload'
 import { Work } from '@/models/work'
 
 // Each names itself: a production build shortens class names, and of two models with one name the later replaces the earlier.
@@ -59,6 +65,7 @@ const models = [
   DoseHour,
   Place,
   FanHours,
+  FanSwitch,
   FormerAir,
   Bath,
   BathStir,
@@ -85,6 +92,11 @@ const models = [
   JobRun,
   FoundryEvent,
   Backup,
+  MqttBroker,
+  MqttTopic,
+  MqttMessage,
+  MqttHour,
+  Upload,
 ]
 for (const model of models) model.initialize(database)
 
@@ -147,6 +159,9 @@ Notice.belongsTo(Tree, { as: 'tree', foreignKey: 'treeId' })
 Notice.hasMany(Delivery, { as: 'deliveries', foreignKey: 'noticeId' })
 Delivery.belongsTo(Notice, { as: 'notice', foreignKey: 'noticeId' })
 PushSubscription.belongsTo(Member, { as: 'member', foreignKey: 'memberId' })
+MqttTopic.belongsTo(Sensor, { as: 'sensor', foreignKey: 'sensorId' })
+Upload.belongsTo(Sensor, { as: 'sensor', foreignKey: 'sensorId' })
+Upload.belongsTo(Member, { as: 'author', foreignKey: 'createdBy' })
 Member.hasMany(PushSubscription, { as: 'pushSubscriptions', foreignKey: 'memberId' })
 
 export {
@@ -167,6 +182,7 @@ export {
   DoseHour,
   Place,
   FanHours,
+  FanSwitch,
   FormerAir,
   Bath,
   BathStir,
@@ -193,4 +209,9 @@ export {
   JobRun,
   FoundryEvent,
   Backup,
+  MqttBroker,
+  MqttTopic,
+  MqttMessage,
+  MqttHour,
+  Upload,
 }

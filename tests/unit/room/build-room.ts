@@ -1,5 +1,5 @@
 import { roomFactor } from '@/lib/drying/room-factor'
-import type { RoomReading } from '@/lib/drying/types'
+import type { FanSwitch, RoomReading } from '@/lib/drying/types'
 import type { CoatKind, RecessClass, Stucco } from '@/lib/coats/vocabulary'
 import { buildClimate, type ClimateHour, type RoomClimate } from '@/lib/room/climate'
 import { shiftsFrom, type WorkCalendar } from '@/lib/schedule/shifts'
@@ -22,9 +22,18 @@ export const WEEK: WorkCalendar = {
 export type Air = { airTempC: number; relHumidityPct: number }
 export const RECIPE_AIR: Air = { airTempC: 21, relHumidityPct: 50 }
 
+/** The air of a test is one of a few, at hundreds of instants. */
+const factors = new Map<string, number>()
+function factorOf(air: Air): number {
+  const key = `${air.airTempC} ${air.relHumidityPct}`
+  const known = factors.get(key) ?? roomFactor(air, PRESSURE_PA)
+  factors.set(key, known)
+  return known
+}
+
 /** A whole hour of one air. */
 export function buildHour(hourStart: number, air: Air, overrides: Partial<ClimateHour> = {}): ClimateHour {
-  const factor = roomFactor(air, PRESSURE_PA)
+  const factor = factorOf(air)
   return {
     hourStart,
     dose: { likely: factor, low: factor, high: factor },
@@ -43,7 +52,7 @@ export function buildHour(hourStart: number, air: Air, overrides: Partial<Climat
 }
 
 export function buildRoomReading(measuredAt: number, air: Air, source: RoomReading['source'] = 'sensor'): RoomReading {
-  return { measuredAt, ...air, roomFactor: roomFactor(air, PRESSURE_PA), source }
+  return { measuredAt, ...air, roomFactor: factorOf(air), source }
 }
 
 /** A room whose air at an instant is told by a function, for a fortnight up to now; silent for the last `silentHours`. */
@@ -71,6 +80,7 @@ export function buildPlaceFacts(id: string, overrides: Partial<PlaceFacts> = {})
     isTypedOnly: false,
     airSpeedFansOnMps: 1,
     airSpeedFansOffMps: 1,
+    fanDuty: 1,
     fanHours: [],
     formerAirs: [],
     isRetired: false,
@@ -83,13 +93,21 @@ export function buildContext({
   places = [buildPlaceFacts('Rack')],
   now = NOW,
   calendar = WEEK,
-}: { climates?: RoomClimate[]; places?: PlaceFacts[]; now?: number; calendar?: WorkCalendar } = {}): FloorContext {
+  fanSwitches = new Map(),
+}: {
+  climates?: RoomClimate[]
+  places?: PlaceFacts[]
+  now?: number
+  calendar?: WorkCalendar
+  fanSwitches?: ReadonlyMap<string, readonly FanSwitch[]>
+} = {}): FloorContext {
   return floorContext({
     now,
     timeZone: TIME_ZONE,
     pressurePa: PRESSURE_PA,
     climates,
     places,
+    fanSwitches,
     shifts: shiftsFrom(now, calendar, TIME_ZONE),
     from: now - 14 * 24 * HOUR,
   })
