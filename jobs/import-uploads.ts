@@ -36,9 +36,9 @@ const AGAIN_AFTER_MS = 10_000
 const HOLD_MS = 40
 const FREE_MS = 30
 /** Fewer cost more by their number than they hold the lock shorter. */
-const FEWEST_ROWS = 100
+const FEWEST_ROWS = 200
 const MOST_ROWS = 2000
-const FIRST_ROWS = 200
+const FIRST_ROWS = 400
 /** All hours between the first and the last row of a chunk are looked at, so that one from another year would be dear. */
 const LONGEST_SPAN_MS = 7 * millisecondsInDay
 /** Without a good row among them. */

@@ -13,7 +13,9 @@ import type { UploadPreview } from '@/lib/uploads/upload-contract'
 import { Upload } from '@/models'
 
 const ROWS_SHOWN = 12
-const ROWS_TRIED = 600
+/** One after the other from the first on, and then so many from all over the rest. */
+const ROWS_TRIED = 400
+const ROWS_SPREAD = 200
 const SAMPLES = 3
 const REASONS_SHOWN = 5
 const LONGEST_CELL = 60
@@ -38,12 +40,19 @@ async function sampleOf(uploadId: string, encoding: UploadSettings['encoding'] |
 function dataOf({ head, spread }: Sample, { delimiter, linesBefore }: Pick<UploadSettings, 'delimiter' | 'linesBefore'>) {
   const all = cellsOf(head, delimiter).map((cells, index): Line => ({ number: index + 1, cells: cells ?? [] }))
   const isFilled = ({ cells }: { cells: readonly string[] }) => cells.some((cell) => cell.trim() !== '')
+  const filled = all.slice(linesBefore).filter(isFilled)
+  const rest = filled.slice(ROWS_TRIED)
+  // The last one is among them.
+  const step = Math.max(1, Math.ceil(rest.length / ROWS_SPREAD))
   return {
     all: all.map(({ cells }) => cells),
-    first: all.slice(linesBefore).filter(isFilled).slice(0, ROWS_TRIED),
-    spread: cellsOf(spread, delimiter)
-      .map((cells) => cells ?? [])
-      .filter((cells) => isFilled({ cells })),
+    first: filled.slice(0, ROWS_TRIED),
+    spread: [
+      ...rest.filter((_, index) => (rest.length - 1 - index) % step === 0).map(({ cells }) => cells),
+      ...cellsOf(spread, delimiter)
+        .map((cells) => cells ?? [])
+        .filter((cells) => isFilled({ cells })),
+    ],
   }
 }
 

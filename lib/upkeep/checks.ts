@@ -4,9 +4,6 @@ import type { ReadingSource } from '@/lib/drying/types'
 import { formatBytes } from '@/lib/format/bytes'
 import { formatDuration } from '@/lib/format/duration'
 import { formatMoment } from '@/lib/format/local-time'
-import { connectionWords, type ConnectionState } from '@/lib/mqtt/connection-words'
-import { formatPercent } from '@/lib/format/units'
-import { isBatteryLow } from '@/lib/room/sensor-warnings'
 import { formatPercent } from '@/lib/format/units'
 import { isBatteryLow } from '@/lib/room/sensor-warnings'
 import { connectionWords, type ConnectionState } from '@/lib/mqtt/connection-words'
@@ -24,9 +21,6 @@ export type UpkeepFacts = {
     failing: readonly { job: string; at: number; error: string }[]
     failedPasses: number
   }
-  /** The broker of loggers, counts of the last day; null where none is switched on. */
-  mqtt: (ConnectionState & { readings: number; refused: number; dropped: number }) | null
-  sensors: readonly { name: string; source: ReadingSource; newestAt: number | null; batteryPct: number | null }[]
   sensors: readonly { name: string; source: ReadingSource; newestAt: number | null; batteryPct: number | null }[]
   /** The broker of loggers, counts of the last day; null where none is switched on. */
   mqtt: (ConnectionState & { readings: number; refused: number; dropped: number }) | null

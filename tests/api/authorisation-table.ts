@@ -42,9 +42,6 @@ export const DOORS: readonly Door[] = [
   page('/settings/places', 'supervisor'),
   page('/settings/baths', 'supervisor'),
   page('/settings/sensors', 'supervisor'),
-  // The broker of loggers.
-  page('/settings/mqtt', 'supervisor'),
-  page('/settings/sensors/[sensorId]', 'supervisor', '/settings/sensors/1'),
   page('/settings/sensors/[sensorId]', 'supervisor', '/settings/sensors/1'),
   // The broker of loggers.
   page('/settings/mqtt', 'supervisor'),
@@ -89,6 +86,7 @@ export const DOORS: readonly Door[] = [
   door('GET', '/api/v1/uploads/[uploadId]', 'supervisor'),
   door('GET', '/api/v1/uploads/[uploadId]/preview', 'supervisor'),
   door('GET', '/api/v1/uploads/[uploadId]/errors.csv', 'supervisor'),
+  door('POST', '/api/v1/rooms/[sensorId]/what-if', 'crew', '/api/v1/rooms/1/what-if'),
   // The API's description, how to use it, and the history of every change.
   door('GET', '/api/v1/openapi.json', 'anybody'),
   page('/api-guide', 'supervisor'),
@@ -152,10 +150,6 @@ export const ACTIONS: readonly ActionRow[] = [
   { file: 'app/(office)/settings/mqtt/actions.ts', name: 'addTopicAction', act: 'sensors', who: 'supervisor' },
   { file: 'app/(office)/settings/mqtt/actions.ts', name: 'changeTopicAction', act: 'sensors', who: 'supervisor' },
   { file: 'app/(office)/settings/mqtt/actions.ts', name: 'removeTopicAction', act: 'sensors', who: 'supervisor' },
-  // Offsets and devices of a sensor.
-  { file: 'app/(office)/settings/sensors/actions.ts', name: 'saveOffsetAction', act: 'sensors', who: 'supervisor' },
-  { file: 'app/(office)/settings/sensors/actions.ts', name: 'removeOffsetAction', act: 'sensors', who: 'supervisor' },
-  { file: 'app/(office)/settings/sensors/actions.ts', name: 'replaceDeviceAction', act: 'sensors', who: 'supervisor' },
   // People and one's own page.
   { file: 'app/(office)/people/actions.ts', name: 'addMemberAction', act: 'people', who: 'owner' },
   { file: 'app/(office)/people/actions.ts', name: 'editMemberAction', act: 'people', who: 'owner' },

@@ -137,7 +137,7 @@ async function measureUpload(folder: string, rows: number): Promise<UploadFigure
 function linesOf({ rows, rowsPerSecond, shellRowsPerSecond, calm, during, load }: UploadFigures) {
   const milliseconds = ({ median, p95, max, count }: Delays) =>
     `${median.toFixed(0)}, ${p95.toFixed(0)}, ${max.toFixed(0)} ms (${count} dips)`
-  const kept = during.p95 - calm.median
+  const longer = during.p95 - calm.p95
   return [
     {
       what: `A file of ${rows.toLocaleString('en-GB')} rows, to the sqlite3 shell's .import`,
@@ -156,7 +156,7 @@ function linesOf({ rows, rowsPerSecond, shellRowsPerSecond, calm, during, load }
       value: milliseconds(during),
       ratio: during.median / calm.median,
       aim: 'p95 < 100 ms more',
-      isMet: kept < 100,
+      isMet: longer < 100,
       load,
     },
   ]

@@ -170,7 +170,7 @@ describe('the mark of the demo', () => {
     await dip(1, NOW)
     await dip(2, NOW + 8 * HOUR)
     const marks = async () => {
-      const room = await loadRoomPage({ sensorId: foundry.sensorId, tempUnit: 'degC', clock: stoppedClock(NOW + 9 * HOUR) })
+      const room = await loadRoomPage({ sensorId: foundry.sensorId, range: '48h', tempUnit: 'degC', clock: stoppedClock(NOW + 9 * HOUR) })
       return [
         (await loadRecipeList()).find(({ id }) => id === recipeId)?.isDemo,
         (await loadRecipeDetail(recipeId))?.isDemo,

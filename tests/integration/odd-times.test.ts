@@ -6,6 +6,7 @@ import type { Actor } from '@/lib/members/actor'
 import { loadFloor } from '@/lib/queries/floor'
 import { loadSensorList } from '@/lib/queries/sensor-list'
 import { DoseHour, Foundry, Place, Reading, Sensor } from '@/models'
+import { placeInputOf } from '@/tests/factories/settings'
 import {
   buildAir,
   buildFoundry,
@@ -72,7 +73,7 @@ describe('another sensor in the middle of a coat', () => {
     await buildAir(other.id, NOW - HOUR, NOW + 2 * HOUR, { airTempC: 21, relHumidityPct: 100 })
     const treeId = await dipped(NOW)
     const { name } = await Place.findByPk(placeId, { rejectOnEmpty: true })
-    const input = { name, sensorId: other.id, airSpeedFansOnMps: 1, airSpeedFansOffMps: 1, fans: [] }
+    const input = placeInputOf({ ...foundry, sensorId: other.id }, { name })
     await changePlace(placeId, input, 'now', { member: maud, clock: stoppedClock(NOW + HOUR) })
     expect(await doseAt(treeId, NOW + 2 * HOUR)).toBeCloseTo(1, 4)
   })

@@ -39,7 +39,7 @@ export function troubleOfStory(plan: DemoPlan): string[] {
       unless(tree.isHeld === (kind === 'lift'), `${touched[0]}: ${kind} for the second time`)
       tree.isHeld = kind === 'hold'
     }
-    if (kind === 'look' || kind === 'look-over' || kind === 'release') unless(tree.coats > 0, `${touched[0]}: ${kind} without a coat`)
+    if (kind === 'look-over' || kind === 'release') unless(tree.coats > 0, `${touched[0]}: ${kind} without a coat`)
     if (kind === 'intake') tree.hasIntake = true
     if (kind === 'release' || kind === 'scrap') tree.hasLeft = true
   }

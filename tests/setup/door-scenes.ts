@@ -94,6 +94,14 @@ export const SCENES: Record<string, (scene: Scene) => Promise<void>> = {
     await ask(operator, 'estimateDrying', { body: { ...body, climate: { constant: { airTempC: 21, relHumidityPct: 50 } } } })
     await ask(operator, 'estimateDrying', { body: { ...body, climate: {} } })
   },
+  weighRoomAir: async (scene) => {
+    const { ask, operator, foundry } = scene
+    await dippedTree(scene)
+    const params = { sensorId: String(foundry.sensorId) }
+    await ask(operator, 'weighRoomAir', { params, body: { airTempC: 30, relHumidityPct: 30, airSpeedMps: 3 } })
+    await ask(operator, 'weighRoomAir', { params, body: { fansOnAt: [foundry.placeId] } })
+    await ask(operator, 'weighRoomAir', { params: { sensorId: '4040' }, body: {} })
+  },
   exportClimate: async ({ ask, operator, foundry }) => {
     await ask(operator, 'exportClimate', { params: { sensorId: String(foundry.sensorId) } })
     await ask(operator, 'exportClimate', { params: { sensorId: '4040' } })

@@ -68,13 +68,6 @@ describe('upkeep', () => {
       /no reading since 09:29/,
     ],
     [
-      'mqtt',
-      'a broker that is away for long',
-      { mqtt: { ...inOrder.mqtt!, connectedSince: null, awaySince: NOW - 6 * MINUTE, trouble: 'No broker answers.' } },
-      /Not connected since 09:54\. No broker answers\./,
-    ],
-    ['mqtt', 'a topic that the broker keeps to itself', { mqtt: { ...inOrder.mqtt!, trouble: 'Not shop/#.' } }, /Not shop/],
-    [
       'sensors',
       'a sensor that never sent',
       { sensors: [{ name: 'Loft', source: 'sensor', newestAt: null, batteryPct: null }] },

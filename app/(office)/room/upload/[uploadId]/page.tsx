@@ -8,12 +8,15 @@ import { UploadProgress } from '@/app/(office)/room/upload/_components/upload-pr
 import { cancelUploadAction } from '@/app/(office)/room/upload/actions'
 import '@/app/(office)/room/upload/upload.css'
 import { systemClock } from '@/lib/core/clock'
+import { AppError } from '@/lib/core/errors'
 import { formatBytes } from '@/lib/format/bytes'
 import { formatMoment } from '@/lib/format/local-time'
 import { loadFoundry } from '@/lib/queries/load-foundry'
 import { loadUploadDetail } from '@/lib/queries/upload-list'
+import { loadUploadPreview } from '@/lib/queries/upload-preview'
 import { loadUploadStatus } from '@/lib/queries/upload-status'
 import { requireMemberPage } from '@/lib/server/auth'
+import type { UploadPreview } from '@/lib/uploads/upload-contract'
 import { isEnded } from '@/lib/uploads/upload-state'
 
 export const metadata: Metadata = { title: 'Readings from a file' }
@@ -26,6 +29,7 @@ export default async function UploadDetailPage({ params }: PageProps<'/room/uplo
   if (!upload || !status) notFound()
   const now = systemClock.now()
   const isDraft = upload.state === 'draft'
+  const guess = isDraft ? await guessOf(uploadId) : null
   return (
     <>
       <div className="page-head">
@@ -52,7 +56,19 @@ export default async function UploadDetailPage({ params }: PageProps<'/room/uplo
           </span>
         </p>
       )}
-      {isDraft ? <PreviewForm uploadId={uploadId} timeZone={timeZone} sensorName={upload.sensorName} /> : <UploadProgress known={status} />}
+      {!isDraft && <UploadProgress known={status} />}
+      {isDraft && guess === null && <p className="upload-waits">The file is not kept any more. Put it away, and bring it again.</p>}
+      {guess && <PreviewForm uploadId={uploadId} guess={guess} timeZone={timeZone} sensorName={upload.sensorName} />}
     </>
   )
+}
+
+/** How the file seems to be written; null when it is not kept any more. */
+async function guessOf(uploadId: string): Promise<UploadPreview | null> {
+  try {
+    return await loadUploadPreview(uploadId, null, { clock: systemClock })
+  } catch (error) {
+    if (error instanceof AppError && error.code === 'not_found') return null
+    throw error
+  }
 }

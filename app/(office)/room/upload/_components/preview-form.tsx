@@ -17,9 +17,9 @@ import { uploadPreview, type UploadPreview } from '@/lib/uploads/upload-contract
 import { FIXED_OFFSETS, uploadSettings, type UploadSettings } from '@/lib/uploads/upload-settings'
 import { countText } from '@/lib/uploads/upload-state'
 
-async function fetchPreview(uploadId: string, settings: UploadSettings | null): Promise<UploadPreview> {
-  const words = settings === null ? '' : `?${new URLSearchParams({ settings: JSON.stringify(settings) })}`
-  const response = await fetch(`/api/v1/uploads/${uploadId}/preview${words}`)
+async function fetchPreview(uploadId: string, settings: UploadSettings): Promise<UploadPreview> {
+  const words = new URLSearchParams({ settings: JSON.stringify(settings) })
+  const response = await fetch(`/api/v1/uploads/${uploadId}/preview?${words}`)
   if (!response.ok) throw new Error(`The preview answered ${response.status}.`)
   return uploadPreview.parse(await response.json())
 }
@@ -32,37 +32,34 @@ const DATE_WORDS = {
   'epoch ms': 'Milliseconds since 1970',
 } as const
 
+type PreviewFormProps = {
+  uploadId: string
+  /** How the file seems to be written. */
+  guess: UploadPreview
+  timeZone: string
+  sensorName: string
+}
+
 /** How a file is to be read, beside its first rows as they are read that way. */
-export function PreviewForm({ uploadId, timeZone, sensorName }: { uploadId: string; timeZone: string; sensorName: string }) {
+export function PreviewForm({ uploadId, guess, timeZone, sensorName }: PreviewFormProps) {
   const [changed, setChanged] = useState<UploadSettings | null>(null)
   const checked = changed === null ? null : uploadSettings.safeParse(changed)
   const asked = checked?.success ? checked.data : null
   const query = useQuery({
     queryKey: ['upload preview', uploadId, asked],
-    queryFn: () => fetchPreview(uploadId, asked),
+    queryFn: () => (asked === null ? guess : fetchPreview(uploadId, asked)),
     placeholderData: keepPreviousData,
     staleTime: Infinity,
+    // What was typed is no settings for a moment: the rows before it stay to be seen.
     enabled: checked === null || checked.success,
   })
-  const settings = changed ?? query.data?.settings ?? null
-  const form = useKeptForm(async () => {
-    if (settings === null) return { status: 'idle' }
-    return importUploadAction(uploadId, settings)
-  })
-  if (query.data === undefined || settings === null) {
-    return (
-      <p className="upload-waits" role="status">
-        {query.isError
-          ? 'The file cannot be looked at: it is not kept any more, or the server did not answer. Load this page again.'
-          : 'Looking at the file'}
-      </p>
-    )
-  }
-  const preview = query.data
+  const settings = changed ?? guess.settings
+  const form = useKeptForm(() => importUploadAction(uploadId, settings))
+  const preview = query.data ?? guess
   const errors = checked && !checked.success ? fieldErrors(checked.error) : form.state.status === 'invalid' ? form.state.fields : {}
   const change = (part: Partial<UploadSettings>) => setChanged({ ...settings, ...part })
   const isOpen = settings.dateForm === null
-  const isReady = !isOpen && preview.good > 0 && Object.keys(errors).length === 0 && !query.isPlaceholderData
+  const isReady = !isOpen && preview.good > 0 && Object.keys(errors).length === 0 && !query.isPlaceholderData && !query.isError
   return (
     <form {...form.formProps} className="upload-settings">
       <section className="plate">
@@ -80,7 +77,14 @@ export function PreviewForm({ uploadId, timeZone, sensorName }: { uploadId: stri
           <p>times in {timeZone}</p>
         </header>
         <div className="plate-body">
-          <Verdict preview={preview} isOpen={isOpen} timeZone={timeZone} />
+          {query.isError ? (
+            <p className="field-error" role="status">
+              <Icon name="warning" />
+              <span>No answer from the server: these rows are read as before. Change something, or load the page again.</span>
+            </p>
+          ) : (
+            <Verdict preview={preview} isOpen={isOpen} timeZone={timeZone} />
+          )}
         </div>
         <PreviewRows preview={preview} settings={settings} timeZone={timeZone} />
       </section>
