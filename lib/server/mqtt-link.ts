@@ -1,5 +1,6 @@
 import { connect, type IClientOptions } from 'mqtt'
 import { sha256Hex } from '@/lib/core/ids'
+import { log } from '@/lib/core/log'
 import { brokerAddressText, type BrokerAddress } from '@/lib/mqtt/broker-input'
 import { connectionFaultWords, statusTopic, type ConnectionFault } from '@/lib/mqtt/connection-words'
 import { LARGEST_MESSAGE_BYTES } from '@/lib/mqtt/read-message'
@@ -116,7 +117,10 @@ const isDone = async (act: Promise<boolean>): Promise<boolean> => (await within(
 async function within<Result>(limitMs: number, act: Promise<Result>): Promise<Result | undefined> {
   let timer: NodeJS.Timeout | undefined
   const patience = new Promise<undefined>((resolve) => {
-    timer = setTimeout(() => resolve(undefined), limitMs)
+    timer = setTimeout(() => {
+      log('mqtt.no-answer', { afterMs: limitMs })
+      resolve(undefined)
+    }, limitMs)
   })
   try {
     return await Promise.race([act.catch(() => undefined), patience])

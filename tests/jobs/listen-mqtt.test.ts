@@ -43,7 +43,7 @@ const messageOn = (topic: string) => MqttMessage.findByPk(topic)
 const state = async () => (await loadMqttPage({ clock })).state
 
 /** Long for a machine that does other things too; usually it takes some ten milliseconds. */
-const until = (check: () => unknown) => vi.waitFor(check, { timeout: 10_000, interval: 20 })
+const until = (check: () => unknown) => vi.waitFor(check, { timeout: 20_000, interval: 20 })
 
 let second = Math.floor(Date.now() / 1000) - 3600
 /** A message of a moment of its own in the last hour. */
