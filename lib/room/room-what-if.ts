@@ -1,5 +1,5 @@
 import { DEFAULT_FLAG_LIMITS, type Flag } from '@/lib/drying/flags'
-import { placeFactor } from '@/lib/drying/place-factor'
+import { fanFactors, placeFactor } from '@/lib/drying/place-factor'
 import { roomFactor } from '@/lib/drying/room-factor'
 import type { CoatCall } from '@/lib/drying/types'
 import type { RoomClimate } from '@/lib/room/climate'
@@ -129,18 +129,14 @@ function contextWith(
 ): FloorContext {
   const isAirTurned = (airTempC !== undefined || relHumidityPct !== undefined) && hours.length > 0
   const turned = isAirTurned ? withHours(context, climate, hours, stretch) : context
-  const withSpeed = (base: FloorContext, ids: readonly string[], speedMps: number) =>
-    withPlaceFactor(base, ids, placeFactor(speedMps, context.pressurePa), stretch)
+  const withFactor = (base: FloorContext, place: PlaceFacts, factor: number) => withPlaceFactor(base, [place.id], factor, stretch)
   if (airSpeedMps !== undefined) {
-    return withSpeed(
-      turned,
-      places.map((place) => place.id),
-      airSpeedMps,
-    )
+    const factor = placeFactor(airSpeedMps, context.pressurePa)
+    return places.reduce((base, place) => withFactor(base, place, factor), turned)
   }
   return places
     .filter((place) => fansOnAt?.includes(place.id))
-    .reduce((base, place) => withSpeed(base, [place.id], place.airSpeedFansOnMps), turned)
+    .reduce((base, place) => withFactor(base, place, fanFactors(place, context.pressurePa).on), turned)
 }
 
 type Weighed = {

@@ -87,9 +87,11 @@ describe('hours of some local days', () => {
     await buildAir(sensorId, day, day + 6 * HOUR - 5 * MINUTE, { airTempC: 19, relHumidityPct: 62 })
     await buildAir(sensorId, day + 6 * HOUR, day + 24 * HOUR, { airTempC: 22, relHumidityPct: 50 })
     const [span] = await loadClimateSpans(sensorId, [{ from: day, to: day + 24 * HOUR }], BAND)
-    expect(span).toMatchObject({ minAirTempC: 19, maxAirTempC: 22, minRelHumidityPct: 50, maxRelHumidityPct: 62 })
-    expect(span!.meanAirTempC).toBeCloseTo((6 * 19 + 18 * 22) / 24, 6)
-    expect(span!.meanRelHumidityPct).toBeCloseTo((6 * 62 + 18 * 50) / 24, 6)
+    expect([span!.minAirTempC, span!.maxAirTempC]).toEqual([19, 22])
+    expect(span!.minRelHumidityPct).toBeCloseTo(50, 5)
+    expect(span!.maxRelHumidityPct).toBeCloseTo(62, 5)
+    expect(span!.meanAirTempC).toBeCloseTo((6 * 19 + 18 * 22) / 24, 5)
+    expect(span!.meanRelHumidityPct).toBeCloseTo((6 * 62 + 18 * 50) / 24, 5)
     expect(span!.outOfTempMinutes).toBeCloseTo(6 * 60, 6)
     expect(span!.outOfRhMinutes).toBeCloseTo(6 * 60, 6)
   })
@@ -115,10 +117,11 @@ describe('a fortnight and a year', () => {
 
   beforeAll(async () => {
     sensorId = await newSensor('Long')
+    // Readings first: they write the hours around them anew.
+    await buildAir(sensorId, NOW - 2 * HOUR, NOW, { airTempC: 19, relHumidityPct: 50 })
     await layHours(sensorId, NOW - 40 * 24 * HOUR, NOW - 12 * 24 * HOUR, 21)
     // Five days without a reading.
     await layHours(sensorId, NOW - 7 * 24 * HOUR, NOW - 2 * HOUR, 19)
-    await buildAir(sensorId, NOW - 2 * HOUR, NOW, { airTempC: 19, relHumidityPct: 50 })
   })
 
   it('draw one point an hour, and leave open what was not read', async () => {

@@ -132,6 +132,15 @@ describe('another air', () => {
     expect(proposal).toBe('Fans left on at Rack: 1 more tree dry before the next opening (Wed 07:00).')
   })
 
+  it('leaves fans on for the share of the time that they run', () => {
+    const likelyAt = (fanDuty: number) => {
+      const fans = { airSpeedFansOnMps: 1.5, airSpeedFansOffMps: 0.1, fanDuty, fanHours: WEEKDAY_FANS }
+      return weigh({ fansOnAt: ['Rack'] }, { places: [buildPlaceFacts('Rack', fans)], trees: [{ need: 12 }] }).answer.trees[0]!.after!
+        .likelyAt!
+    }
+    expect(likelyAt(0.3)).toBeGreaterThan(likelyAt(1) + 2 * HOUR)
+  })
+
   it('knows nothing of a room that nobody reads', () => {
     const { answer, proposal } = weigh({ relHumidityPct: 40 }, { silentHours: 5 })
     expect(answer.trees).toMatchObject([{ before: null, after: null, readyBefore: 'not in sight', readyAfter: 'not in sight' }])

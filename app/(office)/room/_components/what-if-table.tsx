@@ -16,7 +16,9 @@ const LEAST_MS = 150_000
 export function WhatIfTable({ answer, timeZone }: { answer: RoomWhatIfAnswer; timeZone: string }) {
   const { trees, now } = answer
   if (trees.length === 0) return null
-  const moment = { now, timeZone }
+  // Where all of them are, the verdict says so once.
+  const isMixed = trees.some((tree) => tree.isUncalibrated) && trees.some((tree) => !tree.isUncalibrated)
+  const moment = { isMixed, now, timeZone }
   return (
     <div className="scroll-x">
       <Rows trees={trees.slice(0, FIRST_ROWS)} {...moment} />
@@ -32,7 +34,7 @@ export function WhatIfTable({ answer, timeZone }: { answer: RoomWhatIfAnswer; ti
 
 type Moment = { now: number; timeZone: string }
 
-function Rows({ trees, now, timeZone }: { trees: readonly WhatIfTree[] } & Moment) {
+function Rows({ trees, isMixed, now, timeZone }: { trees: readonly WhatIfTree[]; isMixed: boolean } & Moment) {
   return (
     <table className="table effect-table what-if-table" role="table">
       <thead role="rowgroup">
@@ -56,7 +58,7 @@ function Rows({ trees, now, timeZone }: { trees: readonly WhatIfTree[] } & Momen
               </Link>
               <span className="block text-14 font-normal text-soot">
                 coat {tree.coatNumber}, {tree.placeName}
-                {tree.isUncalibrated && `, ${NOT_CALIBRATED}`}
+                {isMixed && tree.isUncalibrated && `, ${NOT_CALIBRATED}`}
               </span>
             </th>
             <PairCell head="As it stands" pair={tree.before} guard={tree.guard} now={now} timeZone={timeZone} />
