@@ -153,7 +153,9 @@ describe('the fans of a place', () => {
   it('stand on the Room page with the air at the trees', async () => {
     const { placeId } = await dryingTree(fanInput({ fanDuty: 0.3 }))
     const now = async () =>
-      (await loadRoomPage({ sensorId: null, range: '48h', tempUnit: 'degC', clock: stoppedClock() })).placesNow.find(({ id }) => id === placeId)
+      (await loadRoomPage({ sensorId: null, range: '48h', tempUnit: 'degC', clock: stoppedClock() })).placesNow.find(
+        ({ id }) => id === placeId,
+      )
     expect(await now()).toMatchObject({ treeCount: 1, speed: '1.5 m/s for 30 % of the time, else 0.1 m/s', fans: { isOn: true } })
     await say(placeId, 'off')
     expect(await now()).toMatchObject({ speed: '0.1 m/s', fans: { isOn: false, said: { by: 'Maud' } } })
