@@ -1,13 +1,5 @@
 import { millisecondsInDay } from 'date-fns/constants'
-import {
-  claimUpload,
-  endUpload,
-  LostUpload,
-  recordChunk,
-  releaseUpload,
-  type ClaimedUpload,
-  type UploadChunk,
-} from '@/lib/commands/work-on-upload'
+import { claimUpload, endUpload, LostUpload, recordChunk, releaseUpload, type ClaimedUpload } from '@/lib/commands/work-on-upload'
 import type { Clock } from '@/lib/core/clock'
 import { log } from '@/lib/core/log'
 import { hasOpenUpload } from '@/lib/queries/upload-status'
@@ -155,8 +147,9 @@ function chunksOf(upload: ClaimedUpload, errors: ErrorsWriter, { clock, monotoni
     if (written > MOST_ERRORS_BYTES) return
     if (written === 0) errorsText = errorsHead
     errorsText += errorLine(line.number, reason, line.cells ?? [])
-    if (errorsBytes + errorsText.length > MOST_ERRORS_BYTES)
+    if (errorsBytes + errorsText.length > MOST_ERRORS_BYTES) {
       errorsText += errorLine(null, 'There are more. They are counted, and not listed.', [])
+    }
   }
 
   const take = async (line: FileLine) => {

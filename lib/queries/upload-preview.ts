@@ -3,8 +3,7 @@ import { AppError } from '@/lib/core/errors'
 import { loadFoundry } from '@/lib/queries/load-foundry'
 import { rowsFile } from '@/lib/server/upload-files'
 import { cellsOf, readHead, sampleFile } from '@/lib/server/upload-lines'
-import { guessDateForm, guessSettings, namesOf, timesOf } from '@/lib/uploads/guess-settings'
-import { guessDelimiter } from '@/lib/uploads/guess-settings'
+import { guessDateForm, guessDelimiter, guessSettings, namesOf, timesOf } from '@/lib/uploads/guess-settings'
 import { guessEncoding } from '@/lib/uploads/guess-encoding'
 import { readRow, type RowOutcome } from '@/lib/uploads/read-row'
 import { rowOrder } from '@/lib/uploads/row-order'
@@ -36,10 +35,11 @@ async function sampleOf(uploadId: string, encoding: UploadSettings['encoding'] |
   }
 }
 
+const isFilled = ({ cells }: { cells: readonly string[] }) => cells.some((cell) => cell.trim() !== '')
+
 /** Rows of data of a sample, as the settings see them: blank lines left out. Those from further down have no line number. */
 function dataOf({ head, spread }: Sample, { delimiter, linesBefore }: Pick<UploadSettings, 'delimiter' | 'linesBefore'>) {
   const all = cellsOf(head, delimiter).map((cells, index): Line => ({ number: index + 1, cells: cells ?? [] }))
-  const isFilled = ({ cells }: { cells: readonly string[] }) => cells.some((cell) => cell.trim() !== '')
   const filled = all.slice(linesBefore).filter(isFilled)
   const rest = filled.slice(ROWS_TRIED)
   // The last one is among them.

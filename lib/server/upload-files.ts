@@ -68,8 +68,9 @@ export async function keepBody(
 
 function refusalOf(error: unknown): unknown {
   const code = error instanceof Error && 'code' in error ? String(error.code) : ''
-  if (code === 'ENOSPC')
+  if (code === 'ENOSPC') {
     return new AppError('unavailable', 'The disk of the server is full. Nothing was saved. Free some space, then try again.')
+  }
   const isGone = error instanceof Error && (error.name === 'AbortError' || error.name === 'ResponseAborted')
   if (isGone || code === 'ECONNRESET') return new AppError('malformed', 'The file did not come through to its end.')
   return error

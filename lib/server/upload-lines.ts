@@ -116,10 +116,10 @@ async function* textLines(handle: FileHandle, encoding: Encoding, from: FilePlac
     if (lines.length > 0) yield lines
     if (bytesRead === 0) return
     // Of a line without an end only its length is kept.
-    const open = bytes.length - start
-    if (open > LONGEST_LINE_BYTES) isSkipping = true
+    const unended = bytes.length - start
+    if (unended > LONGEST_LINE_BYTES) isSkipping = true
     // An odd byte stays, so that pairs stay pairs.
-    const kept = isSkipping ? (encoding === 'utf-16le' ? open % 2 : 0) : open
+    const kept = isSkipping ? (encoding === 'utf-16le' ? unended % 2 : 0) : unended
     position += bytes.length - kept
     rest = bytes.subarray(bytes.length - kept)
   }
@@ -159,7 +159,8 @@ export async function sampleFile(file: string, encoding: Encoding): Promise<File
     const { size } = await handle.stat()
     const head = wholeLines(await readAt(handle, 0, HEAD_BYTES), encoding, { isStart: true, isEnd: size <= HEAD_BYTES })
     const spread: string[] = []
-    for (let place = 1; size > HEAD_BYTES && place <= SPREAD_PLACES; place += 1) {
+    const places = size > HEAD_BYTES ? SPREAD_PLACES : 0
+    for (let place = 1; place <= places; place += 1) {
       const position = Math.floor(HEAD_BYTES + ((size - HEAD_BYTES - SPREAD_BYTES) * place) / SPREAD_PLACES)
       // Pairs of bytes begin at even places.
       const bytes = await readAt(handle, Math.max(0, position - (position % 2)), SPREAD_BYTES)

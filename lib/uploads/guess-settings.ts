@@ -207,8 +207,9 @@ export function guessZone(
   )
   if (moments.length > 0 && moments.every(({ offsetMinutes }) => offsetMinutes !== null)) return form?.startsWith('epoch') ? 'UTC' : 'rows'
   const [, sign, hours = '', minutes = '00'] = NAMED_OFFSET.exec(preamble) ?? []
-  if (sign !== undefined && Number(hours) <= 14)
+  if (sign !== undefined && Number(hours) <= 14) {
     return Number(hours) + Number(minutes) === 0 ? 'UTC' : `${sign}${hours.padStart(2, '0')}:${minutes}`
+  }
   return /\b(?:UTC|GMT)\b/i.test(preamble) ? 'UTC' : 'foundry'
 }
 
@@ -252,13 +253,14 @@ export function timesOf(
     .filter(({ date }) => date.trim() !== '')
 }
 
+const filled = (cells: readonly string[]) => cells.filter((cell) => cell.trim() !== '').length
+
 /**
  * Names of the columns: the last line before the data with more than one cell; a line of units under it is joined to it.
  *
  * @returns an empty list where the data has no names over it.
  */
 export function namesOf(rows: readonly (readonly string[])[], linesBefore: number): string[] {
-  const filled = (cells: readonly string[]) => cells.filter((cell) => cell.trim() !== '').length
   const above = rows.slice(0, linesBefore).filter((cells) => filled(cells) > 0)
   const last = above.at(-1)
   if (!last || filled(last) < 2) return []

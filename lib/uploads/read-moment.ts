@@ -18,12 +18,13 @@ const fullYear = (text: string) => (text.length > 2 ? Number(text) : Number(text
 
 const monthOf = (text: string) => MONTHS.indexOf(text.slice(0, 3).toLowerCase()) + 1
 
+const isNamed = (part: string) => /^[a-z]/i.test(part)
+
 /** Date and what is left of the text behind it; null where no such date is written. */
 function readDate(text: string, form: DateForm): { dayMs: number; rest: string } | null {
   const compact = form === 'ymd' ? COMPACT.exec(text) : null
   const [all, one = '', two = '', three = ''] = compact ?? DATE.exec(text) ?? []
   if (all === undefined) return null
-  const isNamed = (part: string) => /^[a-z]/i.test(part)
   let [year, month, day] = ['', 0, 0]
   // A month by its name leaves nothing to choose.
   if (isNamed(one)) [year, month, day] = [three, monthOf(one), Number(two)]

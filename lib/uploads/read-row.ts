@@ -85,8 +85,9 @@ function measuredAtOf(cells: readonly string[], { settings, timeZone, order, las
   const at = instantOf(moment, { isEpoch: dateForm.startsWith('epoch'), zone, timeZone, order, lastAt })
   if (at === null && zone === 'rows') return `The time ‘${written}’ does not say its zone.`
   if (at === null) return `The time ‘${written}’ did not exist: the clocks were set forward.`
-  if (at > now + FUTURE_LIMIT_MS)
+  if (at > now + FUTURE_LIMIT_MS) {
     return `The time ‘${written}’ lies ahead: the clock of the logger, the zone or the form of the dates is wrong.`
+  }
   if (at < NO_CLOCK_BEFORE) return `The time ‘${written}’ lies before the year 2000: the clock of the logger was not set.`
   return at
 }

@@ -102,12 +102,29 @@ async function measureUpload(folder: string, rows: number): Promise<UploadFigure
   }
 
   const settings = {
-    ...{ encoding: 'utf-8', delimiter: ',', hasDecimalComma: false, linesBefore: 1, dateColumn: 0, clockColumn: null, dateForm: 'ymd' },
-    ...{ zone: 'rows', tempColumn: 1, tempUnit: 'degC', humidityColumn: 2, pressureColumn: null, pressureUnit: 'hPa' },
+    encoding: 'utf-8',
+    delimiter: ',',
+    hasDecimalComma: false,
+    linesBefore: 1,
+    dateColumn: 0,
+    clockColumn: null,
+    dateForm: 'ymd',
+    zone: 'rows',
+    tempColumn: 1,
+    tempUnit: 'degC',
+    humidityColumn: 2,
+    pressureColumn: null,
+    pressureUnit: 'hPa',
   }
   await Upload.create({
-    ...{ id, sensorId: foundry.sensorId, fileName: 'a-million.csv', sha256: '0'.repeat(64), sizeBytes: statSync(file).size },
-    ...{ state: 'waiting', settings: { settings, order: 'oldest first' }, createdAt: Date.now() },
+    id,
+    sensorId: foundry.sensorId,
+    fileName: 'a-million.csv',
+    sha256: '0'.repeat(64),
+    sizeBytes: statSync(file).size,
+    state: 'waiting',
+    settings: { settings, order: 'oldest first' },
+    createdAt: Date.now(),
   })
   const worker = startProgram(['--import', 'tsx', 'jobs/worker.ts'], testEnv(dataDir))
   const during: number[] = []

@@ -124,7 +124,7 @@ describe('files as loggers write them', () => {
     expect(isDateAmbiguous).toBe(false)
     expect(new Date(rows[0]?.measuredAt ?? 0).toISOString()).toBe('2026-10-13T13:05:00.000Z')
     expect(rows[0]).toMatchObject({ airTempC: expect.closeTo(21.4, 6), relHumidityPct: 52 })
-    if (pressurePa !== undefined) expect(rows[0]?.pressurePa).toBeCloseTo(pressurePa, 6)
+    expect(rows[0]?.pressurePa ?? 0).toBeCloseTo(pressurePa ?? 0, 6)
     expect(rows.length).toBeGreaterThanOrEqual(2)
   })
 

@@ -28,12 +28,11 @@ export type RoomWhatIfProps = {
 
 const AS_IT_COMES: Choice = { until: 'opening' }
 
-async function ask(sensorId: number, choice: Choice, signal: AbortSignal): Promise<RoomWhatIfAnswer> {
+async function ask(sensorId: number, choice: Choice): Promise<RoomWhatIfAnswer> {
   const response = await fetch(`/api/v1/rooms/${sensorId}/what-if`, {
     method: 'POST',
     headers: { 'content-type': 'application/json' },
     body: JSON.stringify(choice),
-    signal,
   })
   if (!response.ok) throw new Error(`The what-if was refused: ${response.status}.`)
   return roomWhatIfAnswer.parse(await response.json())
@@ -46,7 +45,7 @@ export function RoomWhatIf({ sensorId, air, places, closesAt, opensAt, now, time
   const { data, error, isFetching } = useQuery({
     // The page is made anew every minute: so are the times that are compared.
     queryKey: ['room what-if', sensorId, resting, now],
-    queryFn: async ({ signal }) => ({ answer: await ask(sensorId, resting, signal), choice: resting }),
+    queryFn: async () => ({ answer: await ask(sensorId, resting), choice: resting }),
     placeholderData: keepPreviousData,
     enabled: isTurned(resting),
     staleTime: Infinity,

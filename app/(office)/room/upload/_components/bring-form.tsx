@@ -8,6 +8,7 @@ import { Field, SelectField } from '@/app/_components/field'
 import { Icon } from '@/app/_components/icons'
 import { Key } from '@/app/_components/key'
 import { formatBytes } from '@/lib/format/bytes'
+import { formText } from '@/lib/format/form-text'
 import { LARGEST_UPLOAD_BYTES } from '@/lib/uploads/upload-contract'
 
 const problemDocument = z.object({ detail: z.string() })
@@ -51,7 +52,7 @@ export function BringForm({ sensors, chosenId }: { sensors: readonly { id: numbe
       onSubmit={(event) => {
         event.preventDefault()
         if (isBusy) return
-        const sensorId = String(new FormData(event.currentTarget).get('sensorId') ?? '')
+        const sensorId = formText(new FormData(event.currentTarget), 'sensorId')
         const found: Complaints = {
           ...(sensorId === '' && { sensorId: 'Choose the sensor that measured it.' }),
           ...(file === null && { file: 'Choose a file.' }),

@@ -11,10 +11,10 @@ import { useKeptForm } from '@/app/(office)/_components/use-kept-form'
 import { PreviewRows } from '@/app/(office)/room/upload/_components/preview-rows'
 import { importUploadAction } from '@/app/(office)/room/upload/actions'
 import { formatClock, formatDateOfYear } from '@/lib/format/local-time'
-import { UNIT_SIGNS } from '@/lib/format/units'
+import { TEMP_UNITS, UNIT_SIGNS } from '@/lib/format/units'
 import { fieldErrors } from '@/lib/trees/tree-form-values'
 import { uploadPreview, type UploadPreview } from '@/lib/uploads/upload-contract'
-import { FIXED_OFFSETS, uploadSettings, type UploadSettings } from '@/lib/uploads/upload-settings'
+import { DATE_FORMS, DELIMITERS, ENCODINGS, FIXED_OFFSETS, uploadSettings, type UploadSettings } from '@/lib/uploads/upload-settings'
 import { countText } from '@/lib/uploads/upload-state'
 
 async function fetchPreview(uploadId: string, settings: UploadSettings): Promise<UploadPreview> {
@@ -156,7 +156,6 @@ function SettingsFields({ settings, preview, errors, change, timeZone }: FieldsP
       None
     </option>
   )
-  const toColumn = (value: string) => (value === '' ? null : Number(value))
   const isEpoch = settings.dateForm?.startsWith('epoch') ?? false
   return (
     <div className="upload-fields">
@@ -164,7 +163,7 @@ function SettingsFields({ settings, preview, errors, change, timeZone }: FieldsP
         label="Between the columns"
         value={settings.delimiter}
         error={errors['delimiter']}
-        onChange={(event) => change({ delimiter: event.target.value as UploadSettings['delimiter'] })}
+        onChange={(event) => change({ delimiter: oneOf(DELIMITERS, event.target.value) })}
       >
         <option value=",">Comma</option>
         <option value=";">Semicolon</option>
@@ -183,7 +182,7 @@ function SettingsFields({ settings, preview, errors, change, timeZone }: FieldsP
         label="Letters"
         value={settings.encoding}
         error={errors['encoding']}
-        onChange={(event) => change({ encoding: event.target.value as UploadSettings['encoding'] })}
+        onChange={(event) => change({ encoding: oneOf(ENCODINGS, event.target.value) })}
       >
         <option value="utf-8">UTF-8</option>
         <option value="utf-16le">UTF-16</option>
@@ -217,7 +216,7 @@ function SettingsFields({ settings, preview, errors, change, timeZone }: FieldsP
               : 'Choose how the dates are written.'
             : errors['dateForm']
         }
-        onChange={(event) => change({ dateForm: event.target.value === '' ? null : (event.target.value as UploadSettings['dateForm']) })}
+        onChange={(event) => change({ dateForm: oneOf(DATE_FORMS, event.target.value) })}
       >
         <option value="" disabled>
           Choose
@@ -260,7 +259,7 @@ function SettingsFields({ settings, preview, errors, change, timeZone }: FieldsP
         value={settings.tempUnit}
         error={errors['tempUnit']}
         hint={units.temp === settings.tempUnit ? undefined : `Shown below in ${UNIT_SIGNS[units.temp]}, as you read it.`}
-        onChange={(event) => change({ tempUnit: event.target.value as UploadSettings['tempUnit'] })}
+        onChange={(event) => change({ tempUnit: oneOf(TEMP_UNITS, event.target.value) })}
       >
         <option value="degC">{UNIT_SIGNS.degC}</option>
         <option value="degF">{UNIT_SIGNS.degF}</option>
@@ -295,6 +294,12 @@ function SettingsFields({ settings, preview, errors, change, timeZone }: FieldsP
     </div>
   )
 }
+
+const toColumn = (value: string) => (value === '' ? null : Number(value))
+
+/** The chosen one of a list; its first where the browser names none of them. */
+const oneOf = <Word extends string>(words: readonly [Word, ...Word[]], chosen: string): Word =>
+  words.find((word) => word === chosen) ?? words[0]
 
 function columnWords(index: number, column: UploadPreview['columns'][number] | undefined): string {
   if (column === undefined) return `Column ${index + 1}: not in the file`

@@ -16,6 +16,7 @@ export function PreviewRows({ preview, settings, timeZone }: { preview: UploadPr
   }
   return (
     // A wide file is moved sideways in its own frame.
+    // oxlint-disable-next-line jsx-a11y/no-noninteractive-tabindex -- a frame that is moved sideways has to be reached by the keyboard
     <div className="upload-frame" tabIndex={0} role="region" aria-label="Rows of the file">
       <table className="table upload-rows">
         <thead>

@@ -37,7 +37,9 @@ export function UploadRows({ uploads, now, timeZone }: { uploads: readonly Uploa
               <StateWords upload={upload} />
             </td>
             {upload.state === 'draft' ? (
-              <td colSpan={4} />
+              <td colSpan={4} className="right">
+                nothing of it counts yet
+              </td>
             ) : (
               <>
                 <Count words="new" count={upload.added} />
