@@ -37,24 +37,21 @@ describe('evidence of any sort', () => {
         expect(thetaPosterior(before, [...known, dry]).mean).toBeLessThanOrEqual(mean + GRID)
         expect(thetaPosterior(before, [...known, notYet]).mean).toBeGreaterThanOrEqual(mean - GRID)
       }),
-      { numRuns: 100 },
+      { numRuns: 60 },
     )
   })
 
-  it('narrows the spread, and each further piece narrows it more', () => {
+  // Of the prior, a Gauss, every log-concave likelihood narrows the spread (Brascamp and Lieb 1976). A piece that denies the one before
+  // may widen what that one had left.
+  it('leaves a spread no wider than the prior', () => {
     fc.assert(
       fc.property(prior, several, (before, seen) => {
-        let { sd } = before
-        for (let count = 1; count <= seen.length; count += 1) {
-          const after = thetaPosterior(before, seen.slice(0, count)).sd
-          expect(after).toBeLessThanOrEqual(sd + GRID)
-          sd = after
-        }
+        expect(thetaPosterior(before, seen).sd).toBeLessThanOrEqual(before.sd + GRID)
         // Something that lies within the reach of the prior says something.
         const [first] = seen
         if (first?.kind === 'value') expect(thetaPosterior(before, [first]).sd).toBeLessThan(before.sd * (1 - 1e-3))
       }),
-      { numRuns: 80 },
+      { numRuns: 60 },
     )
   })
 
