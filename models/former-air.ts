@@ -1,4 +1,4 @@
-import { DataTypes, Model, type InferAttributes, type InferCreationAttributes, type Sequelize } from 'sequelize'
+import { DataTypes, Model, type CreationOptional, type InferAttributes, type InferCreationAttributes, type Sequelize } from 'sequelize'
 import type { FanHours } from '@/lib/drying/types'
 import { json } from '@/models/columns'
 
@@ -9,6 +9,7 @@ export class FormerAir extends Model<InferAttributes<FormerAir>, InferCreationAt
   declare until: number
   declare airSpeedFansOnMps: number
   declare airSpeedFansOffMps: number
+  declare fanDuty: CreationOptional<number>
   declare sensorId: number
   declare fanHours: FanHours[]
 
@@ -20,6 +21,7 @@ export class FormerAir extends Model<InferAttributes<FormerAir>, InferCreationAt
         until: { type: DataTypes.INTEGER, allowNull: false },
         airSpeedFansOnMps: { type: DataTypes.DOUBLE, allowNull: false },
         airSpeedFansOffMps: { type: DataTypes.DOUBLE, allowNull: false },
+        fanDuty: { type: DataTypes.DOUBLE, allowNull: false, defaultValue: 1 },
         sensorId: { type: DataTypes.INTEGER, allowNull: false },
         fanHours: json('fanHours'),
       },

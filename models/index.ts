@@ -8,6 +8,7 @@ import { Delivery } from '@/models/delivery'
 import { DoseHour } from '@/models/dose-hour'
 import { Evidence } from '@/models/evidence'
 import { FanHours } from '@/models/fan-hours'
+import { FanSwitch } from '@/models/fan-switch'
 import { Foundry } from '@/models/foundry'
 import { FormerAir } from '@/models/former-air'
 import { FoundryEvent } from '@/models/foundry-event'
@@ -53,6 +54,7 @@ const models = [
   DoseHour,
   Place,
   FanHours,
+  FanSwitch,
   FormerAir,
   Bath,
   BathStir,
@@ -158,6 +160,7 @@ export {
   DoseHour,
   Place,
   FanHours,
+  FanSwitch,
   FormerAir,
   Bath,
   BathStir,

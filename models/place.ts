@@ -9,6 +9,7 @@ import {
 } from 'sequelize'
 import type { FanHours } from '@/models/fan-hours'
 import type { Sensor } from '@/models/sensor'
+import type { AirMeter } from '@/lib/room/place-air'
 import { flag } from '@/models/columns'
 
 export class Place extends Model<InferAttributes<Place>, InferCreationAttributes<Place>> {
@@ -16,6 +17,12 @@ export class Place extends Model<InferAttributes<Place>, InferCreationAttributes
   declare name: string
   declare airSpeedFansOnMps: number
   declare airSpeedFansOffMps: number
+  /** Share of the time 'on' in which the fans blow on the trees. */
+  declare fanDuty: CreationOptional<number>
+  /** Local day on which the speeds were measured; null: an estimate. */
+  declare airMeasuredOn: CreationOptional<string | null>
+  declare airMeasuredWith: CreationOptional<AirMeter | null>
+  declare airMeasuredBy: CreationOptional<string | null>
   declare sensorId: number
   declare retiredAt: CreationOptional<number | null>
   declare isDemo: CreationOptional<boolean>
@@ -31,6 +38,10 @@ export class Place extends Model<InferAttributes<Place>, InferCreationAttributes
         name: { type: DataTypes.TEXT, allowNull: false },
         airSpeedFansOnMps: { type: DataTypes.DOUBLE, allowNull: false },
         airSpeedFansOffMps: { type: DataTypes.DOUBLE, allowNull: false },
+        fanDuty: { type: DataTypes.DOUBLE, allowNull: false, defaultValue: 1 },
+        airMeasuredOn: { type: DataTypes.TEXT },
+        airMeasuredWith: { type: DataTypes.TEXT },
+        airMeasuredBy: { type: DataTypes.TEXT },
         sensorId: { type: DataTypes.INTEGER, allowNull: false },
         retiredAt: { type: DataTypes.INTEGER },
         isDemo: { ...flag('isDemo'), defaultValue: false },

@@ -6,13 +6,15 @@ import type { Clock } from '@/lib/core/clock'
 import { AppError } from '@/lib/core/errors'
 import { newId } from '@/lib/core/ids'
 import type { FanHours as Fans } from '@/lib/drying/types'
+import { localDay } from '@/lib/format/local-time'
 import { nameList } from '@/lib/format/name-list'
 import type { Actor } from '@/lib/members/actor'
 import { changedFields } from '@/lib/members/changed-fields'
 import { hangingTrees } from '@/lib/queries/hanging-trees'
+import type { AirMeasured } from '@/lib/room/place-air'
 import type { AirSince, PlaceInput } from '@/lib/room/place-input'
 import { weekWords } from '@/lib/schedule/week-words'
-import { FanHours, FormerAir, inTransaction, Place, Sensor } from '@/models'
+import { FanHours, FormerAir, Foundry, inTransaction, Place, Sensor } from '@/models'
 
 type By = { member: Actor; clock: Clock }
 
@@ -26,6 +28,7 @@ export function createPlace(input: PlaceInput, { member, clock }: By): Promise<{
     const now = clock.now()
     requireFreeName(input.name, { among: await Place.findAll(), kind: 'place', ownId: null })
     const sensor = await requireSensor(input.sensorId)
+    await requirePastDay(input.airMeasuredOn, now)
     const { fans, ...columns } = input
     const placeId = newId(now)
     await Place.create({ ...columns, id: placeId, isDemo: member.isDemo ?? false, createdAt: now })
@@ -50,12 +53,13 @@ export function changePlace(placeId: string, input: PlaceInput, since: AirSince,
     const place = await placeInUse(placeId)
     requireFreeName(input.name, { among: await Place.findAll(), kind: 'place', ownId: placeId })
     const sensor = await requireSensor(input.sensorId)
+    await requirePastDay(input.airMeasuredOn, now)
     const formerSensor = await Sensor.findByPk(place.sensorId, { rejectOnEmpty: true })
     const formerFans = await FanHours.findAll({ where: { placeId } })
     const { fans, ...columns } = input
     const changed = changedFields(inWords(place, formerFans, formerSensor.name), inWords(input, fans, sensor.name))
     if (Object.keys(changed.after).length === 0) return
-    const isOtherAir = Object.keys(changed.after).some((field) => field !== 'name')
+    const isOtherAir = Object.keys(changed.after).some((field) => !NO_AIR_FIELDS.has(field))
     if (isOtherAir && since === 'now') await keepFormerAir(place, formerFans, now)
     await place.update(columns)
     await stopBeingDemo(place, member)
@@ -63,7 +67,13 @@ export function changePlace(placeId: string, input: PlaceInput, since: AirSince,
     await FanHours.bulkCreate(fans.map((row) => ({ ...row, placeId })))
     await addFoundryEvent(
       { type: 'place', id: placeId, name: input.name },
-      { kind: 'place changed', by: member, at: now, text: changeText(input.name, isOtherAir ? since : null), ...changed },
+      {
+        kind: 'place changed',
+        by: member,
+        at: now,
+        text: changeText(input.name, isOtherAir ? since : null, 'name' in changed.after),
+        ...changed,
+      },
     )
   })
 }
@@ -113,15 +123,19 @@ export function reusePlace(placeId: string, { member, clock }: By): Promise<void
   })
 }
 
-function changeText(name: string, since: AirSince | null): string {
-  if (since === null) return `Place ${name} renamed.`
+/** Of a place in the history: what says nothing of how its air is. */
+const NO_AIR_FIELDS: ReadonlySet<string> = new Set(['name', 'airMeasuredOn', 'airMeasuredWith', 'airMeasuredBy'])
+
+function changeText(name: string, since: AirSince | null, isRenamed: boolean): string {
+  if (since === null) return isRenamed ? `Place ${name} renamed.` : `Place ${name}: how its air speeds are known.`
   return since === 'now' ? `Place ${name} changed, from now on.` : `Place ${name} corrected; what hangs there was worked out again.`
 }
 
 async function keepFormerAir(place: Place, fans: readonly Fans[], until: number): Promise<void> {
-  const { airSpeedFansOnMps, airSpeedFansOffMps, sensorId } = place
+  const { airSpeedFansOnMps, airSpeedFansOffMps, fanDuty, sensorId } = place
   const fanHours = fans.map(({ weekday, onMinute, offMinute }) => ({ weekday, onMinute, offMinute }))
-  await FormerAir.create({ id: newId(until), placeId: place.id, until, airSpeedFansOnMps, airSpeedFansOffMps, sensorId, fanHours })
+  const air = { airSpeedFansOnMps, airSpeedFansOffMps, fanDuty, sensorId, fanHours }
+  await FormerAir.create({ id: newId(until), placeId: place.id, until, ...air })
 }
 
 async function placeInUse(placeId: string): Promise<Place> {
@@ -137,10 +151,29 @@ async function requireSensor(sensorId: number): Promise<Sensor> {
   return sensor
 }
 
-type Air = { name: string; airSpeedFansOnMps: number; airSpeedFansOffMps: number }
+/** @throws {AppError} conflict with `fields` for a day that has not come yet in the foundry's zone. */
+async function requirePastDay(day: string | null, now: number): Promise<void> {
+  if (day === null) return
+  const { timeZone } = await Foundry.findByPk(1, { rejectOnEmpty: true })
+  if (day > localDay(now, timeZone)) refuseField('airMeasuredOn', 'This day has not come yet.')
+}
+
+type Air = AirMeasured & { name: string; airSpeedFansOnMps: number; airSpeedFansOffMps: number; fanDuty: number }
 
 /** A place as the history tells it. */
-function inWords({ name, airSpeedFansOnMps, airSpeedFansOffMps }: Air, fans: readonly Fans[], sensor: string) {
+function inWords(air: Air, fans: readonly Fans[], sensor: string) {
+  // A row keeps its columns behind getters, which a spread would not see.
+  const { name, airSpeedFansOnMps, airSpeedFansOffMps, fanDuty, airMeasuredOn, airMeasuredWith, airMeasuredBy } = air
   const spans = fans.map(({ weekday, onMinute, offMinute }) => ({ weekday, fromMinute: onMinute, toMinute: offMinute }))
-  return { name, airSpeedFansOnMps, airSpeedFansOffMps, sensor, fans: weekWords(spans, 'never on') }
+  return {
+    name,
+    airSpeedFansOnMps,
+    airSpeedFansOffMps,
+    fanDutyPct: fanDuty * 100,
+    airMeasuredOn,
+    airMeasuredWith,
+    airMeasuredBy,
+    sensor,
+    fans: weekWords(spans, 'never on'),
+  }
 }

@@ -56,7 +56,7 @@ export function dryingRoom(climate: DemoClimate, { from, now, altitudeM }: { fro
     const place = DEMO_PLACES[key]
     const curve = place.air === null ? undefined : curves.get(place.air)
     if (!curve) continue
-    const spans = placeSpans({ from, to, place, pressurePa, timeZone: climate.timeZone })
+    const spans = placeSpans({ from, to, place, overrides: [], pressurePa, timeZone: climate.timeZone })
     spansOf.set(
       key,
       spans.map((span) => ({ ...span, curve })),

@@ -1,3 +1,4 @@
+import { millisecondsInDay } from 'date-fns/constants'
 import { issueSensorToken } from '@/lib/commands/issue-sensor-token'
 import type { Clock } from '@/lib/core/clock'
 import { newId } from '@/lib/core/ids'
@@ -15,6 +16,7 @@ import {
   type DemoPlace,
   type DemoRecipe,
 } from '@/lib/demo/shop'
+import { localDay } from '@/lib/format/local-time'
 import type { Actor } from '@/lib/members/actor'
 import { Bath, FanHours as FanHoursRow, Member, Place, Recipe, RecipeCoat, RecipeVersion, Sensor, Work } from '@/models'
 
@@ -79,12 +81,17 @@ export async function openShop({
   const placeIds = { fanRack: id(), longRack: id(), netLoft: id(), stillCorner: id(), boatShed: id() }
   const placeNames = new Set((await Place.findAll()).map(({ name }) => name.toLowerCase()))
   for (const key of DEMO_PLACE_KEYS) {
-    const { name, air, fanHours, ...place } = DEMO_PLACES[key]
+    const { name, air, fanHours, measured, ...place } = DEMO_PLACES[key]
     const placeId = placeIds[key]
     await Place.create({
       id: placeId,
       name: free(name, placeNames),
       ...place,
+      ...(measured && {
+        airMeasuredOn: localDay(createdAt - measured.daysBefore * millisecondsInDay, 'UTC'),
+        airMeasuredWith: measured.with,
+        airMeasuredBy: people.get('ines')?.name ?? null,
+      }),
       sensorId: air === null ? wall.id : sensorIds[air],
       isDemo: true,
       createdAt,

@@ -152,7 +152,7 @@ async function removeShop(): Promise<void> {
   await run('DELETE FROM recipes WHERE is_demo = 1')
   await run(`DELETE FROM bath_stirs WHERE bath_id IN ${baths} OR member_id IN ${members}`)
   await run('DELETE FROM baths WHERE is_demo = 1')
-  for (const table of ['fan_hours', 'former_airs']) await run(`DELETE FROM ${table} WHERE place_id IN ${places}`)
+  for (const table of ['fan_hours', 'fan_switches', 'former_airs']) await run(`DELETE FROM ${table} WHERE place_id IN ${places}`)
   await run('DELETE FROM places WHERE is_demo = 1')
   for (const table of ['readings', 'dose_hours', 'sensor_tokens']) await run(`DELETE FROM ${table} WHERE sensor_id IN ${sensors}`)
   await run('DELETE FROM sensors WHERE is_demo = 1')

@@ -1,6 +1,7 @@
 import type { DemoAir } from '@/lib/demo/climate'
 import type { FanHours, PlaceAir } from '@/lib/drying/types'
 import { startingCoats, type CoatLine, type StartingCoat } from '@/lib/recipes/starting-coats'
+import type { AirMeter } from '@/lib/room/place-air'
 import type { WorkCalendar } from '@/lib/schedule/shifts'
 
 export const DEMO_NAME = 'Marram Lane Art Foundry'
@@ -31,13 +32,53 @@ const fansOn = (weekdayOff: number): FanHours[] => [
   { weekday: SATURDAY, onMinute: 8 * 60, offMinute: 13 * 60 },
 ]
 
+type DemoPlaceFacts = PlaceAir & {
+  name: string
+  air: DemoAir | null
+  /** How many days before the demo's first one its air speeds were measured, and with what; null: an estimate. */
+  measured: { daysBefore: number; with: AirMeter } | null
+}
+
 export const DEMO_PLACES = {
-  fanRack: { name: 'Fan rack', air: 'shell room', airSpeedFansOnMps: 1.5, airSpeedFansOffMps: 0.1, fanHours: fansOn(18 * 60) },
-  longRack: { name: 'Long rack', air: 'shell room', airSpeedFansOnMps: 0.5, airSpeedFansOffMps: 0.1, fanHours: fansOn(18 * 60) },
-  netLoft: { name: 'Net loft', air: 'net loft', airSpeedFansOnMps: 0.6, airSpeedFansOffMps: 0.2, fanHours: fansOn(19 * 60) },
-  stillCorner: { name: 'Still corner', air: 'shell room', airSpeedFansOnMps: 0.1, airSpeedFansOffMps: 0.1, fanHours: [] },
-  boatShed: { name: 'Boat shed', air: null, airSpeedFansOnMps: 0.1, airSpeedFansOffMps: 0.1, fanHours: [] },
-} as const satisfies Record<string, PlaceAir & { name: string; air: DemoAir | null }>
+  fanRack: {
+    name: 'Fan rack',
+    air: 'shell room',
+    airSpeedFansOnMps: 1.5,
+    airSpeedFansOffMps: 0.1,
+    fanDuty: 1,
+    fanHours: fansOn(18 * 60),
+    measured: { daysBefore: 5, with: 'hot-wire meter' },
+  },
+  longRack: {
+    name: 'Long rack',
+    air: 'shell room',
+    airSpeedFansOnMps: 0.5,
+    airSpeedFansOffMps: 0.1,
+    fanDuty: 1,
+    fanHours: fansOn(18 * 60),
+    measured: { daysBefore: 5, with: 'hot-wire meter' },
+  },
+  // One fan that swings: it blows on each tree for most of its turn.
+  netLoft: {
+    name: 'Net loft',
+    air: 'net loft',
+    airSpeedFansOnMps: 0.8,
+    airSpeedFansOffMps: 0.2,
+    fanDuty: 0.7,
+    fanHours: fansOn(19 * 60),
+    measured: { daysBefore: 388, with: 'vane meter' },
+  },
+  stillCorner: {
+    name: 'Still corner',
+    air: 'shell room',
+    airSpeedFansOnMps: 0.1,
+    airSpeedFansOffMps: 0.1,
+    fanDuty: 1,
+    fanHours: [],
+    measured: null,
+  },
+  boatShed: { name: 'Boat shed', air: null, airSpeedFansOnMps: 0.1, airSpeedFansOffMps: 0.1, fanDuty: 1, fanHours: [], measured: null },
+} as const satisfies Record<string, DemoPlaceFacts>
 export type DemoPlace = keyof typeof DEMO_PLACES
 export const DEMO_PLACE_KEYS = ['fanRack', 'longRack', 'netLoft', 'stillCorner', 'boatShed'] as const satisfies readonly DemoPlace[]
 

@@ -1,5 +1,6 @@
 import { assertPressurePa } from '@/lib/drying/air'
 import { assertWithin } from '@/lib/drying/guards'
+import type { PlaceAir } from '@/lib/drying/types'
 
 const STANDARD_PRESSURE_PA = 101_325
 
@@ -18,4 +19,21 @@ export function placeFactor(airSpeedMps: number, pressurePa: number): number {
   assertWithin('Air speed in m/s', airSpeedMps, 0, 20)
   assertPressurePa(pressurePa)
   return 0.3 + 0.7 * Math.sqrt(Math.max(airSpeedMps, 0.1) * (pressurePa / STANDARD_PRESSURE_PA))
+}
+
+/**
+ * Place factors of a place with its fans on and off. Fans that swing or cycle blow on the trees for a share of the time only, and since
+ * the factor bends with the speed, it is the factor that is averaged:
+ *
+ *   on = duty x phi(v on) + (1 - duty) x phi(v off)
+ *
+ * @throws {RangeError} as placeFactor, and for a duty outside 0 to 1.
+ * @source our own model.
+ * @example fanFactors({ airSpeedFansOnMps: 2, airSpeedFansOffMps: 0.1, fanDuty: 0.3, fanHours: [] }, 101325).on // 0.752
+ */
+export function fanFactors(air: PlaceAir, pressurePa: number): { on: number; off: number } {
+  assertWithin('Duty of the fans', air.fanDuty, 0, 1)
+  const blown = placeFactor(air.airSpeedFansOnMps, pressurePa)
+  const off = placeFactor(air.airSpeedFansOffMps, pressurePa)
+  return { on: air.fanDuty === 1 ? blown : air.fanDuty * blown + (1 - air.fanDuty) * off, off }
 }

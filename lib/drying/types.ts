@@ -50,7 +50,23 @@ export type Dose = { likely: number; low: number; high: number }
 /** One local weekday's hours with the fans on. Minutes after local midnight; weekday 1 is Monday, 7 Sunday. */
 export type FanHours = { weekday: number; onMinute: number; offMinute: number }
 
-export type PlaceAir = { airSpeedFansOnMps: number; airSpeedFansOffMps: number; fanHours: readonly FanHours[] }
+export type PlaceAir = {
+  airSpeedFansOnMps: number
+  airSpeedFansOffMps: number
+  /** Share of the time 'on' in which the fans blow on the trees, 0 to 1; 1 unless they swing or cycle. */
+  fanDuty: number
+  fanHours: readonly FanHours[]
+}
+
+/** What a person can say of a place's fans; 'timetable' takes back what was said before. */
+export const FAN_STATES = ['on', 'off', 'timetable'] as const
+export type FanState = (typeof FAN_STATES)[number]
+
+/** What a person said of a place's fans, and when. */
+export type FanSwitch = { at: Instant; state: FanState }
+
+/** A stretch of time in which a person's word on the fans stands in place of the timetable. `to` may be Infinity. */
+export type FanOverride = { from: Instant; to: Instant; isOn: boolean }
 
 export type NeedInput = {
   /** Reference hours of the recipe's coat to its target, its own stucco included. */

@@ -23,6 +23,8 @@ const LOWEST_ROLE = {
   /** A reading typed from the wall hygrometer. */
   read: 'operator',
   stir: 'operator',
+  /** Saying that the fans of a place are on or off now. */
+  fans: 'operator',
   trees: 'supervisor',
   intake: 'supervisor',
   'lift hold': 'supervisor',

@@ -1,6 +1,7 @@
 import { millisecondsInDay } from 'date-fns/constants'
 import { hourStartOf } from '@/lib/drying/dose-hours'
 import { loadClimateRows } from '@/lib/queries/load-climate'
+import { loadFanSwitches, type FanSwitches } from '@/lib/queries/load-fan-switches'
 import { loadFacts, type TreeSelection } from '@/lib/queries/load-facts'
 import { loadFoundry, type FoundryFacts } from '@/lib/queries/load-foundry'
 import { buildClimate, type ClimateRows, type RoomClimate } from '@/lib/room/climate'
@@ -10,7 +11,7 @@ import { deriveTree, type DerivedTree } from '@/lib/trees/derive'
 import { clockStart, type TreeFacts } from '@/lib/trees/facts'
 import { floorContext, withClimates, type FloorContext } from '@/lib/trees/spans'
 
-export type Floor = { foundry: FoundryFacts; context: FloorContext; trees: DerivedTree[] }
+export type Floor = { foundry: FoundryFacts; context: FloorContext; trees: DerivedTree[]; fanSwitches: FanSwitches }
 
 /** The forecast looks back a fortnight, so the hours of that time are always at hand. */
 const FORECAST_HISTORY_MS = 14 * millisecondsInDay
@@ -49,6 +50,12 @@ export async function deriveFloor(
       .filter((at) => at >= from - 2 * 3_600_000),
   )
 
+  const fanSwitches = await loadFanSwitches(hourStartOf(from))
+  // A dose is split to the minute where a person has moved the tree or switched its fans.
+  for (const at of facts.flatMap((tree) => splitsOf(tree, foundry, fanSwitches))) {
+    if (at >= from && at <= now) needed.add(hourStartOf(at))
+  }
+
   const rowsOf = new Map<number, ClimateRows>()
   const loadClimates = () =>
     Promise.all(
@@ -66,6 +73,7 @@ export async function deriveFloor(
     pressurePa: foundry.pressurePa,
     climates: await loadClimates(),
     places: foundry.places,
+    fanSwitches,
     shifts: shiftsFrom(now, foundry.calendar, foundry.timeZone),
     from: hourStartOf(from),
   })
@@ -81,5 +89,17 @@ export async function deriveFloor(
     }
   }
   const context = needed.size > before ? withClimates(coarse, await loadClimates()) : coarse
-  return { foundry, context, trees: facts.map((tree) => deriveTree(tree, context, foundry.calendar)) }
+  return { foundry, context, fanSwitches, trees: facts.map((tree) => deriveTree(tree, context, foundry.calendar)) }
+}
+
+/** Moments since the dip of the newest coat at which somebody gave it another air. */
+function splitsOf({ coats, stays }: TreeFacts, { places }: FoundryFacts, fanSwitches: FanSwitches): number[] {
+  const newest = coats.at(-1)
+  if (!newest) return []
+  const start = clockStart(newest)
+  const hungAt = new Set([newest.placeId, ...stays.filter(({ since }) => since > start).map(({ placeId }) => placeId)])
+  const atPlaces = places
+    .filter(({ id }) => hungAt.has(id))
+    .flatMap(({ id, formerAirs }) => [...formerAirs.map(({ until }) => until), ...(fanSwitches.get(id) ?? []).map(({ at }) => at)])
+  return [...stays.map(({ since }) => since), ...atPlaces].filter((at) => at > start)
 }

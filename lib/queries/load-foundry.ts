@@ -69,14 +69,16 @@ export async function loadFoundry(): Promise<FoundryFacts> {
       isTypedOnly: kindOf.get(place.sensorId) === 'wall hygrometer',
       airSpeedFansOnMps: place.airSpeedFansOnMps,
       airSpeedFansOffMps: place.airSpeedFansOffMps,
+      fanDuty: place.fanDuty,
       fanHours: fansOf(place.id),
       formerAirs: formerAirs
         .filter((air) => air.placeId === place.id)
-        .map(({ until, sensorId, airSpeedFansOnMps, airSpeedFansOffMps, fanHours: fans }) => ({
+        .map(({ until, sensorId, airSpeedFansOnMps, airSpeedFansOffMps, fanDuty, fanHours: fans }) => ({
           until,
           sensorId,
           airSpeedFansOnMps,
           airSpeedFansOffMps,
+          fanDuty,
           fanHours: fans,
         })),
     })),

@@ -5,7 +5,7 @@ import { newId } from '@/lib/core/ids'
 import { dataVersion } from '@/lib/queries/data-version'
 import { loadFloor } from '@/lib/queries/floor'
 import { workerPulse } from '@/lib/queries/worker-pulse'
-import { queueBath, queueRoom, queueShift, queueTree } from '@/lib/queue/assemble'
+import { placeFansOf, queueBath, queueRoom, queueShift, queueTree } from '@/lib/queue/assemble'
 import type { Queue } from '@/lib/queue/contract'
 import { database } from '@/models'
 
@@ -39,7 +39,7 @@ export async function loadQueue({ clock }: { clock: Clock }): Promise<LoadedQueu
 }
 
 async function makeQueue(now: number): Promise<Queue> {
-  const [{ foundry, context, trees }, baths, worker] = await Promise.all([
+  const [{ foundry, context, fanSwitches, trees }, baths, worker] = await Promise.all([
     loadFloor({ now, trees: { on: 'floor' } }),
     loadBaths(),
     workerPulse(now),
@@ -77,6 +77,7 @@ async function makeQueue(now: number): Promise<Queue> {
       name: place.name,
       sensorId: place.sensorId,
       needsTypedReading: place.isTypedOnly,
+      fans: placeFansOf(place, context, fanSwitches),
     })),
     worker,
     trees: trees.map((tree) => queueTree(tree, context.places)),

@@ -5,7 +5,8 @@ import type { Clock } from '@/lib/core/clock'
 import type { TempUnit } from '@/lib/format/units'
 import { loadFloor, type Floor } from '@/lib/queries/floor'
 import { loadReadingsInRange } from '@/lib/queries/load-climate'
-import { queueRoom, queueTree } from '@/lib/queue/assemble'
+import { placeFansOf, queueRoom, queueTree } from '@/lib/queue/assemble'
+import { speedWords } from '@/lib/room/place-air'
 import { roomHeadline, treeAdvice } from '@/lib/room/room-words'
 import type { CoatBar, DriedCoat, RoomPage } from '@/lib/room/room-contract'
 import { AHEAD_HOURS, BACK_HOURS, exactFrom, roomSeries } from '@/lib/room/series'
@@ -48,7 +49,7 @@ type RoomInput = {
 export async function loadRoomPage({ sensorId, tempUnit, clock }: RoomInput): Promise<RoomPage> {
   const now = clock.now()
   const floor = await loadFloor({ now, trees: { on: 'floor' } })
-  const { foundry, context } = floor
+  const { foundry, context, fanSwitches } = floor
   const { timeZone, pressurePa } = foundry
   const places = foundry.places.filter((place) => !place.isRetired)
   const sensorOf = (tree: DryingTree) => context.places.get(tree.facts.stays.at(-1)?.placeId ?? '')?.sensorId
@@ -95,6 +96,11 @@ export async function loadRoomPage({ sensorId, tempUnit, clock }: RoomInput): Pr
     headline: roomHeadline({ rooms, effects, tonight, now, timeZone }),
     dryerPct: dryer?.targetPct ?? null,
     wonBackMs: effects.reduce((sum, effect) => sum + (effect.wonBackMs ?? 0), 0),
+    placesNow: places.map((place) => {
+      const fans = placeFansOf(place, context, fanSwitches)
+      const treeCount = floor.trees.filter(({ facts }) => facts.stays.at(-1)?.placeId === place.id).length
+      return { id: place.id, name: place.name, treeCount, speed: speedWords(place, fans?.isOn ?? false), fans }
+    }),
     rows: effects.map((effect) => ({
       tree: queueTree(effect.tree, context.places),
       lostMs: effect.lostMs,

@@ -5,10 +5,13 @@ import { localDay } from '@/lib/format/local-time'
 import type { Queue, QueueBath, QueueRoom, QueueTree } from '@/lib/queue/contract'
 import type { RoomClimate } from '@/lib/room/climate'
 import { dryingPull } from '@/lib/room/drying-pull'
+import type { PlaceFans } from '@/lib/room/fans-contract'
+import { hasFans } from '@/lib/room/place-air'
 import { nextOpenInstant, type Shift } from '@/lib/schedule/shifts'
 import { SPOTS_OF } from '@/lib/trees/coat-evidence'
 import type { DerivedTree } from '@/lib/trees/derive'
 import type { PlaceFacts } from '@/lib/trees/facts'
+import type { FloorContext } from '@/lib/trees/spans'
 
 /** One tree as the floor shows it. */
 export function queueTree(tree: DerivedTree, places: ReadonlyMap<string, PlaceFacts>): QueueTree {
@@ -86,6 +89,19 @@ export function queueRoom(
     isStale: climate.isStale,
     isTypedOnly: kind === 'wall hygrometer',
   }
+}
+
+/** How the fans of a place stand, and whose word that is; null where there is nothing to switch. */
+export function placeFansOf(
+  place: PlaceFacts,
+  { fans }: FloorContext,
+  switches: ReadonlyMap<string, readonly { at: number; by: string }[]>,
+): PlaceFans | null {
+  const now = fans.get(place.id)
+  if (!now || !hasFans(place)) return null
+  const { isOn, until, saidAt } = now
+  const by = switches.get(place.id)?.findLast(({ at }) => at === saidAt)?.by
+  return { isOn, until, said: saidAt === null ? null : { at: saidAt, by: by ?? '' } }
 }
 
 /** A bath and whether somebody stirred it on this local day. */

@@ -1,5 +1,6 @@
 import { z } from 'zod'
 import { COAT_KINDS, GUARDS, SPOTS, STUCCOS, VERDICTS } from '@/lib/coats/vocabulary'
+import { placeFans } from '@/lib/room/fans-contract'
 import { TREE_STATES } from '@/lib/trees/states'
 
 /** Instants travel as epoch milliseconds (UTC); the browser shows them in the foundry's zone. */
@@ -128,7 +129,16 @@ export const queue = z.object({
   shift: z.object({ isOpen: z.boolean(), endsAt: instant, nextStartsAt: instant, nextEndsAt: instant }),
   rooms: z.array(queueRoom),
   baths: z.array(queueBath),
-  places: z.array(z.object({ id: z.uuid(), name: z.string(), sensorId: z.int(), needsTypedReading: z.boolean() })),
+  places: z.array(
+    z.object({
+      id: z.uuid(),
+      name: z.string(),
+      sensorId: z.int(),
+      needsTypedReading: z.boolean(),
+      /** Null where the air is the same with and without fans. */
+      fans: placeFans.nullable(),
+    }),
+  ),
   worker: z.object({ pulseAt: instant.nullable(), isAlive: z.boolean() }),
   trees: z.array(queueTree),
 })

@@ -1,10 +1,18 @@
 import { z } from 'zod'
-import type { FanHours } from '@/lib/drying/types'
+import type { FanHours, PlaceAir } from '@/lib/drying/types'
 import { formText } from '@/lib/format/form-text'
+import { AIR_METERS, type AirMeasured } from '@/lib/room/place-air'
 import { typedNumber } from '@/lib/format/typed-number'
 import { endClock, formatMinute, startClock } from '@/lib/schedule/clock-text'
 
 const airSpeed = typedNumber('Air speed').pipe(z.number().min(0, 'Air speed is not under 0 m/s.').max(20, 'Air speed is at most 20 m/s.'))
+
+/** Typed as a percentage, kept as a share. */
+const fanDuty = typedNumber('The share')
+  .pipe(z.number().min(0, 'A share is 0 to 100 %.').max(100, 'A share is 0 to 100 %.'))
+  .transform((pct) => pct / 100)
+
+const blankAsNull = z.literal('').transform(() => null)
 
 const fanSpan = z
   .strictObject({ weekday: z.int().min(1).max(7), on: startClock, off: endClock })
@@ -13,12 +21,16 @@ const fanSpan = z
 /** Seven days of four stretches. */
 const MOST_SPANS = 28
 
-/** A place as typed: where trees hang, how fast the air is there, when its fans run, and which sensor reads its air. */
-export const placeInput = z.strictObject({
+/** Fields of a place as typed: where trees hang, how fast the air is there and how that is known, when its fans run, and which sensor reads its air. */
+const placeFields = z.strictObject({
   name: z.string().trim().min(1, 'Name the place.').max(40, 'A name has at most 40 letters.'),
   sensorId: z.coerce.number('Choose a sensor.').int('Choose a sensor.').min(1, 'Choose a sensor.'),
   airSpeedFansOnMps: airSpeed,
   airSpeedFansOffMps: airSpeed,
+  fanDuty,
+  airMeasuredOn: z.union([blankAsNull, z.iso.date('Give a day, or leave it empty for an estimate.')]),
+  airMeasuredWith: z.union([blankAsNull, z.enum(AIR_METERS)], 'Choose a meter.'),
+  airMeasuredBy: z.union([blankAsNull, z.string().trim().min(1).max(80, 'A name has at most 80 letters.')]),
   fans: z
     .array(fanSpan)
     .max(MOST_SPANS, 'A timetable has at most 28 stretches.')
@@ -32,6 +44,12 @@ export const placeInput = z.strictObject({
     })
     .transform((spans): FanHours[] => spans.map(({ weekday, on, off }) => ({ weekday, onMinute: on, offMinute: off }))),
 })
+
+const isMeasuredByHalf = ({ airMeasuredOn, airMeasuredWith, airMeasuredBy }: AirMeasured) =>
+  airMeasuredOn === null && (airMeasuredWith !== null || airMeasuredBy !== null)
+const NO_DAY = { path: ['airMeasuredOn'], message: 'Give the day on which it was measured, or leave meter and name empty too.' }
+
+export const placeInput = placeFields.refine((place) => !isMeasuredByHalf(place), NO_DAY)
 export type PlaceInput = z.infer<typeof placeInput>
 
 /**
@@ -39,8 +57,11 @@ export type PlaceInput = z.infer<typeof placeInput>
  * 'always': the figures were wrong; what hangs there is worked out again, back to the change before.
  */
 const AIR_SINCE = ['now', 'always'] as const
-export const airSince = z.enum(AIR_SINCE, 'Say whether it was so before.')
+const airSince = z.enum(AIR_SINCE, 'Say whether it was so before.')
 export type AirSince = z.infer<typeof airSince>
+
+/** A known place as typed, and since when its air is so. */
+export const placeChange = placeFields.extend({ since: airSince }).refine((place) => !isMeasuredByHalf(place), NO_DAY)
 
 /** A place's form as it stands in the fields. */
 export type PlaceFormValues = {
@@ -48,22 +69,26 @@ export type PlaceFormValues = {
   sensorId: string
   airSpeedFansOnMps: string
   airSpeedFansOffMps: string
+  /** Percent. */
+  fanDuty: string
+  airMeasuredOn: string
+  airMeasuredWith: string
+  airMeasuredBy: string
   fans: { weekday: number; on: string; off: string }[]
 }
 
 /** A known place as its form shows it. */
-export function placeFormValues(place: {
-  name: string
-  sensorId: number
-  airSpeedFansOnMps: number
-  airSpeedFansOffMps: number
-  fanHours: readonly FanHours[]
-}): PlaceFormValues {
+export function placeFormValues(place: PlaceAir & AirMeasured & { name: string; sensorId: number }): PlaceFormValues {
   return {
     name: place.name,
     sensorId: String(place.sensorId),
     airSpeedFansOnMps: String(place.airSpeedFansOnMps),
     airSpeedFansOffMps: String(place.airSpeedFansOffMps),
+    // Without the crumbs of a binary fraction.
+    fanDuty: String(Number((place.fanDuty * 100).toFixed(6))),
+    airMeasuredOn: place.airMeasuredOn ?? '',
+    airMeasuredWith: place.airMeasuredWith ?? '',
+    airMeasuredBy: place.airMeasuredBy ?? '',
     fans: place.fanHours.map(({ weekday, onMinute, offMinute }) => ({
       weekday,
       on: formatMinute(onMinute),
@@ -87,6 +112,10 @@ export function readPlaceForm(form: FormData): PlaceFormValues {
     sensorId: formText(form, 'sensorId'),
     airSpeedFansOnMps: formText(form, 'airSpeedFansOnMps'),
     airSpeedFansOffMps: formText(form, 'airSpeedFansOffMps'),
+    fanDuty: formText(form, 'fanDuty'),
+    airMeasuredOn: formText(form, 'airMeasuredOn'),
+    airMeasuredWith: formText(form, 'airMeasuredWith'),
+    airMeasuredBy: formText(form, 'airMeasuredBy'),
     fans,
   }
 }

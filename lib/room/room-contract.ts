@@ -1,4 +1,5 @@
 import type { QueueRoom, QueueTree } from '@/lib/queue/contract'
+import type { PlaceFans } from '@/lib/room/fans-contract'
 import type { Headline } from '@/lib/room/room-words'
 import type { RoomPoint } from '@/lib/room/series'
 import type { ShiftSpeed } from '@/lib/room/shift-speeds'
@@ -34,6 +35,9 @@ export type DriedCoat = {
   meanRelHumidityPct: number | null
 }
 
+/** The air at a place as the clock counts it now; `fans` is null where there is nothing to switch. */
+export type PlaceNow = { id: string; name: string; treeCount: number; speed: string; fans: PlaceFans | null }
+
 /** Everything the Room page shows. Temperatures degC, instants epoch milliseconds, speeds as shares of the reference speed. */
 export type RoomPage = {
   now: number
@@ -44,6 +48,8 @@ export type RoomPage = {
   /** The dryer that the table reckons with. */
   dryerPct: number | null
   wonBackMs: number
+  /** Of every room, in order of name. */
+  placesNow: PlaceNow[]
   rows: EffectRow[]
   things: Thing[]
   rooms: QueueRoom[]

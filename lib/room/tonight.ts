@@ -1,7 +1,7 @@
 import { millisecondsInHour } from 'date-fns/constants'
 import { chillFlag, DEFAULT_FLAG_LIMITS, heatFlag } from '@/lib/drying/flags'
 import { forecastHours } from '@/lib/drying/forecast'
-import { placeFactor } from '@/lib/drying/place-factor'
+import { fanFactors } from '@/lib/drying/place-factor'
 import { cutCurve } from '@/lib/drying/room-curve'
 import { roomFactor, wetBulbDepressionK } from '@/lib/drying/room-factor'
 import { constantSegment } from '@/lib/drying/room-segments'
@@ -168,7 +168,7 @@ export type FansOn = { place: PlaceFacts; context: FloorContext }
 export function fansLeftOn(context: FloorContext, place: PlaceFacts, trees: readonly DryingTree[], tonight: Tonight): FansOn | null {
   const climate = context.climates.get(place.sensorId)
   if (!climate || place.fanHours.length === 0 || place.airSpeedFansOnMps <= place.airSpeedFansOffMps) return null
-  const factor = placeFactor(place.airSpeedFansOnMps, context.pressurePa)
+  const factor = fanFactors(place, context.pressurePa).on
   const wet = trees.map((tree) => wetCoat(tree, factor))
   const hours = nightHours(climate, tonight, context.timeZone)
   if (hours.length === 0 || hours.some((hour) => breaksLimits(hour, hour, wet, context.pressurePa))) return null

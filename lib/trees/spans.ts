@@ -1,7 +1,8 @@
 import { millisecondsInHour } from 'date-fns/constants'
 import { hourStartOf } from '@/lib/drying/dose-hours'
+import { fanOverrides, isOnByTimetable, nextTimetableSwitch } from '@/lib/drying/fan-timetable'
 import { placeSpans, type PlaceSpan } from '@/lib/drying/place-spans'
-import type { DryingSpan, PlaceAir, ReadingMark, RoomReading, WindowReadings } from '@/lib/drying/types'
+import type { DryingSpan, FanSwitch, PlaceAir, ReadingMark, RoomReading, WindowReadings } from '@/lib/drying/types'
 import { HORIZON_HOURS, readingsForFlags, type AirStretch, type RoomClimate } from '@/lib/room/climate'
 import type { Shift } from '@/lib/schedule/shifts'
 import type { PlaceFacts } from '@/lib/trees/facts'
@@ -15,29 +16,45 @@ export type FloorContext = {
   places: ReadonlyMap<string, PlaceFacts>
   /** Fan-on and fan-off stretches of each place, by the air it had at the time, from the oldest hour in use to the horizon. */
   placeSpans: ReadonlyMap<string, readonly PlaceSpan[]>
+  /** How the fans of each place stand now. */
+  fans: ReadonlyMap<string, FansNow>
   /** Shifts from now on. */
   shifts: readonly Shift[]
 }
 
-type ContextInput = Omit<FloorContext, 'placeSpans' | 'climates' | 'places'> & {
+/** The fans of a place at one moment. */
+export type FansNow = {
+  isOn: boolean
+  /** When that changes, or the timetable has them again; null: not before somebody says so. */
+  until: number | null
+  /** Since when a person's word stands in place of the timetable; null where none does. */
+  saidAt: number | null
+}
+
+type ContextInput = Omit<FloorContext, 'placeSpans' | 'fans' | 'climates' | 'places'> & {
   climates: readonly RoomClimate[]
   places: readonly PlaceFacts[]
+  /** What people said of the fans of each place since `from`, in order, with the last word before it. */
+  fanSwitches: ReadonlyMap<string, readonly FanSwitch[]>
   /** Oldest instant that any tree's clock needs. */
   from: number
 }
 
 /** Makes the context that every tree of one pass is assessed in. */
-export function floorContext({ climates, places, from, ...rest }: ContextInput): FloorContext {
+export function floorContext({ climates, places, fanSwitches, from, ...rest }: ContextInput): FloorContext {
   const to = rest.now + HORIZON_HOURS * millisecondsInHour
-  const spansOf = (place: PlaceFacts) =>
-    airsOf(place, from, to).flatMap(({ air, ...ends }) =>
-      placeSpans({ ...ends, place: air, pressurePa: rest.pressurePa, timeZone: rest.timeZone }),
-    )
+  const { now, timeZone, pressurePa } = rest
+  const spansOf = (place: PlaceFacts) => {
+    const switches = fanSwitches.get(place.id) ?? []
+    const overrides = fanOverrides(switches, timetablesOf(place, switches[0]?.at ?? from), timeZone)
+    return airsOf(place, from, to).flatMap(({ air, ...ends }) => placeSpans({ ...ends, place: air, overrides, pressurePa, timeZone }))
+  }
   return {
     ...rest,
     climates: bySensor(climates),
     places: new Map(places.map((place) => [place.id, place])),
     placeSpans: new Map(places.map((place) => [place.id, spansOf(place)])),
+    fans: new Map(places.map((place) => [place.id, fansAt(place, fanSwitches.get(place.id) ?? [], now, timeZone)])),
   }
 }
 
@@ -59,6 +76,17 @@ function airsOf(place: PlaceFacts, from: number, to: number): { air: PlaceAir & 
 /** The air of a place, and the sensor that read it, as they were at an instant. */
 export function airOf(place: PlaceFacts, at: number): PlaceAir & { sensorId: number } {
   return place.formerAirs.find(({ until }) => at < until) ?? place
+}
+
+const timetablesOf = (place: PlaceFacts, from: number) =>
+  airsOf(place, from, Infinity).map(({ air, ...ends }) => ({ ...ends, fanHours: air.fanHours }))
+
+/** How the fans of a place stand at a moment, by what people said and else by the timetable. */
+export function fansAt(place: PlaceFacts, switches: readonly FanSwitch[], at: number, timeZone: string): FansNow {
+  const timetables = timetablesOf(place, Math.min(at, switches[0]?.at ?? at))
+  const said = fanOverrides(switches, timetables, timeZone).find(({ from, to }) => from <= at && at < to)
+  if (said) return { isOn: said.isOn, until: said.to === Infinity ? null : said.to, saidAt: said.from }
+  return { isOn: isOnByTimetable(timetables, at, timeZone), until: nextTimetableSwitch(timetables, at, timeZone), saidAt: null }
 }
 
 type Stay = { placeId: string; since: number }

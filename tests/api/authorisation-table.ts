@@ -62,6 +62,7 @@ export const DOORS: readonly Door[] = [
   door('POST', '/api/v1/evidence/[evidenceId]/withdrawal', 'operator'),
   door('POST', '/api/v1/trees/[treeId]/place', 'operator'),
   door('POST', '/api/v1/baths/[bathId]/stirs', 'operator'),
+  door('POST', '/api/v1/places/[placeId]/fans', 'operator'),
   door('GET', '/api/v1/push/subscriptions', 'crew'),
   door('POST', '/api/v1/push/subscriptions', 'crew'),
   door('DELETE', '/api/v1/push/subscriptions', 'crew'),

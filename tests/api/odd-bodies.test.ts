@@ -28,7 +28,8 @@ beforeAll(async () => {
   const member = await seedMember('owner')
   owner = await signIn(server.baseUrl, member.email, member.password)
   const tree = await factories.buildTree(foundry)
-  ids = { treeId: tree.id, bathId: foundry.faceBathId, sensorId: String(foundry.sensorId) }
+  const fanPlace = await factories.buildPlace({ sensorId: foundry.sensorId, airSpeedFansOffMps: 0.1 })
+  ids = { treeId: tree.id, placeId: fanPlace.id, bathId: foundry.faceBathId, sensorId: String(foundry.sensorId) }
   const clock = { now: () => Date.now() }
   tokens = []
   for (let count = 0; count < Math.ceil(BODIES / bodied.length / ROWS_PER_TOKEN) + 1; count += 1) {

@@ -44,11 +44,16 @@ const TITLES = [
 ]
 
 const PLACES = [
-  ...['A 1', 'A 2', 'A 3', 'A 4', 'A 5', 'A 6'].map((name) => ({ name: `Rack ${name}`, sensorId: 1, needsTypedReading: false })),
-  ...['B 1', 'B 2', 'B 3', 'B 4', 'B 5'].map((name) => ({ name: `Rack ${name}`, sensorId: 1, needsTypedReading: false })),
-  { name: 'Drying tunnel', sensorId: 2, needsTypedReading: false },
-  { name: 'Net loft 1', sensorId: 3, needsTypedReading: true },
-  { name: 'Net loft 2', sensorId: 3, needsTypedReading: true },
+  ...['A 1', 'A 2', 'A 3', 'A 4', 'A 5', 'A 6'].map((name) => ({
+    name: `Rack ${name}`,
+    sensorId: 1,
+    needsTypedReading: false,
+    fans: null,
+  })),
+  ...['B 1', 'B 2', 'B 3', 'B 4', 'B 5'].map((name) => ({ name: `Rack ${name}`, sensorId: 1, needsTypedReading: false, fans: null })),
+  { name: 'Drying tunnel', sensorId: 2, needsTypedReading: false, fans: null },
+  { name: 'Net loft 1', sensorId: 3, needsTypedReading: true, fans: null },
+  { name: 'Net loft 2', sensorId: 3, needsTypedReading: true, fans: null },
 ].map((place, index) => ({ id: id(2, index + 1), ...place }))
 
 function nextCoat(coatsOn: number): QueueTree['next'] {

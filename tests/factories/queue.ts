@@ -88,7 +88,7 @@ export function buildQueue(overrides: Partial<Queue> = {}): Queue {
     shift: { isOpen: true, endsAt: NOW + 180 * MINUTE_MS, nextStartsAt: NOW + 1080 * MINUTE_MS, nextEndsAt: NOW + 1620 * MINUTE_MS },
     rooms: [buildQueueRoom()],
     baths: [],
-    places: [{ id: PLACE_ID, name: 'Rack B', sensorId: 1, needsTypedReading: false }],
+    places: [{ id: PLACE_ID, name: 'Rack B', sensorId: 1, needsTypedReading: false, fans: null }],
     worker: { pulseAt: NOW, isAlive: true },
     trees: [],
     ...overrides,

@@ -32,6 +32,10 @@ export const placeInputOf = (foundry: TestFoundry, overrides: Partial<PlaceInput
   sensorId: foundry.sensorId,
   airSpeedFansOnMps: 1,
   airSpeedFansOffMps: 1,
+  fanDuty: 1,
+  airMeasuredOn: null,
+  airMeasuredWith: null,
+  airMeasuredBy: null,
   fans: [],
   ...overrides,
 })

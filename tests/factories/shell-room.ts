@@ -56,13 +56,14 @@ export async function buildFoundry({ timeZone = 'Europe/London' } = {}) {
 }
 export type TestFoundry = Awaited<ReturnType<typeof buildFoundry>>
 
-export function buildPlace(overrides: Partial<{ sensorId: number; name: string; airSpeedMps: number }> = {}) {
+/** One air speed, unless the fans make a difference. */
+export function buildPlace(overrides: Partial<{ sensorId: number; name: string; airSpeedMps: number; airSpeedFansOffMps: number }> = {}) {
   const speed = overrides.airSpeedMps ?? 1
   return Place.create({
     id: newId(),
     name: overrides.name ?? `Rack ${next()}`,
     airSpeedFansOnMps: speed,
-    airSpeedFansOffMps: speed,
+    airSpeedFansOffMps: overrides.airSpeedFansOffMps ?? speed,
     sensorId: overrides.sensorId ?? 1,
     createdAt: NOW,
   })

@@ -37,7 +37,17 @@ beforeEach(async () => {
   shop = await inTransaction(() => openShop({ createdAt: NOW, passwordHashes, disabledAt: NOW }))
 })
 
-const air = (sensorId: number) => ({ name: 'Own rack', airSpeedFansOnMps: 2, airSpeedFansOffMps: 0.2, sensorId, fans: [] })
+const air = (sensorId: number) => ({
+  name: 'Own rack',
+  airSpeedFansOnMps: 2,
+  airSpeedFansOffMps: 0.2,
+  fanDuty: 1,
+  airMeasuredOn: null,
+  airMeasuredWith: null,
+  airMeasuredBy: null,
+  sensorId,
+  fans: [],
+})
 const isThere = async (model: 'place' | 'bath' | 'sensor', id: string | number) => {
   const row = model === 'place' ? await Place.findByPk(id) : model === 'bath' ? await Bath.findByPk(id) : await Sensor.findByPk(id)
   return row !== null && !row.isDemo

@@ -84,7 +84,8 @@ describe('a first run', () => {
     const { sensorId } = await createSensor({ name: 'Wall', kind: 'wall hygrometer' }, by)
     await endFirstRunStep('sensor')
     await expect(endFirstRunStep('places')).rejects.toMatchObject({ code: 'unprocessable' })
-    await createPlace({ name: 'Rack A', sensorId, airSpeedFansOnMps: 1, airSpeedFansOffMps: 0.1, fans: [] }, by)
+    const estimated = { airMeasuredOn: null, airMeasuredWith: null, airMeasuredBy: null }
+    await createPlace({ name: 'Rack A', sensorId, airSpeedFansOnMps: 1, airSpeedFansOffMps: 0.1, fanDuty: 1, ...estimated, fans: [] }, by)
     await endFirstRunStep('places')
     expect(await reached()).toBe('recipes')
     await expect(endFirstRun(by)).rejects.toMatchObject({ code: 'unprocessable' })

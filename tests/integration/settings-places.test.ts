@@ -29,7 +29,7 @@ describe('a place', () => {
   it('is added with its timetable, and the history says by whom', async () => {
     const fans = [1, 2].map((weekday) => ({ weekday, onMinute: 360, offMinute: 1080 }))
     const { placeId } = await createPlace(placeInput({ name: 'Rack A', airSpeedFansOffMps: 0.1, fans }), by())
-    const row = (await loadPlaceList()).inUse.find(({ id }) => id === placeId)
+    const row = (await loadPlaceList({ clock })).inUse.find(({ id }) => id === placeId)
     expect(row).toMatchObject({ name: 'Rack A', fanHours: fans, sensor: { name: 'Shell room' }, trees: [] })
     expect(await historyOf('place', placeId)).toEqual([
       {
@@ -40,7 +40,17 @@ describe('a place', () => {
         at: NOW,
         detail: {
           text: 'Place Rack A added.',
-          after: { name: 'Rack A', airSpeedFansOnMps: 1, airSpeedFansOffMps: 0.1, sensor: 'Shell room', fans: 'Mon to Tue 06:00–18:00' },
+          after: {
+            name: 'Rack A',
+            airSpeedFansOnMps: 1,
+            airSpeedFansOffMps: 0.1,
+            fanDutyPct: 100,
+            airMeasuredOn: null,
+            airMeasuredWith: null,
+            airMeasuredBy: null,
+            sensor: 'Shell room',
+            fans: 'Mon to Tue 06:00–18:00',
+          },
         },
       },
     ])
@@ -95,13 +105,17 @@ describe('a place', () => {
     const { placeId } = await createPlace(placeInput(), by())
     const tree = await buildTree(foundry)
     const offered = async () => {
-      const [{ queue }, form, list] = await Promise.all([loadQueue({ clock: { now: () => clock.now() } }), loadTreeForm(), loadPlaceList()])
+      const [{ queue }, form, list] = await Promise.all([
+        loadQueue({ clock: { now: () => clock.now() } }),
+        loadTreeForm(),
+        loadPlaceList({ clock }),
+      ])
       return [queue.places, form.places, list.inUse].map((places) => places.some(({ id }) => id === placeId))
     }
     expect(await offered()).toEqual([true, true, true])
     await retirePlace(placeId, by())
     expect(await offered()).toEqual([false, false, false])
-    expect((await loadPlaceList()).retired.some(({ id }) => id === placeId)).toBe(true)
+    expect((await loadPlaceList({ clock })).retired.some(({ id }) => id === placeId)).toBe(true)
     const run = dipBody(foundry, [{ treeId: tree.id, coatNumber: 1, placeId }])
     await expect(logDips(run, by())).rejects.toMatchObject({ code: 'not_found', extra: { placeId } })
     await expect(moveTree(tree.id, placeId, by())).rejects.toMatchObject({ code: 'not_found' })

@@ -122,6 +122,18 @@ export const SCENES: Record<string, (scene: Scene) => Promise<void>> = {
     const params = { treeId: (await factories.buildTree(foundry)).id }
     const place = await factories.buildPlace({ sensorId: foundry.sensorId })
     await ask(operator, 'moveTree', { params, body: operation({ placeId: place.id }) })
+    const hourBack = Date.now() - 3_600_000
+    await ask(operator, 'moveTree', { params, body: operation({ placeId: place.id, movedAt: hourBack + 60_000 }) })
+    await ask(operator, 'moveTree', { params, body: operation({ placeId: foundry.placeId, movedAt: hourBack - 60_000 }) })
+    await ask(operator, 'moveTree', { params, body: operation({ placeId: place.id, movedAt: Date.now() + 3_600_000 }) })
+  },
+  switchFans: async ({ ask, operator, factories, foundry }) => {
+    const place = await factories.buildPlace({ sensorId: foundry.sensorId, airSpeedFansOffMps: 0.1 })
+    const params = { placeId: place.id }
+    for (const state of ['on', 'on', 'timetable']) await ask(operator, 'switchFans', { params, body: operation({ state }) })
+    await ask(operator, 'switchFans', { params, body: operation({ state: 'fast' }) })
+    await ask(operator, 'switchFans', { params: { placeId: foundry.placeId }, body: operation({ state: 'on' }) })
+    await ask(operator, 'switchFans', { params: { placeId: randomUUID() }, body: operation({ state: 'on' }) })
   },
   stirBath: async ({ ask, operator, foundry }) => {
     const body = operation()

@@ -8,6 +8,7 @@ import { AirFolds } from '@/app/(office)/room/_components/air-folds'
 import type { Frame } from '@/app/(office)/room/_components/chart-frame'
 import { DriedFold } from '@/app/(office)/room/_components/dried-coats'
 import { EffectTable } from '@/app/(office)/room/_components/effect-table'
+import { FansNow } from '@/app/(office)/room/_components/fans-now'
 import { Fold } from '@/app/(office)/room/_components/fold'
 import { PointTable } from '@/app/(office)/room/_components/point-table'
 import { ReadingForm } from '@/app/(office)/room/_components/reading-form'
@@ -83,6 +84,8 @@ export default async function RoomPageView({ searchParams }: PageProps<'/room'>)
           )}
         </p>
       </div>
+
+      {page.placesNow.length > 0 && <FansNow places={page.placesNow} maySwitch={may(member.role, 'fans')} now={now} timeZone={timeZone} />}
 
       <section className="plate">
         <header>

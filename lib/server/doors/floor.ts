@@ -1,6 +1,7 @@
 import { z } from 'zod'
 import { dipRefusal, dipRun, dipRunAnswer, undoDips, undoDipsAnswer } from '@/lib/coats/dip-contract'
 import { queue } from '@/lib/queue/contract'
+import { fansAnswer, fansInput } from '@/lib/room/fans-contract'
 import type { DoorDescription } from '@/lib/server/doors/door'
 import { TREE_GROUPS } from '@/lib/trees/tree-groups'
 import { POUR_FILTERS, TREE_SORTS } from '@/lib/trees/tree-view'
@@ -176,11 +177,30 @@ export const FLOOR_DOORS: readonly DoorDescription[] = [
     path: '/api/v1/trees/{treeId}/place',
     group: 'Floor',
     summary: 'Hang a tree somewhere else',
-    text: `From now on; its drying follows the air of the new place. ${OPERATION}`,
+    text: `From now on, or since \`movedAt\`: after the newest dip, and at most an hour back unless a supervisor says so. Its drying follows the air of the new place from that moment; moves told for later than that are taken back. ${OPERATION}`,
     who: 'move',
     params: { treeId },
     body: { schema: placeInput, example: { operationId: OPERATION_ID, placeId: PLACE_ID } },
     answers: { 200: { text: 'Moved.', schema: placeAnswer, example: { treeId: TREE_ID, placeId: PLACE_ID } } },
+    problems: ['not_found', 'conflict', 'unprocessable'],
+  },
+  {
+    operationId: 'switchFans',
+    method: 'POST',
+    path: '/api/v1/places/{placeId}/fans',
+    group: 'Floor',
+    summary: "Say 'fans on' or 'fans off'",
+    text: `What a person sees at a place, from this moment until the timetable's own next switch; 'timetable' takes it back. What dries there is split at the moment of the touch. What is so already changes nothing. ${OPERATION}`,
+    who: 'fans',
+    params: { placeId: { schema: z.uuid(), text: 'Id of the place, as the queue names it.' } },
+    body: { schema: fansInput, example: { operationId: OPERATION_ID, state: 'off' } },
+    answers: {
+      200: {
+        text: 'Taken in: how the fans stand now, and until when.',
+        schema: fansAnswer,
+        example: { placeId: PLACE_ID, isOn: false, until: 1_791_900_000_000 },
+      },
+    },
     problems: ['not_found', 'conflict', 'unprocessable'],
   },
   {

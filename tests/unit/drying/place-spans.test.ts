@@ -12,7 +12,8 @@ const OFF = placeFactor(0.1, SEA_LEVEL_PA)
 const WORKING_WEEK: FanHours[] = [1, 2, 3, 4, 5].map((weekday) => ({ weekday, onMinute: 450, offMinute: 1050 }))
 
 function spansOf(from: Instant, to: Instant, timeZone = 'UTC', fanHours: readonly FanHours[] = WORKING_WEEK) {
-  return placeSpans({ from, to, place: { airSpeedFansOnMps: 1.5, airSpeedFansOffMps: 0.1, fanHours }, pressurePa: SEA_LEVEL_PA, timeZone })
+  const place = { airSpeedFansOnMps: 1.5, airSpeedFansOffMps: 0.1, fanDuty: 1, fanHours }
+  return placeSpans({ from, to, place, overrides: [], pressurePa: SEA_LEVEL_PA, timeZone })
 }
 
 const readable = (spans: ReturnType<typeof spansOf>) =>

@@ -165,7 +165,8 @@ describe('fans that go off for the night, 18 degC and 75 %, need 4.0, dipped 17:
     placeSpans({
       from: dippedAt,
       to: hour(18),
-      place: { airSpeedFansOnMps: 1.5, airSpeedFansOffMps: 0.1, fanHours },
+      place: { airSpeedFansOnMps: 1.5, airSpeedFansOffMps: 0.1, fanDuty: 1, fanHours },
+      overrides: [],
       pressurePa: SEA_LEVEL_PA,
       timeZone: 'UTC',
     }).map((span) => Object.assign(span, { curve }))

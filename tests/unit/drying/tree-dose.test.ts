@@ -59,8 +59,8 @@ describe('doseOverSpans', () => {
     const from = Date.UTC(2026, 9, 24, 12)
     const curve = buildCurve(Array.from({ length: 97 }, (_, index) => buildFactor(from + (index * HOUR_MS) / 2, 0.7)))
     const doseIn = (timeZone: string, fanHours: FanHours[]) => {
-      const place = { airSpeedFansOnMps: 1.5, airSpeedFansOffMps: 0.5, fanHours }
-      const stays = placeSpans({ from, to: from + 48 * HOUR_MS, place, pressurePa: SEA_LEVEL_PA, timeZone })
+      const place = { airSpeedFansOnMps: 1.5, airSpeedFansOffMps: 0.5, fanDuty: 1, fanHours }
+      const stays = placeSpans({ from, to: from + 48 * HOUR_MS, place, overrides: [], pressurePa: SEA_LEVEL_PA, timeZone })
       return doseOverSpans(
         stays.map((stay) => Object.assign(stay, { curve })),
         from,

@@ -18,6 +18,7 @@ const WHO_MAY: Record<Act, Role[]> = {
   evidence: FLOOR,
   read: FLOOR,
   stir: FLOOR,
+  fans: FLOOR,
   trees: OFFICE,
   intake: OFFICE,
   'lift hold': OFFICE,

@@ -1,5 +1,5 @@
 import { roomFactor } from '@/lib/drying/room-factor'
-import type { RoomReading } from '@/lib/drying/types'
+import type { FanSwitch, RoomReading } from '@/lib/drying/types'
 import type { CoatKind, RecessClass, Stucco } from '@/lib/coats/vocabulary'
 import { buildClimate, type ClimateHour, type RoomClimate } from '@/lib/room/climate'
 import { shiftsFrom, type WorkCalendar } from '@/lib/schedule/shifts'
@@ -71,6 +71,7 @@ export function buildPlaceFacts(id: string, overrides: Partial<PlaceFacts> = {})
     isTypedOnly: false,
     airSpeedFansOnMps: 1,
     airSpeedFansOffMps: 1,
+    fanDuty: 1,
     fanHours: [],
     formerAirs: [],
     isRetired: false,
@@ -83,13 +84,21 @@ export function buildContext({
   places = [buildPlaceFacts('Rack')],
   now = NOW,
   calendar = WEEK,
-}: { climates?: RoomClimate[]; places?: PlaceFacts[]; now?: number; calendar?: WorkCalendar } = {}): FloorContext {
+  fanSwitches = new Map(),
+}: {
+  climates?: RoomClimate[]
+  places?: PlaceFacts[]
+  now?: number
+  calendar?: WorkCalendar
+  fanSwitches?: ReadonlyMap<string, readonly FanSwitch[]>
+} = {}): FloorContext {
   return floorContext({
     now,
     timeZone: TIME_ZONE,
     pressurePa: PRESSURE_PA,
     climates,
     places,
+    fanSwitches,
     shifts: shiftsFrom(now, calendar, TIME_ZONE),
     from: now - 14 * 24 * HOUR,
   })

@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest'
 import { bathInput } from '@/lib/coats/bath-input'
 import { nameList } from '@/lib/format/name-list'
-import { airSince, placeFormValues, placeInput, readPlaceForm } from '@/lib/room/place-input'
+import { placeChange, placeFormValues, placeInput, readPlaceForm } from '@/lib/room/place-input'
 import { sensorInput } from '@/lib/room/sensor-input'
 import { fieldErrors } from '@/lib/trees/tree-form-values'
 
@@ -10,6 +10,10 @@ const PLACE = {
   sensorId: '3',
   airSpeedFansOnMps: '1,4',
   airSpeedFansOffMps: '0.1',
+  fanDuty: '30',
+  airMeasuredOn: '2026-11-12',
+  airMeasuredWith: 'hot-wire meter',
+  airMeasuredBy: 'Maud Fell',
   fans: [{ weekday: 1, on: '06:00', off: '18:00' }],
 }
 const complaints = (overrides: Partial<typeof PLACE>) => {
@@ -25,6 +29,10 @@ describe('a place as typed', () => {
       sensorId: 3,
       airSpeedFansOnMps: 1.4,
       airSpeedFansOffMps: 0.1,
+      fanDuty: 0.3,
+      airMeasuredOn: '2026-11-12',
+      airMeasuredWith: 'hot-wire meter',
+      airMeasuredBy: 'Maud Fell',
       fans: [{ weekday: 1, onMinute: 360, offMinute: 1080 }],
     })
     expect(placeFormValues({ ...input, fanHours: input.fans })).toEqual({ ...PLACE, airSpeedFansOnMps: '1.4' })
@@ -32,9 +40,8 @@ describe('a place as typed', () => {
 
   it('comes from its fields, stretches by their number', () => {
     const form = new FormData()
-    for (const [name, value] of Object.entries({ name: 'Rack A', sensorId: '3', airSpeedFansOnMps: '1,4', airSpeedFansOffMps: '0.1' })) {
-      form.set(name, value)
-    }
+    const { fans: _fans, ...fields } = PLACE
+    for (const [name, value] of Object.entries(fields)) form.set(name, value)
     form.set('fans.0.weekday', '1')
     form.set('fans.0.on', ' 06:00')
     form.set('fans.0.off', '18:00')
@@ -52,6 +59,27 @@ describe('a place as typed', () => {
 
   it.each(['0', '20'])('may have an air speed of %j', (speed) => {
     expect(complaints({ airSpeedFansOnMps: speed, airSpeedFansOffMps: speed })).toEqual({})
+  })
+
+  it.each(['-1', '101', '', 'half'])('has no fans that blow for %j percent of the time', (fanDuty) => {
+    expect(Object.keys(complaints({ fanDuty }))).toEqual(['fanDuty'])
+  })
+
+  it.each([0, 0.07, 0.29, 0.3, 0.57, 1])('keeps a share of %d through its form', (fanDuty) => {
+    const input = placeInput.parse(PLACE)
+    const values = placeFormValues({ ...input, fanDuty, fanHours: input.fans })
+    expect(placeInput.parse({ ...values, fans: PLACE.fans }).fanDuty).toBe(fanDuty)
+  })
+
+  it('has an estimated air speed where no day is given, and then neither meter nor name', () => {
+    const estimate = { airMeasuredOn: '', airMeasuredWith: '', airMeasuredBy: '' }
+    expect(placeInput.parse({ ...PLACE, ...estimate })).toMatchObject({ airMeasuredOn: null, airMeasuredWith: null, airMeasuredBy: null })
+    expect(complaints({ ...estimate, airMeasuredOn: '2026-11-12' })).toEqual({})
+    for (const half of [{ airMeasuredWith: 'vane meter' }, { airMeasuredBy: 'Maud Fell' }]) {
+      expect(complaints({ ...estimate, ...half })).toEqual({ airMeasuredOn: expect.stringMatching(/^Give the day/) })
+    }
+    expect(complaints({ airMeasuredOn: '12 Nov' })).toEqual({ airMeasuredOn: expect.stringMatching(/^Give a day/) })
+    expect(complaints({ airMeasuredWith: 'wet finger' })).toEqual({ airMeasuredWith: 'Choose a meter.' })
   })
 
   it.each(['', '0', '1.5', 'x'])('has no sensor %j', (sensorId) => {
@@ -72,8 +100,8 @@ describe('a place as typed', () => {
   })
 
   it('that changes says since when', () => {
-    expect(airSince.safeParse('').success).toBe(false)
-    expect(airSince.parse('always')).toBe('always')
+    expect(placeChange.safeParse({ ...PLACE, since: '' }).success).toBe(false)
+    expect(placeChange.parse({ ...PLACE, since: 'always' }).since).toBe('always')
   })
 })
 

@@ -113,7 +113,7 @@ async function SensorStep({ firstRun: { stock }, member }: StepProps) {
 }
 
 async function Places({ firstRun: { stock } }: StepProps) {
-  const places = await loadPlaceList()
+  const places = await loadPlaceList({ clock: systemClock })
   return (
     <>
       <Head title="Where do trees hang?">

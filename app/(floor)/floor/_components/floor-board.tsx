@@ -323,6 +323,7 @@ export function FloorBoard({ initial, serverNow, member, setUp, neededRole }: Fl
             queue={queue}
             now={now}
             canRead={may(member.role, 'read')}
+            canSwitchFans={may(member.role, 'fans')}
             onClose={close}
             onSaid={(words) => {
               close()

@@ -1,6 +1,6 @@
 'use client'
 
-import { useState, type FormEvent } from 'react'
+import { useState, type FormEvent, type ReactNode } from 'react'
 import { formatMoment } from '@/lib/format/local-time'
 import { Icon } from '@/app/_components/icons'
 import { Key } from '@/app/_components/key'
@@ -13,20 +13,37 @@ import { PULL_WORDS } from '@/lib/room/drying-pull'
 import { newOperationId } from '../_queries/operation-id'
 import { refusalWords } from '../_queries/request-json'
 import { postTypedReading } from '../_queries/writes'
+import { FanLine } from './fan-line'
 import { Sheet } from './sheet'
 import { SheetProblem } from './sheet-problem'
 
-export type RoomSheetProps = { queue: Queue; now: number; canRead: boolean; onClose: () => void; onSaid: (words: string) => void }
+export type RoomSheetProps = {
+  queue: Queue
+  now: number
+  canRead: boolean
+  canSwitchFans: boolean
+  onClose: () => void
+  onSaid: (words: string) => void
+}
 
 /** The air of every room; where no sensor hangs, the dial of the wall hygrometer to fill in. */
-export function RoomSheet({ queue, now, canRead, onClose, onSaid }: RoomSheetProps) {
+export function RoomSheet({ queue, now, canRead, canSwitchFans, onClose, onSaid }: RoomSheetProps) {
   const rooms = roomsByWorry(queue)
   return (
     <Sheet label="Air of the rooms" heading={rooms.length === 1 ? 'Air of the room' : 'Air of the rooms'} isTop onClose={onClose}>
       <div className="room-lines min-h-0 overflow-y-auto">
         {rooms.length === 0 && <p className="text-22">No sensor yet. Until there is one, nobody knows how fast coats dry.</p>}
         {rooms.map((room) => (
-          <RoomLine key={room.sensorId} room={room} queue={queue} now={now} canRead={canRead} onSaid={onSaid} />
+          <RoomLine key={room.sensorId} room={room} queue={queue} now={now} canRead={canRead} onSaid={onSaid}>
+            {queue.places
+              .filter((place) => place.sensorId === room.sensorId)
+              .map(
+                (place) =>
+                  place.fans && (
+                    <FanLine key={place.id} place={place} fans={place.fans} queue={queue} canSwitch={canSwitchFans} onSaid={onSaid} />
+                  ),
+              )}
+          </RoomLine>
         ))}
         <p className="text-20 text-soot">{watchWords(queue, now)}</p>
       </div>
@@ -47,12 +64,14 @@ function RoomLine({
   now,
   canRead,
   onSaid,
+  children,
 }: {
   room: QueueRoom
   queue: Queue
   now: number
   canRead: boolean
   onSaid: (words: string) => void
+  children: ReactNode
 }) {
   const { temp } = useUnits()
   const isGood = room.pull === 'good'
@@ -86,6 +105,7 @@ function RoomLine({
         )}
       </div>
       {room.isTypedOnly && canRead && <TypedReading room={room} onSaid={onSaid} />}
+      {children}
     </section>
   )
 }

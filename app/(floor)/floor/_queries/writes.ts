@@ -1,5 +1,6 @@
 import type { DipRefusal, DipRun } from '@/lib/coats/dip-contract'
 import type { Verdict } from '@/lib/coats/vocabulary'
+import type { FanState } from '@/lib/drying/types'
 import type { QueueTree } from '@/lib/queue/contract'
 import { newOperationId } from './operation-id'
 import { postJson } from './request-json'
@@ -13,6 +14,9 @@ export const postUndo = (operationId: string, coatIds: string[]) => postJson('/a
 
 export const postStir = (bathId: string, operationId = newOperationId()) =>
   postJson(`/api/v1/baths/${bathId}/stirs`, { operationId }, anyAnswer)
+
+export const postFans = (placeId: string, operationId: string, state: FanState) =>
+  postJson(`/api/v1/places/${placeId}/fans`, { operationId, state }, anyAnswer)
 
 export const postWatch = (treeId: string) => postJson(`/api/v1/trees/${treeId}/watch`, { operationId: newOperationId() }, anyAnswer)
 

@@ -5,7 +5,7 @@ import { answerFields, answerSettings } from '@/app/(office)/settings/answer-set
 import { changePlace, createPlace, retirePlace, reusePlace } from '@/lib/commands/save-place'
 import { systemClock as clock } from '@/lib/core/clock'
 import { formText } from '@/lib/format/form-text'
-import { airSince, placeInput, readPlaceForm } from '@/lib/room/place-input'
+import { placeChange, placeInput, readPlaceForm } from '@/lib/room/place-input'
 import { requireMember } from '@/lib/server/auth'
 import type { FormState } from '@/lib/server/form-state'
 
@@ -21,7 +21,7 @@ export async function addPlaceAction(_previous: FormState, form: FormData): Prom
 
 export async function changePlaceAction(placeId: string, _previous: FormState, form: FormData): Promise<FormState> {
   const member = await requireMember('places')
-  const changed = placeInput.extend({ since: airSince }).safeParse({ ...readPlaceForm(form), since: formText(form, 'since') })
+  const changed = placeChange.safeParse({ ...readPlaceForm(form), since: formText(form, 'since') })
   return answerFields(changed, async ({ since, ...input }) => {
     await changePlace(placeIdInput.parse(placeId), input, since, { member, clock })
     return `${input.name} is saved.`

@@ -4,6 +4,7 @@ import { EmptyState } from '@/app/(office)/_components/empty-state'
 import { KeyLink } from '@/app/_components/key'
 import { PlaceRows } from '@/app/(office)/settings/places/_components/place-rows'
 import '@/app/(office)/settings/settings.css'
+import { systemClock } from '@/lib/core/clock'
 import { loadPlaceList } from '@/lib/queries/place-list'
 import { requireMemberPage } from '@/lib/server/auth'
 
@@ -12,7 +13,7 @@ export const metadata: Metadata = { title: 'Places' }
 /** Where trees hang, and the air there. */
 export default async function PlacesPage() {
   const member = await requireMemberPage('places', '/settings/places')
-  const places = await loadPlaceList()
+  const places = await loadPlaceList({ clock: systemClock })
   return (
     <>
       <FoundryNav role={member.role} />

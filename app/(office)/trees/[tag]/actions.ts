@@ -6,10 +6,13 @@ import { holdTree, liftHold } from '@/lib/commands/hold-tree'
 import { lookOver } from '@/lib/commands/look-over'
 import { moveTree } from '@/lib/commands/move-tree'
 import { passIntake } from '@/lib/commands/pass-intake'
+import { refuseField } from '@/lib/commands/refuse-field'
 import { scrapTree } from '@/lib/commands/scrap-tree'
 import { systemClock } from '@/lib/core/clock'
+import { loadFoundry } from '@/lib/queries/load-foundry'
 import { requireMember, type Member } from '@/lib/server/auth'
 import { answerForm, type FormState } from '@/lib/server/form-state'
+import { moveForm, readMoveForm } from '@/lib/trees/move-form'
 import { fieldErrors } from '@/lib/trees/tree-form-values'
 import { intakeInput, reasonInput } from '@/lib/trees/tree-input'
 
@@ -59,9 +62,10 @@ export async function scrapAction(treeId: string, _previous: FormState, form: Fo
 
 export async function moveAction(treeId: string, _previous: FormState, form: FormData): Promise<FormState> {
   const member = await requireMember('move')
-  const parsed = z.object({ placeId: z.uuid('Choose where it hangs now.') }).safeParse({ placeId: form.get('placeId') })
-  return treeForm(treeId, parsed, async (id, { placeId }) => {
-    await moveTree(id, placeId, by(member))
+  const { timeZone } = await loadFoundry()
+  const parsed = moveForm(systemClock.now(), timeZone).safeParse(readMoveForm(form))
+  return treeForm(treeId, parsed, async (id, { placeId, movedAt }) => {
+    if (!(await moveTree(id, placeId, by(member), movedAt))) refuseField('placeId', 'It hangs there already, and did then.')
     return 'Moved.'
   })
 }

@@ -145,6 +145,7 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
             hold: canDo('hold') && !hasLeft,
             lift: canDo('lift hold'),
             move: canDo('move') && !hasLeft,
+            correct: canDo('correct'),
             edit: canDo('trees') && !hasLeft,
             scrap: canDo('trees') && !hasLeft,
             release: canDo('release') && isReleasable && openHold === null,

@@ -8,6 +8,7 @@ import { FanWeek } from '@/app/(office)/settings/places/_components/fan-week'
 import { addPlaceAction, changePlaceAction } from '@/app/(office)/settings/places/actions'
 import '@/app/(office)/settings/settings.css'
 import { nameList } from '@/lib/format/name-list'
+import { AIR_METERS } from '@/lib/room/place-air'
 import type { PlaceFormValues } from '@/lib/room/place-input'
 
 export type PlaceFormProps = {
@@ -18,7 +19,17 @@ export type PlaceFormProps = {
   onDone?: () => void
 }
 
-const NEW_PLACE: PlaceFormValues = { name: '', sensorId: '', airSpeedFansOnMps: '', airSpeedFansOffMps: '', fans: [] }
+const NEW_PLACE: PlaceFormValues = {
+  name: '',
+  sensorId: '',
+  airSpeedFansOnMps: '',
+  airSpeedFansOffMps: '',
+  fanDuty: '100',
+  airMeasuredOn: '',
+  airMeasuredWith: '',
+  airMeasuredBy: '',
+  fans: [],
+}
 
 /** The form of a place where trees hang. It stands alone on any page. */
 export function PlaceForm({ sensors, place, onDone }: PlaceFormProps) {
@@ -71,6 +82,47 @@ export function PlaceForm({ sensors, place, onDone }: PlaceFormProps) {
           defaultValue={values.airSpeedFansOffMps}
           error={form.errorOf('airSpeedFansOffMps')}
           hint="Still air is about 0.1. A place without fans has the same speed twice."
+          autoComplete="off"
+        />
+        <Field
+          name="fanDuty"
+          label="While on, the fans blow here for"
+          unit="%"
+          inputMode="decimal"
+          defaultValue={values.fanDuty}
+          error={form.errorOf('fanDuty')}
+          hint="Of the time. 100 where they blow all the time; less where a fan swings or goes in cycles."
+          autoComplete="off"
+        />
+        <Field
+          name="airMeasuredOn"
+          label="Air speeds measured on"
+          type="date"
+          defaultValue={values.airMeasuredOn}
+          error={form.errorOf('airMeasuredOn')}
+          hint="At the tree, in the place of a shell. Empty: they are an estimate. Other speeds are another measurement."
+        />
+        <SelectField
+          name="airMeasuredWith"
+          label="Measured with"
+          defaultValue={values.airMeasuredWith}
+          error={form.errorOf('airMeasuredWith')}
+          hint="Slow air is below what most vanes turn in: a hot wire reads it."
+        >
+          <option value="">Not known</option>
+          {AIR_METERS.map((meter) => (
+            <option key={meter} value={meter}>
+              {meter}
+            </option>
+          ))}
+        </SelectField>
+        <Field
+          name="airMeasuredBy"
+          label="Measured by"
+          defaultValue={values.airMeasuredBy}
+          error={form.errorOf('airMeasuredBy')}
+          hint="Who can be asked how."
+          maxLength={80}
           autoComplete="off"
         />
       </div>

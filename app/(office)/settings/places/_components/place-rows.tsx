@@ -1,5 +1,6 @@
 'use client'
 
+import { Icon } from '@/app/_components/icons'
 import { AddPlate } from '@/app/(office)/settings/_components/add-plate'
 import { ActForm } from '@/app/(office)/settings/_components/act-form'
 import { RetiredFold } from '@/app/(office)/settings/_components/retired-fold'
@@ -7,12 +8,14 @@ import { RowPlate } from '@/app/(office)/settings/_components/row-plate'
 import { PlaceForm } from '@/app/(office)/settings/places/_components/place-form'
 import { retirePlaceAction, reusePlaceAction } from '@/app/(office)/settings/places/actions'
 import { nameList } from '@/lib/format/name-list'
+import { wholeNumber } from '@/lib/format/units'
 import type { PlaceList, PlaceRow } from '@/lib/queries/place-list'
+import { hasFans, measuredWords } from '@/lib/room/place-air'
 import { placeFormValues } from '@/lib/room/place-input'
 import { weekWords } from '@/lib/schedule/week-words'
 
 /** The places in use with their forms, the key that adds one, and those that are retired. */
-export function PlaceRows({ places: { inUse, retired, sensors } }: { places: PlaceList }) {
+export function PlaceRows({ places: { inUse, retired, sensors, today } }: { places: PlaceList }) {
   return (
     <>
       <AddPlate
@@ -46,7 +49,7 @@ export function PlaceRows({ places: { inUse, retired, sensors } }: { places: Pla
               </ActForm>
             }
           >
-            <PlaceWords place={place} />
+            <PlaceWords place={place} today={today} />
           </RowPlate>
         ))}
       </ul>
@@ -63,7 +66,7 @@ export function PlaceRows({ places: { inUse, retired, sensors } }: { places: Pla
               </ActForm>
             }
           >
-            <PlaceWords place={place} />
+            <PlaceWords place={place} today={today} />
           </RowPlate>
         ))}
       </RetiredFold>
@@ -71,25 +74,31 @@ export function PlaceRows({ places: { inUse, retired, sensors } }: { places: Pla
   )
 }
 
-function PlaceWords({ place }: { place: PlaceRow }) {
+function PlaceWords({ place, today }: { place: PlaceRow; today: string }) {
+  const measured = measuredWords(place, today)
   const fans = place.fanHours.map(({ weekday, onMinute, offMinute }) => ({ weekday, fromMinute: onMinute, toMinute: offMinute }))
   return (
     <dl className="facts">
       <div>
         <dt>Air speed</dt>
         <dd>
-          {fans.length === 0
-            ? `${place.airSpeedFansOffMps} m/s`
-            : `${place.airSpeedFansOnMps} m/s with the fans on, ${place.airSpeedFansOffMps} m/s with them off`}
+          {hasFans(place)
+            ? `${place.airSpeedFansOnMps} m/s with the fans on, ${place.airSpeedFansOffMps} m/s with them off`
+            : `${place.airSpeedFansOffMps} m/s`}
+          {hasFans(place) && place.fanDuty < 1 && <>; while on they blow here for {wholeNumber(place.fanDuty * 100)} % of the time</>}
+        </dd>
+      </div>
+      <div>
+        <dt>Known from</dt>
+        <dd className={measured.isDue ? 'text-ochre-ink' : undefined}>
+          {measured.isDue && <Icon name="warning" />} {measured.text}
         </dd>
       </div>
       <div>
         <dt>Fans run</dt>
         <dd>
           {weekWords(fans, 'never')}
-          {fans.length === 0 && place.airSpeedFansOnMps !== place.airSpeedFansOffMps && (
-            <>, so the {place.airSpeedFansOnMps} m/s with the fans on are not used: give them hours if they run.</>
-          )}
+          {fans.length === 0 && hasFans(place) && <>, unless somebody says on the floor or the Room page that they are on.</>}
         </dd>
       </div>
       <div>

@@ -1,7 +1,7 @@
 'use client'
 
 import { useEffect, useRef, useState } from 'react'
-import { SelectField } from '@/app/_components/field'
+import { Field, SelectField } from '@/app/_components/field'
 import { Icon } from '@/app/_components/icons'
 import { Key, KeyLink } from '@/app/_components/key'
 import { RecipeMoveForm } from '@/app/(office)/trees/[tag]/_components/recipe-move-form'
@@ -9,6 +9,7 @@ import { holdAction, liftHoldAction, moveAction, scrapAction } from '@/app/(offi
 import { ReasonForm } from '@/app/(office)/_components/reason-form'
 import { FormMessage } from '@/app/(office)/_components/form-message'
 import { useKeptForm } from '@/app/(office)/_components/use-kept-form'
+import { MOVED_MINUTES_AGO } from '@/lib/trees/move-form'
 import type { NewerVersion } from '@/lib/queries/newer-versions'
 
 export type TreeActsProps = {
@@ -16,7 +17,7 @@ export type TreeActsProps = {
   tag: string
   isHeld: boolean
   /** What this member may do to this tree as it hangs. */
-  may: { hold: boolean; lift: boolean; move: boolean; edit: boolean; scrap: boolean; release: boolean; dip: boolean }
+  may: { hold: boolean; lift: boolean; move: boolean; correct: boolean; edit: boolean; scrap: boolean; release: boolean; dip: boolean }
   nextDip: { number: number; isDue: boolean } | null
   places: { id: string; name: string }[]
   placeId: string
@@ -121,7 +122,9 @@ export function TreeActs({ treeId, tag, isHeld, may, nextDip, places, placeId, n
                 onDone={done('The hold is lifted.', false)}
               />
             )}
-            {panel === 'move' && <MoveForm treeId={treeId} places={places} placeId={placeId} onDone={done('Moved.')} />}
+            {panel === 'move' && (
+              <MoveForm treeId={treeId} places={places} placeId={placeId} mayCorrect={may.correct} onDone={done('Moved.')} />
+            )}
             {panel === 'recipe' && (
               <RecipeMoveForm treeId={treeId} versions={newerVersions} coatsOn={coatsOn} onDone={done('Moved to the newer version.')} />
             )}
@@ -155,11 +158,13 @@ function MoveForm({
   treeId,
   places,
   placeId,
+  mayCorrect,
   onDone,
 }: {
   treeId: string
   places: { id: string; name: string }[]
   placeId: string
+  mayCorrect: boolean
   onDone: () => void
 }) {
   const form = useKeptForm(moveAction.bind(null, treeId), onDone)
@@ -173,22 +178,41 @@ function MoveForm({
       <form {...form.formProps} className="reason-form">
         <SelectField
           name="placeId"
-          label="Where it hangs from now on"
+          label="Where it hangs"
           defaultValue=""
           error={form.errorOf('placeId')}
-          hint="The drying clock counts the air of the new place from now."
+          hint="The drying clock counts the air of that place since then. An earlier move that was wrong is put right with it."
         >
           <option value="" disabled>
             Choose a place
           </option>
-          {places
-            .filter((place) => place.id !== placeId)
-            .map((place) => (
-              <option key={place.id} value={place.id}>
-                {place.name}
-              </option>
-            ))}
+          {places.map((place) => (
+            <option key={place.id} value={place.id}>
+              {place.id === placeId ? `${place.name}, as the log has it` : place.name}
+            </option>
+          ))}
         </SelectField>
+        <SelectField
+          name="minutesAgo"
+          label="Since when"
+          defaultValue="0"
+          error={form.errorOf('minutesAgo') ?? (mayCorrect ? undefined : form.errorOf('movedAt'))}
+        >
+          {MOVED_MINUTES_AGO.map((minutes) => (
+            <option key={minutes} value={minutes}>
+              {minutes === 0 ? 'Just now' : `About ${minutes} min ago`}
+            </option>
+          ))}
+        </SelectField>
+        {mayCorrect && (
+          <Field
+            name="movedAt"
+            label="Or at"
+            type="datetime-local"
+            hint="Any time after the newest dip. Empty: as chosen before."
+            error={form.errorOf('movedAt')}
+          />
+        )}
         <Key type="submit" tone="ink" isOff={form.isPending}>
           Move it
         </Key>
