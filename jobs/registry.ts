@@ -1,4 +1,6 @@
+import { setTimeout as pause } from 'node:timers/promises'
 import { backUp } from '@/jobs/back-up'
+import { bringToOffsets } from '@/jobs/correct-readings'
 import { demoFeed } from '@/jobs/demo-feed'
 import type { Job } from '@/jobs/job'
 import { prune } from '@/jobs/prune'
@@ -29,5 +31,5 @@ export function allJobs({ clock, vapidPublicKey, monotonic, random }: RegistryPa
     },
     followedBy: [send],
   })
-  return [watch, send, prune, backUp, demoFeed({ fetch })]
+  return [watch, send, prune, backUp, bringToOffsets({ pause }), demoFeed({ fetch })]
 }

@@ -28,8 +28,11 @@ import { RecipeVersion } from '@/models/recipe-version'
 import { Release } from '@/models/release'
 import { Section } from '@/models/section'
 import { Sensor } from '@/models/sensor'
+import { SensorDevice } from '@/models/sensor-device'
+import { SensorOffset } from '@/models/sensor-offset'
 import { SensorToken } from '@/models/sensor-token'
 import { Session } from '@/models/session'
+import { SetAsideReading } from '@/models/set-aside-reading'
 import { ShiftHours } from '@/models/shift-hours'
 import { SignInWait } from '@/models/sign-in-wait'
 import { Tree } from '@/models/tree'
@@ -50,7 +53,10 @@ const models = [
   SignInWait,
   Sensor,
   SensorToken,
+  SensorDevice,
+  SensorOffset,
   Reading,
+  SetAsideReading,
   DoseHour,
   Place,
   FanHours,
@@ -156,7 +162,10 @@ export {
   SignInWait,
   Sensor,
   SensorToken,
+  SensorDevice,
+  SensorOffset,
   Reading,
+  SetAsideReading,
   DoseHour,
   Place,
   FanHours,

@@ -16,6 +16,12 @@ export class Sensor extends Model<InferAttributes<Sensor>, InferCreationAttribut
   declare name: string
   declare kind: 'logger' | 'wall hygrometer'
   declare retiredAt: CreationOptional<number | null>
+  /** Readings from here on are still to be brought to the offsets; null once they are. */
+  declare correctFrom: CreationOptional<number | null>
+  declare batteryPct: CreationOptional<number | null>
+  declare batteryAt: CreationOptional<number | null>
+  /** How far its clock is ahead of the server's; null where it goes right, or nobody knows. */
+  declare clockOffsetSeconds: CreationOptional<number | null>
   declare isDemo: CreationOptional<boolean>
   declare createdAt: number
 
@@ -29,6 +35,10 @@ export class Sensor extends Model<InferAttributes<Sensor>, InferCreationAttribut
         name: { type: DataTypes.TEXT, allowNull: false },
         kind: { type: DataTypes.TEXT, allowNull: false },
         retiredAt: { type: DataTypes.INTEGER },
+        correctFrom: { type: DataTypes.INTEGER },
+        batteryPct: { type: DataTypes.DOUBLE },
+        batteryAt: { type: DataTypes.INTEGER },
+        clockOffsetSeconds: { type: DataTypes.INTEGER },
         isDemo: { ...flag('isDemo'), defaultValue: false },
         createdAt: { type: DataTypes.INTEGER, allowNull: false },
       },

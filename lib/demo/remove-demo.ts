@@ -154,10 +154,15 @@ async function removeShop(): Promise<void> {
   await run('DELETE FROM baths WHERE is_demo = 1')
   for (const table of ['fan_hours', 'fan_switches', 'former_airs']) await run(`DELETE FROM ${table} WHERE place_id IN ${places}`)
   await run('DELETE FROM places WHERE is_demo = 1')
-  for (const table of ['readings', 'dose_hours', 'sensor_tokens']) await run(`DELETE FROM ${table} WHERE sensor_id IN ${sensors}`)
+  for (const table of ['readings', 'set_aside_readings', 'dose_hours', 'sensor_tokens', 'sensor_offsets', 'sensor_devices']) {
+    await run(`DELETE FROM ${table} WHERE sensor_id IN ${sensors}`)
+  }
   await run('DELETE FROM sensors WHERE is_demo = 1')
   await run(`UPDATE recipe_versions SET created_by = NULL WHERE created_by IN ${members}`)
-  await run(`UPDATE readings SET entered_by = NULL WHERE entered_by IN ${members}`)
+  for (const table of ['readings', 'set_aside_readings', 'sensor_offsets']) {
+    await run(`UPDATE ${table} SET entered_by = NULL WHERE entered_by IN ${members}`)
+  }
+  await run(`UPDATE sensor_devices SET noted_by = NULL WHERE noted_by IN ${members}`)
 }
 
 /** Takes the demo's people away, but for one whose name stands in a real row, which only somebody who let them sign in can have brought about. */

@@ -79,6 +79,11 @@ export function formatShare(share: number | null): string {
   return share === null ? NONE : formatPercent(share * 100)
 }
 
+/** Pressure of the air, whole hectopascals, as a barometer shows it: '1009 hPa'. */
+export function formatPressure(pascals: number): string {
+  return `${wholeNumber(pascals / 100)}${NO_BREAK}hPa`
+}
+
 /** '45 s'. */
 export function formatSeconds(seconds: number): string {
   return `${seconds}${NO_BREAK}s`

@@ -5,6 +5,7 @@ import type { Clock } from '@/lib/core/clock'
 import type { TempUnit } from '@/lib/format/units'
 import { loadFloor, type Floor } from '@/lib/queries/floor'
 import { loadReadingsInRange } from '@/lib/queries/load-climate'
+import { loadSensorNotes } from '@/lib/queries/sensor-notes'
 import { placeFansOf, queueRoom, queueTree } from '@/lib/queue/assemble'
 import { speedWords } from '@/lib/room/place-air'
 import { roomHeadline, treeAdvice } from '@/lib/room/room-words'
@@ -77,7 +78,8 @@ export async function loadRoomPage({ sensorId, tempUnit, clock }: RoomInput): Pr
   // From three days back, so that the shift or night in which the charts begin is a whole one.
   const shifts = shiftsFrom(from - 3 * millisecondsInDay, foundry.calendar, timeZone)
   const since = mondayOf(now, timeZone)
-  const [readings, dried] = await Promise.all([
+  const [notes, readings, dried] = await Promise.all([
+    loadSensorNotes({ now }),
     room ? loadReadingsInRange(room.sensorId, exactFrom(now), now) : [],
     room ? driedCoats(floor, room.sensorId, since) : [],
   ])
@@ -130,6 +132,7 @@ export async function loadRoomPage({ sensorId, tempUnit, clock }: RoomInput): Pr
       pressurePa,
     }),
     rooms,
+    notes,
     room: room ?? null,
     points: climate ? roomSeries(climate, readings, { now, timeZone, pressurePa }) : [],
     from,

@@ -1,7 +1,7 @@
 import { QueryTypes } from 'sequelize'
 import type { Clock } from '@/lib/core/clock'
 import { backupDir, dataDir } from '@/lib/core/env'
-import type { ReadingSource } from '@/lib/drying/types'
+import type { SensorKind } from '@/lib/room/sensor-input'
 import { isRefusalOfUs, refusingServices } from '@/lib/notices/push-refusal'
 import { workerPulse } from '@/lib/queries/worker-pulse'
 import { freeBytesOf, isSameDisk, recordSizes } from '@/lib/server/disk'
@@ -23,7 +23,7 @@ export async function loadUpkeep({ clock }: { clock: Clock }): Promise<UpkeepFac
     Foundry.findByPk(1, { rejectOnEmpty: true }),
     workerPulse(now),
     loadPasses(now - DAY_MS),
-    loadSensors(),
+    loadSensors(now),
     loadPushes(),
     loadBackupFacts(),
     recordSizes(),
@@ -77,15 +77,14 @@ async function loadPasses(since: number) {
   }
 }
 
-async function loadSensors(): Promise<UpkeepFacts['sensors']> {
-  const rows = await select<{ name: string; kind: 'logger' | 'wall hygrometer'; newestAt: number | null }>(
-    `SELECT s.name, s.kind, (SELECT max(measured_at) FROM readings WHERE sensor_id = s.id) AS newestAt
+async function loadSensors(now: number): Promise<UpkeepFacts['sensors']> {
+  const rows = await select<{ name: string; kind: SensorKind; newestAt: number | null; batteryPct: number | null }>(
+    `SELECT s.name, s.kind, (SELECT max(measured_at) FROM readings WHERE sensor_id = s.id AND measured_at <= :now) AS newestAt,
+            s.battery_pct AS batteryPct
        FROM sensors s WHERE s.retired_at IS NULL ORDER BY s.name`,
+    { now },
   )
-  return rows.map(({ name, kind, newestAt }) => {
-    const source: ReadingSource = kind === 'logger' ? 'sensor' : 'typed'
-    return { name, source, newestAt }
-  })
+  return rows.map(({ kind, ...sensor }) => ({ ...sensor, source: kind === 'logger' ? 'sensor' : 'typed' }))
 }
 
 async function loadPushes(): Promise<UpkeepFacts['pushes']> {

@@ -53,6 +53,8 @@ export type RoomPage = {
   rows: EffectRow[]
   things: Thing[]
   rooms: QueueRoom[]
+  /** What their sensors told beside the air: % and Pa. */
+  notes: { sensorId: number; batteryPct: number | null; pressurePa: number | null }[]
   /** The room whose charts are drawn; null where there is no sensor. */
   room: QueueRoom | null
   points: RoomPoint[]

@@ -4,6 +4,8 @@ import type { ReadingSource } from '@/lib/drying/types'
 import { formatBytes } from '@/lib/format/bytes'
 import { formatDuration } from '@/lib/format/duration'
 import { formatMoment } from '@/lib/format/local-time'
+import { formatPercent } from '@/lib/format/units'
+import { isBatteryLow } from '@/lib/room/sensor-warnings'
 
 /** What was measured, for the page of upkeep. Instants in epoch milliseconds, sizes in bytes. */
 export type UpkeepFacts = {
@@ -18,7 +20,7 @@ export type UpkeepFacts = {
     failing: readonly { job: string; at: number; error: string }[]
     failedPasses: number
   }
-  sensors: readonly { name: string; source: ReadingSource; newestAt: number | null }[]
+  sensors: readonly { name: string; source: ReadingSource; newestAt: number | null; batteryPct: number | null }[]
   records: { sizeBytes: number; walBytes: number }
   disks: readonly { of: 'records' | 'backups'; freeBytes: number }[]
   pushes: {
@@ -67,6 +69,7 @@ const JOB_WORDS: Record<string, string> = {
   'send-pushes': 'Sending notices',
   prune: 'Tidying up',
   'back-up': 'The backup',
+  'correct-readings': 'Bringing readings to their offsets',
   'demo-feed': 'The demo’s sensors',
 }
 
@@ -124,13 +127,17 @@ function sensors({ sensors: all, now, timeZone }: UpkeepFacts): UpkeepCheck {
   })
   if (all.length === 0) lines.push('There is no sensor yet.')
   const silent = all.filter(isSilent)
-  const todo =
-    silent.length === 0
-      ? ''
+  const empty = all.filter(({ batteryPct }) => isBatteryLow(batteryPct))
+  lines.push(...empty.map(({ name, batteryPct }) => `${name}: battery ${formatPercent(batteryPct)}.`))
+  const todo = [
+    ...(silent.length === 0
+      ? []
       : silent.every(({ source }) => source === 'typed')
-        ? 'Read the wall hygrometer and type it in on the floor.'
-        : 'Look at the sensor, its network and its token. Until it sends again, trees in its air turn unknown.'
-  return { key: 'sensors', title: 'Sensors', isInOrder: silent.length === 0, lines, todo }
+        ? ['Read the wall hygrometer and type it in on the floor.']
+        : ['Look at the sensor, its network and its token. Until it sends again, trees in its air turn unknown.']),
+    ...(empty.length === 0 ? [] : ['Change the battery before the sensor falls silent.']),
+  ].join(' ')
+  return { key: 'sensors', title: 'Sensors', isInOrder: todo === '', lines, todo }
 }
 
 function disk({ disks }: UpkeepFacts): UpkeepCheck {

@@ -42,6 +42,7 @@ export const DOORS: readonly Door[] = [
   page('/settings/places', 'supervisor'),
   page('/settings/baths', 'supervisor'),
   page('/settings/sensors', 'supervisor'),
+  page('/settings/sensors/[sensorId]', 'supervisor', '/settings/sensors/1'),
   // People and one's own page.
   page('/people', 'owner'),
   page('/people/[memberId]', 'owner'),
@@ -130,6 +131,10 @@ export const ACTIONS: readonly ActionRow[] = [
   { file: 'app/(office)/settings/sensors/actions.ts', name: 'reuseSensorAction', act: 'sensors', who: 'supervisor' },
   { file: 'app/(office)/settings/sensors/actions.ts', name: 'issueTokenAction', act: 'sensors', who: 'supervisor' },
   { file: 'app/(office)/settings/sensors/actions.ts', name: 'revokeTokenAction', act: 'sensors', who: 'supervisor' },
+  // Offsets and devices of a sensor.
+  { file: 'app/(office)/settings/sensors/actions.ts', name: 'saveOffsetAction', act: 'sensors', who: 'supervisor' },
+  { file: 'app/(office)/settings/sensors/actions.ts', name: 'removeOffsetAction', act: 'sensors', who: 'supervisor' },
+  { file: 'app/(office)/settings/sensors/actions.ts', name: 'replaceDeviceAction', act: 'sensors', who: 'supervisor' },
   // People and one's own page.
   { file: 'app/(office)/people/actions.ts', name: 'addMemberAction', act: 'people', who: 'owner' },
   { file: 'app/(office)/people/actions.ts', name: 'editMemberAction', act: 'people', who: 'owner' },

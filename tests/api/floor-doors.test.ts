@@ -143,14 +143,17 @@ describe('small writes of the tablet', () => {
 })
 
 describe('POST /api/v1/readings', () => {
-  const send = (readings: unknown[], token = sensorToken.token) =>
+  const send = (readings: unknown[], token = sensorToken.token, rest: object = {}) =>
     newClient(server.baseUrl).fetch('/api/v1/readings', {
       method: 'POST',
       headers: { authorization: `Bearer ${token}`, 'content-type': 'application/json' },
-      body: JSON.stringify({ readings }),
+      body: JSON.stringify({ readings, ...rest }),
     })
 
-  it('keeps the good rows and answers each bad one with its index and a reason; again, it changes nothing', async () => {
+  type Notes = { index: number; reason: string }[]
+  type Answer = { accepted: number; repeated: number; rejected: Notes; marked: Notes; clockOffsetSeconds: number | null }
+
+  it('keeps every reading, marks what no room can be, and answers each row that is none; again, it changes nothing', async () => {
     const now = Date.now()
     const rows = [
       { measuredAt: now - 10 * MINUTE, airTempC: 21, relHumidityPct: 50 },
@@ -159,12 +162,65 @@ describe('POST /api/v1/readings', () => {
       { measuredAt: now + 10 * MINUTE, airTempC: 21, relHumidityPct: 50 },
       { measuredAt: now - 40 * 24 * 60 * MINUTE, airTempC: 21, relHumidityPct: 50 },
       { measuredAt: now, airTempC: '21', relHumidityPct: 50 },
+      { measuredAt: now, airTempC: 21, relHumidityPct: 50, pressurePa: 1013 },
     ]
-    const first = (await (await send(rows)).json()) as { accepted: number; rejected: { index: number; reason: string }[] }
-    expect(first.accepted).toBe(2)
-    expect(first.rejected.map(({ index }) => index)).toEqual([1, 3, 4, 5])
-    expect(first.rejected[0]?.reason).toContain('A shell room is not hotter than 60 °C.')
-    expect(await (await send(rows)).json()).toMatchObject({ accepted: 0, repeated: 2 })
+    const first = (await (await send(rows)).json()) as Answer
+    expect(first).toMatchObject({ accepted: 3, repeated: 0 })
+    expect(first.rejected.map(({ index }) => index)).toEqual([3, 4, 5, 6])
+    expect(first.rejected[3]?.reason).toContain('101325, not 1013.25')
+    expect(first.marked).toEqual([{ index: 1, reason: expect.stringContaining('No shell room is like this') }])
+    expect(await (await send(rows)).json()).toMatchObject({ accepted: 0, repeated: 3, marked: first.marked })
+  })
+
+  it('says when the clock of the sender is off, by its own time or by a row that lies ahead, and keeps it with the sensor', async () => {
+    const { Sensor } = await import('@/models')
+    const row = { measuredAt: Date.now(), airTempC: 21, relHumidityPct: 50 }
+    const offset = async (rows: unknown[], rest: object) =>
+      ((await (await send(rows, sensorToken.token, rest)).json()) as Answer).clockOffsetSeconds
+    expect(await offset([row], { sentAt: Date.now() + 7 * MINUTE, batteryPct: 12 })).toBeCloseTo(420, -1)
+    expect(await Sensor.findByPk(foundry.sensorId, { raw: true })).toMatchObject({
+      batteryPct: 12,
+      clockOffsetSeconds: expect.closeTo(420, -1),
+    })
+    expect(await offset([{ ...row, measuredAt: Date.now() + 60 * MINUTE }], {})).toBeCloseTo(3600, -1)
+    expect(await offset([row], {})).toBeNull()
+    expect((await Sensor.findByPk(foundry.sensorId))?.clockOffsetSeconds).toBeNull()
+    expect((await send([row], sensorToken.token, { batteryPct: 101 })).status).toBe(422)
+  })
+
+  it('gives the same hours and doses for the same rows in one batch, and in odd batches, twice and in a random order', async () => {
+    const { DoseHour, Sensor, SetAsideReading } = await import('@/models')
+    const { issueSensorToken } = await import('@/lib/commands/issue-sensor-token')
+    const from = Math.floor(Date.now() / MINUTE) * MINUTE - 20 * 60 * MINUTE
+    // Ten hours of weather with spikes, then seven hours in which nothing moves, then weather again.
+    const rows = Array.from({ length: 240 }, (_, index) => {
+      const isStuck = index >= 120 && index < 206
+      const air = isStuck ? { airTempC: 20, relHumidityPct: 60 } : { airTempC: 18 + (index % 7) / 2, relHumidityPct: 45 + (index % 11) }
+      return { measuredAt: from + index * 5 * MINUTE, ...air, ...(index % 41 === 20 && { relHumidityPct: 99 }) }
+    })
+    const sendTo = async (batches: (typeof rows)[]) => {
+      const { id } = await Sensor.create({ name: `Loft ${batches.length}`, kind: 'logger', createdAt: from })
+      const { token } = await issueSensorToken({ sensorId: id }, { member: null, clock: { now: () => Date.now() } })
+      for (const batch of batches) expect((await send(batch, token)).status).toBe(200)
+      const where = { where: { sensorId: id }, raw: true }
+      const hours = (await DoseHour.findAll({ ...where, order: ['hourStart'] })).map(({ sensorId: _, ...hour }) => hour)
+      const marks = (await SetAsideReading.findAll({ ...where, order: ['measuredAt'] })).map(({ measuredAt, reason }) => ({
+        measuredAt,
+        reason,
+      }))
+      return { hours, marks }
+    }
+    const shuffled = rows
+      .map((row, index) => ({ row, key: (index * 7919) % 240 }))
+      .toSorted((a, b) => a.key - b.key)
+      .map(({ row }) => row)
+    const odd = [0, 1, 8, 39, 100, 163].map((first, index, firsts) => shuffled.slice(first, firsts[index + 1] ?? 240))
+    const [whole, pieces] = [await sendTo([rows]), await sendTo([...odd, ...odd.toReversed()])]
+    expect(new Set(whole.marks.map(({ reason }) => reason))).toEqual(new Set(['jump', 'flat']))
+    expect(pieces.marks).toEqual(whole.marks)
+    const rounded = (hours: object[]): unknown =>
+      JSON.parse(JSON.stringify(hours, (_key, value: unknown) => (typeof value === 'number' ? Number(value.toPrecision(12)) : value)))
+    expect(rounded(pieces.hours)).toEqual(rounded(whole.hours))
   })
 
   it('is closed to a wrong token and to a revoked one', async () => {

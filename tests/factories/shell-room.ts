@@ -142,10 +142,16 @@ export async function buildTree(foundry: TestFoundry, overrides: TreeOverrides =
   return tree
 }
 
-/** Steady air of a sensor between two instants, a reading every five minutes; 21 °C and 50 % is one reference hour an hour. */
-export function buildAir(sensorId: number, from: number, to: number, air = { airTempC: 21, relHumidityPct: 50 }): Promise<number> {
+/**
+ * Steady air of a sensor between two instants, a reading every five minutes; 21 °C and 50 % is one reference hour an hour. As with any
+ * real one its last digit moves: one that stands still is taken to be stuck.
+ */
+export function buildAir(sensorId: number, from: number, to: number, air = { airTempC: 21, relHumidityPct: 50 }) {
   const rows = []
-  for (let measuredAt = from; measuredAt <= to; measuredAt += 5 * MINUTE) rows.push({ measuredAt, ...air })
+  for (let measuredAt = from; measuredAt <= to; measuredAt += 5 * MINUTE) {
+    const last = Math.floor(measuredAt / (5 * MINUTE)) % 2 === 0 ? 0 : 1e-7
+    rows.push({ measuredAt, ...air, relHumidityPct: air.relHumidityPct - last })
+  }
   return recordReadings({ sensorId, source: 'sensor', enteredBy: null, rows }, { clock: { now: () => to } })
 }
 

@@ -75,11 +75,15 @@ describe('the hourly table', () => {
     expect(stored.map((hour) => hour.gapMinutes)).toEqual(whole.map((hour) => expect.closeTo(hour.gapMinutes, 9)))
   })
 
-  it('counts a row that is known already only once', async () => {
+  it('counts a row that is known already only once, and keeps the damper of two that contradict each other', async () => {
     const sensorId = await freshSensor()
-    expect(await record(sensorId, [row(0), row(5)])).toBe(2)
-    expect(await record(sensorId, [row(5, 70), row(10)])).toBe(1)
-    expect(await Reading.findOne({ where: { sensorId, measuredAt: NOW + 5 * MINUTE } })).toMatchObject({ relHumidityPct: 50 })
+    expect(await record(sensorId, [row(0), row(5)])).toMatchObject({ added: 2, repeated: 0 })
+    expect(await record(sensorId, [row(5, 70), row(10)])).toMatchObject({ added: 1, repeated: 1 })
+    const stored = () => Reading.findOne({ where: { sensorId, measuredAt: NOW + 5 * MINUTE }, raw: true })
+    // Of two that contradict each other the damper one stands, whichever came first.
+    expect(await stored()).toMatchObject({ relHumidityPct: 70 })
+    expect(await record(sensorId, [row(5, 60)])).toMatchObject({ added: 0, repeated: 1 })
+    expect(await stored()).toMatchObject({ relHumidityPct: 70 })
   })
 
   it('gives a dose, spliced with the readings of the end hours, that is that of all readings', async () => {

@@ -27,9 +27,9 @@ describe('a sensor', () => {
     await renameSensor(sensorId, { name: 'Net loft' }, by())
     await buildAir(sensorId, NOW - HOUR, NOW, { airTempC: 18, relHumidityPct: 60 })
     const { placeId } = await createPlace(placeInput({ name: 'Loft rail', sensorId }), by())
-    expect((await loadSensorList()).inUse.find(({ id }) => id === sensorId)).toMatchObject({
+    expect((await loadSensorList({ clock })).inUse.find(({ id }) => id === sensorId)).toMatchObject({
       name: 'Net loft',
-      newest: { measuredAt: NOW, airTempC: 18, relHumidityPct: 60 },
+      newest: { measuredAt: NOW, airTempC: 18, relHumidityPct: expect.closeTo(60, 6) },
       places: ['Loft rail'],
     })
     expect((await historyOf('sensor', String(sensorId))).at(-1)?.detail).toMatchObject({
@@ -54,7 +54,7 @@ describe('a sensor', () => {
     expect(lines.map(({ kind }) => kind)).toEqual(['sensor added', 'token issued', 'token revoked'])
     const secret = token.split('_').slice(2).join('_')
     const stored = await SensorToken.findByPk(id)
-    for (const text of [JSON.stringify(lines), JSON.stringify(await loadSensorList())]) {
+    for (const text of [JSON.stringify(lines), JSON.stringify(await loadSensorList({ clock }))]) {
       expect(text).toContain(id)
       expect(text).not.toContain(secret)
       expect(text).not.toContain(stored?.secretSha256)
@@ -67,7 +67,7 @@ describe('a sensor', () => {
     await retireSensor(sensorId, by())
     await expect(issueSensorToken({ sensorId }, by())).rejects.toMatchObject({ code: 'conflict' })
     await reuseSensor(sensorId, by())
-    const row = (await loadSensorList()).inUse.find(({ id }) => id === sensorId)
+    const row = (await loadSensorList({ clock })).inUse.find(({ id }) => id === sensorId)
     expect(row?.tokens.map(({ revokedAt }) => revokedAt)).toEqual([NOW])
     expect(await kindsOf('sensor', String(sensorId))).toEqual([
       'sensor added',

@@ -53,9 +53,10 @@ export const SCENES: Record<string, (scene: Scene) => Promise<void>> = {
     const headers = { authorization: `Bearer ${sensorToken}` }
     const readings = [
       { measuredAt: new Date().toISOString(), airTempC: 21.4, relHumidityPct: 52.5 },
-      { measuredAt: Date.now(), airTempC: 214, relHumidityPct: 52.5 },
+      { measuredAt: Date.now(), airTempC: 214, relHumidityPct: 52.5, pressurePa: 100_900 },
+      { measuredAt: Date.now() + 600_000, airTempC: 21.4, relHumidityPct: 52.5 },
     ]
-    await ask(anonymous, 'sendReadings', { headers, body: { readings } })
+    await ask(anonymous, 'sendReadings', { headers, body: { readings, sentAt: Date.now() + 420_000, batteryPct: 86 } })
     await ask(anonymous, 'sendReadings', { headers, body: { readings: [] } })
     await ask(anonymous, 'sendReadings', { body: { readings } })
   },

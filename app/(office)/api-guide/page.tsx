@@ -20,7 +20,11 @@ const ANSWER = `{
   "repeated": 1,
   "rejected": [
     { "index": 3, "reason": "measuredAt lies more than 2 min ahead: check the clock of the sensor." }
-  ]
+  ],
+  "marked": [
+    { "index": 1, "reason": "No shell room is like this: −10 to 60 °C, 0 to 105 % RH." }
+  ],
+  "clockOffsetSeconds": 420
 }`
 
 const PROBLEM = `{
@@ -74,8 +78,10 @@ export default async function ApiGuidePage() {
 
         <Plate title="2. Send one reading">
           <p>
-            Temperature in °C (−10 to 60), relative humidity in % (0 to 105), and the moment at which they were measured: ISO 8601 with a
-            zone, or milliseconds since 1970 (UTC). Every two to five minutes is enough.
+            Temperature in °C, relative humidity in %, and the moment at which they were measured: ISO 8601 with a zone, or milliseconds
+            since 1970 (UTC). Every two to five minutes is enough. A row may also carry <code>pressurePa</code> of a barometer (Pa, not
+            reduced to sea level), and beside the list may stand <code>batteryPct</code> and <code>sentAt</code>, the time by the
+            sender&apos;s own clock.
           </p>
           <CodeBlock label="One reading" code={curlOneReading(address)} />
         </Plate>
@@ -91,7 +97,10 @@ export default async function ApiGuidePage() {
           <p>
             Status 200 means that the server has looked at every row. <b>Accepted</b> rows are new and kept. <b>Repeated</b> rows were known
             already, by sensor and moment, and changed nothing: if an answer gets lost, send the same rows again. <b>Rejected</b> rows were
-            not kept; each comes with its place in your list, counted from 0, and the reason. Do not send rejected rows again.
+            not kept; each comes with its place in your list, counted from 0, and the reason. Do not send rejected rows again. <b>Marked</b>{' '}
+            rows are kept and shown on the page Sensors and count for nothing in the drying times: air that no shell room has, a jump that
+            is gone with the next reading, a sensor that has not moved for more than 6 hours. <b>clockOffsetSeconds</b> is how far the
+            sender&apos;s clock is ahead, where it is off by more than 2 minutes; Kilnward does not shift any time by it.
           </p>
           <CodeBlock label="An answer" code={ANSWER} />
         </Plate>

@@ -18,13 +18,15 @@ import { WhatIf } from '@/app/(office)/room/_components/what-if'
 import { systemClock } from '@/lib/core/clock'
 import { localDay } from '@/lib/format/local-time'
 import { TIMES_NOT_CALIBRATED } from '@/lib/format/time-pair'
-import { formatPercent, formatShare, formatTemperature, wholeNumber, type TempUnit } from '@/lib/format/units'
+import { formatPercent, formatPressure, formatShare, formatTemperature, wholeNumber, type TempUnit } from '@/lib/format/units'
 import { readingAge } from '@/lib/floor/strip'
 import { may } from '@/lib/members/roles'
 import { loadRoomPage } from '@/lib/queries/room'
 import type { QueueRoom } from '@/lib/queue/contract'
 import { PULL_WORDS } from '@/lib/room/drying-pull'
+import type { RoomPage } from '@/lib/room/room-contract'
 import { roughDuration } from '@/lib/room/room-words'
+import { isBatteryLow } from '@/lib/room/sensor-warnings'
 import type { ShiftSpeed } from '@/lib/room/shift-speeds'
 import { requireMemberPage } from '@/lib/server/auth'
 import './room.css'
@@ -169,7 +171,7 @@ export default async function RoomPageView({ searchParams }: PageProps<'/room'>)
       <section className="plate folds">
         {page.points.length > 0 && <AirFolds page={page} room={room} frame={frame} tempUnit={tempUnit} />}
         <Fold title="Sensors" line={<SensorsLine rooms={page.rooms} now={now} timeZone={timeZone} />}>
-          <SensorList rooms={page.rooms} now={now} timeZone={timeZone} tempUnit={tempUnit} />
+          <SensorList rooms={page.rooms} notes={page.notes} now={now} timeZone={timeZone} tempUnit={tempUnit} />
           {may(member.role, 'read') && (
             <>
               <h3 className="fold-title">Type a reading</h3>
@@ -255,11 +257,13 @@ function SensorsLine({ rooms, now, timeZone }: { rooms: readonly QueueRoom[]; no
 
 function SensorList({
   rooms,
+  notes,
   now,
   timeZone,
   tempUnit,
 }: {
   rooms: readonly QueueRoom[]
+  notes: RoomPage['notes']
   now: number
   timeZone: string
   tempUnit: TempUnit
@@ -278,8 +282,25 @@ function SensorList({
             {room.pull === 'not known' ? 'its trees are unknown' : `${PULL_WORDS[room.pull]}, ${formatPercent(room.speedPct)}`}
           </span>
           <span className="text-soot">{room.isTypedOnly ? 'read by people' : room.source === 'typed' ? 'last one typed' : 'logger'}</span>
+          <SensorNoteWords note={notes.find(({ sensorId }) => sensorId === room.sensorId)} />
         </li>
       ))}
     </ul>
+  )
+}
+
+function SensorNoteWords({ note }: { note: RoomPage['notes'][number] | undefined }) {
+  if (!note || (note.pressurePa === null && note.batteryPct === null)) return null
+  const isLow = isBatteryLow(note.batteryPct)
+  return (
+    <span className="sensor-note">
+      {note.pressurePa !== null && <span>barometer {formatPressure(note.pressurePa)}</span>}
+      {note.batteryPct !== null && (
+        <span className={isLow ? 'text-ochre-ink' : 'text-soot'}>
+          {isLow && <Icon name="warning" />} battery {formatPercent(note.batteryPct)}
+          {isLow && ': change it'}
+        </span>
+      )}
+    </span>
   )
 }

@@ -99,7 +99,7 @@ async function Baths({ firstRun: { stock } }: StepProps) {
 }
 
 async function SensorStep({ firstRun: { stock }, member }: StepProps) {
-  const [sensors, { timeZone }] = await Promise.all([loadSensorList(), loadFoundry()])
+  const [sensors, { timeZone }] = await Promise.all([loadSensorList({ clock: systemClock }), loadFoundry()])
   return (
     <>
       <Head title="What reads the air?">

@@ -5,16 +5,22 @@ import { z } from 'zod'
 import { answerFields, answerSettings } from '@/app/(office)/settings/answer-settings'
 import { issueSensorToken } from '@/lib/commands/issue-sensor-token'
 import { revokeSensorToken } from '@/lib/commands/revoke-sensor-token'
+import { replaceDevice } from '@/lib/commands/replace-device'
+import { removeSensorOffset, saveSensorOffset } from '@/lib/commands/save-sensor-offset'
 import { createSensor, renameSensor, retireSensor, reuseSensor } from '@/lib/commands/save-sensor'
 import { systemClock as clock } from '@/lib/core/clock'
 import { env } from '@/lib/core/env'
 import { AppError } from '@/lib/core/errors'
 import { formText } from '@/lib/format/form-text'
+import { deviceForm, offsetForm } from '@/lib/room/sensor-forms'
 import { sensorInput, sensorRename } from '@/lib/room/sensor-input'
+import { loadFoundry } from '@/lib/queries/load-foundry'
 import { requireMember } from '@/lib/server/auth'
-import type { FormState } from '@/lib/server/form-state'
+import { answerForm, type FormState } from '@/lib/server/form-state'
+import { fieldErrors } from '@/lib/trees/tree-form-values'
 
 const sensorIdInput = z.int()
+const offsetIdInput = z.uuid()
 const tokenIdInput = z.string().max(36)
 
 export async function addSensorAction(_previous: FormState, form: FormData): Promise<FormState> {
@@ -47,6 +53,40 @@ export async function reuseSensorAction(sensorId: number): Promise<FormState> {
   return answerSettings(async () => {
     await reuseSensor(sensorIdInput.parse(sensorId), { member, clock })
     return 'In use again.'
+  })
+}
+
+/** What is added to the readings of a sensor, typed as the difference in the member's own unit. */
+export async function saveOffsetAction(sensorId: number, _previous: FormState, form: FormData): Promise<FormState> {
+  const member = await requireMember('sensors')
+  const { timeZone } = await loadFoundry()
+  const names = ['since', 'airTempOffsetK', 'relHumidityOffsetPct', 'note'] as const
+  const parsed = offsetForm(member.units.temp, timeZone).safeParse(Object.fromEntries(names.map((name) => [name, formText(form, name)])))
+  return answerFields(parsed, async (input) => {
+    await saveSensorOffset(sensorIdInput.parse(sensorId), input, { member, clock })
+    return 'The offset is entered. Readings that are there already follow in the next minutes.'
+  })
+}
+
+export async function removeOffsetAction(offsetId: string): Promise<FormState> {
+  const member = await requireMember('sensors')
+  return answerSettings(async () => {
+    await removeSensorOffset(offsetIdInput.parse(offsetId), { member, clock })
+    return 'Taken away.'
+  })
+}
+
+/** Another device under the same sensor; a logger's new token is shown this one time. */
+export async function replaceDeviceAction(sensorId: number, _previous: FormState, form: FormData): Promise<FormState> {
+  const member = await requireMember('sensors')
+  const { timeZone } = await loadFoundry()
+  const names = ['since', 'serial', 'note'] as const
+  const parsed = deviceForm(timeZone).safeParse(Object.fromEntries(names.map((name) => [name, formText(form, name)])))
+  if (!parsed.success) return { status: 'invalid', fields: fieldErrors(parsed.error) }
+  return answerForm(async () => {
+    const { token } = await replaceDevice(sensorIdInput.parse(sensorId), parsed.data, { member, clock })
+    revalidatePath('/', 'layout')
+    return { status: 'done', text: 'The new device has taken over.', ...(token !== null && { secret: token }) }
   })
 }
 

@@ -12,7 +12,7 @@ export const metadata: Metadata = { title: 'Sensors' }
 /** What reads the air, and the tokens with which loggers send. */
 export default async function SensorsPage() {
   const member = await requireMemberPage('sensors', '/settings/sensors')
-  const [sensors, { timeZone }] = await Promise.all([loadSensorList(), loadFoundry()])
+  const [sensors, { timeZone }] = await Promise.all([loadSensorList({ clock: systemClock }), loadFoundry()])
   return (
     <>
       <FoundryNav role={member.role} />
@@ -22,7 +22,7 @@ export default async function SensorsPage() {
           <p>What reads the air of the room. A logger sends with a token of its own.</p>
         </div>
       </div>
-      <SensorRows sensors={sensors} reading={{ now: systemClock.now(), timeZone, units: member.units }} />
+      <SensorRows sensors={sensors} reading={{ now: systemClock.now(), timeZone, units: member.units }} hasOwnPages />
     </>
   )
 }

@@ -34,7 +34,18 @@ export function NewToken({ sensorId, sensorName }: { sensorId: number; sensorNam
   )
 }
 
-function TokenPlate({ token, address, sensorName, onSeen }: { token: string; address: string; sensorName: string; onSeen: () => void }) {
+/** A token, this one time, and a line that sends a first reading with it. */
+export function TokenPlate({
+  token,
+  address,
+  sensorName,
+  onSeen,
+}: {
+  token: string
+  address: string
+  sensorName: string
+  onSeen: () => void
+}) {
   return (
     <section className="token-plate" aria-label={`New token of ${sensorName}`}>
       <p>

@@ -1,20 +1,16 @@
 'use client'
 
+import { KeyLink } from '@/app/_components/key'
 import { AddPlate } from '@/app/(office)/settings/_components/add-plate'
 import { ActForm } from '@/app/(office)/settings/_components/act-form'
 import { RetiredFold } from '@/app/(office)/settings/_components/retired-fold'
 import { RowPlate } from '@/app/(office)/settings/_components/row-plate'
 import { NewToken } from '@/app/(office)/settings/sensors/_components/new-token'
+import { SensorWarnings, SensorWords, type SensorReader } from '@/app/(office)/settings/sensors/_components/sensor-words'
 import { SensorForm } from '@/app/(office)/settings/sensors/_components/sensor-form'
 import { retireSensorAction, reuseSensorAction, revokeTokenAction } from '@/app/(office)/settings/sensors/actions'
-import { formatReadAge } from '@/lib/format/duration'
 import { formatMoment } from '@/lib/format/local-time'
-import { nameList } from '@/lib/format/name-list'
-import { formatPercent, formatTemperature, type Units } from '@/lib/format/units'
 import type { SensorRow, TokenRow } from '@/lib/queries/sensor-list'
-
-/** The moment and manner in which this member reads the page. */
-type Reading = { now: number; timeZone: string; units: Units }
 
 const KIND_LINES = { logger: 'a logger that sends its readings', 'wall hygrometer': 'we read the wall hygrometer' } as const
 
@@ -22,9 +18,12 @@ const KIND_LINES = { logger: 'a logger that sends its readings', 'wall hygromete
 export function SensorRows({
   sensors: { inUse, retired },
   reading,
+  hasOwnPages = false,
 }: {
   sensors: { inUse: SensorRow[]; retired: SensorRow[] }
-  reading: Reading
+  reading: SensorReader
+  /** Whether a key leads to each sensor's own page; the first run goes straight on. */
+  hasOwnPages?: boolean
 }) {
   return (
     <>
@@ -50,11 +49,15 @@ export function SensorRows({
             form={<SensorForm sensor={sensor} />}
             verb="Rename"
             keys={
-              <ActForm action={() => retireSensorAction(sensor.id)} label={`Retire ${sensor.name}`}>
-                Retire
-              </ActForm>
+              <>
+                {hasOwnPages && <KeyLink href={`/settings/sensors/${sensor.id}`}>Offset, device, marked readings</KeyLink>}
+                <ActForm action={() => retireSensorAction(sensor.id)} label={`Retire ${sensor.name}`}>
+                  Retire
+                </ActForm>
+              </>
             }
           >
+            <SensorWarnings sensor={sensor} reading={reading} />
             <SensorWords sensor={sensor} reading={reading} />
             {sensor.kind === 'logger' && <Tokens sensor={sensor} reading={reading} />}
           </RowPlate>
@@ -81,26 +84,7 @@ export function SensorRows({
   )
 }
 
-function SensorWords({ sensor: { newest, places }, reading: { now, units } }: { sensor: SensorRow; reading: Reading }) {
-  return (
-    <dl className="facts">
-      <div>
-        <dt>Newest reading</dt>
-        <dd>
-          {newest === null
-            ? 'none yet'
-            : `${formatTemperature(newest.airTempC, units.temp)}, ${formatPercent(newest.relHumidityPct)}, ${formatReadAge(newest.measuredAt, now)}`}
-        </dd>
-      </div>
-      <div>
-        <dt>Serves</dt>
-        <dd>{places.length === 0 ? 'no place yet' : nameList(places)}</dd>
-      </div>
-    </dl>
-  )
-}
-
-function Tokens({ sensor, reading }: { sensor: SensorRow; reading: Reading }) {
+function Tokens({ sensor, reading }: { sensor: SensorRow; reading: SensorReader }) {
   const [good, revoked] = [
     sensor.tokens.filter((token) => token.revokedAt === null),
     sensor.tokens.filter((token) => token.revokedAt !== null),
@@ -141,7 +125,7 @@ function Tokens({ sensor, reading }: { sensor: SensorRow; reading: Reading }) {
 
 const prefixOf = ({ id }: TokenRow) => `kw_${id.slice(0, 8)}…`
 
-function TokenWords({ token, reading: { now, timeZone } }: { token: TokenRow; reading: Reading }) {
+function TokenWords({ token, reading: { now, timeZone } }: { token: TokenRow; reading: SensorReader }) {
   const moment = (at: number) => formatMoment(at, now, timeZone)
   return (
     <p className="token-words">
