@@ -82,5 +82,8 @@ const OF_THE_NEED = ['kind', 'bath', 'stucco', 'need', 'target', 'prewet'] as co
 
 /** Whether nothing that a need rests on differs between two lists of coats, so that a calibration of the one holds for the other. */
 export function areNeedsSame(before: readonly CoatCells[], after: readonly CoatCells[]): boolean {
-  return before.length === after.length && before.every((coat, index) => OF_THE_NEED.every((key) => coat[key] === after[index]?.[key]))
+  return before.length === after.length && before.every((coat, index) => after[index] !== undefined && isNeedSame(coat, after[index]))
 }
+
+/** The same of one coat. */
+export const isNeedSame = (before: CoatCells, after: CoatCells): boolean => OF_THE_NEED.every((key) => before[key] === after[key])

@@ -43,6 +43,8 @@ export const DOORS: readonly Door[] = [
   page('/settings/baths', 'supervisor'),
   page('/settings/sensors', 'supervisor'),
   page('/settings/sensors/[sensorId]', 'supervisor', '/settings/sensors/1'),
+  // What finished coats say of the clock.
+  page('/calibration', 'supervisor'),
   // People and one's own page.
   page('/people', 'owner'),
   page('/people/[memberId]', 'owner'),
@@ -135,6 +137,8 @@ export const ACTIONS: readonly ActionRow[] = [
   { file: 'app/(office)/settings/sensors/actions.ts', name: 'saveOffsetAction', act: 'sensors', who: 'supervisor' },
   { file: 'app/(office)/settings/sensors/actions.ts', name: 'removeOffsetAction', act: 'sensors', who: 'supervisor' },
   { file: 'app/(office)/settings/sensors/actions.ts', name: 'replaceDeviceAction', act: 'sensors', who: 'supervisor' },
+  // What finished coats say of the clock.
+  page('/calibration', 'supervisor'),
   // People and one's own page.
   { file: 'app/(office)/people/actions.ts', name: 'addMemberAction', act: 'people', who: 'owner' },
   { file: 'app/(office)/people/actions.ts', name: 'editMemberAction', act: 'people', who: 'owner' },
