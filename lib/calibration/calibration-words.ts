@@ -11,6 +11,7 @@ const coatsWord = (count: number) => (count === 1 ? '1 coat' : `${count} coats`)
 /** A factor, two decimals at most: '0.92'. */
 export const factorWords = (factor: number): string => shortNumber(factor)
 
+/** A factor before and after: '1 to 0.92'. */
 export const changeWords = ({ before, after }: { before: number; after: number }): string =>
   `${factorWords(before)} to ${factorWords(after)}`
 
@@ -86,6 +87,23 @@ export function factorVerdictWords({ verdict, learned }: FactorProposal<unknown>
   if (verdict === 'nothing to compare') return nothingToCompare
   if (verdict === 'too few') return `Too few: ${coatsWord(learned.count)} of ${FEWEST_COATS} can be held against others.`
   return verdict === 'agrees' ? 'Finished coats agree with it.' : 'Finished coats ask for a change.'
+}
+
+/**
+ * How far a version of a recipe is calibrated: 'calibrated', 'not calibrated yet', or '3 of 8 coats calibrated'.
+ *
+ * @param isCalibrated the version as a whole is.
+ */
+export function calibrationInShort({
+  isCalibrated,
+  coats,
+}: {
+  isCalibrated: boolean
+  coats: readonly { calibratedByCoats: number | null }[]
+}): string {
+  const count = coats.filter(({ calibratedByCoats }) => calibratedByCoats !== null).length
+  if (isCalibrated || (count > 0 && count === coats.length)) return 'calibrated'
+  return count === 0 ? NOT_CALIBRATED : `${count} of ${coats.length} coats calibrated`
 }
 
 /** What a need rests on: 'by 14 coats', or 'not calibrated yet'. */

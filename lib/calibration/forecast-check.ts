@@ -34,6 +34,7 @@ export function checkForecasts(coats: readonly CheckedCoat[]): ForecastCheck {
 export const errorMinutes = ({ outcome }: CheckedCoat): number =>
   ((outcome.dryAt ?? 0) - (outcome.forecast?.likelyAt ?? 0)) / millisecondsInMinute
 
+/** Whether it came dry between P10 and P90, the ends with them. */
 export const isInside = ({ dryHours, earliestHours, safeHours }: CheckedCoat): boolean => dryHours >= earliestHours && dryHours <= safeHours
 
 /** @source linear interpolation between order statistics (Hyndman and Fan 1996, type 7). */

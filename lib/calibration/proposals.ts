@@ -19,7 +19,7 @@ export type Learned = Theta & { count: number }
  *
  * @param priorSd how far the figure may be off before any coat is known.
  * @source Bayes' rule for a normal mean (e.g. Gelman et al., Bayesian Data Analysis, sec. 2.5); the prior and the scatter are ours.
- * @example learnMean(0.2, fiveTimes({ mean: 0.12, sd: 0.08 })) // mean 0.1049, sd 0.0711
+ * @example learnMean(0.2, fiveTimes({ mean: 0.12, sd: 0.08 })) // mean 0.1048, sd 0.0711
  */
 export function learnMean(priorSd: number, said: readonly Theta[]): Learned {
   const weights = said.map(({ sd }) => 1 / (sd ** 2 + COAT_SCATTER ** 2))
@@ -171,6 +171,7 @@ export function recessProposals(counted: readonly CountedCoat[], now: ClockNow):
   })
 }
 
+/** The classes that have a factor of their own. */
 export const RECESSES = ['deep recess', 'closed core', 'closed core, no duct'] as const satisfies readonly Recess[]
 
 function factorProposal<Subject>(

@@ -59,7 +59,10 @@ export async function recordReadings(
         pressurePa,
         ...received,
       }))
-      const within = await addWithinRange(sensorId, told.filter(isWithinRange), { pressurePa: altitudePressurePa, now: received.receivedAt })
+      const within = await addWithinRange(sensorId, told.filter(isWithinRange), {
+        pressurePa: altitudePressurePa,
+        now: received.receivedAt,
+      })
       return within + (await addOutOfRange(sensorId, oneForEachInstant(told.filter((row) => !isWithinRange(row)))))
     })
   }

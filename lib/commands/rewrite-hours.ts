@@ -54,7 +54,9 @@ async function rewriteBetween(sensorId: number, first: number, last: number, now
     ...figures(inHour.get(hour.hourStart) ?? []),
   }))
   const former = await DoseHour.findAll({ where: { sensorId, hourStart: { [Op.between]: [fromHour, toHour - 1] } }, raw: true })
-  const changedHours = rows.filter((row) => isOtherDose(former.find(({ hourStart }) => hourStart === row.hourStart)?.doseLikely ?? 0, row.doseLikely))
+  const changedHours = rows.filter((row) =>
+    isOtherDose(former.find(({ hourStart }) => hourStart === row.hourStart)?.doseLikely ?? 0, row.doseLikely),
+  )
   const [firstChanged, lastChanged] = [changedHours[0], changedHours.at(-1)]
   if (firstChanged && lastChanged) {
     // A newest reading tells of the time that comes after the one before it, which nobody has been told anything of.

@@ -139,9 +139,7 @@ function changeText(name: string, since: AirSince | null, isRenamed: boolean): s
 type Speeds = Pick<Air, 'airSpeedFansOnMps' | 'airSpeedFansOffMps' | 'fanDuty'>
 
 const isOtherSpeed = (one: Speeds, other: Speeds): boolean =>
-  one.airSpeedFansOnMps !== other.airSpeedFansOnMps ||
-  one.airSpeedFansOffMps !== other.airSpeedFansOffMps ||
-  one.fanDuty !== other.fanDuty
+  one.airSpeedFansOnMps !== other.airSpeedFansOnMps || one.airSpeedFansOffMps !== other.airSpeedFansOffMps || one.fanDuty !== other.fanDuty
 
 /** Keeps the air that a place has had until an instant, so that what has dried in it stays as it is. Takes part in the caller's transaction. */
 export async function keepFormerAir(place: Place, fans: readonly Fans[], until: number): Promise<void> {

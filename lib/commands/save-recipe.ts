@@ -85,7 +85,12 @@ export function addRecipeVersion(
       return { ...coat, needSpread: like?.needSpread ?? DEFAULT_SIGMA, calibratedByCoats: like?.calibratedByCoats ?? null }
     })
     const version = newest.version + 1
-    const versionId = await writeVersion(recipeId, version, { note: input.note, coats: calibrated.map(({ bathName: _bathName, ...coat }) => coat), calibratedAt }, { member, now })
+    const versionId = await writeVersion(
+      recipeId,
+      version,
+      { note: input.note, coats: calibrated.map(({ bathName: _bathName, ...coat }) => coat), calibratedAt },
+      { member, now },
+    )
     await addFoundryEvent(
       { type: 'recipe', id: recipeId, name: recipe.name },
       {

@@ -65,7 +65,11 @@ export function versionDifferences(before: readonly CoatCells[], after: readonly
  */
 export function sameNeeds(before: readonly CoatCells[], after: readonly CoatCells[]): (number | null)[] {
   const from = new Map(
-    versionDifferences(before, after).flatMap((difference) => (difference.what === 'changed' || difference.what === 'moved' || difference.what === 'same' ? [[difference.number - 1, difference.before - 1] as const] : [])),
+    versionDifferences(before, after).flatMap((difference) =>
+      difference.what === 'changed' || difference.what === 'moved' || difference.what === 'same'
+        ? [[difference.number - 1, difference.before - 1] as const]
+        : [],
+    ),
   )
   return after.map((coat, index) => {
     const old = from.get(index)

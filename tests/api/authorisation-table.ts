@@ -93,6 +93,10 @@ export type ActionRow = { file: string; name: string; act: Act; who: Role } | { 
  * Without an act it is for records in which nobody is a member yet, and its first line is `await requireNobody()`.
  */
 export const ACTIONS: readonly ActionRow[] = [
+  // Calibration.
+  { file: 'app/(office)/calibration/actions.ts', name: 'acceptCoatsAction', act: 'calibrate', who: 'supervisor' },
+  { file: 'app/(office)/calibration/actions.ts', name: 'acceptFactorAction', act: 'calibrate', who: 'supervisor' },
+  { file: 'app/(office)/calibration/actions.ts', name: 'goBackAction', act: 'calibrate', who: 'supervisor' },
   { file: 'app/(office)/trees/new/actions.ts', name: 'createTreeAction', act: 'trees', who: 'supervisor' },
   { file: 'app/(office)/trees/[tag]/edit/actions.ts', name: 'editTreeAction', act: 'trees', who: 'supervisor' },
   { file: 'app/(office)/trees/[tag]/actions.ts', name: 'holdAction', act: 'hold', who: 'operator' },
@@ -137,8 +141,6 @@ export const ACTIONS: readonly ActionRow[] = [
   { file: 'app/(office)/settings/sensors/actions.ts', name: 'saveOffsetAction', act: 'sensors', who: 'supervisor' },
   { file: 'app/(office)/settings/sensors/actions.ts', name: 'removeOffsetAction', act: 'sensors', who: 'supervisor' },
   { file: 'app/(office)/settings/sensors/actions.ts', name: 'replaceDeviceAction', act: 'sensors', who: 'supervisor' },
-  // What finished coats say of the clock.
-  page('/calibration', 'supervisor'),
   // People and one's own page.
   { file: 'app/(office)/people/actions.ts', name: 'addMemberAction', act: 'people', who: 'owner' },
   { file: 'app/(office)/people/actions.ts', name: 'editMemberAction', act: 'people', who: 'owner' },

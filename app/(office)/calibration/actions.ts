@@ -23,15 +23,14 @@ export async function acceptCoatsAction(recipeId: string, _previous: FormState, 
     const { version, moved, staying } = await acceptRecipeCoats(parsed.data, { member, clock: systemClock })
     revalidatePath('/', 'layout')
     const movedWords = moved.length === 0 ? '' : ` ${moved.length === 1 ? moved[0] : `${moved.length} trees`} moved to it.`
-    const stayingWords = staying === 0 ? '' : ` ${staying === 1 ? '1 open tree stays' : `${staying} open trees stay`} on an older version until moved.`
+    const stayingWords =
+      staying === 0 ? '' : ` ${staying === 1 ? '1 open tree stays' : `${staying} open trees stay`} on an older version until moved.`
     return { status: 'done', text: `Version ${version} is made.${movedWords}${stayingWords}` }
   })
 }
 
 /** Takes over a factor of a place or of a recess, as it was shown. */
-export async function acceptFactorAction(
-  subject: AcceptFactorInput,
-): Promise<FormState> {
+export async function acceptFactorAction(subject: AcceptFactorInput): Promise<FormState> {
   const member = await requireMember('calibrate')
   const parsed = acceptFactorInput.parse(subject)
   return answerForm(async () => {

@@ -57,14 +57,10 @@ function Filled({ page }: { page: Calibration }) {
     <div className="calibration">
       <p className="text-soot">
         {page.countedCount} of {page.outcomeCount} coats with evidence count
-        {page.isCut ? ', the newest of the last two years' : `, of the last ${Math.round(OUTCOME_DAYS / 365)} years`}. Nothing here changes by
-        itself: a person takes it over, and can go back.
+        {page.isCut ? ', the newest of the last two years' : `, of the last ${Math.round(OUTCOME_DAYS / 365)} years`}. Nothing here changes
+        by itself: a person takes it over, and can go back.
       </p>
-      {told.length === 0 && (
-        <p>
-          No coat of a recipe in use counts yet. Below stands why each was left out.
-        </p>
-      )}
+      {told.length === 0 && <p>No coat of a recipe in use counts yet. Below stands why each was left out.</p>}
       {told.map((recipe) => (
         <RecipePlate key={recipe.id} recipe={recipe} />
       ))}
@@ -157,8 +153,8 @@ function Filled({ page }: { page: Calibration }) {
             </header>
             <CheckTable head="Dipped by" rows={page.byPerson} />
             <p className="plate-body text-soot">
-              Whoever drains short or sands thick has coats that dry later than told, day after day. A difference smaller than the middle half
-              means nothing, and neither does one of few coats.
+              Whoever drains short or sands thick has coats that dry later than told, day after day. A difference smaller than the middle
+              half means nothing, and neither does one of few coats.
             </p>
           </section>
         </div>

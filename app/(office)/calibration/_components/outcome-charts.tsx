@@ -31,7 +31,12 @@ type Mark = { cx?: number; cy?: number }
 const InsideMark = ({ cx = 0, cy = 0 }: Mark) => <circle cx={cx} cy={cy} r="4.5" fill="var(--ink)" />
 /** Another shape, not another colour alone. */
 const OutsideMark = ({ cx = 0, cy = 0 }: Mark) => (
-  <path d={`M${cx} ${cy - 6.5}L${cx + 6.5} ${cy}L${cx} ${cy + 6.5}L${cx - 6.5} ${cy}Z`} fill="var(--paper)" stroke="var(--furnace)" strokeWidth="2.2" />
+  <path
+    d={`M${cx} ${cy - 6.5}L${cx + 6.5} ${cy}L${cx} ${cy + 6.5}L${cx - 6.5} ${cy}Z`}
+    fill="var(--paper)"
+    stroke="var(--furnace)"
+    strokeWidth="2.2"
+  />
 )
 
 /** The promise at the dip against what came, and the error over time; the same as a table below. */
@@ -80,13 +85,16 @@ export function OutcomeCharts({ points, timeZone }: { points: readonly OutcomePo
           </ResponsiveContainer>
         </div>
         <p className="text-soot">
-          Hours from the stucco: across as likely was told at the dip, with P10 to P90 as a line; up as the coat came dry. On the slanted line
-          the clock was right. An open diamond lies outside P10 to P90: below the line earlier than told, above it later.
+          Hours from the stucco: across as likely was told at the dip, with P10 to P90 as a line; up as the coat came dry. On the slanted
+          line the clock was right. An open diamond lies outside P10 to P90: below the line earlier than told, above it later.
         </p>
       </figure>
       <figure>
         <h3>Error over time</h3>
-        <div role="img" aria-label={`How many hours later than likely each of ${points.length} coats came dry, from the oldest to the newest.`}>
+        <div
+          role="img"
+          aria-label={`How many hours later than likely each of ${points.length} coats came dry, from the oldest to the newest.`}
+        >
           <ResponsiveContainer width="100%" height={320}>
             <ScatterChart margin={MARGIN} accessibilityLayer={false}>
               <CartesianGrid {...GRID} vertical={false} />
@@ -115,7 +123,9 @@ export function OutcomeCharts({ points, timeZone }: { points: readonly OutcomePo
             </ScatterChart>
           </ResponsiveContainer>
         </div>
-        <p className="text-soot">Hours later than likely, by the day on which the coat was covered. Above the line the likely time was early.</p>
+        <p className="text-soot">
+          Hours later than likely, by the day on which the coat was covered. Above the line the likely time was early.
+        </p>
       </figure>
       <details className="outcome-table">
         <summary>The same as a table{points.length > ROWS_SHOWN ? `, the newest ${ROWS_SHOWN}` : ''}</summary>

@@ -121,7 +121,9 @@ export function RecipePlate({ recipe }: { recipe: RecipeCalibration }) {
           <div className="flex flex-wrap items-center gap-3">
             {open.length > 0 && (
               <Key type="submit" tone="go" isOff={form.isPending || ticked.length === 0}>
-                {ticked.length === 0 ? 'Tick the coats to take over' : `Make version ${recipe.version + 1} with ${coatsWord(ticked.length)}`}
+                {ticked.length === 0
+                  ? 'Tick the coats to take over'
+                  : `Make version ${recipe.version + 1} with ${coatsWord(ticked.length)}`}
               </Key>
             )}
             <FormMessage state={form.state} />
