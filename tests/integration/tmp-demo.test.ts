@@ -1,0 +1,16 @@
+import { it, beforeAll } from 'vitest'
+it('looks', async () => {
+  const { seedDemo } = await import('@/lib/demo/seed')
+  const now = Date.parse('2026-12-01T10:00:00Z')
+  const t = performance.now()
+  await seedDemo({ clock: { now: () => now }, scryptCost: 1024 })
+  console.log('seed ms', Math.round(performance.now() - t), process.cpuUsage().user / 1e6)
+  const { loadCalibration } = await import('@/lib/queries/calibration')
+  const t2 = performance.now()
+  const page = await loadCalibration(now)
+  console.log('page ms', Math.round(performance.now() - t2), page.outcomeCount, page.countedCount, JSON.stringify(page.clock))
+  for (const r of page.recipes) for (const c of r.coats) if (c.learned.count > 0) console.log(r.name, c.coat.number, c.verdict, c.learned, c.needAfter)
+  console.log(JSON.stringify(page.places), JSON.stringify(page.leftOut), JSON.stringify(page.byPerson))
+  const { database } = await import('@/models')
+  console.log(JSON.stringify((await database.query(`SELECT t.tag, c.number, round(c.outcome_theta,2) th, round(c.outcome_sd,2) sd, round(c.moisture_ratio_at_redip,3) mr, c.moisture_target mt, c.deviations FROM coats c JOIN trees t ON t.id=c.tree_id WHERE c.outcome_theta IS NOT NULL ORDER BY 1,2`))[0]).replaceAll('},', '},\n'))
+}, 240000)
