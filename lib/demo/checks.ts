@@ -23,8 +23,12 @@ type Parts = PlanParts & { climate: DemoClimate }
 
 const MINUTE = millisecondsInMinute
 
-/** How a coat was checked: most are felt, some weighed, a few measured with a thermometer. */
-const MEANS = ['touch', 'touch', 'weighing', 'touch', 'surface', 'weighing'] as const
+/** How a coat was checked: felt, weighed, or now and then measured with a thermometer. */
+const MEANS = ['touch', 'weighing', 'touch', 'weighing', 'surface', 'weighing'] as const
+/** Share of its true need at which each tells most. */
+const TELLS_MOST = { touch: 0.93, weighing: 0.5, surface: 0.75 } as const
+/** Long before it is dry, nobody feels a coat. */
+const FELT_FROM = 0.8
 
 /**
  * What people took on the coats of a tree before the next one went on, as their true need has it: 'not yet' while it dries, 'dry' before the
@@ -51,7 +55,7 @@ export function planChecks(shape: Shape, coats: readonly PlannedCoat[], until: n
     const massAt = (at: number) => massKg + addedKg - waterKg * (1 - leftAt(at))
     const means = coat.truth === null ? null : MEANS[(index + offset) % MEANS.length]!
     const atShare = (share: number) => parts.room.whenDose(coat.place, start, share * trueNeed, 'likely')
-    const half = means === null ? null : whileDrying(atShare(0.78), start, end, parts.hours)
+    const half = means === null ? null : whileDrying(atShare(TELLS_MOST[means]), start, end, parts.hours)
     if (means === 'weighing') {
       if (!wasWeighed) weigh(coat.dippedAt - 6 * MINUTE, coat.number - 1, 'before dip', massKg)
       weigh(start + 3 * MINUTE, coat.number, 'after stucco', massAt(start))
@@ -65,12 +69,14 @@ export function planChecks(shape: Shape, coats: readonly PlannedCoat[], until: n
     const spot = slowestSpot(shape.recessClass)
     const touch = (at: number, verdict: 'dry' | 'not yet', isMistake = false) =>
       checks.push({ at, coatNumber: coat.number, evidence: { kind: 'touch', spot, verdict }, isMistake })
-    if (means === 'touch' && half !== null) {
+    if (means === 'touch' && half !== null && half >= (atShare(FELT_FROM) ?? Infinity)) {
       touch(half, 'not yet')
-      if (!hasMistake) touch(half + 4 * MINUTE, 'dry', true)
+    }
+    if (!hasMistake && half !== null) {
+      touch(half + 4 * MINUTE, 'dry', true)
       hasMistake = true
     }
-    if (means !== null) touch(whenFeltDry(atShare(1.04 + 0.08 * parts.random()), end, parts.hours), 'dry')
+    if (means !== null) touch(whenFeltDry(atShare(1.03 + 0.08 * parts.random()), end, parts.hours), 'dry')
     wasWeighed = means === 'weighing'
     massKg = massAt(end)
   }
@@ -101,5 +107,6 @@ function surfaceAt(at: number, coat: PlannedCoat, moistureLeft: number, { climat
   const depressionK = wetBulbDepressionK(air, stationPressurePa(DEMO_SETTING.altitudeM))
   const share = Math.min(0.85, moistureLeft / 0.45)
   const surfaceTempC = Math.round((air.airTempC - share * depressionK) * 10) / 10
-  return depressionK < 3.3 ? null : { kind: 'surface temperature', spot: 'outside', surfaceTempC }
+  // They read the air beside it too: the loft's logger once lost a night.
+  return depressionK < 3.3 ? null : { kind: 'surface temperature', spot: 'outside', surfaceTempC, room: air }
 }
