@@ -10,11 +10,11 @@ export function bringToOffsets({ pause }: { pause: (milliseconds: number) => Pro
   return {
     name: 'correct-readings',
     schedule: '20 * * * * *',
-    run: async ({ isStopping }) => {
+    run: async ({ clock, isStopping }) => {
       let corrected = 0
       for (const sensorId of await loadSensorsToCorrect()) {
         for (let hasMore = true; hasMore && !isStopping();) {
-          const piece = await correctReadings(sensorId)
+          const piece = await correctReadings(sensorId, clock.now())
           corrected += piece.changed
           ;({ hasMore } = piece)
           if (hasMore) await pause(PAUSE_MS)

@@ -43,6 +43,8 @@ export class Coat extends Model<InferAttributes<Coat>, InferCreationAttributes<C
   declare longestWaitHours: CreationOptional<number>
   declare needSpread: CreationOptional<number>
   declare isCalibrated: CreationOptional<boolean>
+  /** How much slower its tree's slowest spot was taken to dry than its outside. */
+  declare recessFactor: CreationOptional<number>
   declare recipeReferenceHours: CreationOptional<number | null>
   declare forecastP10At: CreationOptional<number | null>
   declare forecastP50At: CreationOptional<number | null>
@@ -95,6 +97,7 @@ export class Coat extends Model<InferAttributes<Coat>, InferCreationAttributes<C
         longestWaitHours: { type: DataTypes.DOUBLE, allowNull: false, defaultValue: 72 },
         needSpread: { type: DataTypes.DOUBLE, allowNull: false, defaultValue: 0.25 },
         isCalibrated: { ...flag('isCalibrated'), defaultValue: false },
+        recessFactor: { type: DataTypes.DOUBLE, allowNull: false, defaultValue: 1 },
         recipeReferenceHours: { type: DataTypes.DOUBLE },
         forecastP10At: { type: DataTypes.INTEGER },
         forecastP50At: { type: DataTypes.INTEGER },

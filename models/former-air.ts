@@ -10,6 +10,7 @@ export class FormerAir extends Model<InferAttributes<FormerAir>, InferCreationAt
   declare airSpeedFansOnMps: number
   declare airSpeedFansOffMps: number
   declare fanDuty: CreationOptional<number>
+  declare airFactor: CreationOptional<number>
   declare sensorId: number
   declare fanHours: FanHours[]
 
@@ -22,6 +23,7 @@ export class FormerAir extends Model<InferAttributes<FormerAir>, InferCreationAt
         airSpeedFansOnMps: { type: DataTypes.DOUBLE, allowNull: false },
         airSpeedFansOffMps: { type: DataTypes.DOUBLE, allowNull: false },
         fanDuty: { type: DataTypes.DOUBLE, allowNull: false, defaultValue: 1 },
+        airFactor: { type: DataTypes.DOUBLE, allowNull: false, defaultValue: 1 },
         sensorId: { type: DataTypes.INTEGER, allowNull: false },
         fanHours: json('fanHours'),
       },

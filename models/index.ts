@@ -2,6 +2,7 @@ import { database, inTransaction } from '@/db/connection'
 import { Backup } from '@/models/backup'
 import { Bath } from '@/models/bath'
 import { BathStir } from '@/models/bath-stir'
+import { Calibration } from '@/models/calibration'
 import { Closure } from '@/models/closure'
 import { Coat } from '@/models/coat'
 import { Delivery } from '@/models/delivery'
@@ -81,6 +82,7 @@ const models = [
   Operation,
   Coat,
   Evidence,
+  Calibration,
   Hold,
   LookOver,
   Release,
@@ -198,6 +200,7 @@ export {
   Operation,
   Coat,
   Evidence,
+  Calibration,
   Hold,
   LookOver,
   Release,

@@ -19,6 +19,8 @@ export class Place extends Model<InferAttributes<Place>, InferCreationAttributes
   declare airSpeedFansOffMps: number
   /** Share of the time 'on' in which the fans blow on the trees. */
   declare fanDuty: CreationOptional<number>
+  /** How much faster it dries than its air speed says, by finished coats; 1 until somebody accepts what they say. */
+  declare airFactor: CreationOptional<number>
   /** Local day on which the speeds were measured; null: an estimate. */
   declare airMeasuredOn: CreationOptional<string | null>
   declare airMeasuredWith: CreationOptional<AirMeter | null>
@@ -39,6 +41,7 @@ export class Place extends Model<InferAttributes<Place>, InferCreationAttributes
         airSpeedFansOnMps: { type: DataTypes.DOUBLE, allowNull: false },
         airSpeedFansOffMps: { type: DataTypes.DOUBLE, allowNull: false },
         fanDuty: { type: DataTypes.DOUBLE, allowNull: false, defaultValue: 1 },
+        airFactor: { type: DataTypes.DOUBLE, allowNull: false, defaultValue: 1 },
         airMeasuredOn: { type: DataTypes.TEXT },
         airMeasuredWith: { type: DataTypes.TEXT },
         airMeasuredBy: { type: DataTypes.TEXT },

@@ -15,7 +15,7 @@ const SPAN_AT_ONCE_MS = 2 * millisecondsInDay
  *
  * @returns how many readings were changed, and whether more are waiting.
  */
-export function correctReadings(sensorId: number): Promise<{ changed: number; hasMore: boolean }> {
+export function correctReadings(sensorId: number, now: number): Promise<{ changed: number; hasMore: boolean }> {
   return inTransaction(async () => {
     const sensor = await Sensor.findByPk(sensorId, { rejectOnEmpty: true })
     if (sensor.correctFrom === null) return { changed: 0, hasMore: false }
@@ -34,6 +34,7 @@ export function correctReadings(sensorId: number): Promise<{ changed: number; ha
     await rewriteHours(
       sensorId,
       toChange.map(({ measuredAt }) => measuredAt),
+      now,
     )
     const last = readings.at(-1)
     const hasMore = last !== undefined && (readings.length < waiting.length || waiting.length === READINGS_AT_ONCE)

@@ -59,7 +59,10 @@ export async function recordReadings(
         pressurePa,
         ...received,
       }))
-      const within = await addWithinRange(sensorId, told.filter(isWithinRange), altitudePressurePa)
+      const within = await addWithinRange(sensorId, told.filter(isWithinRange), {
+        pressurePa: altitudePressurePa,
+        now: received.receivedAt,
+      })
       return within + (await addOutOfRange(sensorId, oneForEachInstant(told.filter((row) => !isWithinRange(row)))))
     })
   }
@@ -81,7 +84,7 @@ function oneForEachInstant(rows: readonly Told[]): Told[] {
 }
 
 /** @returns how many instants were not known. */
-async function addWithinRange(sensorId: number, rows: readonly Told[], pressurePa: number): Promise<number> {
+async function addWithinRange(sensorId: number, rows: readonly Told[], how: { pressurePa: number; now: number }): Promise<number> {
   if (rows.length === 0) return 0
   const offsets = await SensorOffset.findAll({ where: { sensorId } })
   let added = 0
@@ -103,7 +106,7 @@ async function addWithinRange(sensorId: number, rows: readonly Told[], pressureP
         added += 1
       } else if (standsBefore(entry.reading, row)) entries.set(row.measuredAt, { ...entry, reading: row, isChanged: true })
     }
-    await settle(sensorId, { entries: [...entries.values()], from, to }, { offsets, pressurePa })
+    await settle(sensorId, { entries: [...entries.values()], from, to }, { ...how, offsets })
   }
   return added
 }
@@ -114,7 +117,7 @@ type Neighbourhood = { entries: readonly Entry[]; from: number; to: number }
 async function settle(
   sensorId: number,
   { entries, from, to }: Neighbourhood,
-  how: { offsets: readonly SensorOffset[]; pressurePa: number },
+  { now, ...how }: { offsets: readonly SensorOffset[]; pressurePa: number; now: number },
 ): Promise<void> {
   const ordered = entries.toSorted((one, other) => one.reading.measuredAt - other.reading.measuredAt)
   const marks = readingMarks(ordered.map(({ reading }) => reading))
@@ -134,7 +137,7 @@ async function settle(
     sensorId,
     toSettle.flatMap(({ reading, mark }) => (mark === null ? [] : [{ ...reading, reason: mark }])),
   )
-  await rewriteHours(sensorId, toSettle.filter(({ stood, mark }) => stood === null || mark === null).map(instantOf))
+  await rewriteHours(sensorId, toSettle.filter(({ stood, mark }) => stood === null || mark === null).map(instantOf), now)
 }
 
 const instantOf = ({ reading }: Entry) => reading.measuredAt

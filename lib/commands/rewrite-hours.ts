@@ -1,5 +1,6 @@
 import { millisecondsInHour } from 'date-fns/constants'
 import { Op } from 'sequelize'
+import { markLateAir } from '@/lib/commands/mark-late-air'
 import { hourDoses, hourStartOf } from '@/lib/drying/dose-hours'
 import { roomSegments } from '@/lib/drying/room-segments'
 import type { RoomReading } from '@/lib/drying/types'
@@ -12,15 +13,15 @@ const TOGETHER_MS = 3 * millisecondsInHour
 
 /**
  * Works out anew the hours that a change of readings touches: from the reading before each of these instants to the one after it; no
- * other hour can change. Takes part in the caller's transaction.
+ * other hour can change. Coats that were covered by then are marked. Takes part in the caller's transaction.
  */
-export async function rewriteHours(sensorId: number, changedAt: readonly number[]): Promise<void> {
+export async function rewriteHours(sensorId: number, changedAt: readonly number[], now: number): Promise<void> {
   for (const { from, to } of windowsAround(changedAt, { before: 0, after: TOGETHER_MS })) {
-    await rewriteBetween(sensorId, from, to - TOGETHER_MS)
+    await rewriteBetween(sensorId, from, to - TOGETHER_MS, now)
   }
 }
 
-async function rewriteBetween(sensorId: number, first: number, last: number): Promise<void> {
+async function rewriteBetween(sensorId: number, first: number, last: number, now: number): Promise<void> {
   const touched = await loadReadingsInRange(sensorId, first, last + 1)
   const [oldest, newest] = [touched[0], touched.at(-1)]
   // Before the first reading and after the last one no hour has a row, whichever way the readings came and went.
@@ -52,6 +53,16 @@ async function rewriteBetween(sensorId: number, first: number, last: number): Pr
     hasTyped: hour.hasTyped,
     ...figures(inHour.get(hour.hourStart) ?? []),
   }))
+  const former = await DoseHour.findAll({ where: { sensorId, hourStart: { [Op.between]: [fromHour, toHour - 1] } }, raw: true })
+  const changedHours = rows.filter((row) =>
+    isOtherDose(former.find(({ hourStart }) => hourStart === row.hourStart)?.doseLikely ?? 0, row.doseLikely),
+  )
+  const [firstChanged, lastChanged] = [changedHours[0], changedHours.at(-1)]
+  if (firstChanged && lastChanged) {
+    // A newest reading tells of the time that comes after the one before it, which nobody has been told anything of.
+    const from = newest.measuredAt <= last ? first : oldest.measuredAt
+    await markLateAir(sensorId, { from: Math.max(from, firstChanged.hourStart), to: lastChanged.hourStart + millisecondsInHour }, now)
+  }
   await DoseHour.bulkCreate(rows, {
     updateOnDuplicate: [
       'doseLikely',
@@ -70,6 +81,10 @@ async function rewriteBetween(sensorId: number, first: number, last: number): Pr
     ],
   })
 }
+
+/** An hour's dose that differs by less is taken to be the same. Our own. */
+const SAME_DOSE_SHARE = 0.01
+const isOtherDose = (one: number, other: number): boolean => Math.abs(one - other) > SAME_DOSE_SHARE * Math.max(one, other)
 
 const mean = (values: readonly number[]) => values.reduce((sum, value) => sum + value, 0) / values.length
 

@@ -57,11 +57,16 @@ export function changePlace(placeId: string, input: PlaceInput, since: AirSince,
     const formerSensor = await Sensor.findByPk(place.sensorId, { rejectOnEmpty: true })
     const formerFans = await FanHours.findAll({ where: { placeId } })
     const { fans, ...columns } = input
-    const changed = changedFields(inWords(place, formerFans, formerSensor.name), inWords(input, fans, sensor.name))
+    // What finished coats said of the air was said of those speeds.
+    const airFactor = isOtherSpeed(place, input) ? 1 : place.airFactor
+    const changed = changedFields(
+      { ...inWords(place, formerFans, formerSensor.name), airFactor: place.airFactor },
+      { ...inWords(input, fans, sensor.name), airFactor },
+    )
     if (Object.keys(changed.after).length === 0) return
     const isOtherAir = Object.keys(changed.after).some((field) => !NO_AIR_FIELDS.has(field))
     if (isOtherAir && since === 'now') await keepFormerAir(place, formerFans, now)
-    await place.update(columns)
+    await place.update({ ...columns, airFactor })
     await stopBeingDemo(place, member)
     await FanHours.destroy({ where: { placeId } })
     await FanHours.bulkCreate(fans.map((row) => ({ ...row, placeId })))
@@ -131,10 +136,16 @@ function changeText(name: string, since: AirSince | null, isRenamed: boolean): s
   return since === 'now' ? `Place ${name} changed, from now on.` : `Place ${name} corrected; what hangs there was worked out again.`
 }
 
-async function keepFormerAir(place: Place, fans: readonly Fans[], until: number): Promise<void> {
-  const { airSpeedFansOnMps, airSpeedFansOffMps, fanDuty, sensorId } = place
+type Speeds = Pick<Air, 'airSpeedFansOnMps' | 'airSpeedFansOffMps' | 'fanDuty'>
+
+const isOtherSpeed = (one: Speeds, other: Speeds): boolean =>
+  one.airSpeedFansOnMps !== other.airSpeedFansOnMps || one.airSpeedFansOffMps !== other.airSpeedFansOffMps || one.fanDuty !== other.fanDuty
+
+/** Keeps the air that a place has had until an instant, so that what has dried in it stays as it is. Takes part in the caller's transaction. */
+export async function keepFormerAir(place: Place, fans: readonly Fans[], until: number): Promise<void> {
+  const { airSpeedFansOnMps, airSpeedFansOffMps, fanDuty, airFactor, sensorId } = place
   const fanHours = fans.map(({ weekday, onMinute, offMinute }) => ({ weekday, onMinute, offMinute }))
-  const air = { airSpeedFansOnMps, airSpeedFansOffMps, fanDuty, sensorId, fanHours }
+  const air = { airSpeedFansOnMps, airSpeedFansOffMps, fanDuty, airFactor, sensorId, fanHours }
   await FormerAir.create({ id: newId(until), placeId: place.id, until, ...air })
 }
 

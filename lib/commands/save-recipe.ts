@@ -2,17 +2,19 @@ import { addFoundryEvent } from '@/lib/commands/foundry-event'
 import { refuseField } from '@/lib/commands/refuse-field'
 import { retiredBaths } from '@/lib/commands/retired-baths'
 import { stopBeingDemo } from '@/lib/commands/stop-being-demo'
+import { writeVersion } from '@/lib/commands/write-version'
 import type { Clock } from '@/lib/core/clock'
 import { AppError } from '@/lib/core/errors'
 import { newId } from '@/lib/core/ids'
+import { DEFAULT_SIGMA } from '@/lib/drying/need'
 import { isSameName } from '@/lib/format/same-name'
 import type { Actor } from '@/lib/members/actor'
 import { changedFields } from '@/lib/members/changed-fields'
 import { loadVersionCoats } from '@/lib/queries/version-coats'
-import { areNeedsSame, coatCells } from '@/lib/recipes/coat-cells'
+import { coatCells } from '@/lib/recipes/coat-cells'
 import type { RecipeCoatInput, RecipeInput, RecipeVersionInput } from '@/lib/recipes/recipe-input'
-import { differencesInShort, hasDifferences, versionDifferences } from '@/lib/recipes/version-differences'
-import { Bath, inTransaction, Member, Recipe, RecipeCoat, RecipeVersion } from '@/models'
+import { differencesInShort, hasDifferences, sameNeeds, versionDifferences } from '@/lib/recipes/version-differences'
+import { Bath, inTransaction, Member, Recipe, RecipeVersion } from '@/models'
 
 type By = { member: Actor; clock: Clock }
 
@@ -27,7 +29,7 @@ export function createRecipe(input: RecipeInput, { member, clock }: By): Promise
     await requireFreeName(input.name)
     const coats = await withBaths(input.coats)
     const recipe = await Recipe.create({ id: newId(now), name: input.name, isDemo: member.isDemo ?? false, createdAt: now })
-    const versionId = await addVersion(recipe.id, 1, { note: input.note, coats: input.coats, calibratedAt: null }, { member, now })
+    const versionId = await writeVersion(recipe.id, 1, { note: input.note, coats: input.coats, calibratedAt: null }, { member, now })
     await addFoundryEvent(
       { type: 'recipe', id: recipe.id, name: recipe.name },
       {
@@ -44,7 +46,7 @@ export function createRecipe(input: RecipeInput, { member, clock }: By): Promise
 
 /**
  * Adds the next version of a recipe; the versions before it stay as they are, and so do the trees that stand on them. It is
- * calibrated only where the version it was filled from is, and nothing differs that a need rests on.
+ * calibrated only where the version it was filled from is, coat by coat, and nothing differs that a need rests on.
  *
  * @throws {AppError} not_found; conflict when somebody made a version meanwhile or nothing differs from the newest one, and with
  *   `fields` for a bath that is unknown or retired.
@@ -74,9 +76,21 @@ export function addRecipeVersion(
     if (!hasDifferences(differences)) {
       throw new AppError('conflict', `Nothing differs from version ${newest.version}: a new version needs a difference.`)
     }
-    const calibratedAt = areNeedsSame((known.get(from.id) ?? []).map(coatCells), cells) ? from.calibratedAt : null
+    const filledFrom = known.get(from.id) ?? []
+    const kept = sameNeeds(filledFrom.map(coatCells), cells)
+    const areAllKept = kept.every((index) => index !== null)
+    const calibratedAt = areAllKept ? from.calibratedAt : null
+    const calibrated = coats.map((coat, index) => {
+      const like = kept[index] == null ? undefined : filledFrom[kept[index]]
+      return { ...coat, needSpread: like?.needSpread ?? DEFAULT_SIGMA, calibratedByCoats: like?.calibratedByCoats ?? null }
+    })
     const version = newest.version + 1
-    const versionId = await addVersion(recipeId, version, { note: input.note, coats: input.coats, calibratedAt }, { member, now })
+    const versionId = await writeVersion(
+      recipeId,
+      version,
+      { note: input.note, coats: calibrated.map(({ bathName: _bathName, ...coat }) => coat), calibratedAt },
+      { member, now },
+    )
     await addFoundryEvent(
       { type: 'recipe', id: recipeId, name: recipe.name },
       {
@@ -86,7 +100,7 @@ export function addRecipeVersion(
         text: `Version ${version} of ${recipe.name}: ${differencesInShort(differences)}. ${input.note}`,
         ...changedFields(
           { version: newest.version, coats: numbered(before), isCalibrated: newest.calibratedAt !== null },
-          { version, coats: numbered(coats), isCalibrated: calibratedAt !== null },
+          { version, coats: numbered(calibrated), isCalibrated: calibratedAt !== null },
         ),
       },
     )
@@ -173,18 +187,6 @@ async function withBaths(coats: readonly RecipeCoatInput[]): Promise<NamedCoat[]
     if (bath.retiredAt !== null) refuseField(`coats.${index}.bathId`, `${bath.name} is retired: choose a bath in use.`)
     return { ...coat, bathName: bath.name }
   })
-}
-
-async function addVersion(
-  recipeId: string,
-  version: number,
-  { note, coats, calibratedAt }: { note: string; coats: readonly RecipeCoatInput[]; calibratedAt: number | null },
-  { member, now }: { member: Actor; now: number },
-): Promise<string> {
-  const id = newId(now)
-  await RecipeVersion.create({ id, recipeId, version, note, calibratedAt, createdBy: member.id, createdAt: now })
-  await RecipeCoat.bulkCreate(coats.map((coat, index) => ({ ...coat, recipeVersionId: id, number: index + 1 })))
-  return id
 }
 
 /** Coats as the history keeps them: a bath by the name it had. */

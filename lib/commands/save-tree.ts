@@ -5,9 +5,10 @@ import { retiredBaths } from '@/lib/commands/retired-baths'
 import { addTreeEvent } from '@/lib/commands/tree-event'
 import type { Clock } from '@/lib/core/clock'
 import { newId } from '@/lib/core/ids'
-import { RECESS_FACTOR, SECTION_FACTOR } from '@/lib/drying/need'
+import { SECTION_FACTOR } from '@/lib/drying/need'
 import { isSameName } from '@/lib/format/same-name'
 import type { Actor } from '@/lib/members/actor'
+import { loadRecessFactors } from '@/lib/queries/recess-factors'
 import type { TreeInput } from '@/lib/trees/tree-input'
 import { Coat, inTransaction, Piece, Place, RecipeVersion, Section, Tree, TreePiece, TreePlace, Work } from '@/models'
 
@@ -68,10 +69,12 @@ export function editTree(treeId: string, input: TreeInput, { member, clock }: By
 
 /** Of every coat that is on: when the newest is taken back the one below dries on, and it has the same recess. */
 async function correctNeeds(tree: Tree, { recessClass, spacing }: TreeInput): Promise<void> {
-  const ratio = (RECESS_FACTOR[recessClass] / RECESS_FACTOR[tree.recessClass]) * (SECTION_FACTOR[spacing] / SECTION_FACTOR[tree.spacing])
-  if (ratio === 1) return
+  if (recessClass === tree.recessClass && spacing === tree.spacing) return
+  const recessFactors = await loadRecessFactors()
   for (const coat of await Coat.findAll({ where: { treeId: tree.id, withdrawnAt: null } })) {
-    await coat.update({ needReferenceHours: coat.needReferenceHours * ratio })
+    const recessFactor = recessClass === tree.recessClass ? coat.recessFactor : recessFactors[recessClass]
+    const ratio = (recessFactor / coat.recessFactor) * (SECTION_FACTOR[spacing] / SECTION_FACTOR[tree.spacing])
+    await coat.update({ needReferenceHours: coat.needReferenceHours * ratio, recessFactor })
   }
 }
 

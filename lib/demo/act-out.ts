@@ -8,14 +8,17 @@ import { recordTypedReading } from '@/lib/commands/record-typed-reading'
 import { releaseTrees } from '@/lib/commands/release-trees'
 import { createTree } from '@/lib/commands/save-tree'
 import { scrapTree } from '@/lib/commands/scrap-tree'
+import { withdrawEvidence } from '@/lib/commands/withdraw-evidence'
 import { newId } from '@/lib/core/ids'
 import type { Happening } from '@/lib/demo/happenings'
 import type { TaggedTree } from '@/lib/demo/plan'
 import type { DemoShop } from '@/lib/demo/open-shop'
+import { evidenceAnswer } from '@/lib/trees/evidence-input'
 
 /** Has people do what happened, through the same commands as on a real floor, each at its own moment. */
 export async function actOut(list: readonly Happening[], shop: DemoShop): Promise<void> {
   const treeIds = new Map<string, string>()
+  const newestEvidence = new Map<string, string>()
   const idOf = (tree: TaggedTree): string => treeIds.get(tree.tag) ?? ''
   for (const happening of list) {
     const { at, by } = happening
@@ -46,7 +49,10 @@ export async function actOut(list: readonly Happening[], shop: DemoShop): Promis
         await logDips(dipRun(happening, idOf, shop), as)
         break
       case 'evidence':
-        await recordEvidence(idOf(happening.tree), { operationId: newId(at), coatNumber: happening.coatNumber, ...happening.evidence }, as)
+        newestEvidence.set(happening.tree.tag, await takeEvidence(happening, idOf(happening.tree), as))
+        break
+      case 'evidence withdrawn':
+        await withdrawEvidence(newestEvidence.get(happening.tree.tag) ?? '', { operationId: newId(at) }, as)
         break
       case 'hold':
         await holdTree(idOf(happening.tree), happening.reason, as)
@@ -73,6 +79,14 @@ export async function actOut(list: readonly Happening[], shop: DemoShop): Promis
         break
     }
   }
+}
+
+type As = Parameters<typeof recordEvidence>[2]
+
+/** @returns its id. */
+async function takeEvidence({ at, coatNumber, evidence }: Happening & { kind: 'evidence' }, treeId: string, as: As): Promise<string> {
+  const { response } = await recordEvidence(treeId, { operationId: newId(at), coatNumber, ...evidence }, as)
+  return evidenceAnswer.parse(response).evidenceId
 }
 
 function treeInput({ tree, tag, pourDate, recessClass, spacing, coats }: TaggedTree, shop: DemoShop): Parameters<typeof createTree>[0] {

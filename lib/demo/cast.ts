@@ -29,6 +29,8 @@ export type Story =
   | { kind: 'held overnight'; reason: string; lifted: string }
   | { kind: 'felt'; verdict: Verdict }
   | { kind: 'rough time'; coat: number }
+  /** Somebody felt the wrong tree, and took it back. */
+  | { kind: 'mistaken touch' }
 
 export type DemoPiece = { workTitle: string; sectionName?: string; editionNumber: number; isRecast?: boolean }
 
@@ -347,7 +349,15 @@ export const CAST: readonly CastTree[] = [
     cup: waxCup,
     pour: 'planned',
   },
-  { pieces: one('The Netmender', 1), recipe: 'six', aim: { kind: 'released', daysAgo: 2.1 }, waxMassKg: 2.9, cup: waxCup, pour: 'planned' },
+  {
+    pieces: one('The Netmender', 1),
+    recipe: 'six',
+    aim: { kind: 'released', daysAgo: 2.1 },
+    waxMassKg: 2.9,
+    cup: waxCup,
+    pour: 'planned',
+    story: { kind: 'mistaken touch' },
+  },
   {
     pieces: one('Hare Listening', 2),
     recipe: 'six',
@@ -367,5 +377,16 @@ export const CAST: readonly CastTree[] = [
     coatsOn: [3, 3],
     waxMassKg: 1.1,
     cup: paperCup,
+  },
+  // Further shells whose coats were weighed and felt; at the end, so that the others keep their luck.
+  { pieces: one('Kelp Bowl', 2), recipe: 'six', aim: { kind: 'released', daysAgo: 5.1 }, waxMassKg: 1.2, cup: paperCup, pour: 'planned' },
+  { pieces: one('Three Hares', 4), recipe: 'six', aim: { kind: 'released', daysAgo: 4.1 }, waxMassKg: 0.9, cup: paperCup, pour: 'planned' },
+  {
+    pieces: one('Saltmarsh Relief', 2),
+    recipe: 'six',
+    aim: { kind: 'released', daysAgo: 2.9 },
+    waxMassKg: 3.6,
+    cup: waxCup,
+    pour: 'planned',
   },
 ]

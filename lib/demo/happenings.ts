@@ -1,20 +1,13 @@
 import { millisecondsInDay, millisecondsInHour, millisecondsInMinute, millisecondsInSecond } from 'date-fns/constants'
 import { COATING_WAYS, STUCCOS } from '@/lib/coats/vocabulary'
+import type { TakenEvidence } from '@/lib/demo/checks'
 import type { PlannedCoat } from '@/lib/demo/plan-coats'
 import type { DemoPlan, TaggedTree } from '@/lib/demo/plan'
 import type { DemoPersonKey } from '@/lib/demo/people'
 import { unitOf } from '@/lib/demo/random'
 import { lastAtWork, shiftAt } from '@/lib/demo/work-hours'
 import { slowestSpot } from '@/lib/trees/coat-evidence'
-import type { EvidenceInput } from '@/lib/trees/evidence-input'
 import type { Air } from '@/lib/drying/types'
-
-/** What somebody took, without what its moment and its tree tell. */
-type TakenEvidence = EvidenceInput extends infer Input
-  ? Input extends EvidenceInput
-    ? Omit<Input, 'operationId' | 'coatNumber' | 'takenAt'>
-    : never
-  : never
 
 type Of<Kind extends string, Detail> = { at: number; kind: Kind; by: DemoPersonKey } & Detail
 
@@ -23,6 +16,7 @@ export type Happening =
   | Of<'tree added' | 'intake' | 'intake begun' | 'look-over' | 'release', { tree: TaggedTree }>
   | Of<'run', { dips: { tree: TaggedTree; coat: PlannedCoat }[]; room?: Air }>
   | Of<'evidence', { tree: TaggedTree; coatNumber: number; evidence: TakenEvidence }>
+  | Of<'evidence withdrawn', { tree: TaggedTree }>
   | Of<'hold' | 'lift' | 'scrap', { tree: TaggedTree; reason: string }>
   | Of<'stir', { bath: 'face' | 'backup' }>
   | Of<'reading', { room: Air }>
@@ -55,6 +49,11 @@ function ofTree(tree: TaggedTree, { now, hours }: DemoPlan): Happening[] {
     const dippedAt = tree.coats.at(-1)?.dippedAt ?? now
     const at = Math.max(lastAtWork(hours, now - 25 * MINUTE, MINUTE) ?? 0, Math.min(now - MINUTE, dippedAt + 10 * MINUTE))
     list.push({ at, kind: 'hold', by: operatorAt(at, 1), tree, reason: aim.reason })
+  }
+  for (const { at, coatNumber, evidence, isMistake } of tree.checks) {
+    const by = operatorAt(at, 2)
+    list.push({ at, kind: 'evidence', by, tree, coatNumber, evidence })
+    if (isMistake) list.push({ at: at + 2 * MINUTE, kind: 'evidence withdrawn', by, tree })
   }
   if (story?.kind === 'held overnight') {
     const [from, to] = longestWait(tree)

@@ -4,6 +4,7 @@ import type { CastTree } from '@/lib/demo/cast'
 import type { DryingRoom } from '@/lib/demo/drying-room'
 import { pick, type Random } from '@/lib/demo/random'
 import { DEMO_RECIPES, type DemoBath, type DemoPlace, type DemoRecipeCoat } from '@/lib/demo/shop'
+import { drawTruth, WAITED_SHARE } from '@/lib/demo/truth'
 import { lastRunSlot, type WorkHours } from '@/lib/demo/work-hours'
 import { guardFor, needBand, needReferenceHours, sigma } from '@/lib/drying/need'
 import type { Dose } from '@/lib/drying/types'
@@ -18,10 +19,18 @@ export type PlannedCoat = {
   drainSeconds: number
   roughMinutes: number
   reason: string | null
+  /** What it really needs against its starting value, where people check it; null where they do not. */
+  truth: number | null
 }
 
 /** What of a tree bears on its drying. */
-export type Shape = { tree: CastTree; recessClass: RecessClass; spacing: Spacing }
+export type Shape = {
+  tree: CastTree
+  recessClass: RecessClass
+  spacing: Spacing
+  /** People weigh and feel its coats, and dip over them once they are dry. */
+  isChecked?: boolean
+}
 
 /** What a coat asks of the room until the next one may go on. */
 export type Demand = { coat: DemoRecipeCoat; stucco: Stucco; need: Dose; spread: number; amount: number; bound: 'likely' | 'low' }
@@ -115,8 +124,14 @@ export function planCoatsBefore(shape: Shape, newest: number, nextAt: number, pa
 function planCoatBefore(shape: Shape, number: number, dueAt: number, parts: PlanParts, pace: Pace): PlannedCoat | null {
   const { room, hours, random, startsAt } = parts
   const { tree } = shape
-  const demand = demandOf(shape, number)
-  const { coat, stucco } = demand
+  const asPlanned = demandOf(shape, number)
+  const { coat, stucco } = asPlanned
+  const isEarly = tree.story?.kind === 'dipped early' && tree.story.overCoat === number
+  const truth = shape.isChecked && !isEarly ? drawTruth(coat.kind, random) : null
+  const demand: Demand = {
+    ...asPlanned,
+    amount: Math.max(asPlanned.amount, asPlanned.need.likely * (truth ?? 0) * WAITED_SHARE),
+  }
   const place = usualPlace(coat, random, pace)
   const way = wayOf(tree, coat)
   const delayMs = (4 + 36 * random() * random()) * millisecondsInMinute
@@ -127,7 +142,6 @@ function planCoatBefore(shape: Shape, number: number, dueAt: number, parts: Plan
   // A face coat does not hang over a Sunday: somebody comes in for it.
   const isTooLong = inShift !== null && coat.kind === 'face' && dueAt - inShift > coat.longestWaitHours * millisecondsInHour
   const inTime = bound !== null && isTooLong ? lastRunSlot(hours, bound, kind, 'extra too') : inShift
-  const isEarly = tree.story?.kind === 'dipped early' && tree.story.overCoat === number
   const tooLate = isEarly ? earlyDip(dueAt, demand, kind, parts) : null
   const dippedAt = tooLate?.dippedAt ?? inTime
   if (dippedAt === null || dippedAt < earliest) return null
@@ -141,6 +155,7 @@ function planCoatBefore(shape: Shape, number: number, dueAt: number, parts: Plan
     drainSeconds: coat.drainSeconds,
     roughMinutes: tree.story?.kind === 'rough time' && tree.story.coat === number ? 5 : 0,
     reason: reasonFor(tree, number),
+    truth,
   }
 }
 

@@ -1,6 +1,8 @@
 import { millisecondsInDay, millisecondsInHour, millisecondsInMinute } from 'date-fns/constants'
 import { RECESS_CLASSES, SPACINGS } from '@/lib/coats/vocabulary'
 import type { Aim, CastTree } from '@/lib/demo/cast'
+import { planChecks, type PlannedCheck } from '@/lib/demo/checks'
+import type { DemoClimate } from '@/lib/demo/climate'
 import {
   amountIn,
   demandOf,
@@ -25,11 +27,13 @@ export type PlannedTree = Shape & {
   /** Null while intake is open. */
   intakeAt: number | null
   coats: readonly PlannedCoat[]
+  /** What people weighed, felt and measured on them. */
+  checks: readonly PlannedCheck[]
   lookOverAt: number | null
   leftAt: number | null
 }
 
-type Parts = PlanParts & { now: number }
+type Parts = PlanParts & { now: number; climate: DemoClimate }
 
 const MINUTE = millisecondsInMinute
 const HOUR = millisecondsInHour
@@ -72,7 +76,15 @@ function arrival(firstDipAt: number, parts: PlanParts): { createdAt: number; int
 function planWax(tree: CastTree, parts: Parts): PlannedTree {
   const shape: Shape = { tree, recessClass: tree.recesses?.[0] ?? 'none', spacing: tree.spacings?.[0] ?? 'open' }
   const { intakeAt, createdAt } = arrival(parts.now, parts)
-  return { ...shape, createdAt, intakeAt: tree.aim.kind === 'wax ready' ? intakeAt : null, coats: [], lookOverAt: null, leftAt: null }
+  return {
+    ...shape,
+    createdAt,
+    intakeAt: tree.aim.kind === 'wax ready' ? intakeAt : null,
+    coats: [],
+    checks: [],
+    lookOverAt: null,
+    leftAt: null,
+  }
 }
 
 function planGone(tree: CastTree, aim: Aim & { daysAgo: number }, parts: Parts): WithCoats | null {
@@ -81,13 +93,18 @@ function planGone(tree: CastTree, aim: Aim & { daysAgo: number }, parts: Parts):
   const lookOverAt = isReleased ? workBefore(leftAt, [15 * MINUTE, 90 * MINUTE], parts) : null
   const newest = isReleased ? recipeOf(tree).length : (tree.coatsOn?.[1] ?? 1)
   let second: WithCoats | null = null
-  for (const shape of shapesOf(tree).flatMap(withEarlyCoats)) {
-    for (const pace of ['usual', 'fast'] as const) {
-      const coats = planCoatsBefore(shape, newest, lookOverAt ?? leftAt, parts, pace)
-      if (!coats) continue
-      const plan = { ...shape, coats, lookOverAt, leftAt }
-      if (hasItsEarlyDip(plan, parts)) return plan
-      second ??= plan
+  const end = lookOverAt ?? leftAt
+  // A shop that is open so seldom that the true needs leave no room has nobody to check them either.
+  for (const isChecked of isReleased ? [true, false] : [false]) {
+    for (const shape of shapesOf(tree).flatMap(withEarlyCoats)) {
+      for (const pace of ['usual', 'fast'] as const) {
+        const coats = planCoatsBefore({ ...shape, isChecked }, newest, end, parts, pace)
+        if (!coats) continue
+        const checks = isChecked ? planChecks(shape, coats, end, parts) : []
+        const plan = { ...shape, coats, checks, lookOverAt, leftAt }
+        if (hasItsEarlyDip(plan, parts)) return plan
+        second ??= plan
+      }
     }
   }
   return second
@@ -135,8 +152,9 @@ function planOnFloor(tree: CastTree, parts: Parts): WithCoats | null {
         drainSeconds: coat.drainSeconds,
         roughMinutes: 0,
         reason: reasonFor(tree, number),
+        truth: null,
       }
-      return { ...shape, coats: [...before, newest], lookOverAt, leftAt: null }
+      return { ...shape, coats: [...before, newest], checks: [], lookOverAt, leftAt: null }
     }
   }
   return null

@@ -31,7 +31,7 @@ export function planDemo(now: number, setting: DemoSetting): DemoPlan {
   const startsAt = now - DEMO_HISTORY_MS
   const climate = demoClimate(startsAt, setting.timeZone)
   const hours = workHours(startsAt, now, setting)
-  const parts = { room: dryingRoom(climate, { from: startsAt, now, altitudeM: setting.altitudeM }), hours, startsAt, now }
+  const parts = { room: dryingRoom(climate, { from: startsAt, now, altitudeM: setting.altitudeM }), hours, climate, startsAt, now }
   const planned = CAST.map((tree, index) => planTree(tree, { ...parts, random: seededRandom(DEMO_SEED + index) }))
   const trees = planned
     .toSorted((a, b) => a.createdAt - b.createdAt)

@@ -149,6 +149,12 @@ async function removeWorks(): Promise<void> {
 async function removeShop(): Promise<void> {
   const [members, recipes, baths, places, sensors] = ['members', 'recipes', 'baths', 'places', 'sensors'].map(DEMO)
   const versions = `(SELECT id FROM recipe_versions WHERE recipe_id IN ${recipes})`
+  const calibrated = `recipe_id IN ${recipes} OR place_id IN ${places} OR member_id IN ${members}`
+  await run(
+    `DELETE FROM calibrations WHERE goes_back_on IS NOT NULL
+      AND (${calibrated} OR goes_back_on IN (SELECT id FROM calibrations WHERE ${calibrated}))`,
+  )
+  await run(`DELETE FROM calibrations WHERE ${calibrated}`)
   await run(`DELETE FROM recipe_coats WHERE recipe_version_id IN ${versions}`)
   await run(`DELETE FROM recipe_versions WHERE recipe_id IN ${recipes}`)
   await run('DELETE FROM recipes WHERE is_demo = 1')

@@ -9,7 +9,7 @@ const STUCCO_FACTOR: Record<Stucco, number> = { none: 1, fine: 0.9, medium: 1, c
 export const SECTION_FACTOR: Record<Spacing, number> = { open: 1, crowded: 1.25 }
 
 /** The slowest spot of the tree. Our own starting values, to be calibrated. */
-export const RECESS_FACTOR: Record<RecessClass, number> = {
+export const RECESS_FACTOR: Readonly<Record<RecessClass, number>> = {
   none: 1,
   'deep recess': 1.6,
   'closed core': 2.5,
@@ -37,7 +37,7 @@ export function needReferenceHours(input: NeedInput): number {
     input.recipeReferenceHours *
     stucco *
     SECTION_FACTOR[input.spacing] *
-    RECESS_FACTOR[input.recessClass] *
+    (input.recessFactors ?? RECESS_FACTOR)[input.recessClass] *
     carried *
     Math.exp(input.treeTheta)
   )

@@ -27,13 +27,18 @@ export function placeFactor(airSpeedMps: number, pressurePa: number): number {
  *
  *   on = duty x phi(v on) + (1 - duty) x phi(v off)
  *
- * @throws {RangeError} as placeFactor, and for a duty outside 0 to 1.
+ * What finished coats say of the place comes on top: both times its air factor.
+ *
+ * @throws {RangeError} as placeFactor, and for a duty outside 0 to 1 or an air factor outside 0.3 to 3.
  * @source our own model.
  * @example fanFactors({ airSpeedFansOnMps: 2, airSpeedFansOffMps: 0.1, fanDuty: 0.3, fanHours: [] }, 101325).on // 0.752
  */
 export function fanFactors(air: PlaceAir, pressurePa: number): { on: number; off: number } {
   assertWithin('Duty of the fans', air.fanDuty, 0, 1)
+  const airFactor = air.airFactor ?? 1
+  assertWithin('Air factor', airFactor, 0.3, 3)
   const blown = placeFactor(air.airSpeedFansOnMps, pressurePa)
   const off = placeFactor(air.airSpeedFansOffMps, pressurePa)
-  return { on: air.fanDuty === 1 ? blown : air.fanDuty * blown + (1 - air.fanDuty) * off, off }
+  const on = air.fanDuty === 1 ? blown : air.fanDuty * blown + (1 - air.fanDuty) * off
+  return { on: airFactor * on, off: airFactor * off }
 }

@@ -55,6 +55,8 @@ export type PlaceAir = {
   airSpeedFansOffMps: number
   /** Share of the time 'on' in which the fans blow on the trees, 0 to 1; 1 unless they swing or cycle. */
   fanDuty: number
+  /** How much faster water leaves here than the speed says, by finished coats; 1 where it is left out. */
+  airFactor?: number
   fanHours: readonly FanHours[]
 }
 
@@ -79,6 +81,8 @@ export type NeedInput = {
   moistureRatioBelow: number
   /** The tree's own factor, ln scale; 0 until evidence moves it. */
   treeTheta: number
+  /** How much slower each class of recess dries, where finished coats have said so; else the starting values. */
+  recessFactors?: Readonly<Record<RecessClass, number>>
 }
 
 export type CoatForClock = {

@@ -37,6 +37,8 @@ const LOWEST_ROLE = {
   baths: 'supervisor',
   sensors: 'supervisor',
   history: 'supervisor',
+  /** Taking over what finished coats say of needs and factors, and going back on it. */
+  calibrate: 'supervisor',
   people: 'owner',
   settings: 'owner',
   /** Backups, the health page, demo data. */

@@ -71,6 +71,7 @@ export async function deriveFloor(
     now,
     timeZone: foundry.timeZone,
     pressurePa: foundry.pressurePa,
+    recessFactors: foundry.recessFactors,
     climates: await loadClimates(),
     places: foundry.places,
     fanSwitches,

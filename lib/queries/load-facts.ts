@@ -49,7 +49,7 @@ export async function loadFacts(selection: TreeSelection): Promise<TreeFacts[]> 
     select<OfTree<CoatRow>>(
       `SELECT tree_id AS treeId, id, number, kind, stucco, way, place_id AS placeId, dipped_at AS dippedAt, drain_seconds AS drainSeconds,
               rough_minutes AS roughMinutes, need_reference_hours AS needReferenceHours, moisture_target AS moistureTarget, guard,
-              longest_wait_hours AS longestWaitHours, need_spread AS needSpread, is_calibrated AS isCalibrated, air_temp_c AS airTempC,
+              longest_wait_hours AS longestWaitHours, need_spread AS needSpread, is_calibrated AS isCalibrated, recess_factor AS recessFactor, air_temp_c AS airTempC,
               covered_at AS coveredAt, moisture_ratio_at_redip AS moistureRatioAtRedip
          FROM coats WHERE withdrawn_at IS NULL AND tree_id IN (SELECT value FROM json_each(:ids)) ORDER BY tree_id, number`,
       { ids },

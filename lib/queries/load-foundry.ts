@@ -1,7 +1,9 @@
+import type { RecessClass } from '@/lib/coats/vocabulary'
 import { stationPressurePa } from '@/lib/drying/air'
 import { notSetUp } from '@/lib/core/errors'
 import type { FanHours } from '@/lib/drying/types'
 import type { Units } from '@/lib/format/units'
+import { loadRecessFactors } from '@/lib/queries/recess-factors'
 import type { WorkCalendar } from '@/lib/schedule/shifts'
 import type { PlaceFacts } from '@/lib/trees/facts'
 import { Closure, FanHours as FanHoursRow, FormerAir, Foundry, Member, Place, Sensor, ShiftHours } from '@/models'
@@ -22,13 +24,14 @@ export type FoundryFacts = {
   calendar: WorkCalendar
   /** Retired ones too: a coat may have dried there. Whoever offers places leaves those out. */
   places: PlaceFacts[]
+  recessFactors: Record<RecessClass, number>
   /** In use. */
   sensors: { id: number; name: string; kind: 'logger' | 'wall hygrometer' }[]
 }
 
 /** @throws {AppError} unavailable when nobody has set up a foundry yet. */
 export async function loadFoundry(): Promise<FoundryFacts> {
-  const [foundry, hours, closures, places, fanHours, formerAirs, sensors, demoPeople] = await Promise.all([
+  const [foundry, hours, closures, places, fanHours, formerAirs, sensors, recessFactors, demoPeople] = await Promise.all([
     Foundry.findByPk(1),
     ShiftHours.findAll({ order: [['weekday', 'ASC']] }),
     Closure.findAll({ order: [['firstDay', 'ASC']] }),
@@ -36,6 +39,7 @@ export async function loadFoundry(): Promise<FoundryFacts> {
     FanHoursRow.findAll(),
     FormerAir.findAll({ order: [['until', 'ASC']] }),
     Sensor.findAll({ order: [['id', 'ASC']] }),
+    loadRecessFactors(),
     // They come first and go last.
     Member.count({ where: { isDemo: true } }),
   ])
@@ -61,6 +65,7 @@ export async function loadFoundry(): Promise<FoundryFacts> {
       hours: hours.map(({ weekday, opensMinute, closesMinute }) => ({ weekday, opensMinute, closesMinute })),
       closures: closures.map(({ firstDay, lastDay }) => ({ firstDay, lastDay })),
     },
+    recessFactors,
     places: places.map((place) => ({
       id: place.id,
       name: place.name,
@@ -70,15 +75,17 @@ export async function loadFoundry(): Promise<FoundryFacts> {
       airSpeedFansOnMps: place.airSpeedFansOnMps,
       airSpeedFansOffMps: place.airSpeedFansOffMps,
       fanDuty: place.fanDuty,
+      airFactor: place.airFactor,
       fanHours: fansOf(place.id),
       formerAirs: formerAirs
         .filter((air) => air.placeId === place.id)
-        .map(({ until, sensorId, airSpeedFansOnMps, airSpeedFansOffMps, fanDuty, fanHours: fans }) => ({
+        .map(({ until, sensorId, airSpeedFansOnMps, airSpeedFansOffMps, fanDuty, airFactor, fanHours: fans }) => ({
           until,
           sensorId,
           airSpeedFansOnMps,
           airSpeedFansOffMps,
           fanDuty,
+          airFactor,
           fanHours: fans,
         })),
     })),

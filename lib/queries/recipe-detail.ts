@@ -1,7 +1,6 @@
 import { QueryTypes } from 'sequelize'
 import { loadMovingTrees, type RecipeTree } from '@/lib/queries/moving-trees'
-import { loadVersionCoats } from '@/lib/queries/version-coats'
-import type { VersionCoat } from '@/lib/recipes/coat-cells'
+import { loadVersionCoats, type StoredCoat } from '@/lib/queries/version-coats'
 import { Bath, database, Foundry, Recipe } from '@/models'
 
 export type RecipeVersionRow = {
@@ -11,7 +10,7 @@ export type RecipeVersionRow = {
   by: string | null
   at: number
   isCalibrated: boolean
-  coats: VersionCoat[]
+  coats: StoredCoat[]
   /** By tag. */
   openTrees: RecipeTree[]
   /** Trees that were released or scrapped on it. */

@@ -1,6 +1,5 @@
 import { QueryTypes } from 'sequelize'
-import { loadVersionCoats } from '@/lib/queries/version-coats'
-import type { VersionCoat } from '@/lib/recipes/coat-cells'
+import { loadVersionCoats, type StoredCoat } from '@/lib/queries/version-coats'
 import { database } from '@/models'
 
 export type RecipeListRow = {
@@ -13,7 +12,7 @@ export type RecipeListRow = {
   version: number
   versionId: string
   isCalibrated: boolean
-  coats: VersionCoat[]
+  coats: StoredCoat[]
   /** On any of its versions. */
   openTrees: number
 }

@@ -80,7 +80,5 @@ export function coatsInShort(coats: readonly { kind: CoatKind; stucco: Stucco }[
 /** What a need stands for: other kinds, baths, grades, targets or a prewet make another coat, and its hours have to be checked anew. */
 const OF_THE_NEED = ['kind', 'bath', 'stucco', 'need', 'target', 'prewet'] as const satisfies readonly CoatCell[]
 
-/** Whether nothing that a need rests on differs between two lists of coats, so that a calibration of the one holds for the other. */
-export function areNeedsSame(before: readonly CoatCells[], after: readonly CoatCells[]): boolean {
-  return before.length === after.length && before.every((coat, index) => OF_THE_NEED.every((key) => coat[key] === after[index]?.[key]))
-}
+/** Whether nothing that a need rests on differs between two coats, so that a calibration of the one holds for the other. */
+export const isNeedSame = (before: CoatCells, after: CoatCells): boolean => OF_THE_NEED.every((key) => before[key] === after[key])

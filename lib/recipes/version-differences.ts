@@ -1,4 +1,4 @@
-import { COAT_CELLS, type CoatCell, type CoatCells } from '@/lib/recipes/coat-cells'
+import { COAT_CELLS, isNeedSame, type CoatCell, type CoatCells } from '@/lib/recipes/coat-cells'
 
 export type CellChange = { key: CoatCell; before: string; after: string }
 
@@ -56,6 +56,24 @@ export function versionDifferences(before: readonly CoatCells[], after: readonly
     const changes = changesOf(before[from]!, after[next]!)
     const what = old === null ? 'moved' : changes.length > 0 ? 'changed' : 'same'
     return [{ what, number: next + 1, before: from + 1, changes }]
+  })
+}
+
+/**
+ * Which coats of a list keep the need of another one: for each the index of the coat that it is, where nothing differs that a need rests
+ * on; null for the others. What finished coats say of those coats holds on.
+ */
+export function sameNeeds(before: readonly CoatCells[], after: readonly CoatCells[]): (number | null)[] {
+  const from = new Map(
+    versionDifferences(before, after).flatMap((difference) =>
+      difference.what === 'changed' || difference.what === 'moved' || difference.what === 'same'
+        ? [[difference.number - 1, difference.before - 1] as const]
+        : [],
+    ),
+  )
+  return after.map((coat, index) => {
+    const old = from.get(index)
+    return old !== undefined && isNeedSame(before[old]!, coat) ? old : null
   })
 }
 

@@ -34,10 +34,10 @@ export const SPOTS_OF: Record<RecessClass, readonly Spot[]> = {
 /** The spot that dries last: only what was taken there speaks for the whole tree. */
 export const slowestSpot = (recessClass: RecessClass): Spot => SPOTS_OF[recessClass].at(-1) ?? 'outside'
 
-/** How much slower a spot dries than the outside. */
-function spotFactor(spot: Spot, recessClass: RecessClass): number {
+/** How much slower a spot dries than the outside, by what the slowest spot was taken for at the dip. */
+function spotFactor(spot: Spot, recessClass: RecessClass, slowest: number): number {
   if (spot === 'outside') return RECESS_FACTOR.none
-  return spot === 'core' ? RECESS_FACTOR[recessClass] : Math.min(RECESS_FACTOR['deep recess'], RECESS_FACTOR[recessClass])
+  return spot === slowestSpot(recessClass) ? slowest : Math.min(RECESS_FACTOR['deep recess'], slowest)
 }
 
 /** One weighing as a point of the coat's drying. */
@@ -102,7 +102,7 @@ export function outcomeOf(facts: TreeFacts, coat: CoatFacts, pressurePa: number,
 type BeliefInput = { evidence: readonly EvidenceFacts[]; prior: Theta; pressurePa: number; doseAt: DoseAt }
 
 function believe(facts: TreeFacts, coat: CoatFacts, { evidence, prior, pressurePa, doseAt }: BeliefInput): CoatBelief {
-  const needAt = (spot: Spot) => (coat.needReferenceHours * spotFactor(spot, facts.recessClass)) / RECESS_FACTOR[facts.recessClass]
+  const needAt = (spot: Spot) => (coat.needReferenceHours * spotFactor(spot, facts.recessClass, coat.recessFactor)) / coat.recessFactor
   const at = (spot: Spot, dose: number): CoatAtDose => ({ dose, need: needAt(spot), moistureTarget: coat.moistureTarget })
   // In a recess the doubt about the recess itself comes on top.
   const blur = (spot: Spot, observation: Observation | null): Observation | null => {

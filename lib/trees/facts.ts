@@ -71,6 +71,8 @@ export type CoatFacts = {
   longestWaitHours: number
   needSpread: number
   isCalibrated: boolean
+  /** How much slower the slowest spot was taken to dry than the outside. */
+  recessFactor: number
   airTempC: number | null
   coveredAt: number | null
   moistureRatioAtRedip: number | null

@@ -74,6 +74,7 @@ function chain(assessment: Assessment, context: FloorContext, start: number | nu
         recessClass: facts.recessClass,
         moistureRatioBelow: 0,
         treeTheta: theta.mean,
+        recessFactors: context.recessFactors,
       }),
       sigma({ recessClass: facts.recessClass, hasTyped: false, baseSigma: theta.sd }),
     )

@@ -1,4 +1,5 @@
 import { millisecondsInHour } from 'date-fns/constants'
+import type { RecessClass } from '@/lib/coats/vocabulary'
 import { hourStartOf } from '@/lib/drying/dose-hours'
 import { fanOverrides, isOnByTimetable, nextTimetableSwitch } from '@/lib/drying/fan-timetable'
 import { placeSpans, type PlaceSpan } from '@/lib/drying/place-spans'
@@ -12,6 +13,8 @@ export type FloorContext = {
   now: number
   timeZone: string
   pressurePa: number
+  /** How much slower each class of recess dries than an outside. */
+  recessFactors: Readonly<Record<RecessClass, number>>
   climates: ReadonlyMap<number, RoomClimate>
   places: ReadonlyMap<string, PlaceFacts>
   /** Fan-on and fan-off stretches of each place, by the air it had at the time, from the oldest hour in use to the horizon. */

@@ -45,6 +45,8 @@ export const DOORS: readonly Door[] = [
   page('/settings/sensors/[sensorId]', 'supervisor', '/settings/sensors/1'),
   // The broker of loggers.
   page('/settings/mqtt', 'supervisor'),
+  // What finished coats say of the clock.
+  page('/calibration', 'supervisor'),
   // People and one's own page.
   page('/people', 'owner'),
   page('/people/[memberId]', 'owner'),
@@ -101,6 +103,10 @@ export type ActionRow = { file: string; name: string; act: Act; who: Role } | { 
  * Without an act it is for records in which nobody is a member yet, and its first line is `await requireNobody()`.
  */
 export const ACTIONS: readonly ActionRow[] = [
+  // Calibration.
+  { file: 'app/(office)/calibration/actions.ts', name: 'acceptCoatsAction', act: 'calibrate', who: 'supervisor' },
+  { file: 'app/(office)/calibration/actions.ts', name: 'acceptFactorAction', act: 'calibrate', who: 'supervisor' },
+  { file: 'app/(office)/calibration/actions.ts', name: 'goBackAction', act: 'calibrate', who: 'supervisor' },
   { file: 'app/(office)/trees/new/actions.ts', name: 'createTreeAction', act: 'trees', who: 'supervisor' },
   { file: 'app/(office)/trees/[tag]/edit/actions.ts', name: 'editTreeAction', act: 'trees', who: 'supervisor' },
   { file: 'app/(office)/trees/[tag]/actions.ts', name: 'holdAction', act: 'hold', who: 'operator' },

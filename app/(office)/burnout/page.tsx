@@ -288,7 +288,7 @@ function DriedOut({
   return (
     <>
       <TimePair pair={pair} now={context.now} timeZone={context.timeZone} guard="safe" />
-      {tree.isUncalibrated && <span className="block text-14 text-soot">{NOT_CALIBRATED}</span>}
+      {tree.isPlanUncalibrated && <span className="block text-14 text-soot">{NOT_CALIBRATED}</span>}
     </>
   )
 }

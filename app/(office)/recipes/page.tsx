@@ -3,10 +3,10 @@ import Link from 'next/link'
 import { DemoMark } from '@/app/_components/demo-mark'
 import { KeyLink } from '@/app/_components/key'
 import { EmptyState } from '@/app/(office)/_components/empty-state'
-import { NOT_CALIBRATED } from '@/app/(office)/_components/due-words'
 import { SmallRecipeSection } from '@/app/(office)/recipes/_components/recipe-section'
 import { may } from '@/lib/members/roles'
 import { loadRecipeList, type RecipeListRow } from '@/lib/queries/recipe-list'
+import { calibrationInShort } from '@/lib/calibration/calibration-words'
 import { coatsInShort } from '@/lib/recipes/coat-cells'
 import { requireMemberPage } from '@/lib/server/auth'
 import '@/app/(office)/recipes/recipes.css'
@@ -78,7 +78,7 @@ function RecipeRows({ recipes }: { recipes: readonly RecipeListRow[] }) {
               {recipe.name}
             </Link>
             <span className="text-soot">
-              {recipe.isDemo && <DemoMark />} version {recipe.version}, {recipe.isCalibrated ? 'calibrated' : NOT_CALIBRATED}
+              {recipe.isDemo && <DemoMark />} version {recipe.version}, {calibrationInShort(recipe)}
             </span>
           </div>
           <div className="recipe-row-shell">

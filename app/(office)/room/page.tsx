@@ -104,7 +104,17 @@ export default async function RoomPageView({ searchParams }: PageProps<'/room'>)
       <section className="plate">
         <header>
           <h2>What it does to each tree</h2>
-          {rows.some((row) => row.tree.isUncalibrated) && <p>{TIMES_NOT_CALIBRATED}</p>}
+          {rows.some((row) => row.tree.isUncalibrated) && (
+            <p>
+              {may(member.role, 'calibrate') ? (
+                <Link className="underline underline-offset-4" href="/calibration" prefetch={false}>
+                  {TIMES_NOT_CALIBRATED}
+                </Link>
+              ) : (
+                TIMES_NOT_CALIBRATED
+              )}
+            </p>
+          )}
           <p className="effect-key">
             <span>
               <i className="key-lost" aria-hidden="true" /> hours lost against the recipe’s room, at the tree’s own place

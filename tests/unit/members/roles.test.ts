@@ -31,6 +31,7 @@ const WHO_MAY: Record<Act, Role[]> = {
   baths: OFFICE,
   sensors: OFFICE,
   history: OFFICE,
+  calibrate: OFFICE,
   people: OWNER,
   settings: OWNER,
   upkeep: OWNER,

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest'
-import { areNeedsSame, coatCells, coatsInShort, type CoatCells } from '@/lib/recipes/coat-cells'
-import { hasDifferences, versionDifferences } from '@/lib/recipes/version-differences'
+import { coatCells, coatsInShort, type CoatCells } from '@/lib/recipes/coat-cells'
+import { hasDifferences, sameNeeds, versionDifferences } from '@/lib/recipes/version-differences'
 
 const face = (changes: Partial<CoatCells> = {}): CoatCells => ({
   kind: 'face',
@@ -113,7 +113,8 @@ describe('differences of two versions', () => {
 
 describe('a calibration', () => {
   it('holds while nothing changes that a need rests on', () => {
-    expect(areNeedsSame(plain, plain.with(1, { ...medium(), drain: '55', guard: 'safe', longestWait: '48', readAloud: '' }))).toBe(true)
+    const after = plain.with(1, { ...medium(), drain: '55', guard: 'safe', longestWait: '48', readAloud: '' })
+    expect(sameNeeds(plain, after)).toEqual([0, 1, 2, 3, 4])
   })
 
   it.each([
@@ -123,14 +124,14 @@ describe('a calibration', () => {
     ['bath', { bath: 'Third slurry' }],
     ['kind', { kind: 'core fill' }],
     ['prewet', { prewet: 'yes' }],
-  ])('ends with another %s', (_, change) => {
-    expect(areNeedsSame(plain, plain.with(1, { ...medium(), ...change }))).toBe(false)
+  ])('ends for one coat with another %s, and holds for the others', (_, change) => {
+    expect(sameNeeds(plain, plain.with(1, { ...medium(), ...change }))).toEqual([0, null, 2, 3, 4])
   })
 
-  it('ends with a coat more or less, or in another order', () => {
-    expect(areNeedsSame(plain, [...plain, seal()])).toBe(false)
-    expect(areNeedsSame(plain, plain.slice(0, -1))).toBe(false)
-    expect(areNeedsSame(plain, [plain[0]!, plain[2]!, plain[1]!, plain[3]!, plain[4]!])).toBe(false)
+  it('follows a coat to its new number, and a new coat has none', () => {
+    expect(sameNeeds(plain, plain.toSpliced(1, 1))).toEqual([0, 2, 3, 4])
+    const changed = { ...medium(), need: '9', drain: '70', longestWait: '10' }
+    expect(sameNeeds(plain, plain.toSpliced(1, 0, changed)).filter((index) => index !== null)).toEqual([0, 1, 2, 3, 4])
   })
 })
 

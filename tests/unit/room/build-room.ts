@@ -1,3 +1,4 @@
+import { RECESS_FACTOR } from '@/lib/drying/need'
 import { roomFactor } from '@/lib/drying/room-factor'
 import type { FanSwitch, RoomReading } from '@/lib/drying/types'
 import type { CoatKind, RecessClass, Stucco } from '@/lib/coats/vocabulary'
@@ -102,6 +103,7 @@ export function buildContext({
   fanSwitches?: ReadonlyMap<string, readonly FanSwitch[]>
 } = {}): FloorContext {
   return floorContext({
+    recessFactors: RECESS_FACTOR,
     now,
     timeZone: TIME_ZONE,
     pressurePa: PRESSURE_PA,
@@ -186,6 +188,7 @@ export function buildDerived(context: FloorContext, spec: TreeSpec = {}): Derive
       longestWaitHours: 72,
       needSpread: 0.25,
       isCalibrated: true,
+      recessFactor: 1,
       coveredAt: null,
       moistureRatioAtRedip: null,
       evidence: [],

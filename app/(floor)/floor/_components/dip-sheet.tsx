@@ -146,7 +146,7 @@ export function DipSheet({
     setIsSending(false)
     if (outcome.kind === 'done') {
       const bathName = queue.baths.find((bath) => bath.id === body.bathId)?.name ?? 'the bath'
-      onLogged({ answer: outcome.data, bathName, stucco: body.stucco, isUncalibrated: trees.some((tree) => tree.isUncalibrated) })
+      onLogged({ answer: outcome.data, bathName, stucco: body.stucco, isUncalibrated: trees.some((tree) => tree.isPlanUncalibrated) })
       return
     }
     setPanel('sheet')

@@ -4,7 +4,6 @@ import { notFound } from 'next/navigation'
 import { DemoMark } from '@/app/_components/demo-mark'
 import { Icon } from '@/app/_components/icons'
 import { fittedTagHeight, Tag } from '@/app/_components/tag'
-import { NOT_CALIBRATED } from '@/app/(office)/_components/due-words'
 import { CoatTable } from '@/app/(office)/recipes/_components/coat-table'
 import { Differences } from '@/app/(office)/recipes/_components/differences'
 import { RecipeSection } from '@/app/(office)/recipes/_components/recipe-section'
@@ -15,6 +14,7 @@ import { referenceAirWords } from '@/lib/recipes/need-words'
 import { may } from '@/lib/members/roles'
 import { loadFoundry } from '@/lib/queries/load-foundry'
 import { loadRecipeDetail, type RecipeVersionRow } from '@/lib/queries/recipe-detail'
+import { calibrationInShort } from '@/lib/calibration/calibration-words'
 import { coatCells, coatsInShort } from '@/lib/recipes/coat-cells'
 import { moveRefusal } from '@/lib/recipes/move-rules'
 import { readVersion } from '@/lib/recipes/read-version'
@@ -52,7 +52,7 @@ export default async function RecipePage({ params, searchParams }: PageProps<'/r
           </h1>
           <p>
             Version {shown.version}
-            {shown === newest ? ', the newest' : ` of ${newest.version}`} · {shown.isCalibrated ? 'calibrated' : NOT_CALIBRATED} · made{' '}
+            {shown === newest ? ', the newest' : ` of ${newest.version}`} · {calibrationInShort(shown)} · made{' '}
             {formatDateOfYear(shown.at, timeZone)}
             {shown.by !== null && ` by ${shown.by}`}
           </p>
@@ -98,11 +98,19 @@ export default async function RecipePage({ params, searchParams }: PageProps<'/r
           {shown.note !== '' && <p className="recipe-note">{shown.note}</p>}
           <RecipeSection coats={shown.coats} />
         </div>
-        <CoatTable coats={shown.coats} differences={differences} />
+        <CoatTable coats={shown.coats} isCalibrated={shown.isCalibrated} differences={differences} />
         <p className="need-hint">
           Needs are hours in the reference air: {referenceAirWords(member.units.temp)}.{' '}
           {!shown.isCalibrated &&
-            'They are not calibrated yet: your first twenty to thirty coats show what a coat needs here, and a new version then says so. '}
+            'Where a need is not calibrated yet, it is our starting value: your first twenty to thirty coats show what it is here. '}
+          {may(member.role, 'calibrate') && (
+            <>
+              <Link className="underline underline-offset-4" href="/calibration" prefetch={false}>
+                Calibration
+              </Link>{' '}
+              shows what finished coats say.{' '}
+            </>
+          )}
           Face coats, the last coat and trees with a recess wait for safe, whatever the guard says.
         </p>
       </section>
@@ -134,7 +142,7 @@ export default async function RecipePage({ params, searchParams }: PageProps<'/r
                 <span className="text-soot">
                   {' '}
                   {formatDateOfYear(version.at, timeZone)}
-                  {version.by !== null && ` by ${version.by}`}, {version.isCalibrated ? 'calibrated' : NOT_CALIBRATED}
+                  {version.by !== null && ` by ${version.by}`}, {calibrationInShort(version)}
                 </span>
                 <p className="[overflow-wrap:anywhere]">{version.note === '' ? 'No note.' : version.note}</p>
                 {version.version > 1 && (

@@ -1,13 +1,24 @@
 import { Fragment, type ReactNode } from 'react'
 import { StuccoSwatch } from '@/app/_components/stucco-swatch'
 import { DifferenceMark } from '@/app/(office)/recipes/_components/difference-mark'
-import { cellWords, COAT_CELLS, coatCells, type CoatCell, type VersionCoat } from '@/lib/recipes/coat-cells'
+import { calibratedWords } from '@/lib/calibration/calibration-words'
+import type { StoredCoat } from '@/lib/queries/version-coats'
+import { cellWords, COAT_CELLS, coatCells, type CoatCell } from '@/lib/recipes/coat-cells'
 import type { CoatDifference } from '@/lib/recipes/version-differences'
 
 const FIGURES: ReadonlySet<CoatCell> = new Set(['need', 'target', 'drain', 'longestWait'])
 
 /** The coats of a version. What differs from the version before is marked in its cell, and a coat that was taken out keeps a line. */
-export function CoatTable({ coats, differences }: { coats: readonly VersionCoat[]; differences: readonly CoatDifference[] }) {
+export function CoatTable({
+  coats,
+  isCalibrated,
+  differences,
+}: {
+  coats: readonly StoredCoat[]
+  /** The version as a whole is. */
+  isCalibrated: boolean
+  differences: readonly CoatDifference[]
+}) {
   const lines: CoatDifference[] =
     differences.length > 0 ? [...differences] : coats.map(({ number }) => ({ what: 'same' as const, number, before: number, changes: [] }))
   return (
@@ -29,7 +40,11 @@ export function CoatTable({ coats, differences }: { coats: readonly VersionCoat[
         <tbody role="rowgroup">
           {lines.map((line) => (
             <Fragment key={'number' in line ? line.number : `before ${line.before}`}>
-              {line.what === 'removed' ? <RemovedRow line={line} /> : <Row line={line} coat={coats[line.number - 1]} />}
+              {line.what === 'removed' ? (
+                <RemovedRow line={line} />
+              ) : (
+                <Row line={line} coat={coats[line.number - 1]} isCalibrated={isCalibrated} />
+              )}
             </Fragment>
           ))}
         </tbody>
@@ -54,7 +69,15 @@ function RemovedRow({ line }: { line: Extract<CoatDifference, { what: 'removed' 
   )
 }
 
-function Row({ line, coat }: { line: Exclude<CoatDifference, { what: 'removed' }>; coat: VersionCoat | undefined }) {
+function Row({
+  line,
+  coat,
+  isCalibrated,
+}: {
+  line: Exclude<CoatDifference, { what: 'removed' }>
+  coat: StoredCoat | undefined
+  isCalibrated: boolean
+}) {
   if (coat === undefined) return null
   const cells = coatCells(coat)
   const changes = new Map('changes' in line ? line.changes.map((change) => [change.key, change.before]) : [])
@@ -86,6 +109,9 @@ function Row({ line, coat }: { line: Exclude<CoatDifference, { what: 'removed' }
             <span className="cell-label">{word} </span>
             <span className={FIGURES.has(key) ? 'num' : undefined}>{content[key] ?? cells[key]}</span>
             {unit !== '' && <span className="cell-label"> {unit}</span>}
+            {key === 'need' && (coat.calibratedByCoats !== null || !isCalibrated) && (
+              <span className="block text-14 text-soot">{calibratedWords(coat.calibratedByCoats)}</span>
+            )}
             {before !== undefined && <DifferenceMark what="changed" words={`was ${before === '' ? 'nothing' : before}`} />}
           </td>
         )

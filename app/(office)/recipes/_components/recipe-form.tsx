@@ -12,14 +12,15 @@ import { Differences } from '@/app/(office)/recipes/_components/differences'
 import { RecipeSection } from '@/app/(office)/recipes/_components/recipe-section'
 import { COAT_KINDS, STUCCOS } from '@/lib/coats/vocabulary'
 import type { BathChoice } from '@/lib/queries/recipe-detail'
-import { areNeedsSame, coatCells, coatsInShort, type VersionCoat } from '@/lib/recipes/coat-cells'
+import type { StoredCoat } from '@/lib/queries/version-coats'
+import { coatCells, coatsInShort, type CoatCells, type VersionCoat } from '@/lib/recipes/coat-cells'
 import { cellsOfValues, coatValuesOf, nextCoatIndex, startingCoat, startingNeed, type CoatValues } from '@/lib/recipes/recipe-form-values'
 import { referenceAirWords, startingNeedsWords } from '@/lib/recipes/need-words'
 import { MOST_COATS } from '@/lib/recipes/recipe-input'
-import { hasDifferences, versionDifferences, type CoatDifference } from '@/lib/recipes/version-differences'
+import { hasDifferences, sameNeeds, versionDifferences, type CoatDifference } from '@/lib/recipes/version-differences'
 import type { FormState } from '@/lib/server/form-state'
 
-type Version = { version: number; isCalibrated: boolean; coats: readonly VersionCoat[] }
+type Version = { version: number; isCalibrated: boolean; coats: readonly StoredCoat[] }
 
 export type RecipeFormProps = {
   action: (previous: FormState, form: FormData) => Promise<FormState>
@@ -159,9 +160,7 @@ export function RecipeForm({ action, baths, coats, versions, cancelPath }: Recip
           </header>
           <div className="plate-body grid gap-4">
             <Differences differences={differences} version={versions.newest.version} />
-            {hasDifferences(differences) && (
-              <p>{calibrationWords(versions.from, areNeedsSame(versions.from.coats.map(coatCells), cells))}</p>
-            )}
+            {hasDifferences(differences) && <p>{calibrationWords(versions.from, cells)}</p>}
             <Field
               name="note"
               label="Why there is a new version"
@@ -192,11 +191,15 @@ function RowMark({ difference }: { difference: CoatDifference | undefined }) {
   return <DifferenceMark what={difference.what} />
 }
 
-function calibrationWords(from: Version, areSame: boolean): string {
-  if (!from.isCalibrated) return 'It will be not calibrated yet, as the version before.'
-  return areSame
-    ? `No need changes: it stays calibrated, as version ${from.version} is.`
-    : 'A need, or what a need rests on, changes: the new version will be not calibrated yet.'
+function calibrationWords(from: Version, cells: readonly CoatCells[]): string {
+  const kept = sameNeeds(from.coats.map(coatCells), cells)
+  const areSame = kept.every((index) => index !== null)
+  if (from.isCalibrated && areSame) return `No need changes: it stays calibrated, as version ${from.version} is.`
+  const count = kept.filter((index) => index !== null && from.coats[index]?.calibratedByCoats != null).length
+  if (count > 0) return `${count} of its coats ${count === 1 ? 'stays' : 'stay'} calibrated: their needs do not change.`
+  return from.isCalibrated
+    ? 'A need, or what a need rests on, changes: the new version will be not calibrated yet.'
+    : 'It will be not calibrated yet, as the version before.'
 }
 
 /** A seal takes no stucco and everything else does: whoever changes the kind need not change that too. */

@@ -259,7 +259,7 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
           {newestRow !== undefined && !hasLeft && (
             <Plate
               title={`Drying of coat ${newestRow.number}`}
-              line={recipe.isCalibrated ? 'water left in the coat, %' : `water left in the coat, %; ${NOT_CALIBRATED}`}
+              line={!tree.isUncalibrated ? 'water left in the coat, %' : `water left in the coat, %; ${NOT_CALIBRATED}`}
             >
               {curve === null || curve.points.length === 0 ? (
                 <p className="text-soot">No curve: no reading of the air reaches this coat.</p>

@@ -13,7 +13,7 @@ export function Outlook({ tree, pour, now, timeZone }: { tree: QueueTree; pour: 
       {hasPair && tree.driedOut !== null && (
         <>
           Dried out <TimePair pair={tree.driedOut} now={now} timeZone={timeZone} />
-          {tree.isUncalibrated && <span> ({NOT_CALIBRATED})</span>}
+          {tree.isPlanUncalibrated && <span> ({NOT_CALIBRATED})</span>}
           {pour === null || tree.pourDate === null ? '.' : ': '}
         </>
       )}
