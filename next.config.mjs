@@ -9,7 +9,15 @@ const EVERYWHERE = [
 
 // Answers of the API and files are not pages: opened as one they may show themselves and do nothing. Pages get theirs in proxy.ts.
 const NOT_A_PAGE = "default-src 'none'; style-src 'unsafe-inline'; base-uri 'none'; form-action 'none'; frame-ancestors 'none'"
-const FILES = ['/api/:path*', '/_next/static/:path*', '/_next/image', '/icons/:path*', '/pictures/:path*', '/manifest.webmanifest']
+const FILES = [
+  '/api/:path*',
+  '/_next/static/:path*',
+  '/_next/image',
+  '/icons/:path*',
+  '/pictures/:path*',
+  '/favicon.ico',
+  '/manifest.webmanifest',
+]
 
 /** @type {import('next').NextConfig} */
 export default {

@@ -22,5 +22,5 @@ export function proxy(request: NextRequest): NextResponse {
 export const config = {
   // All but the API and files, which next.config.mjs gives a policy of their own. By path only: a condition on a header could be met
   // by whoever sends it.
-  matcher: '/((?!api/|_next/static/|_next/image|icons/|pictures/|sw\\.js$|manifest\\.webmanifest$).*)',
+  matcher: '/((?!api/|_next/static/|_next/image|icons/|pictures/|favicon\\.ico$|sw\\.js$|manifest\\.webmanifest$).*)',
 }

@@ -86,6 +86,7 @@ describe('an answer carries the headers of its kind:', () => {
     ['next-auth', '/api/auth/session', 200],
     ['the manifest', '/manifest.webmanifest', 200],
     ['a picture', '/icons/icon.svg', 200],
+    ['the icon that a browser asks for by itself', '/favicon.ico', 200],
   ])('%s', async (_kind, path, status) => {
     const response = await owner.fetch(path)
     expect(response.status).toBe(status)

@@ -1,6 +1,6 @@
 import type { Browser, Locator, Page } from 'playwright-core'
 import { afterAll, beforeAll, expect, it } from 'vitest'
-import { LAPTOP, launchBrowser, newDevice, open } from '@/tests/setup/browser'
+import { LAPTOP, launchBrowser, newDevice, open, signInOn } from '@/tests/setup/browser'
 import { newClient } from '@/tests/setup/client'
 import { startServer, type TestServer } from '@/tests/setup/server'
 
@@ -145,11 +145,7 @@ it('leads from nothing to the first dip', async () => {
 
   // At the wall tablet: the first dip, and it dries in the tide.
   const tablet = await newDevice(browser, server.baseUrl)
-  await open(tablet.page, '/sign-in')
-  await tablet.page.getByLabel('E-mail').fill('aurelia@foundry.example')
-  await tablet.page.getByLabel('Password').fill('three foxes in the attic')
-  await press(tablet.page, 'Sign in')
-  await tablet.page.waitForURL('**/floor')
+  await signInOn(tablet.page, { email: 'aurelia@foundry.example', password: 'three foxes in the attic' })
   await touch(tablet.page.locator('[data-tree-row]').filter({ hasText: tag }))
   await touch(tablet.page.getByRole('button', { name: /^Log dip 1/ }))
   await tablet.page

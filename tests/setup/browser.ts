@@ -32,7 +32,7 @@ export async function newDevice(
   const errors: string[] = []
   page.on('pageerror', (error) => errors.push(error.message))
   page.on('console', (message) => {
-    if (message.type() === 'error') errors.push(message.text())
+    if (message.type() === 'error') errors.push(`${message.text()} ${message.location().url}`.trim())
   })
   return { context, page, errors }
 }
@@ -46,6 +46,11 @@ const LIVE_WITHIN_MS = 30_000
  */
 export async function open(page: Page, path: string): Promise<void> {
   await page.goto(path)
+  await untilLive(page)
+}
+
+/** The same for a page that the browser is on its way to. */
+export async function untilLive(page: Page): Promise<void> {
   const deadline = Date.now() + LIVE_WITHIN_MS
   // Asked again and again from here: a wait inside the page would build code from text, which the policy forbids.
   while (!(await page.evaluate(isLive).catch(() => false))) {
@@ -67,4 +72,6 @@ export async function signInOn(page: Page, { email, password }: { email: string;
   await page.getByLabel('Password').fill(password)
   await page.getByRole('button', { name: 'Sign in' }).click()
   await page.waitForURL('**/floor')
+  // Until then both forms of the floor are there, and one of them is hidden.
+  await untilLive(page)
 }
