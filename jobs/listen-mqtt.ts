@@ -132,7 +132,11 @@ export function listenMqtt(parts: ListenParts): () => Promise<void> {
     let told = ''
     held = next.heldFilters
     const opened = openMqttLink({
-      ...{ address: next.address, clientId: next.clientId, userName: next.userName, password: next.password, firstWaitMs },
+      address: next.address,
+      clientId: next.clientId,
+      userName: next.userName,
+      password: next.password,
+      firstWaitMs,
       onConnect: (session) => {
         const since = clock.now()
         const isLong = since - awaySince > SHORT_ABSENCE_MS
@@ -147,8 +151,8 @@ export function listenMqtt(parts: ListenParts): () => Promise<void> {
         told = trouble
         log('mqtt.away', { trouble })
         void inTurn(async () => {
-          if (link === opened && !connection.isOpen)
-            await noteMqttConnection({ connectedSince: null, awaySince: awaySince || clock.now(), trouble })
+          if (link !== opened || connection.isOpen) return
+          await noteMqttConnection({ connectedSince: null, awaySince: awaySince || clock.now(), trouble })
         })
       },
       onMessage: take,

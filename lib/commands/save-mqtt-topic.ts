@@ -19,8 +19,9 @@ export function addMqttTopic(input: TopicInput, { member, clock }: By): Promise<
   return inTransaction(async () => {
     const now = clock.now()
     const sensor = await fedSensor(input, null)
-    if ((await MqttTopic.count()) >= MOST_TOPICS)
+    if ((await MqttTopic.count()) >= MOST_TOPICS) {
       throw new AppError('conflict', `There are ${MOST_TOPICS} topics, and no more can be kept.`)
+    }
     const topicId = newId(now)
     await MqttTopic.create({ ...input, id: topicId, isDemo: member.isDemo ?? false, createdAt: now })
     await addFoundryEvent(

@@ -33,7 +33,8 @@ export function valueAtPath(message: unknown, path: JsonPath): unknown {
   for (const step of path) {
     // Only what the message itself holds: `constructor` is a path to nothing, nor is a list's `length` in it.
     if (value === null || typeof value !== 'object' || !Object.prototype.propertyIsEnumerable.call(value, step)) return undefined
-    value = (value as Record<string, unknown>)[step]
+    const found: unknown = Reflect.get(value, step)
+    value = found
   }
   return value
 }

@@ -102,9 +102,9 @@ export function openMqttLink({ address, clientId, userName, password, firstWaitM
     unsubscribe: (filter) => isDone(client.unsubscribeAsync(filter).then(() => true)),
     close: async () => {
       isClosed = true
-      const isOpen = client.connected
-      if (isOpen) await within(CLOSE_WITHIN_MS, client.publishAsync(topic, 'offline', ONLINE))
-      await within(CLOSE_WITHIN_MS, client.endAsync(!isOpen))
+      const isConnected = client.connected
+      if (isConnected) await within(CLOSE_WITHIN_MS, client.publishAsync(topic, 'offline', ONLINE))
+      await within(CLOSE_WITHIN_MS, client.endAsync(!isConnected))
       // A broker that does not answer holds up a polite end.
       client.stream.destroy()
     },
