@@ -1,8 +1,11 @@
 import { millisecondsInDay, millisecondsInHour, millisecondsInMinute } from 'date-fns/constants'
+import { WEAKEST_SD } from '@/lib/calibration/left-out'
+import { learnMean, PRIOR_SD } from '@/lib/calibration/proposals'
 import { demoAirAt } from '@/lib/demo/climate'
 import { seededRandom, type Random } from '@/lib/demo/random'
 import { hourDoses, hourStartOf } from '@/lib/drying/dose-hours'
 import {
+  COAT_SCATTER,
   learnFromCoat,
   observeMoisture,
   observeSurface,
@@ -13,6 +16,7 @@ import {
   thetaPosterior,
   withoutPrior,
   type Observation,
+  type SharedTheta,
   type Theta,
 } from '@/lib/drying/evidence'
 import { forecastSegments } from '@/lib/drying/forecast'
@@ -44,8 +48,8 @@ const AIR_SPEEDS_MPS = [0.5, 1, 1.5]
 
 /** ln scale: the recipe's own error, and what lies between its coats, of which half the variance is the tree's. */
 const RECIPE_ERROR = 0.2
-const COAT_SCATTER = 0.15
-const HALF_SCATTER = COAT_SCATTER / Math.SQRT2
+const TRUE_SCATTER = 0.15
+const HALF_SCATTER = TRUE_SCATTER / Math.SQRT2
 
 /** Errors of the measurements. */
 const MOISTURE_ERROR = 0.03
@@ -141,21 +145,21 @@ export function simulateFoundry(seed: number): Simulation {
   rooms.set(seed % ROOMS, room)
   const recipe = RECIPE_ERROR * gauss(random)
   const scores = Object.fromEntries(WAYS.map((way): [Way, Score] => [way, { errors: [], inside: [] }])) as Simulation
-  const outcomes: Theta[] = []
+  const outcomes = NEEDS.map((): Theta[] => [])
   const took: number[] = []
-  let learned: Theta = { mean: 0, sd: DEFAULT_SIGMA }
+  let learnedOf: readonly Theta[] = []
 
   for (let shell = 0; shell < SHELLS; shell += 1) {
     const isScored = shell >= SHELLS / 2
-    if (shell === SHELLS / 2) learned = learnRecipe(outcomes)
+    if (shell === SHELLS / 2) learnedOf = outcomes.map(learnCoat)
     const tree = HALF_SCATTER * gauss(random)
     const factor = placeFactor(AIR_SPEEDS_MPS[Math.floor(random() * AIR_SPEEDS_MPS.length)]!, PRESSURE_PA)
     // Dipped in working hours, after a fortnight of readings, the shells one after the other.
     let dippedAt =
       START + Math.floor(15 + (shell / SHELLS) * (DAYS - 25)) * millisecondsInDay + (7 + Math.floor(random() * 10)) * millisecondsInHour
     let shared = sharedBefore(DEFAULT_SIGMA)
-    let sharedLearned = { ...sharedBefore(learned.sd), mean: learned.mean }
-    for (const need of NEEDS) {
+    let apart: SharedTheta | null = null
+    for (const [index, need] of NEEDS.entries()) {
       const trueNeed = need * Math.exp(recipe + tree + HALF_SCATTER * gauss(random))
       const dryAt = instantWhenDose(
         [{ from: dippedAt, to: Infinity, placeFactor: factor, curve: room.curve }],
@@ -179,9 +183,16 @@ export function simulateFoundry(seed: number): Simulation {
       const posterior = thetaPosterior(prior, seen)
       shared = learnFromCoat(shared, prior, posterior)
       if (isScored) {
-        const priorLearned = priorOf(sharedLearned)
+        // Each coat has the need that its own finished coats have set right; the tree's own way comes on top.
+        const learned = learnedOf[index]!
+        const before = apart ?? sharedBefore(learned.sd)
+        const priorLearned = priorOf({ ...before, mean: before.mean + learned.mean })
         const posteriorLearned = thetaPosterior(priorLearned, seen)
-        sharedLearned = learnFromCoat(sharedLearned, priorLearned, posteriorLearned)
+        apart = learnFromCoat(
+          before,
+          { ...priorLearned, mean: before.mean },
+          { ...posteriorLearned, mean: posteriorLearned.mean - learned.mean },
+        )
         score(scores.timer, dryAt, after(dippedAt, TIMER_HOURS * millisecondsInHour))
         score(scores['timer by experience'], dryAt, after(dippedAt, medianOf(took)))
         score(scores.untrained, dryAt, tell(coat, dippedAt, { mean: 0, sd: DEFAULT_SIGMA }))
@@ -191,7 +202,7 @@ export function simulateFoundry(seed: number): Simulation {
       } else {
         const before = { mean: 0, sd: DEFAULT_SIGMA }
         const outcome = withoutPrior(before, thetaPosterior(before, seen))
-        if (outcome) outcomes.push(outcome)
+        if (outcome && outcome.sd <= WEAKEST_SD) outcomes[index]!.push(outcome)
         took.push(dryAt - dippedAt)
       }
       // The next coat goes on the day after it is dry, whatever anybody says.
@@ -206,15 +217,10 @@ const after = (dippedAt: Instant, ms: number): Told => ({ earliestAt: null, like
 
 const medianOf = (values: readonly number[]): number => values.toSorted((a, b) => a - b)[values.length >> 1]!
 
-/** The proposal of a recipe: each finished coat counts with its own variance and the scatter between coats, precisions add. */
-function learnRecipe(outcomes: readonly Theta[]): Theta {
-  let [precision, sum] = [1 / RECIPE_ERROR ** 2, 0]
-  for (const { mean, sd } of outcomes) {
-    const weight = 1 / (sd ** 2 + COAT_SCATTER ** 2)
-    precision += weight
-    sum += weight * mean
-  }
-  return { mean: sum / precision, sd: Math.sqrt(1 / precision + COAT_SCATTER ** 2) }
+/** What is believed of a recipe's coat once somebody has accepted its proposal. */
+function learnCoat(outcomes: readonly Theta[]): Theta {
+  const { mean, sd } = learnMean(PRIOR_SD['recipe coat'], outcomes)
+  return { mean, sd: Math.hypot(sd, COAT_SCATTER) }
 }
 
 function score({ errors, inside }: Score, dryAt: Instant, { earliestAt, likelyAt, safeAt }: Told): void {
