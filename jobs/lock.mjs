@@ -1,7 +1,7 @@
 // One program per data folder: two workers would be harmless, two versions of the program would not, and a restore wants it alone.
 // Plain Node, because the start script runs before anything is installed.
 import { spawnSync } from 'node:child_process'
-import { readFileSync, rmSync, writeFileSync } from 'node:fs'
+import { readFileSync, renameSync, rmSync, writeFileSync } from 'node:fs'
 import { basename, join } from 'node:path'
 import { setTimeout as sleep } from 'node:timers/promises'
 
@@ -30,7 +30,7 @@ export async function takeLock(dataDir, { port, refusal }) {
       isHeld = true
     } catch (error) {
       if (error.code !== 'EEXIST') throw error
-      const holder = readHolder(file)
+      const holder = await readHolder(file)
       if (holder && isOurs(holder.pid, holder.program ?? 'start.mjs')) throw new Refusal(refusal(holder))
       await endOrphans(holder)
       rmSync(file, { force: true })
@@ -40,7 +40,10 @@ export async function takeLock(dataDir, { port, refusal }) {
   return {
     noteChild: (name, pid) => {
       lock.children[name] = pid
-      if (isHeld) writeFileSync(file, JSON.stringify(lock), { mode: 0o600 })
+      if (!isHeld) return
+      // Moved into its place whole: whoever read half of it would take it for that of a program that is gone.
+      writeFileSync(`${file}.new`, JSON.stringify(lock), { mode: 0o600 })
+      renameSync(`${file}.new`, file)
     },
     release: () => {
       if (isHeld) rmSync(file, { force: true })
@@ -49,12 +52,16 @@ export async function takeLock(dataDir, { port, refusal }) {
   }
 }
 
-function readHolder(file) {
-  try {
-    return JSON.parse(readFileSync(file, 'utf8'))
-  } catch {
-    return null
+/** Who has the folder; null where the file tells nobody. It is made empty and filled a moment later, so it is read again before. */
+async function readHolder(file) {
+  for (let attempt = 0; attempt < 5; attempt += 1) {
+    try {
+      return JSON.parse(readFileSync(file, 'utf8'))
+    } catch {
+      await sleep(100)
+    }
   }
+  return null
 }
 
 async function endOrphans(holder) {

@@ -1,5 +1,6 @@
 import type { Job, JobContext } from '@/jobs/job'
 import { claimTick, finishTick } from '@/lib/commands/claim-tick'
+import { reasonOf, traceOf } from '@/lib/core/errors'
 import { log } from '@/lib/core/log'
 
 /**
@@ -21,7 +22,7 @@ export async function runPass(job: Job, context: JobContext): Promise<'done' | '
     }
     return result.outcome
   } catch (error) {
-    log('job.unrecorded', { job: job.name, error: String(error) })
+    log('job.unrecorded', { job: job.name, error: reasonOf(error) })
     return 'failed'
   }
 }
@@ -30,7 +31,7 @@ async function attempt(job: Job, context: JobContext): Promise<{ outcome: 'done'
   try {
     return { outcome: 'done', detail: await job.run(context) }
   } catch (error) {
-    log('job.failed', { job: job.name, error: error instanceof Error ? error.stack : String(error) })
-    return { outcome: 'failed', detail: { error: String(error).slice(0, 300) } }
+    log('job.failed', { job: job.name, error: traceOf(error) })
+    return { outcome: 'failed', detail: { error: reasonOf(error).slice(0, 300) } }
   }
 }

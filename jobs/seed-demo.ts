@@ -1,5 +1,5 @@
-import { AppError } from '@/lib/core/errors'
 import { systemClock } from '@/lib/core/clock'
+import { reasonOf } from '@/lib/core/errors'
 import { log } from '@/lib/core/log'
 import { seedDemo } from '@/lib/demo/seed'
 import { keepDemoTokens } from '@/lib/demo/token-file'
@@ -13,8 +13,7 @@ try {
   if (process.send) process.send({ signIns })
   else log('demo.made', { signIns })
 } catch (error) {
-  const reason = error instanceof AppError ? error.message : error instanceof Error ? `${error.name}: ${error.message}` : String(error)
-  log('demo.not-made', { reason })
+  log('demo.not-made', { reason: reasonOf(error) })
   process.exitCode = 1
 }
 process.disconnect?.()

@@ -193,6 +193,8 @@ function isLoopback(host) {
 function runScript(script, env) {
   return new Promise((done, fail) => {
     const child = spawn(process.execPath, [...TSX, script], { env, stdio: ['ignore', 'inherit', 'inherit', 'ipc'] })
+    // Should this start be killed, the next one ends it: two that lay the demo would be in each other's way.
+    if (child.pid) lock.noteChild(script, child.pid)
     let message = null
     child.on('message', (sent) => (message = sent))
     child.on('error', fail)

@@ -17,6 +17,10 @@ import { Hold } from '@/models/hold'
 import { JobRun } from '@/models/job-run'
 import { LookOver } from '@/models/look-over'
 import { Member } from '@/models/member'
+import { MqttBroker } from '@/models/mqtt-broker'
+import { MqttHour } from '@/models/mqtt-hour'
+import { MqttMessage } from '@/models/mqtt-message'
+import { MqttTopic } from '@/models/mqtt-topic'
 import { Notice } from '@/models/notice'
 import { Operation } from '@/models/operation'
 import { Piece } from '@/models/piece'
@@ -41,6 +45,7 @@ import { TreeEvent } from '@/models/tree-event'
 import { TreePiece } from '@/models/tree-piece'
 import { TreePlace } from '@/models/tree-place'
 import { TreeWatch } from '@/models/tree-watch'
+import { Upload } from '@/models/upload'
 import { Work } from '@/models/work'
 
 // Each names itself: a production build shortens class names, and of two models with one name the later replaces the earlier.
@@ -89,6 +94,11 @@ const models = [
   JobRun,
   FoundryEvent,
   Backup,
+  MqttBroker,
+  MqttTopic,
+  MqttMessage,
+  MqttHour,
+  Upload,
 ]
 for (const model of models) model.initialize(database)
 
@@ -151,6 +161,9 @@ Notice.belongsTo(Tree, { as: 'tree', foreignKey: 'treeId' })
 Notice.hasMany(Delivery, { as: 'deliveries', foreignKey: 'noticeId' })
 Delivery.belongsTo(Notice, { as: 'notice', foreignKey: 'noticeId' })
 PushSubscription.belongsTo(Member, { as: 'member', foreignKey: 'memberId' })
+MqttTopic.belongsTo(Sensor, { as: 'sensor', foreignKey: 'sensorId' })
+Upload.belongsTo(Sensor, { as: 'sensor', foreignKey: 'sensorId' })
+Upload.belongsTo(Member, { as: 'author', foreignKey: 'createdBy' })
 Member.hasMany(PushSubscription, { as: 'pushSubscriptions', foreignKey: 'memberId' })
 
 export {
@@ -199,4 +212,9 @@ export {
   JobRun,
   FoundryEvent,
   Backup,
+  MqttBroker,
+  MqttTopic,
+  MqttMessage,
+  MqttHour,
+  Upload,
 }

@@ -54,7 +54,9 @@ export function claimDeliveries({ clock, limit }: { clock: Clock; limit: number 
          JOIN members m ON m.id = d.member_id
          LEFT JOIN push_subscriptions s ON s.id = d.subscription_id AND s.member_id = d.member_id AND m.disabled_at IS NULL
          LEFT JOIN trees t ON t.id = n.tree_id
-        WHERE (d.status = 'waiting' AND d.next_attempt_at <= :now) OR (d.status = 'sending' AND d.lease_until <= :now)
+        -- The first line finds the index of what is still due: all that was ever sent lies in the same table.
+        WHERE d.status IN ('waiting', 'sending')
+          AND ((d.status = 'waiting' AND d.next_attempt_at <= :now) OR (d.status = 'sending' AND d.lease_until <= :now))
         ORDER BY n.urgency, n.opened_at, d.id LIMIT :limit`,
       { type: QueryTypes.SELECT, replacements: { now, limit } },
     )

@@ -3,7 +3,7 @@ import { FoundryEvent } from '@/models'
 
 /** What is not a tree and can change. */
 export type EventSubject = {
-  type: 'foundry' | 'hours' | 'closure' | 'place' | 'bath' | 'sensor' | 'recipe' | 'work' | 'member' | 'backup' | 'demo'
+  type: 'foundry' | 'hours' | 'closure' | 'place' | 'bath' | 'sensor' | 'recipe' | 'work' | 'member' | 'backup' | 'demo' | 'mqtt'
   /** Empty where there is only one. */
   id?: string
   /** Its name at this moment. */

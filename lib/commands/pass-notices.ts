@@ -75,7 +75,8 @@ async function tellSummaries(
   { vapidPublicKey, clock }: { vapidPublicKey: string; clock: Clock },
 ): Promise<number> {
   if (late.length === 0) return 0
-  const { everyTree, watching } = await pushAudiences(vapidPublicKey)
+  const treeIds = late.flatMap(({ treeId }) => (treeId === null ? [] : [treeId]))
+  const { everyTree, watching } = await pushAudiences(treeIds, vapidPublicKey)
   const tell = (
     subject: Pick<NoticeDraft, 'subjectType' | 'subjectId'>,
     drafts: readonly NoticeDraft[],

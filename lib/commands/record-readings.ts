@@ -96,7 +96,7 @@ async function addWithinRange(sensorId: number, rows: readonly Told[], how: { pr
   )) {
     const known = await loadKnownReadings(sensorId, from - JUMP_WITHIN_MS - FLAT_REACH_MS, to + JUMP_WITHIN_MS)
     const entries = new Map(
-      known.map(({ setAside, ...reading }): [number, Entry] => [reading.measuredAt, { reading, isChanged: false, stood: setAside }]),
+      known.map(({ setAside: stood, ...reading }): [number, Entry] => [reading.measuredAt, { reading, isChanged: false, stood }]),
     )
     for (const row of standing) {
       if (row.measuredAt < from || row.measuredAt > to) continue

@@ -29,3 +29,22 @@ export class AppError extends Error {
 /** The refusal of everything that needs a foundry before there is one. */
 export const notSetUp = (): AppError =>
   new AppError('unavailable', 'Kilnward is not set up yet. Open it in a browser to make the owner’s account.')
+
+/**
+ * What went wrong, in one line for a log. Sequelize words whatever constraint SQLite names as 'Validation error' and keeps the
+ * sentence that tells which one on `parent`; there are no values in it.
+ *
+ * @example reasonOf(error) // => 'SequelizeUniqueConstraintError: Validation error (SQLITE_CONSTRAINT: UNIQUE constraint failed: trees.tag)'
+ */
+export function reasonOf(error: unknown): string {
+  if (error instanceof AppError) return error.message
+  if (!(error instanceof Error)) return String(error)
+  const cause = 'parent' in error && error.parent instanceof Error && !error.message.includes(error.parent.message) ? error.parent : null
+  return `${error.name}: ${error.message}${cause ? ` (${cause.message})` : ''}`
+}
+
+/** The same with where it went wrong. */
+export function traceOf(error: unknown): string {
+  const frames = error instanceof Error ? (error.stack ?? '').split('\n').filter((line) => /^\s+at /.test(line)) : []
+  return [reasonOf(error), ...frames].join('\n')
+}

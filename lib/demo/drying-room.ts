@@ -2,6 +2,7 @@ import { millisecondsInHour, millisecondsInMinute } from 'date-fns/constants'
 import { DEMO_AIRS, demoAirAt, type DemoAir, type DemoClimate } from '@/lib/demo/climate'
 import { DEMO_PLACE_KEYS, DEMO_PLACES, type DemoPlace } from '@/lib/demo/shop'
 import { stationPressurePa } from '@/lib/drying/air'
+import { dampAirSigma } from '@/lib/drying/need'
 import { placeSpans } from '@/lib/drying/place-spans'
 import { roomFactor } from '@/lib/drying/room-factor'
 import { roomSegments } from '@/lib/drying/room-segments'
@@ -38,15 +39,19 @@ export type DryingRoom = {
   doseBetween: (place: DemoPlace, from: number, to: number) => Dose
   /** Null when the dose is not reached within the time that the room knows. */
   whenDose: (place: DemoPlace, from: number, amount: number, bound: keyof Dose) => number | null
+  /** What the damp air at a place adds to the spread of a need, from one instant to another. */
+  airSigma: (place: DemoPlace, from: number, to: number) => number
 }
 
 /** Works the drying clock over the history and the next three quarters of an hour. */
 export function dryingRoom(climate: DemoClimate, { from, now, altitudeM }: { from: number; now: number; altitudeM: number }): DryingRoom {
   const to = now + LOOK_AHEAD_MS
   const pressurePa = stationPressurePa(altitudeM)
+  const readingsOf = new Map(DEMO_AIRS.map((air) => [air, demoReadings(climate, air, { from, to, now })]))
+  const meanOf = new Map([...readingsOf].map(([air, readings]) => [air, meanHumidity(readings)]))
   const curves = new Map(
     DEMO_AIRS.map((air) => {
-      const readings = demoReadings(climate, air, { from, to, now })
+      const readings = readingsOf.get(air) ?? []
       const known = readings.map((reading) => ({ ...reading, roomFactor: roomFactor(reading, pressurePa), source: 'sensor' as const }))
       return [air, roomSegments(known, { now: to })]
     }),
@@ -69,6 +74,30 @@ export function dryingRoom(climate: DemoClimate, { from, now, altitudeM }: { fro
       return sumUpTo && end > start ? addDose(sumUpTo(end), sumUpTo(start), -1) : NO_DOSE
     },
     whenDose: (place, start, amount, bound) => instantWhenDose(spansOf.get(place) ?? [], start, amount, bound),
+    airSigma: (place, start, end) => {
+      const { air } = DEMO_PLACES[place]
+      const mean = air === null ? null : meanOf.get(air)?.(start, end)
+      return mean == null ? 0 : dampAirSigma(mean)
+    },
+  }
+}
+
+/** Mean humidity of the readings from one instant to another, by their running sum; null where there is none. */
+function meanHumidity(readings: readonly DemoReading[]): (from: number, to: number) => number | null {
+  const sums = [0]
+  for (const { relHumidityPct } of readings) sums.push(sums.at(-1)! + relHumidityPct)
+  const countBefore = (at: number) => {
+    let [low, high] = [0, readings.length]
+    while (low < high) {
+      const middle = (low + high) >>> 1
+      if (readings[middle]!.measuredAt < at) low = middle + 1
+      else high = middle
+    }
+    return low
+  }
+  return (from, to) => {
+    const [first, end] = [countBefore(from), countBefore(to + 1)]
+    return end > first ? (sums[end]! - sums[first]!) / (end - first) : null
   }
 }
 

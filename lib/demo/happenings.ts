@@ -1,4 +1,4 @@
-import { millisecondsInDay, millisecondsInHour, millisecondsInMinute } from 'date-fns/constants'
+import { millisecondsInDay, millisecondsInHour, millisecondsInMinute, millisecondsInSecond } from 'date-fns/constants'
 import { COATING_WAYS, STUCCOS } from '@/lib/coats/vocabulary'
 import type { TakenEvidence } from '@/lib/demo/checks'
 import type { PlannedCoat } from '@/lib/demo/plan-coats'
@@ -21,6 +21,7 @@ export type Happening =
   | Of<'stir', { bath: 'face' | 'backup' }>
   | Of<'reading', { room: Air }>
 
+const SECOND = millisecondsInSecond
 const MINUTE = millisecondsInMinute
 const OPERATORS = ['maud', 'halvard', 'oona'] as const
 const SUPERVISOR = 'ines'
@@ -62,7 +63,9 @@ function ofTree(tree: TaggedTree, { now, hours }: DemoPlan): Happening[] {
   }
   if (story?.kind === 'felt') {
     const [from, to] = longestWait(tree)
-    const at = story.verdict === 'dry' ? to - 4 * MINUTE : (lastAtWork(hours, from + (to - from) / 3, MINUTE) ?? from)
+    // To the second: an instant is stored as a whole number.
+    const third = Math.floor((to - from) / 3 / SECOND) * SECOND
+    const at = story.verdict === 'dry' ? to - 4 * MINUTE : (lastAtWork(hours, from + third, MINUTE) ?? from)
     const coatNumber = tree.coats.find((coat) => coat.dippedAt === from)?.number ?? 1
     const evidence = { kind: 'touch' as const, spot: slowestSpot(tree.recessClass), verdict: story.verdict }
     if (at > from + 10 * MINUTE) list.push({ at, kind: 'evidence', by: operatorAt(at, 2), tree, coatNumber, evidence })

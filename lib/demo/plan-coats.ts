@@ -33,7 +33,7 @@ export type Shape = {
 }
 
 /** What a coat asks of the room until the next one may go on. */
-export type Demand = { coat: DemoRecipeCoat; stucco: Stucco; need: Dose; amount: number; bound: 'likely' | 'low' }
+export type Demand = { coat: DemoRecipeCoat; stucco: Stucco; need: Dose; spread: number; amount: number; bound: 'likely' | 'low' }
 
 export const recipeOf = (tree: CastTree): readonly DemoRecipeCoat[] => DEMO_RECIPES[tree.recipe].coats
 
@@ -55,21 +55,37 @@ export function demandOf({ tree, recessClass, spacing }: Shape, number: number):
     moistureRatioBelow: story?.kind === 'dipped early' && story.overCoat === number - 1 ? MOISTURE_BELOW_EARLY : 0,
     treeTheta: 0,
   })
-  const need = needBand(hours, sigma({ recessClass, hasTyped: false }))
+  const spread = sigma({ recessClass, hasTyped: false })
+  const need = needBand(hours, spread)
   const isLast = number === recipeOf(tree).length
   const isSafe = guardFor({ kind: coat.kind, isLast, recessClass, recipeGuard: coat.guard }) === 'safe'
-  return { coat, stucco, need, amount: isSafe ? need.high : need.likely, bound: isSafe ? 'low' : 'likely' }
+  return { coat, stucco, need, spread, amount: isSafe ? need.high : need.likely, bound: isSafe ? 'low' : 'likely' }
+}
+
+/** The dose at a coat's guard in the air of a time: damp air asks for more before it is safe. */
+export function amountIn(room: DryingRoom, place: DemoPlace, { need, spread, amount, bound }: Demand, from: number, to: number): number {
+  return bound === 'likely' ? amount : needBand(need.likely, Math.hypot(spread, room.airSigma(place, from, to))).high
 }
 
 /** When a coat comes to its guard; null when that lies beyond what is known of the room. */
-export function guardAt(room: DryingRoom, place: DemoPlace, dippedAt: number, { coat, amount, bound }: Demand): number | null {
-  return room.whenDose(place, dippedAt + coat.drainSeconds * 1000, amount, bound)
+export function guardAt(room: DryingRoom, place: DemoPlace, dippedAt: number, demand: Demand): number | null {
+  const from = dippedAt + demand.coat.drainSeconds * 1000
+  let { amount } = demand
+  let at = room.whenDose(place, from, amount, demand.bound)
+  // The air until then says how much is needed, which says until when: it settles at once.
+  for (let round = 0; round < 3 && at !== null; round += 1) {
+    amount = amountIn(room, place, demand, from, at)
+    at = room.whenDose(place, from, amount, demand.bound)
+  }
+  return at
 }
 
 /** The newest whole second at which a coat can be dipped so that its guard falls at `at` or before. */
 export function latestDipFor(room: DryingRoom, place: DemoPlace, at: number, demand: Demand, from: number): number | null {
-  const isInTime = (dippedAt: number) =>
-    room.doseBetween(place, dippedAt + demand.coat.drainSeconds * 1000, at)[demand.bound] >= demand.amount
+  const isInTime = (dippedAt: number) => {
+    const start = dippedAt + demand.coat.drainSeconds * 1000
+    return room.doseBetween(place, start, at)[demand.bound] >= amountIn(room, place, demand, start, at)
+  }
   if (!isInTime(from)) return null
   let [early, late] = [from, at]
   while (late - early > 500) {

@@ -4,6 +4,7 @@ import type { Aim, CastTree } from '@/lib/demo/cast'
 import { planChecks, type PlannedCheck } from '@/lib/demo/checks'
 import type { DemoClimate } from '@/lib/demo/climate'
 import {
+  amountIn,
   demandOf,
   guardAt,
   latestDipFor,
@@ -217,12 +218,12 @@ type Question = { demand: Demand; place: DemoPlace; dippedAt: number; odd: numbe
 
 /** What speaks against a dip that serves the aim; null when it does not serve it. */
 function costOf(aim: Aim, { demand, place, dippedAt, odd, lookOverAt }: Question, { room, now, hours }: Parts): number | null {
-  const { need, amount, bound, coat } = demand
+  const { need, bound, coat } = demand
   const from = dippedAt + coat.drainSeconds * 1000
   const ageHours = (now - dippedAt) / HOUR
   if (aim.kind === 'unknown') return odd === 0 && ageHours > 12.6 ? ageHours : null
   const doseTo = (at: number) => room.doseBetween(place, from, at)
-  const hasGuardBy = (at: number) => doseTo(at)[bound] >= amount
+  const hasGuardBy = (at: number) => doseTo(at)[bound] >= amountIn(room, place, demand, from, at)
   const ratio = moistureRatio(doseTo(now).likely, need.likely, coat.moistureTarget)
   switch (aim.kind) {
     case 'wet':
@@ -236,7 +237,7 @@ function costOf(aim: Aim, { demand, place, dippedAt, odd, lookOverAt }: Question
     case 'overdue':
       return hasGuardBy(now - HOUR) && ageHours > coat.longestWaitHours + 0.3 ? 0.5 * ageHours : null
     case 'last coat on':
-      return doseTo(now).low < 0.93 * amount && from < now - HOUR ? Math.abs(ratio - 0.3) : null
+      return doseTo(now).low < 0.93 * amountIn(room, place, demand, from, now) && from < now - HOUR ? Math.abs(ratio - 0.3) : null
     case 'dried out':
       return hasGuardBy(now - 20 * MINUTE) ? 0.2 * ageHours : null
     case 'looked over':

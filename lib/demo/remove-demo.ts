@@ -78,7 +78,8 @@ const STOOD_ON: readonly { kind: KeptThing['kind']; table: string; name: string;
     name: 'name',
     // A token that somebody of this foundry has made is in a logger of theirs.
     by: `SELECT sensor_id FROM places WHERE is_demo = 0 UNION SELECT sensor_id FROM former_airs WHERE place_id IN (SELECT id FROM places WHERE is_demo = 0)
-          UNION SELECT sensor_id FROM sensor_tokens WHERE created_by IN (SELECT id FROM members WHERE is_demo = 0)`,
+          UNION SELECT sensor_id FROM sensor_tokens WHERE created_by IN (SELECT id FROM members WHERE is_demo = 0)
+          UNION SELECT sensor_id FROM mqtt_topics WHERE is_demo = 0`,
   },
   {
     kind: 'work',
@@ -90,9 +91,10 @@ const STOOD_ON: readonly { kind: KeptThing['kind']; table: string; name: string;
 
 /**
  * Before anything loses its mark: a logger that stays must not be fed any more. Of a demo sensor the tokens that Kilnward made for its
- * own feed go too; one that somebody of this foundry has made stays, with its sensor.
+ * own feed go too; one that somebody of this foundry has made stays, with its sensor. The same goes for topics of a broker.
  */
 async function removeTokens(): Promise<void> {
+  await run('DELETE FROM mqtt_topics WHERE is_demo = 1')
   await run(`DELETE FROM sensor_tokens WHERE created_by IN ${DEMO('members')} OR (created_by IS NULL AND sensor_id IN ${DEMO('sensors')})`)
 }
 
@@ -160,7 +162,7 @@ async function removeShop(): Promise<void> {
   await run('DELETE FROM baths WHERE is_demo = 1')
   for (const table of ['fan_hours', 'fan_switches', 'former_airs']) await run(`DELETE FROM ${table} WHERE place_id IN ${places}`)
   await run('DELETE FROM places WHERE is_demo = 1')
-  for (const table of ['readings', 'set_aside_readings', 'dose_hours', 'sensor_tokens', 'sensor_offsets', 'sensor_devices']) {
+  for (const table of ['readings', 'set_aside_readings', 'dose_hours', 'sensor_tokens', 'sensor_offsets', 'sensor_devices', 'uploads']) {
     await run(`DELETE FROM ${table} WHERE sensor_id IN ${sensors}`)
   }
   await run('DELETE FROM sensors WHERE is_demo = 1')
@@ -169,6 +171,7 @@ async function removeShop(): Promise<void> {
     await run(`UPDATE ${table} SET entered_by = NULL WHERE entered_by IN ${members}`)
   }
   await run(`UPDATE sensor_devices SET noted_by = NULL WHERE noted_by IN ${members}`)
+  await run(`UPDATE uploads SET created_by = NULL WHERE created_by IN ${members}`)
 }
 
 /** Takes the demo's people away, but for one whose name stands in a real row, which only somebody who let them sign in can have brought about. */
@@ -202,6 +205,7 @@ async function closeFoundry(foundry: Foundry): Promise<boolean> {
   }
   await ShiftHours.destroy({ where: {} })
   await Closure.destroy({ where: {} })
+  for (const table of ['mqtt_broker', 'mqtt_messages', 'mqtt_hours']) await run(`DELETE FROM ${table}`)
   await foundry.destroy()
   return true
 }

@@ -58,7 +58,8 @@ export function fitPage(weighings: readonly PagePoint[]): PageFit | null {
   const sumAt = (n: number, lnScale: number) =>
     points.reduce((sum, { dose, moistureRatio }) => sum + (moistureRatio - Math.exp(-((dose / Math.exp(lnScale)) ** n))) ** 2, 0)
   const found = profileSearch(([n, lnScale]) => sumAt(n!, lnScale!), [EXPONENT, scale])
-  const [n, lnScale] = found.parameters as [number, number]
+  const n = found.parameters[0]!
+  const lnScale = found.parameters[1]!
   if (n - EXPONENT.low < 1e-6 || EXPONENT.high - n < 1e-6) return null
   return {
     k: Math.exp(-n * lnScale),

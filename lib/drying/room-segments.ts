@@ -2,7 +2,7 @@ import { millisecondsInHour, millisecondsInMinute } from 'date-fns/constants'
 import type { Instant, Rate, ReadingMark, ReadingSource, RoomReading, RoomSegment, SegmentKind } from '@/lib/drying/types'
 
 /** Two readings further apart than this have a gap between them. Our own starting value. */
-const LONGEST_INTERVAL_MS = 60 * millisecondsInMinute
+export const LONGEST_INTERVAL_MS = 60 * millisecondsInMinute
 
 /** How long the newest reading is believed, by source. Our own starting values. */
 const HOLD_MS: Record<ReadingSource, number> = { sensor: 30 * millisecondsInMinute, typed: 12 * millisecondsInHour }

@@ -28,6 +28,9 @@ export type DipDraft = {
   /** As typed from the wall hygrometer. */
   roomTemp: string
   roomHumidity: string
+  /** As typed off the scale and the surface thermometer. */
+  weight: string
+  surfaceTemp: string
   /** For trees that are held or not dry yet. */
   reason: string
   /** The coat of each tree as it stood when the tree was taken up, or as a person has corrected it: 'it was the next one'. */
@@ -103,6 +106,8 @@ export function startDraft(trees: readonly QueueTree[]): DipDraft | null {
     drainSeconds: first.next.drainSeconds,
     done: { kind: 'now' },
     placeId: null,
+    weight: '',
+    surfaceTemp: '',
     roomTemp: '',
     roomHumidity: '',
     reason: '',

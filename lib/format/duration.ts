@@ -22,3 +22,10 @@ export function formatReadAge(measuredAt: number, now: number): string {
   const age = now - measuredAt
   return age < MINUTE_MS ? 'read just now' : `read ${formatDuration(age)} ago`
 }
+
+const ROUGH_STEP_MS = 5 * MINUTE_MS
+
+/** A length of time that rests on a forecast, to five minutes and without a sign: '14 h 20 min'. */
+export function roughDuration(milliseconds: number): string {
+  return formatDuration(Math.round(Math.abs(milliseconds) / ROUGH_STEP_MS) * ROUGH_STEP_MS)
+}

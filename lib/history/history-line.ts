@@ -25,6 +25,7 @@ const PAGE_OF: Readonly<Record<string, string>> = {
   place: '/settings/places',
   bath: '/settings/baths',
   sensor: '/settings/sensors',
+  mqtt: '/settings/mqtt',
   member: '/people',
   backup: '/upkeep',
   demo: '/upkeep',

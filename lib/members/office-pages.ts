@@ -20,6 +20,7 @@ export const FOUNDRY_PAGES: readonly OfficePage[] = [
   { href: '/settings/places', word: 'Places', act: 'places' },
   { href: '/settings/baths', word: 'Baths', act: 'baths' },
   { href: '/settings/sensors', word: 'Sensors', act: 'sensors' },
+  { href: '/settings/mqtt', word: 'MQTT', act: 'sensors' },
   { href: '/calibration', word: 'Calibration', act: 'calibrate' },
   { href: '/people', word: 'People', act: 'people' },
   { href: '/history', word: 'History', act: 'history' },

@@ -27,14 +27,17 @@ export async function pushRecipients(audience: Audience, vapidPublicKey: string)
 
 export type WatchingDevice = Recipient & { treeId: string }
 
-/** Devices for everything, and the devices for watched trees with each tree that their member watches. */
-export async function pushAudiences(vapidPublicKey: string): Promise<{ everyTree: Recipient[]; watching: WatchingDevice[] }> {
+/** Devices for everything, and the devices for watched trees with each of some trees that their member watches. */
+export async function pushAudiences(
+  treeIds: readonly string[],
+  vapidPublicKey: string,
+): Promise<{ everyTree: Recipient[]; watching: WatchingDevice[] }> {
   const [everyTree, watching] = await Promise.all([
     database.query<Recipient>(`${DEVICES} AND s.scope = 'every tree'`, { type: QueryTypes.SELECT, replacements: { vapidPublicKey } }),
     database.query<WatchingDevice>(
       `SELECT d.*, w.tree_id AS treeId FROM (${DEVICES} AND s.scope = 'watched trees') d
-         JOIN tree_watches w ON w.member_id = d.memberId`,
-      { type: QueryTypes.SELECT, replacements: { vapidPublicKey } },
+         JOIN tree_watches w ON w.member_id = d.memberId AND w.tree_id IN (SELECT value FROM json_each(:treeIds))`,
+      { type: QueryTypes.SELECT, replacements: { vapidPublicKey, treeIds: JSON.stringify(treeIds) } },
     ),
   ])
   return { everyTree, watching }

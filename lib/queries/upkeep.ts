@@ -3,6 +3,7 @@ import type { Clock } from '@/lib/core/clock'
 import { backupDir, dataDir } from '@/lib/core/env'
 import type { SensorKind } from '@/lib/room/sensor-input'
 import { isRefusalOfUs, refusingServices } from '@/lib/notices/push-refusal'
+import { loadMqttState } from '@/lib/queries/mqtt-page'
 import { workerPulse } from '@/lib/queries/worker-pulse'
 import { freeBytesOf, isSameDisk, recordSizes } from '@/lib/server/disk'
 import { programFacts } from '@/lib/server/program'
@@ -19,11 +20,12 @@ const select = <Row extends object>(sql: string, replacements: Record<string, un
 /** Everything that the page of upkeep judges, at one moment. */
 export async function loadUpkeep({ clock }: { clock: Clock }): Promise<UpkeepFacts> {
   const now = clock.now()
-  const [foundry, pulse, passes, sensors, pushes, backups, records, disks, program] = await Promise.all([
+  const [foundry, pulse, passes, sensors, mqtt, pushes, backups, records, disks, program] = await Promise.all([
     Foundry.findByPk(1, { rejectOnEmpty: true }),
     workerPulse(now),
     loadPasses(now - DAY_MS),
     loadSensors(now),
+    loadMqttState(now),
     loadPushes(),
     loadBackupFacts(),
     recordSizes(),
@@ -36,6 +38,7 @@ export async function loadUpkeep({ clock }: { clock: Clock }): Promise<UpkeepFac
     timeZone: foundry.timeZone,
     worker: { ...pulse, ...worker },
     sensors,
+    mqtt: mqtt.state.isOn ? { ...mqtt.state, ...mqtt.counts } : null,
     records,
     disks: disks.disks,
     pushes,

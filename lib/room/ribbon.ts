@@ -8,8 +8,8 @@ export type RibbonRun = { from: number; to: number; word: string; speed: number;
 /** Shorter stretches have no room for a word: they take that of their longer neighbour. */
 const SHORTEST_RUN_MS = 3 * millisecondsInHour
 
-/** How far a point speaks to either side, where no other is nearer: each stands for an hour. */
-const REACH_MS = millisecondsInHour / 2
+/** How far a point speaks to either side, where no other is nearer: each stands for an hour, or for a day of up to 25. */
+const reachMs = ({ kind }: RoomPoint): number => (kind === 'day' ? 12.5 : 0.5) * millisecondsInHour
 
 type Cell = { from: number; to: number; word: string; speed: number; isForecast: boolean }
 
@@ -22,8 +22,8 @@ function cellsOf(points: readonly RoomPoint[], now: number): Cell[] {
     const after = known[index + 1]
     const left = before ? (before.at + point.at) / 2 : -Infinity
     const right = after ? (point.at + after.at) / 2 : Infinity
-    const from = Math.max(point.at - REACH_MS, left, isForecast ? now : -Infinity)
-    const to = Math.min(point.at + REACH_MS, right, isForecast ? Infinity : now)
+    const from = Math.max(point.at - reachMs(point), left, isForecast ? now : -Infinity)
+    const to = Math.min(point.at + reachMs(point), right, isForecast ? Infinity : now)
     const speed = point.speed?.likely ?? 0
     return { from, to, speed, isForecast, word: pullWord({ roomFactor: speed, wetBulbGapK: point.wetBulbGapK?.likely ?? 0 }) }
   })
@@ -48,15 +48,15 @@ function merged(left: Cell, right: Cell, word: string): Cell {
 }
 
 /**
- * The words along the ribbon: 'Good 92 %', 'Very slow 59 %'. Past and forecast are never one stretch; a stretch of under three
- * hours goes into the longer of its neighbours.
+ * The words along the ribbon: 'Good 92 %', 'Very slow 59 %'. Past and forecast are never one stretch; a stretch of under
+ * `shortestMs`, three hours of the two days, goes into the longer of its neighbours.
  */
-export function ribbonRuns(points: readonly RoomPoint[], now: number): RibbonRun[] {
+export function ribbonRuns(points: readonly RoomPoint[], now: number, shortestMs = SHORTEST_RUN_MS): RibbonRun[] {
   let runs = withOneWord(cellsOf(points, now))
   for (;;) {
     const shortest = runs
       .map((run, index) => ({ index, length: run.to - run.from }))
-      .filter(({ index, length }) => length < SHORTEST_RUN_MS && neighbours(runs, index).length > 0)
+      .filter(({ index, length }) => length < shortestMs && neighbours(runs, index).length > 0)
       .toSorted((a, b) => a.length - b.length)[0]
     if (shortest === undefined) break
     const { index } = shortest

@@ -1,5 +1,7 @@
 import type { QueueRoom, QueueTree } from '@/lib/queue/contract'
 import type { PlaceFans } from '@/lib/room/fans-contract'
+import type { Band, BandHours } from '@/lib/room/out-of-band'
+import type { RoomRange } from '@/lib/room/range'
 import type { Headline } from '@/lib/room/room-words'
 import type { RoomPoint } from '@/lib/room/series'
 import type { ShiftSpeed } from '@/lib/room/shift-speeds'
@@ -37,12 +39,18 @@ export type DriedCoat = {
 
 /** The air at a place as the clock counts it now; `fans` is null where there is nothing to switch. */
 export type PlaceNow = { id: string; name: string; treeCount: number; speed: string; fans: PlaceFans | null }
+/** How long each room was outside its band and unread: today, since Monday, and over the drawn range where that is longer. */
+export type BandTable = {
+  monday: number
+  hasRange: boolean
+  rooms: { sensorId: number; sensorName: string; today: BandHours | null; week: BandHours | null; range: BandHours | null }[]
+}
 
 /** Everything the Room page shows. Temperatures degC, instants epoch milliseconds, speeds as shares of the reference speed. */
 export type RoomPage = {
   now: number
   timeZone: string
-  band: { lowTempC: number; highTempC: number; lowRhPct: number; highRhPct: number }
+  band: Band
   pressurePa: number
   headline: Headline
   /** The dryer that the table reckons with. */
@@ -57,14 +65,19 @@ export type RoomPage = {
   notes: { sensorId: number; batteryPct: number | null; pressurePa: number | null }[]
   /** The room whose charts are drawn; null where there is no sensor. */
   room: QueueRoom | null
+  range: RoomRange
   points: RoomPoint[]
   from: number
   to: number
   closed: { from: number; to: number }[]
+  /** When the doors close, null while they are closed; and when they open next. */
+  closesAt: number | null
+  opensAt: number
   bars: CoatBar[]
   shiftSpeeds: ShiftSpeed[]
+  bandTable: BandTable
   dried: { since: number; coats: DriedCoat[]; isCut: boolean }
   /** Where the what-if begins: places of this room, and the lowest temperature at coat 1 of the trees that hang in it. */
-  places: { name: string; airSpeedMps: number }[]
+  places: { id: string; name: string; airSpeedMps: number; hasFansToLeaveOn: boolean }[]
   coolestCoat1C: number | null
 }

@@ -1,6 +1,6 @@
 import { millisecondsInMinute } from 'date-fns/constants'
 import { dipWords } from '@/lib/format/coat-words'
-import { formatDuration } from '@/lib/format/duration'
+import { roughDuration } from '@/lib/format/duration'
 import { formatMoment } from '@/lib/format/local-time'
 import { timePairWords } from '@/lib/format/time-pair'
 import type { QueueRoom } from '@/lib/queue/contract'
@@ -8,15 +8,8 @@ import { PULL_WORDS } from '@/lib/room/drying-pull'
 import { soonerMs, type Move, type Tonight, type TreeEffect } from '@/lib/room/tonight'
 import { nextOpenInstant, type Shift } from '@/lib/schedule/shifts'
 
-/** The forecast is no sharper than this. */
-const STEP_MS = 5 * millisecondsInMinute
 /** Under this nothing is lost or won that anybody would notice. */
 const LEAST_MS = 15 * millisecondsInMinute
-
-/** A length of hours as the room page says it, to five minutes: '14 h 20 min'. */
-export function roughDuration(milliseconds: number): string {
-  return formatDuration(Math.round(Math.abs(milliseconds) / STEP_MS) * STEP_MS)
-}
 
 export type Headline = { title: string; line: string }
 

@@ -23,6 +23,12 @@ ${SEND(address)}  -d "{\\"readings\\":[
   ]}"`
 }
 
+/** A reading published to a broker, for a topic whose paths are temp, rh and at, with the time in seconds. */
+export function publishOneReading(): string {
+  return `mosquitto_pub -h 192.168.1.20 -q 1 -t shellroom/loft/air \\
+  -m "{\\"temp\\":21.4,\\"rh\\":52.5,\\"at\\":$(date +%s)}"`
+}
+
 /** A loop for a small computer with a shell: nothing is lost while the network is away. */
 export function shellLoop(address: string): string {
   return `#!/bin/sh

@@ -1,4 +1,4 @@
-import { millisecondsInSecond } from 'date-fns/constants'
+import { millisecondsInMinute, secondsInMinute } from 'date-fns/constants'
 import { holdsUntil } from '@/lib/drying/room-segments'
 import { formatDuration } from '@/lib/format/duration'
 import { formatMoment } from '@/lib/format/local-time'
@@ -44,10 +44,10 @@ export function isBatteryLow(batteryPct: number | null): boolean {
 }
 
 /**
- * How far a clock is off.
+ * How far a clock is off, to the minute.
  *
  * @example clockWords(420) // => '7 min fast'
  */
 export function clockWords(offsetSeconds: number): string {
-  return `${formatDuration(Math.abs(offsetSeconds) * millisecondsInSecond)} ${offsetSeconds > 0 ? 'fast' : 'slow'}`
+  return `${formatDuration(Math.round(Math.abs(offsetSeconds) / secondsInMinute) * millisecondsInMinute)} ${offsetSeconds > 0 ? 'fast' : 'slow'}`
 }

@@ -21,12 +21,12 @@ const FEWEST_MINUTES = 15
 export type Figure = { likely: number; low: number; high: number }
 
 /**
- * One point of the charts of a room. `at` is the middle of an hour, the instant of a reading, or now; temperatures degC, humidity
+ * One point of the charts of a room. `at` is the middle of a day or an hour, the instant of a reading, or now; temperatures degC, humidity
  * %, gap of air and wet bulb K, deficit Pa, speed as a share of the reference speed. Null where nothing is known.
  */
 export type RoomPoint = {
   at: number
-  kind: 'hour' | 'reading' | 'now' | 'forecast'
+  kind: 'day' | 'hour' | 'reading' | 'now' | 'forecast'
   airTempC: Figure | null
   relHumidityPct: Figure | null
   wetBulbGapK: Figure | null
@@ -37,6 +37,8 @@ export type RoomPoint = {
   isGap: boolean
   /** It rests on a reading that a person typed, which holds for hours. */
   isTyped: boolean
+  /** How much of a day was read; null of anything shorter. */
+  readMinutes: number | null
 }
 
 /** Instants from which exact readings are drawn, up to now. */
@@ -88,6 +90,7 @@ export function hourPoint(hour: ClimateHour, pressurePa: number): RoomPoint {
         : { likely: hour.dose.likely / share, low: hour.dose.low / share, high: hour.dose.high / share },
     isGap: hour.gapMinutes > 0,
     isTyped: hour.hasTyped,
+    readMinutes: null,
   }
 }
 
@@ -113,6 +116,7 @@ function readingPoint(reading: RoomReading, kind: 'reading' | 'now', at: number,
     speed: single(reading.roomFactor),
     isGap: false,
     isTyped: reading.source === 'typed',
+    readMinutes: null,
   }
 }
 
@@ -145,6 +149,7 @@ function forecastPoints(
       vaporPressureDeficitPa: air && vaporPressureDeficitPa(air),
       isGap: false,
       isTyped: false,
+      readMinutes: null,
     }
   })
 }
@@ -156,6 +161,8 @@ const figure = (row: ForecastHour | undefined): Figure | null => (row ? { likely
 /** Two points further apart than this are not joined by a line; typed readings speak for longer. */
 const LONGEST_JOIN_MS = 100 * millisecondsInMinute
 const LONGEST_TYPED_JOIN_MS = 13 * millisecondsInHour
+/** From one day to the next, also to a day that has only begun; a day without a reading breaks the line. */
+const LONGEST_DAY_JOIN_MS = 36 * millisecondsInHour
 
 /** One line of a chart: a figure at an instant. */
 export type ChartPoint = { at: number } & Figure
@@ -179,7 +186,7 @@ export function chartLines(
     const line = lines.at(-1)
     // An hour for which it only held has no air of its own: what follows was not read.
     const isTypedReading = before?.isTyped === true && before.airTempC !== null
-    const longest = isTypedReading ? LONGEST_TYPED_JOIN_MS : LONGEST_JOIN_MS
+    const longest = point.kind === 'day' ? LONGEST_DAY_JOIN_MS : isTypedReading ? LONGEST_TYPED_JOIN_MS : LONGEST_JOIN_MS
     const follows = before !== null && point.at - before.at <= longest
     if (line && follows && line.isForecast === isForecast) line.points.push({ at: point.at, ...value })
     else {

@@ -4,7 +4,8 @@ import { roomFactor, wetBulbDepressionK } from '@/lib/drying/room-factor'
 import { formatMoment } from '@/lib/format/local-time'
 import { formatKelvin, formatTemperature, oneDecimal, wholeNumber, type TempUnit } from '@/lib/format/units'
 import type { QueueRoom } from '@/lib/queue/contract'
-import { roughDuration } from '@/lib/room/room-words'
+import { isNearWax, steadyTempsC, type LimitedCoat } from '@/lib/room/limits'
+import { roughDuration } from '@/lib/format/duration'
 import { LOWEST_TARGET_PCT, type Dryer, type FansOn, type Tonight, type TreeEffect } from '@/lib/room/tonight'
 
 /** One thing to do about the air, and why. */
@@ -22,6 +23,8 @@ type ThingsInput = {
   /** Places whose fans would help, with what all their trees gain, most first. */
   fans: readonly { fansOn: FansOn; gainMs: number }[]
   sensorOf: (effect: TreeEffect) => number | undefined
+  /** Every shell with wax in it that hangs in a room's air, dry ones too. */
+  coatsOf: (sensorId: number) => readonly LimitedCoat[]
   /** The highest place factor of where a tree hangs, until the next opening. */
   placeFactorOf: (effect: TreeEffect) => number
   tonight: Tonight
@@ -56,7 +59,7 @@ const tags = (effects: readonly TreeEffect[]): string => {
 const inRoom = ({ effects, sensorOf }: ThingsInput, sensorId: number) => effects.filter((effect) => sensorOf(effect) === sensorId)
 
 /** Coats that lie close to the wax. */
-const nearWax = (effects: readonly TreeEffect[]) => effects.filter((effect) => effect.tree.newest.number <= 2)
+const nearWax = (effects: readonly TreeEffect[]) => effects.filter((effect) => isNearWax(effect.tree.newest.number))
 
 const isSilent = (room: QueueRoom) => room.isStale || room.measuredAt === null
 
@@ -137,13 +140,18 @@ function fansThing(input: ThingsInput): Thing[] {
 
 function holdThing(input: ThingsInput): Thing[] {
   const { swingK } = DEFAULT_FLAG_LIMITS
+  const shown = (celsius: number) => formatTemperature(celsius, input.tempUnit)
   return input.rooms.flatMap((room): Thing[] => {
     const wet = nearWax(inRoom(input, room.sensorId)).filter((effect) => !effect.tree.call.isUnknown)
-    const atDip = wet.map((effect) => effect.tree.newest.airTempC).find((tempC) => tempC !== null)
-    if (isSilent(room) || wet.length === 0 || atDip === undefined || atDip === null) return []
+    const steady = steadyTempsC(input.coatsOf(room.sensorId))
+    if (isSilent(room) || wet.length === 0 || steady === null) return []
+    const { lowC, highC } = steady
+    const isOneDip = Math.abs(highC - lowC - 2 * swingK) < 0.05
     return [
       {
-        title: `Hold the room within ${formatKelvin(swingK, input.tempUnit)} of ${formatTemperature(atDip, input.tempUnit)}`,
+        title: isOneDip
+          ? `Hold the room within ${formatKelvin(swingK, input.tempUnit)} of ${shown((lowC + highC) / 2)}`
+          : `Hold the room between ${shown(lowC)} and ${shown(highC)}`,
         text: `Wax moves under a wet face coat and lifts it: ${tags(wet)}.`,
       },
     ]

@@ -1,21 +1,24 @@
 import { millisecondsInHour } from 'date-fns/constants'
-import { chillFlag, DEFAULT_FLAG_LIMITS, heatFlag } from '@/lib/drying/flags'
 import { forecastHours } from '@/lib/drying/forecast'
 import { fanFactors } from '@/lib/drying/place-factor'
 import { cutCurve } from '@/lib/drying/room-curve'
-import { roomFactor, wetBulbDepressionK } from '@/lib/drying/room-factor'
+import { roomFactor } from '@/lib/drying/room-factor'
 import { constantSegment } from '@/lib/drying/room-segments'
 import { doseOverSpans } from '@/lib/drying/tree-dose'
 import type { CoatCall, RoomSegment } from '@/lib/drying/types'
 import { formatClock, formatWeekday } from '@/lib/format/local-time'
 import type { RoomClimate } from '@/lib/room/climate'
+import { breaksLimits, isNearWax, type AirHour, type LimitedCoat } from '@/lib/room/limits'
 import { callOf } from '@/lib/trees/assess'
 import type { DerivedTree } from '@/lib/trees/derive'
 import type { CoatFacts, PlaceFacts } from '@/lib/trees/facts'
 import { dryingSpans, withClimates, type FloorContext } from '@/lib/trees/spans'
 
 /** The time that the page weighs: from now to the next opening. */
-export type Tonight = { from: number; to: number; name: string }
+export type Tonight = Stretch & { name: string }
+
+/** From one instant to another. */
+export type Stretch = { from: number; to: number }
 
 const DAY_MS = 24 * millisecondsInHour
 
@@ -32,16 +35,22 @@ export function tonightOf(context: FloorContext, hasHours: boolean): Tonight {
   return { from: now, to, name: to - now > DAY_MS ? `Until ${formatWeekday(to, timeZone)} ${formatClock(to, timeZone)}` : 'Tonight' }
 }
 
+/** When the doors close; null while they are closed, and where a foundry keeps no hours of its own. */
+export function closingOf({ now, shifts }: FloorContext, hasHours: boolean): number | null {
+  const [shift] = shifts
+  return hasHours && shift && shift.opensAt <= now ? shift.closesAt : null
+}
+
 /** A tree whose newest coat dries, with the clock's call on it. */
 export type DryingTree = DerivedTree & { newest: CoatFacts; call: CoatCall }
 
 /** Trees that are drying now, the unknown ones among them; those that may be dipped over, or are dried out, are not. */
-export function dryingTrees(trees: readonly DerivedTree[]): DryingTree[] {
-  return trees.filter((tree): tree is DryingTree => {
-    if (tree.newest === null || tree.call === null) return false
-    if (tree.state === 'held') return tree.call.guardReachedAt === null && !(tree.isLastOn && tree.call.isSafeDry)
-    return ['wet', 'drying', 'nearly dry', 'last coat on', 'unknown'].includes(tree.state)
-  })
+export const dryingTrees = (trees: readonly DerivedTree[]): DryingTree[] => trees.filter(isDrying)
+
+function isDrying(tree: DerivedTree): tree is DryingTree {
+  if (tree.newest === null || tree.call === null) return false
+  if (tree.state === 'held') return tree.call.guardReachedAt === null && !(tree.isLastOn && tree.call.isSafeDry)
+  return ['wet', 'drying', 'nearly dry', 'last coat on', 'unknown'].includes(tree.state)
 }
 
 export type Pair = { likelyAt: number | null; safeAt: number | null }
@@ -49,7 +58,7 @@ export type Pair = { likelyAt: number | null; safeAt: number | null }
 const pairOf = ({ likelyAt, safeAt }: CoatCall): Pair => ({ likelyAt, safeAt })
 
 /** The curve of a room with another air from one instant to another. */
-function withAir(climate: RoomClimate, segments: readonly RoomSegment[], { from, to }: Tonight): RoomClimate {
+function withAir(climate: RoomClimate, segments: readonly RoomSegment[], { from, to }: Stretch): RoomClimate {
   return { ...climate, curve: [...cutCurve(climate.curve, -Infinity, from), ...segments, ...cutCurve(climate.curve, to, Infinity)] }
 }
 
@@ -62,11 +71,8 @@ function inRecipeRoom(context: FloorContext, tonight: Tonight): FloorContext {
   )
 }
 
-/** One hour of the night as the forecast has it. */
-export type NightHour = { from: number; to: number; airTempC: number; relHumidityPct: number; roomFactor: number }
-
 /** The forecast air of a room through the night, hour by hour; none where nothing is known of it. */
-export function nightHours(climate: RoomClimate, tonight: Tonight, timeZone: string): NightHour[] {
+export function nightHours(climate: RoomClimate, tonight: Stretch, timeZone: string): AirHour[] {
   const horizonHours = (tonight.to - tonight.from) / millisecondsInHour
   const ask = (valueOf: (hour: RoomClimate['hours'][number]) => number | null, last: number | null) =>
     forecastHours(valueOf, { hours: climate.hours, now: tonight.from, timeZone, last, horizonHours })
@@ -80,41 +86,37 @@ export function nightHours(climate: RoomClimate, tonight: Tonight, timeZone: str
   })
 }
 
-/** A wet coat in the air of a place, as far as the limits ask: `airTempAtCoat1C` is what its tree's wax was dipped in. */
-type WetCoat = { coatNumber: number; placeFactor: number; airTempAtCoat1C: number | null }
+/** A tree with wax in its shell: at least one coat is on. */
+export type ShelledTree = DerivedTree & { newest: CoatFacts }
 
-const wetCoat = (tree: DryingTree, factor: number): WetCoat => ({
+/** Trees with wax in their shells: what heat may crack, dry ones among them. */
+export const shelledTrees = (trees: readonly DerivedTree[]): ShelledTree[] =>
+  trees.filter((tree): tree is ShelledTree => tree.newest !== null && tree.facts.releasedAt === null && tree.facts.scrappedAt === null)
+
+/**
+ * A tree as far as the limits ask. A wet coat counts as wet until its safe time as things stand, which a faster air only brings nearer.
+ *
+ * @param airTempNowC what the swing is measured from where nobody knows the room at the dip.
+ */
+export const limitedCoat = (tree: ShelledTree, placeFactorThere: number, airTempNowC: number | null): LimitedCoat => ({
   coatNumber: tree.newest.number,
-  placeFactor: factor,
+  placeFactor: placeFactorThere,
   airTempAtCoat1C: tree.facts.coats[0]?.airTempC ?? null,
+  airTempAtDipC: tree.newest.airTempC ?? airTempNowC,
+  wetUntil: isDrying(tree) ? (tree.call.safeAt ?? Infinity) : -Infinity,
 })
 
-/** Limits that no advice may break while wax is in the shell: chill of each wet coat, heat of the wax below it. */
-function breaksLimits(
-  hour: NightHour,
-  air: { relHumidityPct: number; roomFactor: number },
-  wet: readonly WetCoat[],
-  pressurePa: number,
-): boolean {
-  const { airTempC } = hour
-  const depressionK = wetBulbDepressionK({ airTempC, relHumidityPct: air.relHumidityPct }, pressurePa)
-  return wet.some(
-    ({ airTempAtCoat1C, ...coat }) =>
-      heatFlag({ airTempC, airTempAtCoat1C, hasWax: true }) !== null ||
-      chillFlag({ ...coat, wetBulbDepressionK: depressionK, roomFactor: air.roomFactor }) !== null,
-  )
-}
-
 /** The highest place factor of a place in a stretch of time. */
-function highestFactor(context: FloorContext, placeId: string, { from, to }: Tonight): number {
+export function highestFactor(context: FloorContext, placeId: string, { from, to }: Stretch): number {
   const spans = (context.placeSpans.get(placeId) ?? []).filter((span) => span.to > from && span.from < to)
   return spans.reduce((highest, span) => Math.max(highest, span.placeFactor), 0)
 }
 
-const placeIdOf = (tree: DryingTree) => tree.facts.stays.at(-1)?.placeId ?? ''
+/** Where a tree hangs. */
+export const placeIdOf = (tree: DerivedTree) => tree.facts.stays.at(-1)?.placeId ?? ''
 
 /** The highest place factor of a tree's own place until the next opening. */
-export const placeFactorTonight = (tree: DryingTree, context: FloorContext, tonight: Tonight): number =>
+export const placeFactorTonight = (tree: DerivedTree, context: FloorContext, tonight: Tonight): number =>
   highestFactor(context, placeIdOf(tree), tonight)
 
 /** Face coats are not dried under this. Common practice, no source. */
@@ -124,7 +126,7 @@ const TARGET_STEP_PCT = 5
 const LEAST_DROP_PCT = 3
 
 /** Bringing one room's humidity down through the night. */
-export type Dryer = { sensorId: number; targetPct: number; context: FloorContext; hours: NightHour[] }
+export type Dryer = { sensorId: number; targetPct: number; context: FloorContext; hours: AirHour[] }
 
 /**
  * The humidity to bring a room down to through the night: the middle of the recipe's band, in fives, never under 45 %, and higher
@@ -135,49 +137,65 @@ export type Dryer = { sensorId: number; targetPct: number; context: FloorContext
 export function dryerFor(
   context: FloorContext,
   climate: RoomClimate,
-  trees: readonly DryingTree[],
+  trees: readonly ShelledTree[],
   tonight: Tonight,
   band: { lowRhPct: number; highRhPct: number },
 ): Dryer | null {
   const hours = nightHours(climate, tonight, context.timeZone)
-  const wet = trees.map((tree) => wetCoat(tree, placeFactorTonight(tree, context, tonight)))
+  const coats = trees.map((tree) => limitedCoat(tree, placeFactorTonight(tree, context, tonight), climate.newest?.airTempC ?? null))
   const middle = Math.round((band.lowRhPct + band.highRhPct) / 2 / TARGET_STEP_PCT) * TARGET_STEP_PCT
   const driest = Math.max(LOWEST_TARGET_PCT, middle)
   for (let targetPct = driest; targetPct <= Math.max(driest, band.highRhPct); targetPct += TARGET_STEP_PCT) {
     if (!hours.some((hour) => hour.relHumidityPct > targetPct + LEAST_DROP_PCT)) return null
     const dried = hours.map((hour) => driedHour(hour, targetPct, context.pressurePa))
-    if (dried.some((air, index) => breaksLimits(hours[index]!, air, wet, context.pressurePa))) continue
-    const segments = hours.map((hour, index) => constantSegment(hour.from, hour.to, 'forecast', dried[index]!.roomFactor))
-    const climates = [...context.climates.values()].map((other) => (other === climate ? withAir(climate, segments, tonight) : other))
-    return { sensorId: climate.sensorId, targetPct, context: withClimates(context, climates), hours }
+    if (breaksLimits(dried, coats, context.pressurePa)) continue
+    return { sensorId: climate.sensorId, targetPct, context: withHours(context, climate, dried, tonight), hours: dried }
   }
   return null
 }
 
 /** The machine takes water out and adds none: an hour that is dry enough already stays as it is. */
-function driedHour(hour: NightHour, targetPct: number, pressurePa: number): { relHumidityPct: number; roomFactor: number } {
+function driedHour(hour: AirHour, targetPct: number, pressurePa: number): AirHour {
   if (hour.relHumidityPct <= targetPct) return hour
   const factor = roomFactor({ airTempC: hour.airTempC, relHumidityPct: targetPct }, pressurePa)
-  return { relHumidityPct: targetPct, roomFactor: Math.max(hour.roomFactor, factor) }
+  return { ...hour, relHumidityPct: targetPct, roomFactor: Math.max(hour.roomFactor, factor) }
+}
+
+/** The floor with the air of one room as some hours have it. */
+export function withHours(context: FloorContext, climate: RoomClimate, hours: readonly AirHour[], stretch: Stretch): FloorContext {
+  const segments = hours.map((hour) => constantSegment(hour.from, hour.to, 'forecast', hour.roomFactor))
+  const climates = [...context.climates.values()].map((other) => (other === climate ? withAir(climate, segments, stretch) : other))
+  return withClimates(context, climates)
 }
 
 /** Leaving the fans of one place on through the night. */
 export type FansOn = { place: PlaceFacts; context: FloorContext }
 
 /** The floor with a place's fans left on through the night; null where it has none to switch, or a wet coat would suffer. */
-export function fansLeftOn(context: FloorContext, place: PlaceFacts, trees: readonly DryingTree[], tonight: Tonight): FansOn | null {
+export function fansLeftOn(context: FloorContext, place: PlaceFacts, trees: readonly ShelledTree[], tonight: Tonight): FansOn | null {
   const climate = context.climates.get(place.sensorId)
-  if (!climate || place.fanHours.length === 0 || place.airSpeedFansOnMps <= place.airSpeedFansOffMps) return null
+  if (!climate || !hasFansToLeaveOn(place)) return null
   const factor = fanFactors(place, context.pressurePa).on
-  const wet = trees.map((tree) => wetCoat(tree, factor))
+  const coats = trees.map((tree) => limitedCoat(tree, factor, climate.newest?.airTempC ?? null))
   const hours = nightHours(climate, tonight, context.timeZone)
-  if (hours.length === 0 || hours.some((hour) => breaksLimits(hour, hour, wet, context.pressurePa))) return null
-  const spans = context.placeSpans.get(place.id) ?? []
-  const left = spans.filter((span) => span.from < tonight.from).map((span) => ({ ...span, to: Math.min(span.to, tonight.from) }))
-  const right = spans.filter((span) => span.to > tonight.to).map((span) => ({ ...span, from: Math.max(span.from, tonight.to) }))
-  const night = { from: tonight.from, to: tonight.to, placeFactor: factor }
-  const placeSpans = new Map([...context.placeSpans, [place.id, [...left, night, ...right]]])
-  return { place, context: { ...context, placeSpans } }
+  if (hours.length === 0 || breaksLimits(hours, coats, context.pressurePa)) return null
+  return { place, context: withPlaceFactor(context, [place.id], factor, tonight) }
+}
+
+/** Fans that a timetable switches off, and that blow harder while they are on. */
+export const hasFansToLeaveOn = (place: PlaceFacts): boolean =>
+  place.fanHours.length > 0 && place.airSpeedFansOnMps > place.airSpeedFansOffMps
+
+/** The floor with one air speed at some places from one instant to another. */
+export function withPlaceFactor(context: FloorContext, placeIds: readonly string[], factor: number, { from, to }: Stretch): FloorContext {
+  const placeSpans = new Map(context.placeSpans)
+  for (const placeId of placeIds) {
+    const spans = context.placeSpans.get(placeId) ?? []
+    const left = spans.filter((span) => span.from < from).map((span) => ({ ...span, to: Math.min(span.to, from) }))
+    const right = spans.filter((span) => span.to > to).map((span) => ({ ...span, from: Math.max(span.from, to) }))
+    placeSpans.set(placeId, [...left, { from, to, placeFactor: factor }, ...right])
+  }
+  return { ...context, placeSpans }
 }
 
 /** The call on a tree's newest coat in another context. */
@@ -217,20 +235,11 @@ function isSafePlace(tree: DryingTree, place: PlaceFacts, context: FloorContext,
   const climate = context.climates.get(place.sensorId)
   if (!climate?.newest || climate.isStale) return false
   const hours = nightHours(climate, tonight, context.timeZone)
-  const wet = [wetCoat(tree, highestFactor(context, place.id, tonight))]
-  return (
-    !hours.some((hour) => breaksLimits(hour, hour, wet, context.pressurePa)) &&
-    holdsTemperature(
-      tree.newest,
-      [climate.newest, ...hours].map(({ airTempC }) => airTempC),
-    )
-  )
-}
-
-/** Whether temperatures of a place stay by that of the dip, which coats 1 and 2 ask for; no place is known to where the dip's is not known. */
-function holdsTemperature({ number, airTempC: atDipC }: CoatFacts, tempsC: readonly number[]): boolean {
-  if (number > 2) return true
-  return atDipC !== null && tempsC.every((tempC) => Math.abs(tempC - atDipC) <= DEFAULT_FLAG_LIMITS.swingK)
+  const coat = limitedCoat(tree, highestFactor(context, place.id, tonight), null)
+  // Where nobody knows the room at the dip, nobody knows what another room would do.
+  if (isNearWax(coat.coatNumber) && coat.airTempAtDipC === null) return false
+  const present = { ...climate.newest, from: tonight.from, to: tonight.from }
+  return !breaksLimits([present, ...hours], [coat], context.pressurePa)
 }
 
 /** What the night does to one tree: hours lost against the recipe's room, and won back by the dryer where one is proposed. */

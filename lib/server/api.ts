@@ -13,6 +13,8 @@ import { requireOwnOrigin } from '@/lib/server/origin'
 import { problemOf } from '@/lib/server/problem'
 import { processWide } from '@/lib/server/process-wide'
 
+const JSON_TYPE = 'application/json'
+
 type Params = Record<string, string | string[]>
 type Call<P extends Params> = { request: NextRequest; params: P; clock: Clock }
 type Route<P extends Params> = (request: NextRequest, context: { params: Promise<P> }) => Promise<Response>
@@ -33,6 +35,11 @@ export function openRoute<P extends Params = Params>(handler: (call: Call<P>) =>
   }
 }
 
+export type RouteOptions = {
+  /** Kind of body, where it is another than JSON. */
+  bodyType?: string
+}
+
 /**
  * A route for signed-in members who may do `act`. Checks the origin of writes, the kind of body, the session and the right,
  * in this order, and answers everything thrown as a problem document.
@@ -43,11 +50,12 @@ export function openRoute<P extends Params = Params>(handler: (call: Call<P>) =>
 export function memberRoute<P extends Params = Params>(
   act: Act,
   handler: (call: Call<P> & { member: Member }) => Promise<Response>,
+  { bodyType = JSON_TYPE }: RouteOptions = {},
 ): Route<P> {
   return openRoute<P>(async (call) => {
     const isRead = call.request.method === 'GET' || call.request.method === 'HEAD'
     if (!isRead) requireOwnOrigin(call.request)
-    requireJsonBody(call.request)
+    requireBodyType(call.request, bodyType)
     return handler({ ...call, member: await requireMember(act) })
   })
 }
@@ -57,7 +65,7 @@ export function memberRoute<P extends Params = Params>(
  */
 export function sensorRoute<P extends Params = Params>(handler: (call: Call<P> & { sensor: TokenSensor }) => Promise<Response>): Route<P> {
   const route = openRoute<P>(async (call) => {
-    requireJsonBody(call.request)
+    requireBodyType(call.request, JSON_TYPE)
     const sensor = await requireSensor(call.request, call.clock)
     return handler({ ...call, sensor })
   })
@@ -89,10 +97,10 @@ async function requireSensor(request: NextRequest, clock: Clock): Promise<TokenS
   return sensor
 }
 
-function requireJsonBody({ headers }: NextRequest): void {
+function requireBodyType({ headers }: NextRequest, bodyType: string): void {
   const hasBody = headers.has('transfer-encoding') || Number(headers.get('content-length') ?? 0) > 0
   const [type] = (headers.get('content-type') ?? '').split(';')
-  if (hasBody && type?.trim().toLowerCase() !== 'application/json') {
-    throw new AppError('unsupported_media_type', 'The body must be sent as application/json.')
+  if (hasBody && type?.trim().toLowerCase() !== bodyType) {
+    throw new AppError('unsupported_media_type', `The body must be sent as ${bodyType}.`)
   }
 }

@@ -9,7 +9,7 @@ import { endSession } from '@/lib/commands/end-session'
 import { SESSION_MS, signIn } from '@/lib/commands/sign-in'
 import { systemClock } from '@/lib/core/clock'
 import { env } from '@/lib/core/env'
-import { AppError, notSetUp } from '@/lib/core/errors'
+import { AppError, notSetUp, traceOf } from '@/lib/core/errors'
 import { log } from '@/lib/core/log'
 import { ownPath } from '@/lib/members/own-path'
 import { may, rolesFor, type Act } from '@/lib/members/roles'
@@ -60,7 +60,7 @@ export const authOptions: NextAuthOptions = {
           { ...parsed.data, userAgent: String(request.headers?.['user-agent'] ?? ''), device },
           { clock: systemClock },
         ).catch((error: unknown) => {
-          log('sign-in.failed', { error: error instanceof Error ? error.stack : String(error) })
+          log('sign-in.failed', { error: traceOf(error) })
           // next-auth hands the message to the browser word for word.
           throw new Error('UNAVAILABLE')
         })

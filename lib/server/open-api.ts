@@ -81,7 +81,7 @@ function operationOf(door: DoorDescription): Operation {
       requestBody: {
         required: true,
         description: `At most ${Math.floor((body.largestBytes ?? LARGEST_BODY_BYTES) / 1024)} KiB.`,
-        content: { 'application/json': { schema: schemaOf(body.schema, 'input'), example: body.example } },
+        content: { [body.type ?? 'application/json']: { schema: schemaOf(body.schema, 'input'), example: body.example } },
       },
     }),
     responses: {

@@ -1,5 +1,5 @@
 import { z } from 'zod'
-import { AppError, type ErrorCode } from '@/lib/core/errors'
+import { AppError, traceOf, type ErrorCode } from '@/lib/core/errors'
 import { log } from '@/lib/core/log'
 
 const MOST_FIELDS = 50
@@ -14,7 +14,7 @@ export const PROBLEMS: Readonly<Record<ProblemCode, { status: number; text: stri
   not_found: { status: 404, text: 'What the path or the body names is not there.' },
   conflict: { status: 409, text: 'It does not go with what is there now. Read it again before you send anew.' },
   too_large: { status: 413, text: 'The body is too large. Send less at once.' },
-  unsupported_media_type: { status: 415, text: 'The body must be sent as application/json.' },
+  unsupported_media_type: { status: 415, text: 'The body must be sent as application/json, or as the kind that the door names.' },
   invalid_input: { status: 422, text: 'Fields are missing or wrong; `fields` says which, and why.' },
   unprocessable: { status: 422, text: 'The fields are right by themselves, but cannot be true together or at this moment.' },
   too_many_requests: { status: 429, text: 'Wait as many seconds as Retry-After says.' },
@@ -88,7 +88,7 @@ export function problemOf(error: unknown, request: { method: string; url: string
     log('request.unavailable', { ...where, trouble })
     return problem('unavailable', TROUBLE[trouble], {}, { 'retry-after': trouble === 'busy' ? '1' : '30' })
   }
-  log('request.failed', { ...where, error: error instanceof Error ? error.stack : String(error) })
+  log('request.failed', { ...where, error: traceOf(error) })
   return problem('internal', 'The server could not finish this request.')
 }
 

@@ -1,12 +1,8 @@
 import { z } from 'zod'
 import { EVIDENCE_KINDS, SPOTS, VERDICTS, WEIGHING_MOMENTS } from '@/lib/coats/vocabulary'
 import { airTempC, instant, relHumidityPct } from '@/lib/room/reading-contract'
+import { MASS_LIMITS_KG, SURFACE_TEMP_LIMITS_C } from '@/lib/trees/evidence-limits'
 import { reasonInput } from '@/lib/trees/tree-input'
-
-/** No scale of a shell room weighs more, and no tree less, kg. */
-export const MASS_LIMITS_KG = { least: 0.01, most: 2000 }
-/** What a coat's surface can be: a little under the air, or under a lamp. */
-export const SURFACE_TEMP_LIMITS_C = { least: -10, most: 80 }
 
 const common = {
   operationId: z.uuid('The operation id is not a UUID.'),

@@ -6,6 +6,7 @@ import { formatDuration } from '@/lib/format/duration'
 import { formatMoment } from '@/lib/format/local-time'
 import { formatPercent } from '@/lib/format/units'
 import { isBatteryLow } from '@/lib/room/sensor-warnings'
+import { connectionWords, type ConnectionState } from '@/lib/mqtt/connection-words'
 
 /** What was measured, for the page of upkeep. Instants in epoch milliseconds, sizes in bytes. */
 export type UpkeepFacts = {
@@ -21,6 +22,8 @@ export type UpkeepFacts = {
     failedPasses: number
   }
   sensors: readonly { name: string; source: ReadingSource; newestAt: number | null; batteryPct: number | null }[]
+  /** The broker of loggers, counts of the last day; null where none is switched on. */
+  mqtt: (ConnectionState & { readings: number; refused: number; dropped: number }) | null
   records: { sizeBytes: number; walBytes: number }
   disks: readonly { of: 'records' | 'backups'; freeBytes: number }[]
   pushes: {
@@ -45,7 +48,7 @@ export type UpkeepFacts = {
 
 /** One thing of upkeep: how it stands, and what to do where a person has to. */
 export type UpkeepCheck = {
-  key: 'worker' | 'sensors' | 'records' | 'disk' | 'pushes' | 'backups' | 'proof' | 'clock' | 'program'
+  key: 'worker' | 'sensors' | 'mqtt' | 'records' | 'disk' | 'pushes' | 'backups' | 'proof' | 'clock' | 'program'
   title: string
   isInOrder: boolean
   /** How it stands, a sentence each. */
@@ -61,6 +64,8 @@ const LONG_WAL_BYTES = 128_000_000
 const PUSH_LATE_MS = 5 * millisecondsInMinute
 const BACKUP_LATE_MS = 3 * millisecondsInHour
 const PROOF_LATE_MS = 2 * millisecondsInDay
+/** A broker that is started again is back by then. */
+const BROKER_AWAY_MS = 5 * millisecondsInMinute
 /** After a start the worker needs its ten minutes before there can be a copy of today. */
 const STARTED_LATELY_MS = 30 * millisecondsInMinute
 
@@ -78,6 +83,7 @@ export function upkeepChecks(facts: UpkeepFacts): UpkeepCheck[] {
   return [
     worker(facts),
     sensors(facts),
+    ...mqtt(facts),
     disk(facts),
     backups(facts),
     proof(facts),
@@ -138,6 +144,22 @@ function sensors({ sensors: all, now, timeZone }: UpkeepFacts): UpkeepCheck {
     ...(empty.length === 0 ? [] : ['Change the battery before the sensor falls silent.']),
   ].join(' ')
   return { key: 'sensors', title: 'Sensors', isInOrder: todo === '', lines, todo }
+}
+
+/** Only where a broker is switched on. A connection that broke a moment ago comes back by itself. */
+function mqtt({ mqtt: facts, now, timeZone }: UpkeepFacts): UpkeepCheck[] {
+  if (facts === null) return []
+  const { isGood, text } = connectionWords(facts, { now, timeZone })
+  const { readings, refused, dropped, awaySince } = facts
+  const lines = [
+    text,
+    `In the last day ${readings} new ${readings === 1 ? 'reading' : 'readings'}; ${refused} ${refused === 1 ? 'message' : 'messages'} refused.`,
+  ]
+  if (dropped > 0) lines.push(`${dropped} ${dropped === 1 ? 'message' : 'messages'} came too fast and were dropped.`)
+  const isBrief = facts.isWorkerAlive && awaySince !== null && now - awaySince < BROKER_AWAY_MS
+  const todo =
+    isGood || isBrief ? '' : 'Look at the broker and its network, and at MQTT under Foundry. Until then its loggers are not heard.'
+  return [{ key: 'mqtt', title: 'MQTT', isInOrder: todo === '', lines, todo }]
 }
 
 function disk({ disks }: UpkeepFacts): UpkeepCheck {

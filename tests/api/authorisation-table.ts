@@ -43,6 +43,8 @@ export const DOORS: readonly Door[] = [
   page('/settings/baths', 'supervisor'),
   page('/settings/sensors', 'supervisor'),
   page('/settings/sensors/[sensorId]', 'supervisor', '/settings/sensors/1'),
+  // The broker of loggers.
+  page('/settings/mqtt', 'supervisor'),
   // What finished coats say of the clock.
   page('/calibration', 'supervisor'),
   // People and one's own page.
@@ -79,6 +81,14 @@ export const DOORS: readonly Door[] = [
   page('/room', 'crew'),
   door('POST', '/api/v1/drying/estimate', 'crew'),
   door('GET', '/api/v1/rooms/[sensorId]/climate.csv', 'crew', '/api/v1/rooms/1/climate.csv'),
+  // Files of readings.
+  page('/room/upload', 'supervisor'),
+  page('/room/upload/[uploadId]', 'supervisor'),
+  door('POST', '/api/v1/uploads', 'supervisor'),
+  door('GET', '/api/v1/uploads/[uploadId]', 'supervisor'),
+  door('GET', '/api/v1/uploads/[uploadId]/preview', 'supervisor'),
+  door('GET', '/api/v1/uploads/[uploadId]/errors.csv', 'supervisor'),
+  door('POST', '/api/v1/rooms/[sensorId]/what-if', 'crew', '/api/v1/rooms/1/what-if'),
   // The API's description, how to use it, and the history of every change.
   door('GET', '/api/v1/openapi.json', 'anybody'),
   page('/api-guide', 'supervisor'),
@@ -141,6 +151,11 @@ export const ACTIONS: readonly ActionRow[] = [
   { file: 'app/(office)/settings/sensors/actions.ts', name: 'saveOffsetAction', act: 'sensors', who: 'supervisor' },
   { file: 'app/(office)/settings/sensors/actions.ts', name: 'removeOffsetAction', act: 'sensors', who: 'supervisor' },
   { file: 'app/(office)/settings/sensors/actions.ts', name: 'replaceDeviceAction', act: 'sensors', who: 'supervisor' },
+  // The broker of loggers.
+  { file: 'app/(office)/settings/mqtt/actions.ts', name: 'saveBrokerAction', act: 'settings', who: 'owner' },
+  { file: 'app/(office)/settings/mqtt/actions.ts', name: 'addTopicAction', act: 'sensors', who: 'supervisor' },
+  { file: 'app/(office)/settings/mqtt/actions.ts', name: 'changeTopicAction', act: 'sensors', who: 'supervisor' },
+  { file: 'app/(office)/settings/mqtt/actions.ts', name: 'removeTopicAction', act: 'sensors', who: 'supervisor' },
   // People and one's own page.
   { file: 'app/(office)/people/actions.ts', name: 'addMemberAction', act: 'people', who: 'owner' },
   { file: 'app/(office)/people/actions.ts', name: 'editMemberAction', act: 'people', who: 'owner' },
@@ -161,4 +176,7 @@ export const ACTIONS: readonly ActionRow[] = [
   { file: 'app/(office)/upkeep/demo-actions.ts', name: 'removeDemoAction', act: 'upkeep', who: 'owner' },
   // The room and its drying.
   { file: 'app/(office)/room/actions.ts', name: 'typedReadingAction', act: 'read', who: 'operator' },
+  // Files of readings.
+  { file: 'app/(office)/room/upload/actions.ts', name: 'importUploadAction', act: 'sensors', who: 'supervisor' },
+  { file: 'app/(office)/room/upload/actions.ts', name: 'cancelUploadAction', act: 'sensors', who: 'supervisor' },
 ]

@@ -38,13 +38,19 @@ afterAll(() => Promise.all([server.stop(), stopService()]))
 
 const doorOf = (operationId: string) => DESCRIBED_DOORS.find((door) => door.operationId === operationId)
 
-const ask: Scene['ask'] = async (client, operationId, { params = {}, headers = {}, body } = {}) => {
+const ask: Scene['ask'] = async (client, operationId, { params = {}, query = {}, headers = {}, body, text } = {}) => {
   const { method, path } = doorOf(operationId) ?? { method: 'GET', path: '/no-such-door' }
   const address = path.replaceAll(/\{(\w+)\}/g, (_all, name: string) => encodeURIComponent(params[name] ?? ''))
-  const response = await client.fetch(address, {
+  const search = Object.keys(query).length === 0 ? '' : `?${new URLSearchParams(query)}`
+  const response = await client.fetch(`${address}${search}`, {
     method,
-    headers: { ...headers, ...(body === undefined ? {} : { 'content-type': 'application/json' }) },
+    headers: {
+      ...headers,
+      ...(body === undefined ? {} : { 'content-type': 'application/json' }),
+      ...(text === undefined ? {} : { 'content-type': 'text/csv' }),
+    },
     ...(body === undefined ? {} : { body: JSON.stringify(body) }),
+    ...(text === undefined ? {} : { body: text }),
   })
   seen.set(operationId, (seen.get(operationId) ?? new Set()).add(response.status))
   misfits.push(...(await misfitsOf(response.clone(), operationId)))
@@ -89,7 +95,7 @@ describe.each(DESCRIBED_DOORS)('$method $path', ({ operationId, answers, who }) 
   it('refuses a stranger and an odd body as described', async () => {
     const known = misfits.length
     const visitor: Client = who === 'sensor' ? scene.anonymous : scene.operator
-    const params = { treeId: 'x', bathId: 'x', sensorId: 'x' }
+    const params = { treeId: 'x', bathId: 'x', sensorId: 'x', uploadId: 'x' }
     await ask(scene.anonymous, operationId, { params })
     const hasBody = doorOf(operationId)?.body !== undefined
     if (hasBody) await ask(visitor, operationId, { params, body: { odd: true } })

@@ -202,8 +202,8 @@ describe('POST /api/v1/readings', () => {
       const { id } = await Sensor.create({ name: `Loft ${batches.length}`, kind: 'logger', createdAt: from })
       const { token } = await issueSensorToken({ sensorId: id }, { member: null, clock: { now: () => Date.now() } })
       for (const batch of batches) expect((await send(batch, token)).status).toBe(200)
-      const where = { where: { sensorId: id }, raw: true }
-      const hours = (await DoseHour.findAll({ ...where, order: ['hourStart'] })).map(({ sensorId: _, ...hour }) => hour)
+      const where = { where: { sensorId: id }, raw: true } as const
+      const hours = await DoseHour.findAll({ ...where, attributes: { exclude: ['sensorId'] }, order: ['hourStart'] })
       const marks = (await SetAsideReading.findAll({ ...where, order: ['measuredAt'] })).map(({ measuredAt, reason }) => ({
         measuredAt,
         reason,

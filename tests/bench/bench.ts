@@ -1,19 +1,21 @@
 // `npm run bench`: how fast the floor is, always as a ratio to what the framework itself does in the same run on the same machine.
 // Prints one table; everything it makes is taken away again. Minutes: it builds twice and makes ten years of readings.
-import { mkdtempSync, rmSync } from 'node:fs'
+import { execFileSync, spawnSync } from 'node:child_process'
+import { mkdirSync, mkdtempSync, rmSync } from 'node:fs'
 import { loadavg, tmpdir } from 'node:os'
 import { join } from 'node:path'
 import { openPlainHandle } from '@/db/plain-handle'
 import { launchBrowser } from '@/tests/setup/browser'
 import { signIn } from '@/tests/setup/client'
 import { makeBuilds } from '@/tests/bench/builds'
-import { ask, median, rate } from '@/tests/bench/load'
+import { ask, median, rate, type Answer } from '@/tests/bench/load'
 import { pageCost, type PageCost } from '@/tests/bench/pages'
 import { makeRecords, type Bench } from '@/tests/bench/records'
 import { freePort, startProgram, testEnv } from '@/tests/setup/server'
 
 const ROUNDS = 3
 const REBUILDS = 15
+const PASSES = 9
 const GZIP = { 'accept-encoding': 'gzip' }
 
 type Row = { what: string; value: string; ratio: number; aim: string; isMet: boolean; load: number }
@@ -50,7 +52,7 @@ async function openDoor(bench: Bench, product: string, signInAs: SignIn): Promis
   const server = await serve(product, bench.dataDir)
   const handle = await openPlainHandle(join(bench.dataDir, 'kilnward.sqlite'))
   const { cookies } = await signIn(server.baseUrl, signInAs.email, signInAs.password)
-  const headers = { ...GZIP, cookie: [...cookies].map(([name, value]) => `${name}=${value}`).join('; ') }
+  const headers = { ...GZIP, origin: server.baseUrl, cookie: [...cookies].map(([name, value]) => `${name}=${value}`).join('; ') }
   const [queue, empty] = [`${server.baseUrl}/api/v1/queue`, `${server.baseUrl}/api/empty`]
   for (const url of [empty, queue]) await rate({ url, headers, milliseconds: 2000, status: 200 })
   return {
@@ -91,8 +93,10 @@ async function measureDoor({ bench: { trees, history }, queue, empty, headers }:
   }
 }
 
-/** How long a queue takes to be made anew after a change, with ten years of readings behind it and with two weeks, in turns. */
-async function measureRebuild(short: Door, long: Door): Promise<void> {
+type Turns = { what: string; short: Door; long: Door; most: number; once: (door: Door) => Promise<Answer> }
+
+/** How long one thing takes behind a change of the records, in turns at a foundry with much history and at one with little. */
+async function measureTurns({ what, short, long, most, once }: Turns): Promise<void> {
   const times = { short: [] as number[], long: [] as number[] }
   for (let round = 0; round < REBUILDS; round += 1) {
     for (const [name, door] of [
@@ -100,12 +104,60 @@ async function measureRebuild(short: Door, long: Door): Promise<void> {
       ['long', long],
     ] as const) {
       await door.touch()
-      times[name].push((await ask(door.queue, door.headers)).milliseconds)
+      const { status, milliseconds } = await once(door)
+      if (status !== 200) throw new Error(`${what}: answered ${status}.`)
+      times[name].push(milliseconds)
     }
   }
-  const ratio = median(times.long) / median(times.short)
-  const value = `${median(times.long).toFixed(0)} ms to ${median(times.short).toFixed(0)} ms`
-  add(`${short.bench.trees} trees: queue made anew, ten years to two weeks`, value, ratio, '<= 1.2', ratio <= 1.2)
+  addTimes(what, median(times.long), median(times.short), most)
+}
+
+function addTimes(what: string, long: number, short: number, most: number): void {
+  const ratio = long / short
+  add(what, `${long.toFixed(0)} ms to ${short.toFixed(0)} ms`, ratio, `<= ${most}`, ratio <= most)
+}
+
+const remakeQueue = (door: Door) => ask(door.queue, door.headers)
+
+/** Runs another program of the bench on records of its own, and gives what it printed. */
+function runBeside(script: string, dataDir: string, args: string[]): string {
+  const command = ['--import', 'tsx', join('tests/bench', script), ...args]
+  const { status, stdout, stderr } = spawnSync(process.execPath, command, { env: testEnv(dataDir), encoding: 'utf8' })
+  if (status !== 0) throw new Error(`${script} failed:\n${stdout}\n${stderr}`)
+  return stdout
+}
+
+/**
+ * A year of three sensors and ten thousand finished coats behind sixty that dry, against the same sixty with two weeks behind them: the
+ * queue, the Room page and its what-if behind a change, and the worker's pass.
+ */
+async function measureYear(parent: string, product: string): Promise<void> {
+  const folder = join(parent, 'year')
+  mkdirSync(folder)
+  runBeside('history-records.ts', join(folder, 'live'), [folder])
+  const signInAs = { email: 'owner@kilnward.example', password: 'owner knows the way in' }
+  const dirs = { short: join(folder, 'two weeks'), long: join(folder, 'a year') }
+
+  const passes = { short: [] as number[], long: [] as number[] }
+  for (let round = 0; round < ROUNDS; round += 1) {
+    for (const name of ['short', 'long'] as const) {
+      passes[name].push(Number(/median ([\d.]+)/.exec(runBeside('worker-passes.ts', dirs[name], [String(PASSES)]))?.[1]))
+    }
+  }
+  const short = await openDoor({ trees: 60, history: 'two weeks', dataDir: dirs.short }, product, signInAs)
+  const long = await openDoor({ trees: 60, history: 'a year', dataDir: dirs.long }, product, signInAs)
+  try {
+    const turns = { short, long, most: 1.3 }
+    const page = (door: Door, path: string) => ask(door.queue.replace('/api/v1/queue', path), door.headers)
+    const whatIf = JSON.stringify({ until: 'opening', relHumidityPct: 45 })
+    const askWhatIf = (door: Door) => ask(door.queue.replace('/queue', '/rooms/1/what-if'), door.headers, { body: whatIf })
+    await measureTurns({ ...turns, what: '60 drying, a year behind them: queue', once: remakeQueue })
+    await measureTurns({ ...turns, what: '60 drying, a year behind them: Room page', once: (door) => page(door, '/room') })
+    await measureTurns({ ...turns, what: '60 drying, a year behind them: what-if', once: askWhatIf })
+  } finally {
+    await Promise.all([short.stop(), long.stop()])
+  }
+  addTimes("60 drying, a year behind them: worker's pass", median(passes.long), median(passes.short), 1.3)
 }
 
 /** As tablets poll: each with the ETag of its last answer; a new minute brings one whole answer. */
@@ -154,6 +206,14 @@ async function measurePages(
   }
 }
 
+/** A million readings out of a file, while dips are logged. In a process of its own, since it has records of its own. */
+function measureUploads(): void {
+  const args = ['--import', 'tsx', 'tests/bench/uploads.ts', '1000000']
+  const env = { ...process.env, UV_THREADPOOL_SIZE: '16' }
+  const text = execFileSync(process.execPath, args, { env, encoding: 'utf8', stdio: ['ignore', 'pipe', 'inherit'] })
+  rows.push(...(JSON.parse(text.trim().split('\n').at(-1) ?? '[]') as Row[]))
+}
+
 function print(): void {
   const head = { what: 'What', value: 'Measured', ratio: 'Ratio', aim: 'Aim', met: 'Met', load: 'Load' }
   const lines = [
@@ -189,12 +249,20 @@ try {
     for (const bench of cases.filter((each) => each.trees === trees)) doors.push(await openDoor(bench, builds.product, member))
     try {
       for (const door of doors) await measureDoor(door)
-      await measureRebuild(doors[0]!, doors[1]!)
+      await measureTurns({
+        what: `${trees} trees: queue made anew, ten years to two weeks`,
+        short: doors[0]!,
+        long: doors[1]!,
+        most: 1.2,
+        once: remakeQueue,
+      })
     } finally {
       for (const door of doors) await door.stop()
     }
   }
+  await measureYear(folder, builds.product)
   await measurePages(cases[0]!, builds.product, builds.bare, member)
+  measureUploads()
   print()
 } finally {
   builds.remove()

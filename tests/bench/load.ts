@@ -14,7 +14,7 @@ export async function rate({ url, headers, lanes = 8, milliseconds = 4000, statu
   let answers = 0
   const lane = async () => {
     while (performance.now() - began < milliseconds) {
-      const answer = await ask(url, headers, agent)
+      const answer = await ask(url, headers, { agent })
       if (answer.status !== status) throw new Error(`${url} answered ${answer.status}.`)
       answers += 1
     }
@@ -27,11 +27,12 @@ export async function rate({ url, headers, lanes = 8, milliseconds = 4000, statu
 
 export type Answer = { status: number; etag: string; bytes: number; milliseconds: number }
 
-/** One request, read to its end. */
-export function ask(url: string, headers: Record<string, string>, agent?: Agent): Promise<Answer> {
+/** One request, read to its end; a JSON body makes it a POST. */
+export function ask(url: string, headers: Record<string, string>, { agent, body }: { agent?: Agent; body?: string } = {}): Promise<Answer> {
   return new Promise((resolve, reject) => {
     const began = performance.now()
-    request(url, { headers, ...(agent && { agent }) }, (response) => {
+    const posted = body === undefined ? {} : { method: 'POST', headers: { ...headers, 'content-type': 'application/json' } }
+    request(url, { headers, ...(agent && { agent }), ...posted }, (response) => {
       let bytes = 0
       response.on('data', (chunk: Buffer) => (bytes += chunk.length))
       response.on('error', reject)
@@ -41,7 +42,7 @@ export function ask(url: string, headers: Record<string, string>, agent?: Agent)
       })
     })
       .on('error', reject)
-      .end()
+      .end(body)
   })
 }
 

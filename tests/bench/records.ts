@@ -1,6 +1,7 @@
 import { copyFileSync, mkdirSync, writeFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { openPlainHandle } from '@/db/plain-handle'
+import { addFormerReadings } from '@/tests/factories/long-history'
 import type { TestFoundry } from '@/tests/factories/shell-room'
 import type { SeededMember } from '@/tests/setup/server'
 
@@ -10,7 +11,7 @@ const DAY = 24 * HOUR
 const FORTNIGHT = 15 * DAY
 const TEN_YEARS_DAYS = 3652
 
-export type Bench = { trees: number; history: 'two weeks' | 'ten years'; dataDir: string }
+export type Bench = { trees: number; history: 'two weeks' | 'a year' | 'ten years'; dataDir: string }
 
 /**
  * Data folders of one foundry with 30 and 300 trees on the floor, each with two weeks and with ten years of five-minute
@@ -94,26 +95,11 @@ async function hangTrees({ foundry, recipeVersionId, placeIds, member, now }: Sh
   }
 }
 
-/** Copies one day of readings and hours back over ten years. */
 async function addYears(file: string, now: number): Promise<void> {
   const handle = await openPlainHandle(file)
+  await handle.exec('PRAGMA journal_mode = WAL; PRAGMA synchronous = OFF')
   // A whole day well inside what the product worked out.
-  const from = (Math.floor(now / DAY) - 10) * DAY
-  const to = from + DAY
-  const columns = async (table: string) => ((await handle.all(`PRAGMA table_info(${table})`)) as { name: string }[]).map(({ name }) => name)
-  await handle.exec('PRAGMA journal_mode = WAL; PRAGMA synchronous = OFF; BEGIN')
-  for (const [table, time] of [
-    ['readings', 'measured_at'],
-    ['dose_hours', 'hour_start'],
-  ] as const) {
-    const names = await columns(table)
-    const shifted = names.map((name) => (name === time || name === 'received_at' ? `t.${name} - d.i * ${DAY}` : `t.${name}`))
-    await handle.exec(
-      `WITH RECURSIVE d(i) AS (SELECT 6 UNION ALL SELECT i + 1 FROM d WHERE i < ${TEN_YEARS_DAYS})
-       INSERT INTO ${table} (${names.join(', ')}) SELECT ${shifted.join(', ')} FROM d, ${table} t
-        WHERE t.${time} >= ${from} AND t.${time} < ${to} ORDER BY t.sensor_id, d.i DESC, t.${time}`,
-    )
-  }
-  await handle.exec('COMMIT; PRAGMA wal_checkpoint(TRUNCATE)')
+  await addFormerReadings(handle, { dayStartsAt: (Math.floor(now / DAY) - 10) * DAY, days: TEN_YEARS_DAYS })
+  await handle.exec('PRAGMA wal_checkpoint(TRUNCATE)')
   await handle.close()
 }

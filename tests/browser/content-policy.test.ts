@@ -2,7 +2,7 @@ import type { Browser, Page } from 'playwright-core'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import type { Role } from '@/lib/members/roles'
 import { DOORS } from '@/tests/api/authorisation-table'
-import { launchBrowser, LAPTOP, newDevice, signInOn } from '@/tests/setup/browser'
+import { launchBrowser, LAPTOP, newDevice, open, signInOn } from '@/tests/setup/browser'
 import { seedMembers, startServer, type SeededMember, type TestServer } from '@/tests/setup/server'
 
 const MINUTE = 60_000
@@ -51,26 +51,22 @@ afterAll(async () => {
 
 const violations = () => errors.filter((text) => /policy|refused to|nonce/i.test(text))
 
-/** Opens a page and waits until its scripts have taken over. */
-async function open(path: string): Promise<void> {
+/** Opens a page on a clean slate, and gives what loads late a moment. */
+async function visit(path: string): Promise<void> {
   errors.length = 0
-  await page.goto(path)
-  // Asked again and again from here: a wait inside the page would build code from text, which the policy forbids.
-  await expect
-    .poll(() => page.evaluate(() => Object.keys(document.body.firstElementChild ?? {}).some((key) => key.startsWith('__react'))))
-    .toBe(true)
+  await open(page, path)
   await page.waitForTimeout(300)
 }
 
 describe('the content policy lets a page do its work and refuses nothing of it:', () => {
   it('the sign-in', async () => {
-    await open('/sign-in')
+    await visit('/sign-in')
     await signInOn(page, members.owner)
     expect(violations()).toEqual([])
   })
 
   it('the floor, with its dip sheet', async () => {
-    await open('/floor')
+    await visit('/floor')
     await page.locator(`[data-tree-row="${tree.id}"]`).first().click()
     await page.getByRole('dialog').waitFor()
     await page.waitForTimeout(300)
@@ -78,7 +74,7 @@ describe('the content policy lets a page do its work and refuses nothing of it:'
   })
 
   it('a tree, with its charts', async () => {
-    await open(`/trees/${tree.tag}`)
+    await visit(`/trees/${tree.tag}`)
     await page.locator('svg.recharts-surface').first().waitFor()
     expect(await page.locator('svg.recharts-surface path').count()).toBeGreaterThan(0)
     expect(violations()).toEqual([])
@@ -86,12 +82,12 @@ describe('the content policy lets a page do its work and refuses nothing of it:'
 
   const pages = DOORS.filter(({ method }) => method === 'PAGE').map(({ route, example }) => example ?? route)
   it.each(pages.filter((path) => !path.includes('[')))('%s', async (path) => {
-    await open(path.replace('KW-1', tree.tag))
+    await visit(path.replace('KW-1', tree.tag))
     expect(violations()).toEqual([])
   })
 
   it('styles arrive: a key has its ground', async () => {
-    await open('/trees')
+    await visit('/trees')
     const ground = await page
       .locator('.key')
       .first()
@@ -100,7 +96,7 @@ describe('the content policy lets a page do its work and refuses nothing of it:'
   })
 
   it('a page that is not there, whose keys work', async () => {
-    await open('/nowhere')
+    await visit('/nowhere')
     await page.getByText('Nothing hangs here').waitFor()
     await page.getByRole('link', { name: 'All trees' }).click()
     await page.waitForURL('**/trees')
@@ -156,7 +152,7 @@ describe('the content policy refuses', () => {
       },
     ],
   ])('%s', async (_name, attack) => {
-    await open('/trees')
+    await visit('/trees')
     errors.length = 0
     await page.evaluate(attack)
     await expect.poll(() => violations().length).toBeGreaterThan(0)

@@ -1,7 +1,7 @@
 import type { Browser } from 'playwright-core'
 import { afterAll, beforeAll, expect, it } from 'vitest'
 import type { Role } from '@/lib/members/roles'
-import { LAPTOP, launchBrowser, newDevice, PHONE, signInOn } from '@/tests/setup/browser'
+import { LAPTOP, launchBrowser, newDevice, open, PHONE, signInOn } from '@/tests/setup/browser'
 import { seedMembers, startServer, type SeededMember, type TestServer } from '@/tests/setup/server'
 
 const SENTENCE = 'You are signed out here: the session has ended.'
@@ -29,11 +29,11 @@ it('a member who is disabled while they work is led to the sign-in page, with a 
   await tablet.page.getByRole('heading', { name: 'Floor of Test foundry' }).waitFor({ state: 'attached' })
   const phone = await newDevice(browser, server.baseUrl, { size: PHONE })
   await signInOn(phone.page, members.operator)
-  await phone.page.goto('/trees')
+  await open(phone.page, '/trees')
 
   const desk = await newDevice(browser, server.baseUrl, { size: LAPTOP, hasTouch: false })
   await signInOn(desk.page, members.owner)
-  await desk.page.goto('/people')
+  await open(desk.page, '/people')
   await desk.page.getByRole('link', { name: members.operator.name }).click()
   const key = desk.page.getByRole('button', { name: 'Disable, hold the key' })
   await key.hover()
@@ -64,7 +64,7 @@ it('a member who is disabled while they work is led to the sign-in page, with a 
 it('a new member comes in with the first password, makes their own, and reads in their own units', async () => {
   const desk = await newDevice(browser, server.baseUrl, { size: LAPTOP, hasTouch: false })
   await signInOn(desk.page, members.owner)
-  await desk.page.goto('/people')
+  await open(desk.page, '/people')
   await desk.page.getByLabel('Name').fill('Nell Ware')
   await desk.page.getByLabel('E-mail').fill('nell@kilnward.example')
   await desk.page.getByRole('button', { name: 'Add the member' }).click()
@@ -78,12 +78,12 @@ it('a new member comes in with the first password, makes their own, and reads in
 
   const phone = await newDevice(browser, server.baseUrl, { size: PHONE })
   const { page } = phone
-  await page.goto('/sign-in')
+  await open(page, '/sign-in')
   await page.getByLabel('E-mail').fill('nell@kilnward.example')
   await page.getByLabel('Password').fill(firstPassword)
   await page.getByRole('button', { name: 'Sign in' }).tap()
   await page.waitForURL('**/me/password')
-  await page.goto('/trees')
+  await open(page, '/trees')
   await page.waitForURL('**/me/password')
   await page.getByLabel('The first password, once more').fill(firstPassword)
   await page.getByLabel('Your new password').fill('password1234')
@@ -94,15 +94,15 @@ it('a new member comes in with the first password, makes their own, and reads in
   await page.getByRole('button', { name: 'Save the new password' }).tap()
   await page.waitForURL('**/floor')
 
-  await page.goto('/me')
+  await open(page, '/me')
   await page.getByLabel('Temperature').selectOption('degF')
   await page.getByRole('button', { name: 'Save the units' }).tap()
   await page.getByText('Saved: every page shows them now.').waitFor()
-  await page.goto('/floor')
+  await open(page, '/floor')
   await page.getByRole('heading', { name: 'Floor of Test foundry' }).waitFor({ state: 'attached' })
   expect(await page.locator('.strip-room').textContent()).toContain('°F')
   // The same floor stays in °C for everybody else.
-  await desk.page.goto('/floor')
+  await open(desk.page, '/floor')
   expect(await desk.page.locator('.strip-room').textContent()).toContain('°C')
   expect([...desk.errors, ...phone.errors]).toEqual([])
 })

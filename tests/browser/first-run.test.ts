@@ -1,6 +1,6 @@
 import type { Browser, Locator, Page } from 'playwright-core'
 import { afterAll, beforeAll, expect, it } from 'vitest'
-import { LAPTOP, launchBrowser, newDevice } from '@/tests/setup/browser'
+import { LAPTOP, launchBrowser, newDevice, open } from '@/tests/setup/browser'
 import { newClient } from '@/tests/setup/client'
 import { startServer, type TestServer } from '@/tests/setup/server'
 
@@ -33,8 +33,8 @@ it('leads from nothing to the first dip', async () => {
   const late = await newDevice(browser, server.baseUrl, { size: LAPTOP, hasTouch: false })
 
   // Two come at once; the first one makes the account, the other one reads that it is made.
-  await late.page.goto('/')
-  await page.goto('/')
+  await open(late.page, '/')
+  await open(page, '/')
   await page.waitForURL('**/first-run')
   await press(page, 'Make the owner’s account')
   await page.getByText('Type the name.').waitFor()
@@ -62,7 +62,7 @@ it('leads from nothing to the first dip', async () => {
   await press(page, 'Add the bath')
   await heading(page, 'The backup bath')
   // Left here and taken up again: nothing is lost.
-  await page.goto('/trees')
+  await open(page, '/trees')
   await page.waitForURL('**/first-run')
   await heading(page, 'The backup bath')
   await press(page, 'Add the bath')
@@ -145,7 +145,7 @@ it('leads from nothing to the first dip', async () => {
 
   // At the wall tablet: the first dip, and it dries in the tide.
   const tablet = await newDevice(browser, server.baseUrl)
-  await tablet.page.goto('/sign-in')
+  await open(tablet.page, '/sign-in')
   await tablet.page.getByLabel('E-mail').fill('aurelia@foundry.example')
   await tablet.page.getByLabel('Password').fill('three foxes in the attic')
   await press(tablet.page, 'Sign in')

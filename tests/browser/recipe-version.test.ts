@@ -1,7 +1,7 @@
 import type { Browser } from 'playwright-core'
 import { afterAll, beforeAll, expect, it } from 'vitest'
 import type { Role } from '@/lib/members/roles'
-import { LAPTOP, launchBrowser, newDevice, signInOn } from '@/tests/setup/browser'
+import { LAPTOP, launchBrowser, newDevice, open, signInOn } from '@/tests/setup/browser'
 import { seedMembers, startServer, type SeededMember, type TestServer } from '@/tests/setup/server'
 
 let server: TestServer
@@ -29,7 +29,7 @@ it('makes a new version of a recipe, sees what differs, and moves a tree to it',
 
   const { page, errors } = await newDevice(browser, server.baseUrl, { size: LAPTOP, hasTouch: false })
   await signInOn(page, members.supervisor)
-  await page.goto('/recipes')
+  await open(page, '/recipes')
   await page.getByRole('link', { name: 'Four coats, small work' }).click()
   await page.getByRole('heading', { name: 'Four coats, small work' }).waitFor()
   await page.getByText('not calibrated yet').first().waitFor()

@@ -1,6 +1,6 @@
 import type { Browser, Page } from 'playwright-core'
 import { afterAll, beforeAll, expect, it } from 'vitest'
-import { LAPTOP, launchBrowser, newDevice, signInOn } from '@/tests/setup/browser'
+import { LAPTOP, launchBrowser, newDevice, open, signInOn } from '@/tests/setup/browser'
 import { makeDataDir, seedMember, startProgram, startServer, testEnv, type SeededMember, type TestServer } from '@/tests/setup/server'
 
 let dataDir: string
@@ -26,7 +26,7 @@ afterAll(async () => {
 })
 
 async function addTree(page: Page, tag: string): Promise<void> {
-  await page.goto('/trees/new')
+  await open(page, '/trees/new')
   const field = (name: string) => page.locator(`[name="${name}"]`)
   await field('tag').fill(tag)
   await field('pieces.0.workTitle').fill(`Work of ${tag}`)
@@ -43,11 +43,11 @@ it('goes back to a backup: what was there then is there, what came after is not,
   const { page } = await newDevice(browser, server.baseUrl, { size: LAPTOP, hasTouch: false })
   await signInOn(page, owner)
   await addTree(page, 'T-1')
-  await page.goto('/upkeep')
+  await open(page, '/upkeep')
   await page.getByRole('button', { name: 'Back up now' }).click()
   await page.getByText(/^Backup made, /).waitFor()
   await addTree(page, 'T-2')
-  await page.goto('/trees')
+  await open(page, '/trees')
   await page.getByText('T-2', { exact: true }).first().waitFor()
 
   await server.stop()
@@ -59,13 +59,13 @@ it('goes back to a backup: what was there then is there, what came after is not,
   const after = await newDevice(browser, server.baseUrl, { size: LAPTOP, hasTouch: false })
   // The cookie of before is worth nothing: its session may have been ended since the backup.
   await after.context.addCookies((await page.context().cookies()).map((cookie) => ({ ...cookie })))
-  await after.page.goto('/trees')
+  await open(after.page, '/trees')
   await after.page.waitForURL('**/sign-in**')
   await signInOn(after.page, owner)
-  await after.page.goto('/trees')
+  await open(after.page, '/trees')
   await after.page.getByText('T-1', { exact: true }).first().waitFor()
   expect(await after.page.getByText('T-2', { exact: true }).count()).toBe(0)
-  await after.page.goto('/upkeep')
+  await open(after.page, '/upkeep')
   const plate = after.page.locator('.upkeep-restore')
   await plate.getByText(/^The records were restored from the backup of \w{3} \d+ \w{3}, \d\d:\d\d\.$/).waitFor()
   expect(await plate.textContent()).toMatch(/kilnward-[\dT-]+Z-by-hand\.sqlite/)

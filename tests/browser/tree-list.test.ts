@@ -1,6 +1,6 @@
 import type { Browser, Page } from 'playwright-core'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
-import { LAPTOP, launchBrowser, newDevice, PHONE, signInOn } from '@/tests/setup/browser'
+import { LAPTOP, launchBrowser, newDevice, open, PHONE, signInOn } from '@/tests/setup/browser'
 import { seedMember, startServer, type SeededMember, type TestServer } from '@/tests/setup/server'
 
 let server: TestServer
@@ -13,12 +13,15 @@ beforeAll(async () => {
   server = await startServer()
   supervisor = await seedMember('supervisor')
   const { buildFoundry, buildRecipe, buildTree } = await import('@/tests/factories/shell-room')
+  const { inTransaction } = await import('@/models')
   const foundry = await buildFoundry()
   const recipeVersionId = await buildRecipe(foundry)
-  for (let index = 1; index <= 61; index += 1) {
-    const tree = await buildTree(foundry, { recipeVersionId, since: Date.now() - 3_600_000 })
-    await tree.update({ tag: `T-${index}`, ...(index === 61 ? { releasedAt: Date.now() - 1000 } : {}) })
-  }
+  await inTransaction(async () => {
+    for (let index = 1; index <= 61; index += 1) {
+      const tree = await buildTree(foundry, { recipeVersionId, since: Date.now() - 3_600_000 })
+      await tree.update({ tag: `T-${index}`, ...(index === 61 ? { releasedAt: Date.now() - 1000 } : {}) })
+    }
+  })
   browser = await launchBrowser()
   ;({ page, errors } = await newDevice(browser, server.baseUrl, { size: LAPTOP, hasTouch: false }))
   await signInOn(page, supervisor)
@@ -33,7 +36,7 @@ const focused = () => page.evaluate(() => document.activeElement?.getAttribute('
 
 describe('the list of trees', () => {
   it('is sorted, turned over and paged by its address, which can be gone back to', async () => {
-    await page.goto('/trees?sort=tag')
+    await open(page, '/trees?sort=tag')
     await expect.poll(tags).toHaveLength(50)
     expect((await tags())[0]).toBe('T-1')
     await page.getByRole('link', { name: 'Next page' }).click()
@@ -47,7 +50,7 @@ describe('the list of trees', () => {
   })
 
   it('finds among those that left too', async () => {
-    await page.goto('/trees')
+    await open(page, '/trees')
     await page.getByLabel('Find a tree').fill('T-61')
     await page.getByRole('button', { name: 'Find', exact: true }).click()
     await page.getByRole('link', { name: 'Look among those that left' }).click()
@@ -55,7 +58,7 @@ describe('the list of trees', () => {
   })
 
   it('goes out as a file with what is shown', async () => {
-    await page.goto('/trees?q=T-6')
+    await open(page, '/trees?q=T-6')
     const [download] = await Promise.all([page.waitForEvent('download'), page.getByRole('link', { name: 'This list as CSV' }).click()])
     const { readFile } = await import('node:fs/promises')
     const [head = '', ...lines] = (await readFile(await download.path(), 'utf8')).trim().split('\r\n')
@@ -64,7 +67,7 @@ describe('the list of trees', () => {
   })
 
   it('answers the keyboard: find, along the rows and back, open, go, list of keys, leave', async () => {
-    await page.goto('/burnout')
+    await open(page, '/burnout')
     await page.keyboard.press('/')
     await page.waitForURL('**/trees#find-tree')
     await expect.poll(focused).toBe('find-tree')
@@ -94,7 +97,7 @@ describe('the list of trees', () => {
 
   it('fits a phone', async () => {
     await page.setViewportSize(PHONE)
-    await page.goto('/trees')
+    await open(page, '/trees')
     expect(await page.evaluate(() => document.documentElement.scrollWidth)).toBeLessThanOrEqual(PHONE.width)
     expect(errors).toEqual([])
   })

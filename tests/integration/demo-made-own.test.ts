@@ -2,6 +2,7 @@ import { beforeAll, beforeEach, describe, expect, it } from 'vitest'
 import { issueSensorToken } from '@/lib/commands/issue-sensor-token'
 import { logDips } from '@/lib/commands/log-dips'
 import { changeBath, retireBath, reuseBath } from '@/lib/commands/save-bath'
+import { addMqttTopic } from '@/lib/commands/save-mqtt-topic'
 import { changePlace, retirePlace, reusePlace } from '@/lib/commands/save-place'
 import { renameSensor, retireSensor, reuseSensor } from '@/lib/commands/save-sensor'
 import { createTree } from '@/lib/commands/save-tree'
@@ -9,6 +10,7 @@ import { openShop, type DemoShop } from '@/lib/demo/open-shop'
 import { DEMO_PEOPLE } from '@/lib/demo/people'
 import { removeDemo } from '@/lib/demo/remove-demo'
 import type { Actor } from '@/lib/members/actor'
+import type { TopicInput } from '@/lib/mqtt/topic-input'
 import { loadRecipeDetail } from '@/lib/queries/recipe-detail'
 import { loadRecipeList } from '@/lib/queries/recipe-list'
 import { loadRoomPage } from '@/lib/queries/room'
@@ -17,7 +19,7 @@ import { loadTreeDetail } from '@/lib/queries/tree-detail'
 import { loadWorkDetail } from '@/lib/queries/work-detail'
 import { loadWorkList } from '@/lib/queries/work-list'
 import { treeInput } from '@/lib/trees/tree-input'
-import { Bath, Foundry, FoundryEvent, inTransaction, Place, Recipe, RecipeVersion, Sensor } from '@/models'
+import { Bath, Foundry, FoundryEvent, inTransaction, MqttTopic, Place, Recipe, RecipeVersion, Sensor } from '@/models'
 import { buildAir, buildFoundry, buildMember, dipBody, HOUR, NOW, stoppedClock, type TestFoundry } from '@/tests/factories/shell-room'
 
 const clock = stoppedClock()
@@ -101,6 +103,22 @@ describe('what somebody of the foundry changed of the demo stays when it goes', 
   })
 })
 
+describe('topics of a broker, when the demo goes', () => {
+  it('go with the sensor they feed, unless somebody of the foundry made one', async () => {
+    const topic = (sensorId: number): TopicInput => ({
+      ...{ filter: 'shop/air', sensorId, tempPath: 't', rhPath: 'rh', pressurePath: null, timePath: null, batteryPath: null },
+      ...{ tempUnit: 'degC', timeForm: 'arrival' },
+    })
+    const ines = { ...shop.people.get('ines')!, isDemo: true }
+    await addMqttTopic(topic(shop.sensorIds['shell room']), { member: ines, clock })
+    const { topicId } = await addMqttTopic(topic(shop.sensorIds['net loft']), by())
+    await removeDemo(by())
+    expect((await MqttTopic.findAll()).map(({ id }) => id)).toEqual([topicId])
+    expect(await isThere('sensor', shop.sensorIds['net loft'])).toBe(true)
+    expect(await Sensor.findByPk(shop.sensorIds['shell room'])).toBeNull()
+  })
+})
+
 describe('tokens, when the demo goes', () => {
   it('of its sensors go with their lines of history; one of the foundry’s own sensor stays, whoever made it', async () => {
     const kilnward = { member: null, clock }
@@ -152,7 +170,7 @@ describe('the mark of the demo', () => {
     await dip(1, NOW)
     await dip(2, NOW + 8 * HOUR)
     const marks = async () => {
-      const room = await loadRoomPage({ sensorId: foundry.sensorId, tempUnit: 'degC', clock: stoppedClock(NOW + 9 * HOUR) })
+      const room = await loadRoomPage({ sensorId: foundry.sensorId, range: '48h', tempUnit: 'degC', clock: stoppedClock(NOW + 9 * HOUR) })
       return [
         (await loadRecipeList()).find(({ id }) => id === recipeId)?.isDemo,
         (await loadRecipeDetail(recipeId))?.isDemo,

@@ -1,3 +1,3 @@
 import { describeDemoAt } from '@/tests/setup/demo-floor'
 
-describeDemoAt('a Tuesday at 11:00', '2026-12-01T11:00:00Z')
+describeDemoAt('a Tuesday at 17:42, after closing time', '2026-12-01T17:42:20Z')

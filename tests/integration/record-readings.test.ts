@@ -2,11 +2,12 @@ import fc from 'fast-check'
 import { beforeAll, describe, expect, it } from 'vitest'
 import { recordReadings } from '@/lib/commands/record-readings'
 import { hourDoses, hourStartOf } from '@/lib/drying/dose-hours'
+import { roomFactor } from '@/lib/drying/room-factor'
 import { roomSegments } from '@/lib/drying/room-segments'
-import { loadHours, loadReadingsInHours, loadReadingsInRange } from '@/lib/queries/load-climate'
+import { loadClimateRows, loadHours, loadReadingsInHours, loadReadingsInRange } from '@/lib/queries/load-climate'
 import { buildClimate } from '@/lib/room/climate'
 import { roomDose } from '@/lib/drying/room-curve'
-import { Reading, Sensor } from '@/models'
+import { DoseHour, Reading, Sensor, SetAsideReading } from '@/models'
 import { buildFoundry, HOUR, MINUTE, NOW } from '@/tests/factories/shell-room'
 
 beforeAll(async () => {
@@ -18,7 +19,7 @@ const freshSensor = async () => (await Sensor.create({ name: `Sensor ${(sensors 
 
 const record = (
   sensorId: number,
-  rows: { measuredAt: number; airTempC: number; relHumidityPct: number }[],
+  rows: { measuredAt: number; airTempC: number; relHumidityPct: number; pressurePa?: number }[],
   source: 'sensor' | 'typed' = 'sensor',
 ) => recordReadings({ sensorId, source, enteredBy: null, rows }, { clock: { now: () => NOW } })
 
@@ -105,5 +106,90 @@ describe('the hourly table', () => {
     )
     const all = roomSegments(await loadReadingsInRange(sensorId, NOW, now), { now })
     expect(roomDose(climate.curve, from, to).likely).toBeCloseTo(roomDose(all, from, to).likely, 9)
+  })
+})
+
+describe('readings that cannot be', () => {
+  const hours = (sensorId: number) => DoseHour.findAll({ where: { sensorId }, order: ['hourStart'], raw: true })
+  const withoutSensor = (rows: object[]) => rows.map((one) => ({ ...one, sensorId: 0 }))
+  const setAside = async (sensorId: number) =>
+    (await SetAsideReading.findAll({ where: { sensorId }, order: ['measuredAt', 'reason'], raw: true })).map(
+      ({ measuredAt, reason, relHumidityPct }) => [(measuredAt - NOW) / MINUTE, reason, relHumidityPct],
+    )
+
+  it('are set aside and give the same hours in any order, in odd batches, sent twice', async () => {
+    const minute = fc.integer({ min: 0, max: 200 }).map((step) => step * 2.5)
+    const air = fc.constantFrom([50, 21], [51, 21], [95, 21], [51, 33], [120, 21], [50, 70])
+    // Long runs that do not move, cut here and there.
+    const still = fc.record({ from: minute, count: fc.integer({ min: 10, max: 40 }) })
+    await fc.assert(
+      fc.asyncProperty(
+        fc.array(fc.record({ at: minute, air }), { maxLength: 25 }),
+        still,
+        fc.array(fc.nat(), { minLength: 80, maxLength: 80 }),
+        async (entries, run, keys) => {
+          const rows = [
+            ...Array.from({ length: run.count }, (_, index) => row(run.from + index * 15)),
+            ...entries.map(({ at, air: [humidity, temp] }) => row(at, humidity, temp)),
+          ]
+          const [whole, odd] = [await freshSensor(), await freshSensor()]
+          await record(whole, rows)
+          const shuffled = rows.map((value, index) => ({ value, key: keys[index] ?? 0 })).toSorted((a, b) => a.key - b.key)
+          for (let from = 0, size = 1; from < shuffled.length; from += size) {
+            size = 1 + ((keys[from] ?? 0) % 13)
+            const batch = shuffled.slice(from, from + size).map(({ value }) => value)
+            await record(odd, batch)
+            await record(odd, batch)
+          }
+          expect(await setAside(odd)).toEqual(await setAside(whole))
+          expect(rounded(withoutSensor(await hours(odd)))).toEqual(rounded(withoutSensor(await hours(whole))))
+        },
+      ),
+      { numRuns: 15 },
+    )
+  })
+
+  it('are told for each row, again when they are sent again', async () => {
+    const sensorId = await freshSensor()
+    const rows = [row(10), row(5, 95), row(0), row(0, 50, 99)]
+    const told = { marked: 2, marks: [null, 'jump', null, 'out of range'] }
+    expect(await record(sensorId, rows)).toEqual({ added: 4, repeated: 0, ...told })
+    expect(await record(sensorId, rows)).toEqual({ added: 0, repeated: 4, ...told })
+    expect(await setAside(sensorId)).toEqual([
+      [0, 'out of range', 50],
+      [5, 'jump', 95],
+    ])
+  })
+
+  it('count again once what came between shows that they were right', async () => {
+    const sensorId = await freshSensor()
+    await record(sensorId, [row(0), row(5, 95), row(10)])
+    expect(await hours(sensorId)).toMatchObject([{ readingCount: 2 }])
+    expect(await record(sensorId, [row(7, 94)])).toMatchObject({ added: 1, marked: 0 })
+    expect(await setAside(sensorId)).toEqual([])
+    expect(await hours(sensorId)).toMatchObject([{ readingCount: 4, maxRelHumidityPct: 95 }])
+  })
+
+  it('of a stuck sensor end the drying half an hour after the last that counts', async () => {
+    const sensorId = await freshSensor()
+    await record(
+      sensorId,
+      Array.from({ length: 120 }, (_, index) => row(index * 5)),
+    )
+    const now = NOW + 119 * 5 * MINUTE
+    const climate = buildClimate(await loadClimateRows(sensorId, NOW, now, []), { now, timeZone: 'Europe/London' })
+    expect(climate).toMatchObject({ isStale: true, newest: { measuredAt: NOW + 6 * HOUR } })
+    expect(roomDose(climate.curve, NOW, now).likely).toBeCloseTo(roomDose(climate.curve, NOW, NOW + 6.5 * HOUR).likely, 12)
+  })
+})
+
+describe('a barometer', () => {
+  it('stands for the altitude where there is one', async () => {
+    const sensorId = await freshSensor()
+    await record(sensorId, [row(0), { ...row(5), pressurePa: 85_000 }])
+    const [plain, measured] = await Reading.findAll({ where: { sensorId }, order: ['measuredAt'], raw: true })
+    expect(plain).toMatchObject({ pressurePa: null, roomFactor: expect.closeTo(roomFactor(row(0), 101_325), 12) })
+    expect(measured).toMatchObject({ pressurePa: 85_000, roomFactor: expect.closeTo(roomFactor(row(0), 85_000), 12) })
+    expect(measured!.roomFactor).toBeGreaterThan(plain!.roomFactor)
   })
 })

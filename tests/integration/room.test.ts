@@ -8,6 +8,7 @@ import { loadClimateExport } from '@/lib/queries/climate-export'
 import { loadRoomPage } from '@/lib/queries/room'
 import { loadTreeDetail } from '@/lib/queries/tree-detail'
 import { climateRange } from '@/lib/room/climate-csv'
+import type { RoomRange } from '@/lib/room/range'
 import { csvText } from '@/lib/server/csv'
 import { DoseHour, FormerAir, Reading, Sensor, TreePlace } from '@/models'
 import {
@@ -33,7 +34,7 @@ beforeAll(async () => {
   member = await buildMember('supervisor')
 })
 
-const page = (sensorId: number | null = null) => loadRoomPage({ sensorId, tempUnit: 'degC', clock })
+const page = (sensorId: number | null = null, range: RoomRange = '48h') => loadRoomPage({ sensorId, range, tempUnit: 'degC', clock })
 
 describe('the Room page', () => {
   it('stands while nobody has read anything and no tree hangs', async () => {

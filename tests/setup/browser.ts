@@ -1,3 +1,4 @@
+import { setTimeout as sleep } from 'node:timers/promises'
 import { chromium, type Browser, type BrowserContext, type Page } from 'playwright-core'
 
 // Without these, Chromium looks up its vendor's hosts at every start.
@@ -36,9 +37,32 @@ export async function newDevice(
   return { context, page, errors }
 }
 
+const LIVE_WITHIN_MS = 30_000
+
+/**
+ * Opens a page and waits until its scripts have taken over: a key that is pressed before is lost, or does what its form does without.
+ *
+ * @throws {Error} after half a minute.
+ */
+export async function open(page: Page, path: string): Promise<void> {
+  await page.goto(path)
+  const deadline = Date.now() + LIVE_WITHIN_MS
+  // Asked again and again from here: a wait inside the page would build code from text, which the policy forbids.
+  while (!(await page.evaluate(isLive).catch(() => false))) {
+    if (Date.now() > deadline) throw new Error(`The scripts of ${page.url()} did not take over.`)
+    await sleep(50)
+  }
+}
+
+/** Whether React has every element that a person can press or type into. Runs in the page, so it stands alone. */
+function isLive(): boolean {
+  const controls = [...document.querySelectorAll('body > :first-child, a, button, form, input, select, textarea')]
+  return controls.every((element) => Object.keys(element).some((key) => key.startsWith('__react')))
+}
+
 /** Signs in through the form, as a person does, and waits for the floor. */
 export async function signInOn(page: Page, { email, password }: { email: string; password: string }): Promise<void> {
-  await page.goto('/sign-in')
+  await open(page, '/sign-in')
   await page.getByLabel('E-mail').fill(email)
   await page.getByLabel('Password').fill(password)
   await page.getByRole('button', { name: 'Sign in' }).click()

@@ -107,7 +107,7 @@ export function describeDemoAt(name: string, iso: string): void {
       expect(queue.trees.filter(({ willMissPour }) => willMissPour).map(({ title }) => title)).toEqual(['The Ferryman, figure'])
       expect(queue.trees.filter(({ title }) => title.startsWith('Otter Gate, panel'))).toHaveLength(4)
       expect(queue.trees.filter(({ title }) => title.endsWith('pieces')).length).toBeGreaterThanOrEqual(1)
-      expect(queue.trees.every(({ isUncalibrated }) => isUncalibrated)).toBe(true)
+      expect(queue.trees.every(({ isPlanUncalibrated }) => isPlanUncalibrated)).toBe(true)
     })
 
     it('has a tree with a recess', async () => {

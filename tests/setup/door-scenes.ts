@@ -4,6 +4,7 @@ import { join } from 'node:path'
 import type * as Factories from '@/tests/factories/shell-room'
 import type { FakePushService } from '@/tests/setup/fake-push-service'
 import type { Client } from '@/tests/setup/client'
+import type { UploadSettings } from '@/lib/uploads/upload-settings'
 
 export type Scene = {
   foundry: Factories.TestFoundry
@@ -17,7 +18,14 @@ export type Scene = {
   /** Asks a door by its operation id; the answer is checked against the description. */
   ask: (client: Client, operationId: string, asked?: Asked) => Promise<Response>
 }
-export type Asked = { params?: Record<string, string>; headers?: Record<string, string>; body?: unknown }
+/** `text` is a body that is no JSON, but a CSV file. */
+export type Asked = {
+  params?: Record<string, string>
+  query?: Record<string, string>
+  headers?: Record<string, string>
+  body?: unknown
+  text?: string
+}
 
 const operation = (body: Record<string, unknown> = {}) => ({ operationId: randomUUID(), ...body })
 
@@ -42,6 +50,14 @@ async function subscribe({ service, operator, ask }: Scene) {
   const body = { endpoint, keys, vapidPublicKey: listed.publicKey, scope: 'every tree', label: 'Phone' }
   await ask(operator, 'savePushDevice', { body })
   return body
+}
+
+const CSV_FILE = 'time,temperature,humidity\n2026-10-13T13:05:00Z,21.4,52\n2026-10-13T13:10:00Z,warm,52\n'
+
+async function broughtFile({ ask, owner, foundry }: Scene): Promise<{ uploadId: string }> {
+  const query = { sensorId: String(foundry.sensorId), fileName: 'gauge.csv' }
+  const { uploadId } = (await (await ask(owner, 'bringFile', { query, text: CSV_FILE })).json()) as { uploadId: string }
+  return { uploadId }
 }
 
 /**
@@ -77,6 +93,14 @@ export const SCENES: Record<string, (scene: Scene) => Promise<void>> = {
     const body = { airSpeedMps: 1, altitudeM: 0, need: { referenceHours: 4 }, dippedAt: Date.now() }
     await ask(operator, 'estimateDrying', { body: { ...body, climate: { constant: { airTempC: 21, relHumidityPct: 50 } } } })
     await ask(operator, 'estimateDrying', { body: { ...body, climate: {} } })
+  },
+  weighRoomAir: async (scene) => {
+    const { ask, operator, foundry } = scene
+    await dippedTree(scene)
+    const params = { sensorId: String(foundry.sensorId) }
+    await ask(operator, 'weighRoomAir', { params, body: { airTempC: 30, relHumidityPct: 30, airSpeedMps: 3 } })
+    await ask(operator, 'weighRoomAir', { params, body: { fansOnAt: [foundry.placeId] } })
+    await ask(operator, 'weighRoomAir', { params: { sensorId: '4040' }, body: {} })
   },
   exportClimate: async ({ ask, operator, foundry }) => {
     await ask(operator, 'exportClimate', { params: { sensorId: String(foundry.sensorId) } })
@@ -183,6 +207,39 @@ export const SCENES: Record<string, (scene: Scene) => Promise<void>> = {
     await Backup.create({ id: randomUUID(), fileName, kind: 'by hand', startedAt: now, finishedAt: now, outcome: 'done', sizeBytes: 15 })
     await ask(owner, 'downloadNewestBackup')
     await ask(operator, 'downloadNewestBackup')
+  },
+  bringFile: async ({ ask, owner, operator, foundry }) => {
+    const query = { sensorId: String(foundry.sensorId), fileName: 'gauge.csv' }
+    await ask(owner, 'bringFile', { query, text: CSV_FILE })
+    await ask(owner, 'bringFile', { query, text: '' })
+    await ask(owner, 'bringFile', { query: { ...query, sensorId: '4040' }, text: CSV_FILE })
+    await ask(owner, 'bringFile', { query: { ...query, sensorId: 'x' }, text: CSV_FILE })
+    await ask(operator, 'bringFile', { query, text: CSV_FILE })
+  },
+  readUpload: async (scene) => {
+    await scene.ask(scene.owner, 'readUpload', { params: await broughtFile(scene) })
+    await scene.ask(scene.owner, 'readUpload', { params: { uploadId: randomUUID() } })
+  },
+  previewUpload: async (scene) => {
+    const { ask, owner } = scene
+    const params = await broughtFile(scene)
+    const { settings } = (await (await ask(owner, 'previewUpload', { params })).json()) as { settings: object }
+    await ask(owner, 'previewUpload', { params, query: { settings: JSON.stringify({ ...settings, delimiter: ';' }) } })
+    await ask(owner, 'previewUpload', { params, query: { settings: '{' } })
+    await ask(owner, 'previewUpload', { params: { uploadId: randomUUID() } })
+  },
+  exportUploadErrors: async (scene) => {
+    const { ask, owner } = scene
+    const params = await broughtFile(scene)
+    await ask(owner, 'exportUploadErrors', { params })
+    const { settings } = (await (await ask(owner, 'previewUpload', { params })).json()) as { settings: UploadSettings }
+    const { queueUpload } = await import('@/lib/commands/queue-upload')
+    const { importNext } = await import('@/jobs/import-uploads')
+    const { Member } = await import('@/models')
+    const clock = { now: () => Date.now() }
+    await queueUpload(params.uploadId, settings, { member: await Member.findOne({ where: { role: 'owner' }, rejectOnEmpty: true }), clock })
+    await importNext({ clock, isStopping: () => false, monotonic: () => performance.now(), sleep: async () => {} })
+    await ask(owner, 'exportUploadErrors', { params })
   },
   describeApi: async ({ ask, anonymous }) => {
     await ask(anonymous, 'describeApi')

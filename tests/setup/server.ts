@@ -1,4 +1,5 @@
 import { spawn, type ChildProcess } from 'node:child_process'
+import { randomInt } from 'node:crypto'
 import { mkdtempSync, rmSync } from 'node:fs'
 import { createServer } from 'node:net'
 import { tmpdir } from 'node:os'
@@ -71,14 +72,27 @@ export function startProgram(args: string[], env: NodeJS.ProcessEnv, cwd = proce
   return { process: child, output: () => text, exited, stop }
 }
 
-export function freePort(): Promise<number> {
-  return new Promise((resolve, reject) => {
+// Below those that the system hands out to whoever asks for any: between our look and the server's start nobody else gets it.
+const FIRST_PORT = 20_000
+const PORTS_OF_A_WORKER = 500
+let portsTried = randomInt(PORTS_OF_A_WORKER)
+
+/** A port of the loopback that nothing listens on. Files that run side by side draw from ranges of their own. */
+export async function freePort(): Promise<number> {
+  const first = FIRST_PORT + PORTS_OF_A_WORKER * Number(process.env['VITEST_POOL_ID'] ?? 0)
+  for (let tries = 0; tries < PORTS_OF_A_WORKER; tries += 1) {
+    portsTried += 1
+    const port = first + (portsTried % PORTS_OF_A_WORKER)
+    if (await isFree(port)) return port
+  }
+  throw new Error(`No port from ${first} on is free.`)
+}
+
+function isFree(port: number): Promise<boolean> {
+  return new Promise((resolve) => {
     const probe = createServer()
-    probe.on('error', reject)
-    probe.listen(0, '127.0.0.1', () => {
-      const address = probe.address()
-      probe.close(() => resolve(typeof address === 'object' && address ? address.port : 0))
-    })
+    probe.on('error', () => resolve(false))
+    probe.listen(port, '127.0.0.1', () => probe.close(() => resolve(true)))
   })
 }
 

@@ -25,16 +25,20 @@ export function newOperationId(): string {
  * One write through the HTTP API under an operation id. The id belongs to what is asked, not to the press: after a failed
  * send the same press sends the same id, so that nothing is written twice.
  */
-export function useOperation(path: string): {
+export function useOperation<Answer = unknown>(
+  path: string,
+): {
   send: (body: Record<string, unknown>) => void
   isPending: boolean
   isDone: boolean
+  /** What the server answered to the last one that was kept; null before. */
+  answer: Answer | null
   problem: string | null
 } {
   const router = useRouter()
   const kept = useRef<{ body: string; operationId: string } | null>(null)
   const mutation = useMutation({
-    mutationFn: async (body: Record<string, unknown>) => {
+    mutationFn: async (body: Record<string, unknown>): Promise<Answer> => {
       const text = JSON.stringify(body)
       if (kept.current?.body !== text) kept.current = { body: text, operationId: newOperationId() }
       const response = await fetch(path, {
@@ -44,7 +48,8 @@ export function useOperation(path: string): {
       })
       // An answer of any kind settles the operation; only silence keeps its id.
       if (response.status < 500) kept.current = null
-      if (response.ok) return
+      // oxlint-disable-next-line typescript/no-unsafe-type-assertion -- our own door, whose answers are held against its contract in the tests
+      if (response.ok) return (await response.json()) as Answer
       const document = problemDocument.safeParse(await response.json().catch(() => null))
       throw new Refusal(document.success ? document.data.detail : 'Not saved: the server could not finish this. Try again.')
     },
@@ -57,6 +62,7 @@ export function useOperation(path: string): {
     },
     isPending: mutation.isPending,
     isDone: mutation.isSuccess,
+    answer: mutation.data ?? null,
     problem: error === null ? null : error instanceof Refusal ? error.message : 'Not saved: no answer from the server. Try again.',
   }
 }

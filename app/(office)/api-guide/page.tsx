@@ -5,7 +5,7 @@ import { FoundryNav } from '@/app/(office)/_components/foundry-nav'
 import { CodeBlock } from '@/app/(office)/api-guide/_components/code-block'
 import { DoorList } from '@/app/(office)/api-guide/_components/door-list'
 import { env } from '@/lib/core/env'
-import { curlManyReadings, curlOneReading, pythonLoop, shellLoop, TOKEN_LINE } from '@/lib/room/sending-examples'
+import { curlManyReadings, curlOneReading, publishOneReading, pythonLoop, shellLoop, TOKEN_LINE } from '@/lib/room/sending-examples'
 import { requireMemberPage } from '@/lib/server/auth'
 import { LARGEST_READINGS_BYTES, SENSOR_REQUESTS_PER_MINUTE } from '@/lib/server/limits'
 import { PROBLEMS, problemType, type ProblemCode } from '@/lib/server/problem'
@@ -161,7 +161,32 @@ export default async function ApiGuidePage() {
           <CodeBlock label="Python loop" code={pythonLoop(address)} />
         </Plate>
 
-        <Plate title="9. Every door">
+        <Plate title="9. Through a broker">
+          <p>
+            A logger that speaks MQTT needs no token: Kilnward listens to the broker on your network. An owner sets it on the page{' '}
+            <Link href="/settings/mqtt" prefetch={false}>
+              MQTT
+            </Link>
+            , and there you say which topic feeds which sensor and where in its messages the figures stand. For the line below: topic{' '}
+            <code>shellroom/loft/air</code>, temperature <code>temp</code>, humidity <code>rh</code>, time <code>at</code> in seconds since
+            1970.
+          </p>
+          <CodeBlock label="One reading, published" code={publishOneReading()} />
+          <ul className="plain-list">
+            <li>
+              <b>Send the time along</b>, and publish with QoS 1 (<code>-q 1</code>): then what comes while Kilnward is away waits at the
+              broker and counts for its own moment, and a message that comes twice is one reading.
+            </li>
+            <li>
+              Without a time the moment of arrival counts, to ten seconds. A kept (retained) message, and one that has waited for more than
+              2 minutes, is then passed over: nobody knows how old it is.
+            </li>
+            <li>The rest is as for the door above: the same limits for each row, and rows known by sensor and moment.</li>
+            <li>The page shows the last message on each topic and why it was refused.</li>
+          </ul>
+        </Plate>
+
+        <Plate title="10. Every door">
           <p>
             This list comes from the{' '}
             <a href={DESCRIPTION} target="_blank" rel="noreferrer">

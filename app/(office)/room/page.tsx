@@ -4,6 +4,10 @@ import { Icon } from '@/app/_components/icons'
 import { KeyLink } from '@/app/_components/key'
 import { EmptyState } from '@/app/(office)/_components/empty-state'
 import { KeepFresh } from '@/app/(office)/_components/keep-fresh'
+import { BandFold } from '@/app/(office)/room/_components/band-fold'
+import { CoatWhatIf } from '@/app/(office)/room/_components/coat-what-if'
+import { RangeLinks, roomHref } from '@/app/(office)/room/_components/range-links'
+import { RoomWhatIf } from '@/app/(office)/room/_components/room-what-if'
 import { AirFolds } from '@/app/(office)/room/_components/air-folds'
 import type { Frame } from '@/app/(office)/room/_components/chart-frame'
 import { DriedFold } from '@/app/(office)/room/_components/dried-coats'
@@ -14,7 +18,6 @@ import { PointTable } from '@/app/(office)/room/_components/point-table'
 import { ReadingForm } from '@/app/(office)/room/_components/reading-form'
 import { Ribbon } from '@/app/(office)/room/_components/ribbon'
 import { RangeForm } from '@/app/(office)/room/_components/range-form'
-import { WhatIf } from '@/app/(office)/room/_components/what-if'
 import { systemClock } from '@/lib/core/clock'
 import { localDay } from '@/lib/format/local-time'
 import { TIMES_NOT_CALIBRATED } from '@/lib/format/time-pair'
@@ -23,26 +26,31 @@ import { readingAge } from '@/lib/floor/strip'
 import { may } from '@/lib/members/roles'
 import { loadRoomPage } from '@/lib/queries/room'
 import type { QueueRoom } from '@/lib/queue/contract'
+import { RANGE_NAMES, rangeOf, type RoomRange } from '@/lib/room/range'
 import { PULL_WORDS } from '@/lib/room/drying-pull'
 import type { RoomPage } from '@/lib/room/room-contract'
-import { roughDuration } from '@/lib/room/room-words'
 import { isBatteryLow } from '@/lib/room/sensor-warnings'
+import { roughDuration } from '@/lib/format/duration'
 import type { ShiftSpeed } from '@/lib/room/shift-speeds'
 import { requireMemberPage } from '@/lib/server/auth'
 import './room.css'
+import './sensor-note.css'
 
 export const metadata: Metadata = { title: 'Room' }
 
 /** More rows than this stand in a fold: what loses most is at the head. */
 const FIRST_ROWS = 10
 
+const RANGE_POINTS: Record<RoomRange, string> = { '48h': 'hour by hour', '14d': 'hour by hour', '1y': 'day by day' }
+const RANGE_KEYS: Record<RoomRange, string> = { '48h': 'These 48 hours', '14d': 'These 14 days', '1y': 'This year' }
+
 export default async function RoomPageView({ searchParams }: PageProps<'/room'>) {
   const member = await requireMemberPage('see', '/room')
-  const { sensor } = await searchParams
+  const { sensor, range: rangeWord } = await searchParams
   const sensorId = typeof sensor === 'string' && /^\d{1,9}$/.test(sensor) ? Number(sensor) : null
   const tempUnit = member.units.temp
-  const page = await loadRoomPage({ sensorId, tempUnit, clock: systemClock })
-  const { now, timeZone, room, rows, things, headline } = page
+  const page = await loadRoomPage({ sensorId, range: rangeOf(rangeWord), tempUnit, clock: systemClock })
+  const { now, timeZone, room, rows, things, headline, range } = page
 
   if (room === null) {
     return (
@@ -66,10 +74,14 @@ export default async function RoomPageView({ searchParams }: PageProps<'/room'>)
     )
   }
 
-  const frame: Frame = { from: page.from, to: page.to, now, timeZone, closed: page.closed }
+  const frame: Frame = { range, from: page.from, to: page.to, now, timeZone, closed: page.closed }
   const longestMs = Math.max(3_600_000, ...rows.map((row) => row.lostMs ?? 0))
   const table = { longestMs, dryerPct: page.dryerPct, now, timeZone }
-  const csv = `/api/v1/rooms/${room.sensorId}/climate.csv${tempUnit === 'degF' ? '?temp=degF' : ''}`
+  const csv = `/api/v1/rooms/${room.sensorId}/climate.csv`
+  const drawn = new URLSearchParams({
+    ...(range === '48h' ? {} : { range }),
+    ...(tempUnit === 'degF' ? { temp: tempUnit } : {}),
+  }).toString()
 
   return (
     <>
@@ -150,7 +162,7 @@ export default async function RoomPageView({ searchParams }: PageProps<'/room'>)
             <Link
               key={other.sensorId}
               className="group-link"
-              href={`/room?sensor=${other.sensorId}`}
+              href={roomHref(other.sensorId, range)}
               prefetch={false}
               scroll={false}
               aria-current={other.sensorId === room.sensorId ? 'true' : undefined}
@@ -163,11 +175,40 @@ export default async function RoomPageView({ searchParams }: PageProps<'/room'>)
 
       <section className="plate">
         <header>
-          <h2>Fast and slow, 48 hours</h2>
+          <h2>What if</h2>
+          <p>Another air for {room.sensorName} from now on: what it does to every tree. Nothing is changed by it.</p>
+        </header>
+        <div className="plate-body">
+          <RoomWhatIf
+            key={room.sensorId}
+            sensorId={room.sensorId}
+            air={{
+              airTempC: room.airTempC ?? 21,
+              relHumidityPct: Math.round(room.relHumidityPct ?? 50),
+              airSpeedMps: page.places[0]?.airSpeedMps ?? 1,
+            }}
+            places={page.places}
+            closesAt={page.closesAt}
+            opensAt={page.opensAt}
+            now={now}
+            timeZone={timeZone}
+            tempUnit={tempUnit}
+          />
+        </div>
+      </section>
+
+      <section className="plate">
+        <header>
+          <h2>Fast and slow, {RANGE_NAMES[range]}</h2>
           <p>
             {room.sensorName}. Thick dries fast, thin and lined dries slowly; recipe speed is {formatTemperature(21, tempUnit)}, 50 % RH,
-            1.0 m/s; pale edge: how far the forecast may be off; shaded: closed
+            1.0 m/s
+            {range === '48h' && '; pale edge: how far the forecast may be off'}
+            {range !== '1y' && '; shaded: closed'}
+            {range === '14d' && '; one point an hour'}
+            {range === '1y' && '; one point a day, its mean'}
           </p>
+          <RangeLinks sensorId={room.sensorId} range={range} />
         </header>
         <div className="plate-body">
           {page.points.length === 0 ? (
@@ -182,6 +223,11 @@ export default async function RoomPageView({ searchParams }: PageProps<'/room'>)
         {page.points.length > 0 && <AirFolds page={page} room={room} frame={frame} tempUnit={tempUnit} />}
         <Fold title="Sensors" line={<SensorsLine rooms={page.rooms} now={now} timeZone={timeZone} />}>
           <SensorList rooms={page.rooms} notes={page.notes} now={now} timeZone={timeZone} tempUnit={tempUnit} />
+          {may(member.role, 'sensors') && (
+            <p className="fold-key">
+              <KeyLink href={`/room/upload?sensor=${room.sensorId}`}>Readings from a file</KeyLink>
+            </p>
+          )}
           {may(member.role, 'read') && (
             <>
               <h3 className="fold-title">Type a reading</h3>
@@ -211,9 +257,10 @@ export default async function RoomPageView({ searchParams }: PageProps<'/room'>)
             </ul>
           </Fold>
         )}
+        <BandFold page={page} sensorId={room.sensorId} tempUnit={tempUnit} />
         <DriedFold page={page} />
-        <Fold title="What if" line="another air, another place, another coat: how long it would take">
-          <WhatIf
+        <Fold title="One coat by itself" line="dipped now, in a steady air of your own: how long it would take">
+          <CoatWhatIf
             start={{
               airTempC: room.airTempC ?? 21,
               relHumidityPct: Math.round(room.relHumidityPct ?? 50),
@@ -230,13 +277,13 @@ export default async function RoomPageView({ searchParams }: PageProps<'/room'>)
             places={page.places}
           />
         </Fold>
-        <Fold title="As a table, as a file" line="what is drawn here, hour by hour; or up to 31 days">
+        <Fold title="As a table, as a file" line={`what is drawn here, ${RANGE_POINTS[range]}; or up to 31 days`}>
           <div className="file-keys">
-            <a className="key" href={csv} download>
+            <a className="key" href={drawn === '' ? csv : `${csv}?${drawn}`} download>
               <Icon name="down" />
-              These 48 hours
+              {RANGE_KEYS[range]}
             </a>
-            <RangeForm action={`/api/v1/rooms/${room.sensorId}/climate.csv`} tempUnit={tempUnit} today={localDay(now, timeZone)} />
+            <RangeForm action={csv} tempUnit={tempUnit} today={localDay(now, timeZone)} />
           </div>
           <PointTable points={page.points} now={now} timeZone={timeZone} tempUnit={tempUnit} />
         </Fold>

@@ -33,7 +33,8 @@ export type DoorDescription = {
   /** Words of the query and headers of the request that change the answer. */
   query?: Readonly<Record<string, { schema: z.ZodType; text: string }>>
   headers?: Readonly<Record<string, { schema: z.ZodType; text: string }>>
-  body?: { schema: z.ZodType; example: unknown; largestBytes?: number }
+  /** `type` is its media type, JSON unless it says so. */
+  body?: { schema: z.ZodType; example: unknown; largestBytes?: number; type?: string }
   /** By status. */
   answers: Readonly<Record<number, DoorAnswer>>
   problems?: readonly ErrorCode[]

@@ -19,7 +19,7 @@ export const READING_DOORS: readonly DoorDescription[] = [
         readings: [
           { measuredAt: '2026-10-13T09:00:00Z', airTempC: 21.4, relHumidityPct: 52.5 },
           { measuredAt: 1_791_882_300_000, airTempC: 215, relHumidityPct: 52.1, pressurePa: 100_900 },
-          { measuredAt: '2026-10-13T09:10:00Z', airTempC: '21.5', relHumidityPct: 52.1 },
+          { measuredAt: '2027-10-13T09:10:00Z', airTempC: 21.5, relHumidityPct: 52.1 },
         ],
         sentAt: '2026-10-13T09:10:02Z',
         batteryPct: 86,
@@ -32,7 +32,7 @@ export const READING_DOORS: readonly DoorDescription[] = [
         example: {
           accepted: 2,
           repeated: 0,
-          rejected: [{ index: 2, reason: 'airTempC: Temperature is a number in °C.' }],
+          rejected: [{ index: 2, reason: 'measuredAt lies more than 2 min ahead: check the clock of the sensor.' }],
           marked: [{ index: 1, reason: REASON_SENTENCES['out of range'] }],
           clockOffsetSeconds: null,
         },

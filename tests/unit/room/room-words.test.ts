@@ -1,10 +1,11 @@
 import { describe, expect, it } from 'vitest'
 import { roomFactor } from '@/lib/drying/room-factor'
+import { roughDuration } from '@/lib/format/duration'
 import type { QueueRoom } from '@/lib/queue/contract'
 import { queueRoom } from '@/lib/queue/assemble'
-import { roomHeadline, roughDuration, treeAdvice } from '@/lib/room/room-words'
+import { roomHeadline, treeAdvice } from '@/lib/room/room-words'
 import { mildHumidityPct, thingsToDo } from '@/lib/room/things-to-do'
-import { betterPlace, dryerFor, dryingTrees, fansLeftOn, placeFactorTonight, tonightOf, treeEffects } from '@/lib/room/tonight'
+import { betterPlace, dryerFor, dryingTrees, fansLeftOn, limitedCoat, placeFactorTonight, tonightOf, treeEffects } from '@/lib/room/tonight'
 import { shiftsFrom } from '@/lib/schedule/shifts'
 import {
   buildContext,
@@ -50,9 +51,11 @@ function scene({
   const dryer = dryerFor(context, climate, drying, tonight, BAND)
   const effects = treeEffects(drying, context, tonight, dryer)
   const rooms = [queueRoom(climate, { name: 'Shell room logger', kind }, 101_325)]
+  const coats = drying.map((tree) => limitedCoat(tree, 1, null))
   const words = { now, timeZone: TIME_ZONE }
   return {
     context,
+    coats,
     effects,
     rooms,
     headline: roomHeadline({ rooms, effects, tonight, ...words }),
@@ -74,6 +77,7 @@ function scene({
         dryer,
         fans,
         sensorOf: () => 1,
+        coatsOf: () => coats,
         placeFactorOf: (effect) => placeFactorTonight(effect.tree, context, tonight),
         tonight,
         tempUnit: 'degC',
@@ -220,7 +224,7 @@ describe('things to do', () => {
 
   it('are three at the most', () => {
     const given: Scene = { airAt: () => DAMP, trees: [{ coat: 1, airTempAtDipC: 20 }, { need: 8 }] }
-    const { rooms, effects, tonight } = scene(given)
+    const { rooms, effects, tonight, coats } = scene(given)
     const many: QueueRoom[] = [
       rooms[0]!,
       { ...rooms[0]!, sensorId: 2, isStale: true },
@@ -233,6 +237,7 @@ describe('things to do', () => {
       dryer: null,
       fans: [],
       sensorOf: () => 1,
+      coatsOf: () => coats,
       placeFactorOf: () => 1,
       tonight,
       now: NOW,

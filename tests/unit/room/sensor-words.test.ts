@@ -59,7 +59,7 @@ describe('what is to be looked at with a sensor', () => {
     [{ newestAt: NOW - 31 * MINUTE }, 'since 09:29'],
     [{ kind: 'wall hygrometer', newestAt: NOW - 13 * 60 * MINUTE }, 'since Mon 21:00'],
     [{ batteryPct: 15 }, 'Battery 15\u00A0%: change it.'],
-    [{ clockOffsetSeconds: 420 }, 'Its clock is 7\u00A0min fast'],
+    [{ clockOffsetSeconds: 419 }, 'Its clock is 7\u00A0min fast'],
     [{ clockOffsetSeconds: -3600 }, 'Its clock is 1\u00A0h slow'],
     [{ markedCount: 3 }, 'in the last 24 h: 3.'],
   ])('names %j', (state, words) => {

@@ -7,7 +7,7 @@ import { localInstant, readingForm } from '@/lib/room/reading-form'
 import { linedStretches, ribbonRuns } from '@/lib/room/ribbon'
 import { chartLines, exactFrom, roomSeries, type RoomPoint } from '@/lib/room/series'
 import { closedStretches, meanSpeed, shiftSpeeds } from '@/lib/room/shift-speeds'
-import { dialledTemp, flagWords, onDial, shownTemp, stepped, tempDial, whatIfBody, whatIfPair } from '@/lib/room/what-if'
+import { dialledTemp, flagWords, onDial, shownTemp, stepped, tempDial, whatIfBody, whatIfPair } from '@/lib/room/coat-what-if'
 import { shiftsFrom } from '@/lib/schedule/shifts'
 import { estimateOf } from '@/tests/unit/drying/build-estimate'
 import { estimateInput } from '@/lib/drying/estimate-contract'
@@ -115,6 +115,7 @@ const point = (hoursFromNow: number, speed: number | null, overrides: Partial<Ro
   vaporPressureDeficitPa: null,
   isGap: false,
   isTyped: false,
+  readMinutes: null,
   ...overrides,
 })
 

@@ -15,6 +15,16 @@ const inOrder: UpkeepFacts = {
     { name: 'Shell room', source: 'sensor', newestAt: NOW - 4 * MINUTE, batteryPct: 80 },
     { name: 'Boat shed', source: 'typed', newestAt: NOW - 11 * HOUR, batteryPct: null },
   ],
+  mqtt: {
+    isOn: true,
+    connectedSince: NOW - HOUR,
+    awaySince: null,
+    trouble: '',
+    isWorkerAlive: true,
+    readings: 288,
+    refused: 0,
+    dropped: 0,
+  },
   records: { sizeBytes: 63_700_000, walBytes: 4_000_000 },
   disks: [{ of: 'records', freeBytes: 12e9 }],
   pushes: { waiting: 0, dueSince: null, failingDevices: [], refusing: [] },
@@ -36,6 +46,11 @@ describe('upkeep', () => {
     const checks = upkeepChecks(inOrder)
     expect(upkeepHeadline(checks)).toBe('All in order')
     expect(checks.filter(({ isInOrder, todo }) => !isInOrder || todo !== '')).toEqual([])
+  })
+
+  it('says nothing of a broker where none is switched on, and waits a little for one that is started again', () => {
+    expect(upkeepChecks({ ...inOrder, mqtt: null }).map(({ key }) => key)).not.toContain('mqtt')
+    expect(lookAt({ mqtt: { ...inOrder.mqtt!, connectedSince: null, awaySince: NOW - MINUTE } })).toEqual([])
   })
 
   it.each<[string, string, Partial<UpkeepFacts>, RegExp]>([
@@ -64,6 +79,13 @@ describe('upkeep', () => {
       { sensors: [{ name: 'Shell room', source: 'sensor', newestAt: NOW, batteryPct: 15 }] },
       /Shell room: battery 15.%\./,
     ],
+    [
+      'mqtt',
+      'a broker that is away for long',
+      { mqtt: { ...inOrder.mqtt!, connectedSince: null, awaySince: NOW - 6 * MINUTE, trouble: 'No broker answers.' } },
+      /Not connected since 09:54\. No broker answers\./,
+    ],
+    ['mqtt', 'a topic that the broker keeps to itself', { mqtt: { ...inOrder.mqtt!, trouble: 'Not shop/#.' } }, /Not shop/],
     ['disk', 'under 1 GB', { disks: [{ of: 'backups', freeBytes: 999_000_000 }] }, /999.MB free for the backups/],
     ['records', 'a log that only grows', { records: { sizeBytes: 1e9, walBytes: 400e6 } }, /400.MB/],
     ['backups', 'a late backup', { backups: { ...inOrder.backups, newest: { at: NOW - 4 * HOUR, sizeBytes: 1 } } }, /06:00/],

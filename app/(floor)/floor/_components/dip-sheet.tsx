@@ -31,11 +31,12 @@ import { stateWords } from '@/lib/format/state-words'
 import type { Queue, QueueTree } from '@/lib/queue/contract'
 import { sectionOf } from '@/lib/trees/section'
 import { newOperationId } from '../_queries/operation-id'
-import { refusalWords } from '../_queries/request-json'
+import { refusalWords, type Outcome } from '../_queries/request-json'
 import { postDips, postTouch, postWatch, refusedTrees } from '../_queries/writes'
 import { DipChoices, draftSummary, PlaceChooser } from './dip-choices'
 import { DipRefusals, type RefusalAnswer } from './dip-refusals'
 import { DipWarnings, warningsOf } from './dip-warnings'
+import { EvidencePanel, type Noted } from './evidence-panel'
 import { ReasonChoice } from './reason-choice'
 import { Sheet } from './sheet'
 import { SheetProblem } from './sheet-problem'
@@ -63,6 +64,7 @@ export type DipSheetProps = {
   onClose: () => void
   onCancel: () => void
   onLogged: (logged: Logged) => void
+  onNoted: (noted: Noted) => void
   /** A short word for everybody: 'You will be called …'. */
   onSaid: (words: string) => void
 }
@@ -70,10 +72,23 @@ export type DipSheetProps = {
 type Trouble = { title: string; detail?: string | undefined; mayRetry: boolean }
 
 /** The dip sheet: one tree or a run. Warns, names what is unusual, and logs. */
-export function DipSheet({ queue, draft, trees, now, memberName, onChange, onTrees, onClose, onCancel, onLogged, onSaid }: DipSheetProps) {
+export function DipSheet({
+  queue,
+  draft,
+  trees,
+  now,
+  memberName,
+  onChange,
+  onTrees,
+  onClose,
+  onCancel,
+  onLogged,
+  onNoted,
+  onSaid,
+}: DipSheetProps) {
   const { timeZone } = queue.foundry
   const { temp: tempUnit } = useUnits()
-  const [panel, setPanel] = useState<'sheet' | 'choices' | 'places'>('sheet')
+  const [panel, setPanel] = useState<'sheet' | 'choices' | 'places' | 'evidence'>('sheet')
   const [wantsReason, setWantsReason] = useState(false)
   const [isSending, setIsSending] = useState(false)
   const [trouble, setTrouble] = useState<Trouble | null>(null)
@@ -168,7 +183,7 @@ export function DipSheet({ queue, draft, trees, now, memberName, onChange, onTre
     setRefusals(left)
   }
 
-  const sayForAll = async (post: (tree: QueueTree) => ReturnType<typeof postWatch>, words: string) => {
+  const sayForAll = async (post: (tree: QueueTree) => Promise<Outcome<unknown>>, words: string) => {
     if (inFlight.current) return
     inFlight.current = true
     setIsSending(true)
@@ -211,9 +226,17 @@ export function DipSheet({ queue, draft, trees, now, memberName, onChange, onTre
           </Key>
         ) : (
           <>
-            <Key size={80} onPress={panel === 'places' ? () => setPanel('choices') : onCancel}>
-              {panel === 'places' ? 'Back' : 'Cancel'}
+            <Key
+              size={80}
+              onPress={panel === 'places' ? () => setPanel('choices') : panel === 'evidence' ? () => setPanel('sheet') : onCancel}
+            >
+              {panel === 'places' || panel === 'evidence' ? 'Back' : 'Cancel'}
             </Key>
+            {trees.length === 1 && panel !== 'places' && panel !== 'evidence' && !isSettling && (
+              <Key size={80} icon="hand" className="sheet-evidence" onPress={() => setPanel('evidence')}>
+                How dry?
+              </Key>
+            )}
             <span className="sheet-who">
               Who
               <b title={memberName}>
@@ -225,7 +248,7 @@ export function DipSheet({ queue, draft, trees, now, memberName, onChange, onTre
               size={80}
               tone={withReason.length > 0 ? 'early' : 'go'}
               className="sheet-go"
-              isOff={isSending || refusals.length > 0 || panel === 'places'}
+              isOff={isSending || refusals.length > 0 || panel === 'places' || panel === 'evidence'}
               onPress={() => void send()}
             >
               {refusals.length > 0 ? 'Answer first, then log the rest' : goWords}
@@ -243,6 +266,8 @@ export function DipSheet({ queue, draft, trees, now, memberName, onChange, onTre
             setPanel('choices')
           }}
         />
+      ) : panel === 'evidence' && first ? (
+        <EvidencePanel tree={first} draft={draft} now={now} timeZone={timeZone} onChange={onChange} onNoted={onNoted} />
       ) : isSettling ? (
         <>
           <DipRefusals refusals={refusals} now={now} timeZone={timeZone} onAnswer={answerRefusal} />
@@ -280,15 +305,20 @@ export function DipSheet({ queue, draft, trees, now, memberName, onChange, onTre
                   >
                     Wait, call me when dry
                   </Key>
-                  <Key
-                    size={64}
-                    icon="hand"
-                    onPress={() =>
-                      void sayForAll((tree) => postTouch(tree, 'dry'), `Noted: ${early.map((tree) => tree.tag).join(', ')} feels dry.`)
-                    }
-                  >
-                    Feels dry: say so
-                  </Key>
+                  {trees.length > 1 && (
+                    <Key
+                      size={64}
+                      icon="hand"
+                      onPress={() =>
+                        void sayForAll(
+                          (tree) => postTouch(tree, 'dry'),
+                          `Noted: ${early.map((tree) => tree.tag).join(', ')} felt dry where they dry last.`,
+                        )
+                      }
+                    >
+                      All felt dry: say so
+                    </Key>
+                  )}
                 </div>
               )}
               {wantsReason && ask && (

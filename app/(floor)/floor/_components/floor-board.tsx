@@ -311,6 +311,11 @@ export function FloorBoard({ initial, serverNow, member, setUp, neededRole }: Fl
               say({ kind: 'logged', at: now, logged })
               void refresh()
             }}
+            onNoted={(noted) => {
+              closeDip(false)
+              say({ kind: 'noted', at: now, noted })
+              void refresh()
+            }}
             onSaid={(words) => {
               closeDip(false)
               say({ kind: 'note', at: now, words })

@@ -8,13 +8,18 @@ import { formatClock } from '@/lib/format/local-time'
 import { NOT_CALIBRATED, timePairWords } from '@/lib/format/time-pair'
 import { newOperationId } from '../_queries/operation-id'
 import { refusalWords } from '../_queries/request-json'
-import { postUndo } from '../_queries/writes'
+import { postUndo, postWithdrawal } from '../_queries/writes'
 import type { Logged } from './dip-sheet'
+import type { Noted } from './evidence-panel'
 
 const UNDO_S = 20
 
-/** A word at the foot of the floor: a logged run that may be taken back, or a short note. */
-export type FootWord = { id: number; at: number } & ({ kind: 'logged'; logged: Logged } | { kind: 'note'; words: string })
+/** A word at the foot of the floor: a logged run that may be taken back, evidence that may be withdrawn, or a short note. */
+export type FootWord = { id: number; at: number } & (
+  | { kind: 'logged'; logged: Logged }
+  | { kind: 'noted'; noted: Noted }
+  | { kind: 'note'; words: string }
+)
 
 export type UndoBarProps = { word: FootWord; now: number; timeZone: string; onGone: () => void; onTakenBack: (words: string) => void }
 
@@ -39,20 +44,27 @@ export function UndoBar({ word, now, timeZone, onGone, onTakenBack }: UndoBarPro
     if (left === 0) gone()
   }, [left])
 
-  const undo = async (logged: Logged) => {
+  const undo = async (what: { logged: Logged } | { noted: Noted }) => {
     if (inFlight.current) return
     inFlight.current = true
     setIsSending(true)
     setTrouble(null)
     operationId.current ??= newOperationId()
-    const outcome = await postUndo(
-      operationId.current,
-      logged.answer.coats.map((coat) => coat.coatId),
-    )
+    const outcome =
+      'noted' in what
+        ? await postWithdrawal(what.noted.evidenceId, operationId.current)
+        : await postUndo(
+            operationId.current,
+            what.logged.answer.coats.map((coat) => coat.coatId),
+          )
     inFlight.current = false
     setIsSending(false)
     if (outcome.kind === 'done') {
-      onTakenBack(`Taken back: ${dipsWord(logged.answer.coats.length)}, ${tagsOf(logged)}. The coats below dry on.`)
+      onTakenBack(
+        'noted' in what
+          ? 'Withdrawn: the time stands as it did before.'
+          : `Taken back: ${dipsWord(what.logged.answer.coats.length)}, ${tagsOf(what.logged)}. The coats below dry on.`,
+      )
       return
     }
     if (outcome.kind === 'refused') operationId.current = null
@@ -77,19 +89,19 @@ export function UndoBar({ word, now, timeZone, onGone, onTakenBack }: UndoBarPro
     )
   }
 
-  const { logged } = word
+  const isNoted = word.kind === 'noted'
   return (
     // oxlint-disable-next-line jsx-a11y/prefer-tag-over-role -- an output element takes no blocks
     <div className="undo" role="status">
       <Icon name={trouble ? 'warning' : 'check'} className={trouble ? 'undo-trouble' : ''} />
       <div>
         <b>
-          {dipsWord(logged.answer.coats.length)} logged at {formatClock(word.at, timeZone)}
+          {isNoted ? 'Noted' : `${dipsWord(word.logged.answer.coats.length)} logged`} at {formatClock(word.at, timeZone)}
         </b>
-        <span>{trouble ?? loggedSentence(logged, now, timeZone)}</span>
+        <span>{trouble ?? (isNoted ? word.noted.words : loggedSentence(word.logged, now, timeZone))}</span>
       </div>
-      <Key size={64} icon="undo" isOff={isSending} onPress={() => void undo(logged)} aria-label="Undo">
-        {isSending ? 'Taking back' : `Undo, ${left} s`}
+      <Key size={64} icon="undo" isOff={isSending} onPress={() => void undo(word)} aria-label={isNoted ? 'Withdraw' : 'Undo'}>
+        {isSending ? 'Taking back' : `${isNoted ? 'Withdraw' : 'Undo'}, ${left} s`}
       </Key>
       <Key size={64} className="undo-done" onPress={onGone}>
         Done

@@ -1,5 +1,6 @@
 import type { DipRefusal, DipRunAnswer } from '@/lib/coats/dip-contract'
 import type { Queue } from '@/lib/queue/contract'
+import type { EvidenceAnswer } from '@/lib/trees/evidence-input'
 
 // The doors' whole contracts are held where the answers are made, and by tests. Here it is only told apart from the page of a proxy
 // or half an answer: reading contracts in full would be a quarter of the floor's script, and work for the tablet at every poll.
@@ -27,6 +28,10 @@ export function isDipRunAnswer(value: unknown): value is DipRunAnswer {
   const isCoat = (coat: unknown): coat is DipRunAnswer['coats'][number] =>
     isRecord(coat) && isText(coat['coatId']) && isText(coat['tag']) && isNumber(coat['number'])
   return isRecord(value) && isText(value['operationId']) && isListOf(value['coats'], isCoat)
+}
+
+export function isEvidenceAnswer(value: unknown): value is EvidenceAnswer {
+  return isRecord(value) && isText(value['evidenceId']) && isText(value['treeId'])
 }
 
 export function areRefusals(value: unknown): value is DipRefusal[] {

@@ -1,10 +1,10 @@
 import type { DipRefusal, DipRun } from '@/lib/coats/dip-contract'
-import type { Verdict } from '@/lib/coats/vocabulary'
+import type { Spot, Verdict, WeighingMoment } from '@/lib/coats/vocabulary'
 import type { FanState } from '@/lib/drying/types'
 import type { QueueTree } from '@/lib/queue/contract'
 import { newOperationId } from './operation-id'
 import { postJson } from './request-json'
-import { areRefusals, isDipRunAnswer } from './shapes'
+import { areRefusals, isDipRunAnswer, isEvidenceAnswer } from './shapes'
 
 const anyAnswer = (_json: unknown): _json is unknown => true
 
@@ -20,13 +20,22 @@ export const postFans = (placeId: string, operationId: string, state: FanState) 
 
 export const postWatch = (treeId: string) => postJson(`/api/v1/trees/${treeId}/watch`, { operationId: newOperationId() }, anyAnswer)
 
+/** One piece of evidence without its operation id. */
+export type EvidenceBody = { coatNumber: number } & (
+  | { kind: 'touch' | 'colour'; spot: Spot; verdict: Verdict }
+  | { kind: 'weighing'; moment: WeighingMoment; massKg: number }
+  | { kind: 'surface temperature'; spot: Spot; surfaceTempC: number }
+)
+
+export const postEvidence = (treeId: string, operationId: string, body: EvidenceBody) =>
+  postJson(`/api/v1/trees/${treeId}/evidence`, { operationId, ...body }, isEvidenceAnswer)
+
 /** How the newest coat feels at the spot that dries last. */
 export const postTouch = ({ id, coatsOn, spots }: QueueTree, verdict: Verdict) =>
-  postJson(
-    `/api/v1/trees/${id}/evidence`,
-    { operationId: newOperationId(), coatNumber: coatsOn, kind: 'touch', spot: spots.at(-1) ?? 'outside', verdict },
-    anyAnswer,
-  )
+  postEvidence(id, newOperationId(), { coatNumber: coatsOn, kind: 'touch', spot: spots.at(-1) ?? 'outside', verdict })
+
+export const postWithdrawal = (evidenceId: string, operationId: string) =>
+  postJson(`/api/v1/evidence/${evidenceId}/withdrawal`, { operationId }, anyAnswer)
 
 export const postHold = (treeId: string, operationId: string, reason: string) =>
   postJson(`/api/v1/trees/${treeId}/holds`, { operationId, reason }, anyAnswer)

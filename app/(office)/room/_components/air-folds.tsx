@@ -13,7 +13,7 @@ function scaled(figure: Figure | null, to: (value: number) => number): Figure | 
   return figure && { likely: to(figure.likely), low: to(figure.low), high: to(figure.high) }
 }
 
-/** The room's air over two days: temperature and humidity with the coats in progress, then the pull of it. */
+/** The room's air over the drawn time: temperature and humidity with the coats in progress, then the pull of it. */
 export function AirFolds({ page, room, frame, tempUnit }: { page: RoomPage; room: QueueRoom; frame: Frame; tempUnit: TempUnit }) {
   const { points, band, bars, now } = page
   const isF = tempUnit === 'degF'
@@ -50,6 +50,7 @@ export function AirFolds({ page, room, frame, tempUnit }: { page: RoomPage; room
           notes={[`band ${wholeNumber(tempBand.low)} to ${wholeNumber(tempBand.high)}`, ...staleWords]}
           tone="wax"
           format={oneDecimal}
+          hasEnds
         />
         <FigureChart
           frame={frame}
@@ -63,8 +64,9 @@ export function AirFolds({ page, room, frame, tempUnit }: { page: RoomPage; room
           notes={[`band ${wholeNumber(band.lowRhPct)} to ${wholeNumber(band.highRhPct)}`, ...staleWords]}
           tone="wet"
           format={wholeNumber}
+          hasEnds
         />
-        <CoatBars frame={frame} bars={bars} />
+        {frame.range === '48h' && <CoatBars frame={frame} bars={bars} />}
         <div className="figure-chart">
           <TimeFoot frame={frame} />
         </div>
@@ -80,20 +82,21 @@ export function AirFolds({ page, room, frame, tempUnit }: { page: RoomPage; room
         <FigureChart
           frame={frame}
           points={points}
-          name="Wet-bulb gap"
+          name="Drying pull"
           valueOf={(point) => gapAsShown(point.wetBulbGapK)}
           band={null}
           step={isF ? 4 : 2}
           value={room.wetBulbGapK === null ? '–' : oneDecimal(isF ? room.wetBulbGapK * 1.8 : room.wetBulbGapK)}
           unit={kelvinSign}
-          notes={
-            newest?.dewPointC !== null && newest?.dewPointC !== undefined && newest.vaporPressureDeficitPa !== null
+          notes={[
+            'air less wet bulb',
+            ...(newest?.dewPointC !== null && newest?.dewPointC !== undefined && newest.vaporPressureDeficitPa !== null
               ? [
                   `dew point ${formatTemperature(newest.dewPointC, tempUnit)}`,
                   `vapour-pressure deficit ${oneDecimal(newest.vaporPressureDeficitPa / 100)}\u00A0hPa`,
                 ]
-              : []
-          }
+              : []),
+          ]}
           tone="ink"
           format={oneDecimal}
         />

@@ -1,9 +1,17 @@
 import type { ReactNode } from 'react'
 import { formatClock, formatDate, formatWeekday } from '@/lib/format/local-time'
+import { rangeTicks, type RangeTick, type RoomRange } from '@/lib/room/range'
 import { hourTicks } from '@/lib/trees/curve-series'
 
-/** The two days that every drawing of the page lies on. */
-export type Frame = { from: number; to: number; now: number; timeZone: string; closed: readonly { from: number; to: number }[] }
+/** The time that every drawing of the page lies on. */
+export type Frame = {
+  range: RoomRange
+  from: number
+  to: number
+  now: number
+  timeZone: string
+  closed: readonly { from: number; to: number }[]
+}
 
 /** Where an instant lies, from 0 at the left end to 1 at the right. */
 export const shareOf = (frame: Frame, at: number): number => Math.min(1, Math.max(0, (at - frame.from) / (frame.to - frame.from)))
@@ -55,25 +63,35 @@ export function TimeDrawing({
   )
 }
 
-/** Hours at the foot of a drawing; midnight says its day. */
+/** Hours at the foot of a drawing, and midnight by its day; days of a fortnight, months of a year. */
 export function TimeFoot({ frame }: { frame: Frame }) {
-  const ticks = hourTicks(frame.from, frame.to, frame.timeZone, 8)
   return (
     <div className="time-foot" aria-hidden="true">
-      {ticks.map((at) => {
-        const clock = formatClock(at, frame.timeZone)
+      {ticksOf(frame).map(({ at, words, isMajor, day }) => {
         const share = shareOf(frame, at)
         return (
           <span
             key={at}
             style={{ left: leftOf(frame, at) }}
-            data-hour={clock === '00:00' || clock === '12:00' ? 'major' : 'minor'}
+            data-hour={isMajor ? 'major' : 'minor'}
             data-end={share < 0.03 ? 'left' : share > 0.97 ? 'right' : undefined}
           >
-            {clock === '00:00' ? <b title={formatDate(at, frame.timeZone)}>{formatWeekday(at, frame.timeZone)}</b> : clock}
+            {day === undefined ? words : <b title={day}>{words}</b>}
           </span>
         )
       })}
     </div>
   )
+}
+
+function ticksOf(frame: Frame): (RangeTick & { day?: string })[] {
+  const { range, from, to, timeZone } = frame
+  // A first midnight at the very edge would stand in the words of the second.
+  if (range === '14d') return rangeTicks(range, { from, to }, timeZone).filter(({ at }) => shareOf(frame, at) > 0.03)
+  if (range === '1y') return rangeTicks(range, { from, to }, timeZone)
+  return hourTicks(from, to, timeZone, 8).map((at) => {
+    const clock = formatClock(at, timeZone)
+    if (clock !== '00:00') return { at, words: clock, isMajor: clock === '12:00' }
+    return { at, words: formatWeekday(at, timeZone), isMajor: true, day: formatDate(at, timeZone) }
+  })
 }

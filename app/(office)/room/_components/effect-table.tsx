@@ -4,7 +4,7 @@ import { fittedTagHeight, Tag } from '@/app/_components/tag'
 import { TimePair } from '@/app/_components/time-pair'
 import { TreeSection } from '@/app/(office)/_components/tree-section'
 import type { EffectRow } from '@/lib/room/room-contract'
-import { roughDuration } from '@/lib/room/room-words'
+import { roughDuration } from '@/lib/format/duration'
 
 const HOUR_MS = 3_600_000
 /** Under this nobody would notice. */

@@ -1,4 +1,5 @@
 import { TimeDrawing, xOf, type Frame } from '@/app/(office)/room/_components/chart-frame'
+import { RANGE_SPANS } from '@/lib/room/range'
 import { evenBounds } from '@/lib/trees/curve-series'
 import { chartLines, type ChartPoint, type Figure, type RoomPoint } from '@/lib/room/series'
 
@@ -20,18 +21,37 @@ export type FigureChartProps = {
   notes: readonly string[]
   tone: 'wax' | 'wet' | 'ink'
   format: (value: number) => string
+  /** A day's bounds are its least and its most, and no doubt about its mean. */
+  hasEnds?: boolean
 }
 
-/** One figure of the room over two days: measured, then dashed within its band; its value at the right end. */
-export function FigureChart({ frame, points, name, valueOf, band, step, value, unit, notes, tone, format }: FigureChartProps) {
+/** One figure of the room over the drawn time: measured, each day from its least to its most, then dashed within its band; its value at the right end. */
+export function FigureChart({
+  frame,
+  points,
+  name,
+  valueOf,
+  band,
+  step,
+  value,
+  unit,
+  notes,
+  tone,
+  format,
+  hasEnds = false,
+}: FigureChartProps) {
   const lines = chartLines(points, valueOf)
   const all = lines.flatMap((line) => line.points.flatMap((point) => [point.low, point.high]))
   const [low, high] = evenBounds([...all, ...(band ? [band.low, band.high] : [])], step)
   const y = (figure: number) => Number((6 + (1 - (figure - low) / (high - low || 1)) * (HEIGHT - 12)).toFixed(1))
   const path = (line: readonly ChartPoint[], of: (point: ChartPoint) => number) =>
     line.map((point) => `${xOf(frame, point.at)} ${y(of(point))}`).join('L')
-  const measured = lines.filter((line) => !line.isForecast).flatMap((line) => line.points.map((point) => point.likely))
-  const range = measured.length === 0 ? 'not read' : `${format(Math.min(...measured))} to ${format(Math.max(...measured))} in the last day`
+  const ofDays = hasEnds && frame.range === '1y'
+  const measured = lines
+    .filter((line) => !line.isForecast)
+    .flatMap((line) => line.points.flatMap((point) => (ofDays ? [point.low, point.high] : [point.likely])))
+  const ends = `${format(Math.min(...measured))} to ${format(Math.max(...measured))}`
+  const range = measured.length === 0 ? 'not read' : `${ends} ${RANGE_SPANS[frame.range]}`
   return (
     <div className="figure-chart">
       <TimeDrawing frame={frame} height={HEIGHT} label={`${name}: ${range}.`}>

@@ -1,5 +1,6 @@
 import { TimeDrawing, TimeFoot, leftOf, shareOf, xOf, type Frame } from '@/app/(office)/room/_components/chart-frame'
 import { wholeNumber } from '@/lib/format/units'
+import { RANGE_NAMES } from '@/lib/room/range'
 import { linedStretches, ribbonRuns } from '@/lib/room/ribbon'
 import { chartLines, type ChartPoint, type RoomPoint } from '@/lib/room/series'
 
@@ -9,10 +10,11 @@ const MIDDLE = HEIGHT / 2
 const HALF = 60
 const line = (speed: number) => Math.min(MIDDLE, speed * HALF)
 
-const HOUR_MS = 3_600_000
 /** A word needs this much of the ribbon on a desk, and this much on a phone. */
-const WORD_HOURS = 4.5
-const PHONE_WORD_HOURS = 11
+const WORD_SHARE = 0.094
+const PHONE_WORD_SHARE = 0.23
+/** A shorter stretch takes the word of its neighbour. */
+const SHORTEST_SHARE = 0.0625
 
 /** The closed shape of the ribbon between the line above the middle and its mirror below. */
 function shape(frame: Frame, points: readonly ChartPoint[], of: (point: ChartPoint) => number): string {
@@ -25,10 +27,11 @@ function edge(frame: Frame, points: readonly ChartPoint[], side: 1 | -1): string
   return `M${points.map((point) => `${xOf(frame, point.at)} ${(MIDDLE + side * line(point.likely)).toFixed(1)}`).join('L')}`
 }
 
-/** Slow and fast drying over two days: as thick as the air is fast, between the lines of the recipe's room. */
+/** Slow and fast drying over the drawn time: as thick as the air is fast, between the lines of the recipe's room. */
 export function Ribbon({ frame, points, nowPct }: { frame: Frame; points: readonly RoomPoint[]; nowPct: number | null }) {
   const lines = chartLines(points, (point) => point.speed)
-  const runs = ribbonRuns(points, frame.now)
+  const spanMs = frame.to - frame.from
+  const runs = ribbonRuns(points, frame.now, SHORTEST_SHARE * spanMs)
   const slow = linedStretches(points, frame.now)
   const words = runs.map((run) => `${run.word} ${wholeNumber(run.speed * 100)} %${run.isForecast ? ' forecast' : ''}`).join(', ')
   return (
@@ -42,15 +45,15 @@ export function Ribbon({ frame, points, nowPct }: { frame: Frame; points: readon
       <TimeDrawing
         frame={frame}
         height={HEIGHT}
-        label={`Drying speed over two days against the recipe’s room: ${words || 'not known'}.`}
+        label={`Drying speed over ${RANGE_NAMES[frame.range]} against the recipe’s room: ${words || 'not known'}.`}
         words={
           <div aria-hidden="true">
             {runs
-              .filter((run) => run.to - run.from >= WORD_HOURS * HOUR_MS)
+              .filter((run) => run.to - run.from >= WORD_SHARE * spanMs)
               .map((run) => (
                 <span
                   key={run.from}
-                  className={`ribbon-word ${run.isForecast ? 'is-forecast' : ''} ${run.to - run.from < PHONE_WORD_HOURS * HOUR_MS ? 'not-phone' : ''}`}
+                  className={`ribbon-word ${run.isForecast ? 'is-forecast' : ''} ${run.to - run.from < PHONE_WORD_SHARE * spanMs ? 'not-phone' : ''}`}
                   style={{ left: leftOf(frame, (Math.max(frame.from, run.from) + Math.min(frame.to, run.to)) / 2) }}
                 >
                   {run.word} <small>{wholeNumber(run.speed * 100)} %</small>

@@ -1,4 +1,5 @@
 import type { Metadata } from 'next'
+import { KeyLink } from '@/app/_components/key'
 import { FoundryNav } from '@/app/(office)/_components/foundry-nav'
 import { SensorRows } from '@/app/(office)/settings/sensors/_components/sensor-rows'
 import '@/app/(office)/settings/settings.css'
@@ -17,10 +18,11 @@ export default async function SensorsPage() {
     <>
       <FoundryNav role={member.role} />
       <div className="page-head">
-        <div>
+        <div className="min-w-0 grow">
           <h1>Sensors</h1>
           <p>What reads the air of the room. A logger sends with a token of its own.</p>
         </div>
+        <KeyLink href="/room/upload">Readings from a file</KeyLink>
       </div>
       <SensorRows sensors={sensors} reading={{ now: systemClock.now(), timeZone, units: member.units }} hasOwnPages />
     </>

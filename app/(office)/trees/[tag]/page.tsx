@@ -22,7 +22,7 @@ import { History } from '@/app/(office)/trees/[tag]/_components/history'
 import { Holds } from '@/app/(office)/trees/[tag]/_components/holds'
 import { IntakeForm } from '@/app/(office)/trees/[tag]/_components/intake-form'
 import { IntakeLines } from '@/app/(office)/trees/[tag]/_components/intake-lines'
-import { LookKeys } from '@/app/(office)/trees/[tag]/_components/look-keys'
+import { EvidenceKeys } from '@/app/(office)/trees/[tag]/_components/evidence-keys'
 import { LookOvers } from '@/app/(office)/trees/[tag]/_components/look-overs'
 import { Outlook } from '@/app/(office)/trees/[tag]/_components/outlook'
 import { PhonePair } from '@/app/(office)/trees/[tag]/_components/phone-pair'
@@ -32,6 +32,8 @@ import { TreeActs } from '@/app/(office)/trees/[tag]/_components/tree-acts'
 import { pourVerdict } from '@/lib/burnout/pour-verdict'
 import { systemClock } from '@/lib/core/clock'
 import { stateTone } from '@/lib/format/state-words'
+import { WhyPlate } from '@/app/(office)/trees/[tag]/_components/why-plate'
+import '@/app/(office)/trees/[tag]/evidence.css'
 import { formatDate, formatDay, formatMoment } from '@/lib/format/local-time'
 import { typedWords } from '@/lib/format/typed-units'
 import { formatSeconds, formatShare } from '@/lib/format/units'
@@ -74,7 +76,7 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
   const isCoatOpen = tree.newestCoat !== null && !hasLeft && tree.state !== 'ready for burnout'
   const openHold = holds.find((hold) => hold.liftedAt === null) ?? null
   const canDo = (act: Parameters<typeof may>[1]) => may(member.role, act)
-  const mayLook = isCoatOpen && canDo('evidence')
+  const mayNote = (isCoatOpen || (tree.newestCoat === null && !hasLeft)) && canDo('evidence')
   const mayWatch =
     canDo('subscribe') && (['wet', 'drying', 'nearly dry', 'unknown', 'last coat on'].includes(tree.state) || detail.isWatched) && !hasLeft
   // Without a reading nobody can tell: then no figure of the clock is shown as if it held.
@@ -174,15 +176,9 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
               <TellMeKey treeId={tree.id} isWatched={detail.isWatched} />
             </div>
           )}
-          {mayLook && (
+          {mayNote && (
             <div className="verdict-look">
-              <LookKeys
-                key={tree.newestCoat?.id}
-                treeId={tree.id}
-                coatNumber={tree.coatsOn}
-                spot={tree.spots.at(-1) ?? 'outside'}
-                said={said}
-              />
+              <EvidenceKeys key={`${tree.newestCoat?.id} ${tree.spots.join()}`} tree={tree} said={said} {...moment} />
             </div>
           )}
         </div>
@@ -279,6 +275,16 @@ export default async function TreePage({ params }: PageProps<'/trees/[tag]'>) {
                 />
               )}
             </Plate>
+          )}
+          {detail.why !== null && newestRow?.on && !hasLeft && (
+            <WhyPlate
+              why={detail.why}
+              evidence={newestRow.on.evidence}
+              viewer={member}
+              isUncalibrated={tree.isUncalibrated}
+              units={member.units}
+              {...moment}
+            />
           )}
           <Plate title="About the tree">
             <About detail={detail} massUnit={member.units.mass} timeZone={timeZone} now={now} />

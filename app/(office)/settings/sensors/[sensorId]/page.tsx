@@ -23,6 +23,9 @@ import { requireMemberPage } from '@/lib/server/auth'
 
 export const metadata: Metadata = { title: 'Sensor' }
 
+/** The others stand in a fold. */
+const FIRST_MARKED = 10
+
 type When = (at: number) => string
 
 /** One sensor: what is to be looked at, its offsets, its devices, and what it sent that does not count. */
@@ -43,7 +46,7 @@ export default async function SensorPage({ params }: PageProps<'/settings/sensor
       <FoundryNav role={member.role} />
       <KeepFresh />
       <div className="page-head">
-        <div>
+        <div className="sensor-page-head">
           <h1>
             {sensor.name} {sensor.isDemo && <DemoMark />}
           </h1>
@@ -68,7 +71,7 @@ export default async function SensorPage({ params }: PageProps<'/settings/sensor
           <p>
             Hang the sensor for some hours beside a reference that you trust, out of draughts; or shut it into a box with a jar of wet table
             salt, over which the air comes to about 75 % RH. Enter what the reference says less what the sensor shows. What the device said
-            is kept. Common practice, no source.
+            is kept. Common practice.
           </p>
           {isInUse && <OffsetForm sensorId={sensor.id} tempUnit={temp} />}
           <OffsetLines offsets={offsets} tempUnit={temp} when={when} />
@@ -140,25 +143,36 @@ function MarkedLines({
       </p>
     )
   }
+  const [first, rest] = [marked.slice(0, FIRST_MARKED), marked.slice(FIRST_MARKED)]
   return (
     <>
-      <p>
-        In the last 24 h: {count}. {marked.length === 50 ? 'The newest 50:' : ''}
-      </p>
-      <ul className="marked-readings">
-        {marked.map(({ measuredAt, reason, airTempC, relHumidityPct, source }) => (
-          <li key={`${measuredAt} ${reason}`}>
-            <span className="num">{when(measuredAt)}</span>
-            <span className="num">
-              {formatTemperature(airTempC, tempUnit)}, {oneDecimal(relHumidityPct)} % RH
-            </span>
-            <span>
-              {REASON_SENTENCES[reason]}
-              {source === 'typed' && ' Typed.'}
-            </span>
-          </li>
-        ))}
-      </ul>
+      <p>In the last 24 h: {count}.</p>
+      <MarkedList marked={first} tempUnit={tempUnit} when={when} />
+      {rest.length > 0 && (
+        <details>
+          <summary>{rest.length} before these</summary>
+          <MarkedList marked={rest} tempUnit={tempUnit} when={when} />
+        </details>
+      )}
     </>
+  )
+}
+
+function MarkedList({ marked, tempUnit, when }: { marked: readonly MarkedReading[]; tempUnit: TempUnit; when: When }) {
+  return (
+    <ul className="marked-readings">
+      {marked.map(({ measuredAt, reason, airTempC, relHumidityPct, source }) => (
+        <li key={`${measuredAt} ${reason}`}>
+          <span className="num">{when(measuredAt)}</span>
+          <span className="num">
+            {formatTemperature(airTempC, tempUnit)}, {oneDecimal(relHumidityPct)} % RH
+          </span>
+          <span>
+            {REASON_SENTENCES[reason]}
+            {source === 'typed' && ' Typed.'}
+          </span>
+        </li>
+      ))}
+    </ul>
   )
 }

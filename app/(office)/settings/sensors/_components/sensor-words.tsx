@@ -55,7 +55,7 @@ export function SensorWords({ sensor, reading: { now, units } }: { sensor: Senso
       )}
       <div>
         <dt>Serves</dt>
-        <dd>
+        <dd className="sensor-places">
           {places.length === 0
             ? 'no place: nothing dries by it'
             : places.map((name, index) => (

@@ -1,11 +1,13 @@
 'use client'
 
 import { keepPreviousData, useQuery } from '@tanstack/react-query'
-import { useEffect, useId, useState } from 'react'
+import { useState } from 'react'
 import { Icon } from '@/app/_components/icons'
 import { Key } from '@/app/_components/key'
+import { DialKeys } from '@/app/(office)/room/_components/dial-keys'
+import { useResting } from '@/app/(office)/room/_components/use-resting'
 import { estimateAnswer, type EstimateAnswer } from '@/lib/drying/estimate-contract'
-import { UNIT_SIGNS, formatKelvin, oneDecimal, wholeNumber, type TempUnit } from '@/lib/format/units'
+import { UNIT_SIGNS, formatKelvin, formatTemperature, oneDecimal, wholeNumber, type TempUnit } from '@/lib/format/units'
 import { pullWord } from '@/lib/room/drying-pull'
 import {
   AIR_DIAL,
@@ -13,26 +15,20 @@ import {
   flagWords,
   HUMIDITY_DIAL,
   NEED_DIAL,
-  onDial,
   shownTemp,
-  stepped,
   tempDial,
   whatIfBody,
   whatIfPair,
-  type Dial,
   type WhatIf as Choice,
   type WhatIfRoom,
-} from '@/lib/room/what-if'
+} from '@/lib/room/coat-what-if'
 
-export type WhatIfProps = {
+export type CoatWhatIfProps = {
   start: Choice
   room: WhatIfRoom
   tempUnit: TempUnit
-  places: { name: string; airSpeedMps: number }[]
+  places: readonly { name: string; airSpeedMps: number }[]
 }
-
-/** A turned dial asks once it rests. */
-const REST_MS = 200
 
 async function ask(body: Record<string, unknown>): Promise<EstimateAnswer> {
   const response = await fetch('/api/v1/drying/estimate', {
@@ -45,11 +41,11 @@ async function ask(body: Record<string, unknown>): Promise<EstimateAnswer> {
 }
 
 /** How fast a coat would dry in another air: every dial goes by keys, by arrows or by drag. Nothing is changed by it. */
-export function WhatIf({ start, room, tempUnit, places }: WhatIfProps) {
+export function CoatWhatIf({ start, room, tempUnit, places }: CoatWhatIfProps) {
   const [choice, setChoice] = useState(start)
   const resting = useResting(choice)
   const { data, error, isFetching } = useQuery({
-    queryKey: ['what-if', resting, room],
+    queryKey: ['coat what-if', resting, room],
     queryFn: async () => ({ answer: await ask(whatIfBody(resting, room, WHEN)), choice: resting }),
     placeholderData: keepPreviousData,
     staleTime: Infinity,
@@ -87,6 +83,7 @@ export function WhatIf({ start, room, tempUnit, places }: WhatIfProps) {
           dial={NEED_DIAL}
           value={choice.referenceHours}
           words={`${oneDecimal(choice.referenceHours)} reference hours`}
+          hint={`How long this coat takes in the recipe’s room: ${formatTemperature(21, tempUnit)}, 50 % RH, 1.0 m/s. The recipe says it of each coat.`}
           onChange={(referenceHours) => set({ referenceHours })}
         />
         <fieldset className="what-if-coat">
@@ -113,15 +110,6 @@ export function WhatIf({ start, room, tempUnit, places }: WhatIfProps) {
 /** Lengths of time are wanted, so any moment does; the same one keeps the answer the same for the same dials. */
 const WHEN = Date.UTC(2026, 0, 1, 12)
 
-function useResting<Value>(value: Value): Value {
-  const [resting, setResting] = useState(value)
-  useEffect(() => {
-    const timer = setTimeout(() => setResting(value), REST_MS)
-    return () => clearTimeout(timer)
-  }, [value])
-  return resting
-}
-
 function Answer({ answer, tempUnit }: { answer: EstimateAnswer; tempUnit: TempUnit }) {
   const pair = whatIfPair(answer, WHEN)
   const speed = answer.points[0]?.speed ?? 0
@@ -135,7 +123,7 @@ function Answer({ answer, tempUnit }: { answer: EstimateAnswer; tempUnit: TempUn
       </p>
       <p>
         {pullWord({ roomFactor: speed, wetBulbGapK: gapK })}: <span className="num">{wholeNumber(speed * 100)} %</span> of recipe speed,{' '}
-        wet-bulb gap {formatKelvin(gapK, tempUnit)}
+        drying pull {formatKelvin(gapK, tempUnit)}
       </p>
       {flags.length === 0 ? (
         <p className="form-done">
@@ -153,47 +141,5 @@ function Answer({ answer, tempUnit }: { answer: EstimateAnswer; tempUnit: TempUn
         </ul>
       )}
     </>
-  )
-}
-
-type DialKeysProps = {
-  name: string
-  dial: Dial
-  value: number
-  words: string
-  hint?: string
-  onChange: (value: number) => void
-}
-
-function DialKeys({ name, dial, value, words, hint, onChange }: DialKeysProps) {
-  const id = useId()
-  return (
-    <div className="dial">
-      <label htmlFor={id} className="label">
-        {name}
-      </label>
-      <output className="num dial-value" htmlFor={id}>
-        {words}
-      </output>
-      <div className="dial-row">
-        <Key aria-label={`${name}: less`} onPress={() => onChange(stepped(value, dial, -1))} icon="minus" deafMs={0}>
-          {null}
-        </Key>
-        <input
-          id={id}
-          type="range"
-          min={dial.min}
-          max={dial.max}
-          step={dial.step}
-          value={onDial(value, dial)}
-          aria-valuetext={words}
-          onChange={(event) => onChange(onDial(Number(event.target.value), dial))}
-        />
-        <Key aria-label={`${name}: more`} onPress={() => onChange(stepped(value, dial, 1))} icon="plus" deafMs={0}>
-          {null}
-        </Key>
-      </div>
-      {hint && <p className="field-hint">{hint}</p>}
-    </div>
   )
 }
