@@ -68,7 +68,8 @@ const WORK: Record<string, () => Promise<unknown>> = {
   "the worker's pass": async () => {
     globalThis.kilnwardQueueCache = undefined
     const jobs = allJobs({ clock, vapidPublicKey: process.env['VAPID_PUBLIC_KEY'] ?? '', monotonic: () => 0, random: () => 0 })
-    for (const job of jobs) if (['watch-floor', 'send-pushes', 'correct-readings'].includes(job.name)) await job.run({ clock, isStopping: () => false })
+    for (const job of jobs)
+      if (['watch-floor', 'send-pushes', 'correct-readings'].includes(job.name)) await job.run({ clock, isStopping: () => false })
   },
 }
 
