@@ -54,7 +54,9 @@ export function planChecks(shape: Shape, coats: readonly PlannedCoat[], until: n
     const trueNeed = need.likely * (coat.truth ?? 1)
     const leftAt = (at: number) => moistureRatio(parts.room.doseBetween(coat.place, start, at).likely, trueNeed, planned.moistureTarget)
     const massAt = (at: number) => massKg + addedKg - waterKg * (1 - leftAt(at))
-    const means = coat.truth === null ? null : MEANS[(index + offset) % MEANS.length]!
+    // Of the face coats every other one: they dry as the recipe says.
+    const isLeftAlone = coat.truth === null || (planned.kind === 'face' && (index + offset) % 2 === 0)
+    const means = isLeftAlone ? null : MEANS[(index + offset) % MEANS.length]!
     const atShare = (share: number) => parts.room.whenDose(coat.place, start, share * trueNeed, 'likely')
     const half = means === null ? null : whileDrying(atShare(TELLS_MOST[means]), start, end, parts.hours)
     if (means === 'weighing') {
@@ -108,7 +110,7 @@ function surfaceAt(at: number, coat: PlannedCoat, moistureLeft: number, { climat
   if (of === null) return null
   const air = demoAirAt(climate, of, at)
   const depressionK = wetBulbDepressionK(air, stationPressurePa(DEMO_SETTING.altitudeM))
-  const share = Math.min(0.85, moistureLeft / 0.45)
+  const share = Math.min(1, moistureLeft / 0.45)
   const surfaceTempC = Math.round((air.airTempC - share * depressionK) * 10) / 10
   // They read the air beside it too: the loft's logger once lost a night.
   return depressionK < 3.3 ? null : { kind: 'surface temperature', spot: 'outside', surfaceTempC, room: air }
