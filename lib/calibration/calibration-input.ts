@@ -11,7 +11,8 @@ export const acceptCoatsInput = z.object({
   follows: typedNumber('The version').pipe(z.int().min(1)),
   coats: z
     .array(z.object({ number: typedNumber('The coat').pipe(z.int().min(1).max(40)), needReferenceHours: figure }))
-    .min(1, 'Tick the coats to accept.'),
+    .min(1, 'Tick the coats to accept.')
+    .refine((coats) => new Set(coats.map(({ number }) => number)).size === coats.length, 'A coat can be accepted only once.'),
   /** Moves the trees that may be moved along to the new version. */
   isMovingTrees: z.boolean(),
 })

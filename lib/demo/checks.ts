@@ -23,8 +23,8 @@ type Parts = PlanParts & { climate: DemoClimate }
 
 const MINUTE = millisecondsInMinute
 
-/** How a coat was checked: felt, weighed, or now and then measured with a thermometer. */
-const MEANS = ['touch', 'weighing', 'touch', 'weighing', 'surface', 'weighing'] as const
+/** How a coat was checked: weighed, felt, or now and then measured with a thermometer. */
+const MEANS = ['weighing', 'touch', 'weighing', 'weighing', 'surface', 'weighing'] as const
 /** Share of its true need at which each tells most. */
 const TELLS_MOST = { touch: 0.93, weighing: 0.5, surface: 0.75 } as const
 /** Long before it is dry, nobody feels a coat. */
@@ -47,13 +47,16 @@ export function planChecks(shape: Shape, coats: readonly PlannedCoat[], until: n
   for (const [index, coat] of coats.entries()) {
     const end = coats[index + 1]?.dippedAt ?? until
     const { need, coat: planned } = demandOf(shape, coat.number)
-    const addedKg = 0.3 * shape.tree.waxMassKg ** (2 / 3) * (planned.kind === 'face' ? 0.7 : 1)
+    // A wax of one kilogram weighs about ten after as many coats.
+    const addedKg = 0.75 * shape.tree.waxMassKg * (planned.kind === 'face' ? 0.7 : 1)
     const waterKg = addedKg * (planned.stucco === 'none' ? 0.27 : 0.15) * (0.95 + 0.1 * parts.random())
     const start = coat.dippedAt + coat.drainSeconds * 1000
     const trueNeed = need.likely * (coat.truth ?? 1)
     const leftAt = (at: number) => moistureRatio(parts.room.doseBetween(coat.place, start, at).likely, trueNeed, planned.moistureTarget)
     const massAt = (at: number) => massKg + addedKg - waterKg * (1 - leftAt(at))
-    const means = coat.truth === null ? null : MEANS[(index + offset) % MEANS.length]!
+    // Of the face coats every other one: they dry as the recipe says.
+    const isLeftAlone = coat.truth === null || (planned.kind === 'face' && (index + offset) % 2 === 0)
+    const means = isLeftAlone ? null : MEANS[(index + offset) % MEANS.length]!
     const atShare = (share: number) => parts.room.whenDose(coat.place, start, share * trueNeed, 'likely')
     const half = means === null ? null : whileDrying(atShare(TELLS_MOST[means]), start, end, parts.hours)
     if (means === 'weighing') {
@@ -76,7 +79,9 @@ export function planChecks(shape: Shape, coats: readonly PlannedCoat[], until: n
       touch(half + 4 * MINUTE, 'dry', true)
       hasMistake = true
     }
-    if (means !== null) touch(whenFeltDry(atShare(1.03 + 0.08 * parts.random()), end, parts.hours), 'dry')
+    // Who has weighed it feels it once more at the bath; who goes by the touch comes back as soon as it may be dry.
+    const dryAt = means === 'touch' ? atShare(1.03 + 0.08 * parts.random()) : null
+    if (means !== null) touch(whenFeltDry(dryAt, end, parts.hours), 'dry')
     wasWeighed = means === 'weighing'
     massKg = massAt(end)
   }
@@ -105,7 +110,7 @@ function surfaceAt(at: number, coat: PlannedCoat, moistureLeft: number, { climat
   if (of === null) return null
   const air = demoAirAt(climate, of, at)
   const depressionK = wetBulbDepressionK(air, stationPressurePa(DEMO_SETTING.altitudeM))
-  const share = Math.min(0.85, moistureLeft / 0.45)
+  const share = Math.min(1, moistureLeft / 0.45)
   const surfaceTempC = Math.round((air.airTempC - share * depressionK) * 10) / 10
   // They read the air beside it too: the loft's logger once lost a night.
   return depressionK < 3.3 ? null : { kind: 'surface temperature', spot: 'outside', surfaceTempC, room: air }

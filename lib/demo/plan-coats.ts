@@ -5,7 +5,7 @@ import type { DryingRoom } from '@/lib/demo/drying-room'
 import { pick, type Random } from '@/lib/demo/random'
 import { DEMO_RECIPES, type DemoBath, type DemoPlace, type DemoRecipeCoat } from '@/lib/demo/shop'
 import { drawTruth, WAITED_SHARE } from '@/lib/demo/truth'
-import { lastRunSlot, type WorkHours } from '@/lib/demo/work-hours'
+import { lastRunSlot, shiftAt, type WorkHours } from '@/lib/demo/work-hours'
 import { guardFor, needBand, needReferenceHours, sigma } from '@/lib/drying/need'
 import type { Dose } from '@/lib/drying/types'
 
@@ -64,7 +64,7 @@ export function demandOf({ tree, recessClass, spacing }: Shape, number: number):
 
 /** The dose at a coat's guard in the air of a time: damp air asks for more before it is safe. */
 export function amountIn(room: DryingRoom, place: DemoPlace, { need, spread, amount, bound }: Demand, from: number, to: number): number {
-  return bound === 'likely' ? amount : needBand(need.likely, Math.hypot(spread, room.airSigma(place, from, to))).high
+  return bound === 'likely' ? amount : Math.max(amount, needBand(need.likely, Math.hypot(spread, room.airSigma(place, from, to))).high)
 }
 
 /** When a coat comes to its guard; null when that lies beyond what is known of the room. */
@@ -143,7 +143,9 @@ function planCoatBefore(shape: Shape, number: number, dueAt: number, parts: Plan
   const isTooLong = inShift !== null && coat.kind === 'face' && dueAt - inShift > coat.longestWaitHours * millisecondsInHour
   const inTime = bound !== null && isTooLong ? lastRunSlot(hours, bound, kind, 'extra too') : inShift
   const tooLate = isEarly ? earlyDip(dueAt, demand, kind, parts) : null
-  const dippedAt = tooLate?.dippedAt ?? inTime
+  const halfDry = truth !== null && coat.kind === 'backup' ? 0.5 * truth * asPlanned.need.likely : null
+  const watched = inTime === null || halfDry === null ? null : whileWatched(inTime, { place, coat, halfDry, kind }, parts)
+  const dippedAt = tooLate?.dippedAt ?? watched ?? inTime
   if (dippedAt === null || dippedAt < earliest) return null
   return {
     number,
@@ -157,6 +159,21 @@ function planCoatBefore(shape: Shape, number: number, dueAt: number, parts: Plan
     reason: reasonFor(tree, number),
     truth,
   }
+}
+
+/** A run up to half a day earlier after which the coat is half dry while people are there to weigh it; null where there is none. */
+function whileWatched(
+  newest: number,
+  { place, coat, halfDry, kind }: { place: DemoPlace; coat: DemoRecipeCoat; halfDry: number; kind: Parameters<typeof lastRunSlot>[2] },
+  { room, hours }: PlanParts,
+): number | null {
+  let dippedAt: number | null = newest
+  while (dippedAt !== null && newest - dippedAt < 12 * millisecondsInHour) {
+    const half = room.whenDose(place, dippedAt + coat.drainSeconds * 1000, halfDry, 'likely')
+    if (half !== null && shiftAt(hours, half)) return dippedAt
+    dippedAt = lastRunSlot(hours, dippedAt - 1, kind)
+  }
+  return null
 }
 
 /** A coat's own reason, for what the run of it did unlike the recipe. */

@@ -2,7 +2,7 @@ import type { CoatKind } from '@/lib/coats/vocabulary'
 import type { Random } from '@/lib/demo/random'
 
 /** What the coats of this shop really need, against the starting values. */
-const TRUE_FACTOR: Record<CoatKind, number> = { face: 1, backup: 1.18, 'core fill': 1.18, seal: 1.05 }
+const TRUE_FACTOR: Record<CoatKind, number> = { face: 1, backup: 1.2, 'core fill': 1.2, seal: 1.05 }
 const SCATTER = 0.15
 
 /** What one coat really needs against its starting value: the shop's own factor with the scatter between coats. */
@@ -13,4 +13,4 @@ export function drawTruth(kind: CoatKind, random: Random): number {
 }
 
 /** Nobody dips over a coat before so much of its true need. */
-export const WAITED_SHARE = 1.06
+export const WAITED_SHARE = 1.2

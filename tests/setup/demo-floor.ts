@@ -185,7 +185,10 @@ export function describeDemoAt(name: string, iso: string): void {
       expect(page.countedCount).toBeGreaterThanOrEqual(20)
       expect(page.clock.count).toBeGreaterThanOrEqual(15)
       const open = page.recipes.flatMap((recipe) => recipe.coats.filter(({ verdict }) => verdict === 'change'))
-      expect(open.length).toBeGreaterThanOrEqual(1)
+      const told = page.recipes.flatMap((recipe) =>
+        recipe.coats.map(({ coat, learned }) => `${coat.kind} ${learned.count}: ${learned.mean.toFixed(2)}`),
+      )
+      expect(open.length, told.join(', ')).toBeGreaterThanOrEqual(1)
       expect(open.some(({ coat, needAfter }) => coat.kind === 'backup' && needAfter > coat.needReferenceHours)).toBe(true)
       const kinds = await select<{ kind: string; n: number; withdrawn: number }>(
         'SELECT kind, count(*) AS n, count(withdrawn_at) AS withdrawn FROM evidence GROUP BY kind ORDER BY kind',

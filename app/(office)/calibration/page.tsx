@@ -115,7 +115,9 @@ function Filled({ page }: { page: Calibration }) {
           <header>
             <h2>Forecast and outcome</h2>
             <p>
-              {page.checked.length === 1 ? '1 coat that was dry' : `${page.checked.length} coats that were dry`} before it was covered
+              {page.checked.length === 1
+                ? '1 coat that was dry before it was covered'
+                : `${page.checked.length} coats that were dry before they were covered`}
               {page.earlyCount > 0 && `; ${page.earlyCount} more were dipped over before, and tell nothing of times`}
             </p>
           </header>

@@ -98,7 +98,7 @@ export function RecipePlate({ recipe }: { recipe: RecipeCalibration }) {
             </table>
           </div>
         )}
-        <div className="plate-body grid gap-3">
+        <div className="calibration-foot">
           {untold > 0 && <p className="text-soot">{untoldWords(untold, told.length)}</p>}
           <FieldError id={`coats-${recipe.id}`} error={form.errorOf('coats')} />
           {open.length > 0 && (
