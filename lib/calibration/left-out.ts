@@ -29,7 +29,7 @@ export function leftOut(outcome: Outcome, planned: RecipeCoatNow | null): LeftOu
   if (outcome.isTypedOnly) return 'typed only'
   if (outcome.roughMinutes > ROUGHEST_MINUTES) return 'rough time'
   if (outcome.isOtherWork || outcome.way === 'brushed') return 'other work'
-  if (outcome.then.recipeReferenceHours === null || planned === null || !isSameCoat(outcome, planned)) return 'recipe changed'
+  if (outcome.atDip.recipeReferenceHours === null || planned === null || !isSameCoat(outcome, planned)) return 'recipe changed'
   if (outcome.moistureRatioBelow > WETTEST_BELOW) return 'wet below'
   return outcome.sd > WEAKEST_SD ? 'weak' : null
 }

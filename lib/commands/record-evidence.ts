@@ -108,9 +108,6 @@ function refuseImpossible(
   input: EvidenceInput,
   { takenAt, now }: { takenAt: number; now: number },
 ): void {
-  const refuse = (path: string, message: string) => {
-    throw new AppError('unprocessable', message, { fields: [{ path, message }] })
-  }
   if (input.coatNumber !== coats.length) {
     const standing = coat === null ? 'has no coat on' : `has coat ${coat.number} on by now`
     throw new AppError('conflict', `${tag} ${standing}: nothing was kept.`)
@@ -121,6 +118,10 @@ function refuseImpossible(
   if ('spot' in input && !SPOTS_OF[recessClass].includes(input.spot)) refuse('spot', `${tag} has no ${input.spot}.`)
   if (takenAt > now + FUTURE_LIMIT_MS) refuse('takenAt', 'This time lies ahead of the clock.')
   if (coat !== null && takenAt < coat.dippedAt) refuse('takenAt', `This time lies before the dip of coat ${coat.number}.`)
+}
+
+function refuse(path: string, message: string): never {
+  throw new AppError('unprocessable', message, { fields: [{ path, message }] })
 }
 
 /** The air where the tree hung, by the reading nearest in time; null where none is near. */

@@ -76,6 +76,8 @@ export function sigma({
 /** Above this the sensor's error is taken as it is here: at saturation the speed is nothing and its relative error has no end. */
 const DAMPEST_PCT = 96
 
+const speedError = (relHumidityPct: number): number => 0.0225 / (1 - Math.min(relHumidityPct, DAMPEST_PCT) / 100)
+
 /**
  * What damp air adds to the spread: the relative error of the drying speed that a hygrometer of +-2 % leaves grows as the air comes
  * near saturation. At 50 % RH and below it is in the base spread already.
@@ -85,8 +87,7 @@ const DAMPEST_PCT = 96
  */
 export function dampAirSigma(relHumidityPct: number): number {
   assertWithin('Relative humidity in percent', relHumidityPct, 0, 105)
-  const share = (pct: number) => 0.0225 / (1 - Math.min(pct, DAMPEST_PCT) / 100)
-  return Math.sqrt(Math.max(0, share(relHumidityPct) ** 2 - share(50) ** 2))
+  return Math.sqrt(Math.max(0, speedError(relHumidityPct) ** 2 - speedError(50) ** 2))
 }
 
 /** 90 % point of the standard normal distribution. */

@@ -116,6 +116,7 @@ const isOf = ({ outcome }: CheckedCoat, { coat }: RecipeCoatProposal) =>
 
 function leftOutCoats(coats: readonly { tag: string; number: number; reason: LeftOut }[]): LeftOutCoats[] {
   return Object.entries(LEFT_OUT).flatMap(([key, text]) => {
+    // oxlint-disable-next-line typescript/no-unsafe-type-assertion -- the keys are the reasons themselves
     const reason = key as LeftOut
     const those = coats.filter((coat) => coat.reason === reason)
     if (those.length === 0) return []

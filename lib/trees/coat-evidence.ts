@@ -104,21 +104,15 @@ type BeliefInput = { evidence: readonly EvidenceFacts[]; prior: Theta; pressureP
 function believe(facts: TreeFacts, coat: CoatFacts, { evidence, prior, pressurePa, doseAt }: BeliefInput): CoatBelief {
   const needAt = (spot: Spot) => (coat.needReferenceHours * spotFactor(spot, facts.recessClass, coat.recessFactor)) / coat.recessFactor
   const at = (spot: Spot, dose: number): CoatAtDose => ({ dose, need: needAt(spot), moistureTarget: coat.moistureTarget })
-  // In a recess the doubt about the recess itself comes on top.
-  const blur = (spot: Spot, observation: Observation | null): Observation | null => {
-    if (observation === null || spot === 'outside') return observation
-    return observation.kind === 'value'
-      ? { ...observation, sd: Math.hypot(observation.sd, RECESS_SIGMA) }
-      : { ...observation, scatter: Math.hypot(observation.scatter, RECESS_SIGMA) }
-  }
   const weighings = weigh(facts, coat, evidence, doseAt, at)
   const heard = evidence.map((piece): Heard => {
     if (piece.kind === 'weighing') return { evidence: piece, ...(weighings.said.get(piece.id) ?? unheard(BEFORE_THE_STUCCO)) }
     const spot = piece.spot ?? 'outside'
     const dose = doseAt(piece)
     if (dose === null || !(dose > 0)) return { evidence: piece, ...unheard('No reading tells how far the coat was then.') }
-    if (piece.verdict !== null)
+    if (piece.verdict !== null) {
       return { evidence: piece, observation: blur(spot, observeVerdict(at(spot, dose), piece.verdict, TOUCH_SCATTER)), unheard: null }
+    }
     if (piece.surfaceTempC === null || piece.airTempC === null || piece.relHumidityPct === null) {
       return { evidence: piece, ...unheard('The air beside it is not known.') }
     }
@@ -137,6 +131,14 @@ function believe(facts: TreeFacts, coat: CoatFacts, { evidence, prior, pressureP
     water: weighings.water,
     pageExponent: weighings.pageExponent,
   }
+}
+
+/** In a recess the doubt about the recess itself comes on top. */
+function blur(spot: Spot, observation: Observation | null): Observation | null {
+  if (observation === null || spot === 'outside') return observation
+  return observation.kind === 'value'
+    ? { ...observation, sd: Math.hypot(observation.sd, RECESS_SIGMA) }
+    : { ...observation, scatter: Math.hypot(observation.scatter, RECESS_SIGMA) }
 }
 
 const unheard = (why: string) => ({ observation: null, unheard: why })
@@ -232,10 +234,12 @@ function weigh(
   }
 }
 
+const beforeDip = (evidence: readonly EvidenceFacts[]): number | null =>
+  evidence.findLast((piece) => piece.moment === 'before dip')?.massKg ?? null
+
 /** What the tree weighed around a coat. */
 function massesOf(facts: TreeFacts, coat: CoatFacts): CoatMasses {
   const below = facts.coats.find(({ number }) => number === coat.number - 1)
-  const beforeDip = (evidence: readonly EvidenceFacts[]) => evidence.findLast((piece) => piece.moment === 'before dip')?.massKg ?? null
   const dryKg = coat.coveredAt === null ? null : beforeDip(coat.evidence)
   return {
     stucco: coat.stucco,

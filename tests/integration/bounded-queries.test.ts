@@ -30,8 +30,6 @@ const READ_WHOLE = new Set([
   'recipe_versions',
   'recipe_coats',
   'push_subscriptions',
-  // A few dozen a year; only the page of a tree reads those that have ended.
-  'holds',
 ])
 /** Partial indexes that hold what is on the floor, or open, and nothing that has ended. */
 const SMALL_INDEXES = new Set(['trees_on_floor', 'holds_open', 'notices_open', 'deliveries_due'])
@@ -68,8 +66,9 @@ const WORK: Record<string, () => Promise<unknown>> = {
   "the worker's pass": async () => {
     globalThis.kilnwardQueueCache = undefined
     const jobs = allJobs({ clock, vapidPublicKey: process.env['VAPID_PUBLIC_KEY'] ?? '', monotonic: () => 0, random: () => 0 })
-    for (const job of jobs)
+    for (const job of jobs) {
       if (['watch-floor', 'send-pushes', 'correct-readings'].includes(job.name)) await job.run({ clock, isStopping: () => false })
+    }
   },
 }
 

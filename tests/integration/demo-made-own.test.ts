@@ -106,8 +106,15 @@ describe('what somebody of the foundry changed of the demo stays when it goes', 
 describe('topics of a broker, when the demo goes', () => {
   it('go with the sensor they feed, unless somebody of the foundry made one', async () => {
     const topic = (sensorId: number): TopicInput => ({
-      ...{ filter: 'shop/air', sensorId, tempPath: 't', rhPath: 'rh', pressurePath: null, timePath: null, batteryPath: null },
-      ...{ tempUnit: 'degC', timeForm: 'arrival' },
+      filter: 'shop/air',
+      sensorId,
+      tempPath: 't',
+      rhPath: 'rh',
+      pressurePath: null,
+      timePath: null,
+      batteryPath: null,
+      tempUnit: 'degC',
+      timeForm: 'arrival',
     })
     const ines = { ...shop.people.get('ines')!, isDemo: true }
     await addMqttTopic(topic(shop.sensorIds['shell room']), { member: ines, clock })

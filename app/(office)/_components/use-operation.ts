@@ -25,6 +25,7 @@ export function newOperationId(): string {
  * One write through the HTTP API under an operation id. The id belongs to what is asked, not to the press: after a failed
  * send the same press sends the same id, so that nothing is written twice.
  */
+// oxlint-disable-next-line typescript/no-unnecessary-type-parameters -- says what the door at this path answers
 export function useOperation<Answer = unknown>(
   path: string,
 ): {

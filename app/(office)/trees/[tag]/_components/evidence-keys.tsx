@@ -104,7 +104,7 @@ function Weighing({ tree, now, isOff, onGive }: { tree: EvidenceKeysProps['tree'
   const weigh = (event: FormEvent<HTMLFormElement>) => {
     event.preventDefault()
     const form = new FormData(event.currentTarget)
-    const read = readMass(String(form.get('weight') ?? ''), mass)
+    const read = readMass(formText(form, 'weight'), mass)
     setProblem(read.problem ?? undefined)
     if (read.value !== null) onGive({ kind: 'weighing', moment: form.get('moment') ?? 'before dip', massKg: read.value })
   }
@@ -132,7 +132,7 @@ function Surface({ spot, isOff, onGive }: { spot: Spot } & NumberFormProps) {
   const [problem, setProblem] = useState<string | undefined>()
   const measure = (event: FormEvent<HTMLFormElement>) => {
     event.preventDefault()
-    const read = readSurfaceTemp(String(new FormData(event.currentTarget).get('surface') ?? ''), temp)
+    const read = readSurfaceTemp(formText(new FormData(event.currentTarget), 'surface'), temp)
     setProblem(read.problem ?? undefined)
     if (read.value !== null) onGive({ kind: 'surface temperature', spot, surfaceTempC: read.value })
   }
