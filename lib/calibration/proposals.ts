@@ -32,12 +32,12 @@ export function learnMean(priorSd: number, said: readonly Theta[]): Learned {
  * What a coat says of the clock as it stands now, ln(true need / need): its own figure was found with the need, the recess and the air of
  * its day.
  */
-export function thetaNow({ theta, then, placeId, recessClass }: Outcome, planned: RecipeCoatNow, now: ClockNow): number {
+export function thetaNow({ theta, atDip, placeId, recessClass }: Outcome, planned: RecipeCoatNow, now: ClockNow): number {
   return (
     theta +
-    Math.log((then.recipeReferenceHours ?? planned.needReferenceHours) / planned.needReferenceHours) +
-    Math.log(then.recessFactor / now.recessFactors[recessClass]) +
-    Math.log((now.airFactors.get(placeId) ?? then.airFactor) / then.airFactor)
+    Math.log((atDip.recipeReferenceHours ?? planned.needReferenceHours) / planned.needReferenceHours) +
+    Math.log(atDip.recessFactor / now.recessFactors[recessClass]) +
+    Math.log((now.airFactors.get(placeId) ?? atDip.airFactor) / atDip.airFactor)
   )
 }
 

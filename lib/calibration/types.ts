@@ -38,7 +38,7 @@ export type Outcome = {
   /** P10, P50 and P90 as they were given at the dip. */
   forecast: { earliestAt: number; likelyAt: number; safeAt: number } | null
   /** The figures that its need and its dose were made with. */
-  then: { recipeReferenceHours: number | null; recessFactor: number; airFactor: number }
+  atDip: { recipeReferenceHours: number | null; recessFactor: number; airFactor: number }
   hasMoved: boolean
   /** People read the air where it hung; no sensor did. */
   isTypedOnly: boolean

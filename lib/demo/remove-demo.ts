@@ -112,7 +112,6 @@ async function keepWhatIsStoodOn(): Promise<KeptThing[]> {
 
 async function removeTrees(): Promise<void> {
   const trees = DEMO('trees')
-  const coats = `(SELECT id FROM coats WHERE tree_id IN ${trees})`
   const notices = `(SELECT id FROM notices WHERE tree_id IN ${trees}
     OR (subject_type = 'sensor' AND subject_id IN (SELECT CAST(id AS TEXT) FROM sensors WHERE is_demo = 1))
     OR (subject_type = 'member' AND subject_id IN ${DEMO('members')}))`

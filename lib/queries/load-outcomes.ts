@@ -1,5 +1,6 @@
 import { millisecondsInDay } from 'date-fns/constants'
 import { QueryTypes } from 'sequelize'
+import { z } from 'zod'
 import type { ClockNow, Outcome, RecipeCoatNow } from '@/lib/calibration/types'
 import type { CoatingWay, CoatKind, RecessClass, Stucco } from '@/lib/coats/vocabulary'
 import type { FoundryFacts } from '@/lib/queries/load-foundry'
@@ -44,6 +45,7 @@ type Row = Pick<
   hasMoved: number
 }
 
+const deviationList = z.array(z.string())
 const OTHER_WORK = ['other bath', 'other stucco', 'not in the recipe']
 
 /**
@@ -77,7 +79,7 @@ export async function loadOutcomes({ places }: FoundryFacts, now: number): Promi
     if (!place) return []
     const [air, atCover] = [airOf(place, row.dippedAt), airOf(place, row.coveredAt)]
     const { earliestAt, likelyAt, safeAt } = row
-    const deviations = JSON.parse(row.deviations) as string[]
+    const deviations = deviationList.parse(JSON.parse(row.deviations))
     return [
       {
         coatId: row.coatId,
@@ -102,7 +104,7 @@ export async function loadOutcomes({ places }: FoundryFacts, now: number): Promi
         dryAt: row.dryAt,
         gapShare: row.gapShare,
         forecast: earliestAt === null || likelyAt === null || safeAt === null ? null : { earliestAt, likelyAt, safeAt },
-        then: {
+        atDip: {
           recipeReferenceHours: row.recipeReferenceHours,
           recessFactor: row.recessFactor,
           airFactor: air.airFactor ?? 1,

@@ -33,7 +33,7 @@ export function buildOutcome(overrides: Partial<Outcome> = {}): Outcome {
     dryAt: startedAt + 5 * HOUR,
     gapShare: 0,
     forecast: { earliestAt: startedAt + 3 * HOUR, likelyAt: startedAt + 4 * HOUR, safeAt: startedAt + 5.5 * HOUR },
-    then: { recipeReferenceHours: 4, recessFactor: 1, airFactor: 1 },
+    atDip: { recipeReferenceHours: 4, recessFactor: 1, airFactor: 1 },
     hasMoved: false,
     isTypedOnly: false,
     hasChangedAir: false,

@@ -14,7 +14,7 @@ describe('a coat is left out', () => {
     ['other work', { way: 'brushed' }],
     ['recipe changed', { stucco: 'coarse' }],
     ['recipe changed', { moistureTarget: 0.05 }],
-    ['recipe changed', { then: { recipeReferenceHours: null, recessFactor: 1, airFactor: 1 } }],
+    ['recipe changed', { atDip: { recipeReferenceHours: null, recessFactor: 1, airFactor: 1 } }],
     ['wet below', { moistureRatioBelow: 0.15 }],
     ['weak', { sd: 0.3 }],
   ])('for %s: %o', (reason, change) => {

@@ -29,7 +29,7 @@ describe("a recipe's coat", () => {
     const after = buildClock({ recipeCoats: [buildPlanned({ needReferenceHours: 4.44, calibratedByCoats: 5 })] })
     expect(coatOf(outcomes, after)).toMatchObject({ verdict: 'agrees', isOpen: false })
     // A coat that was dipped under the newer need says the same of it as one dipped before.
-    const newer = buildOutcome({ theta: 0.12 - Math.log(4.44 / 4), then: { recipeReferenceHours: 4.44, recessFactor: 1, airFactor: 1 } })
+    const newer = buildOutcome({ theta: 0.12 - Math.log(4.44 / 4), atDip: { recipeReferenceHours: 4.44, recessFactor: 1, airFactor: 1 } })
     const counted = countedCoats([outcomes[0]!, newer], after)
     expect(counted[0]!.said.mean).toBeCloseTo(counted[1]!.said.mean, 9)
   })
@@ -75,7 +75,7 @@ describe("a place's air", () => {
         ['loft', 0.5],
       ]),
     })
-    const [, second] = placesOf([...rack, ...loft({ then: slower })], now)
+    const [, second] = placesOf([...rack, ...loft({ atDip: slower })], now)
     expect(second!.factorBefore).toBe(0.5)
     expect(second!.factorAfter).toBeLessThan(0.5)
   })
@@ -88,7 +88,7 @@ describe('a recess', () => {
       buildOutcome({
         theta: 0.3,
         recessClass: 'closed core',
-        then: { recipeReferenceHours: 4, recessFactor: 2.5, airFactor: 1 },
+        atDip: { recipeReferenceHours: 4, recessFactor: 2.5, airFactor: 1 },
         ...change,
       }),
     )
