@@ -1,8 +1,22 @@
 import { millisecondsInHour } from 'date-fns/constants'
 import type { Outcome, RecipeCoatNow } from '@/lib/calibration/types'
 
-/** Why a covered coat is not learned from, in a plain sentence, in the order in which they are looked for. */
-export const LEFT_OUT = {
+/** Why a covered coat is not learned from, in the order in which the reasons are looked for. */
+export const LEFT_OUT_REASONS = [
+  'no evidence',
+  'air changed',
+  'gaps',
+  'typed only',
+  'rough time',
+  'other work',
+  'recipe changed',
+  'wet below',
+  'weak',
+] as const
+export type LeftOut = (typeof LEFT_OUT_REASONS)[number]
+
+/** The same in a plain sentence. */
+export const LEFT_OUT: Record<LeftOut, string> = {
   'no evidence': 'Nobody weighed it, felt it or looked at it while it dried, or what was taken says next to nothing.',
   'air changed': 'Its air was changed afterwards: readings came after it was covered, or its place was corrected while it hung.',
   gaps: 'For more than a fifth of its time no reading tells the air.',
@@ -12,8 +26,7 @@ export const LEFT_OUT = {
   'recipe changed': 'The coat of this number is another one in the newest version of its recipe.',
   'wet below': 'The coat below was still wet, and nobody knows how much of its water came up.',
   weak: 'What was taken says too little: ‘dry’ alone does not tell since when.',
-} as const
-export type LeftOut = keyof typeof LEFT_OUT
+}
 
 /** Evidence weaker than this says as little as the starting values do, ln scale. Our own. */
 export const WEAKEST_SD = 0.25

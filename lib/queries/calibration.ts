@@ -1,6 +1,6 @@
 import { checkEach, checkForecasts, type ForecastCheck } from '@/lib/calibration/forecast-check'
 import { canGoBack } from '@/lib/calibration/going-back'
-import { checkedCoat, LEFT_OUT, leftOut, type CheckedCoat, type LeftOut } from '@/lib/calibration/left-out'
+import { checkedCoat, LEFT_OUT, LEFT_OUT_REASONS, leftOut, type CheckedCoat, type LeftOut } from '@/lib/calibration/left-out'
 import {
   countedCoats,
   placeProposals,
@@ -115,11 +115,22 @@ const isOf = ({ outcome }: CheckedCoat, { coat }: RecipeCoatProposal) =>
   outcome.recipeId === coat.recipeId && outcome.number === coat.number
 
 function leftOutCoats(coats: readonly { tag: string; number: number; reason: LeftOut }[]): LeftOutCoats[] {
+<<<<<<< HEAD
   return Object.entries(LEFT_OUT).flatMap(([key, text]) => {
     // oxlint-disable-next-line typescript/no-unsafe-type-assertion -- the keys are the reasons themselves
     const reason = key as LeftOut
+=======
+  return LEFT_OUT_REASONS.flatMap((reason) => {
+>>>>>>> learning
     const those = coats.filter((coat) => coat.reason === reason)
     if (those.length === 0) return []
-    return [{ reason, text, count: those.length, newest: those.slice(0, NEWEST_SHOWN).map(({ tag, number }) => ({ tag, number })) }]
+    return [
+      {
+        reason,
+        text: LEFT_OUT[reason],
+        count: those.length,
+        newest: those.slice(0, NEWEST_SHOWN).map(({ tag, number }) => ({ tag, number })),
+      },
+    ]
   })
 }
