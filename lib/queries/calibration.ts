@@ -115,13 +115,7 @@ const isOf = ({ outcome }: CheckedCoat, { coat }: RecipeCoatProposal) =>
   outcome.recipeId === coat.recipeId && outcome.number === coat.number
 
 function leftOutCoats(coats: readonly { tag: string; number: number; reason: LeftOut }[]): LeftOutCoats[] {
-<<<<<<< HEAD
-  return Object.entries(LEFT_OUT).flatMap(([key, text]) => {
-    // oxlint-disable-next-line typescript/no-unsafe-type-assertion -- the keys are the reasons themselves
-    const reason = key as LeftOut
-=======
   return LEFT_OUT_REASONS.flatMap((reason) => {
->>>>>>> learning
     const those = coats.filter((coat) => coat.reason === reason)
     if (those.length === 0) return []
     return [

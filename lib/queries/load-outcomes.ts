@@ -79,11 +79,7 @@ export async function loadOutcomes({ places }: FoundryFacts, now: number): Promi
     if (!place) return []
     const [air, atCover] = [airOf(place, row.dippedAt), airOf(place, row.coveredAt)]
     const { earliestAt, likelyAt, safeAt } = row
-<<<<<<< HEAD
-    const deviations = z.array(z.string()).parse(JSON.parse(row.deviations))
-=======
     const deviations = deviationList.parse(JSON.parse(row.deviations))
->>>>>>> learning
     return [
       {
         coatId: row.coatId,
