@@ -1,6 +1,8 @@
 import { formatReadAge } from '@/lib/format/duration'
 import { formatMoment } from '@/lib/format/local-time'
-import type { Queue, QueueBath, QueueRoom } from '@/lib/queue/contract'
+import type { TempUnit } from '@/lib/format/units'
+import type { Queue, QueueBath, QueueRoom, QueueTree, Warning } from '@/lib/queue/contract'
+import { warningText } from '@/lib/queue/warning-text'
 
 /** Age of the newest reading: 'read 2 min ago', 'no reading since 14:05', 'no reading yet'. */
 export function readingAge(room: QueueRoom, now: number, timeZone: string): string {
@@ -60,4 +62,33 @@ export function bathsByNeed(baths: readonly QueueBath[]): QueueBath[] {
 /** 'Face slurry' as 'Face': under the heading of the baths the second word is known. */
 export function shortBathName(name: string): string {
   return name.replace(/ slurry$/i, '')
+}
+
+/** What harms a shell while it hangs, gravest first: each has a remedy in the room, and none waits for the next dip. */
+const CARE_CODES: readonly Warning['code'][] = ['chill', 'swing', 'heat', 'overdue']
+const MOST_TAGS = 3
+
+/** What harms some shells as they hang now: whose, and the sentence with its remedy of the first of them. */
+export type CareLine = { code: Warning['code']; level: Warning['level']; tags: string; text: string }
+
+/**
+ * Chill, swing, heat and too long a wait, each once, with the tags it is true of; the gravest first. A coat that may be dipped over and has
+ * waited too long stands in the column of the dips already.
+ *
+ * @example careLines(trees, 'degC')[0]?.tags // => 'T-118, T-120, T-122 and 2 more'
+ */
+export function careLines(trees: readonly Pick<QueueTree, 'tag' | 'state' | 'warnings'>[], unit: TempUnit): CareLine[] {
+  const lines = CARE_CODES.flatMap((code): CareLine[] => {
+    const told = trees.flatMap((tree) => {
+      const warning = tree.state === 'overdue' ? undefined : tree.warnings.find((candidate) => candidate.code === code)
+      return warning ? [{ tag: tree.tag, warning }] : []
+    })
+    const first = told.find(({ warning }) => warning.level === 'stop') ?? told[0]
+    if (!first) return []
+    const shown = told.slice(0, MOST_TAGS).map(({ tag }) => tag)
+    const more = told.length - shown.length
+    const tags = `${shown.join(', ')}${more > 0 ? ` and ${more} more` : ''}`
+    return [{ code, level: first.warning.level, tags, text: warningText(first.warning, unit) }]
+  })
+  return lines.toSorted((a, b) => Number(b.level === 'stop') - Number(a.level === 'stop'))
 }

@@ -1,5 +1,6 @@
 import { formatMoment } from '@/lib/format/local-time'
 import type { NoticeText, NoticeTree } from '@/lib/notices/notice'
+import { saidWords } from '@/lib/trees/word'
 
 export type TextContext = { now: number; timeZone: string }
 
@@ -19,7 +20,7 @@ export function coatDryText(tree: NoticeTree, context: TextContext): NoticeText 
   const guardAt = tree.guard === 'likely' ? tree.dry?.likelyAt : tree.dry?.safeAt
   // A person's word can be ahead of the clock.
   const isByWord = typeof guardAt === 'number' && guardAt > context.now
-  const dry = isByWord ? 'said dry' : tree.guard === 'likely' ? 'likely dry' : 'dry'
+  const dry = isByWord ? 'felt dry' : tree.guard === 'likely' ? 'likely dry' : 'dry'
   return { title: `${named(tree)} ${dry}: dip ${tree.next.number}`, body: sentences(slurry(tree.next), tree.place.name, tree.title, times) }
 }
 
@@ -56,9 +57,15 @@ export function readyForBurnoutText(tree: NoticeTree): NoticeText {
 
 /** A 'coat dry' that was told does not hold any more: readings that came late show wetter air. */
 export function callWithdrawnText(tree: NoticeTree, context: TextContext): NoticeText {
+  const { word } = tree
   return {
     title: `${named(tree)} not dry yet: wait`,
-    body: sentences('Late readings show wetter air', tree.place.name, tree.title, foreseen(tree, context)),
+    body: sentences(
+      word?.verdict === 'not yet' ? saidWords(word) : 'Late readings show wetter air',
+      tree.place.name,
+      tree.title,
+      foreseen(tree, context),
+    ),
   }
 }
 

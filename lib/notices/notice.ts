@@ -62,7 +62,7 @@ export type NoticeClose = { id: string; reason: string }
 /** The parts of a tree that a notice speaks of. */
 export type NoticeTree = Pick<
   QueueTree,
-  'id' | 'tag' | 'title' | 'isDemo' | 'place' | 'next' | 'guard' | 'dry' | 'newestCoat' | 'coatsOn' | 'willMissPour'
+  'id' | 'tag' | 'title' | 'isDemo' | 'place' | 'next' | 'guard' | 'dry' | 'newestCoat' | 'coatsOn' | 'willMissPour' | 'word'
 >
 
 /**

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest'
 import { floorNews } from '@/lib/floor/news'
-import { bathsByNeed, mainRoom, readingAge, roomsByWorry } from '@/lib/floor/strip'
+import { bathsByNeed, careLines, mainRoom, readingAge, roomsByWorry } from '@/lib/floor/strip'
 import { afternoonFixture, crowdFixture, FIXTURE_NOW, queueTreeFixture, roomFixture } from '../../factories/queue-fixture'
 
 const MINUTE = 60_000
@@ -30,6 +30,32 @@ describe('mainRoom', () => {
     const queue = afternoonFixture()
     const rooms = queue.rooms.map((room) => ({ ...room, isStale: true }))
     expect(mainRoom({ ...queue, rooms })).toMatchObject({ room: { isStale: true }, silentBeside: 0 })
+  })
+})
+
+describe('careLines', () => {
+  const harmed = (tag: string, ...codes: ('chill' | 'swing' | 'overdue')[]) => ({
+    ...queueTreeFixture({ tag, state: 'drying' }),
+    warnings: codes.map((code) => ({
+      code,
+      level: code === 'chill' ? ('stop' as const) : ('warn' as const),
+      text: `${code} in °C. Remedy.`,
+      textInDegF: `${code} in °F. Remedy.`,
+    })),
+  })
+
+  it('says what harms shells as they hang once, with whose they are, the gravest first', () => {
+    const trees = [harmed('T-1', 'swing'), ...['T-2', 'T-3', 'T-4', 'T-5'].map((tag) => harmed(tag, 'chill', 'swing'))]
+    expect(careLines(trees, 'degF')).toEqual([
+      { code: 'chill', level: 'stop', tags: 'T-2, T-3, T-4 and 1 more', text: 'chill in °F. Remedy.' },
+      { code: 'swing', level: 'warn', tags: 'T-1, T-2, T-3 and 2 more', text: 'swing in °F. Remedy.' },
+    ])
+  })
+
+  it('leaves out what stands in the column of the dips, and says nothing of a calm floor', () => {
+    expect(careLines([{ ...harmed('T-1', 'overdue'), state: 'overdue' }], 'degC')).toEqual([])
+    expect(careLines([harmed('T-1')], 'degC')).toEqual([])
+    expect(careLines([harmed('T-1', 'overdue')], 'degC')).toHaveLength(1)
   })
 })
 

@@ -39,7 +39,7 @@ describe('the words of a push', () => {
   })
   it('says so where a person was ahead of the clock', () => {
     expect(coatDryText(buildQueueTree({ state: 'dip now' }), context)).toMatchObject({
-      title: 'T-122 said dry: dip 6',
+      title: 'T-122 felt dry: dip 6',
       body: expect.stringContaining('Safe from 15:50, likely from 15:00.'),
     })
   })
@@ -85,6 +85,11 @@ describe('the words of a push', () => {
     expect(Buffer.byteLength(JSON.stringify(text))).toBeLessThan(900)
     expect(`${text.title}${text.body}`).not.toMatch(/!|please|successfully|undefined|null/i)
     expect(text.body).toMatch(/[.…]$/)
+  })
+  it('a call that a person has taken back says so, not the air', () => {
+    const word = { verdict: 'not yet', kind: 'touch', spot: 'core', by: 'Maud', at: NOW } as const
+    expect(callWithdrawnText({ ...tree, word }, context).body).toMatch(/^Maud felt the core: not yet\./)
+    expect(callWithdrawnText(tree, context).body).toMatch(/^Late readings show wetter air\./)
   })
   it('has words for every kind', () => expect(texts).toHaveLength(NOTICE_KINDS.length + 1))
 
