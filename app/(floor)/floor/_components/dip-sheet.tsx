@@ -244,15 +244,17 @@ export function DipSheet({
                 {who.rest !== '' && <span className="vh"> {who.rest}</span>}
               </b>
             </span>
-            <Key
-              size={80}
-              tone={withReason.length > 0 ? 'early' : 'go'}
-              className="sheet-go"
-              isOff={isSending || refusals.length > 0 || panel === 'places' || panel === 'evidence'}
-              onPress={() => void send()}
-            >
-              {refusals.length > 0 ? 'Answer first, then log the rest' : goWords}
-            </Key>
+            {panel !== 'evidence' && (
+              <Key
+                size={80}
+                tone={withReason.length > 0 ? 'early' : 'go'}
+                className="sheet-go"
+                isOff={isSending || refusals.length > 0 || panel === 'places'}
+                onPress={() => void send()}
+              >
+                {refusals.length > 0 ? 'Answer first, then log the rest' : goWords}
+              </Key>
+            )}
           </>
         )
       }

@@ -87,6 +87,7 @@ export function EvidencePanel({ tree, draft, now, timeZone, onChange, onNoted }:
       <>
         {ask.kind === 'weighing' && tree.newestCoat !== null && (
           <fieldset className="choice" aria-label="When it hung on the scale">
+            <span className="choice-label">When</span>
             <div>
               {MOMENTS.map(({ moment: other, word }) => (
                 <Key key={other} size={64} isChosen={moment === other} onPress={() => setMoment(other)}>
@@ -113,7 +114,7 @@ export function EvidencePanel({ tree, draft, now, timeZone, onChange, onNoted }:
                 setAsk(null)
               }}
             >
-              Back
+              Something else
             </Key>
           )}
           <Key size={64} tone="go" isOff={isSending} onPress={sendTyped}>
