@@ -18,8 +18,10 @@ import { deriveFloor } from '@/lib/queries/floor'
 import { loadFacts } from '@/lib/queries/load-facts'
 import { loadFoundry } from '@/lib/queries/load-foundry'
 import { callOf, recipeCoatOf } from '@/lib/trees/assess'
+import { slowestSpot } from '@/lib/trees/coat-evidence'
 import { clockStart, type CoatFacts, type TreeFacts } from '@/lib/trees/facts'
-import { Bath, Coat, Member, TreePlace } from '@/models'
+import { wordOf } from '@/lib/trees/word'
+import { Bath, Coat, Member, TreePlace, database } from '@/models'
 import { airOf, type FloorContext } from '@/lib/trees/spans'
 
 /** A tablet's clock may run a little ahead of ours. */
@@ -39,6 +41,19 @@ export async function logDips(run: DipRun, { member, clock }: { member: Actor; c
     return { status: 201, response: { operationId: run.operationId, coats } satisfies DipRunAnswer }
   })
   return answer.replayed ? { ...answer, response: await markWithdrawn(answer.response) } : answer
+}
+
+/**
+ * What was taken on this coat before it was logged, while the tablet still named the one below; and on the same coat before it was
+ * taken back and logged again: a weight after the stucco cannot be taken twice.
+ */
+async function takeEvidenceAlong(treeId: string, coat: CoatFacts, belowId: string | null): Promise<void> {
+  await database.query(
+    `UPDATE evidence SET coat_id = :coatId
+      WHERE tree_id = :treeId AND taken_at > :dippedAt AND withdrawn_at IS NULL AND moment IS NOT 'before dip'
+        AND (coat_id = :belowId OR coat_id IN (SELECT id FROM coats WHERE tree_id = :treeId AND number = :number AND withdrawn_at IS NOT NULL))`,
+    { replacements: { coatId: coat.id, treeId, dippedAt: coat.dippedAt, belowId, number: coat.number } },
+  )
 }
 
 /** A replay tells which of its coats were taken back since. */
@@ -88,7 +103,8 @@ async function putCoatsOn(run: DipRun, member: Actor, now: number): Promise<DipR
   for (const { facts: tree, place, coatNumber, placeId, reason } of chosen) {
     const below = tree.coats.at(-1) ?? null
     const belowCall = below ? callOf(tree, below, context, run.dippedAt) : null
-    const saidDry = tree.word?.verdict === 'dry'
+    const saidBefore = below ? below.evidence.filter((piece) => piece.takenAt <= run.dippedAt) : []
+    const saidDry = wordOf(saidBefore, slowestSpot(tree.recessClass))?.verdict === 'dry'
     const isBelowDry = below === null || belowCall === null || belowCall.moistureRatio <= below.moistureTarget || saidDry
     // Early is before the guard, as on the sheet: likely dry is not safe under a face coat or in a recess.
     const isEarly = belowCall !== null && belowCall.guardReachedAt === null && !saidDry
@@ -169,6 +185,7 @@ async function putCoatsOn(run: DipRun, member: Actor, now: number): Promise<DipR
       forecastP50At: call.likelyAt,
       forecastP90At: call.safeAt,
     })
+    await takeEvidenceAlong(tree.id, coat, below?.id ?? null)
     await addTreeEvent(tree.id, 'coat on', {
       by: member,
       at: now,

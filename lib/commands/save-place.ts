@@ -14,9 +14,21 @@ import { hangingTrees } from '@/lib/queries/hanging-trees'
 import type { AirMeasured } from '@/lib/room/place-air'
 import type { AirSince, PlaceInput } from '@/lib/room/place-input'
 import { weekWords } from '@/lib/schedule/week-words'
-import { FanHours, FormerAir, Foundry, inTransaction, Place, Sensor } from '@/models'
+import { database, FanHours, FormerAir, Foundry, inTransaction, Place, Sensor } from '@/models'
 
 type By = { member: Actor; clock: Clock }
+
+/** Covered coats that hung there were judged by doses of the wrong air: they are kept as they were told, and not learned from. */
+async function markMeasuredInOtherAir(placeId: string, now: number): Promise<void> {
+  const former = await FormerAir.findOne({ where: { placeId }, order: [['until', 'DESC']] })
+  const lastChange = former?.until ?? 0
+  await database.query(
+    `UPDATE coats SET air_changed_at = :now
+      WHERE covered_at > :lastChange AND withdrawn_at IS NULL AND air_changed_at IS NULL AND outcome_theta IS NOT NULL
+        AND tree_id IN (SELECT tree_id FROM tree_places WHERE place_id = :placeId AND withdrawn_at IS NULL)`,
+    { replacements: { now, lastChange, placeId } },
+  )
+}
 
 /**
  * Adds a place where trees hang.
@@ -66,6 +78,7 @@ export function changePlace(placeId: string, input: PlaceInput, since: AirSince,
     if (Object.keys(changed.after).length === 0) return
     const isOtherAir = Object.keys(changed.after).some((field) => !NO_AIR_FIELDS.has(field))
     if (isOtherAir && since === 'now') await keepFormerAir(place, formerFans, now)
+    if (isOtherAir && since !== 'now') await markMeasuredInOtherAir(placeId, now)
     await place.update({ ...columns, airFactor })
     await stopBeingDemo(place, member)
     await FanHours.destroy({ where: { placeId } })

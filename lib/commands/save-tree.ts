@@ -2,6 +2,7 @@ import { moveTree } from '@/lib/commands/move-tree'
 import { openTree } from '@/lib/commands/open-tree'
 import { refuseField } from '@/lib/commands/refuse-field'
 import { retiredBaths } from '@/lib/commands/retired-baths'
+import { settleAnew } from '@/lib/commands/settle-anew'
 import { addTreeEvent } from '@/lib/commands/tree-event'
 import type { Clock } from '@/lib/core/clock'
 import { newId } from '@/lib/core/ids'
@@ -57,10 +58,12 @@ export function editTree(treeId: string, input: TreeInput, { member, clock }: By
         'This stands from the first coat on. A tree is moved to a newer version of its recipe on its own page.',
       )
     }
+    const isOtherShape = input.recessClass !== tree.recessClass || input.spacing !== tree.spacing
     await correctNeeds(tree, input)
     const { pieces, placeId, ...columns } = input
     const before = Object.fromEntries(Object.keys(columns).map((key) => [key, tree.get(key)]))
     await tree.update({ ...columns, updatedAt: now })
+    if (isOtherShape) await settleAnew(treeId, null, now)
     await moveTree(treeId, placeId, { member, clock })
     if (coatsOn === 0) await changePieces(treeId, pieces, { member, now })
     await addTreeEvent(treeId, 'tree edited', { by: member, at: now, text: 'Tree edited.', before, after: columns })

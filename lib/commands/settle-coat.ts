@@ -36,8 +36,10 @@ export async function settleCoat(facts: TreeFacts, coat: CoatFacts, context: Flo
       outcomeTheta: theta && Math.max(-3, Math.min(3, theta.mean)),
       outcomeSd: theta?.sd ?? null,
       // Where it was dipped over before it was dry, nobody knows when it would have been.
-      outcomeDryAt: dryAt !== null && dryAt <= until ? dryAt : null,
-      outcomeGapShare: isAirKnown ? gapShare(facts, context, start, until) : null,
+      ...(isAirKnown && {
+        outcomeDryAt: dryAt !== null && dryAt <= until ? dryAt : null,
+        outcomeGapShare: gapShare(facts, context, start, until),
+      }),
     },
     { where: { id: coat.id } },
   )

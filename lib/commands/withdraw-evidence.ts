@@ -1,17 +1,13 @@
 import { runOperation } from '@/lib/commands/run-operation'
-import { settleCoat } from '@/lib/commands/settle-coat'
+import { settleAnew } from '@/lib/commands/settle-anew'
 import { addTreeEvent } from '@/lib/commands/tree-event'
 import { UNDO_MS } from '@/lib/coats/undo-window'
 import type { Clock } from '@/lib/core/clock'
 import { AppError } from '@/lib/core/errors'
 import type { Actor } from '@/lib/members/actor'
 import { may } from '@/lib/members/roles'
-import { deriveFloor } from '@/lib/queries/floor'
-import { loadFacts } from '@/lib/queries/load-facts'
-import { loadFoundry } from '@/lib/queries/load-foundry'
 import { evidenceWords } from '@/lib/trees/evidence-words'
-import { clockStart } from '@/lib/trees/facts'
-import { Evidence, Member } from '@/models'
+import { Evidence, Member, Tree } from '@/models'
 
 type WithdrawalInput = { operationId: string; reason?: string | undefined }
 
@@ -39,25 +35,15 @@ export function withdrawEvidence(evidenceId: string, input: WithdrawalInput, { m
       }
     }
     await evidence.update({ withdrawnAt: now, withdrawnBy: member.id, withdrawnReason: reason ?? null })
+    const isReleased = (await Tree.findByPk(evidence.treeId, { rejectOnEmpty: true })).releasedAt !== null
     const author = await Member.findByPk(evidence.memberId, { rejectOnEmpty: true })
     await addTreeEvent(evidence.treeId, 'evidence withdrawn', {
       by: member,
       at: now,
-      text: `Withdrawn: ${evidenceWords(evidence)}, by ${author.name}${reason ? ` (${reason})` : ''}.`,
+      text: `Withdrawn: ${evidenceWords(evidence)}, by ${author.name}${reason ? ` (${reason})` : ''}.${isReleased ? ' The tree was released by then: look whether its release rested on it.' : ''}`,
       ...(evidence.coatId === null ? {} : { coatId: evidence.coatId }),
     })
-    await settleAnew(evidence, now)
+    await settleAnew(evidence.treeId, evidence.coatId, now)
     return { status: 200, response: { evidenceId, treeId: evidence.treeId } }
   })
-}
-
-/** The covered coats that it spoke of: its own, and the next one, whose mass below it may have been. */
-async function settleAnew({ treeId, coatId }: Evidence, now: number): Promise<void> {
-  const [facts] = await loadFacts({ ids: [treeId] })
-  if (!facts) return
-  const number = facts.coats.find((coat) => coat.id === coatId)?.number ?? 0
-  const touched = facts.coats.filter((coat) => coat.coveredAt !== null && (coat.number === number || coat.number === number + 1))
-  if (touched.length === 0) return
-  const { context } = await deriveFloor(await loadFoundry(), [facts], now, touched.map(clockStart))
-  for (const coat of touched) await settleCoat(facts, coat, context)
 }

@@ -2,8 +2,8 @@ import type { Stucco } from '@/lib/coats/vocabulary'
 
 /** Share of what a coat adds in mass that is water, where nothing was measured: slurry with its stucco, and slurry alone. Our own starting values. */
 const WATER_SHARE = { withStucco: 0.15, withoutStucco: 0.27 }
-/** How far a coat's water may be off, as a share of it: by the starting values, by other coats of the tree, by its own dry mass. Our own. */
-const WATER_ERROR = { assumed: 0.2, likeOthers: 0.08, own: 0.02 }
+/** How far a coat's water may be off, as a share of it: by the starting values, by other coats of the tree. Our own. */
+const WATER_ERROR = { assumed: 0.2, likeOthers: 0.08 }
 
 /** A hanging scale reads to this share of its load. Common practice, no source. */
 const SCALE_SHARE = 0.001
@@ -18,8 +18,8 @@ export type CoatMasses = {
   baseKg: number | null
   /** After its stucco. */
   wetKg: number | null
-  /** Before the next dip, with the share of its water that was left then; or when it had stopped losing any. */
-  dry: { massKg: number; moistureRatio: number } | null
+  /** Before the next dip, with the share of its water that was left then, or when it had stopped losing any; and by what share that may be off. */
+  dry: { massKg: number; moistureRatio: number; error: number } | null
 }
 
 /** The water that a coat brought, kg, and by what share that may be off. */
@@ -35,7 +35,7 @@ export type CoatWater = { waterKg: number; error: number }
 export function coatWater({ stucco, baseKg, wetKg, dry }: CoatMasses, sharesSeen: readonly number[]): CoatWater | null {
   if (wetKg === null) return null
   const lostKg = dry && (wetKg - dry.massKg) / (1 - dry.moistureRatio)
-  if (lostKg !== null && lostKg > 0) return { waterKg: lostKg, error: WATER_ERROR.own }
+  if (lostKg !== null && lostKg > 0) return { waterKg: lostKg, error: dry?.error ?? WATER_ERROR.likeOthers }
   const addedKg = baseKg === null ? null : wetKg - baseKg
   if (addedKg === null || addedKg <= 0) return null
   if (sharesSeen.length > 0) {
@@ -77,20 +77,26 @@ const CONSTANT_AFTER_REFERENCE_HOURS = 1
 const CONSTANT_WITHIN_SHARE = 0.005
 /** A scale coarser than this share of the water cannot tell that a coat has stopped losing any. Our own. */
 const COARSEST_SCALE_SHARE = 0.05
+/** Where the scale's error decides, a slow coat has to have had this share of its need in between: else it is wet and the scale does not see it. */
+const CONSTANT_AFTER_SHARE = 0.25
 
 /**
  * The first weighing at which a coat had stopped losing water: at least one reference hour after another that weighed the same, within
  * half a percent of the coat's water or the scale's error.
  *
+ * @param need of the coat, reference hours.
  * @returns its index, or null; null too where the scale is too coarse to say so.
  */
-export function constantFrom(weighings: readonly { massKg: number; dose: number }[], water: CoatWater): number | null {
+export function constantFrom(weighings: readonly { massKg: number; dose: number }[], water: CoatWater, need: number): number | null {
   for (const [index, later] of weighings.entries()) {
-    const within = Math.max(CONSTANT_WITHIN_SHARE * water.waterKg, scaleErrorKg(later.massKg))
-    if (scaleErrorKg(later.massKg) > COARSEST_SCALE_SHARE * water.waterKg) continue
+    const byRule = CONSTANT_WITHIN_SHARE * water.waterKg
+    const byScale = scaleErrorKg(later.massKg)
+    const within = Math.max(byRule, byScale)
+    if (byScale > COARSEST_SCALE_SHARE * water.waterKg) continue
+    const apart = byScale > byRule ? Math.max(CONSTANT_AFTER_REFERENCE_HOURS, CONSTANT_AFTER_SHARE * need) : CONSTANT_AFTER_REFERENCE_HOURS
     const isConstant = weighings
       .slice(0, index)
-      .some((earlier) => later.dose - earlier.dose >= CONSTANT_AFTER_REFERENCE_HOURS && Math.abs(earlier.massKg - later.massKg) <= within)
+      .some((earlier) => later.dose - earlier.dose >= apart && Math.abs(earlier.massKg - later.massKg) <= within)
     if (isConstant) return index
   }
   return null

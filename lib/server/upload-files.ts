@@ -33,7 +33,9 @@ export async function keepBody(
     new AppError('too_large', `The file is larger than ${formatBytes(largestBytes)}. Split it by years and send the parts.`)
   if (announcedBytes > largestBytes) throw tooLarge()
   await mkdir(uploadsDir(), { recursive: true, mode: 0o700 })
-  if ((await freeBytesOf(uploadsDir())) < announcedBytes + KEPT_FREE_BYTES) {
+  // A sender that names no length may send as much as is taken at all.
+  const expectedBytes = announcedBytes > 0 ? announcedBytes : largestBytes
+  if ((await freeBytesOf(uploadsDir())) < expectedBytes + KEPT_FREE_BYTES) {
     throw new AppError(
       'unavailable',
       'The disk of the server has no room for this file. Nothing was saved. Free some space, then try again.',

@@ -61,6 +61,7 @@ export type CoatBelief = {
 /** Dose of a coat at an instant, reference hours; null where it cannot be told any more. */
 type DoseAt = (evidence: EvidenceFacts) => number | null
 
+const BESIDE_THE_CLOCK = 'On the last coat it stands beside the clock and does not move it.'
 const BEFORE_THE_STUCCO = 'It tells what the coat weighs, not how dry it is.'
 
 /**
@@ -71,7 +72,10 @@ const BEFORE_THE_STUCCO = 'It tells what the coat weighs, not how dry it is.'
  */
 export function beliefOf(facts: TreeFacts, coat: CoatFacts, pressurePa: number, until: number, doseAt: DoseAt): CoatBelief {
   const evidence = coat.evidence.filter((piece) => piece.takenAt <= until)
-  return believe(facts, coat, { evidence, prior: priorOf(sharedOf(facts, coat, pressurePa)), pressurePa, doseAt })
+  const prior = priorOf(sharedOf(facts, coat, pressurePa))
+  // A finished shell is dried out by its clock and a person's word beside it: the word must not have moved the clock.
+  const hearsDry = coat.number < facts.recipe.coats.length
+  return believe(facts, coat, { evidence, prior, pressurePa, doseAt, hearsDry })
 }
 
 /** What the tree's coats share, as far as those below `coat` (all of them where it is null) have told. */
@@ -85,7 +89,7 @@ export function sharedOf(
     // What starting values got wrong is no news of a need that finished coats have set right.
     if (below.number >= coat.number || below.isCalibrated !== coat.isCalibrated || below.evidence.length === 0) continue
     const prior = priorOf(shared)
-    const { theta } = believe(facts, below, { evidence: below.evidence, prior, pressurePa, doseAt: storedDose })
+    const { theta } = believe(facts, below, { evidence: whileOpen(below), prior, pressurePa, doseAt: storedDose, hearsDry: true })
     shared = learnFromCoat(shared, prior, theta)
   }
   return shared
@@ -93,23 +97,39 @@ export function sharedOf(
 
 const storedDose: DoseAt = (piece) => piece.doseReferenceHours
 
-/** What a finished coat's own evidence says, without any prior; null where it says next to nothing. */
+/** What was taken while a coat was the newest: a dip that is told late may have covered it before somebody pressed a key. */
+const whileOpen = (coat: CoatFacts): EvidenceFacts[] => coat.evidence.filter((piece) => piece.takenAt <= (coat.coveredAt ?? Infinity))
+
+/**
+ * What a finished coat's own evidence says, without any prior; null where it says next to nothing. On a tree with a recess only what was
+ * taken at the spot that dries last: its outside and its weight tell nothing of the recess.
+ */
 export function outcomeOf(facts: TreeFacts, coat: CoatFacts, pressurePa: number, doseAt: DoseAt): Theta | null {
   const prior = { mean: 0, sd: coat.needSpread }
-  return withoutPrior(prior, believe(facts, coat, { evidence: coat.evidence, prior, pressurePa, doseAt }).theta)
+  const slowest = slowestSpot(facts.recessClass)
+  const evidence = whileOpen(coat).filter((piece) => slowest === 'outside' || piece.spot === slowest)
+  return withoutPrior(prior, believe(facts, coat, { evidence, prior, pressurePa, doseAt, hearsDry: true }).theta)
 }
 
-type BeliefInput = { evidence: readonly EvidenceFacts[]; prior: Theta; pressurePa: number; doseAt: DoseAt }
+type BeliefInput = {
+  evidence: readonly EvidenceFacts[]
+  prior: Theta
+  pressurePa: number
+  doseAt: DoseAt
+  /** Whether somebody's 'dry' moves the need. */
+  hearsDry: boolean
+}
 
-function believe(facts: TreeFacts, coat: CoatFacts, { evidence, prior, pressurePa, doseAt }: BeliefInput): CoatBelief {
+function believe(facts: TreeFacts, coat: CoatFacts, { evidence, prior, pressurePa, doseAt, hearsDry }: BeliefInput): CoatBelief {
   const needAt = (spot: Spot) => (coat.needReferenceHours * spotFactor(spot, facts.recessClass, coat.recessFactor)) / coat.recessFactor
   const at = (spot: Spot, dose: number): CoatAtDose => ({ dose, need: needAt(spot), moistureTarget: coat.moistureTarget })
   const weighings = weigh(facts, coat, evidence, doseAt, at)
-  const heard = evidence.map((piece): Heard => {
+  const each = evidence.map((piece): Heard => {
     if (piece.kind === 'weighing') return { evidence: piece, ...(weighings.said.get(piece.id) ?? unheard(BEFORE_THE_STUCCO)) }
     const spot = piece.spot ?? 'outside'
     const dose = doseAt(piece)
     if (dose === null || !(dose > 0)) return { evidence: piece, ...unheard('No reading tells how far the coat was then.') }
+    if (piece.verdict === 'dry' && !hearsDry) return { evidence: piece, ...unheard(BESIDE_THE_CLOCK) }
     if (piece.verdict !== null) {
       return { evidence: piece, observation: blur(spot, observeVerdict(at(spot, dose), piece.verdict, TOUCH_SCATTER)), unheard: null }
     }
@@ -122,6 +142,7 @@ function believe(facts: TreeFacts, coat: CoatFacts, { evidence, prior, pressureP
       ? { evidence: piece, ...unheard(`The air is too damp for it: a wet coat would cool by less than ${LEAST_DEPRESSION_K} K.`) }
       : { evidence: piece, observation, unheard: null }
   })
+  const heard = oncePerJudgement(each, doseAt)
   const observations = [...heard.flatMap(({ observation }) => (observation === null ? [] : [observation])), ...weighings.joint]
   return {
     prior,
@@ -131,6 +152,31 @@ function believe(facts: TreeFacts, coat: CoatFacts, { evidence, prior, pressureP
     water: weighings.water,
     pageExponent: weighings.pageExponent,
   }
+}
+
+/**
+ * The same judgement said twice is one: of the 'dry' of a spot the earliest stands, of the 'not yet' the latest, of its surface
+ * temperatures between the two the one that tells most, since what they do not know they all share.
+ */
+function oncePerJudgement(all: readonly Heard[], doseAt: DoseAt): Heard[] {
+  const standing = new Map<string, Heard>()
+  for (const heard of all) {
+    if (heard.observation === null || heard.evidence.kind === 'weighing') continue
+    const key = `${heard.evidence.spot} ${heard.observation.kind}`
+    const before = standing.get(key)
+    if (!before || tellsMore(heard, before, doseAt)) standing.set(key, heard)
+  }
+  return all.map((heard) => {
+    if (heard.observation === null || heard.evidence.kind === 'weighing') return heard
+    const isStanding = standing.get(`${heard.evidence.spot} ${heard.observation.kind}`) === heard
+    return isStanding ? heard : { evidence: heard.evidence, ...unheard('Said of this spot already: the one that tells most counts.') }
+  })
+}
+
+function tellsMore({ evidence, observation }: Heard, before: Heard, doseAt: DoseAt): boolean {
+  if (observation?.kind === 'value') return before.observation?.kind === 'value' && observation.sd < before.observation.sd
+  const [dose, doseBefore] = [doseAt(evidence) ?? 0, doseAt(before.evidence) ?? 0]
+  return observation?.kind === 'dry' ? dose < doseBefore : dose > doseBefore
 }
 
 /** In a recess the doubt about the recess itself comes on top. */
@@ -145,6 +191,10 @@ const unheard = (why: string) => ({ observation: null, unheard: why })
 
 /** Fewer than these do not show the shape of a coat's drying. */
 const FEWEST_FOR_A_FIT = 3
+/** By two weighings that stayed the same a few percent of the water may be left. */
+const CONSTANT_ERROR = 0.05
+/** Weighings of a coat whose water is known this well do not share a doubt worth speaking of. */
+const LARGEST_OWN_ERROR = 0.05
 /** A coat's water known worse than this would bend the fitted shape. */
 const LARGEST_WATER_ERROR = 0.1
 /** The need by a fit is not known better than this, ln scale. Our own. */
@@ -183,17 +233,23 @@ function weigh(
   const assumed = coatWater(masses, sharesOf(facts, coat))
   if (wetKg === null || assumed === null) {
     for (const { piece } of later) {
-      say(piece, wetKg === null ? 'Nobody weighed it after its stucco.' : 'Nobody weighed it before its dip.')
+      say(
+        piece,
+        wetKg === null
+          ? 'Nobody weighed it after its stucco.'
+          : 'Its weights before the dip and after the stucco do not tell what the coat added.',
+      )
     }
     return none
   }
-  const constant = constantFrom(later, assumed)
+  const constant = constantFrom(later, assumed, at('outside', 1).need)
   // A coat that has stopped losing water says itself how much it had.
   const dryKg = constant === null ? null : (later[constant]?.massKg ?? null)
-  const water = dryKg === null ? assumed : (coatWater({ ...masses, dry: { massKg: dryKg, moistureRatio: 0 } }, []) ?? assumed)
+  const water =
+    dryKg === null ? assumed : (coatWater({ ...masses, dry: { massKg: dryKg, moistureRatio: 0, error: CONSTANT_ERROR } }, []) ?? assumed)
 
   const points: WeighedPoint[] = []
-  const single: { id: string; observation: Observation }[] = []
+  const single: { id: string; observation: Observation & { kind: 'value' } }[] = []
   for (const [index, { piece, massKg, dose }] of later.entries()) {
     if (masses.dry !== null && piece.moment === 'before dip') {
       say(piece, 'It is what the finished coat weighed; the others are held against it.')
@@ -217,11 +273,20 @@ function weigh(
       continue
     }
     const observation = observeMoisture(at('outside', dose), Math.min(0.98, Math.max(0.02, moistureRatio)), sigma)
-    if (observation === null) say(piece, 'No reading tells how far the coat was then.')
+    if (observation?.kind !== 'value') say(piece, 'No reading tells how far the coat was then.')
     else single.push({ id: piece.id, observation })
   }
   const fit = single.length >= FEWEST_FOR_A_FIT && water.error <= LARGEST_WATER_ERROR ? fitPage(points) : null
-  for (const { id, observation } of single) said.set(id, { observation: fit === null ? observation : null, unheard: null })
+  // Weighings whose water may be off are off together: then only the one that tells most speaks.
+  const best = single.toSorted((a, b) => a.observation.sd - b.observation.sd)[0]
+  const speaksFor = (id: string) => fit === null && (water.error <= LARGEST_OWN_ERROR || id === best?.id)
+  for (const { id, observation } of single) {
+    const isShared = fit === null && !speaksFor(id)
+    said.set(id, {
+      observation: speaksFor(id) ? observation : null,
+      unheard: isShared ? 'Another weighing of this coat tells more.' : null,
+    })
+  }
   if (fit === null) return { ...none, points, water }
   const { need, moistureTarget } = at('outside', 1)
   const theta = Math.log(doseAtRatio(fit, moistureTarget) / need)
@@ -237,6 +302,9 @@ function weigh(
 const beforeDip = (evidence: readonly EvidenceFacts[]): number | null =>
   evidence.findLast((piece) => piece.moment === 'before dip')?.massKg ?? null
 
+/** Moisture ratio up to which a coat's weight before the next dip is taken for its dry mass. */
+const DRY_ENOUGH = 0.1
+
 /** What the tree weighed around a coat. */
 function massesOf(facts: TreeFacts, coat: CoatFacts): CoatMasses {
   const below = facts.coats.find(({ number }) => number === coat.number - 1)
@@ -244,11 +312,12 @@ function massesOf(facts: TreeFacts, coat: CoatFacts): CoatMasses {
   return {
     stucco: coat.stucco,
     baseKg: beforeDip(below === undefined ? facts.waxWeighings : below.evidence),
-    wetKg: coat.evidence.find((piece) => piece.moment === 'after stucco')?.massKg ?? null,
+    wetKg: whileOpen(coat).findLast((piece) => piece.moment === 'after stucco')?.massKg ?? null,
+    // Only where hardly any water was left by the clock: a coat dipped over wet must not teach how much it held.
     dry:
-      dryKg === null || coat.moistureRatioAtRedip === null
+      dryKg === null || coat.moistureRatioAtRedip === null || coat.moistureRatioAtRedip > DRY_ENOUGH
         ? null
-        : { massKg: dryKg, moistureRatio: Math.min(0.9, coat.moistureRatioAtRedip) },
+        : { massKg: dryKg, moistureRatio: coat.moistureRatioAtRedip, error: Math.hypot(0.02, coat.moistureRatioAtRedip) },
   }
 }
 

@@ -111,6 +111,59 @@ describe('a touch', () => {
   })
 })
 
+describe('one judgement', () => {
+  it('is one, however often it is said: three touches free nothing that one does not', async () => {
+    const [once, thrice] = [await dippedTree(), await dippedTree()]
+    await take(once.id, touch('dry'), START + 2.4 * HOUR)
+    for (const minutes of [0, 1, 2]) await take(thrice.id, touch('dry'), START + 2.4 * HOUR + minutes * MINUTE, minutes === 1 ? oona : maud)
+    const [first, second] = [await seen(once.id, START + 3 * HOUR), await seen(thrice.id, START + 3 * HOUR)]
+    expect(second.call.safeAt).toBe(first.call.safeAt)
+    expect(second.belief.heard.filter(({ unheard }) => unheard !== null)).toHaveLength(2)
+  })
+
+  it("'dry' on the last coat stands beside the clock: it neither moves the likely time nor dries the shell out before it", async () => {
+    const recipeVersionId = await buildRecipe(foundry, BACKUPS.slice(0, 1))
+    const tree = await buildTree(foundry, { recipeVersionId })
+    await dip(tree.id, 1, NOW)
+    const before = (await seen(tree.id, START + 3 * HOUR)).call
+    await take(tree.id, touch('dry'), START + 2.4 * HOUR)
+    await take(tree.id, { ...touch('dry'), kind: 'colour' }, START + 2.5 * HOUR)
+    const after = await seen(tree.id, START + 3 * HOUR)
+    expect(after.call.likelyAt).toBe(before.likelyAt)
+    expect(after.state).toBe('last coat on')
+    // Likely dry by the clock, and somebody has felt it.
+    expect((await seen(tree.id, START + 4.1 * HOUR)).state).toBe('dried out')
+  })
+
+  it('of an outside teaches nothing of a core', async () => {
+    const tree = await dippedTree('closed core')
+    await take(tree.id, touch('not yet', 'outside'), START + 3 * HOUR)
+    await take(tree.id, touch('dry', 'outside'), START + 5 * HOUR)
+    await dip(tree.id, 2, START + 14 * HOUR)
+    const coat = await Coat.findOne({ where: { treeId: tree.id, number: 1 }, rejectOnEmpty: true })
+    expect(coat.outcomeTheta).toBeNull()
+  })
+
+  it('of a coat that was logged late is that coat’s, not of the one below', async () => {
+    const tree = await dippedTree()
+    // Coat 2 is dipped at 6 h and told at 6.7 h; in between somebody weighs it while the tablet still says coat 1.
+    await take(tree.id, weigh(12.4, 'after stucco'), START + 6.2 * HOUR)
+    const run = dipBody(foundry, [{ treeId: tree.id, coatNumber: 2 }], {
+      dippedAt: START + 6 * HOUR,
+      bathId: foundry.backupBathId,
+      stucco: 'medium',
+    })
+    await logDips(run, by(maud, START + 6.7 * HOUR))
+    const second = await Coat.findOne({ where: { treeId: tree.id, number: 2 }, rejectOnEmpty: true })
+    expect(await Evidence.count({ where: { coatId: second.id, moment: 'after stucco' } })).toBe(1)
+    // Taken back and logged again it keeps its weight.
+    await undoDips({ operationId: newId(), coatIds: [second.id] }, by(maud, START + 6.8 * HOUR))
+    await logDips({ ...run, operationId: newId() }, by(maud, START + 6.9 * HOUR))
+    const again = await Coat.findOne({ where: { treeId: tree.id, number: 2, withdrawnAt: null }, rejectOnEmpty: true })
+    expect(await Evidence.count({ where: { coatId: again.id, moment: 'after stucco' } })).toBe(1)
+  })
+})
+
 describe('a weighing', () => {
   it('moves the time once the coat was weighed before its dip and after its stucco; before that it says why not', async () => {
     const tree = await buildTree(foundry, { recipeVersionId: await buildRecipe(foundry, BACKUPS) })
@@ -138,7 +191,7 @@ describe('a weighing', () => {
     for (const dose of [0.5, 1.5, 2.5, 3.5, 5, 6.2, 9, 11]) await take(tree.id, weigh(mass(dose)), START + dose * HOUR)
     const dry = await seen(tree.id, START + 11 * HOUR)
     // It has stopped losing water, so its own dry mass is known.
-    expect(dry.belief.water?.error).toBe(0.02)
+    expect(dry.belief.water?.error).toBe(0.05)
     expect(dry.belief.pageExponent).toBeGreaterThan(1)
     expect(dry.belief.pageExponent).toBeLessThan(1.25)
     expect(dry.call.need.likely).toBeGreaterThan(4.5)
