@@ -41,7 +41,7 @@ export type RouteOptions = {
 }
 
 /**
- * A route for signed-in members who may do `act`. Checks the origin of writes, the kind of body, the session and the right,
+ * A route for signed-in members who may do `act`. Checks the origin of writes, the session and the right, and the kind of body,
  * in this order, and answers everything thrown as a problem document.
  *
  * @example export const POST = memberRoute('dip', async ({ request, member, clock }) => { … })
@@ -55,8 +55,9 @@ export function memberRoute<P extends Params = Params>(
   return openRoute<P>(async (call) => {
     const isRead = call.request.method === 'GET' || call.request.method === 'HEAD'
     if (!isRead) requireOwnOrigin(call.request)
+    const member = await requireMember(act)
     requireBodyType(call.request, bodyType)
-    return handler({ ...call, member: await requireMember(act) })
+    return handler({ ...call, member })
   })
 }
 

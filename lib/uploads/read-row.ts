@@ -81,7 +81,7 @@ function measuredAtOf(cells: readonly string[], { settings, timeZone, order, las
   const written = [dateColumn, clockColumn].flatMap((column) => (column === null ? [] : [cellOf(cells, column)])).join(' ')
   if (written.trim() === '') return 'No time in this row.'
   const moment = readMoment(cells[dateColumn] ?? '', clockColumn === null ? null : (cells[clockColumn] ?? ''), dateForm)
-  if (moment === null) return `The time ‘${written}’ cannot be read.`
+  if (moment === null) return `The time ‘${written.trim()}’ cannot be read.`
   const at = instantOf(moment, { isEpoch: dateForm.startsWith('epoch'), zone, timeZone, order, lastAt })
   if (at === null && zone === 'rows') return `The time ‘${written}’ does not say its zone.`
   if (at === null) return `The time ‘${written}’ did not exist: the clocks were set forward.`

@@ -95,7 +95,7 @@ describe.each(DESCRIBED_DOORS)('$method $path', ({ operationId, answers, who }) 
   it('refuses a stranger and an odd body as described', async () => {
     const known = misfits.length
     const visitor: Client = who === 'sensor' ? scene.anonymous : scene.operator
-    const params = { treeId: 'x', bathId: 'x', sensorId: 'x', uploadId: 'x' }
+    const params = { treeId: 'x', bathId: 'x', placeId: 'x', sensorId: 'x', uploadId: 'x', evidenceId: 'x' }
     await ask(scene.anonymous, operationId, { params })
     const hasBody = doorOf(operationId)?.body !== undefined
     if (hasBody) await ask(visitor, operationId, { params, body: { odd: true } })

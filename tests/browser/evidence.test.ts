@@ -1,3 +1,4 @@
+import { setTimeout as sleep } from 'node:timers/promises'
 import type { Browser, Page } from 'playwright-core'
 import { afterAll, beforeAll, expect, it } from 'vitest'
 import type { Role } from '@/lib/members/roles'
@@ -116,6 +117,9 @@ it('on the tablet: an outside that is dry frees no core, a weighing says why it 
   await page.getByRole('button', { name: 'Note it' }).tap()
   await page.getByText('Type the weight in kg.').waitFor()
   for (const digit of ['4', ',', '2']) await page.getByRole('button', { name: digit, exact: true }).tap()
+  expect(await page.getByLabel('Weight').inputValue()).toBe('4,2')
+  // A second press within a moment of the first counts as an impatient finger.
+  await sleep(600)
   await page.getByRole('button', { name: 'Note it' }).tap()
   await page.getByText(/It moves no time\. Nobody weighed it after its stucco\./).waitFor()
   expect(errors).toEqual([])

@@ -113,7 +113,7 @@ describe('prune', () => {
     for (const [subject, waitUntil] of Object.entries({ old: NOW - 2 * DAY_MS, running: NOW + HOUR_MS })) {
       await SignInWait.create({ subject, failures: 5, lastFailedAt: NOW - 2 * DAY_MS, waitUntil })
     }
-    expect(await prune.run(at(NOW))).toEqual({ jobRuns: 1, sessions: 1, waits: 1 })
-    expect(await prune.run(at(NOW))).toEqual({ jobRuns: 0, sessions: 0, waits: 0 })
+    expect(await prune.run(at(NOW))).toMatchObject({ jobRuns: 1, sessions: 1, waits: 1 })
+    expect(await prune.run(at(NOW))).toMatchObject({ jobRuns: 0, sessions: 0, waits: 0 })
   })
 })
