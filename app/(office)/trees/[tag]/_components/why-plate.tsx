@@ -64,10 +64,12 @@ export function WhyPlate({ why, evidence, viewer, isUncalibrated, units, now, ti
 
 const WIDTH = 640
 const LEFT = 8
-const ROW_CLOCK = 34
-const ROW_TOLD = 84
-const AXIS = 116
-const HEIGHT = 138
+const ROW_CLOCK = 66
+const ROW_TOLD = 132
+const AXIS = 156
+const HEIGHT = 188
+/** The word 'now' stands under the axis where it does not run into the two ends. */
+const ROOM_FOR_NOW = 150
 
 /** Two bands on one axis: earliest to safe with a stroke at likely, by the clock above, as told below; marks where evidence was taken. */
 function Bands({ why, evidence, now, timeZone }: Pick<WhyPlateProps, 'why' | 'evidence' | 'now' | 'timeZone'>) {
@@ -84,7 +86,7 @@ function Bands({ why, evidence, now, timeZone }: Pick<WhyPlateProps, 'why' | 'ev
     const [left, right] = [x(earliestAt ?? likelyAt), x(safeAt ?? to)]
     return (
       <g className={tone}>
-        <text x={LEFT} y={y - 14} className="why-label">
+        <text x={LEFT} y={y - 18} className="why-label">
           {name}
         </text>
         <rect x={left} y={y - 8} width={Math.max(3, right - left)} height="16" className="why-band" />
@@ -102,21 +104,23 @@ function Bands({ why, evidence, now, timeZone }: Pick<WhyPlateProps, 'why' | 'ev
             <circle cx={x(piece.at)} cy="12" r="6" />
           </g>
         ))}
-        {band(why.byClock, ROW_CLOCK + 12, 'By the clock alone', 'why-clock')}
-        {band(why.asTold, ROW_TOLD + 12, 'With what was noted', 'why-told')}
+        {band(why.byClock, ROW_CLOCK, 'By the clock alone', 'why-clock')}
+        {band(why.asTold, ROW_TOLD, 'With what was noted', 'why-told')}
         <path d={`M${x(now)} 18V${AXIS}`} className="why-now" />
         <path d={`M${LEFT} ${AXIS}H${WIDTH - LEFT}`} className="why-axis" />
-        <text x={LEFT} y={HEIGHT - 4} className="why-label">
+        <text x={LEFT} y={HEIGHT - 8} className="why-label">
           {label(from)}
         </text>
-        <text x={WIDTH - LEFT} y={HEIGHT - 4} textAnchor="end" className="why-label">
+        <text x={WIDTH - LEFT} y={HEIGHT - 8} textAnchor="end" className="why-label">
           {label(to)}
         </text>
-        <text x={Math.min(WIDTH - 80, Math.max(90, x(now)))} y={HEIGHT - 4} textAnchor="middle" className="why-label">
-          now
-        </text>
+        {x(now) > ROOM_FOR_NOW && x(now) < WIDTH - ROOM_FOR_NOW && (
+          <text x={x(now)} y={HEIGHT - 8} textAnchor="middle" className="why-label">
+            now
+          </text>
+        )}
       </svg>
-      <figcaption>Band: earliest to safe; thick stroke: likely; ring: when something was noted.</figcaption>
+      <figcaption>Band: earliest to safe; thick stroke: likely; ring: something was noted; long line: now.</figcaption>
     </figure>
   )
 }
