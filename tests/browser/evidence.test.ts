@@ -42,6 +42,9 @@ afterAll(async () => {
   await server.stop()
 })
 
+/** A second press within a moment of the first, at the same spot, counts as an impatient finger. */
+const calm = () => sleep(600)
+
 const treeOf = async (page: Page, tag: string): Promise<QueueTree> => {
   const queue = (await (await page.request.get('/api/v1/queue')).json()) as Queue
   return queue.trees.find((tree) => tree.tag === tag)!
@@ -66,6 +69,7 @@ it('a touch, a colour and a surface temperature on the page of a tree move its t
   await expect.poll(async () => Math.abs((await likely(page, plain)) - before) < 3 * MINUTE).toBe(true)
 
   await page.getByRole('button', { name: 'Weigh, measure, colour' }).click()
+  await calm()
   await page.getByRole('button', { name: 'Wet colour' }).click()
   await page
     .getByText(/colour outside: not yet/)
@@ -77,6 +81,7 @@ it('a touch, a colour and a surface temperature on the page of a tree move its t
   await page.getByLabel('Surface, outside').fill('hot')
   await page.getByRole('button', { name: 'Note the temperature' }).click()
   await page.getByText('The surface temperature is a number.').waitFor()
+  await calm()
   // 21 °C and 50 %: a wet coat would sit at 14.6 °C. Two hours after its dip it is as cold as that.
   await page.getByLabel('Surface, outside').fill('14,7')
   await page.getByRole('button', { name: 'Note the temperature' }).click()
@@ -96,30 +101,37 @@ it('on the tablet: an outside that is dry frees no core, a weighing says why it 
   await signInOn(page, members.operator)
   const row = page.locator(`[data-tree-row]`, { hasText: hollow }).first()
   await row.tap()
+  await calm()
   await page.getByRole('button', { name: 'How dry?' }).tap()
+  await calm()
   await page.getByText('An outside that is dry frees nothing here: the core dries last.').waitFor()
   await page.getByRole('group', { name: 'Outside' }).getByRole('button', { name: 'Felt dry' }).tap()
   await page.getByText(new RegExp(`${hollow}: noted\\.`)).waitFor()
   expect((await treeOf(page, hollow)).word).toBeNull()
 
   await row.tap()
+  await calm()
   await page.getByRole('button', { name: 'How dry?' }).tap()
+  await calm()
   await page.getByRole('group', { name: 'In the core' }).getByRole('button', { name: 'Not yet' }).tap()
   await page.getByText(new RegExp(`${hollow}: noted\\.`)).waitFor()
   expect((await treeOf(page, hollow)).word).toMatchObject({ verdict: 'not yet', spot: 'core' })
+  await calm()
   await page.getByRole('button', { name: 'Withdraw' }).tap()
   await page.getByText('Withdrawn: the time stands as it did before.').waitFor()
   expect((await treeOf(page, hollow)).word).toBeNull()
 
   await row.tap()
+  await calm()
   await page.getByRole('button', { name: 'How dry?' }).tap()
+  await calm()
   await page.getByRole('button', { name: 'Weigh it' }).tap()
+  await calm()
   await page.getByRole('button', { name: 'Note it' }).tap()
   await page.getByText('Type the weight in kg.').waitFor()
   for (const digit of ['4', ',', '2']) await page.getByRole('button', { name: digit, exact: true }).tap()
   expect(await page.getByLabel('Weight').inputValue()).toBe('4,2')
-  // A second press within a moment of the first counts as an impatient finger.
-  await sleep(600)
+  await calm()
   await page.getByRole('button', { name: 'Note it' }).tap()
   await page.getByText(/It moves no time\. Nobody weighed it after its stucco\./).waitFor()
   expect(errors).toEqual([])
