@@ -94,7 +94,7 @@ describe('a file of readings', () => {
     await page.setViewportSize(PHONE)
     await page.getByRole('link', { name: 'All files' }).click()
     await page.getByRole('link', { name: 'tank.csv' }).waitFor()
-    expect(await page.evaluate(() => document.documentElement.scrollWidth)).toBeLessThanOrEqual(PHONE.width)
+    await expect.poll(() => page.evaluate(() => document.documentElement.scrollWidth)).toBeLessThanOrEqual(PHONE.width)
     expect(errors).toEqual([])
   })
 })

@@ -71,7 +71,7 @@ describe('what another air would do to the room', () => {
     const sideways = () => page.evaluate(() => document.documentElement.scrollWidth - document.documentElement.clientWidth)
     await turn('Air at the trees', 'ArrowRight', 3)
     await rows().first().waitFor()
-    expect(await sideways()).toBe(0)
+    await expect.poll(sideways).toBe(0)
     for (const [name, range] of [
       ['14 days', '14d'],
       ['One year', '1y'],
@@ -79,7 +79,7 @@ describe('what another air would do to the room', () => {
       await page.getByRole('link', { name, exact: true }).click()
       await page.waitForURL(`**/room?sensor=*&range=${range}`)
       await page.getByRole('heading', { name: new RegExp(`Fast and slow, ${name}`, 'i') }).waitFor()
-      expect(await sideways()).toBe(0)
+      await expect.poll(sideways).toBe(0)
     }
     expect(errors).toEqual([])
   })
