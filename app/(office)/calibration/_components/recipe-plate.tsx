@@ -106,10 +106,7 @@ export function RecipePlate({ recipe }: { recipe: RecipeCalibration }) {
               {recipe.movableTrees > 0 && (
                 <label className="tick">
                   <input type="checkbox" name="isMovingTrees" value="yes" />
-                  <span>
-                    Move {recipe.movableTrees === 1 ? 'the one open tree' : `the ${recipe.movableTrees} open trees`} of this recipe along,
-                    for the coats not on yet
-                  </span>
+                  <span>Move {movableWords(recipe)} of this recipe along, for the coats not on yet</span>
                 </label>
               )}
               <p className="text-soot">
@@ -132,6 +129,11 @@ export function RecipePlate({ recipe }: { recipe: RecipeCalibration }) {
       </form>
     </section>
   )
+}
+
+function movableWords({ movableTrees, openTrees }: RecipeCalibration): string {
+  if (movableTrees < openTrees) return `${movableTrees} of the ${openTrees} open trees`
+  return openTrees === 1 ? 'the one open tree' : `the ${openTrees} open trees`
 }
 
 const coatsWord = (count: number) => (count === 1 ? '1 coat' : `${wholeNumber(count)} coats`)
