@@ -78,8 +78,11 @@ function numberOf(cells: readonly string[], column: number, hasDecimalComma: boo
 function measuredAtOf(cells: readonly string[], { settings, timeZone, order, lastAt, now }: RowContext): number | string {
   const { dateColumn, clockColumn, dateForm, zone } = settings
   if (dateForm === null) return 'Choose first how the dates are written.'
-  const written = [dateColumn, clockColumn].flatMap((column) => (column === null ? [] : [cellOf(cells, column)])).join(' ')
-  if (written.trim() === '') return 'No time in this row.'
+  const written = [dateColumn, clockColumn]
+    .flatMap((column) => (column === null ? [] : [cellOf(cells, column)]))
+    .join(' ')
+    .trim()
+  if (written === '') return 'No time in this row.'
   const moment = readMoment(cells[dateColumn] ?? '', clockColumn === null ? null : (cells[clockColumn] ?? ''), dateForm)
   if (moment === null) return `The time ‘${written.trim()}’ cannot be read.`
   const at = instantOf(moment, { isEpoch: dateForm.startsWith('epoch'), zone, timeZone, order, lastAt })
